@@ -1,0 +1,57 @@
+// @ts-check
+/** The reference and the guide as one site in docs/api; formulas become MathML here, so a page needs no script for them. */
+import { existsSync, readdirSync } from "node:fs";
+import { fileURLToPath } from "node:url";
+import { tex } from "@mdit/plugin-tex";
+import temml from "temml";
+
+const folder = fileURLToPath(new URL(".", import.meta.url));
+const guide = existsSync(`${folder}guide`) ? readdirSync(`${folder}guide`).filter((file) => file.endsWith(".md")) : [];
+
+/** @type {Partial<import("typedoc").TypeDocOptions>} */
+const options = {
+  name: "fermistate",
+  entryPoints: ["index", "grids/index", "charts/index", "files/index", "certify/index"].map(
+    (file) => `../src/${file}.ts`,
+  ),
+  tsconfig: "../test/tsconfig.json",
+  out: "api",
+  readme: existsSync(`${folder}../README.md`) ? "../README.md" : "none",
+  projectDocuments: guide.sort().map((file) => `guide/${file}`),
+  includeVersion: true,
+  disableSources: true,
+  githubPages: false,
+  excludePrivate: true,
+  excludeInternal: true,
+  sort: ["source-order"],
+  treatWarningsAsErrors: true,
+  skipErrorChecking: true, // "npm run types" does it
+  validation: {
+    notExported: true,
+    invalidLink: true,
+    rewrittenLink: true,
+    notDocumented: true,
+    unusedMergeModuleWith: true,
+  },
+  requiredToBeDocumented: [
+    "Module",
+    "Variable",
+    "Function",
+    "Class",
+    "Interface",
+    "TypeAlias",
+    "Property",
+    "Method",
+    "Accessor",
+    "Constructor",
+  ],
+  markdownItLoader(parser) {
+    parser.use(tex, {
+      delimiters: "dollars",
+      render: (/** @type {string} */ content, /** @type {boolean} */ displayMode) =>
+        temml.renderToString(content, { displayMode, throwOnError: true }),
+    });
+  },
+};
+
+export default options;

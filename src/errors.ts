@@ -1,0 +1,97 @@
+/**
+ * Typed errors: every refusal names what was given and what is allowed.
+ *
+ * `code` is stable and meant for programs; the message is for people. The ESM and the CommonJS copy of the
+ * library are two classes, so `instanceof` is false across them: test with {@link isFermistateError}.
+ */
+
+/**
+ * Why a call was refused.
+ *
+ * - `not-a-number`: NaN, an infinity or another type where a finite number is needed
+ * - `out-of-range`: a finite number that no choice of physics would allow (negative density)
+ * - `outside-domain`: a legal number at which this equation of state does not answer
+ * - `unknown-nuclide`: a label that is not in AME2020
+ * - `invalid-composition`: empty, negative, or not summing to one
+ * - `length-mismatch`: columns of a batch that do not fit each other
+ * - `unavailable-quantity`: no contribution of this equation of state knows the quantity
+ * - `no-convergence`: an iteration did not reach its promise (a defect of the library: please report)
+ * - `too-large`: a request beyond the stated size limit
+ * - `invalid-option`: an option or a command-line argument that does not exist or cannot be read
+ * - `file-not-written`: the file system refused; no partial file is left
+ */
+export type ErrorCode =
+  | "not-a-number"
+  | "out-of-range"
+  | "outside-domain"
+  | "unknown-nuclide"
+  | "invalid-composition"
+  | "length-mismatch"
+  | "unavailable-quantity"
+  | "no-convergence"
+  | "too-large"
+  | "invalid-option"
+  | "file-not-written";
+
+/** What was refused: the argument's name, its value, what is allowed, and where in a batch it stood. */
+export interface ErrorDetails {
+  /** Name of the offending argument, as in the signature. */
+  readonly argument: string;
+  /** The value given. */
+  readonly given: unknown;
+  /** What is allowed, in words and with units. */
+  readonly allowed: string;
+  /** Row of a batch, counted from 0. */
+  readonly index?: number;
+}
+
+/** The only error class this library throws on purpose. */
+export class FermistateError extends Error {
+  /** Always `"FermistateError"`. */
+  override readonly name: string = "FermistateError";
+  /** Stable reason, see {@link ErrorCode}. */
+  readonly code: ErrorCode;
+  /** Name of the offending argument. */
+  readonly argument: string;
+  /** The value given. */
+  readonly given: unknown;
+  /** What is allowed, in words and with units. */
+  readonly allowed: string;
+  /** Row of a batch, counted from 0; undefined for a single call. */
+  readonly index: number | undefined;
+
+  /** Builds the message from the details: "density: given -1, allowed ...". */
+  constructor(code: ErrorCode, details: ErrorDetails) {
+    const row = details.index === undefined ? "" : ` (row ${details.index})`;
+    super(`${details.argument}${row}: given ${printed(details.given)}; allowed: ${details.allowed}`);
+    this.code = code;
+    this.argument = details.argument;
+    this.given = details.given;
+    this.allowed = details.allowed;
+    this.index = details.index;
+  }
+}
+
+/** True for a {@link FermistateError} of any copy of the library (ESM or CommonJS). */
+export function isFermistateError(error: unknown): error is FermistateError {
+  return error instanceof Error && error.name === "FermistateError" && "code" in error && "allowed" in error;
+}
+
+/** Throws `not-a-number` unless `value` is a finite number; returns it. */
+export function requireFinite(argument: string, value: unknown, allowed: string, index?: number): number {
+  if (typeof value === "number" && Number.isFinite(value)) return value;
+  throw new FermistateError("not-a-number", withIndex({ argument, given: value, allowed }, index));
+}
+
+/** `details` with the row where there is one. */
+export function withIndex(details: ErrorDetails, index: number | undefined): ErrorDetails {
+  return index === undefined ? details : { ...details, index };
+}
+
+/** A value as a message shows it: short, and safe for anything a caller can pass. */
+function printed(value: unknown): string {
+  if (typeof value === "string") return JSON.stringify(value.length > 80 ? `${value.slice(0, 77)}...` : value);
+  if (Array.isArray(value) || ArrayBuffer.isView(value)) return `an array of length ${(value as ArrayLike<unknown>).length}`;
+  if (typeof value === "object" && value !== null) return "an object";
+  return String(value);
+}

@@ -1,0 +1,6 @@
+/**
+ * Not written yet.
+ *
+ * @packageDocumentation
+ */
+export { isFermistateError } from "../errors.js";

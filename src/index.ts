@@ -1,0 +1,26 @@
+/**
+ * fermistate: equations of state of dense, degenerate matter from one Helmholtz free energy.
+ *
+ * The public surface of the core, one list. Runs in Node and browsers; no file system, no dependencies.
+ * @packageDocumentation
+ */
+export * from "./constants.js";
+export { type ErrorCode, type ErrorDetails, FermistateError, isFermistateError } from "./errors.js";
+export { electronPositronGas } from "./fermi-gas/electron-positron-gas.js";
+export { type FermionGasOptions, fermionGas } from "./fermi-gas/fermion-gas.js";
+export { type IdealIonsOptions, idealIons } from "./ions/ideal-ions.js";
+export * from "./matter/composition.js";
+export { type Nuclide, nuclide, nuclides } from "./matter/nuclides.js";
+export { radiation } from "./radiation.js";
+export { combine } from "./thermodynamics/combine.js";
+export type { Contribution, Domain } from "./thermodynamics/contribution.js";
+export type {
+  BatchInput,
+  BatchOutput,
+  EquationOfState,
+  FreeEnergyDerivatives,
+  State,
+} from "./thermodynamics/equation-of-state.js";
+export { addNaturalDerivatives, naturalOrder, type Order } from "./thermodynamics/free-energy.js";
+export { type Quantity, type QuantityName, quantities, quantityNames } from "./thermodynamics/quantities.js";
+export { type WhiteDwarfMatterOptions, whiteDwarfMatter } from "./white-dwarf-matter.js";

@@ -1,0 +1,64 @@
+/**
+ * The ideal, non-degenerate gas of nuclei.
+ *
+ *     F = sum_i N_i kT [ln(n_i lambda_i^3/g_i) - 1],    lambda_i^2 = 2 pi hbar^2/(M_i kT),  g_i = 2 J_i + 1
+ *
+ * (Sackur 1911, Tetrode 1912), with N_i nuclei of species i per gram. Entropy of mixing and ground-state spins are in the
+ * logarithm; so is the mass of each species. All of that is one number per composition, so a point costs one logarithm.
+ * Valid where nuclei are far from degenerate, n_i lambda_i^3 << 1, and kT is far below their first excitation. In cold
+ * dense matter the formula's entropy turns negative: there ions are a Coulomb liquid or crystal and not this gas.
+ */
+import { atomicMassConstant, boltzmannConstant, reducedPlanckConstant } from "../constants.js";
+import type { Composition } from "../matter/composition.js";
+import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
+import type { Contribution } from "../thermodynamics/contribution.js";
+import {
+  ENERGY,
+  ENTROPY,
+  HEAT,
+  HEAT_T,
+  type Order,
+  PRESSURE,
+  PRESSURE_R,
+  PRESSURE_RT,
+  PRESSURE_T,
+} from "../thermodynamics/free-energy.js";
+
+/** Options of {@link idealIons}. */
+export interface IdealIonsOptions {
+  /**
+   * Whether free neutrons count as one of the classical species.
+   * @defaultValue true; choose false where another contribution describes the neutrons
+   */
+  readonly freeNeutrons?: boolean;
+}
+
+/** (2 pi hbar^2/(m_u k))^(3/2): the volume lambda^3 of one atomic mass unit at 1 K, cm^3 K^(3/2). */
+const thermalVolume = ((2 * Math.PI * reducedPlanckConstant ** 2) / (atomicMassConstant * boltzmannConstant)) ** 1.5;
+
+/** The ideal gas of nuclei as a contribution. T = 0 is refused: a classical gas has no entropy there to speak of. */
+export function idealIons(options: IdealIonsOptions = {}): Contribution {
+  const { freeNeutrons = true } = options;
+  return Object.freeze({
+    name: "ideal ions",
+    domain: Object.freeze({ density: [1e-20, 1e18], temperature: [1, 1e13], zeroTemperature: false } as const),
+    add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void {
+      const temperature = point[TEMPERATURE]!;
+      const perGram = freeNeutrons ? composition.ionsPerGram : composition.chargedIonsPerGram;
+      if (perGram === 0) return; // only neutrons, and they are left out
+      const constant = freeNeutrons ? composition.ionEntropyConstant : composition.chargedIonEntropyConstant;
+      const energy = perGram * boltzmannConstant * temperature; // N kT, erg/g
+      const volume = thermalVolume / (temperature * Math.sqrt(temperature));
+      const occupation = Math.log(perGram * point[DENSITY]! * volume);
+      members[ENERGY]! += 1.5 * energy;
+      members[ENTROPY]! += energy * (2.5 - occupation - constant);
+      members[HEAT]! += 1.5 * energy;
+      members[PRESSURE]! += energy;
+      members[PRESSURE_R]! += energy;
+      members[PRESSURE_T]! += energy;
+      if (order === 2) return;
+      members[HEAT_T]! -= 1.5 * energy;
+      members[PRESSURE_RT]! += energy;
+    },
+  });
+}

@@ -1,0 +1,85 @@
+/**
+ * The record of one point: density, temperature, and the plasma variables that contributions share.
+ *
+ * A Float64Array with named slots, filled once per point; contributions read it and some add what only they know
+ * (the chemical potential of the electrons). A record and not an object, so that no number is boxed in a batch.
+ *
+ *     n_e     = rho Y_e/m_u                              net electrons per cm^3
+ *     x_r     = (3 pi^2 n_e)^(1/3) hbar/(m_e c)           relativity parameter, p_F/(m_e c)
+ *     r_s     = a_e/a_B,  a_e = (3/(4 pi n_e))^(1/3)      density parameter
+ *     Gamma_e = e^2/(a_e kT),  Gamma = Gamma_e <Z^(5/3)>  coupling of electrons and of ions
+ *     T_F     = (sqrt(1 + x_r^2) - 1) m_e c^2/k           Fermi temperature
+ *     T_p     = (hbar/k) (4 pi e^2 n_i <Z^2/M>)^(1/2)     ion plasma temperature
+ *
+ * Definitions as in Salpeter & Van Horn 1969 (ApJ 155, 183) and common practice since.
+ */
+import {
+  bohrRadius,
+  boltzmannConstant,
+  electronDensityUnit,
+  electronRestTemperature,
+  elementaryChargeSquared,
+  fineStructureConstant,
+  reducedPlanckConstant,
+} from "../constants.js";
+import type { Composition } from "./composition.js";
+
+/** Baryon mass density n_B m_u, g/cm^3. */
+export const DENSITY = 0;
+/** Temperature, K. */
+export const TEMPERATURE = 1;
+/** Net electron density n_- - n_+, cm^-3. */
+export const ELECTRON_DENSITY = 2;
+/** x_r. */
+export const RELATIVITY = 3;
+/** r_s; Infinity without electrons. */
+export const DENSITY_PARAMETER = 4;
+/** Gamma_e; Infinity at T = 0. */
+export const ELECTRON_COUPLING = 5;
+/** Gamma; Infinity at T = 0. */
+export const ION_COUPLING = 6;
+/** T_F, K. */
+export const FERMI_TEMPERATURE = 7;
+/** T_p, K. */
+export const PLASMA_TEMPERATURE = 8;
+
+// Written by contributions.
+
+/** mu_- - m_e c^2, erg; NaN where no contribution knows it. */
+export const ELECTRON_CHEMICAL_POTENTIAL = 9;
+/** (mu_- - m_e c^2)/kT; Infinity at T = 0. */
+export const ELECTRON_DEGENERACY = 10;
+/** n_+, cm^-3; only on request, see Contribution.addDetail. */
+export const POSITRON_DENSITY = 11;
+/** a T^4/3, dyn/cm^2; 0 without radiation. */
+export const RADIATION_PRESSURE = 12;
+
+/** Length of the record. */
+export const POINT_LENGTH = 16;
+
+const radiusFactor = Math.cbrt((9 * Math.PI) / 4) * fineStructureConstant;
+const couplingFactor = elementaryChargeSquared / (bohrRadius * boltzmannConstant);
+const plasmaFactor = (reducedPlanckConstant / boltzmannConstant) ** 2 * 4 * Math.PI * elementaryChargeSquared;
+
+/** Fills the plasma variables from DENSITY and TEMPERATURE, and clears what contributions write. */
+export function fillPlasma(point: Float64Array, composition: Composition): void {
+  const density = point[DENSITY]!;
+  const temperature = point[TEMPERATURE]!;
+  const electrons = density * composition.electronsPerGram;
+  const x = Math.cbrt((3 * electrons) / electronDensityUnit);
+  const radius = radiusFactor / x;
+  // Without electrons the coupling is zero at every temperature, T = 0 included.
+  const coupling = electrons === 0 ? 0 : couplingFactor / (radius * temperature);
+  const ions = density * composition.ionsPerGram;
+  point[ELECTRON_DENSITY] = electrons;
+  point[RELATIVITY] = x;
+  point[DENSITY_PARAMETER] = radius;
+  point[ELECTRON_COUPLING] = coupling;
+  point[ION_COUPLING] = coupling * composition.chargeMoments.fiveThirds;
+  point[FERMI_TEMPERATURE] = (electronRestTemperature * x * x) / (1 + Math.sqrt(1 + x * x));
+  point[PLASMA_TEMPERATURE] = Math.sqrt(plasmaFactor * ions * composition.plasmaFrequencySum);
+  point[ELECTRON_CHEMICAL_POTENTIAL] = Number.NaN;
+  point[ELECTRON_DEGENERACY] = Number.NaN;
+  point[POSITRON_DENSITY] = Number.NaN;
+  point[RADIATION_PRESSURE] = 0;
+}

@@ -1,0 +1,183 @@
+/** Contributions -> an equation of state: adds their members, turns the sum into quantities. */
+import { FermistateError, withIndex } from "../errors.js";
+import { type Composition, requireComposition } from "../matter/composition.js";
+import { DENSITY, fillPlasma, POINT_LENGTH, TEMPERATURE } from "../matter/plasma.js";
+import type { Contribution } from "./contribution.js";
+import { commonDomain, holds, refusePoint } from "./domain.js";
+import type { BatchInput, BatchOutput, EquationOfState, FreeEnergyDerivatives, State } from "./equation-of-state.js";
+import { MEMBER_COUNT, naturalDerivatives, type Order } from "./free-energy.js";
+import { fillQuantities, QUANTITY_COUNT, type QuantityName, quantities, quantityNames } from "./quantities.js";
+
+/**
+ * An equation of state from contributions: leaving one out switches its physics off.
+ *
+ * @param contributions - at least one; names must differ
+ * @throws `invalid-option` for an empty list, a repeated name or something that is no contribution
+ * @example
+ * ```ts
+ * import { combine, composition, electronPositronGas, radiation } from "fermistate";
+ * const hot = combine(electronPositronGas(), radiation());
+ * hot.state(1e6, 1e9, composition({ C12: 0.5, O16: 0.5 })).gamma1; // => 1.4190
+ * ```
+ */
+export function combine(...contributions: readonly Contribution[]): EquationOfState {
+  checkContributions(contributions);
+  const parts = Object.freeze([...contributions]);
+  const domain = commonDomain(parts);
+  const point = new Float64Array(POINT_LENGTH);
+  const members = new Float64Array(MEMBER_COUNT);
+  const cold = new Float64Array(3);
+  const record = new Float64Array(QUANTITY_COUNT);
+
+  /** Members of the sum at the point's density and temperature. */
+  function sum(composition: Composition, order: Order): void {
+    fillPlasma(point, composition);
+    for (let i = 0; i < MEMBER_COUNT; i++) members[i] = 0;
+    for (let i = 0; i < parts.length; i++) parts[i]!.add(point, composition, order, members);
+  }
+
+  /** What ratios at T = 0 need besides the members. */
+  function fillCold(composition: Composition): void {
+    cold.fill(0);
+    for (const part of parts) {
+      part.addColdSlopes?.(point, composition, cold);
+      cold[2]! += part.residualEntropy?.(composition) ?? 0;
+    }
+  }
+
+  function enter(density: number, temperature: number, composition: Composition): void {
+    requireComposition(composition);
+    if (typeof density !== "number" || typeof temperature !== "number" || !holds(domain, density, temperature)) {
+      refusePoint(parts, density, temperature);
+    }
+    point[DENSITY] = density;
+    point[TEMPERATURE] = temperature;
+  }
+
+  function state(density: number, temperature: number, composition: Composition): State {
+    enter(density, temperature, composition);
+    sum(composition, 2);
+    for (const part of parts) part.addDetail?.(point, composition);
+    if (temperature === 0) fillCold(composition);
+    fillQuantities(point, members, cold, record, -1);
+    const result: Record<string, unknown> = { density, temperature, composition };
+    for (let i = 0; i < QUANTITY_COUNT; i++) {
+      const value = record[i]!;
+      result[quantityNames[i]!] = Number.isNaN(value) ? undefined : value;
+    }
+    return Object.freeze(result) as State;
+  }
+
+  function evaluate(input: BatchInput, output: BatchOutput): void {
+    const { density, temperature, composition } = input;
+    const count = checkColumns(input, output);
+    const each = isList(composition) ? composition : undefined;
+    for (let i = 0; i < count; i++) {
+      if (!holds(domain, density[i]!, temperature[i]!)) refusePoint(parts, density[i], temperature[i], i);
+    }
+    const slots: number[] = [];
+    const columns: Float64Array[] = [];
+    for (let slot = 0; slot < QUANTITY_COUNT; slot++) {
+      const column = output[quantityNames[slot]!];
+      if (column === undefined) continue;
+      slots.push(slot);
+      columns.push(column);
+    }
+    const detailed = output.positronDensity === undefined ? [] : parts.filter((part) => part.addDetail);
+    for (let i = 0; i < count; i++) {
+      const matter = each === undefined ? (composition as Composition) : each[i]!;
+      point[DENSITY] = density[i]!;
+      point[TEMPERATURE] = temperature[i]!;
+      sum(matter, 2);
+      for (let j = 0; j < detailed.length; j++) detailed[j]!.addDetail!(point, matter);
+      if (point[TEMPERATURE] === 0) fillCold(matter);
+      fillQuantities(point, members, cold, record, i);
+      for (let j = 0; j < columns.length; j++) {
+        const value = record[slots[j]!]!;
+        if (value !== value) refuseQuantity(quantityNames[slots[j]!]!);
+        columns[j]![i] = value;
+      }
+    }
+  }
+
+  function freeEnergy(
+    density: number,
+    temperature: number,
+    composition: Composition,
+    order: Order = 2,
+  ): FreeEnergyDerivatives {
+    enter(density, temperature, composition);
+    sum(composition, order);
+    const f = naturalDerivatives(members, order, new Float64Array(MEMBER_COUNT));
+    const [value, fR, fT, fRR, fRT, fTT] = f as unknown as [number, number, number, number, number, number];
+    const second = { f: value, fR, fT, fRR, fRT, fTT };
+    if (order === 2) return Object.freeze(second);
+    return Object.freeze({ ...second, fRRR: f[6]!, fRRT: f[7]!, fRTT: f[8]!, fTTT: f[9]!, fRRTT: f[10]! });
+  }
+
+  const name = parts.map((part) => part.name).join(" + ");
+  return Object.freeze({ name, contributions: parts, domain, state, evaluate, freeEnergy });
+}
+
+function isList(value: Composition | readonly Composition[]): value is readonly Composition[] {
+  return Array.isArray(value);
+}
+
+function checkContributions(contributions: readonly Contribution[]): void {
+  const allowed = "one or more contributions with different names, such as electronPositronGas()";
+  const names = new Set<string>();
+  if (contributions.length === 0) {
+    throw new FermistateError("invalid-option", { argument: "contributions", given: "none", allowed });
+  }
+  for (const part of contributions) {
+    if (typeof part?.add !== "function" || typeof part.name !== "string" || part.domain === undefined) {
+      throw new FermistateError("invalid-option", { argument: "contributions", given: part, allowed });
+    }
+    if (names.has(part.name)) {
+      throw new FermistateError("invalid-option", { argument: "contributions", given: `${part.name} twice`, allowed });
+    }
+    names.add(part.name);
+  }
+}
+
+/** Checks every column of a batch and every composition; returns the number of rows. */
+function checkColumns(input: BatchInput, output: BatchOutput): number {
+  const { density, temperature, composition } = input;
+  for (const [argument, column] of Object.entries({ density, temperature })) requireColumn(argument, column);
+  const count = density.length;
+  const lengths: [string, number][] = [["temperature", temperature.length]];
+  if (isList(composition)) {
+    lengths.push(["composition", composition.length]);
+    for (let i = 0; i < composition.length; i++) requireComposition(composition[i]);
+  } else requireComposition(composition);
+  for (const [argument, given] of lengths) {
+    if (given !== count) {
+      throw new FermistateError("length-mismatch", { argument, given, allowed: `${count} rows, as density has` });
+    }
+  }
+  for (const [name, column] of Object.entries(output)) {
+    if (column === undefined) continue;
+    if (!Object.hasOwn(quantities, name)) {
+      const allowed = `one of ${quantityNames.join(", ")}`;
+      throw new FermistateError("unavailable-quantity", { argument: "output", given: name, allowed });
+    }
+    requireColumn(name, column);
+    if (column.length < count) {
+      throw new FermistateError("length-mismatch", { argument: name, given: column.length, allowed: `>= ${count} rows` });
+    }
+  }
+  return count;
+}
+
+function requireColumn(argument: string, column: unknown): void {
+  if (column instanceof Float64Array) return;
+  throw new FermistateError("invalid-option", withIndex({ argument, given: column, allowed: "a Float64Array" }, undefined));
+}
+
+function refuseQuantity(name: QuantityName): never {
+  throw new FermistateError("unavailable-quantity", {
+    argument: "output",
+    given: name,
+    allowed: "quantities that a contribution provides (the electron gas for this one)",
+  });
+}

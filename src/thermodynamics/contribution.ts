@@ -1,0 +1,49 @@
+/**
+ * The contract of a contribution: one term of the Helmholtz free energy of matter.
+ *
+ * Write one function that adds the term's members (free-energy.ts) and everything else follows: pressure, energy,
+ * entropy and all their derivatives, the batch form, grids and comparison. A contribution is stateless to its caller.
+ */
+import type { Composition } from "../matter/composition.js";
+import type { Order } from "./free-energy.js";
+
+/** Where something answers, in density [g/cm^3] and temperature [K], ends included. */
+export interface Domain {
+  /** Lowest and highest density, g/cm^3. */
+  readonly density: readonly [lowest: number, highest: number];
+  /** Lowest and highest temperature, K. */
+  readonly temperature: readonly [lowest: number, highest: number];
+  /** True where T = 0 is legal too. */
+  readonly zeroTemperature: boolean;
+}
+
+/** One term of the free energy. */
+export interface Contribution {
+  /** What it is, in words; unique within one equation of state. */
+  readonly name: string;
+  /** Where it answers. */
+  readonly domain: Domain;
+
+  /**
+   * Adds its members to `members`, in erg/g.
+   *
+   * `point` is the record of matter/plasma.ts with density, temperature and the plasma variables; `order` says whether
+   * the first 6 members are wanted or all 11. Called millions of times: must allocate nothing, must not keep `point`.
+   */
+  add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void;
+
+  /**
+   * At T = 0 ratios like gamma_3 - 1 = (dP/dT)/(rho c_v) are 0/0. Adds the limits of c_v/T [erg/(g K^2)] to
+   * `slopes[0]` and of (dP/dT)/(rho T) [erg/(g K^2)] to `slopes[1]`. Leave out where both vanish.
+   */
+  addColdSlopes?(point: Float64Array, composition: Composition, slopes: Float64Array): void;
+
+  /** Entropy left at T = 0, erg/(g K): a random alloy, nuclear spins. Leave out where it is zero. */
+  residualEntropy?(composition: Composition): number;
+
+  /**
+   * Writes into `point` what costs extra and only some callers want (the density of positrons). Called after `add`
+   * at the same point.
+   */
+  addDetail?(point: Float64Array, composition: Composition): void;
+}

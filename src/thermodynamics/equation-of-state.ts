@@ -1,0 +1,103 @@
+/**
+ * The interface that a solver sees: a state at density, temperature and composition; a batch of them; the derivatives.
+ *
+ * Conventions: cgs units. Density is baryon mass density rho = n_B m_u with integer mass numbers (conserved; nuclear
+ * binding is not in rho c^2). Specific energy excludes the rest mass of ions and of net electrons and includes the
+ * 2 m_e c^2 of every electron-positron pair.
+ */
+import type { Composition } from "../matter/composition.js";
+import type { Contribution, Domain } from "./contribution.js";
+import type { Order } from "./free-energy.js";
+import type { QuantityName } from "./quantities.js";
+
+/** Quantities that are undefined unless a contribution (the electron gas) provides them. */
+type ElectronQuantity = "electronChemicalPotential" | "electronDegeneracy" | "positronDensity";
+
+/**
+ * The thermodynamic state at one point; immutable. Every field but the first three is a quantity of
+ * {@link quantities}, where its unit and meaning stand.
+ */
+export type State = {
+  /** Baryon mass density, g/cm^3, as given. */
+  readonly density: number;
+  /** Temperature, K, as given. */
+  readonly temperature: number;
+  /** Composition, as given. */
+  readonly composition: Composition;
+} & { readonly [Name in Exclude<QuantityName, ElectronQuantity>]: number } & {
+  readonly [Name in ElectronQuantity]: number | undefined;
+};
+
+/** Input columns of a batch: the same length, one row per point. */
+export interface BatchInput {
+  /** Baryon mass density, g/cm^3. */
+  readonly density: Float64Array;
+  /** Temperature, K. */
+  readonly temperature: Float64Array;
+  /** One composition for all rows, or one per row. */
+  readonly composition: Composition | readonly Composition[];
+}
+
+/** Output columns of a batch, owned by the caller, at least as long as the input; only those given are computed. */
+export type BatchOutput = { readonly [Name in QuantityName]?: Float64Array };
+
+/** An equation of state: a sum of contributions behind one interface. */
+export interface EquationOfState {
+  /** What it is made of, in words. */
+  readonly name: string;
+  /** The terms of its free energy, in the order they are added. */
+  readonly contributions: readonly Contribution[];
+  /** Where all of them answer. */
+  readonly domain: Domain;
+
+  /**
+   * The state at one point.
+   *
+   * @param density - baryon mass density, g/cm^3, > 0 and within {@link EquationOfState.domain}
+   * @param temperature - K, within the domain; 0 where the domain says so
+   * @param composition - from `composition(...)`
+   * @throws `not-a-number`, `out-of-range`, `outside-domain`, `invalid-composition`
+   */
+  state(density: number, temperature: number, composition: Composition): State;
+
+  /**
+   * Many states at once: writes the columns of `output` that are given and allocates nothing per point.
+   *
+   * All inputs are checked before the first row is written.
+   * @throws as {@link EquationOfState.state}, with the row; `length-mismatch`; `unavailable-quantity`
+   */
+  evaluate(input: BatchInput, output: BatchOutput): void;
+
+  /**
+   * The natural derivatives F_ij = rho^i T^j d^(i+j)F/(d rho^i d T^j) of the specific free energy, erg/g.
+   *
+   * @param order - 2: the six of `naturalOrder` up to second order; 3: all eleven, third order and (2,2)
+   */
+  freeEnergy(density: number, temperature: number, composition: Composition, order?: Order): FreeEnergyDerivatives;
+}
+
+/** Scaled derivatives rho^i T^j d^(i+j)F/(d rho^i d T^j), erg/g; the third-order ones only at order 3. */
+export interface FreeEnergyDerivatives {
+  /** F. */
+  readonly f: number;
+  /** rho F_rho. */
+  readonly fR: number;
+  /** T F_T. */
+  readonly fT: number;
+  /** rho^2 F_rho,rho. */
+  readonly fRR: number;
+  /** rho T F_rho,T. */
+  readonly fRT: number;
+  /** T^2 F_TT. */
+  readonly fTT: number;
+  /** rho^3 F_rho,rho,rho. */
+  readonly fRRR?: number;
+  /** rho^2 T F_rho,rho,T. */
+  readonly fRRT?: number;
+  /** rho T^2 F_rho,T,T. */
+  readonly fRTT?: number;
+  /** T^3 F_TTT. */
+  readonly fTTT?: number;
+  /** rho^2 T^2 F_rho,rho,T,T. */
+  readonly fRRTT?: number;
+}

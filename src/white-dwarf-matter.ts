@@ -1,0 +1,44 @@
+/**
+ * The newcomer's equation of state: everything this library knows about the matter of a white dwarf, in one call.
+ */
+import { electronPositronGas } from "./fermi-gas/electron-positron-gas.js";
+import { idealIons } from "./ions/ideal-ions.js";
+import { radiation } from "./radiation.js";
+import { combine } from "./thermodynamics/combine.js";
+import type { EquationOfState } from "./thermodynamics/equation-of-state.js";
+
+/** Switches of {@link whiteDwarfMatter}: each is one contribution. */
+export interface WhiteDwarfMatterOptions {
+  /**
+   * Ideal gas of nuclei. Without it T = 0 is legal.
+   * @defaultValue true
+   */
+  readonly ions?: boolean;
+  /**
+   * Photons.
+   * @defaultValue true
+   */
+  readonly radiation?: boolean;
+}
+
+/**
+ * Electrons and positrons, ideal ions and radiation.
+ *
+ * What is not in: Coulomb interactions, so the pressure is 1 to 30 % too high where white dwarfs live (least in hot or
+ * light-element matter, most in cold dense iron), and there is no crystal.
+ *
+ * @example
+ * ```ts
+ * import { composition, whiteDwarfMatter } from "fermistate";
+ * const core = composition({ C12: 0.5, O16: 0.5 });
+ * const state = whiteDwarfMatter().state(2e6, 1e7, core);
+ * state.pressure; // => 1.0e23
+ * state.adiabaticGradient; // => 0.4
+ * ```
+ */
+export function whiteDwarfMatter(options: WhiteDwarfMatterOptions = {}): EquationOfState {
+  const parts = [electronPositronGas()];
+  if (options.ions ?? true) parts.push(idealIons());
+  if (options.radiation ?? true) parts.push(radiation());
+  return combine(...parts);
+}
