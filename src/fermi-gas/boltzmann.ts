@@ -6,12 +6,13 @@
  *
  *     B_k = int p^2 e^(-x) x^k dp,   n_- - n_+ = n,   n_- n_+ = (B_0 e^(-1/theta))^2,   P = theta (n_- + n_+)
  *
- * The B_k come from the trapezoidal rule of momentum-ladder.ts (no poles here; four sums, no division). The net
+ * The B_k come from the trapezoidal rule in rapidity (no poles here; four sums, no division). The net
  * density enters exactly, so eta = -500 and the cold pair plasma lose only the ulp of e^(-1/theta).
  */
 import { EXPONENTIAL_OFFSET, EXPONENTIAL_STEPS, exponentialTable } from "../numerics/exponential.js";
 import type { Order } from "../thermodynamics/free-energy.js";
-import { NODE_ENERGY, NODE_NUMBER, NODE_STRIDE, nodesOf, refuseOverflow, rungBelow, stepOf } from "./momentum-ladder.js";
+import { NODE_ENERGY, NODE_NUMBER, NODE_STRIDE, refuseOverflow, stepOf } from "./momentum-ladder.js";
+import { chooseRapidityStep, NO_POLES, rapidityNodesOf } from "./rapidity-nodes.js";
 import {
   ANTIPARTICLES,
   CENTRE,
@@ -36,10 +37,7 @@ import {
   Q,
   THETA,
 } from "./record.js";
-import { GAUSSIAN_HEIGHT } from "./trapezoid.js";
 
-/** ln(1e16) plus three digits for the weights x^3. */
-const DIGITS = 48;
 /** x^3 p^2 e^(-x) < 1e-17 of its integral. */
 const CUT = 56;
 /** B_0 and the mean values B_1/B_0, B_2/B_0, B_3/B_0. */
@@ -49,7 +47,7 @@ const moments = new Float64Array(4);
 export function boltzmann(gas: Float64Array, antiparticles: boolean, order: Order): void {
   const theta = gas[THETA]!;
   const n = gas[NET_DENSITY]!;
-  fillMoments(theta);
+  fillMoments(gas);
   const b0 = moments[0]!;
   const b1 = moments[1]!;
   const b2 = moments[2]!;
@@ -112,12 +110,11 @@ export function boltzmann(gas: Float64Array, antiparticles: boolean, order: Orde
   gas[N12] = evenSecond - 2 * evenFirst;
 }
 
-function fillMoments(theta: number): void {
-  let height = Math.sqrt(GAUSSIAN_HEIGHT * theta);
-  if (height > 1) height = 1; // the branch point p = i
-  const growth = (1 - Math.sqrt(1 - height * height)) / theta;
-  const rung = rungBelow((2 * Math.PI * height) / (DIGITS + growth));
-  const row = nodesOf(rung);
+function fillMoments(gas: Float64Array): void {
+  const theta = gas[THETA]!;
+  gas[ETA] = Number.NEGATIVE_INFINITY; // classical: the growth of e^(-x) alone limits the step
+  const rung = chooseRapidityStep(gas, NO_POLES);
+  const row = rapidityNodesOf(rung);
   const inverse = 1 / theta;
   let b0 = 0;
   let b1 = 0;

@@ -6,13 +6,7 @@
  * binomial series for x^2 < 0.03, entire series in asinh x for x^2 < 1, closed form above. Measured: 1.3e-15.
  */
 
-import {
-  ENERGY,
-  type Order,
-  PRESSURE,
-  PRESSURE_R,
-  PRESSURE_RR,
-} from "../thermodynamics/free-energy.js";
+import { ENERGY, type Order, PRESSURE, PRESSURE_R, PRESSURE_RR } from "../thermodynamics/free-energy.js";
 import { CENTRE, FERMI_MOMENTUM, KINETIC_MU, NET_DENSITY, P00, PSI } from "./record.js";
 
 /** Fermi energy without rest mass, e_F = x^2/(1 + sqrt(1 + x^2)), in mc^2. */
@@ -71,9 +65,8 @@ export function addColdMembers(gas: Float64Array, scale: Float64Array, order: Or
   const unit = scale[0]!;
   const n = gas[NET_DENSITY]!;
   const x = gas[FERMI_MOMENTUM]!;
-  const energy = fermiEnergy(x);
+  const energy = gas[KINETIC_MU]!;
   const total = 1 + energy;
-  gas[KINETIC_MU] = energy;
   gas[CENTRE] = energy;
   gas[PSI] = 0;
   coldPressure(gas);

@@ -56,8 +56,7 @@ export function addGasMembers(gas: Float64Array, scale: Float64Array, order: Ord
   const d = -inverse * a * (n20 * b + n11);
   const f = -inverse * (n20 * b * b + 2 * n11 * b + n02);
   const g =
-    -inverse *
-    (n20 * (a * f + 2 * b * d) + 2 * n11 * d + a * (gas[N30]! * b * b + 2 * gas[N21]! * b + gas[N12]!));
+    -inverse * (n20 * (a * f + 2 * b * d) + 2 * n11 * d + a * (gas[N30]! * b * b + 2 * gas[N21]! * b + gas[N12]!));
   members[HEAT_T]! += unitTheta * (gas[M23]! - 3 * gas[M12]! + b * (2 * n02 + 3 * lambda * n01 + n11 * b) + n01 * f);
   members[PRESSURE_RR]! += unitTheta * n * (a + c);
   members[PRESSURE_RT]! += unitTheta * n * (d + lambda * a);

@@ -12,6 +12,7 @@ import {
   ELECTRON_CHEMICAL_POTENTIAL,
   ELECTRON_DEGENERACY,
   ELECTRON_DENSITY,
+  FERMI_ENERGY,
   POSITRON_DENSITY,
   RELATIVITY,
   TEMPERATURE,
@@ -25,6 +26,7 @@ import {
   ANTIPARTICLES,
   CENTRE,
   FERMI_MOMENTUM,
+  KINETIC_MU,
   NET_DENSITY,
   NU,
   PSI,
@@ -45,6 +47,7 @@ export function electronPositronGas(): Contribution {
   function enter(point: Float64Array): void {
     gas[NET_DENSITY] = point[ELECTRON_DENSITY]! * netDensityPerCubicCentimetre;
     gas[FERMI_MOMENTUM] = point[RELATIVITY]!;
+    gas[KINETIC_MU] = point[FERMI_ENERGY]!;
     gas[THETA] = point[TEMPERATURE]! / electronRestTemperature;
     scale[0] = pressureUnit / point[DENSITY]!;
   }

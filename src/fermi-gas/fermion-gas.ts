@@ -12,10 +12,10 @@ import { nuclide } from "../matter/nuclides.js";
 import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
 import type { Contribution } from "../thermodynamics/contribution.js";
 import type { Order } from "../thermodynamics/free-energy.js";
-import { addColdGasSlopes, addColdMembers } from "./cold.js";
+import { addColdGasSlopes, addColdMembers, fermiEnergy } from "./cold.js";
 import { addGasMembers } from "./density-derivatives.js";
 import { solveDensity } from "./net-density.js";
-import { FERMI_MOMENTUM, NET_DENSITY, RECORD_LENGTH, THETA } from "./record.js";
+import { FERMI_MOMENTUM, KINETIC_MU, NET_DENSITY, RECORD_LENGTH, THETA } from "./record.js";
 
 /** Options of {@link fermionGas}. */
 export interface FermionGasOptions {
@@ -64,6 +64,7 @@ export function fermionGas(options: FermionGasOptions): Contribution {
     const n = (point[DENSITY]! * perNucleon) / (atomicMassConstant * densityUnit);
     gas[NET_DENSITY] = n;
     gas[FERMI_MOMENTUM] = Math.cbrt(3 * n);
+    gas[KINETIC_MU] = fermiEnergy(gas[FERMI_MOMENTUM]!);
     gas[THETA] = point[TEMPERATURE]! / restTemperature;
     scale[0] = (restEnergy * densityUnit) / point[DENSITY]!;
     return true;

@@ -12,6 +12,11 @@ const HIGHEST = 136;
 /** Nodes kept per step; 45 is the most seen in 300 000 random states. The row ends with a sentinel. */
 const CAPACITY = 96;
 
+/** ln(1e16) plus the logarithm of the first omitted pole's amplitude, 1e2...1e3 (tuned by measurement). */
+export const DIGITS = 45;
+/** A Gaussian e^(-p^2/2 theta) grows to 1e16 at height sqrt(74 theta): beyond, growth wins over decay. */
+export const GAUSSIAN_HEIGHT = 74;
+
 /** Numbers per node. */
 export const NODE_STRIDE = 4;
 /** E - 1, rounded. */

@@ -35,9 +35,9 @@ import {
   SWEEPS,
   THETA,
 } from "./record.js";
+import { singleSpecies } from "./single-species.js";
 import { SOMMERFELD_ETA, SOMMERFELD_ETA_THIRD, sommerfeld } from "./sommerfeld.js";
 import { REGIME_CLASSICAL, REGIME_DEGENERATE, startValue } from "./start-value.js";
-import { singleSpecies } from "./single-species.js";
 import { trapezoid } from "./trapezoid.js";
 
 /** Relative offset from which a Taylor step leaves less than 1e-14 in every second-order member. */
@@ -49,7 +49,7 @@ const STEP_LENGTH = 0;
 const UNIT = 1;
 
 /**
- * Fills the record at its NET_DENSITY >= 0 (> 0 without `antiparticles`), FERMI_MOMENTUM and THETA > 0. At n = 0 nothing is charged: nu = 0.
+ * Fills the record at its NET_DENSITY >= 0 (> 0 without `antiparticles`), KINETIC_MU = e_F and THETA > 0. At n = 0 nothing is charged: nu = 0.
  * Throws `no-convergence` after 40 sweeps (not seen).
  */
 export function solveDensity(gas: Float64Array, antiparticles: boolean, order: Order): void {

@@ -5,12 +5,23 @@
  * n = int sinh^2 u cosh u f du, P = int (sinh^4 u)/3 f du. Rows have the layout of momentum-ladder.ts.
  */
 import {
+  DIGITS,
+  GAUSSIAN_HEIGHT,
   NODE_ENERGY,
   NODE_NUMBER,
   NODE_PRESSURE,
   NODE_STRIDE,
+  rungBelow,
   stepOf,
 } from "./momentum-ladder.js";
+import { CONTOUR, ETA, THETA } from "./record.js";
+
+/** Height in u below which no cut or zero of cosh u disturbs (pi/2 less a margin). */
+const CLEAR_HEIGHT = 1.35;
+/** The weights grow with cosh u: three digits more than in momentum. */
+const EXTRA_DIGITS = 3;
+/** Stands for "no pole comes near": the classical gas, and positrons far from degeneracy. */
+export const NO_POLES = -1;
 
 const CAPACITY = 256;
 const rows: Float64Array[] = [];
@@ -36,4 +47,34 @@ function buildRow(rung: number): Float64Array {
   row[NODE_STRIDE * CAPACITY + NODE_ENERGY] = Number.POSITIVE_INFINITY;
   rows[rung] = row;
   return row;
+}
+
+/**
+ * The rung of the largest sufficient step, as in trapezoid.ts, for the record's ETA and THETA; writes CONTOUR.
+ * `poles`: how many are corrected for, or NO_POLES.
+ */
+export function chooseRapidityStep(gas: Float64Array, poles: number): number {
+  const theta = gas[THETA]!;
+  const eta = gas[ETA]!;
+  const kinetic = eta * theta;
+  let y = CLEAR_HEIGHT;
+  if (poles !== NO_POLES && kinetic > -1) {
+    const frequency = Math.PI * theta * (2 * poles + 1);
+    const re = kinetic * (kinetic + 2) - frequency * frequency;
+    const im = 2 * (1 + kinetic) * frequency;
+    const modulus = Math.sqrt(re * re + im * im);
+    const larger = Math.sqrt(0.5 * (modulus + Math.abs(re)));
+    const smaller = (0.5 * im) / larger;
+    const pRe = re > 0 ? larger : smaller;
+    const pIm = re > 0 ? smaller : larger;
+    const height = Math.atan2(frequency + pIm, 1 + kinetic + pRe);
+    if (height < y) y = height;
+  }
+  const gaussian = Math.sqrt(GAUSSIAN_HEIGHT * theta);
+  if (y > gaussian) y = gaussian;
+  let growth = (1 - Math.cos(y)) / theta;
+  const bound = eta < 0 ? 1 - eta : 1;
+  if (growth > bound) growth = bound;
+  gas[CONTOUR] = y;
+  return rungBelow((2 * Math.PI * y) / (DIGITS + EXTRA_DIGITS + growth));
 }

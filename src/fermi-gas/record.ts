@@ -27,7 +27,7 @@ export const FERMI_MOMENTUM = 2;
 export const ETA = 3;
 /** mu/theta. */
 export const NU = 4;
-/** mu - 1, the unknown where the gas is degenerate. */
+/** mu - 1, the unknown where the gas is degenerate; on entry its value at T = 0, the Fermi energy of the net density. */
 export const KINETIC_MU = 5;
 /** Ec - 1. */
 export const CENTRE = 6;

@@ -10,8 +10,7 @@
  * Fermi corrections are a power series in X without structure at the scale e^(-1/theta): one smooth table of 1500
  * numbers serves classical gas, pairs, and the onset of degeneracy. Only the start depends on it.
  */
-import { fermiEnergy } from "./cold.js";
-import { ETA, FERMI_MOMENTUM, KINETIC_MU, NET_DENSITY, NU, THETA } from "./record.js";
+import { ETA, KINETIC_MU, NET_DENSITY, NU, THETA } from "./record.js";
 import { densityCoefficients, tableCoefficients } from "./start-table.js";
 
 /** How to solve from here: 0 trapezoid, 1 degenerate (KINETIC_MU is the unknown), 2 classical (no equation). */
@@ -37,13 +36,12 @@ const T = 2;
 const D = 3;
 
 /**
- * Writes ETA and NU, or KINETIC_MU, into the record; reads NET_DENSITY, FERMI_MOMENTUM and THETA.
+ * Writes ETA and NU, or KINETIC_MU, into the record; reads NET_DENSITY, THETA, and KINETIC_MU = e_F of the cold gas.
  * Without `antiparticles` the start is good to some 10 % between the classical and the degenerate gas.
  */
 export function startValue(gas: Float64Array, antiparticles: boolean): Regime {
   const theta = gas[THETA]!;
   const n = gas[NET_DENSITY]!;
-  gas[KINETIC_MU] = fermiEnergy(gas[FERMI_MOMENTUM]!);
   if (gas[KINETIC_MU]! > DEGENERATE_START * theta) {
     degenerateStart(gas);
     return REGIME_DEGENERATE;

@@ -9,7 +9,7 @@
  * For particles alone the cut costs e^(-nu - 2 pi/h): antiparticles are left out only where that is below 1e-17.
  */
 import type { Order } from "../thermodynamics/free-energy.js";
-import { nodesOf, rungBelow, stepOf, vacuumTermOf } from "./momentum-ladder.js";
+import { DIGITS, GAUSSIAN_HEIGHT, nodesOf, rungBelow, stepOf, vacuumTermOf } from "./momentum-ladder.js";
 import { fillFactors, sumPairs, sumPairsThird, sumParticles, sumParticlesThird } from "./node-sums.js";
 import { addPoleResidues } from "./pole-residues.js";
 import {
@@ -51,10 +51,6 @@ import {
   THETA,
 } from "./record.js";
 
-/** ln(1e16) plus the logarithm of the first omitted pole's amplitude, 1e2...1e3 (tuned by measurement). */
-export const DIGITS = 45;
-/** A Gaussian e^(-p^2/2 theta) grows to 1e16 at height sqrt(74 theta): beyond, growth wins over decay. */
-export const GAUSSIAN_HEIGHT = 74;
 /** x^(7/2) e^(-x) < 1e-17 of the integral: end of the sums of order 2, and x^(9/2) e^(-x) of order 3. */
 const CUT_SECOND = 52;
 const CUT_THIRD = 57;

@@ -109,9 +109,9 @@ const sumTolerance = 1e-10;
  * electrons of a mixture exactly, ion terms roughly (charge moments of a mixture are larger).
  *
  * @param fractions - nucleon fractions by label (see `nuclide`), or `{ meanMassNumber, meanCharge }`
- * @throws FermistateError `unknown-nuclide`, `not-a-number` (a fraction that is no finite number), `invalid-composition`
- * (empty, negative, not summing to one; the message gives the sum), `out-of-range` (a mean nucleus with A
- * outside 1..10000 or Z outside 0..A), `invalid-option`
+ * @throws FermistateError `unknown-nuclide`, `not-a-number` (a fraction that is no finite number),
+ * `invalid-composition` (empty, negative, not summing to one; the message gives the sum), `out-of-range` (a mean
+ * nucleus with A outside 1..10000 or Z outside 0..A), `invalid-option`
  * @example
  * ```ts
  * composition({ C12: 0.5, O16: 0.5 }).electronsPerNucleon; // 0.5
@@ -208,7 +208,8 @@ function fromSpecies(shares: readonly Share[]): Composition {
   const species = shares.map(
     (one): Species => Object.freeze({ ...one, numberFraction: one.nucleonFraction / one.massNumber / ionsPerNucleon }),
   );
-  const moment = (power: number): number => total(species, (one) => one.numberFraction * one.chargeNumber ** power);
+  const moment = (power: (z: number) => number): number =>
+    total(species, (one) => one.numberFraction * power(one.chargeNumber));
   const charged = species.filter((one) => one.chargeNumber > 0);
   const ionsPerGram = ionsPerNucleon / atomicMassConstant;
   const made: Composition = {
@@ -217,14 +218,15 @@ function fromSpecies(shares: readonly Share[]): Composition {
     ionsPerNucleon,
     electronsPerNucleon,
     meanMassNumber: 1 / ionsPerNucleon,
-    meanCharge: moment(1),
+    meanCharge: moment((z) => z),
+    // Roots, not powers: a power has the rounded exponent's error times ln Z.
     chargeMoments: Object.freeze({
-      twoThirds: moment(2 / 3),
-      fourThirds: moment(4 / 3),
-      fiveThirds: moment(5 / 3),
-      squared: moment(2),
-      sevenThirds: moment(7 / 3),
-      fiveHalves: moment(5 / 2),
+      twoThirds: moment((z) => Math.cbrt(z) ** 2),
+      fourThirds: moment((z) => z * Math.cbrt(z)),
+      fiveThirds: moment((z) => z * Math.cbrt(z) ** 2),
+      squared: moment((z) => z * z),
+      sevenThirds: moment((z) => z * z * Math.cbrt(z)),
+      fiveHalves: moment((z) => z * z * Math.sqrt(z)),
     }),
     ionsPerGram,
     electronsPerGram: electronsPerNucleon / atomicMassConstant,

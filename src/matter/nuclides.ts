@@ -1,9 +1,9 @@
 /**
  * Nuclides: atomic and nuclear masses of AME2020, ground-state spins.
  *
- * Masses: Wang, Huang, Kondev, Audi & Naimi 2021, Chin. Phys. C 45, 030003; Huang et al. 2021, 45, 030002: 3558 ground
- * states, 1008 of them extrapolated from trends. Nuclear mass M = m_atom m_u - Z m_e: the electrons are taken off, their
- * binding energy is not put back. It is 13.6 eV for H1 and 79 eV for He4; by the usual fit 14.4381 Z^2.39 +
+ * Masses: Wang, Huang, Kondev, Audi & Naimi 2021, Chin. Phys. C 45, 030003; Huang et al. 2021, 45, 030002: 3558
+ * ground states, 1008 of them extrapolated from trends. Nuclear mass M = m_atom m_u - Z m_e: the electrons are taken
+ * off, their binding energy is not put back. It is 13.6 eV for H1 and 79 eV for He4; by the usual fit 14.4381 Z^2.39 +
  * 1.55468e-6 Z^5.35 eV (Lunney, Pearson & Thibault 2003, Rev. Mod. Phys. 75, 1021) 7e-7 of M for Fe56, 4e-6 for U238.
  */
 import { atomicMassConstant, electronMass } from "../constants.js";
@@ -62,33 +62,29 @@ let labels: readonly string[] | undefined;
 /** Labels of all 3558 nuclides of AME2020, by charge number, then mass number. */
 export function nuclides(): readonly string[] {
   labels ??= Object.freeze(
-    [...isotopes()].flatMap(([symbol, { first, last }]) =>
-      Array.from({ length: last - first + 1 }, (_, index) => labelOf(symbol, first + index)),
-    ),
+    [...elements()].flatMap(([symbol, chargeNumber]) => {
+      const { first, entries } = isotopes(chargeNumber);
+      return entries.map((_, place) => labelOf(symbol, first + place));
+    }),
   );
   return labels;
 }
 
 const labelOf = (symbol: string, massNumber: number): string => (symbol === "n" ? "n" : `${symbol}${massNumber}`);
 
-/** What one element has: its charge number and the ends of its unbroken range of mass numbers. */
-interface Isotopes {
-  readonly chargeNumber: number;
-  readonly first: number;
-  readonly last: number;
+let charges: ReadonlyMap<string, number> | undefined;
+
+/** Charge number by symbol, in order of charge. */
+function elements(): ReadonlyMap<string, number> {
+  charges ??= new Map(nuclideTable.map((row, chargeNumber) => [row.slice(0, row.indexOf(" ")), chargeNumber]));
+  return charges;
 }
 
-let elements: ReadonlyMap<string, Isotopes> | undefined;
-
-/** Elements by symbol, in order of charge. */
-function isotopes(): ReadonlyMap<string, Isotopes> {
-  elements ??= new Map(
-    nuclideTable.map((row, chargeNumber) => {
-      const [symbol = "", first, ...entries] = row.split(" ");
-      return [symbol, { chargeNumber, first: Number(first), last: Number(first) + entries.length - 1 }];
-    }),
-  );
-  return elements;
+/** Entries of one row of the table, and the mass number of the first and the last. */
+function isotopes(chargeNumber: number): { first: number; last: number; entries: readonly string[] } {
+  const [, massNumber, ...entries] = (nuclideTable[chargeNumber] ?? "").split(" ");
+  const first = Number(massNumber);
+  return { first, last: first + entries.length - 1, entries };
 }
 
 /** Splits "C12" into symbol and mass number; undefined where the text is not of that form. */
@@ -101,13 +97,13 @@ function parts(label: unknown): { symbol: string; massNumber: number } | undefin
 /** The nuclide from its row of the table. */
 function read(label: unknown): Nuclide {
   const { symbol = "", massNumber = 0 } = parts(label) ?? {};
-  const element = isotopes().get(symbol);
-  const place = massNumber - (element?.first ?? Number.POSITIVE_INFINITY);
-  const entry = element && nuclideTable[element.chargeNumber]?.split(" ")[2 + place];
-  if (element === undefined || place < 0 || entry === undefined) throw unknown(label);
+  const chargeNumber = elements().get(symbol);
+  if (chargeNumber === undefined) throw unknown(label);
+  const { first, entries } = isotopes(chargeNumber);
+  const entry = entries[massNumber - first];
+  if (entry === undefined) throw unknown(label);
 
   const [decimals = "", deviation] = entry.split(/[,#]/);
-  const { chargeNumber } = element;
   const neutronNumber = massNumber - chargeNumber;
   // As text, so that the mass is rounded once.
   const atomicMass = Number(`${decimals < "5" ? massNumber : massNumber - 1}.${decimals}`);
@@ -126,8 +122,9 @@ function read(label: unknown): Nuclide {
 }
 
 function unknown(label: unknown): FermistateError {
+  const form = "element symbol and mass number of a nuclide in AME2020, as in C12, or n";
   const near = nearest(label).join(", ");
-  const allowed = `element symbol and mass number of a nuclide in AME2020, as in C12, or n${near && `; nearest: ${near}`}`;
+  const allowed = near === "" ? form : `${form}; nearest: ${near}`;
   return new FermistateError("unknown-nuclide", { argument: "nuclide", given: label, allowed });
 }
 
@@ -149,16 +146,16 @@ function nearest(label: unknown): string[] {
   const letters = /[A-Za-z]+/.exec(text)?.[0] ?? "";
   const symbol = letters.slice(0, 1).toUpperCase() + letters.slice(1).toLowerCase();
   const massNumber = Number(/\d+/.exec(text)?.[0] ?? Number.NaN);
-  const element = isotopes().get(symbol);
-  if (element !== undefined && massNumber >= element.first && massNumber <= element.last) {
-    return [labelOf(symbol, massNumber)];
-  }
   const found: string[] = [];
-  if (element !== undefined) {
-    found.push(labelOf(symbol, massNumber > element.last ? element.last : element.first));
-    if (Number.isNaN(massNumber)) found.push(labelOf(symbol, element.last));
+  const chargeNumber = elements().get(symbol);
+  if (chargeNumber !== undefined) {
+    const { first, last } = isotopes(chargeNumber);
+    if (massNumber >= first && massNumber <= last) return [labelOf(symbol, massNumber)];
+    found.push(labelOf(symbol, massNumber > last ? last : first));
+    if (Number.isNaN(massNumber)) found.push(labelOf(symbol, last));
   }
-  for (const [other, { first, last }] of isotopes()) {
+  for (const [other, otherCharge] of elements()) {
+    const { first, last } = isotopes(otherCharge);
     const similar = other !== "n" && other !== symbol && [...other].some((letter, at) => symbol[at] === letter);
     if (similar && massNumber >= first && massNumber <= last) found.push(labelOf(other, massNumber));
   }

@@ -17,7 +17,6 @@ import {
   bohrRadius,
   boltzmannConstant,
   electronDensityUnit,
-  electronRestTemperature,
   elementaryChargeSquared,
   fineStructureConstant,
   reducedPlanckConstant,
@@ -38,8 +37,8 @@ export const DENSITY_PARAMETER = 4;
 export const ELECTRON_COUPLING = 5;
 /** Gamma; Infinity at T = 0. */
 export const ION_COUPLING = 6;
-/** T_F, K. */
-export const FERMI_TEMPERATURE = 7;
+/** e_F/(m_e c^2) = sqrt(1 + x_r^2) - 1 = k T_F/(m_e c^2). */
+export const FERMI_ENERGY = 7;
 /** T_p, K. */
 export const PLASMA_TEMPERATURE = 8;
 
@@ -57,8 +56,9 @@ export const RADIATION_PRESSURE = 12;
 /** Length of the record. */
 export const POINT_LENGTH = 16;
 
+const relativityFactor = 3 / electronDensityUnit;
 const radiusFactor = Math.cbrt((9 * Math.PI) / 4) * fineStructureConstant;
-const couplingFactor = elementaryChargeSquared / (bohrRadius * boltzmannConstant);
+const couplingFactor = elementaryChargeSquared / (bohrRadius * boltzmannConstant * radiusFactor);
 const plasmaFactor = (reducedPlanckConstant / boltzmannConstant) ** 2 * 4 * Math.PI * elementaryChargeSquared;
 
 /** Fills the plasma variables from DENSITY and TEMPERATURE, and clears what contributions write. */
@@ -66,17 +66,16 @@ export function fillPlasma(point: Float64Array, composition: Composition): void 
   const density = point[DENSITY]!;
   const temperature = point[TEMPERATURE]!;
   const electrons = density * composition.electronsPerGram;
-  const x = Math.cbrt((3 * electrons) / electronDensityUnit);
-  const radius = radiusFactor / x;
+  const x = Math.cbrt(electrons * relativityFactor);
   // Without electrons the coupling is zero at every temperature, T = 0 included.
-  const coupling = electrons === 0 ? 0 : couplingFactor / (radius * temperature);
+  const coupling = electrons === 0 ? 0 : (couplingFactor * x) / temperature;
   const ions = density * composition.ionsPerGram;
   point[ELECTRON_DENSITY] = electrons;
   point[RELATIVITY] = x;
-  point[DENSITY_PARAMETER] = radius;
+  point[DENSITY_PARAMETER] = radiusFactor / x;
   point[ELECTRON_COUPLING] = coupling;
   point[ION_COUPLING] = coupling * composition.chargeMoments.fiveThirds;
-  point[FERMI_TEMPERATURE] = (electronRestTemperature * x * x) / (1 + Math.sqrt(1 + x * x));
+  point[FERMI_ENERGY] = (x * x) / (1 + Math.sqrt(1 + x * x));
   point[PLASMA_TEMPERATURE] = Math.sqrt(plasmaFactor * ions * composition.plasmaFrequencySum);
   point[ELECTRON_CHEMICAL_POTENTIAL] = Number.NaN;
   point[ELECTRON_DEGENERACY] = Number.NaN;

@@ -3,7 +3,7 @@
  *
  * Even-even nuclei have J = 0 without exception. The others: from memory of the standard nuclear data evaluations,
  * only where the assignment is firm; the stable and long-lived ones are checked by the tests against the spins printed
- * in Rauch & Waschkowski 2003, Neutron Data Booklet. Everything else is undefined: a caller must say that it does not know.
+ * in Rauch & Waschkowski 2003, Neutron Data Booklet. Everything else is undefined: the caller says that it is unknown.
  */
 
 /** Labels by 2J, the index of the array. */

@@ -7,6 +7,7 @@ import { commonDomain, holds, refusePoint } from "./domain.js";
 import type { BatchInput, BatchOutput, EquationOfState, FreeEnergyDerivatives, State } from "./equation-of-state.js";
 import { MEMBER_COUNT, naturalDerivatives, type Order } from "./free-energy.js";
 import { fillQuantities, QUANTITY_COUNT, type QuantityName, quantities, quantityNames } from "./quantities.js";
+import { stateFrom } from "./state.js";
 
 /**
  * An equation of state from contributions: leaving one out switches its physics off.
@@ -60,12 +61,7 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
     for (const part of parts) part.addDetail?.(point, composition);
     if (temperature === 0) fillCold(composition);
     fillQuantities(point, members, cold, record, -1);
-    const result: Record<string, unknown> = { density, temperature, composition };
-    for (let i = 0; i < QUANTITY_COUNT; i++) {
-      const value = record[i]!;
-      result[quantityNames[i]!] = Number.isNaN(value) ? undefined : value;
-    }
-    return Object.freeze(result) as State;
+    return stateFrom(density, temperature, composition, record);
   }
 
   function evaluate(input: BatchInput, output: BatchOutput): void {
@@ -94,7 +90,7 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
       fillQuantities(point, members, cold, record, i);
       for (let j = 0; j < columns.length; j++) {
         const value = record[slots[j]!]!;
-        if (value !== value) refuseQuantity(quantityNames[slots[j]!]!);
+        if (Number.isNaN(value)) refuseQuantity(quantityNames[slots[j]!]!);
         columns[j]![i] = value;
       }
     }
@@ -163,7 +159,11 @@ function checkColumns(input: BatchInput, output: BatchOutput): number {
     }
     requireColumn(name, column);
     if (column.length < count) {
-      throw new FermistateError("length-mismatch", { argument: name, given: column.length, allowed: `>= ${count} rows` });
+      throw new FermistateError("length-mismatch", {
+        argument: name,
+        given: column.length,
+        allowed: `>= ${count} rows`,
+      });
     }
   }
   return count;
@@ -171,7 +171,10 @@ function checkColumns(input: BatchInput, output: BatchOutput): number {
 
 function requireColumn(argument: string, column: unknown): void {
   if (column instanceof Float64Array) return;
-  throw new FermistateError("invalid-option", withIndex({ argument, given: column, allowed: "a Float64Array" }, undefined));
+  throw new FermistateError(
+    "invalid-option",
+    withIndex({ argument, given: column, allowed: "a Float64Array" }, undefined),
+  );
 }
 
 function refuseQuantity(name: QuantityName): never {

@@ -42,7 +42,7 @@ export function refusePoint(
   for (const { name, domain } of contributions) {
     const [lowest, highest] = domain.density;
     if (rho < lowest || rho > highest) {
-      fail("outside-domain", "density", rho, `${lowest} to ${highest} g/cm^3 (${name})`);
+      fail("outside-domain", "density", rho, `${compact(lowest)} to ${compact(highest)} g/cm^3 (${name})`);
     }
     if (kelvin === 0 ? !domain.zeroTemperature : kelvin < domain.temperature[0] || kelvin > domain.temperature[1]) {
       const zero = domain.zeroTemperature ? "0, or " : "";
@@ -50,9 +50,16 @@ export function refusePoint(
         "outside-domain",
         "temperature",
         kelvin,
-        `${zero}${domain.temperature[0]} to ${domain.temperature[1]} K (${name})`,
+        `${zero}${compact(domain.temperature[0])} to ${compact(domain.temperature[1])} K (${name})`,
       );
     }
   }
   return fail("outside-domain", "density", rho, "a point inside the domain of every contribution");
+}
+
+/** The shorter of 0.001 and 1e-3: for messages. */
+function compact(value: number): string {
+  const plain = String(value);
+  const scientific = value.toExponential().replace("e+", "e");
+  return scientific.length < plain.length ? scientific : plain;
 }

@@ -5,7 +5,7 @@
  * operations on numbers that are accurate on their own; no two formulas lead to the same quantity.
  * Definitions as in Cox & Giuli 1968, Principles of Stellar Structure, chapter 9.
  */
-import { speedOfLight } from "../constants.js";
+import { electronRestTemperature, speedOfLight } from "../constants.js";
 import { FermistateError, withIndex } from "../errors.js";
 import {
   DENSITY,
@@ -14,7 +14,7 @@ import {
   ELECTRON_COUPLING,
   ELECTRON_DEGENERACY,
   ELECTRON_DENSITY,
-  FERMI_TEMPERATURE,
+  FERMI_ENERGY,
   ION_COUPLING,
   PLASMA_TEMPERATURE,
   POSITRON_DENSITY,
@@ -35,7 +35,10 @@ export interface Quantity {
 /** All quantities of a state, in the order of the record that {@link fillQuantities} writes. */
 export const quantities = {
   pressure: { unit: "dyn/cm^2", description: "pressure P" },
-  specificEnergy: { unit: "erg/g", description: "specific internal energy e, without rest mass of ions and net electrons" },
+  specificEnergy: {
+    unit: "erg/g",
+    description: "specific internal energy e, without rest mass of ions and net electrons",
+  },
   specificEntropy: { unit: "erg/(g K)", description: "specific entropy s" },
   specificFreeEnergy: { unit: "erg/g", description: "specific Helmholtz free energy F = e - T s" },
   specificEnthalpy: { unit: "erg/g", description: "specific enthalpy e + P/rho" },
@@ -84,6 +87,8 @@ export const electronQuantities: readonly QuantityName[] = [
   "positronDensity",
 ];
 
+const PER_LIGHT_SPEED_SQUARED = 1 / (speedOfLight * speedOfLight);
+
 /**
  * Fills `out` (order of {@link quantities}) from the summed members.
  * `cold[0]`, `cold[1]`: limits of c_v/T and (dP/dT)/(rho T) at T = 0; `cold[2]`: residual entropy. Read only at T = 0.
@@ -110,42 +115,44 @@ export function fillQuantities(
   const adiabatic = compressibility + thermal * grueneisen; // (dP/drho) at constant entropy
   if (!(specificPressure !== 0 && adiabatic >= 0)) refuseSum(specificPressure, index);
   const pressure = specificPressure * density;
-  const gamma1 = adiabatic / specificPressure;
+  const perPressure = 1 / specificPressure;
+  const perDensity = 1 / density;
+  const perTemperature = atZero ? 0 : 1 / temperature; // the members it multiplies vanish at T = 0
+  const gamma1 = adiabatic * perPressure;
   const gradient = grueneisen / gamma1;
-  const heatCapacity = atZero ? 0 : heat / temperature;
-  const entropyByDensity = atZero ? 0 : -thermal / (density * temperature);
+  const heatCapacity = heat * perTemperature;
 
   out[0] = pressure;
   out[1] = energy;
-  out[2] = atZero ? cold[2]! : members[ENTROPY]! / temperature;
+  out[2] = atZero ? cold[2]! : members[ENTROPY]! * perTemperature;
   out[3] = energy - members[ENTROPY]!;
   out[4] = energy + specificPressure;
   out[5] = heatCapacity;
   out[6] = (heatCapacity * adiabatic) / compressibility;
-  out[7] = compressibility / specificPressure;
-  out[8] = thermal / specificPressure;
+  out[7] = compressibility * perPressure;
+  out[8] = thermal * perPressure;
   out[9] = gamma1;
   out[10] = 1 / (1 - gradient);
   out[11] = 1 + grueneisen;
   out[12] = gradient;
-  out[13] = Math.sqrt(adiabatic / (1 + (energy + specificPressure) / (speedOfLight * speedOfLight)));
+  out[13] = Math.sqrt(adiabatic / (1 + (energy + specificPressure) * PER_LIGHT_SPEED_SQUARED));
   out[14] = adiabatic * density;
   out[15] = compressibility;
-  out[16] = atZero ? 0 : (thermal * density) / temperature;
-  out[17] = (specificPressure - thermal) / density;
+  out[16] = thermal * density * perTemperature;
+  out[17] = (specificPressure - thermal) * perDensity;
   out[18] = heatCapacity;
-  out[19] = entropyByDensity;
-  out[20] = atZero ? cold[0]! : heatCapacity / temperature;
+  out[19] = -thermal * perDensity * perTemperature;
+  out[20] = atZero ? cold[0]! : heatCapacity * perTemperature;
   out[21] = point[ELECTRON_DENSITY]!;
   out[22] = point[ELECTRON_CHEMICAL_POTENTIAL]!;
   out[23] = point[ELECTRON_DEGENERACY]!;
   out[24] = point[POSITRON_DENSITY]!;
-  out[25] = point[RADIATION_PRESSURE]! / pressure;
+  out[25] = point[RADIATION_PRESSURE]! * perPressure * perDensity;
   out[26] = point[RELATIVITY]!;
   out[27] = point[DENSITY_PARAMETER]!;
   out[28] = point[ELECTRON_COUPLING]!;
   out[29] = point[ION_COUPLING]!;
-  out[30] = point[FERMI_TEMPERATURE]!;
+  out[30] = point[FERMI_ENERGY]! * electronRestTemperature;
   out[31] = point[PLASMA_TEMPERATURE]!;
 }
 
