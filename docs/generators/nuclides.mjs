@@ -3,8 +3,9 @@
  *
  *   node docs/generators/nuclides.mjs mass.mas20.txt > src/matter/nuclide-table.ts
  *
- * The file comes from the authors' pages: Wang, Huang, Kondev, Audi & Naimi 2021, Chin. Phys. C 45, 030003; Huang et al.
- * 2021, 45, 030002. Columns are those of its Fortran format line (counted from 0 below). Anything irregular stops the run.
+ * The file is distributed by its authors: Wang, Huang, Kondev, Audi & Naimi 2021, Chin. Phys. C 45, 030003; Huang et
+ * al. 2021, 45, 030002. Columns are those of its Fortran format line, counted from 0 here. Anything irregular stops
+ * the run.
  */
 import { createHash } from "node:crypto";
 import { readFileSync } from "node:fs";

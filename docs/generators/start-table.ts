@@ -9,9 +9,9 @@ import { ETA, KINETIC_MU, N00, N10, NU, RECORD_LENGTH, THETA } from "../../src/f
 import { sommerfeld } from "../../src/fermi-gas/sommerfeld.js";
 import {
   BRANCH_POINT,
+  densityCoordinate,
   densityLimit,
   densityTemperature,
-  densityCoordinate,
   largestX,
   PATCH_SIZE,
   PATCHES_T,

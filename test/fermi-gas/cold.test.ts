@@ -78,7 +78,14 @@ describe("join with finite temperature", () => {
     test(`x = ${x}: the difference falls as T^2, and is 2e-15 once pi^2 (kT/E_F)^2 < 1e-16`, () => {
       const density = 2 * 973932.1720105553 * x ** 3;
       const cold = gas.state(density, 0, helium);
-      const fields = ["pressure", "specificEnergy", "pressureByDensity", "soundSpeed", "gamma1", "specificFreeEnergy"] as const;
+      const fields = [
+        "pressure",
+        "specificEnergy",
+        "pressureByDensity",
+        "soundSpeed",
+        "gamma1",
+        "specificFreeEnergy",
+      ] as const;
       const differences = [1e-2, 1e-3, 1e-4].map((ratio) => {
         const warm = gas.state(density, ratio * cold.fermiTemperature, helium);
         return Math.abs(warm.pressure / cold.pressure - 1) / ratio ** 2;

@@ -103,9 +103,7 @@ describe("two methods at the same point", () => {
         const minus = membersOf(recordFor(eta, theta, nu), singleSpecies, 2);
         const etaPlus = -nu - 1 / theta;
         const plus =
-          etaPlus < -300
-            ? new Float64Array(MEMBER_COUNT)
-            : membersOf(recordFor(etaPlus, theta, -nu), singleSpecies, 2);
+          etaPlus < -300 ? new Float64Array(MEMBER_COUNT) : membersOf(recordFor(etaPlus, theta, -nu), singleSpecies, 2);
         measured.compare("P", a[3]!, minus[3]! + plus[3]!, `theta ${theta} eta ${eta}`);
       }
     }
@@ -151,10 +149,7 @@ describe("a fine sweep in density across a choice that flips", () => {
     `nu ${nu}`,
     (theta) => [nu - 1 / theta, nu],
   ]);
-  const classical: [string, (theta: number) => [number, number]] = [
-    "classical gas",
-    (theta) => [-38, -38 + 1 / theta],
-  ];
+  const classical: [string, (theta: number) => [number, number]] = ["classical gas", (theta) => [-38, -38 + 1 / theta]];
   for (const [name, place] of [...etas, ...nus, classical]) {
     test(name, () => {
       const measured = new Measured();
