@@ -32,8 +32,8 @@ export interface WhiteDwarfMatterOptions {
  * import { composition, whiteDwarfMatter } from "fermistate";
  * const core = composition({ C12: 0.5, O16: 0.5 });
  * const state = whiteDwarfMatter().state(2e6, 1e7, core);
- * state.pressure; // => 1.0e23
- * state.adiabaticGradient; // => 0.4
+ * state.pressure; // => 7.6999e22
+ * state.adiabaticGradient; // => 0.42463
  * ```
  */
 export function whiteDwarfMatter(options: WhiteDwarfMatterOptions = {}): EquationOfState {

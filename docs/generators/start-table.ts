@@ -17,7 +17,7 @@ import {
   PATCHES_T,
   PATCHES_U,
   temperatureAt,
-} from "../../src/fermi-gas/start-value.js";
+} from "../../src/fermi-gas/start-coordinates.js";
 import { trapezoid } from "../../src/fermi-gas/trapezoid.js";
 
 const gas = new Float64Array(RECORD_LENGTH);

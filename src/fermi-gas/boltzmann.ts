@@ -11,8 +11,10 @@
  */
 import { EXPONENTIAL_OFFSET, EXPONENTIAL_STEPS, exponentialTable } from "../numerics/exponential.js";
 import type { Order } from "../thermodynamics/free-energy.js";
-import { NODE_ENERGY, NODE_NUMBER, NODE_STRIDE, refuseOverflow, stepOf } from "./momentum-ladder.js";
-import { chooseRapidityStep, NO_POLES, rapidityNodesOf } from "./rapidity-nodes.js";
+import { CUT_CLASSICAL } from "./accuracy.js";
+import { refuseOverflow, stepOf } from "./momentum-ladder.js";
+import { NODE_ENERGY, NODE_NUMBER, NODE_STRIDE } from "./node-layout.js";
+import { chooseRapidityStep, rapidityNodesOf } from "./rapidity-nodes.js";
 import {
   ANTIPARTICLES,
   CENTRE,
@@ -38,8 +40,6 @@ import {
   THETA,
 } from "./record.js";
 
-/** x^3 p^2 e^(-x) < 1e-17 of its integral. */
-const CUT = 56;
 /** B_0 and the mean values B_1/B_0, B_2/B_0, B_3/B_0. */
 const moments = new Float64Array(4);
 
@@ -113,7 +113,7 @@ export function boltzmann(gas: Float64Array, antiparticles: boolean, order: Orde
 function fillMoments(gas: Float64Array): void {
   const theta = gas[THETA]!;
   gas[ETA] = Number.NEGATIVE_INFINITY; // classical: the growth of e^(-x) alone limits the step
-  const rung = chooseRapidityStep(gas, NO_POLES);
+  const rung = chooseRapidityStep(gas, -1);
   const row = rapidityNodesOf(rung);
   const inverse = 1 / theta;
   let b0 = 0;
@@ -122,7 +122,7 @@ function fillMoments(gas: Float64Array): void {
   let b3 = 0;
   for (let node = 0; ; node += NODE_STRIDE) {
     const x = row[node + NODE_ENERGY]! * inverse;
-    if (!(x < CUT)) {
+    if (!(x < CUT_CLASSICAL)) {
       if (x === Number.POSITIVE_INFINITY) refuseOverflow(theta);
       break;
     }

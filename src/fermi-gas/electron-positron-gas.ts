@@ -62,8 +62,8 @@ export function electronPositronGas(): Contribution {
       if (temperature === 0) {
         addColdMembers(gas, scale, order, members);
         gas[ANTIPARTICLES] = 0;
-      } else if (gas[NET_DENSITY] === 0 && gas[THETA]! < VACUUM_THETA) {
-        gas[CENTRE] = -1; // mu = 0
+      } else if (gas[NET_DENSITY] === 0 && gas[THETA]! < 1 / 650) {
+        gas[CENTRE] = -1; // mu = 0, and not even pairs: their e^(-1/theta) underflows
         gas[PSI] = 0;
         gas[ANTIPARTICLES] = 0;
       } else {
@@ -90,6 +90,3 @@ export function electronPositronGas(): Contribution {
     },
   });
 }
-
-/** Without net electrons and below this temperature not even pairs exist: their e^(-1/theta) underflows. */
-const VACUUM_THETA = 1 / 650;

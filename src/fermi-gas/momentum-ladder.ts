@@ -6,27 +6,12 @@
  */
 import { FermistateError } from "../errors.js";
 import { squareError } from "../numerics/exact-product.js";
+import { NODE_ENERGY, NODE_ENERGY_LOW, NODE_NUMBER, NODE_PRESSURE, NODE_STRIDE } from "./node-layout.js";
 
 const LOWEST = -240;
 const HIGHEST = 136;
 /** Nodes kept per step; 45 is the most seen in 300 000 random states. The row ends with a sentinel. */
 const CAPACITY = 96;
-
-/** ln(1e16) plus the logarithm of the first omitted pole's amplitude, 1e2...1e3 (tuned by measurement). */
-export const DIGITS = 45;
-/** A Gaussian e^(-p^2/2 theta) grows to 1e16 at height sqrt(74 theta): beyond, growth wins over decay. */
-export const GAUSSIAN_HEIGHT = 74;
-
-/** Numbers per node. */
-export const NODE_STRIDE = 4;
-/** E - 1, rounded. */
-export const NODE_ENERGY = 0;
-/** What E - 1 lost by rounding: near the Fermi surface half an ulp of E is amplified by mu/kT. */
-export const NODE_ENERGY_LOW = 1;
-/** p^2, or the weight of number density in general. */
-export const NODE_NUMBER = 2;
-/** p^4/(3E), or the weight of pressure in general. */
-export const NODE_PRESSURE = 3;
 
 const steps = /* @__PURE__ */ Float64Array.from({ length: HIGHEST - LOWEST + 1 }, (_, i) => {
   const exponent = (i + LOWEST) / 8;

@@ -10,6 +10,7 @@
  */
 import { FermistateError } from "../errors.js";
 import type { Order } from "../thermodynamics/free-energy.js";
+import { MOST_SWEEPS, SOMMERFELD_ETA, SOMMERFELD_ETA_THIRD, TAYLOR_RADIUS, TAYLOR_RADIUS_THIRD } from "./accuracy.js";
 import { boltzmann } from "./boltzmann.js";
 import {
   CENTRE,
@@ -31,22 +32,20 @@ import {
   P00,
   PSI,
   Q,
+  REGIME_CLASSICAL,
+  REGIME_DEGENERATE,
   START_ERROR,
+  STEP_LENGTH,
+  STEP_UNIT,
   SWEEPS,
   THETA,
 } from "./record.js";
 import { singleSpecies } from "./single-species.js";
-import { SOMMERFELD_ETA, SOMMERFELD_ETA_THIRD, sommerfeld } from "./sommerfeld.js";
-import { REGIME_CLASSICAL, REGIME_DEGENERATE, startValue } from "./start-value.js";
+import { sommerfeld } from "./sommerfeld.js";
+import { startValue } from "./start-value.js";
 import { trapezoid } from "./trapezoid.js";
 
-/** Relative offset from which a Taylor step leaves less than 1e-14 in every second-order member. */
-const TAYLOR_RADIUS = 2e-7;
-const TAYLOR_RADIUS_THIRD = 1e-7;
-const MOST_SWEEPS = 40;
 const offset = new Float64Array(2);
-const STEP_LENGTH = 0;
-const UNIT = 1;
 
 /**
  * Fills the record at its NET_DENSITY >= 0 (> 0 without `antiparticles`), KINETIC_MU = e_F and THETA > 0. At n = 0 nothing is charged: nu = 0.
@@ -67,7 +66,7 @@ export function solveDensity(gas: Float64Array, antiparticles: boolean, order: O
     gas[SWEEPS] = sweeps + 1;
     measureOffset(gas, degenerate, antiparticles);
     const distance = Math.abs(offset[STEP_LENGTH]!);
-    const unit = offset[UNIT]!;
+    const unit = offset[STEP_UNIT]!;
     if (sweeps === 0) gas[START_ERROR] = unit > 0 ? distance / unit : distance;
     if (order === 2 ? distance <= TAYLOR_RADIUS * unit : near) {
       correct(gas, order);
@@ -112,7 +111,7 @@ function measureOffset(gas: Float64Array, degenerate: boolean, antiparticles: bo
   offset[STEP_LENGTH] = first / (1 + (0.5 * first * gas[N20]!) / slope);
   const eta = gas[ETA]!;
   const nu = gas[NU]!;
-  offset[UNIT] = degenerate ? eta : antiparticles && nu < 1 ? nu : eta > 1 ? eta : 1;
+  offset[STEP_UNIT] = degenerate ? eta : antiparticles && nu < 1 ? nu : eta > 1 ? eta : 1;
 }
 
 /** Replaces the step by one in ln n, capped: for a start value far off. */

@@ -12,14 +12,8 @@
  * with c = yb - y = 2 Ec/theta.
  */
 import { EXPONENTIAL_OFFSET, EXPONENTIAL_STEPS, exponentialTable } from "../numerics/exponential.js";
-import {
-  NODE_ENERGY,
-  NODE_ENERGY_LOW,
-  NODE_NUMBER,
-  NODE_PRESSURE,
-  NODE_STRIDE,
-  refuseOverflow,
-} from "./momentum-ladder.js";
+import { refuseOverflow } from "./momentum-ladder.js";
+import { NODE_ENERGY, NODE_ENERGY_LOW, NODE_NUMBER, NODE_PRESSURE, NODE_STRIDE } from "./node-layout.js";
 import {
   CENTRE,
   CUT,

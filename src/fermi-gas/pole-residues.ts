@@ -22,6 +22,7 @@
 import { squareError } from "../numerics/exact-product.js";
 import { COSINE, cosineAndSine, SINE, TURN } from "../numerics/turn.js";
 import type { Order } from "../thermodynamics/free-energy.js";
+import { CONTOUR_MARGIN } from "./accuracy.js";
 import {
   CONTOUR,
   ETA,
@@ -48,8 +49,6 @@ import {
 export type NodeVariable = "momentum" | "rapidity";
 
 const phase = new Float64Array(3);
-/** A pole counts only below the contour; the margin covers the rounding of the comparison itself. */
-const MARGIN = 1 + 1e-7;
 
 /** Adds the residues of the first `count` poles to the sums of `gas`. */
 export function addPoleResidues(gas: Float64Array, count: number, variable: NodeVariable, order: Order): void {
@@ -60,7 +59,7 @@ export function addPoleResidues(gas: Float64Array, count: number, variable: Node
   const inverseStep = 1 / h;
   const kappa = 2 * Math.PI * inverseStep;
   const weight = -4 * Math.PI * theta;
-  const contour = gas[CONTOUR]! * MARGIN;
+  const contour = gas[CONTOUR]! * CONTOUR_MARGIN;
   const kinetic = gas[ETA]! * theta; // mu - 1
   const eRe = gas[NU]! < 1 ? gas[NU]! * theta : 1 + kinetic;
 

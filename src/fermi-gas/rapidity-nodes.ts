@@ -4,24 +4,10 @@
  * Without antiparticles the cut of E = sqrt(1 + p^2) at p = +-i does not cancel; in u every integrand is free of it:
  * n = int sinh^2 u cosh u f du, P = int (sinh^4 u)/3 f du. Rows have the layout of momentum-ladder.ts.
  */
-import {
-  DIGITS,
-  GAUSSIAN_HEIGHT,
-  NODE_ENERGY,
-  NODE_NUMBER,
-  NODE_PRESSURE,
-  NODE_STRIDE,
-  rungBelow,
-  stepOf,
-} from "./momentum-ladder.js";
+import { CLEAR_HEIGHT, GAUSSIAN_HEIGHT, RAPIDITY_DIGITS } from "./accuracy.js";
+import { rungBelow, stepOf } from "./momentum-ladder.js";
+import { NODE_ENERGY, NODE_NUMBER, NODE_PRESSURE, NODE_STRIDE } from "./node-layout.js";
 import { CONTOUR, ETA, THETA } from "./record.js";
-
-/** Height in u below which no cut or zero of cosh u disturbs (pi/2 less a margin). */
-const CLEAR_HEIGHT = 1.35;
-/** The weights grow with cosh u: three digits more than in momentum. */
-const EXTRA_DIGITS = 3;
-/** Stands for "no pole comes near": the classical gas, and positrons far from degeneracy. */
-export const NO_POLES = -1;
 
 const CAPACITY = 256;
 const rows: Float64Array[] = [];
@@ -51,14 +37,14 @@ function buildRow(rung: number): Float64Array {
 
 /**
  * The rung of the largest sufficient step, as in trapezoid.ts, for the record's ETA and THETA; writes CONTOUR.
- * `poles`: how many are corrected for, or NO_POLES.
+ * `poles`: how many are corrected for; negative where none comes near (the classical gas, rare positrons).
  */
 export function chooseRapidityStep(gas: Float64Array, poles: number): number {
   const theta = gas[THETA]!;
   const eta = gas[ETA]!;
   const kinetic = eta * theta;
   let y = CLEAR_HEIGHT;
-  if (poles !== NO_POLES && kinetic > -1) {
+  if (poles >= 0 && kinetic > -1) {
     const frequency = Math.PI * theta * (2 * poles + 1);
     const re = kinetic * (kinetic + 2) - frequency * frequency;
     const im = 2 * (1 + kinetic) * frequency;
@@ -76,5 +62,5 @@ export function chooseRapidityStep(gas: Float64Array, poles: number): number {
   const bound = eta < 0 ? 1 - eta : 1;
   if (growth > bound) growth = bound;
   gas[CONTOUR] = y;
-  return rungBelow((2 * Math.PI * y) / (DIGITS + EXTRA_DIGITS + growth));
+  return rungBelow((2 * Math.PI * y) / (RAPIDITY_DIGITS + growth));
 }

@@ -15,6 +15,8 @@
  * derivatives. Two frames: centre at the rest mass or at zero with psi free (LAMBDA = 1), or centre at mu with
  * psi = 0 (LAMBDA = 0, degenerate gas: then differentiate at fixed mu instead).
  * N_ij = theta^j d^(i+j) n / d alpha^i d theta^j with alpha = psi (LAMBDA = 1) or mu/theta_0 (LAMBDA = 0).
+ *
+ * This file imports nothing on purpose: the bundler then writes the slots into the loops as literals.
  */
 
 /** Net density n = n_- - n_+ asked for. */
@@ -88,3 +90,24 @@ export const SUM_Q = 41;
 
 /** Length of a record. */
 export const RECORD_LENGTH = 48;
+
+// How to solve from a start value.
+
+/** By the trapezoidal rule; ETA and NU are the unknown. */
+export const REGIME_TRAPEZOID = 0;
+/** Degenerate: KINETIC_MU is the unknown. */
+export const REGIME_DEGENERATE = 1;
+/** Classical: in closed form. */
+export const REGIME_CLASSICAL = 2;
+
+// Scratch of the start table.
+
+export const TABLE_CLASSICAL = 0;
+export const TABLE_U = 1;
+export const TABLE_T = 2;
+export const TABLE_D = 3;
+
+// Scratch of the solver: the step in alpha, and the unit in which it is small.
+
+export const STEP_LENGTH = 0;
+export const STEP_UNIT = 1;

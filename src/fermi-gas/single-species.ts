@@ -5,10 +5,12 @@
  * analytic up to Im u = pi/2 but for the poles at u_k = ln(E_k + p_k).
  */
 import type { Order } from "../thermodynamics/free-energy.js";
-import { NODE_ENERGY, NODE_NUMBER, NODE_STRIDE, refuseOverflow, stepOf } from "./momentum-ladder.js";
+import { CUT_DENSITY, CUT_SECOND, CUT_THIRD } from "./accuracy.js";
+import { refuseOverflow, stepOf } from "./momentum-ladder.js";
+import { NODE_ENERGY, NODE_NUMBER, NODE_STRIDE } from "./node-layout.js";
 import { fillFactors, sumParticles, sumParticlesThird } from "./node-sums.js";
 import { addPoleResidues } from "./pole-residues.js";
-import { chooseRapidityStep, NO_POLES, rapidityNodesOf } from "./rapidity-nodes.js";
+import { chooseRapidityStep, rapidityNodesOf } from "./rapidity-nodes.js";
 import { ANTIPARTICLES, CENTRE, CUT, ETA, LAMBDA, NU, PSI, RECORD_LENGTH, STEP, THETA } from "./record.js";
 import { storeMoments } from "./trapezoid.js";
 
@@ -22,7 +24,7 @@ export function singleSpecies(gas: Float64Array, order: Order): void {
   gas[CENTRE] = degenerate ? eta * theta : 0;
   gas[PSI] = degenerate ? 0 : eta;
   gas[LAMBDA] = degenerate ? 0 : 1;
-  gas[CUT] = order === 3 ? 57 : theta > 0.1 ? 56 : 52; // x^(7/2) e^(-x), relativistic x^4 e^(-x), below 1e-17
+  gas[CUT] = order === 3 || theta > 0.1 ? CUT_THIRD : CUT_SECOND;
   const rung = chooseRapidityStep(gas, poles);
   gas[STEP] = stepOf(rung);
   const row = rapidityNodesOf(rung);
@@ -49,13 +51,13 @@ export function antiparticleDensity(gas: Float64Array): void {
   if (eta < -740) return; // e^eta underflows
   positrons[ETA] = eta;
   positrons[THETA] = theta;
-  const rung = chooseRapidityStep(positrons, eta < -3 ? NO_POLES : 0);
+  const rung = chooseRapidityStep(positrons, eta < -3 ? -1 : 0);
   const row = rapidityNodesOf(rung);
   const scale = Math.exp(eta);
   let sum = 0;
   for (let node = 0; ; node += NODE_STRIDE) {
     const x = row[node + NODE_ENERGY]! * inverse;
-    if (!(x < 46)) {
+    if (!(x < CUT_DENSITY)) {
       if (x === Number.POSITIVE_INFINITY) refuseOverflow(theta);
       break;
     }

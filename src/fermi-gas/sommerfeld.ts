@@ -13,6 +13,7 @@
  * the closed forms of the cold gas remain: T = 0 needs no other code.
  */
 import type { Order } from "../thermodynamics/free-energy.js";
+import { SERIES_END, SOMMERFELD_TERMS } from "./accuracy.js";
 import { coldPressure } from "./cold.js";
 import {
   ANTIPARTICLES,
@@ -37,19 +38,14 @@ import {
   THETA,
 } from "./record.js";
 
-/** Degeneracy above which the series is used, for order 2 and order 3 (measured crossing of the errors). */
-export const SOMMERFELD_ETA = 38;
-export const SOMMERFELD_ETA_THIRD = 39.5;
-
-const TERMS = 24;
 const ZETA_EVEN = [
   1.6449340668482264, 1.0823232337111382, 1.0173430619844491, 1.0040773561979443, 1.0009945751278181,
   1.0002460865533081, 1.000061248135059, 1.0000152822594086, 1.0000038172932648, 1.0000009539620338, 1.0000002384505027,
   1.0000000596081891,
 ];
 /** B_k = 2 (1 - 2^(1 - 2k)) zeta(2k). */
-const coefficients = new Float64Array(TERMS);
-for (let k = 1; k < TERMS; k++) {
+const coefficients = new Float64Array(SOMMERFELD_TERMS);
+for (let k = 1; k < SOMMERFELD_TERMS; k++) {
   const zeta = ZETA_EVEN[k - 1] ?? 1 + 2 ** (-2 * k) + 3 ** (-2 * k);
   coefficients[k] = 2 * (1 - 2 ** (1 - 2 * k)) * zeta;
 }
@@ -79,7 +75,7 @@ export function sommerfeld(gas: Float64Array, order: Order): void {
   let q = 0;
   let m12 = 0;
   let m23 = 0;
-  for (let k = 1; k < TERMS; k++) {
+  for (let k = 1; k < SOMMERFELD_TERMS; k++) {
     const i = 2 * k;
     const ii = i * (i - 1);
     const coefficient = coefficients[k]!;
@@ -104,7 +100,8 @@ export function sommerfeld(gas: Float64Array, order: Order): void {
       n21 += i * td;
       n30 += coefficient * e;
     }
-    if (Math.abs(tc) * i * i <= 1e-17 * Math.abs(n10) && Math.abs(ta) * i * i * i <= 1e-17 * Math.abs(m12)) break;
+    if (Math.abs(tc) * i * i <= SERIES_END * Math.abs(n10) && Math.abs(ta) * i * i * i <= SERIES_END * Math.abs(m12))
+      break;
     a = c;
     b = d;
     c = e;

@@ -9,7 +9,8 @@
  * For particles alone the cut costs e^(-nu - 2 pi/h): antiparticles are left out only where that is below 1e-17.
  */
 import type { Order } from "../thermodynamics/free-energy.js";
-import { DIGITS, GAUSSIAN_HEIGHT, nodesOf, rungBelow, stepOf, vacuumTermOf } from "./momentum-ladder.js";
+import { CUT_SECOND, CUT_THIRD, DIGITS, GAUSSIAN_HEIGHT, PAIRS_NU, PAIRS_NU_HOT, PAIRS_THETA } from "./accuracy.js";
+import { nodesOf, rungBelow, stepOf, vacuumTermOf } from "./momentum-ladder.js";
 import { fillFactors, sumPairs, sumPairsThird, sumParticles, sumParticlesThird } from "./node-sums.js";
 import { addPoleResidues } from "./pole-residues.js";
 import {
@@ -51,16 +52,12 @@ import {
   THETA,
 } from "./record.js";
 
-/** x^(7/2) e^(-x) < 1e-17 of the integral: end of the sums of order 2, and x^(9/2) e^(-x) of order 3. */
-const CUT_SECOND = 52;
-const CUT_THIRD = 57;
-
 /** Evaluates the record's N_ij, P00, Q, M12 (order 3: all) at its ETA, NU, THETA; |ETA| < 40. */
 export function trapezoid(gas: Float64Array, order: Order): void {
   const eta = gas[ETA]!;
   const nu = gas[NU]!;
   const theta = gas[THETA]!;
-  const pairs = nu < 26 || (nu < 46 && theta > 0.05);
+  const pairs = nu < PAIRS_NU || (nu < PAIRS_NU_HOT && theta > PAIRS_THETA);
   const poles = poleCount(eta, theta, pairs, order);
   const degenerate = eta > 0;
   // Pairs in the majority: a centre at E = 0 makes n and its like odd in nu, and no digit is lost at nu -> 0.

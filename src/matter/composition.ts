@@ -114,7 +114,8 @@ const sumTolerance = 1e-10;
  * nucleus with A outside 1..10000 or Z outside 0..A), `invalid-option`
  * @example
  * ```ts
- * composition({ C12: 0.5, O16: 0.5 }).electronsPerNucleon; // 0.5
+ * import { composition } from "fermistate";
+ * composition({ C12: 0.5, O16: 0.5 }).electronsPerNucleon; // => 0.5
  * ```
  */
 export function composition(fractions: NucleonFractions | MeanNucleus, options: CompositionOptions = {}): Composition {

@@ -45,7 +45,8 @@ const known = /* @__PURE__ */ new Map<string, Nuclide>();
  * @throws FermistateError `unknown-nuclide` where AME2020 has no such nuclide; the message names the nearest ones.
  * @example
  * ```ts
- * nuclide("Fe56").atomicMass; // 55.934935537 u
+ * import { nuclide } from "fermistate";
+ * nuclide("Fe56").atomicMass; // => 55.934935537 u
  * ```
  */
 export function nuclide(label: string): Nuclide {

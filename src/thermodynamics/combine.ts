@@ -18,7 +18,7 @@ import { stateFrom } from "./state.js";
  * ```ts
  * import { combine, composition, electronPositronGas, radiation } from "fermistate";
  * const hot = combine(electronPositronGas(), radiation());
- * hot.state(1e6, 1e9, composition({ C12: 0.5, O16: 0.5 })).gamma1; // => 1.4190
+ * hot.state(1e6, 1e9, composition({ C12: 0.5, O16: 0.5 })).gamma1; // => 1.4737
  * ```
  */
 export function combine(...contributions: readonly Contribution[]): EquationOfState {

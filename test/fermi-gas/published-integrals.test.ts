@@ -6,9 +6,10 @@
  */
 import { readFileSync } from "node:fs";
 import { describe, expect, test } from "vitest";
+import { SOMMERFELD_ETA } from "../../src/fermi-gas/accuracy.js";
 import { ETA, KINETIC_MU, N00, NU, P00, RECORD_LENGTH, THETA } from "../../src/fermi-gas/record.js";
 import { singleSpecies } from "../../src/fermi-gas/single-species.js";
-import { SOMMERFELD_ETA, sommerfeld } from "../../src/fermi-gas/sommerfeld.js";
+import { sommerfeld } from "../../src/fermi-gas/sommerfeld.js";
 import { Measured } from "../measured.js";
 import { gasAt } from "./gas-at.js";
 

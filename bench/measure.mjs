@@ -1,0 +1,85 @@
+/**
+ * One process of the benchmark: times one region with one method on the built library, prints JSON.
+ *
+ * node bench/measure.mjs <region number> <method> [<module>]. Times are medians of repeated batches, in nanoseconds per
+ * point; "exp" is the time of one Math.exp in the same process, the unit that makes machines comparable.
+ */
+import { combine, composition, electronPositronGas, quantityNames, whiteDwarfMatter } from "../dist/index.js";
+import { count, pointsOf, regions } from "./regions.mjs";
+
+const [, , regionNumber, method, baseline] = process.argv;
+const region = regions[Number(regionNumber)];
+const points = pointsOf(region);
+const matter = composition({ C12: 0.5, O16: 0.5 });
+const columns = (names) => Object.fromEntries(names.map((name) => [name, new Float64Array(count)]));
+const usual = [
+  "pressure",
+  "specificEnergy",
+  "specificEntropy",
+  "heatCapacityV",
+  "chiRho",
+  "chiT",
+  "gamma1",
+  "soundSpeed",
+];
+
+/** A function that evaluates all points once, and a number that depends on all of them. */
+function methodFor(name) {
+  const input = { ...points, composition: matter };
+  if (name === "gas" || name === "ideal") {
+    const eos = name === "gas" ? combine(electronPositronGas()) : whiteDwarfMatter();
+    const output = columns(usual);
+    return () => {
+      eos.evaluate(input, output);
+      return output.pressure[count - 1];
+    };
+  }
+  if (name === "all columns") {
+    const eos = whiteDwarfMatter();
+    const output = columns(quantityNames);
+    return () => {
+      eos.evaluate(input, output);
+      return output.pressure[count - 1];
+    };
+  }
+  if (name === "state") {
+    const eos = whiteDwarfMatter();
+    return () => {
+      let sum = 0;
+      for (let i = 0; i < count; i++) sum += eos.state(points.density[i], points.temperature[i], matter).gamma1;
+      return sum;
+    };
+  }
+  if (name === "order 3") {
+    const eos = combine(electronPositronGas());
+    return () => {
+      let sum = 0;
+      for (let i = 0; i < count; i++) sum += eos.freeEnergy(points.density[i], points.temperature[i], matter, 3).fTTT;
+      return sum;
+    };
+  }
+  throw new Error(`unknown method ${name}`);
+}
+
+const run = baseline === undefined ? methodFor(method) : (await import(baseline)).prepare(points, matter);
+
+function exponentials() {
+  let sum = 0;
+  for (let i = 0; i < count; i++) sum += Math.exp(-i / count);
+  return sum;
+}
+
+const time = (task) => {
+  const start = performance.now();
+  const result = task();
+  if (!(result !== undefined && !Number.isNaN(result))) throw new Error("no result");
+  return ((performance.now() - start) * 1e6) / count;
+};
+const median = (values) => values.sort((a, b) => a - b)[values.length >> 1];
+const times = [];
+const units = [];
+for (let i = 0; i < 41; i++) {
+  times.push(time(run));
+  units.push(time(exponentials));
+}
+process.stdout.write(JSON.stringify({ time: median(times), exp: median(units) }));

@@ -1,0 +1,96 @@
+/**
+ * npm run bench: time per point beside accuracy, by region.
+ *
+ * Every figure is the median over several processes (a fresh process compiles afresh; on a shared machine one process in
+ * twenty is slow throughout). Times as ratios to Math.exp in the same process, and in nanoseconds. Accuracy: the
+ * library's answer at the fixture's points of the region against arbitrary-precision integrals.
+ *
+ * npm run bench -- --processes 9
+ * npm run bench -- --baseline file:///path/to/module.mjs    another implementation in the same run: the module exports
+ *     prepare({ density, temperature }, composition) and returns a function that evaluates all points once
+ */
+import { execFileSync } from "node:child_process";
+import { readFileSync } from "node:fs";
+import { cpus } from "node:os";
+import { fileURLToPath } from "node:url";
+import { parseArgs } from "node:util";
+import { combine, composition, electronPositronGas } from "../dist/index.js";
+import { regions } from "./regions.mjs";
+
+const { values } = parseArgs({
+  options: { processes: { type: "string", default: "5" }, baseline: { type: "string" } },
+});
+const processes = Number(values.processes);
+const here = fileURLToPath(new URL(".", import.meta.url));
+const median = (list: number[]): number => list.sort((a, b) => a - b)[list.length >> 1] ?? Number.NaN;
+
+interface Timing {
+  readonly time: number;
+  readonly exp: number;
+}
+
+function timingsOf(region: number, method: string, baseline?: string): Timing[] {
+  return Array.from({ length: processes }, () => {
+    const args = [`${here}measure.mjs`, String(region), method, ...(baseline === undefined ? [] : [baseline])];
+    return JSON.parse(execFileSync(process.execPath, args, { encoding: "utf8" })) as Timing;
+  });
+}
+
+/** Largest and median relative error of pressure and entropy of the electron gas within a region. */
+function accuracyOf(region: { temperature: number[]; density: number[] }): string {
+  const [head, ...lines] = readFileSync(`${here}../test/fixtures/electron-gas-reference.csv`, "utf8")
+    .split("\n")
+    .filter((line) => line !== "" && !line.startsWith("#"));
+  const column = (name: string): number => head!.split(",").indexOf(name);
+  const gas = combine(electronPositronGas());
+  const helium = composition({ He4: 1 });
+  const inside = ([low, high]: number[], value: number): boolean => value >= 10 ** low! && value <= 10 ** high!;
+  const errors: { pressure: number[]; entropy: number[] } = { pressure: [], entropy: [] };
+  for (const line of lines) {
+    const cells = line.split(",");
+    const n = Number(cells[column("n_e")]);
+    const temperature = Number(cells[column("T")]);
+    if (!inside(region.density, n / 6.02214076e23) || !inside(region.temperature, temperature)) continue;
+    const density = n / helium.electronsPerGram;
+    const state = gas.state(density, temperature, helium);
+    errors.pressure.push(Math.abs(state.pressure / Number(cells[column("P")]) - 1));
+    errors.entropy.push(Math.abs((state.specificEntropy * density) / Number(cells[column("s")]) - 1));
+  }
+  const show = (list: number[]): string =>
+    `${Math.max(...list).toExponential(1)} (median ${median(list).toExponential(0)})`;
+  return `P ${show(errors.pressure)}, s ${show(errors.entropy)}, ${errors.pressure.length} points`;
+}
+
+const load = Array.from({ length: processes }, () => {
+  const program =
+    'const t=performance.now(); await import("./dist/index.js"); process.stdout.write(String(performance.now()-t))';
+  return Number(
+    execFileSync(process.execPath, ["--input-type=module", "-e", program], { cwd: `${here}..`, encoding: "utf8" }),
+  );
+});
+
+const rows = ["gas", "ideal", "all columns", "state", "order 3"];
+console.log(`node ${process.version}, ${cpus()[0]?.model.trim() ?? "unknown processor"}, ${processes} processes each`);
+console.log(`loading the core: ${median(load).toFixed(1)} ms\n`);
+for (const [number, region] of regions.entries()) {
+  console.log(
+    `${region.name}: T 1e${region.temperature.join("..1e")} K, rho Y_e 1e${region.density.join("..1e")} g/cm^3`,
+  );
+  console.log(`  measured error of the electron gas: ${accuracyOf(region)}`);
+  const base = values.baseline === undefined ? undefined : timingsOf(number, "baseline", values.baseline);
+  const all = base === undefined ? [] : [["baseline", base] as const];
+  for (const method of rows) all.push([method, timingsOf(number, method)] as never);
+  for (const [method, timings] of all) {
+    const time = median(timings.map((timing) => timing.time));
+    const ratio = median(timings.map((timing) => timing.time / timing.exp));
+    const beside =
+      base === undefined ? "" : `, ${(time / median(base.map((timing) => timing.time))).toFixed(2)} x baseline`;
+    console.log(
+      `  ${method.padEnd(12)} ${time.toFixed(0).padStart(6)} ns  ${ratio.toFixed(0).padStart(4)} x Math.exp${beside}`,
+    );
+  }
+}
+console.log("\ngas: electrons and positrons, batch, 8 columns; ideal: with ions and photons; all columns: 32 of them,");
+console.log(
+  "positron density included; state: one object per call; order 3: all eleven derivatives of the electron gas.",
+);

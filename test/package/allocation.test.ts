@@ -1,0 +1,45 @@
+/** The batch form allocates nothing per point: heap statistics of the built library in a process of its own. */
+import { execFileSync } from "node:child_process";
+import { fileURLToPath } from "node:url";
+import { expect, test } from "vitest";
+
+const root = fileURLToPath(new URL("../..", import.meta.url));
+
+/** Bytes of heap per point of a batch after warming up; the young generation is large enough to collect nothing. */
+function bytesPerPoint(temperature: [number, number], density: [number, number]): number {
+  const program = `
+    import v8 from "node:v8";
+    import { composition, whiteDwarfMatter } from "./dist/index.js";
+    let seed = 7;
+    const random = () => (seed = (seed * 48271) % 2147483647) / 2147483647;
+    const count = 100_000;
+    const column = ([low, high]) => Float64Array.from({ length: count }, () => 10 ** (low + (high - low) * random()));
+    const names = ["pressure", "specificEnergy", "specificEntropy", "heatCapacityV", "gamma1", "soundSpeed", "positronDensity"];
+    const output = Object.fromEntries(names.map((name) => [name, new Float64Array(count)]));
+    const input = {
+      temperature: column(${JSON.stringify(temperature)}),
+      density: column(${JSON.stringify(density)}),
+      composition: composition({ C12: 0.5, O16: 0.5 }),
+    };
+    const eos = whiteDwarfMatter();
+    for (let i = 0; i < 8; i++) eos.evaluate(input, output);
+    const least = [];
+    for (let i = 0; i < 5; i++) {
+      const before = v8.getHeapStatistics().used_heap_size;
+      eos.evaluate(input, output);
+      least.push((v8.getHeapStatistics().used_heap_size - before) / count);
+    }
+    console.log(Math.min(...least.filter((bytes) => bytes >= 0)));`;
+  const options = ["--max-semi-space-size=64", "--min-semi-space-size=64", "--input-type=module", "-e", program];
+  return Number(execFileSync(process.execPath, options, { cwd: root, encoding: "utf8" }));
+}
+
+test.each<[string, [number, number], [number, number]]>([
+  ["white dwarf", [6, 9], [2, 10]],
+  ["hot, pairs", [9, 11], [4, 12]],
+  ["whole plane", [2, 13], [-15, 15]],
+])("%s: less than a tenth of a byte per point", (_name, temperature, density) => {
+  const bytes = bytesPerPoint(temperature, density);
+  expect(bytes).toBeGreaterThanOrEqual(0);
+  expect(bytes).toBeLessThan(0.1); // one boxed number per point would be 16; the columns' bookkeeping is 0.04
+});
