@@ -1,0 +1,123 @@
+/** The packed tarball, installed in an empty folder, as its users meet it: ESM, CommonJS and TypeScript. */
+import { execFileSync, spawnSync } from "node:child_process";
+import { mkdtempSync, readdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
+import { fileURLToPath } from "node:url";
+import { afterAll, beforeAll, expect, inject, test } from "vitest";
+
+const root = fileURLToPath(new URL("../..", import.meta.url));
+const about = JSON.parse(readFileSync(`${root}package.json`, "utf8")) as {
+  version: string;
+  exports: Record<string, unknown>;
+  dependencies: Record<string, string>;
+};
+const entryPoints = Object.keys(about.exports)
+  .filter((name) => !name.endsWith(".json"))
+  .map((name) => `fermistate${name.slice(1)}`);
+
+let home = "";
+
+beforeAll(() => {
+  home = mkdtempSync(join(tmpdir(), "fermistate-consumer-"));
+  writeFileSync(join(home, "package.json"), JSON.stringify({ name: "consumer", private: true }));
+  // The run-time dependencies are packed from this repository's node_modules: no network, no cache needed.
+  const dependencies = Object.keys(about.dependencies).map((name) => `${root}node_modules/${name}`);
+  const options = ["--offline", "--install-links", "--ignore-scripts", "--no-audit", "--no-fund", "--loglevel=error"];
+  execFileSync("npm", ["install", ...options, inject("tarball"), ...dependencies], { cwd: home, stdio: "pipe" });
+});
+
+afterAll(() => rmSync(home, { recursive: true, force: true }));
+
+/** Writes a program into the consumer's folder and runs it with Node; returns what it printed. */
+function run(file: string, code: string): string {
+  writeFileSync(join(home, file), code);
+  return execFileSync(process.execPath, [file], { cwd: home, encoding: "utf8" }).trim();
+}
+
+test("the tarball brings its run-time dependencies and nothing else", () => {
+  const installed = readdirSync(join(home, "node_modules")).filter((name) => !name.startsWith("."));
+  expect(installed.sort()).toEqual(["fermistate", ...Object.keys(about.dependencies)].sort());
+});
+
+test("import and require give the same names at every entry point", () => {
+  const list = JSON.stringify(entryPoints);
+  const show = "const names = (m) => Object.keys(m).filter((n) => n !== 'default').sort();";
+  const esm = `${show} const all = {}; for (const e of ${list}) all[e] = names(await import(e));
+    console.log(JSON.stringify(all));`;
+  const cjs = `${show} const all = {}; for (const e of ${list}) all[e] = names(require(e));
+    console.log(JSON.stringify(all));`;
+  const imported = JSON.parse(run("names.mjs", esm)) as Record<string, string[]>;
+  expect(JSON.parse(run("names.cjs", cjs))).toEqual(imported);
+  for (const entry of entryPoints) expect(imported[entry]?.length, entry).toBeGreaterThan(0);
+});
+
+test("an error of the CommonJS copy is recognised by the ESM copy", () => {
+  const code = `import { createRequire } from "node:module";
+    import { FermistateError, isFermistateError } from "fermistate";
+    const other = createRequire(import.meta.url)("fermistate");
+    const error = new other.FermistateError("out-of-range", { argument: "density", given: -1, allowed: "positive" });
+    console.log(error instanceof FermistateError, isFermistateError(error), error.code);`;
+  expect(run("errors.mjs", code)).toBe("false true out-of-range");
+});
+
+test("the command runs from node_modules/.bin", () => {
+  const { status, stdout, stderr } = spawnSync(join(home, "node_modules/.bin/fermistate"), ["--version"], {
+    cwd: home,
+    encoding: "utf8",
+  });
+  expect({ status, stderr }).toEqual({ status: 0, stderr: "" });
+  if (stdout !== "") expect(stdout).toContain(about.version);
+});
+
+/** A program that uses every entry point's types: all exports are touched by name. */
+function typedProgram(names: Record<string, readonly string[]>): string {
+  const lines = entryPoints.map((entry, i) => `import * as m${i} from "${entry}";`);
+  for (const [i, entry] of entryPoints.entries()) {
+    for (const name of names[entry] ?? [])
+      lines.push(`export const m${i}_${name}: typeof m${i}.${name} = m${i}.${name};`);
+  }
+  lines.push('export const code: m0.ErrorCode = "out-of-range";');
+  return `${lines.join("\n")}\n`;
+}
+
+/** Compiles files of the consumer's folder under strict settings, library checks on, no DOM; returns the complaints. */
+function compile(files: readonly string[], module: string, moduleResolution: string): string {
+  const compilerOptions = {
+    strict: true,
+    exactOptionalPropertyTypes: true,
+    skipLibCheck: false,
+    noEmit: true,
+    target: "es2022",
+    lib: ["es2022"],
+    types: [],
+    module,
+    moduleResolution,
+  };
+  writeFileSync(join(home, "tsconfig.json"), JSON.stringify({ compilerOptions, files }));
+  const compiler = `${root}node_modules/typescript/bin/tsc`;
+  const { status, stdout } = spawnSync(process.execPath, [compiler, "-p", home], { cwd: home, encoding: "utf8" });
+  return status === 0 ? stdout : `${stdout}exit ${status}`;
+}
+
+test.each([
+  ["node16", "node16"],
+  ["nodenext", "nodenext"],
+  ["esnext", "bundler"],
+])("TypeScript consumers compile with module %s and resolution %s", (module, resolution) => {
+  const list = `console.log(JSON.stringify(Object.fromEntries(await Promise.all(${JSON.stringify(entryPoints)}
+    .map(async (e) => [e, Object.keys(await import(e)).filter((n) => n !== "default")])))));`;
+  const program = typedProgram(JSON.parse(run("list.mjs", list)));
+  writeFileSync(join(home, "consumer.mts"), program);
+  writeFileSync(join(home, "consumer.cts"), program);
+  expect(compile(["consumer.mts", "consumer.cts"], module, resolution)).toBe("");
+});
+
+test("a wrong use does not compile: the types are really read", () => {
+  const program = 'import type { ErrorCode } from "fermistate";\nexport const code: ErrorCode = "no";\n';
+  writeFileSync(join(home, "wrong.mts"), program);
+  writeFileSync(join(home, "wrong.cts"), program);
+  const complaints = compile(["wrong.mts", "wrong.cts"], "nodenext", "nodenext");
+  expect(complaints).toMatch(/^wrong\.mts\(2,14\): error TS2322/m);
+  expect(complaints).toMatch(/^wrong\.cts\(2,14\): error TS2322/m);
+});

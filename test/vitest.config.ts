@@ -1,0 +1,49 @@
+/** Two projects: `source` runs against src, `package` against the tarball, which is built and packed once before it. */
+import { fileURLToPath } from "node:url";
+import { defineConfig } from "vitest/config";
+
+const root = fileURLToPath(new URL("..", import.meta.url));
+
+export default defineConfig({
+  root,
+  test: {
+    testTimeout: 60_000,
+    coverage: {
+      provider: "v8",
+      include: ["src/**/*.ts"],
+      // The command line is run as a program of its own, where coverage does not reach.
+      exclude: ["src/cli/main.ts"],
+      reporter: ["text-summary", "json"],
+      reportsDirectory: ".cache/coverage",
+      thresholds: { statements: 60, branches: 60, functions: 60, lines: 60 },
+    },
+    projects: [
+      {
+        root,
+        resolve: {
+          alias: [
+            { find: /^fermistate$/, replacement: `${root}src/index.ts` },
+            { find: /^fermistate\/(\w+)$/, replacement: `${root}src/$1/index.ts` },
+          ],
+        },
+        test: {
+          name: "source",
+          include: ["test/**/*.test.ts"],
+          exclude: ["test/package/**"],
+          testTimeout: 60_000,
+        },
+      },
+      {
+        root,
+        test: {
+          name: "package",
+          include: ["test/package/**/*.test.ts"],
+          globalSetup: ["test/package/pack.ts"],
+          setupFiles: ["test/package/built.ts"],
+          testTimeout: 180_000,
+          hookTimeout: 180_000,
+        },
+      },
+    ],
+  },
+});
