@@ -91,7 +91,8 @@ export function withIndex(details: ErrorDetails, index: number | undefined): Err
 /** A value as a message shows it: short, and safe for anything a caller can pass. */
 function printed(value: unknown): string {
   if (typeof value === "string") return JSON.stringify(value.length > 80 ? `${value.slice(0, 77)}...` : value);
-  if (Array.isArray(value) || ArrayBuffer.isView(value)) return `an array of length ${(value as ArrayLike<unknown>).length}`;
+  if (Array.isArray(value) || ArrayBuffer.isView(value))
+    return `an array of length ${(value as ArrayLike<unknown>).length}`;
   if (typeof value === "object" && value !== null) return "an object";
   return String(value);
 }

@@ -6,28 +6,18 @@
  * for charge neutrality n_- - n_+ = n_e, implicit differentiation (state-functions.ts), all in decimal.js at a working
  * precision that absorbs the cancellations of those plain formulas. Two quadrature resolutions give the error.
  */
-import { Decimal } from "decimal.js";
+import type { Decimal } from "decimal.js";
 import { FermistateError } from "../errors.js";
 import { coldElectronGas } from "./cold.js";
-import * as constants from "./constants.js";
+import { type Conditions, conditions, type ReferenceElectronGasInput, requireDomain } from "./conditions.js";
 import { requireDigits } from "./digits.js";
-import { type Arithmetic, type ExactNumber, arithmetic, exactDecimal } from "./exact.js";
-import { type Species, densityAndSlope, species } from "./moments.js";
+import { withErrors } from "./errors-of-values.js";
+import { arithmetic } from "./exact.js";
+import { densityAndSlope, type Species, species } from "./moments.js";
+import { newtonStep, positronEta, solveNeutrality } from "./neutrality.js";
 import type { Resolution, TwoResolutions } from "./quadrature.js";
 import { type DegeneracyStart, startDegeneracy } from "./start.js";
-import { type ElectronGasValues, type Units, stateFunctions } from "./state-functions.js";
-
-/** Where to evaluate: T and one of three ways to give the net electron density n_e = n_- - n_+. */
-export type ReferenceElectronGasInput = { /** T [K], 0 or 1 to 1e14. */ readonly temperature: ExactNumber } & (
-  | {
-      /** Baryon mass density rho = n_B m_u [g/cm^3]. */
-      readonly density: ExactNumber;
-      /** Y_e; n_e = rho Y_e/m_u. */
-      readonly electronsPerNucleon: ExactNumber;
-    }
-  | { /** n_e [cm^-3], 1 to 1e42. */ readonly netElectronDensity: ExactNumber }
-  | { /** n_e/N_A [mol/cm^3]; n_e = value times 6.02214076e23. */ readonly electronMolarDensity: ExactNumber }
-);
+import { type ElectronGasValues, stateFunctions } from "./state-functions.js";
 
 /** Options of {@link referenceElectronGas}. */
 export interface ReferenceOptions {
@@ -42,7 +32,10 @@ export interface ReferenceOptions {
 export interface ReferenceElectronGas extends ElectronGasValues {
   /** n_e = n_- - n_+ [cm^-3] as asked for. */
   readonly netElectronDensity: Decimal;
-  /** Absolute error estimates in the units of the values: the difference between two quadrature resolutions. */
+  /**
+   * Absolute error estimates in the units of the values: the difference between two quadrature resolutions, but not
+   * less than 10^-(digits + 4) of the value or its natural scale, below which rounding may hide.
+   */
   readonly errors: ElectronGasValues;
   /** Largest error estimate relative to its value or natural scale, see {@link referenceElectronGas}. */
   readonly relativeError: number;
@@ -56,8 +49,9 @@ export interface ReferenceElectronGas extends ElectronGasValues {
 const guardDigits = 14;
 /** Precisions are rounded up to a multiple of this, so that few sets of nodes and kernels are kept. */
 const precisionStep = 8;
-const mostNewtonSteps = 8;
 const mostAttempts = 3;
+/** Beyond this many lost digits a request is refused: it would be a pair plasma with next to no net charge. */
+const mostLoss = 60;
 
 /**
  * The ideal electron-positron gas in charge neutrality with n_e, to `digits` digits.
@@ -79,8 +73,16 @@ export function referenceElectronGas(
   const first = conditions(arithmetic(digits + guardDigits), input);
   requireDomain(input, first);
   if (first.theta.isZero()) return cold(digits, input, first);
-  const start = startDegeneracy(first.n.toNumber(), first.theta.toNumber());
-  const wanted = digits + guardDigits + expectedLoss(start, first.theta.toNumber());
+  const start = startDegeneracy(first.n.ln().toNumber(), first.theta.toNumber());
+  const loss = expectedLoss(start, first.theta.toNumber());
+  if (loss > mostLoss) {
+    throw new FermistateError("outside-domain", {
+      argument: "density",
+      given: first.netElectronDensity.toPrecision(6),
+      allowed: `at this temperature, net electron densities not below 1e-${mostLoss} of the pairs`,
+    });
+  }
+  const wanted = digits + guardDigits + loss;
   let precision = Math.ceil(wanted / precisionStep) * precisionStep;
   let worst = Number.POSITIVE_INFINITY;
   for (let attempt = 0; attempt < mostAttempts; attempt++, precision += precisionStep) {
@@ -94,67 +96,6 @@ export function referenceElectronGas(
     given: digits,
     allowed: `two quadrature resolutions within 1e-${digits} (they differ by ${worst.toExponential(1)})`,
   });
-}
-
-/** n_e and T in internal units at one precision. */
-interface Conditions {
-  readonly n: Decimal;
-  readonly theta: Decimal;
-  readonly netElectronDensity: Decimal;
-  readonly temperature: Decimal;
-  readonly units: Units;
-}
-
-function conditions(D: Arithmetic, input: ReferenceElectronGasInput): Conditions {
-  const temperature = exactDecimal(D, "temperature", input.temperature);
-  const netElectronDensity = netDensity(D, input);
-  const energy = new D(constants.electronMass).times(new D(constants.speedOfLight).pow(2));
-  const boltzmann = new D(constants.boltzmannConstant);
-  const inverseWavelength = new D(constants.electronMass).times(constants.speedOfLight).div(constants.planckConstant);
-  const density = inverseWavelength.pow(3).times(8).times(D.acos(-1));
-  return {
-    n: netElectronDensity.div(density),
-    theta: boltzmann.times(temperature).div(energy),
-    netElectronDensity,
-    temperature,
-    units: { density, energy, boltzmann },
-  };
-}
-
-function netDensity(D: Arithmetic, input: ReferenceElectronGasInput): Decimal {
-  if ("netElectronDensity" in input) return exactDecimal(D, "netElectronDensity", input.netElectronDensity);
-  if ("electronMolarDensity" in input) {
-    return exactDecimal(D, "electronMolarDensity", input.electronMolarDensity).times(constants.avogadroConstant);
-  }
-  const density = exactDecimal(D, "density", input.density);
-  const electronsPerNucleon = exactDecimal(D, "electronsPerNucleon", input.electronsPerNucleon);
-  return density.times(electronsPerNucleon).div(constants.atomicMassConstant);
-}
-
-function requireDomain(input: ReferenceElectronGasInput, { netElectronDensity, temperature }: Conditions): void {
-  if (temperature.isNegative() && !temperature.isZero()) {
-    throw new FermistateError("out-of-range", {
-      argument: "temperature",
-      given: input.temperature,
-      allowed: "0 K or 1 K to 1e14 K",
-    });
-  }
-  if (!temperature.isZero() && (temperature.lt(1) || temperature.gt("1e14"))) {
-    throw new FermistateError("outside-domain", {
-      argument: "temperature",
-      given: input.temperature,
-      allowed: "0 K or 1 K to 1e14 K",
-    });
-  }
-  const details = {
-    argument: "density",
-    given: netElectronDensity.toPrecision(6),
-    allowed: "net electron densities from 1 to 1e42 cm^-3",
-  };
-  if (netElectronDensity.lte(0)) throw new FermistateError("out-of-range", details);
-  if (netElectronDensity.lt(1) || netElectronDensity.gt("1e42")) {
-    throw new FermistateError("outside-domain", details);
-  }
 }
 
 /** Decimal digits that the plain formulas lose: see the three terms. */
@@ -188,7 +129,7 @@ function attemptAt(
     positrons = pairsMatter ? species(resolution, positronEta(eta, theta), theta) : undefined;
     residual = relativeResidual(at, electrons, positrons);
   }
-  const fewPositrons = positrons === undefined ? rarePositrons(digits, input, eta) : undefined;
+  const fewPositrons = positrons === undefined ? rarePositrons(digits, input, start, eta) : undefined;
   const evaluate = (which: "fine" | "coarse"): ElectronGasValues => {
     const pair = positrons?.[which];
     // the coarse sums stand for a slightly different density, so its eta belongs to the density asked for
@@ -198,21 +139,11 @@ function attemptAt(
     const correctedEta = eta.plus(n.minus(net).div(slope));
     return stateFunctions(correctedEta, theta, values, pair, pair?.n ?? fewPositrons![which], units);
   };
-  const fine = evaluate("fine");
-  const errors = difference(fine, evaluate("coarse"));
   return {
-    ...mapValues(fine, (value) => value.toSignificantDigits(digits + 5)),
-    netElectronDensity: at.netElectronDensity.toSignificantDigits(digits + 5),
-    errors: mapValues(errors, (error) => error.toSignificantDigits(3, Decimal.ROUND_UP)),
-    relativeError: worstRelativeError(fine, errors, at),
+    ...withErrors(digits, evaluate("fine"), evaluate("coarse"), at),
     residual: residual.abs().toNumber(),
     workingPrecision: D.precision,
   };
-}
-
-/** eta_+ = -mu/kT - mc^2/kT = -eta - 2/theta */
-function positronEta(eta: Decimal, theta: Decimal): Decimal {
-  return theta.pow(-1).times(2).plus(eta).neg();
 }
 
 function relativeResidual(
@@ -224,49 +155,15 @@ function relativeResidual(
   return n.minus(net).div(n);
 }
 
-/** Newton on the coarse rule until the next step would not change the digits wanted. */
-function solveNeutrality(
-  resolution: Resolution,
-  digits: number,
-  start: Decimal,
-  at: Conditions,
-  pairsMatter: boolean,
-): Decimal {
-  let eta = start;
-  for (let step = 0; step < mostNewtonSteps; step++) {
-    const next = newtonStep(resolution, eta, at, pairsMatter, true);
-    eta = next.eta;
-    // the error left is about the square of the residual before the step
-    if (next.residual.lt(new resolution.D(10).pow(-(digits + guardDigits) / 2))) return eta;
-  }
-  throw new FermistateError("no-convergence", {
-    argument: "netElectronDensity",
-    given: at.netElectronDensity.toPrecision(17),
-    allowed: "densities at which Newton's method for charge neutrality converges (please report)",
-  });
-}
-
-function newtonStep(
-  resolution: Resolution,
-  eta: Decimal,
-  { n, theta }: Conditions,
-  pairsMatter: boolean,
-  coarseOnly: boolean,
-): { eta: Decimal; residual: Decimal } {
-  const electrons = densityAndSlope(resolution, eta, theta, coarseOnly);
-  let missing = n.minus(electrons.n);
-  let slope = electrons.slope;
-  if (pairsMatter) {
-    const positrons = densityAndSlope(resolution, positronEta(eta, theta), theta, coarseOnly);
-    missing = missing.plus(positrons.n);
-    slope = slope.plus(positrons.slope);
-  }
-  return { eta: eta.plus(missing.div(slope)), residual: missing.div(n).abs() };
-}
-
 /** n_+ where it is too small to count in any sum: it needs no more than the digits wanted. */
-function rarePositrons(digits: number, input: ReferenceElectronGasInput, eta: Decimal): TwoResolutions<Decimal> {
-  const D = arithmetic(Math.ceil((digits + guardDigits) / precisionStep) * precisionStep);
+function rarePositrons(
+  digits: number,
+  input: ReferenceElectronGasInput,
+  start: DegeneracyStart,
+  eta: Decimal,
+): TwoResolutions<Decimal> {
+  const inExponent = Math.ceil(Math.log10(1 + start.nu)); // exp(-2 nu) loses the digits before the point of 2 nu
+  const D = arithmetic(Math.ceil((digits + guardDigits + inExponent) / precisionStep) * precisionStep);
   const resolution: Resolution = { D, depth: D.precision, refinement: 0 };
   const { theta } = conditions(D, input);
   const positive = positronEta(new D(eta), theta);
@@ -278,55 +175,15 @@ function rarePositrons(digits: number, input: ReferenceElectronGasInput, eta: De
 
 /** Closed forms, evaluated twice: P and e_kin cancel like x^-4, so the precision grows with 1/x. */
 function cold(digits: number, input: ReferenceElectronGasInput, first: Conditions): ReferenceElectronGas {
-  const loss = Math.max(0, -2 * Math.log10(first.n.toNumber()));
+  const loss = Math.max(0, -2 * first.n.e);
   const precision = Math.ceil(digits + guardDigits + loss);
   const at = conditions(arithmetic(precision), input);
   const values = coldElectronGas(arithmetic(precision), at.n, at.units);
   const coarser = conditions(arithmetic(precision - guardDigits / 2), input);
-  const errors = difference(values, coldElectronGas(arithmetic(precision - guardDigits / 2), coarser.n, coarser.units));
+  const coarse = coldElectronGas(arithmetic(precision - guardDigits / 2), coarser.n, coarser.units);
   return {
-    ...mapValues(values, (value) => value.toSignificantDigits(digits + 5)),
-    netElectronDensity: at.netElectronDensity.toSignificantDigits(digits + 5),
-    errors: mapValues(errors, (error) => error.toSignificantDigits(3, Decimal.ROUND_UP)),
-    relativeError: worstRelativeError(values, errors, at),
+    ...withErrors(digits, values, coarse, at),
     residual: values.electronDensity.minus(at.netElectronDensity).div(at.netElectronDensity).abs().toNumber(),
     workingPrecision: precision,
   };
-}
-
-function mapValues(values: ElectronGasValues, change: (value: Decimal) => Decimal): ElectronGasValues {
-  const names = Object.keys(values) as (keyof ElectronGasValues)[];
-  return Object.fromEntries(names.map((name) => [name, change(values[name])])) as unknown as ElectronGasValues;
-}
-
-function difference(a: ElectronGasValues, b: ElectronGasValues): ElectronGasValues {
-  const names = Object.keys(a) as (keyof ElectronGasValues)[];
-  return Object.fromEntries(
-    names.map((name) => [name, a[name].isFinite() ? a[name].minus(b[name]).abs() : a[name].minus(a[name])]),
-  ) as unknown as ElectronGasValues;
-}
-
-/** Largest error relative to max(|value|, natural scale). */
-function worstRelativeError(values: ElectronGasValues, errors: ElectronGasValues, at: Conditions): number {
-  const { netElectronDensity: n, temperature: T } = at;
-  const scales: Partial<Record<keyof ElectronGasValues, Decimal>> = {};
-  if (!T.isZero()) {
-    const { dPdn, dPdT, heatCapacityDensity } = values;
-    const mixed = Decimal.min(dPdn.div(T), dPdT.div(n));
-    const eta = Decimal.max(values.degeneracyParameter, 0);
-    scales.degeneracyParameter = new Decimal(1);
-    scales.chemicalPotential = values.chemicalPotential.div(values.degeneracyParameter);
-    scales.d2Pdn2 = dPdn.div(n);
-    scales.d2PdndT = mixed;
-    scales.d3PdndT2 = mixed.div(T);
-    scales.d2PdT2 = dPdT.div(T);
-    scales.d2sdT2 = heatCapacityDensity.div(T).div(T).div(eta.times(eta).plus(1));
-  }
-  let worst = 0;
-  for (const name of Object.keys(values) as (keyof ElectronGasValues)[]) {
-    const scale = Decimal.max(values[name].abs(), scales[name]?.abs() ?? 0);
-    if (scale.isZero() || !scale.isFinite()) continue;
-    worst = Math.max(worst, errors[name].div(scale).toNumber());
-  }
-  return worst;
 }

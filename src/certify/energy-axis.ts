@@ -4,13 +4,13 @@
  * The Fermi function has poles at x = eta +- i pi (2k + 1). A panel border at x = eta and borders that leave the
  * surface in growing steps keep them away from every panel's interior.
  *
- * - eta <= 1: panels from x = 0, the same for every eta; e^-x is kept, so a sweep needs one exponential.
- * - eta > 1: panels in z = x - eta on both sides of the Fermi surface, the same for every eta, with all kernels kept;
+ * - eta <= 1/4: panels from x = 0, the same for every eta; e^-x is kept, so a sweep needs one exponential.
+ * - eta > 1/4: panels in z = x - eta on both sides of the Fermi surface, the same for every eta, with all kernels kept;
  *   below them one panel down to x = 0, on which f = 1 to all digits if it begins deep enough (the filled sea).
  */
 import type { Decimal } from "decimal.js";
-import { type Kernels, type Occupation, kernels, mirrored, mirroredOccupation, occupation } from "./kernels.js";
-import { type Resolution, keptPerResolution, quadratureNodes } from "./quadrature.js";
+import { type Kernels, kernels, mirrored, mirroredOccupation, type Occupation, occupation } from "./kernels.js";
+import { keptPerResolution, quadratureNodes, type Resolution } from "./quadrature.js";
 
 /** Called at one node: weight, x, the coarse-rule mark, and the kernels there (undefined in the filled sea: f = 1). */
 export type Visit<K> = (weight: Decimal, x: Decimal, coarse: boolean, at: K | undefined) => void;
@@ -38,10 +38,10 @@ interface Recipe<K> {
   readonly coarseOnly: boolean;
 }
 
-/** Borders of the panels before the last one; measured to need the fewest nodes among six choices. */
-const innerBorders = [0, 6, 24];
+/** Borders of the panels before the last one: of eight choices measured, the fewest nodes for equal accuracy. */
+const innerBorders = [0, 9];
 /** Up to this eta the panels start at x = 0. */
-const largestFixedStart = 1;
+const largestFixedStart = 0.25;
 /** The lowest panel must be at least this share of its upper border, so that the branch point x = 0 is not near. */
 const lowestPanelShare = 0.25;
 
@@ -80,18 +80,13 @@ function sweepFromBottom<K>(resolution: Resolution, eta: Decimal, recipe: Recipe
   }
 }
 
-/** For 0 < eta <= 1 some nodes lie below the Fermi surface: kernels are made from e^-|z|, where nothing cancels. */
+/** For 0 < eta <= 1/4 some nodes lie below the Fermi surface: kernels are made from e^-|z|, where nothing cancels. */
 function at<K>(recipe: Recipe<K>, z: Decimal, q: Decimal): K {
   if (!z.isNegative()) return recipe.make(z, q);
   return recipe.mirror(recipe.make(z.neg(), new (z.constructor as Decimal.Constructor)(1).div(q)));
 }
 
-function sweepFromSurface<K>(
-  resolution: Resolution,
-  eta: Decimal,
-  recipe: Recipe<K>,
-  visit: Visit<K | Kernels>,
-): void {
+function sweepFromSurface<K>(resolution: Resolution, eta: Decimal, recipe: Recipe<K>, visit: Visit<K | Kernels>): void {
   const panels = axisPanels(resolution);
   let reached = 0;
   for (const panel of panels) {

@@ -10,7 +10,7 @@ import type { Decimal } from "decimal.js";
 import { FermistateError } from "../errors.js";
 import { requireDigits } from "./digits.js";
 import { sweepOccupation } from "./energy-axis.js";
-import { type ExactNumber, arithmetic, exactDecimal } from "./exact.js";
+import { arithmetic, type ExactNumber, exactDecimal } from "./exact.js";
 import type { Resolution, TwoResolutions } from "./quadrature.js";
 
 /** A value and the difference between two quadrature resolutions, relative to it. */
@@ -35,12 +35,7 @@ const mostRefinements = 3;
  * @throws FermistateError `not-a-number`, `out-of-range`, `invalid-option`; `no-convergence` if the two resolutions
  * disagree by more than 10^-digits
  */
-export function referenceFermiDirac(
-  k: number,
-  eta: ExactNumber,
-  beta: ExactNumber,
-  digits = 25,
-): ReferenceFermiDirac {
+export function referenceFermiDirac(k: number, eta: ExactNumber, beta: ExactNumber, digits = 25): ReferenceFermiDirac {
   requireDigits(digits);
   if (!(Number.isInteger(2 * k) && k >= -0.5 && k <= 20)) {
     throw new FermistateError("out-of-range", { argument: "k", given: k, allowed: "multiples of 1/2 from -1/2 to 20" });

@@ -1,6 +1,11 @@
-/**
- * Not written yet.
- *
- * @packageDocumentation
- */
-export { isFermistateError } from "../errors.js";
+/** Certification: the slow, independent evaluation to any number of digits. */
+export { FermistateError, isFermistateError } from "../errors.js";
+export type { ReferenceElectronGasInput } from "./conditions.js";
+export {
+  type ReferenceElectronGas,
+  type ReferenceOptions,
+  referenceElectronGas,
+} from "./electron-gas.js";
+export type { ExactNumber } from "./exact.js";
+export { type ReferenceFermiDirac, referenceFermiDirac } from "./fermi-dirac.js";
+export type { ElectronGasValues } from "./state-functions.js";

@@ -22,25 +22,22 @@ const strongDegeneracy = 30;
 const bisections = 70;
 const intervals = 600;
 
-/** Degeneracy parameter at net density `n` (times pi^2 lambda^3) and `theta` = kT/mc^2. */
-export function startDegeneracy(n: number, theta: number): DegeneracyStart {
-  const target = Math.log(n);
+/** Degeneracy parameter at net density e^`target` (times pi^2 lambda^3, lambda = hbar/mc) and `theta` = kT/mc^2. */
+export function startDegeneracy(target: number, theta: number): DegeneracyStart {
   if (target > logNetDensity(strongDegeneracy, strongDegeneracy + 1 / theta, theta)) {
+    const n = Math.exp(target);
     const largest = (1 + Math.cbrt(3 * n)) / theta + 2 * strongDegeneracy;
     const eta = bisect(strongDegeneracy, largest, (trial) => surfaceDensity(trial, theta) - n);
     return { eta, nu: eta + 1 / theta };
   }
-  if (theta > 0.03) {
-    // Pairs may outnumber the net charge by 31 powers of ten: the logarithm of nu is the well-scaled unknown.
-    const most = Math.log(strongDegeneracy + 1 / theta);
-    const logNu = bisect(-100, most, (trial) => {
-      const nu = Math.exp(trial);
-      return logNetDensity(nu - 1 / theta, nu, theta) - target;
-    });
-    return { eta: Math.exp(logNu) - 1 / theta, nu: Math.exp(logNu) };
-  }
   const eta = bisect(-1 / theta, strongDegeneracy, (trial) => logNetDensity(trial, trial + 1 / theta, theta) - target);
-  return { eta, nu: eta + 1 / theta };
+  if (eta + 1 / theta > 1) return { eta, nu: eta + 1 / theta };
+  // Pairs may outnumber the net charge by 31 powers of ten and more: now ln nu is the well-scaled unknown.
+  const logNu = bisect(-1000, 1, (trial) => {
+    const nu = Math.exp(trial);
+    return logNetDensity(nu - 1 / theta, nu, theta) - target;
+  });
+  return { eta: Math.exp(logNu) - 1 / theta, nu: Math.exp(logNu) };
 }
 
 /** ln of the net density, Simpson's rule in y = sqrt(x). */

@@ -67,7 +67,7 @@ export function stateFunctions(
   units: Units,
 ): ElectronGasValues {
   const d = combined(electrons, positrons);
-  const dimensionless = inDensityAndTemperature(d, theta);
+  const dimensionless = inDensityAndTemperature(d);
   const { density, energy, boltzmann } = units;
   const perKelvin = boltzmann.div(energy);
   const pressureUnit = density.times(energy);
@@ -125,7 +125,7 @@ interface DensityTemperatureDerivatives {
   readonly pntt: Decimal;
 }
 
-function inDensityAndTemperature(d: Species, theta: Decimal): DensityTemperatureDerivatives {
+function inDensityAndTemperature(d: Species): DensityTemperatureDerivatives {
   const { n } = d;
   const mn = d.nm.pow(-1);
   const mt = d.nt.times(mn).neg();
@@ -144,10 +144,7 @@ function inDensityAndTemperature(d: Species, theta: Decimal): DensityTemperature
     pnn: mn.plus(n.times(mnn)),
     pnt: n.times(mnt),
     ptt: d.ptt.plus(d.nt.times(mt)).plus(n.times(mtt)),
-    stt: d.pttt
-      .plus(d.ntt.times(mt).times(2))
-      .plus(d.nmt.times(mt).times(mt))
-      .plus(d.nt.times(mtt)),
+    stt: d.pttt.plus(d.ntt.times(mt).times(2)).plus(d.nmt.times(mt).times(mt)).plus(d.nt.times(mtt)),
     pntt: n.times(mntt),
   };
 }

@@ -1,6 +1,6 @@
 /**
- * Not written yet.
+ * Charts of grids as SVG text. Runs in Node and browsers.
  *
  * @packageDocumentation
  */
-export { isFermistateError } from "../errors.js";
+export { type ChartOptions, chartGrid } from "./chart.js";

@@ -1,4 +1,22 @@
 #!/usr/bin/env node
-import { isFermistateError } from "../errors.js";
+/** The program: connects `run` with this process. */
+import { run } from "./run.js";
 
-process.exitCode = isFermistateError(undefined) ? 1 : 0;
+/** False once nobody reads the output any more, as after `| head`: that is no error, and files are still written. */
+let isRead = true;
+for (const stream of [process.stdout, process.stderr]) {
+  stream.on("error", (error: NodeJS.ErrnoException) => {
+    if (error.code !== "EPIPE") throw error;
+    isRead = false;
+  });
+}
+
+process.exitCode = await run(process.argv.slice(2), {
+  out: (text) => {
+    if (isRead) process.stdout.write(text);
+    return isRead;
+  },
+  err: (text) => void process.stderr.write(text),
+  isTerminal: process.stderr.isTTY === true,
+  cwd: process.cwd(),
+});

@@ -1,6 +1,6 @@
 /**
- * Not written yet.
+ * Text files written whole or not at all, such as those of `fermistate/grids`. Node only.
  *
  * @packageDocumentation
  */
-export { isFermistateError } from "../errors.js";
+export { type Text, type TextFile, type WriteOptions, type WrittenFile, writeText, writeTexts } from "./write.js";

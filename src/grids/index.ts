@@ -1,6 +1,18 @@
 /**
- * Not written yet.
+ * Grids: an equation of state over densities and temperatures, as columns, CSV or JSON. Runs in Node and browsers.
  *
  * @packageDocumentation
  */
-export { isFermistateError } from "../errors.js";
+export {
+  type Axis,
+  type LinearAxisOptions,
+  type LogarithmicAxisOptions,
+  linearAxis,
+  listedAxis,
+  logarithmicAxis,
+  maximumAxisPoints,
+} from "./axes.js";
+export { csvMetadataName, gridToCsv, gridToCsvMetadata, gridToCsvPieces } from "./csv.js";
+export type { GridTexts } from "./description.js";
+export { type ColumnName, type Grid, type GridColumns, type GridOptions, grid } from "./grid.js";
+export { gridToJson, gridToJsonPieces } from "./json.js";

@@ -32,8 +32,43 @@ export interface Quantity {
   readonly description: string;
 }
 
+/** Name of a quantity of a state. */
+export type QuantityName =
+  | "pressure"
+  | "specificEnergy"
+  | "specificEntropy"
+  | "specificFreeEnergy"
+  | "specificEnthalpy"
+  | "heatCapacityV"
+  | "heatCapacityP"
+  | "chiRho"
+  | "chiT"
+  | "gamma1"
+  | "gamma2"
+  | "gamma3"
+  | "adiabaticGradient"
+  | "soundSpeed"
+  | "bulkModulus"
+  | "pressureByDensity"
+  | "pressureByTemperature"
+  | "energyByDensity"
+  | "energyByTemperature"
+  | "entropyByDensity"
+  | "entropyByTemperature"
+  | "electronDensity"
+  | "electronChemicalPotential"
+  | "electronDegeneracy"
+  | "positronDensity"
+  | "radiationPressureFraction"
+  | "relativityParameter"
+  | "densityParameter"
+  | "electronCoupling"
+  | "ionCoupling"
+  | "fermiTemperature"
+  | "ionPlasmaTemperature";
+
 /** All quantities of a state, in the order of the record that {@link fillQuantities} writes. */
-export const quantities = {
+export const quantities: Readonly<Record<QuantityName, Quantity>> = {
   pressure: { unit: "dyn/cm^2", description: "pressure P" },
   specificEnergy: {
     unit: "erg/g",
@@ -69,10 +104,7 @@ export const quantities = {
   ionCoupling: { unit: "1", description: "Gamma = Gamma_e <Z^(5/3)>" },
   fermiTemperature: { unit: "K", description: "Fermi energy of the net electrons over k, rest mass left out" },
   ionPlasmaTemperature: { unit: "K", description: "hbar omega_p/k of the ions" },
-} as const satisfies Record<string, Quantity>;
-
-/** Name of a quantity of a state. */
-export type QuantityName = keyof typeof quantities;
+};
 
 /** The names in the order of the record. */
 export const quantityNames: readonly QuantityName[] = Object.keys(quantities) as QuantityName[];

@@ -8,13 +8,18 @@
 import { readFileSync } from "node:fs";
 import { Decimal } from "decimal.js";
 import { describe, expect, test } from "vitest";
-import { type ReferenceElectronGas, type ReferenceElectronGasInput, referenceElectronGas } from "../../src/certify/index.js";
+import {
+  type ReferenceElectronGas,
+  type ReferenceElectronGasInput,
+  referenceElectronGas,
+} from "../../src/certify/index.js";
 import { isFermistateError } from "../../src/errors.js";
 import { Measured } from "../measured.js";
 import { readRows } from "./rows.js";
 
 const D = Decimal.clone({ precision: 50 });
-const json = (name: string): unknown => JSON.parse(readFileSync(new URL(`../fixtures/${name}`, import.meta.url), "utf8"));
+const json = (name: string): unknown =>
+  JSON.parse(readFileSync(new URL(`../fixtures/${name}`, import.meta.url), "utf8"));
 
 test("nine points of the float128 file: eta -27 to 1.9e9, nu down to 2e-25", () => {
   const { gas } = json("fermi-dirac-and-pair-gas.json") as { gas: readonly Record<string, string>[] };
@@ -48,10 +53,15 @@ test("nine points of the float128 file: eta -27 to 1.9e9, nu down to 2e-25", () 
     compare("d2P_dndT", result.d2PdndT, mixed.times(second));
     compare("d2P_dT2", result.d2PdT2, result.dPdT.div(T).times(second));
   }
-  // Measured over all 102 rows: eta, nu, n, P, e, P_n 5e-29 (the file's last digits), s 1.1e-28
-  for (const column of ["eta", "nu", "n_minus", "n_plus", "P", "e_pair", "dP_dn_T"]) measured.expectBelow(column, 1e-28);
+  // Measured over all 102 rows: 0 (all 30 digits), dP_dn_T 4.5e-29, s 1.1e-28, then as the comment beside each bound
+  for (const column of ["eta", "nu", "n_minus", "n_plus", "P", "e_pair"]) measured.expectBelow(column, 5e-30);
+  measured.expectBelow("dP_dn_T", 1e-28);
   measured.expectBelow("s", 2e-28);
-  for (const column of ["dP_dT_n", "de_dT_n", "d2P_dn2", "d2P_dndT", "d2P_dT2"]) measured.expectBelow(column, 1e-27);
+  measured.expectBelow("dP_dT_n", 3e-28); // 1.4e-28
+  measured.expectBelow("de_dT_n", 4e-28); // 1.9e-28
+  measured.expectBelow("d2P_dn2", 2e-31); // 7.3e-32
+  measured.expectBelow("d2P_dndT", 3e-29); // 1.2e-29
+  measured.expectBelow("d2P_dT2", 7e-29); // 3.2e-29
 });
 
 describe("third-order derivatives of the free energy, ideal matter (electrons, ions, radiation)", () => {
@@ -186,7 +196,15 @@ describe("T = 0", () => {
 });
 
 test("errors returned cover the difference to a run at 40 digits", () => {
-  const names = ["degeneracyParameter", "positronDensity", "pressure", "entropyDensity", "d2Pdn2", "d2sdT2", "d3PdndT2"] as const;
+  const names = [
+    "degeneracyParameter",
+    "positronDensity",
+    "pressure",
+    "entropyDensity",
+    "d2Pdn2",
+    "d2sdT2",
+    "d3PdndT2",
+  ] as const;
   for (const [n, T] of [
     [1e25, 3e5],
     [1e10, 2e9],
@@ -218,6 +236,7 @@ test.each<[string, ReferenceElectronGasInput, string]>([
   ["too hot", { netElectronDensity: 1e20, temperature: 1e15 }, "outside-domain"],
   ["too cold", { netElectronDensity: 1e20, temperature: 0.5 }, "outside-domain"],
   ["too dense", { netElectronDensity: 1e43, temperature: 0 }, "outside-domain"],
+  ["two densities", { density: 1, electronsPerNucleon: 1, netElectronDensity: 1, temperature: 1e6 }, "invalid-option"],
   ["next to no net charge", { netElectronDensity: 1e-60, temperature: 1e11 }, "outside-domain"],
 ])("%s is refused: %s", (_name, input, code) => {
   try {

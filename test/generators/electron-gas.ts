@@ -9,12 +9,12 @@
  * the values come from src/certify (double-exponential quadrature in decimal.js, 25 digits), which shares nothing with
  * src/fermi-gas. About half a second a point.
  */
-import { appendFileSync, existsSync, mkdirSync, readFileSync, readdirSync, writeFileSync } from "node:fs";
+import { appendFileSync, existsSync, mkdirSync, readdirSync, readFileSync, writeFileSync } from "node:fs";
 import { dirname, join } from "node:path";
 import { fileURLToPath } from "node:url";
 import type { Decimal } from "decimal.js";
-import { referenceElectronGas, type ElectronGasValues } from "../../src/certify/index.js";
-import { type Point, neighbourhoodPoints, referencePoints } from "./electron-gas-points.js";
+import { type ElectronGasValues, referenceElectronGas } from "../../src/certify/index.js";
+import { neighbourhoodPoints, type Point, referencePoints } from "./electron-gas-points.js";
 
 const columns: readonly [heading: string, name: keyof ElectronGasValues][] = [
   ["eta", "degeneracyParameter"],
@@ -42,7 +42,7 @@ const about = [
   "# Ideal electron-positron gas, cgs, CODATA 2022. n_e [cm^-3] = n_minus - n_plus and T [K] are exact IEEE doubles.",
   "# Made by test/generators/electron-gas.ts: double-exponential quadrature in decimal.js, 25 digits, two resolutions.",
   "# eta = (mu - mc^2)/kT; nu = mu/kT; e_pair = kinetic + 2 n_plus mc^2; c_v = T ds/dT per volume; dT at fixed n_e.",
-  `# ${printedDigits} significant digits, fewer where the error estimate (1e-25 of the natural scale) leaves fewer; 0: below it.`,
+  `# ${printedDigits} significant digits, fewer where the error estimate (at least 1e-29 of the natural scale) leaves fewer; 0: none.`,
 ];
 
 const [command, folder, process0, processes] = process.argv.slice(2);
@@ -67,7 +67,8 @@ function write(from: string): void {
     const parts = readdirSync(from).filter((name) => name.startsWith(`${file}.part`));
     const all = parts.flatMap((name) => rows(join(from, name))).map((line) => line.split(/,(.*)/s) as [string, string]);
     all.sort(([a], [b]) => Number(a) - Number(b));
-    if (all.length !== makePoints().length) throw new Error(`${file}: ${all.length} points, not ${makePoints().length}`);
+    if (all.length !== makePoints().length)
+      throw new Error(`${file}: ${all.length} points, not ${makePoints().length}`);
     writeFileSync(join(fixtures, `${file}.csv`), `${[...about, heading, ...all.map(([, line]) => line)].join("\n")}\n`);
   }
 }

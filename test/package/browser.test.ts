@@ -38,17 +38,18 @@ async function serve(): Promise<string> {
 }
 
 /** The first difference of two pieces of plain data, as a path and both values; undefined when they agree. */
-function difference(node: unknown, page: unknown, path = "probe"): string | undefined {
+function difference(node: unknown, page: unknown, path = "probe", conditioning = 1): string | undefined {
   if (typeof node === "number" && typeof page === "number") {
     const scale = Math.max(Math.abs(node), Math.abs(page));
-    const agree = Object.is(node, page) || Math.abs(node - page) <= relativeTolerance * scale;
+    const agree = Object.is(node, page) || Math.abs(node - page) <= relativeTolerance * conditioning * scale;
     return agree ? undefined : `${path}: ${node} in Node, ${page} in the browser (relative ${(page - node) / scale})`;
   }
   if (typeof node === "object" && typeof page === "object" && node !== null && page !== null) {
     const names = [...new Set([...Object.keys(node), ...Object.keys(page)])];
     const [a, b] = [node as Record<string, unknown>, page as Record<string, unknown>];
+    const here = typeof a["conditioning"] === "number" ? a["conditioning"] : conditioning;
     for (const name of names) {
-      const found = difference(a[name], b[name], `${path}.${name}`);
+      const found = name === "conditioning" ? undefined : difference(a[name], b[name], `${path}.${name}`, here);
       if (found !== undefined) return found;
     }
     return undefined;

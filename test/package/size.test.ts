@@ -35,7 +35,7 @@ const all = (entry: string): string => `export * from "./dist/${entry}.js";`;
  */
 const limits: Record<string, number> = {
   index: 52_000,
-  grids: 12_000,
+  grids: 8_500,
   charts: 20_000,
   files: 3_000,
   certify: 21_000,

@@ -1,0 +1,69 @@
+/** A grid as JSON that describes itself: what it is, units, order of rows, then the columns. */
+import { joined, pieceLength } from "./chunks.js";
+import { conventions, type GridTexts, orderOfRows, titleOf, validity } from "./description.js";
+import { columnOf, type Grid } from "./grid.js";
+import { numbersText } from "./number-text.js";
+
+/** Numbers turned into text at once. */
+const batch = 2048;
+
+/**
+ * A grid as JSON text (RFC 8259). Numbers read back to the same bits; infinities, which JSON has no number for, are the
+ * strings "INF" and "-INF".
+ *
+ * @throws FermistateError `too-large` where the text is longer than a string may be: use {@link gridToJsonPieces}
+ * @example
+ * ```ts
+ * import { composition, whiteDwarfMatter } from "fermistate";
+ * import { grid, gridToJson } from "fermistate/grids";
+ * const made = grid(whiteDwarfMatter(), composition({ He4: 1 }), { density: [1e4, 1e5], temperature: 1e8 });
+ * const read = JSON.parse(gridToJson(made));
+ * read.shape; // => [1, 2]
+ * read.columns.density; // => { unit: "g/cm^3", values: [10000, 100000] }
+ * ```
+ */
+export function gridToJson(grid: Grid, texts: GridTexts = {}): string {
+  return joined(gridToJsonPieces(grid, texts), "gridToJsonPieces");
+}
+
+/** The text of {@link gridToJson} in pieces of about 64 kB, so that memory stays bounded. */
+export function* gridToJsonPieces(grid: Grid, texts: GridTexts = {}): Generator<string, void, undefined> {
+  const { composition } = grid;
+  const head = {
+    title: titleOf(grid, texts),
+    ...(texts.note === undefined ? {} : { note: texts.note }),
+    creator: `fermistate ${grid.libraryVersion}`,
+    equationOfState: grid.equationOfState,
+    contributions: grid.contributions,
+    composition: {
+      name: composition.name,
+      electronsPerNucleon: composition.electronsPerNucleon,
+      meanMassNumber: composition.meanMassNumber,
+      meanCharge: composition.meanCharge,
+      species: composition.species.map(({ label, massNumber, chargeNumber, nucleonFraction }) => {
+        return { label, massNumber, chargeNumber, nucleonFraction };
+      }),
+    },
+    conventions,
+    validity: validity(grid.domain, grid.contributions),
+    infinities: 'values beyond all numbers are the strings "INF" and "-INF"',
+    rows: orderOfRows,
+    order: grid.order,
+    shape: grid.shape,
+  };
+  let piece = `${JSON.stringify(head, null, 2).slice(0, -2)},\n  "columns": {`;
+  for (const [i, name] of grid.columnNames.entries()) {
+    const { unit, description } = columnOf(name);
+    const about = JSON.stringify({ unit, description }, null, 6).slice(0, -2);
+    piece += `${i === 0 ? "" : ","}\n    "${name}": ${about},\n      "values": [`;
+    const column = grid.columns[name]!;
+    for (let start = 0; start < column.length; start += batch) {
+      piece += (start === 0 ? "" : ",") + numbersText(Array.from(column.subarray(start, start + batch)), '"');
+      if (piece.length < pieceLength) continue;
+      yield piece;
+      piece = "";
+    }
+    piece += "]\n    }";
+  }
+  yield `${piece}\n  }\n}\n`;
+}

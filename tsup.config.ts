@@ -1,0 +1,87 @@
+/** Two builds: the library (ESM, CommonJS, types; one file per sub-path) and the command line (one Node program). */
+import { existsSync, mkdirSync, readdirSync, readFileSync, writeFileSync } from "node:fs";
+import { join } from "node:path";
+import { defineConfig, type Options } from "tsup";
+
+/** d3 is published as ESM only, so the CommonJS half could not load it: it is copied into dist, with its licences. */
+const bundled = [/^d3-/, /^internmap$/];
+const licencesFile = "dist/THIRD-PARTY-LICENSES.txt";
+
+/** Folders of all bundled packages, found by the bundler itself; both builds add theirs. */
+const bundledFolders = new Set<string>();
+
+const shared: Options = {
+  target: "es2022",
+  removeNodeProtocol: false,
+  noExternal: bundled,
+  esbuildOptions(options) {
+    // Module-level numeric constants (slot indices of records) become literals in hot loops, across modules too:
+    // those that stand at the head of their file, before any import and any other statement.
+    options.minifySyntax = true;
+  },
+  esbuildPlugins: [
+    {
+      name: "third-party-licences",
+      setup(build) {
+        build.initialOptions.metafile = true;
+        build.onEnd((result) => {
+          for (const input of Object.keys(result.metafile?.inputs ?? {})) {
+            const folder = /^(?:.*\/)?node_modules\/(?:@[^/]+\/)?[^/]+/.exec(input)?.[0];
+            if (folder !== undefined) bundledFolders.add(folder);
+          }
+          writeLicences();
+        });
+      },
+    },
+  ],
+};
+
+/** Writes the name, version and full licence text of every bundled package. */
+function writeLicences(): void {
+  if (bundledFolders.size === 0) return;
+  const texts = [...bundledFolders].sort().map((folder) => {
+    const about = JSON.parse(readFileSync(join(folder, "package.json"), "utf8")) as Record<string, string>;
+    const file = readdirSync(folder).find((name) => /^licen[cs]e/i.test(name));
+    if (file === undefined) throw new Error(`${folder} is bundled but has no licence file`);
+    const text = readFileSync(join(folder, file), "utf8").trim();
+    return `${about["name"]} ${about["version"]} (${about["license"]})\n\n${text}\n`;
+  });
+  if (!existsSync("dist")) mkdirSync("dist");
+  const head = "Parts of these packages are included in the files of this folder.\n";
+  writeFileSync(licencesFile, [head, ...texts].join(`\n${"-".repeat(80)}\n\n`));
+}
+
+export default defineConfig([
+  {
+    ...shared,
+    entry: {
+      index: "src/index.ts",
+      grids: "src/grids/index.ts",
+      charts: "src/charts/index.ts",
+      files: "src/files/index.ts",
+      certify: "src/certify/index.ts",
+    },
+    format: ["esm", "cjs"],
+    platform: "neutral",
+    external: [/^node:/],
+    splitting: true,
+    // Hands the CommonJS conversion to rollup: tsup's own breaks on class fields written by `minifySyntax`.
+    treeshake: true,
+    dts: {
+      compilerOptions: {
+        ignoreDeprecations: "6.0", // tsup sets `baseUrl`, which TypeScript 6 calls deprecated
+        types: ["node"], // for src/files only
+        // "npm run types" asks for these; a build need not stop at them.
+        isolatedDeclarations: false,
+        noUnusedLocals: false,
+        noUnusedParameters: false,
+      },
+    },
+  },
+  {
+    ...shared,
+    entry: { cli: "src/cli/main.ts" },
+    format: ["esm"],
+    platform: "node",
+  },
+]);
