@@ -14,7 +14,7 @@ import { readFileSync } from "node:fs";
 import { cpus } from "node:os";
 import { fileURLToPath } from "node:url";
 import { parseArgs } from "node:util";
-import { combine, composition, electronPositronGas } from "fermistate";
+import { combine, composition, electronPositronGas } from "../src/index.js";
 import { regions } from "./regions.mjs";
 
 const { values } = parseArgs({

@@ -80,6 +80,8 @@ export const electronComptonLength: number = /* @__PURE__ */ product(
 );
 /** Unit of the electron number density 1/(pi^2 lambdabar_C^3) = 8 pi (m_e c/h)^3, cm^-3. */
 export const electronDensityUnit: number = /* @__PURE__ */ product([8n, 1n], [pi, 1], [electron, 3], [c, 3], [h, -3]);
+/** Unit of the pressure of an electron gas, m_e c^2/(pi^2 lambdabar_C^3) = 8 pi m_e^4 c^5/h^3, dyn/cm^2. */
+export const electronPressureUnit: number = /* @__PURE__ */ product([8n, 1n], [pi, 1], [electron, 4], [c, 5], [h, -3]);
 /** Solar mass GM/G, g: the nominal GM over the measured G. */
 export const solarMass: number = /* @__PURE__ */ product(
   [1n, 1n],
@@ -128,6 +130,7 @@ export type ConstantName =
   | "electronRestTemperature"
   | "electronComptonLength"
   | "electronDensityUnit"
+  | "electronPressureUnit"
   | "solarMass";
 
 /**
@@ -212,6 +215,7 @@ function tabulate(): Readonly<Record<ConstantName, Constant>> {
     electronRestTemperature: derived(electronRestTemperature, ofElectronMass, "K", "m_e c^2/k"),
     electronComptonLength: derived(electronComptonLength, ofElectronMass, "cm", "hbar/(m_e c)"),
     electronDensityUnit: derived(electronDensityUnit, 3 * ofElectronMass, "cm^-3", "8 pi (m_e c/h)^3"),
+    electronPressureUnit: derived(electronPressureUnit, 4 * ofElectronMass, "dyn/cm^2", "8 pi m_e^4 c^5/h^3"),
     solarMass: derived(solarMass, ofG, "g", "nominal GM/G"),
   });
 }

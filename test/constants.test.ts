@@ -92,6 +92,7 @@ describe("derived constants", () => {
       ["elementaryChargeSquared", "fineStructureConstant", 1],
       ["electronRestTemperature", "electronMass", 1],
       ["electronDensityUnit", "electronMass", 3],
+      ["electronPressureUnit", "electronMass", 4],
       ["radiationConstant", "planckConstant", 3], // zero
       ["stefanBoltzmannConstant", "planckConstant", 3],
       ["reducedPlanckConstant", "planckConstant", 1],

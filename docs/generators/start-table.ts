@@ -8,15 +8,25 @@ import { writeFileSync } from "node:fs";
 import { ETA, KINETIC_MU, N00, N10, NU, RECORD_LENGTH, THETA } from "../../src/fermi-gas/record.js";
 import { sommerfeld } from "../../src/fermi-gas/sommerfeld.js";
 import {
+  ALPHA,
   BRANCH_POINT,
-  densityCoordinate,
-  densityLimit,
-  densityTemperature,
-  largestX,
+  DENSITY_SCALE,
+  fillCoordinates,
+  LAST_RATIO,
+  NORM,
   PATCH_SIZE,
   PATCHES_T,
   PATCHES_U,
-  temperatureAt,
+  SCALE_THETA,
+  SCALE_U,
+  STRETCH,
+  TABLE_CLASSICAL,
+  TABLE_LENGTH,
+  TABLE_T,
+  TABLE_THETA,
+  TABLE_THRESHOLD,
+  TABLE_U,
+  TABLE_X,
 } from "../../src/fermi-gas/start-coordinates.js";
 import { trapezoid } from "../../src/fermi-gas/trapezoid.js";
 
@@ -33,6 +43,15 @@ function classicalDensity(theta: number): number {
     sum += p * p * (1 + energy) * Math.exp(-energy / theta);
   }
   return sum * h;
+}
+
+// The coordinates of start-coordinates.ts, inverted.
+const densityTemperature = (x: number): number => (DENSITY_SCALE * (1 + x)) / (1 - x);
+const densityCoordinate = (theta: number): number => (2 * theta) / (theta + DENSITY_SCALE) - 1;
+const densityLimit = (theta: number): number => NORM * (theta * (1 + ALPHA * theta)) ** 1.5;
+function temperatureAt(t: number, u: number): number {
+  const ratio = t / STRETCH;
+  return ((SCALE_THETA / (1 + SCALE_U * u)) * ratio) / (1 - ratio);
 }
 
 const nodes = (m: number): number[] => Array.from({ length: m }, (_, k) => Math.cos((Math.PI * (k + 0.5)) / m));
@@ -97,6 +116,19 @@ function solveNu(n: number, theta: number, start: number): number {
   return nu;
 }
 
+const table = new Float64Array(TABLE_LENGTH);
+
+/** The look-up must find the node where it was made. */
+function checkCoordinates(theta: number, classical: number, x: number, threshold: number, u: number, t: number): void {
+  table[TABLE_THETA] = theta;
+  table[TABLE_CLASSICAL] = classical;
+  table[TABLE_X] = x;
+  table[TABLE_THRESHOLD] = threshold;
+  fillCoordinates(table);
+  const off = Math.abs(table[TABLE_U]! - u) + (theta > 1e-8 ? Math.abs(table[TABLE_T]! - t) : 0);
+  if (!(off < 1e-9)) throw new Error(`coordinates of u ${u}, t ${t} come back ${off} off`);
+}
+
 /** D at the table's coordinates. */
 function tableEntry(u: number, t: number): number {
   const theta = Math.max(1e-9, temperatureAt(t, u));
@@ -104,8 +136,10 @@ function tableEntry(u: number, t: number): number {
   const classical = fittedDensity(theta);
   const threshold = Math.exp(-inverse);
   const low = Math.log(BRANCH_POINT + 2 * threshold);
-  const high = Math.log(BRANCH_POINT + largestX(theta, classical));
+  const energy = LAST_RATIO * theta;
+  const high = Math.log(BRANCH_POINT + (energy * (energy + 2)) ** 1.5 / (3 * classical));
   const x = Math.exp(low + (high - low) * u) - BRANCH_POINT;
+  checkCoordinates(theta, classical, x, threshold, u, t);
   // At u = 0 the net density vanishes: take the limit a little above (D is even in Qc).
   const b = Math.max(
     Math.sqrt(Math.max(0, (x - 2 * threshold) * (x + 2 * threshold))),
@@ -120,7 +154,7 @@ function tableEntry(u: number, t: number): number {
 
 const xs = nodes(PATCH_SIZE);
 const monomials = chebyshevMonomials(PATCH_SIZE);
-const table: number[] = [];
+const coefficients: number[] = [];
 for (let i = 0; i + 1 < PATCHES_T.length; i++) {
   for (let j = 0; j + 1 < PATCHES_U.length; j++) {
     const values = xs.map((y) =>
@@ -132,7 +166,7 @@ for (let i = 0; i + 1 < PATCHES_T.length; i++) {
     );
     const inX = values.map((row) => interpolate(row)); // [node in t][power of x]
     const inBoth = monomials.map((_, p) => interpolate(inX.map((row) => row[p]!))); // [power of x][power of y]
-    for (let q = 0; q < PATCH_SIZE; q++) for (let p = 0; p < PATCH_SIZE; p++) table.push(inBoth[p]![q]!);
+    for (let q = 0; q < PATCH_SIZE; q++) for (let p = 0; p < PATCH_SIZE; p++) coefficients.push(inBoth[p]![q]!);
   }
 }
 
@@ -161,8 +195,8 @@ ${lines(densityFit.map((c) => String(Number(c.toPrecision(14)))))}
 
 /** D: per patch (temperature outer, u inner) 10 x 10 monomials, powers of u fastest. */
 export const tableCoefficients: Float64Array = /* @__PURE__ */ new Float64Array([
-${lines(table.map((c) => String(Number(c.toFixed(10)))))}
+${lines(coefficients.map((c) => String(Number(c.toFixed(10)))))}
 ]);
 `;
 writeFileSync("src/fermi-gas/start-table.ts", source);
-process.stdout.write(`${table.length} coefficients, ${source.length} bytes\n`);
+process.stdout.write(`${coefficients.length} coefficients, ${source.length} bytes\n`);

@@ -7,7 +7,7 @@ import { scaleLinear, scaleLog, scaleSymlog } from "d3-scale";
 import { linearTickTexts, powerOfTen } from "./labels.js";
 
 /** One tick: where, and what it says; the text is empty for a tick without label. */
-export interface Tick {
+interface Tick {
   readonly position: number;
   readonly text: string;
 }
@@ -25,6 +25,12 @@ export interface AxisScale {
 /** Most decades of an axis: below, a quantity that fades exponentially (positrons) would take all the room. */
 const mostDecades = 50;
 
+/** True for values that a chart can show: 0, and sizes from 1e-300 to 1e300, beyond which arithmetic breaks down. */
+export function isDrawable(value: number): boolean {
+  const size = Math.abs(value);
+  return value === 0 || (size >= 1e-300 && size <= 1e300);
+}
+
 /** Pixels between two labels that still do not touch. */
 const leastPitch = 15;
 
@@ -32,7 +38,7 @@ const leastPitch = 15;
 export type PixelRange = readonly [low: number, high: number];
 
 /**
- * The scale that suits finite values (at least one).
+ * The scale that suits values (at least one), all of them drawable.
  *
  * @param margin - empty share of the axis beyond the values at each end
  * @param pitch - pixels from label to label, at least
@@ -122,7 +128,8 @@ function symmetric(
 ): AxisScale {
   // The scale bends at the size of the smaller side; with one side only, at the smallest value.
   const smaller = high > 0 ? Math.min(-low, high) : Math.min(...values.filter((value) => value < 0).map(Math.abs));
-  const unit = Number(`1e${Math.floor(Math.log10(smaller))}`);
+  const least = Math.max(-low, high) / 10 ** (mostDecades / 2);
+  const unit = Number(`1e${Math.floor(Math.log10(Math.max(smaller, least)))}`);
   const scale = scaleSymlog()
     .constant(unit)
     .domain([low, Math.max(high, 0)])

@@ -9,7 +9,7 @@ import { isIdeal } from "../grids/description.js";
 import type { Grid } from "../grids/grid.js";
 import { nearestWord } from "../grids/nearest.js";
 import type { QuantityName } from "../thermodynamics/quantities.js";
-import { type AxisScale, axisScale } from "./axis-scale.js";
+import { type AxisScale, axisScale, isDrawable } from "./axis-scale.js";
 import { axisLabel, nameOf } from "./labels.js";
 import { colours, ink } from "./palette.js";
 import { type Lines, linesOf } from "./series.js";
@@ -57,7 +57,7 @@ const edge = 22;
 export function chartGrid(grid: Grid, options: ChartOptions = {}): string {
   const { quantity, width, height, title, note } = readOptions(grid, options);
   const lines = linesOf(grid, quantity);
-  const finite = lines.series.flatMap(({ y }) => y.filter(Number.isFinite));
+  const finite = lines.series.flatMap(({ y }) => y.filter(isDrawable));
   if (finite.length === 0) {
     const allowed = "a quantity with finite values in this grid";
     throw new FermistateError("invalid-option", { argument: "quantity", given: quantity, allowed });
@@ -152,7 +152,7 @@ function verticalTicks(x: AxisScale, { bottom }: Frame): string {
 }
 
 function drawable(x: AxisScale, y: AxisScale, one: Lines["series"][number], i: number): boolean {
-  return Number.isFinite(one.y[i]) && y.shows(one.y[i]!) && x.shows(one.x[i]!);
+  return isDrawable(one.y[i]!) && y.shows(one.y[i]!) && x.shows(one.x[i]!);
 }
 
 /** The data; the first line last, so that where lines run together the coldest, their common limit, is seen. */

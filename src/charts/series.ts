@@ -4,7 +4,7 @@ import type { QuantityName } from "../thermodynamics/quantities.js";
 import { unitText, valueText } from "./labels.js";
 
 /** One line. */
-export interface Series {
+interface Series {
   /** What the legend says. */
   readonly text: string;
   readonly x: readonly number[];

@@ -37,7 +37,7 @@ const charts: readonly QuantityName[] = ["pressure", "gamma1", "electronDegenera
 
 export const demoCommand: Command = command({
   name: "demo",
-  summary: "an invented white dwarf: grids, charts, a table and one state",
+  summary: "an invented white dwarf: grids, charts and a first look",
   usage: "demo [--out FOLDER]",
   options: {
     out: {

@@ -12,9 +12,9 @@ const axisText = [
     [
       ["2e6", "one value"],
       ["1e5,1e6,3e7", "these values, increasing"],
-      ["1e2..1e10,10-per-decade", "from 1e2 to 1e10, equal ratios, ten steps per factor of ten"],
-      ["1e2..1e10,81-points", "the same with the number of values"],
-      ["0..1e9,5-linear-points", "equal distances"],
+      ["1e2..1e10,10-per-decade", "equal ratios, ten steps per factor of ten"],
+      ["1e2..1e10,81-points", "equal ratios, 81 values"],
+      ["0..1e9,5-linear-points", "equal distances, 5 values"],
     ],
     "ll",
   ),
@@ -26,7 +26,7 @@ const exitCodes = [
   table(
     [
       ["0", "done"],
-      ["1", "refused or failed: outside the domain, too large, a file could not be written"],
+      ["1", "refused or failed: outside the domain, too large, a file not written"],
       ["2", "the request itself is wrong: an option, a number, a nuclide, a composition"],
     ],
     "ll",

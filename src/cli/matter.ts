@@ -9,7 +9,7 @@ import type { OptionHelp } from "./command.js";
 import { flag, fractions, wordList } from "./readers.js";
 
 /** Contributions that can be left out. */
-export const switches = ["ions", "radiation"] as const;
+const switches = ["ions", "radiation"] as const;
 
 /** Options that every command about matter shares. */
 export const matterOptions = {

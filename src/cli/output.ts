@@ -35,7 +35,7 @@ interface Entry {
 }
 
 /** The files of an output; `about` needs the number of rows only. */
-export function entriesOf(output: Output): Entry[] {
+function entriesOf(output: Output): Entry[] {
   const { base, charts } = output;
   return [
     ...(output.csv
@@ -79,9 +79,6 @@ function textsOf(grid: Grid, output: Output): TextFile["text"][] {
   return [
     ...(output.csv ? [gridToCsvPieces(grid), gridToCsvMetadata(grid, csvName, texts)] : []),
     ...(output.json ? [gridToJsonPieces(grid, texts)] : []),
-    ...output.charts.map((quantity) => {
-      const heading = title === undefined ? {} : { title: `${title}: ${quantity}` };
-      return chartGrid(grid, { quantity, ...heading, ...(note === undefined ? {} : { note }) });
-    }),
+    ...output.charts.map((quantity) => chartGrid(grid, { quantity, ...texts })),
   ];
 }

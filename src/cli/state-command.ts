@@ -11,7 +11,7 @@ import { type Share, sharesOf } from "./shares.js";
 
 export const stateCommand: Command = command({
   name: "state",
-  summary: "one state: every quantity, and what each contribution adds to it",
+  summary: "one state: every quantity, and what each contribution adds",
   usage: "state --density G/CM3 --temperature KELVIN --composition LABEL=X,...",
   options: {
     density: { value: "G/CM3", help: "baryon mass density, g/cm^3", read: number },
@@ -88,7 +88,7 @@ const groups: readonly (readonly [title: string, names: readonly QuantityName[]]
 ];
 
 /** The state as text. */
-export function stateText(equationOfState: EquationOfState, state: State, shares: readonly Share[]): string {
+function stateText(equationOfState: EquationOfState, state: State, shares: readonly Share[]): string {
   const { density, temperature, composition } = state;
   const grouped = new Set(groups.flatMap(([, names]) => names));
   const rest = quantityNames.filter((name) => !grouped.has(name) && state[name] !== undefined);
@@ -136,7 +136,7 @@ function shareTable(shares: readonly Share[], state: State): string {
 }
 
 /** The state as JSON text; infinities, which JSON has no number for, as "INF" and "-INF". */
-export function stateJson(equationOfState: EquationOfState, state: State, shares: readonly Share[]): string {
+function stateJson(equationOfState: EquationOfState, state: State, shares: readonly Share[]): string {
   const { density, temperature, composition } = state;
   const known = quantityNames.filter((name) => state[name] !== undefined);
   const document = {

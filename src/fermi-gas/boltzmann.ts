@@ -12,7 +12,7 @@
 import { EXPONENTIAL_OFFSET, EXPONENTIAL_STEPS, exponentialTable } from "../numerics/exponential.js";
 import type { Order } from "../thermodynamics/free-energy.js";
 import { CUT_CLASSICAL } from "./accuracy.js";
-import { refuseOverflow, stepOf } from "./momentum-ladder.js";
+import { refuseOverflow } from "./momentum-ladder.js";
 import { NODE_ENERGY, NODE_NUMBER, NODE_STRIDE } from "./node-layout.js";
 import { chooseRapidityStep, rapidityNodesOf } from "./rapidity-nodes.js";
 import {
@@ -37,6 +37,7 @@ import {
   P00,
   PSI,
   Q,
+  STEP,
   THETA,
 } from "./record.js";
 
@@ -139,7 +140,7 @@ function fillMoments(gas: Float64Array): void {
     b2 += term2;
     b3 += term2 * x;
   }
-  moments[0] = b0 * stepOf(rung);
+  moments[0] = b0 * gas[STEP]!;
   moments[1] = b1 / b0;
   moments[2] = b2 / b0;
   moments[3] = b3 / b0;

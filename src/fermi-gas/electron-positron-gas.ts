@@ -5,7 +5,12 @@
  * the ideal gas; measured error at most 1.5e-14 in P, e, first derivatives and c_v, 2e-14 in s, over rho Y_e = 1e-15 to
  * 1e15 g/cm^3 and T = 0 and 1e2 to 1e13 K (docs/guide/fermi-gas.md). Interactions are other contributions' matter.
  */
-import { electronDensityUnit, electronRestEnergy, electronRestTemperature } from "../constants.js";
+import {
+  electronDensityUnit,
+  electronPressureUnit,
+  electronRestEnergy,
+  electronRestTemperature,
+} from "../constants.js";
 import type { Composition } from "../matter/composition.js";
 import {
   DENSITY,
@@ -35,21 +40,17 @@ import {
 } from "./record.js";
 import { antiparticleDensity } from "./single-species.js";
 
-/** erg/cm^3 of one natural unit of pressure, m_e c^2/(pi^2 lambdabar^3). */
-const pressureUnit = electronRestEnergy * electronDensityUnit;
-const netDensityPerCubicCentimetre = 1 / electronDensityUnit;
-
 /** The ideal electron-positron gas as a contribution. */
 export function electronPositronGas(): Contribution {
   const gas = new Float64Array(RECORD_LENGTH);
   const scale = new Float64Array(1);
 
   function enter(point: Float64Array): void {
-    gas[NET_DENSITY] = point[ELECTRON_DENSITY]! * netDensityPerCubicCentimetre;
+    gas[NET_DENSITY] = point[ELECTRON_DENSITY]! / electronDensityUnit;
     gas[FERMI_MOMENTUM] = point[RELATIVITY]!;
     gas[KINETIC_MU] = point[FERMI_ENERGY]!;
     gas[THETA] = point[TEMPERATURE]! / electronRestTemperature;
-    scale[0] = pressureUnit / point[DENSITY]!;
+    scale[0] = electronPressureUnit / point[DENSITY]!;
   }
 
   return Object.freeze({

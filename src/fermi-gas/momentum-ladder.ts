@@ -5,8 +5,9 @@
  * and the hot loop has no square root.
  */
 import { FermistateError } from "../errors.js";
-import { squareError } from "../numerics/exact-product.js";
+import { squareErrors } from "../numerics/exact-product.js";
 import { NODE_ENERGY, NODE_ENERGY_LOW, NODE_NUMBER, NODE_PRESSURE, NODE_STRIDE } from "./node-layout.js";
+import { STEP, SUM_P } from "./record.js";
 
 const LOWEST = -240;
 const HIGHEST = 136;
@@ -19,12 +20,18 @@ const steps = /* @__PURE__ */ Float64Array.from({ length: HIGHEST - LOWEST + 1 }
   return (Math.round(2 ** (exponent - whole) * 2 ** 19) / 2 ** 19) * 2 ** whole;
 });
 const rows: Float64Array[] = [];
+const square = new Float64Array(2);
 const vacuumTerms = new Float64Array(HIGHEST - LOWEST + 1);
 
-/** Rung of the largest step <= h (clamped to the ladder: 2^-30 ... 2^17, far beyond the domain on both sides). */
-export function rungBelow(h: number): number {
-  const rung = Math.floor(8 * Math.log2(h)) - LOWEST;
-  return rung < 0 ? 0 : rung > HIGHEST - LOWEST ? HIGHEST - LOWEST : rung;
+/**
+ * Rounds the record's STEP down to the ladder (2^-30 ... 2^17, far beyond the domain on both sides); returns the rung.
+ */
+export function chooseRung(gas: Float64Array): number {
+  let rung = Math.floor(8 * Math.log2(gas[STEP]!)) - LOWEST;
+  if (rung < 0) rung = 0;
+  if (rung > HIGHEST - LOWEST) rung = HIGHEST - LOWEST;
+  gas[STEP] = steps[rung]!;
+  return rung;
 }
 
 /** Step of a rung. */
@@ -38,14 +45,13 @@ export function nodesOf(rung: number): Float64Array {
 }
 
 /**
- * Error of the rule in the pressure of the sea, (2/3) int_1^inf t^4/sqrt(t^2 - 1) / (e^(2 pi t/h) - 1) dt.
+ * Subtracts from SUM_P the error of the rule in the pressure of the sea, (2/3) int_1^inf t^4/sqrt(t^2 - 1) / (e^(2 pi t/h) - 1) dt.
  *
  * f_- + f_+ = 1 - (an odd function of E); the 1 leaves p^4/(3E), whose trapezoid error, wrapped round the cut of E
- * at p = i t, is this number. It depends on the step alone, so it is exact for every temperature.
+ * at p = i t, is this number. It depends on the step alone, so it is exact for every temperature. The rung's nodes must have been asked for before.
  */
-export function vacuumTermOf(rung: number): number {
-  nodesOf(rung);
-  return vacuumTerms[rung]!;
+export function subtractVacuumTerm(gas: Float64Array, rung: number): void {
+  gas[SUM_P]! -= vacuumTerms[rung]!;
 }
 
 /** Called when a sum met the sentinel: it would be silently short. */
@@ -66,7 +72,11 @@ function buildRow(rung: number): Float64Array {
     const total = Math.sqrt(1 + p2);
     const energy = p2 / (1 + total); // E - 1 without cancellation
     const energy2 = energy * energy;
-    const residual = p2 - energy2 - 2 * energy - squareError(energy, energy2); // of p^2 = e (e + 2)
+    square[0] = energy;
+    squareErrors(square, 1);
+    // Residual of p^2 = e^2 + 2e: the larger term first, then the difference is exact (Sterbenz).
+    const rest = energy < 2 ? p2 - 2 * energy - energy2 : p2 - energy2 - 2 * energy;
+    const residual = rest - square[1]!;
     const node = NODE_STRIDE * j;
     row[node + NODE_ENERGY] = energy;
     row[node + NODE_ENERGY_LOW] = residual / (2 * total);

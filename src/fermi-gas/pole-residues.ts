@@ -19,7 +19,7 @@
  * Published roots: residue-corrected trapezoid for Fermi-Dirac integrals, Mohankumar & Natarajan 1995, Astrophys. J.
  * 458, 233 (from memory); Gautschi 1993, Comput. Phys. Commun. 74, 233.
  */
-import { squareError } from "../numerics/exact-product.js";
+import { squareErrors } from "../numerics/exact-product.js";
 import { COSINE, cosineAndSine, SINE, TURN } from "../numerics/turn.js";
 import type { Order } from "../thermodynamics/free-energy.js";
 import { CONTOUR_MARGIN } from "./accuracy.js";
@@ -49,6 +49,7 @@ import {
 export type NodeVariable = "momentum" | "rapidity";
 
 const phase = new Float64Array(3);
+const squares = new Float64Array(4);
 
 /** Adds the residues of the first `count` poles to the sums of `gas`. */
 export function addPoleResidues(gas: Float64Array, count: number, variable: NodeVariable, order: Order): void {
@@ -68,7 +69,9 @@ export function addPoleResidues(gas: Float64Array, count: number, variable: Node
   const larger = Math.abs(2 * kinetic) > kinetic2 ? 2 * kinetic : kinetic2;
   const smaller = Math.abs(2 * kinetic) > kinetic2 ? kinetic2 : 2 * kinetic;
   const fermi2 = kinetic2 + 2 * kinetic;
-  const fermi2Low = larger - fermi2 + smaller + squareError(kinetic, kinetic2);
+  squares[0] = kinetic;
+  squareErrors(squares, 1);
+  const fermi2Low = larger - fermi2 + smaller + squares[1]!;
 
   for (let k = 0; k < count; k++) {
     const omega = Math.PI * (2 * k + 1); // Im y
@@ -103,7 +106,10 @@ export function addPoleResidues(gas: Float64Array, count: number, variable: Node
       const re2 = pRe * pRe;
       const im2 = pIm * pIm;
       const p2Low = fermi2 - p2Re - eIm2 + fermi2Low;
-      const residual = p2Re - (re2 - im2) - squareError(pRe, re2) + squareError(pIm, im2) + p2Low;
+      squares[0] = pRe;
+      squares[1] = pIm;
+      squareErrors(squares, 2);
+      const residual = p2Re - re2 + im2 - squares[2]! + squares[3]! + p2Low; // in this order: the first is exact
       const correction = 0.5 * inverseModulus * residual;
       decayHeight = pIm - correction * pIm;
       const turns = Math.round(pRe * inverseStep);

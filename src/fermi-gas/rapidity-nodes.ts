@@ -5,9 +5,9 @@
  * n = int sinh^2 u cosh u f du, P = int (sinh^4 u)/3 f du. Rows have the layout of momentum-ladder.ts.
  */
 import { CLEAR_HEIGHT, GAUSSIAN_HEIGHT, RAPIDITY_DIGITS } from "./accuracy.js";
-import { rungBelow, stepOf } from "./momentum-ladder.js";
+import { chooseRung, stepOf } from "./momentum-ladder.js";
 import { NODE_ENERGY, NODE_NUMBER, NODE_PRESSURE, NODE_STRIDE } from "./node-layout.js";
-import { CONTOUR, ETA, THETA } from "./record.js";
+import { CONTOUR, ETA, STEP, THETA } from "./record.js";
 
 const CAPACITY = 256;
 const rows: Float64Array[] = [];
@@ -36,7 +36,7 @@ function buildRow(rung: number): Float64Array {
 }
 
 /**
- * The rung of the largest sufficient step, as in trapezoid.ts, for the record's ETA and THETA; writes CONTOUR.
+ * The rung of the largest sufficient step, as in trapezoid.ts, for the record's ETA and THETA; writes CONTOUR and STEP.
  * `poles`: how many are corrected for; negative where none comes near (the classical gas, rare positrons).
  */
 export function chooseRapidityStep(gas: Float64Array, poles: number): number {
@@ -62,5 +62,6 @@ export function chooseRapidityStep(gas: Float64Array, poles: number): number {
   const bound = eta < 0 ? 1 - eta : 1;
   if (growth > bound) growth = bound;
   gas[CONTOUR] = y;
-  return rungBelow((2 * Math.PI * y) / (RAPIDITY_DIGITS + growth));
+  gas[STEP] = (2 * Math.PI * y) / (RAPIDITY_DIGITS + growth);
+  return chooseRung(gas);
 }

@@ -67,7 +67,7 @@ export const START_ERROR = 24;
 /** Nodes in the last sum. */
 export const NODES = 25;
 
-/** Step of the trapezoidal rule. */
+/** Step of the trapezoidal rule; before it is chosen, the largest that would do. */
 export const STEP = 26;
 /** Height of the contour in the complex plane that the step was chosen for. */
 export const CONTOUR = 27;
@@ -99,13 +99,6 @@ export const REGIME_TRAPEZOID = 0;
 export const REGIME_DEGENERATE = 1;
 /** Classical: in closed form. */
 export const REGIME_CLASSICAL = 2;
-
-// Scratch of the start table.
-
-export const TABLE_CLASSICAL = 0;
-export const TABLE_U = 1;
-export const TABLE_T = 2;
-export const TABLE_D = 3;
 
 // Scratch of the solver: the step in alpha, and the unit in which it is small.
 

@@ -6,7 +6,7 @@
  */
 import type { Order } from "../thermodynamics/free-energy.js";
 import { CUT_DENSITY, CUT_SECOND, CUT_THIRD } from "./accuracy.js";
-import { refuseOverflow, stepOf } from "./momentum-ladder.js";
+import { refuseOverflow } from "./momentum-ladder.js";
 import { NODE_ENERGY, NODE_NUMBER, NODE_STRIDE } from "./node-layout.js";
 import { fillFactors, sumParticles, sumParticlesThird } from "./node-sums.js";
 import { addPoleResidues } from "./pole-residues.js";
@@ -26,7 +26,6 @@ export function singleSpecies(gas: Float64Array, order: Order): void {
   gas[LAMBDA] = degenerate ? 0 : 1;
   gas[CUT] = order === 3 || theta > 0.1 ? CUT_THIRD : CUT_SECOND;
   const rung = chooseRapidityStep(gas, poles);
-  gas[STEP] = stepOf(rung);
   const row = rapidityNodesOf(rung);
   const count = fillFactors(gas, row, false);
   sumParticles(gas, row, count);
@@ -64,5 +63,5 @@ export function antiparticleDensity(gas: Float64Array): void {
     const a = scale * Math.exp(-x);
     sum += (row[node + NODE_NUMBER]! * a) / (1 + a);
   }
-  gas[ANTIPARTICLES] = sum * stepOf(rung);
+  gas[ANTIPARTICLES] = sum * positrons[STEP]!;
 }

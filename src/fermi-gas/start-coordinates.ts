@@ -1,57 +1,56 @@
 /**
- * The coordinates of the start table: what docs/generators/start-table.ts fits in and start-value.ts looks up with.
+ * The coordinates of the start table, which docs/generators/start-table.ts fits in and start-value.ts looks up with.
  * No imports, so that the bundler inlines the constants.
+ *
+ *     density:      N = sqrt(pi/2) [theta (1 + alpha theta)]^(3/2) e^(polynomial in s),   s = 2 theta/(theta + 0.7) - 1
+ *     X:            u = ln[(2.6 + X)/(2.6 + X_0)] / ln[(2.6 + X_1)/(2.6 + X_0)]
+ *     temperature:  t = [theta/(theta + 0.3/(1 + 2u))] (4000.3/4000)
+ *
+ * X_0 = 2 e^(-1/theta) is the X of no net charge, X_1 = p^3/(3N) that of Fermi energy 39 theta, where the degenerate
+ * start takes over. The branch point of the Fermi integrals at e^eta = -1 lies at b = -2.61: logarithms of 2.6 + X see
+ * it alike from everywhere.
  */
 
-/** The branch point of the Fermi integrals at e^eta = -1 lies at b = -2.61: logarithms of 2.6 + X see it alike. */
 export const BRANCH_POINT = 2.6;
-const LARGEST_THETA = 4000;
-const SCALE_THETA = 0.3;
-const SCALE_U = 2;
-const DENSITY_SCALE = 0.7;
-/** (2/sqrt(pi/2))^(2/3): makes [theta (1 + alpha theta)]^(3/2) right in both limits of N(theta). */
-const ALPHA = 1.3655681265105915;
+export const DENSITY_SCALE = 0.7;
+export const SCALE_THETA = 0.3;
+export const SCALE_U = 2;
+/** (4000 + 0.3)/4000: t = 1 at theta = 4000 and u = 0. */
+export const STRETCH = 1.000075;
+/** (2/sqrt(pi/2))^(2/3): makes N right in both limits. */
+export const ALPHA = 1.3655681265105915;
 /** sqrt(pi/2). */
-const NORM = 1.2533141373155001;
+export const NORM = 1.2533141373155001;
+/** Fermi energy over temperature at u = 1; equal to DEGENERATE_START of accuracy.ts. */
+export const LAST_RATIO = 39;
 /** Coefficients per direction of a patch. */
 export const PATCH_SIZE = 10;
-/** Fermi energy over temperature at u = 1, where the degenerate start takes over. */
-const DEGENERATE_START = 39;
-/** Patch borders in the temperature coordinate. */
+
+// Scratch of a look-up.
+
+export const TABLE_THETA = 0;
+export const TABLE_CLASSICAL = 1;
+export const TABLE_X = 2;
+export const TABLE_THRESHOLD = 3;
+export const TABLE_U = 4;
+export const TABLE_T = 5;
+export const TABLE_D = 6;
+export const TABLE_LENGTH = 8;
+
+/** Patch borders in t. */
 export const PATCHES_T: readonly number[] = [0, 0.25, 0.5, 0.75, 0.92, 1];
 /** Patch borders in u. */
 export const PATCHES_U: readonly number[] = [0, 0.3, 0.62, 1];
 
-/** X at which the degenerate start takes over: p^3/(3N) at Fermi energy 39 theta. */
-export function largestX(theta: number, classical: number): number {
-  const energy = DEGENERATE_START * theta;
+/** Writes TABLE_U and TABLE_T from TABLE_THETA, TABLE_CLASSICAL (N), TABLE_X and TABLE_THRESHOLD (e^(-1/theta)). */
+export function fillCoordinates(table: Float64Array): void {
+  const theta = table[TABLE_THETA]!;
+  const lowest = BRANCH_POINT + 2 * table[TABLE_THRESHOLD]!;
+  const energy = LAST_RATIO * theta;
   const p2 = energy * (energy + 2);
-  return (p2 * Math.sqrt(p2)) / (3 * classical);
-}
-
-/** t = theta/(theta + s(u)), stretched so that t = 1 at the largest temperature (u = 0). */
-export function temperatureCoordinate(theta: number, u: number): number {
-  return (theta / (theta + SCALE_THETA / (1 + SCALE_U * u))) * ((LARGEST_THETA + SCALE_THETA) / LARGEST_THETA);
-}
-
-/** The temperature at coordinate t; inverse of {@link temperatureCoordinate}. */
-export function temperatureAt(t: number, u: number): number {
-  const ratio = (t * LARGEST_THETA) / (LARGEST_THETA + SCALE_THETA);
-  return ((SCALE_THETA / (1 + SCALE_U * u)) * ratio) / (1 - ratio);
-}
-
-/** Coordinate of the density fit, in [-1, 1]. */
-export function densityCoordinate(theta: number): number {
-  return (2 * theta) / (theta + DENSITY_SCALE) - 1;
-}
-
-/** The temperature at a coordinate of the density fit. */
-export function densityTemperature(x: number): number {
-  return (DENSITY_SCALE * (1 + x)) / (1 - x);
-}
-
-/** Both limits of the classical density: sqrt(pi/2) [theta (1 + alpha theta)]^(3/2). */
-export function densityLimit(theta: number): number {
-  const y = theta * (1 + ALPHA * theta);
-  return NORM * y * Math.sqrt(y);
+  const highest = BRANCH_POINT + (p2 * Math.sqrt(p2)) / (3 * table[TABLE_CLASSICAL]!);
+  let u = Math.log((BRANCH_POINT + table[TABLE_X]!) / lowest) / Math.log(highest / lowest);
+  if (u > 1) u = 1;
+  table[TABLE_U] = u;
+  table[TABLE_T] = (theta / (theta + SCALE_THETA / (1 + SCALE_U * u))) * STRETCH;
 }

@@ -19,29 +19,33 @@ import {
   REGIME_CLASSICAL,
   REGIME_DEGENERATE,
   REGIME_TRAPEZOID,
-  TABLE_CLASSICAL,
-  TABLE_D,
-  TABLE_T,
-  TABLE_U,
   THETA,
 } from "./record.js";
 import {
-  BRANCH_POINT,
-  densityCoordinate,
-  densityLimit,
-  largestX,
+  ALPHA,
+  DENSITY_SCALE,
+  fillCoordinates,
+  NORM,
   PATCH_SIZE,
   PATCHES_T,
   PATCHES_U,
-  temperatureCoordinate,
+  TABLE_CLASSICAL,
+  TABLE_D,
+  TABLE_LENGTH,
+  TABLE_T,
+  TABLE_THETA,
+  TABLE_THRESHOLD,
+  TABLE_U,
+  TABLE_X,
 } from "./start-coordinates.js";
 import { densityCoefficients, tableCoefficients } from "./start-table.js";
 
-/** Scratch of the table look-up: its slots are in record.ts. */
-const table = new Float64Array(4);
+/** Scratch of a look-up, slots of start-coordinates.ts. */
+const table = new Float64Array(TABLE_LENGTH);
 
 /**
- * Writes ETA and NU, or KINETIC_MU, into the record and returns how to solve from there (REGIME_ of record.ts); reads NET_DENSITY, THETA, and KINETIC_MU = e_F of the cold gas.
+ * Writes ETA and NU, or KINETIC_MU, into the record and returns how to solve from there (REGIME_ of record.ts); reads
+ * NET_DENSITY, THETA, and KINETIC_MU = e_F of the cold gas.
  * Without `antiparticles` the start is good to some 10 % between the classical and the degenerate gas.
  */
 export function startValue(gas: Float64Array, antiparticles: boolean): number {
@@ -52,7 +56,8 @@ export function startValue(gas: Float64Array, antiparticles: boolean): number {
     return REGIME_DEGENERATE;
   }
   const inverse = 1 / theta;
-  classicalDensity(gas, table);
+  table[TABLE_THETA] = theta;
+  classicalDensity();
   const classical = table[TABLE_CLASSICAL]!;
   const b = n / classical;
   if (!antiparticles) {
@@ -66,12 +71,10 @@ export function startValue(gas: Float64Array, antiparticles: boolean): number {
   const threshold = Math.exp(-inverse);
   const x = Math.sqrt(b * b + 4 * threshold * threshold);
   if (x < CLASSICAL_LIMIT) return REGIME_CLASSICAL;
-  const lowest = BRANCH_POINT + 2 * threshold;
-  let u = Math.log((BRANCH_POINT + x) / lowest) / Math.log((BRANCH_POINT + largestX(theta, classical)) / lowest);
-  if (u > 1) u = 1;
-  table[TABLE_U] = u;
-  table[TABLE_T] = temperatureCoordinate(theta, u);
-  evaluateTable(table);
+  table[TABLE_X] = x;
+  table[TABLE_THRESHOLD] = threshold;
+  fillCoordinates(table);
+  evaluateTable();
   const correction = (table[TABLE_D]! * b) / x;
   if (b < 4 * threshold) {
     gas[NU] = Math.asinh((0.5 * b) / threshold) + correction;
@@ -104,18 +107,19 @@ function degenerateStart(gas: Float64Array): void {
 }
 
 /** Writes N(theta) = int p^2 e^(-(E-1)/theta) dp, to 2e-9. */
-function classicalDensity(gas: Float64Array, out: Float64Array): void {
-  const theta = gas[THETA]!;
-  const x = densityCoordinate(theta);
+function classicalDensity(): void {
+  const theta = table[TABLE_THETA]!;
+  const x = (2 * theta) / (theta + DENSITY_SCALE) - 1;
   let sum = 0;
   for (let k = densityCoefficients.length - 1; k >= 0; k--) sum = sum * x + densityCoefficients[k]!;
-  out[TABLE_CLASSICAL] = densityLimit(theta) * Math.exp(sum);
+  const y = theta * (1 + ALPHA * theta);
+  table[TABLE_CLASSICAL] = NORM * y * Math.sqrt(y) * Math.exp(sum);
 }
 
 /** Writes D from its patch: a polynomial of degree 9 in either local variable. */
-function evaluateTable(record: Float64Array): void {
-  const t = record[TABLE_T]!;
-  const u = record[TABLE_U]!;
+function evaluateTable(): void {
+  const t = table[TABLE_T]!;
+  const u = table[TABLE_U]!;
   const i = t < 0.25 ? 0 : t < 0.5 ? 1 : t < 0.75 ? 2 : t < 0.92 ? 3 : 4;
   const j = u < 0.3 ? 0 : u < 0.62 ? 1 : 2;
   const y = (2 * t - PATCHES_T[i]! - PATCHES_T[i + 1]!) / (PATCHES_T[i + 1]! - PATCHES_T[i]!);
@@ -129,5 +133,5 @@ function evaluateTable(record: Float64Array): void {
     const odd = (((d[c + 9]! * x2 + d[c + 7]!) * x2 + d[c + 5]!) * x2 + d[c + 3]!) * x2 + d[c + 1]!;
     sum = sum * y + (even + odd * x);
   }
-  record[TABLE_D] = sum;
+  table[TABLE_D] = sum;
 }

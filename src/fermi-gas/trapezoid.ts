@@ -10,7 +10,7 @@
  */
 import type { Order } from "../thermodynamics/free-energy.js";
 import { CUT_SECOND, CUT_THIRD, DIGITS, GAUSSIAN_HEIGHT, PAIRS_NU, PAIRS_NU_HOT, PAIRS_THETA } from "./accuracy.js";
-import { nodesOf, rungBelow, stepOf, vacuumTermOf } from "./momentum-ladder.js";
+import { chooseRung, nodesOf, subtractVacuumTerm } from "./momentum-ladder.js";
 import { fillFactors, sumPairs, sumPairsThird, sumParticles, sumParticlesThird } from "./node-sums.js";
 import { addPoleResidues } from "./pole-residues.js";
 import {
@@ -58,7 +58,7 @@ export function trapezoid(gas: Float64Array, order: Order): void {
   const nu = gas[NU]!;
   const theta = gas[THETA]!;
   const pairs = nu < PAIRS_NU || (nu < PAIRS_NU_HOT && theta > PAIRS_THETA);
-  const poles = poleCount(eta, theta, pairs, order);
+  const poles = poleCount(gas, pairs, order);
   const degenerate = eta > 0;
   // Pairs in the majority: a centre at E = 0 makes n and its like odd in nu, and no digit is lost at nu -> 0.
   const symmetric = !degenerate && nu < 1;
@@ -67,7 +67,6 @@ export function trapezoid(gas: Float64Array, order: Order): void {
   gas[LAMBDA] = degenerate ? 0 : 1;
   gas[CUT] = (order === 3 ? CUT_THIRD : CUT_SECOND) + (symmetric ? 1 / theta : 0);
   const rung = chooseStep(gas, poles);
-  gas[STEP] = stepOf(rung);
   const row = nodesOf(rung);
   const count = fillFactors(gas, row, symmetric);
   if (pairs) {
@@ -77,13 +76,15 @@ export function trapezoid(gas: Float64Array, order: Order): void {
     sumParticles(gas, row, count);
     if (order === 3) sumParticlesThird(gas, row, count);
   }
-  gas[SUM_P]! -= vacuumTermOf(rung);
+  subtractVacuumTerm(gas, rung);
   if (poles > 0) addPoleResidues(gas, poles, "momentum", order);
   storeMoments(gas, order);
 }
 
 /** Poles to correct for. Only the time depends on it, and the optimum is flat: node 10 ns, pair node 21, pole 60. */
-function poleCount(eta: number, theta: number, pairs: boolean, order: Order): number {
+function poleCount(gas: Float64Array, pairs: boolean, order: Order): number {
+  const eta = gas[ETA]!;
+  const theta = gas[THETA]!;
   if (!pairs) return eta < -4 ? 0 : eta < 1 ? 1 : eta < 5 ? 2 : eta < 14 || order === 3 ? 3 : 4;
   if (theta < 0.035) return eta < -9 ? 0 : eta < -5 ? 1 : 3;
   if (theta < 0.1) return eta > 10 ? 4 : 3;
@@ -92,12 +93,18 @@ function poleCount(eta: number, theta: number, pairs: boolean, order: Order): nu
 
 /**
  * The largest step whose error, e^(-2 pi y/h) times the integrand's growth at height y, is below rounding; y is the
- * height of the first pole left out. Writes CONTOUR, returns the rung of the ladder.
+ * height of the first pole left out. Writes CONTOUR and STEP, returns the rung of the ladder.
  */
 function chooseStep(gas: Float64Array, poles: number): number {
   const theta = gas[THETA]!;
   const eta = gas[ETA]!;
-  let y = poleHeight(eta * theta, Math.PI * theta * (2 * poles + 1));
+  // Im p of the first pole left out, at E = mu + i frequency.
+  const kinetic = eta * theta;
+  const frequency = Math.PI * theta * (2 * poles + 1);
+  const re = kinetic * (kinetic + 2) - frequency * frequency;
+  const im = 2 * (1 + kinetic) * frequency;
+  const modulus = Math.sqrt(re * re + im * im);
+  let y = re > 0 ? im / Math.sqrt(2 * (modulus + re)) : Math.sqrt(0.5 * (modulus - re));
   const gaussian = Math.sqrt(GAUSSIAN_HEIGHT * theta);
   if (gaussian < 1 && y > gaussian) y = gaussian;
   let growth = (y < 1 ? 1 - Math.sqrt(1 - y * y) : 1) / theta;
@@ -106,15 +113,8 @@ function chooseStep(gas: Float64Array, poles: number): number {
   if (y >= 1 && theta < 1 && eta < 0) growth += 1 - 3 * Math.log(theta);
   gas[CONTOUR] = y;
   // Relativistic amplitudes grow like (2K + 1)^3: one digit more per pole.
-  return rungBelow((2 * Math.PI * y) / (DIGITS + growth + (theta > 0.1 ? poles : 0)));
-}
-
-/** Im p of the pole at E = 1 + kinetic + i frequency. */
-function poleHeight(kinetic: number, frequency: number): number {
-  const re = kinetic * (kinetic + 2) - frequency * frequency;
-  const im = 2 * (1 + kinetic) * frequency;
-  const modulus = Math.sqrt(re * re + im * im);
-  return re > 0 ? im / Math.sqrt(2 * (modulus + re)) : Math.sqrt(0.5 * (modulus - re));
+  gas[STEP] = (2 * Math.PI * y) / (DIGITS + growth + (theta > 0.1 ? poles : 0));
+  return chooseRung(gas);
 }
 
 /** From moments to scaled derivatives in the frame of the record (psi or mu, see record.ts). */

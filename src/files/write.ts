@@ -29,8 +29,8 @@ export interface WriteOptions {
   readonly overwrite?: boolean;
   /** Make missing folders; they are removed again if writing fails. @defaultValue false */
   readonly createFolders?: boolean;
-  /** Stops writing between two pieces, as a failure. */
-  readonly signal?: AbortSignal;
+  /** An AbortSignal, or anything with its `aborted`: once true, writing stops before the next piece, as a failure. */
+  readonly signal?: { readonly aborted: boolean };
 }
 
 /** What was written. */
@@ -96,7 +96,7 @@ interface Begun {
 }
 
 /** Writes the text under a temporary name, which is in `begun` from the moment the file exists. */
-async function begin(target: Target, text: Text, signal: AbortSignal | undefined, begun: Begun[]): Promise<void> {
+async function begin(target: Target, text: Text, signal: WriteOptions["signal"], begun: Begun[]): Promise<void> {
   const { path, place, mode } = target;
   const temporary = join(dirname(place), `.${basename(place).slice(0, 40)}.${randomBytes(9).toString("hex")}.part`);
   const entry = { target, temporary, bytes: 0 };
@@ -115,7 +115,7 @@ async function writePieces(
   file: FileHandle,
   path: string,
   text: Text,
-  signal: AbortSignal | undefined,
+  signal: WriteOptions["signal"],
 ): Promise<number> {
   let bytes = 0;
   for await (const piece of typeof text === "string" ? [text] : text) {

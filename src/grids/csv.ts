@@ -86,7 +86,7 @@ export function gridToCsvMetadata(grid: Grid, csvName: string, texts: GridTexts 
 }
 
 /** "pressure [dyn/cm^2]". */
-export function titleOfColumn(name: ColumnName): string {
+function titleOfColumn(name: ColumnName): string {
   return `${name} [${columnOf(name).unit}]`;
 }
 

@@ -19,7 +19,7 @@ const batch = 2048;
  * const made = grid(whiteDwarfMatter(), composition({ He4: 1 }), { density: [1e4, 1e5], temperature: 1e8 });
  * const read = JSON.parse(gridToJson(made));
  * read.shape; // => [1, 2]
- * read.columns.density; // => { unit: "g/cm^3", values: [10000, 100000] }
+ * read.columns.density.values; // => [10000, 100000]
  * ```
  */
 export function gridToJson(grid: Grid, texts: GridTexts = {}): string {

@@ -3,7 +3,7 @@ import { FermistateError, withIndex } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import { DENSITY, fillPlasma, POINT_LENGTH, TEMPERATURE } from "../matter/plasma.js";
 import type { Contribution } from "./contribution.js";
-import { commonDomain, holds, refusePoint } from "./domain.js";
+import { commonDomain, firstOutside, holds, refusePoint } from "./domain.js";
 import type { BatchInput, BatchOutput, EquationOfState, FreeEnergyDerivatives, State } from "./equation-of-state.js";
 import { MEMBER_COUNT, naturalDerivatives, type Order } from "./free-energy.js";
 import { fillQuantities, QUANTITY_COUNT, type QuantityName, quantities, quantityNames } from "./quantities.js";
@@ -68,9 +68,8 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
     const { density, temperature, composition } = input;
     const count = checkColumns(input, output);
     const each = isList(composition) ? composition : undefined;
-    for (let i = 0; i < count; i++) {
-      if (!holds(domain, density[i]!, temperature[i]!)) refusePoint(parts, density[i], temperature[i], i);
-    }
+    const outside = firstOutside(domain, density, temperature);
+    if (outside >= 0) refusePoint(parts, density[outside], temperature[outside], outside);
     const slots: number[] = [];
     const columns: Float64Array[] = [];
     for (let slot = 0; slot < QUANTITY_COUNT; slot++) {

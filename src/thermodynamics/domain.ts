@@ -25,6 +25,20 @@ export function holds(domain: Domain, density: number, temperature: number): boo
   );
 }
 
+/** The first row whose point the domain does not hold, or -1. */
+export function firstOutside(domain: Domain, density: Float64Array, temperature: Float64Array): number {
+  const [lowest, highest] = domain.density;
+  const [coldest, hottest] = domain.temperature;
+  const zero = domain.zeroTemperature;
+  for (let i = 0; i < density.length; i++) {
+    const rho = density[i]!;
+    const t = temperature[i]!;
+    // Written so that NaN is outside.
+    if (!(rho >= lowest && rho <= highest && ((t >= coldest && t <= hottest) || (t === 0 && zero)))) return i;
+  }
+  return -1;
+}
+
 /** Throws the error that says what is wrong with a point outside the domain, and which contribution refuses it. */
 export function refusePoint(
   contributions: readonly Contribution[],

@@ -40,11 +40,6 @@ export const PRESSURE_RTT = 10;
 /** Length of a member array. */
 export const MEMBER_COUNT = 11;
 
-/** Members in use at an order. */
-export function membersOf(order: Order): number {
-  return order === 2 ? 6 : MEMBER_COUNT;
-}
-
 /** Slots of the natural scaled derivatives F_ij in the array of {@link naturalDerivatives}. */
 export const naturalOrder: readonly (readonly [number, number])[] = [
   [0, 0],

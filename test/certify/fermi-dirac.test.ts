@@ -2,8 +2,8 @@
  * Generalised Fermi-Dirac integrals against closed forms and against values computed elsewhere.
  *
  * fermi-dirac-and-pair-gas.json: float128 tanh-sinh quadrature, 30 digits, 30 of its values confirmed by mpmath
- * Gauss-Legendre at 40 digits. All 248 values agree with referenceFermiDirac at 30 digits to 4.2e-30; every sixth row
- * is run here.
+ * Gauss-Legendre at 40 digits. All 248 values agree with referenceFermiDirac at 30 digits to 4.2e-30; eight rows
+ * are run here.
  */
 import { readFileSync } from "node:fs";
 import { Decimal } from "decimal.js";
@@ -18,9 +18,12 @@ const fixture = JSON.parse(
 const D = Decimal.clone({ precision: 60 });
 const orders = { "F_-1/2": -0.5, "F_1/2": 0.5, "F_3/2": 1.5, "F_5/2": 2.5 };
 
-test("every sixth row of 62: eta -1000 to 3e6, beta 0 to 5000", () => {
+test("eight rows of 62: eta -700 to 3e6, beta 0 to 5000", () => {
+  // the last two bring the branch point x = -2/beta close to x = 0, where x^(-1/2) needs finer rules
+  const places = ["-36 0", "-36 1e-2", "0 1e-2", "0.5 100", "35 0", "300 1", "-700 5000", "3e6 1000"];
+  const rows = fixture.F.filter((row) => places.includes(`${row["eta"]} ${row["beta"]}`));
   const measured = new Measured();
-  for (const row of fixture.F.filter((_, index) => index % 6 === 0)) {
+  for (const row of rows) {
     for (const [name, k] of Object.entries(orders)) {
       const { value, relativeError } = referenceFermiDirac(k, row["eta"]!, row["beta"]!, 30);
       const where = `${name}(${row["eta"]}, ${row["beta"]})`;
@@ -28,7 +31,7 @@ test("every sixth row of 62: eta -1000 to 3e6, beta 0 to 5000", () => {
       measured.add("estimate", relativeError, where);
     }
   }
-  expect(measured.count("difference")).toBe(44);
+  expect(measured.count("difference")).toBe(32);
   measured.expectBelow("difference", 5e-30); // the last printed digit
   measured.expectBelow("estimate", 1e-30);
 });

@@ -29,7 +29,7 @@ const columns: Readonly<Record<string, keyof ReferenceElectronGas>> = {
 
 describe.each([
   ["electron-gas-reference.csv", 2450, 9],
-  ["electron-gas-neighbourhood.csv", 300, 4],
+  ["electron-gas-neighbourhood.csv", 300, 3],
 ])("%s", (name, size, draws) => {
   const rows = readRows(name);
   const random = uniform(20);

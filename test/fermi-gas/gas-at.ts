@@ -1,7 +1,7 @@
 /** The electron-positron gas at given net electron density and temperature, per volume in cgs, straight from its members. */
 import { electronDensityUnit, electronRestTemperature } from "../../src/constants.js";
 import { electronPositronGas } from "../../src/fermi-gas/electron-positron-gas.js";
-import { FERMI_MOMENTUM, KINETIC_MU, NET_DENSITY, RECORD_LENGTH, THETA } from "../../src/fermi-gas/record.js";
+import { FERMI_MOMENTUM, KINETIC_MU, NET_DENSITY, THETA } from "../../src/fermi-gas/record.js";
 import { composition } from "../../src/matter/composition.js";
 import {
   DENSITY,
@@ -79,14 +79,7 @@ export function gasAt(n: number, temperature: number, order: Order): Gas {
   };
 }
 
-/** A record of the pair gas ready for solveDensity, in natural units. */
-export function recordAt(n: number, temperature: number): Float64Array {
-  const record = new Float64Array(RECORD_LENGTH);
-  fillRecord(record, n, temperature);
-  return record;
-}
-
-/** The same into a record of the caller's. */
+/** Fills a record of the pair gas for solveDensity, in natural units. */
 export function fillRecord(record: Float64Array, n: number, temperature: number): void {
   const x = Math.cbrt((3 * n) / electronDensityUnit);
   record[NET_DENSITY] = n / electronDensityUnit;
