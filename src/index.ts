@@ -17,6 +17,7 @@ export type { Contribution, Domain } from "./thermodynamics/contribution.js";
 export type {
   BatchInput,
   BatchOutput,
+  ElectronQuantity,
   EquationOfState,
   FreeEnergyDerivatives,
   State,

@@ -15,7 +15,9 @@ import type { Resolution, TwoResolutions } from "./quadrature.js";
 
 /** A value and the difference between two quadrature resolutions, relative to it. */
 export interface ReferenceFermiDirac {
+  /** F_k, dimensionless. */
   readonly value: Decimal;
+  /** Difference of two resolutions over the value. */
   readonly relativeError: number;
 }
 

@@ -1,4 +1,8 @@
-/** Certification: the slow, independent evaluation to any number of digits. */
+/**
+ * Certification: the slow, independent evaluation to any number of digits. Runs in Node and browsers, needs decimal.js.
+ *
+ * @packageDocumentation
+ */
 export { FermistateError, isFermistateError } from "../errors.js";
 export type { ReferenceElectronGasInput } from "./conditions.js";
 export {

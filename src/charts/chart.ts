@@ -5,7 +5,6 @@
  */
 import { line } from "d3-shape";
 import { FermistateError, requireFinite } from "../errors.js";
-import { isIdeal } from "../grids/description.js";
 import type { Grid } from "../grids/grid.js";
 import { nearestWord } from "../grids/nearest.js";
 import type { QuantityName } from "../thermodynamics/quantities.js";
@@ -215,7 +214,7 @@ function kindNote(scale: AxisScale): string {
 
 /** What stands below every chart. */
 function remarks(grid: Grid): string[] {
-  const interactions = isIdeal(grid.contributions)
+  const interactions = grid.ideal
     ? ["Ideal plasma, no Coulomb interactions: the pressure is 1 to 30\u00a0% too high where white dwarfs live."]
     : [];
   const matter = `Nucleon fractions ${grid.composition.name}. Contributions: ${grid.contributions.join(", ")}.`;

@@ -1,7 +1,8 @@
 /** What `fermistate help` says: the program, its commands, and the topics behind them. */
-import { conventions, validity } from "../grids/description.js";
-import { libraryVersion } from "../grids/version.js";
+import { conventions } from "../grids/description.js";
+import { validityOf } from "../grids/validity.js";
 import { quantities, quantityNames } from "../thermodynamics/quantities.js";
+import { libraryVersion } from "../version.js";
 import { whiteDwarfMatter } from "../white-dwarf-matter.js";
 import type { Command } from "./command.js";
 import { table, wrapped, wrappedCommand } from "./print.js";
@@ -99,11 +100,7 @@ export const topics: Readonly<Record<string, () => string>> = {
     return `Quantities: name, unit (1 for a pure number), meaning\n\n${table(rows, "lll")}\n`;
   },
   conventions: () => {
-    const { domain, contributions } = whiteDwarfMatter();
-    const limits = validity(
-      domain,
-      contributions.map((part) => part.name),
-    );
+    const limits = validityOf(whiteDwarfMatter());
     const list = (lines: readonly string[]): string => lines.map((one) => wrapped(one, 78, "  ")).join("\n\n");
     return `Conventions\n\n${list(conventions)}\n\nWhere the numbers hold\n\n${list(limits)}\n`;
   },

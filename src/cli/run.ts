@@ -1,7 +1,7 @@
 /** `fermistate`: finds the command, runs it, turns every error into one line and an exit code. */
 import { type ErrorCode, FermistateError, isFermistateError } from "../errors.js";
 import { nearestWord } from "../grids/nearest.js";
-import { libraryVersion } from "../grids/version.js";
+import { libraryVersion } from "../version.js";
 import type { Command, CommandIo } from "./command.js";
 import { demoCommand } from "./demo-command.js";
 import { gridCommand } from "./grid-command.js";

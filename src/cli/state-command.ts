@@ -1,8 +1,8 @@
 /** `fermistate state`: one state, all its quantities in groups, and what each contribution adds. */
-import { validity } from "../grids/description.js";
-import { libraryVersion } from "../grids/version.js";
+import { validityOf } from "../grids/validity.js";
 import type { EquationOfState, State } from "../thermodynamics/equation-of-state.js";
 import { type QuantityName, quantities, quantityNames } from "../thermodynamics/quantities.js";
+import { libraryVersion } from "../version.js";
 import { type Command, command } from "./command.js";
 import { matterOf, matterOptions } from "./matter.js";
 import { numberText, percentText, shortText, table, wrapped } from "./print.js";
@@ -110,12 +110,10 @@ function stateText(equationOfState: EquationOfState, state: State, shares: reado
     shareTable(shares, state),
     "",
     "Where the numbers hold",
-    ...validity(equationOfState.domain, names(equationOfState)).map((one) => wrapped(one, 78, "  ")),
+    ...validityOf(equationOfState).map((one) => wrapped(one, 78, "  ")),
     "",
   ].join("\n");
 }
-
-const names = (equationOfState: EquationOfState): string[] => equationOfState.contributions.map((part) => part.name);
 
 function rowOf(state: State, name: QuantityName): string[] {
   const { unit } = quantities[name];
@@ -150,7 +148,7 @@ function stateJson(equationOfState: EquationOfState, state: State, shares: reado
     temperature: { value: temperature, unit: "K" },
     quantities: Object.fromEntries(known.map((name) => [name, { value: plain(state[name]!), ...quantities[name] }])),
     contributions: shares,
-    validity: validity(equationOfState.domain, names(equationOfState)),
+    validity: validityOf(equationOfState),
   };
   return `${JSON.stringify(document, null, 2)}\n`;
 }

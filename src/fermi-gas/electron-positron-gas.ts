@@ -55,6 +55,8 @@ export function electronPositronGas(): Contribution {
 
   return Object.freeze({
     name: "electrons and positrons",
+    validity: "Electrons and positrons are an ideal gas, exact to rounding as such; atoms are fully ionised.",
+    ideal: true,
     domain: Object.freeze({ density: [1e-20, 1e18], temperature: [1, 1e13], zeroTemperature: true } as const),
 
     add(point: Float64Array, _composition: Composition, order: Order, members: Float64Array): void {

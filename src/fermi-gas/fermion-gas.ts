@@ -72,6 +72,8 @@ export function fermionGas(options: FermionGasOptions): Contribution {
 
   return Object.freeze({
     name: `fermions ${label}`,
+    validity: `An ideal gas of ${label} without antiparticles: at nuclear density a limit to compare with, no model.`,
+    ideal: true,
     domain: Object.freeze({ density: [1e-20, 1e18], temperature: [1, 1e13], zeroTemperature: true } as const),
 
     add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void {

@@ -8,7 +8,7 @@
  */
 import { FermistateError } from "../errors.js";
 import { joined, pieceLength } from "./chunks.js";
-import { conventions, type GridTexts, orderOfRows, titleOf, validity } from "./description.js";
+import { conventions, type GridTexts, orderOfRows, titleOf } from "./description.js";
 import { type ColumnName, columnOf, type Grid } from "./grid.js";
 import { numbersText } from "./number-text.js";
 
@@ -58,7 +58,7 @@ export function gridToCsvMetadata(grid: Grid, csvName: string, texts: GridTexts 
     "dc:title": titleOf(grid, texts),
     "dc:creator": `fermistate ${grid.libraryVersion}`,
     "dc:description": [...(texts.note === undefined ? [] : [texts.note]), ...conventions, orderOfRows],
-    "rdfs:comment": validity(grid.domain, grid.contributions),
+    "rdfs:comment": grid.validity,
     "schema:additionalProperty": [
       property("equation of state", grid.equationOfState),
       ...grid.contributions.map((name) => property("contribution", name)),

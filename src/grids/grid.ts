@@ -10,9 +10,10 @@ import type { Domain } from "../thermodynamics/contribution.js";
 import { holds, refusePoint } from "../thermodynamics/domain.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { electronQuantities, type QuantityName, quantities, quantityNames } from "../thermodynamics/quantities.js";
+import { libraryVersion } from "../version.js";
 import { type Axis, axisOf } from "./axes.js";
 import { nearestWord } from "./nearest.js";
-import { libraryVersion } from "./version.js";
+import { isIdeal, validityOf } from "./validity.js";
 
 /** Options of {@link grid}. */
 export interface GridOptions {
@@ -71,6 +72,10 @@ export interface Grid {
   readonly contributions: readonly string[];
   /** Where the equation of state answers. */
   readonly domain: Domain;
+  /** Where its numbers hold and what is not in them, in sentences. */
+  readonly validity: readonly string[];
+  /** True where no contribution knows interactions. */
+  readonly ideal: boolean;
   /** Version of this library. */
   readonly libraryVersion: string;
 }
@@ -145,6 +150,8 @@ export function grid(equationOfState: EquationOfState, composition: Composition,
     equationOfState: equationOfState.name,
     contributions: Object.freeze(equationOfState.contributions.map((part) => part.name)),
     domain: equationOfState.domain,
+    validity: Object.freeze(validityOf(equationOfState)),
+    ideal: isIdeal(equationOfState.contributions),
     libraryVersion,
   });
 }

@@ -1,6 +1,6 @@
 /** A grid as JSON that describes itself: what it is, units, order of rows, then the columns. */
 import { joined, pieceLength } from "./chunks.js";
-import { conventions, type GridTexts, orderOfRows, titleOf, validity } from "./description.js";
+import { conventions, type GridTexts, orderOfRows, titleOf } from "./description.js";
 import { columnOf, type Grid } from "./grid.js";
 import { numbersText } from "./number-text.js";
 
@@ -45,7 +45,7 @@ export function* gridToJsonPieces(grid: Grid, texts: GridTexts = {}): Generator<
       }),
     },
     conventions,
-    validity: validity(grid.domain, grid.contributions),
+    validity: grid.validity,
     infinities: 'values beyond all numbers are the strings "INF" and "-INF"',
     rows: orderOfRows,
     order: grid.order,

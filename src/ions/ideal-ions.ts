@@ -41,6 +41,10 @@ export function idealIons(options: IdealIonsOptions = {}): Contribution {
   const { freeNeutrons = true } = options;
   return Object.freeze({
     name: "ideal ions",
+    validity:
+      "Ions are a classical gas of nuclei in their ground state: in cold dense matter, where they would freeze, its " +
+      "entropy turns negative.",
+    ideal: true,
     domain: Object.freeze({ density: [1e-20, 1e18], temperature: [1, 1e13], zeroTemperature: false } as const),
     add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void {
       const temperature = point[TEMPERATURE]!;

@@ -6,7 +6,14 @@ import type { Contribution } from "./contribution.js";
 import { commonDomain, firstOutside, holds, refusePoint } from "./domain.js";
 import type { BatchInput, BatchOutput, EquationOfState, FreeEnergyDerivatives, State } from "./equation-of-state.js";
 import { MEMBER_COUNT, naturalDerivatives, type Order } from "./free-energy.js";
-import { fillQuantities, QUANTITY_COUNT, type QuantityName, quantities, quantityNames } from "./quantities.js";
+import {
+  electronQuantities,
+  fillQuantities,
+  QUANTITY_COUNT,
+  type QuantityName,
+  quantities,
+  quantityNames,
+} from "./quantities.js";
 import { stateFrom } from "./state.js";
 
 /**
@@ -89,7 +96,7 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
       fillQuantities(point, members, cold, record, i);
       for (let j = 0; j < columns.length; j++) {
         const value = record[slots[j]!]!;
-        if (Number.isNaN(value)) refuseQuantity(quantityNames[slots[j]!]!);
+        if (Number.isNaN(value)) refuseQuantity(quantityNames[slots[j]!]!, i);
         columns[j]![i] = value;
       }
     }
@@ -176,10 +183,15 @@ function requireColumn(argument: string, column: unknown): void {
   );
 }
 
-function refuseQuantity(name: QuantityName): never {
-  throw new FermistateError("unavailable-quantity", {
+/** NaN in the record: a quantity that no contribution provides, or a contribution that broke its contract. */
+function refuseQuantity(name: QuantityName, index: number): never {
+  const unknown = electronQuantities.includes(name);
+  throw new FermistateError(unknown ? "unavailable-quantity" : "no-convergence", {
     argument: "output",
     given: name,
-    allowed: "quantities that a contribution provides (the electron gas for this one)",
+    allowed: unknown
+      ? "quantities that a contribution provides (the electron gas for this one)"
+      : "a number: a contribution has added NaN",
+    index,
   });
 }

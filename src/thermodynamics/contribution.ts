@@ -23,6 +23,10 @@ export interface Contribution {
   readonly name: string;
   /** Where it answers. */
   readonly domain: Domain;
+  /** Where its physics holds and what is not in it, in a sentence or two: goes into every file and `state` output. */
+  readonly validity?: string;
+  /** True where it treats particles without interactions; a sum of such terms is called an ideal plasma. */
+  readonly ideal?: boolean;
 
   /**
    * Adds its members to `members`, in erg/g.

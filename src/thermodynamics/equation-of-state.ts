@@ -11,7 +11,7 @@ import type { Order } from "./free-energy.js";
 import type { QuantityName } from "./quantities.js";
 
 /** Quantities that are undefined unless a contribution (the electron gas) provides them. */
-type ElectronQuantity = "electronChemicalPotential" | "electronDegeneracy" | "positronDensity";
+export type ElectronQuantity = "electronChemicalPotential" | "electronDegeneracy" | "positronDensity";
 
 /**
  * The thermodynamic state at one point; immutable. Every field but the first three is a quantity of

@@ -40,7 +40,7 @@ export const PRESSURE_RTT = 10;
 /** Length of a member array. */
 export const MEMBER_COUNT = 11;
 
-/** Slots of the natural scaled derivatives F_ij in the array of {@link naturalDerivatives}. */
+/** Orders (i, j) of the natural scaled derivatives F_ij, in the order of their arrays. */
 export const naturalOrder: readonly (readonly [number, number])[] = [
   [0, 0],
   [1, 0],

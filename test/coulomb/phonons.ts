@@ -6,18 +6,19 @@
  *     D(k) = sum_G (k+G)(k+G)/|k+G|^2 e^(-|k+G|^2/4 kappa^2) - sum_{G != 0} GG/G^2 e^(-G^2/4 kappa^2)
  *            + (1/3) sum_{R != 0} (1 - cos k.R) grad grad [erfc(kappa R)/R],
  *
- * eigenvalues (omega/omega_p)^2, sum 1 at every k (Kohn's rule). Source: Clark 1958, Phys. Rev. 109, 1133; Cohen & Keffer 1955,
- * Phys. Rev. 99, 1128 (both from memory); the trace follows from Poisson's summation.
+ * eigenvalues (omega/omega_p)^2, sum 1 at every k (Kohn's rule). Source: Clark 1958, Phys. Rev. 109, 1133; Cohen &
+ * Keffer 1955, Phys. Rev. 99, 1128 (both from memory); the trace follows from Poisson's summation.
  *
- * Averages over the Brillouin zone: the irreducible wedge in tetrahedra with one corner at the zone centre, k = s x (point of
- * the zone's face). Along a ray the sums over the three modes are analytic in s, so Gauss rules converge exponentially; the
- * face carries a Gauss rule collapsed into one corner. Panels of s halve towards the centre. Two modes vanish like s there:
- * s^2/omega and s^2/omega^2 are still analytic; a sum with ln omega in it is 2 ln s plus an analytic function, and what the
- * rule misses of the mean of 2 ln s (-2/3) is one number for all such sums. So these averages converge like the others.
+ * Averages over the Brillouin zone: the irreducible wedge in tetrahedra with one corner at the zone centre, k = s x
+ * (point of the zone's face). Along a ray the sums over the three modes are analytic in s, so Gauss rules converge
+ * exponentially; the face carries a Gauss rule collapsed into one corner. Panels of s halve towards the centre. Two
+ * modes vanish like s there: s^2/omega and s^2/omega^2 are still analytic; a sum with ln omega in it is 2 ln s plus an
+ * analytic function, and what the rule misses of the mean of 2 ln s (-2/3) is one number for all such sums. So these
+ * averages converge like the others.
  *
  * Accuracy with the default grid, relative, measured: <omega^p>, p > 0, 2e-13; <ln omega> 4e-13; <1/omega> 6e-13;
- * <1/omega^2> 5e-11; thermal functions 3e-12 for theta <= 10, 2e-10 up to theta = 300, 6e-8 at 1000 (9 panels: 4e-9; beyond,
- * the rounding of omega^2, 1e-16 absolute, takes over). A spectrum takes 0.2 to 0.9 s.
+ * <1/omega^2> 5e-11; thermal functions 3e-12 for theta <= 10, 2e-10 up to theta = 300, 6e-8 at 1000 (9 panels: 4e-9;
+ * beyond, the rounding of omega^2, 1e-16 absolute, takes over). A spectrum takes 0.2 to 0.9 s.
  */
 import { complementaryError } from "./error-function.js";
 import { gaussLegendre, type Rule } from "./gauss-legendre.js";
@@ -39,7 +40,7 @@ export type Crystal = "bcc" | "fcc";
 export interface Spectrum {
   readonly frequencies: Float64Array;
   readonly weights: Float64Array;
-  /** Exact mean of 2 ln s less that by these weights: add it to the mode sum of any function that goes like ln omega. */
+  /** Exact mean of 2 ln s less that by these weights: add it to the mode sum of what goes like ln omega. */
   readonly logDefect: number;
   /** The largest |omega_1^2 + omega_2^2 + omega_3^2 - 1| met. */
   readonly traceError: number;
@@ -217,8 +218,8 @@ function dynamicalMatrix(lattice: Lattice, splitting: number): (x: number, y: nu
 }
 
 /**
- * Neighbours, one of each pair R and -R (both give the same), and (4/3) grad grad [erfc(kappa R)/R] of each: 1/3 by the units,
- * 2 for the pair, 2 because 1 - cos k.R = 2 sin^2(k.R/2).
+ * Neighbours, one of each pair R and -R (both give the same), and (4/3) grad grad [erfc(kappa R)/R] of each: 1/3 by the
+ * units, 2 for the pair, 2 because 1 - cos k.R = 2 sin^2(k.R/2).
  */
 function realSpace(
   { primitive }: Lattice,

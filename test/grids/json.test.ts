@@ -4,7 +4,7 @@ import { type Grid, grid, gridToJson, gridToJsonPieces, logarithmicAxis } from "
 import { expect, test } from "vitest";
 import about from "../../package.json" with { type: "json" };
 import { joined } from "../../src/grids/chunks.js";
-import { libraryVersion } from "../../src/grids/version.js";
+import { libraryVersion } from "../../src/version.js";
 
 const core = composition({ C12: 0.5, O16: 0.48, Ne22: 0.02 });
 const hot = grid(whiteDwarfMatter(), core, {

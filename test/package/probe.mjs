@@ -43,8 +43,12 @@ export function probe(fermistate) {
     const matter = fermistate.composition(fractions);
     for (let logT = 2; logT <= 13; logT += 1) {
       for (let logRho = -14; logRho <= 14; logRho += 2) {
-        // (de/drho) is P - T dP/dT, which vanishes for an ideal gas: left out, its two terms are in.
-        const { composition, energyByDensity, ...state } = eos.state(10 ** logRho, 10 ** logT, matter);
+        // Differences that cross zero are left out, their terms are in: e - T s, and P - T dP/dT of an ideal gas.
+        const { composition, specificFreeEnergy, energyByDensity, ...state } = eos.state(
+          10 ** logRho,
+          10 ** logT,
+          matter,
+        );
         states.push({ name: composition.name, conditioning: conditioningOf(state), ...state });
       }
     }
