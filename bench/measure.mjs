@@ -1,8 +1,8 @@
 /**
  * One process of the benchmark: times one region with one method on the built library, prints JSON.
  *
- * node bench/measure.mjs <region number> <method> [<module>]. Times are medians of repeated batches, in nanoseconds per
- * point; "exp" is the time of one Math.exp in the same process, the unit that makes machines comparable.
+ * node bench/measure.mjs <region number> <method> [<module>]: median time of repeated batches in nanoseconds per point, and
+ * its ratio to one Math.exp (the unit that makes machines comparable) and to the other module's, in the same process.
  */
 import { combine, composition, electronPositronGas, quantityNames, whiteDwarfMatter } from "../dist/index.js";
 import { count, pointsOf, regions } from "./regions.mjs";
@@ -61,7 +61,8 @@ function methodFor(name) {
   throw new Error(`unknown method ${name}`);
 }
 
-const run = baseline === undefined ? methodFor(method) : (await import(baseline)).prepare(points, matter);
+const run = methodFor(method);
+const other = baseline === undefined ? undefined : (await import(baseline)).prepare(points, matter);
 
 function exponentials() {
   let sum = 0;
@@ -78,8 +79,18 @@ const time = (task) => {
 const median = (values) => values.sort((a, b) => a - b)[values.length >> 1];
 const times = [];
 const units = [];
+const others = [];
+// Taken in turns, so that a slow moment of a shared machine strikes all alike.
 for (let i = 0; i < 41; i++) {
   times.push(time(run));
   units.push(time(exponentials));
+  if (other !== undefined) others.push(time(other));
 }
-process.stdout.write(JSON.stringify({ time: median(times), exp: median(units) }));
+const ratio = (list) => median(times.map((one, i) => one / list[i]));
+process.stdout.write(
+  JSON.stringify({
+    time: median([...times]),
+    exponentials: ratio(units),
+    ...(other === undefined ? {} : { baseline: ratio(others) }),
+  }),
+);

@@ -26,12 +26,14 @@ const median = (list: number[]): number => list.sort((a, b) => a - b)[list.lengt
 
 interface Timing {
   readonly time: number;
-  readonly exp: number;
+  readonly exponentials: number;
+  readonly baseline?: number;
 }
 
-function timingsOf(region: number, method: string, baseline?: string): Timing[] {
+function timingsOf(region: number, method: string): Timing[] {
   return Array.from({ length: processes }, () => {
-    const args = [`${here}measure.mjs`, String(region), method, ...(baseline === undefined ? [] : [baseline])];
+    const other = values.baseline === undefined ? [] : [values.baseline];
+    const args = [`${here}measure.mjs`, String(region), method, ...other];
     return JSON.parse(execFileSync(process.execPath, args, { encoding: "utf8" })) as Timing;
   });
 }
@@ -63,7 +65,8 @@ function accuracyOf(region: { temperature: number[]; density: number[] }): strin
 
 const load = Array.from({ length: processes }, () => {
   const program =
-    'const t=performance.now(); await import("./dist/index.js"); process.stdout.write(String(performance.now()-t))';
+    'await import("./bench/regions.mjs"); const t=performance.now(); await import("./dist/index.js"); ' +
+    "process.stdout.write(String(performance.now()-t))"; // Node's own loader is warm by then
   return Number(
     execFileSync(process.execPath, ["--input-type=module", "-e", program], { cwd: `${here}..`, encoding: "utf8" }),
   );
@@ -77,14 +80,12 @@ for (const [number, region] of regions.entries()) {
     `${region.name}: T 1e${region.temperature.join("..1e")} K, rho Y_e 1e${region.density.join("..1e")} g/cm^3`,
   );
   console.log(`  measured error of the electron gas: ${accuracyOf(region)}`);
-  const base = values.baseline === undefined ? undefined : timingsOf(number, "baseline", values.baseline);
-  const all = base === undefined ? [] : [["baseline", base] as const];
-  for (const method of rows) all.push([method, timingsOf(number, method)] as never);
-  for (const [method, timings] of all) {
+  for (const method of rows) {
+    const timings = timingsOf(number, method);
     const time = median(timings.map((timing) => timing.time));
-    const ratio = median(timings.map((timing) => timing.time / timing.exp));
-    const beside =
-      base === undefined ? "" : `, ${(time / median(base.map((timing) => timing.time))).toFixed(2)} x baseline`;
+    const ratio = median(timings.map((timing) => timing.exponentials));
+    const other = median(timings.map((timing) => timing.baseline ?? Number.NaN));
+    const beside = values.baseline === undefined ? "" : `, ${other.toFixed(2)} x baseline`;
     console.log(
       `  ${method.padEnd(12)} ${time.toFixed(0).padStart(6)} ns  ${ratio.toFixed(0).padStart(4)} x Math.exp${beside}`,
     );

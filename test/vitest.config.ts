@@ -15,7 +15,7 @@ export default defineConfig({
       exclude: ["src/cli/main.ts"],
       reporter: ["text-summary", "json"],
       reportsDirectory: ".cache/coverage",
-      thresholds: { statements: 60, branches: 60, functions: 60, lines: 60 },
+      thresholds: { statements: 96, branches: 92, functions: 95, lines: 97 },
     },
     projects: [
       {

@@ -31,33 +31,32 @@ export const TEMPERATURE = 1;
 export const ELECTRON_DENSITY = 2;
 /** x_r. */
 export const RELATIVITY = 3;
-/** r_s; Infinity without electrons. */
-export const DENSITY_PARAMETER = 4;
 /** Gamma_e; Infinity at T = 0. */
-export const ELECTRON_COUPLING = 5;
+export const ELECTRON_COUPLING = 4;
 /** Gamma; Infinity at T = 0. */
-export const ION_COUPLING = 6;
+export const ION_COUPLING = 5;
 /** e_F/(m_e c^2) = sqrt(1 + x_r^2) - 1 = k T_F/(m_e c^2). */
-export const FERMI_ENERGY = 7;
-/** T_p, K. */
-export const PLASMA_TEMPERATURE = 8;
+export const FERMI_ENERGY = 6;
+/** T_p^2, K^2. */
+export const PLASMA_TEMPERATURE_SQUARED = 7;
 
 // Written by contributions.
 
 /** mu_- - m_e c^2, erg; NaN where no contribution knows it. */
-export const ELECTRON_CHEMICAL_POTENTIAL = 9;
+export const ELECTRON_CHEMICAL_POTENTIAL = 8;
 /** (mu_- - m_e c^2)/kT; Infinity at T = 0. */
-export const ELECTRON_DEGENERACY = 10;
+export const ELECTRON_DEGENERACY = 9;
 /** n_+, cm^-3; only on request, see Contribution.addDetail. */
-export const POSITRON_DENSITY = 11;
+export const POSITRON_DENSITY = 10;
 /** a T^4/3, dyn/cm^2; 0 without radiation. */
-export const RADIATION_PRESSURE = 12;
+export const RADIATION_PRESSURE = 11;
 
 /** Length of the record. */
 export const POINT_LENGTH = 16;
 
 const relativityFactor = 3 / electronDensityUnit;
-const radiusFactor = Math.cbrt((9 * Math.PI) / 4) * fineStructureConstant;
+/** r_s x_r = (9 pi/4)^(1/3) alpha: the density parameter is this over x_r. */
+export const radiusFactor: number = Math.cbrt((9 * Math.PI) / 4) * fineStructureConstant;
 const couplingFactor = elementaryChargeSquared / (bohrRadius * boltzmannConstant * radiusFactor);
 const plasmaFactor = (reducedPlanckConstant / boltzmannConstant) ** 2 * 4 * Math.PI * elementaryChargeSquared;
 
@@ -72,11 +71,10 @@ export function fillPlasma(point: Float64Array, composition: Composition): void 
   const ions = density * composition.ionsPerGram;
   point[ELECTRON_DENSITY] = electrons;
   point[RELATIVITY] = x;
-  point[DENSITY_PARAMETER] = radiusFactor / x;
   point[ELECTRON_COUPLING] = coupling;
   point[ION_COUPLING] = coupling * composition.chargeMoments.fiveThirds;
   point[FERMI_ENERGY] = (x * x) / (1 + Math.sqrt(1 + x * x));
-  point[PLASMA_TEMPERATURE] = Math.sqrt(plasmaFactor * ions * composition.plasmaFrequencySum);
+  point[PLASMA_TEMPERATURE_SQUARED] = plasmaFactor * ions * composition.plasmaFrequencySum;
   point[ELECTRON_CHEMICAL_POTENTIAL] = Number.NaN;
   point[ELECTRON_DEGENERACY] = Number.NaN;
   point[POSITRON_DENSITY] = Number.NaN;

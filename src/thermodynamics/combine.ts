@@ -5,16 +5,18 @@ import { DENSITY, fillPlasma, POINT_LENGTH, TEMPERATURE } from "../matter/plasma
 import type { Contribution } from "./contribution.js";
 import { commonDomain, firstOutside, holds, refusePoint } from "./domain.js";
 import type { BatchInput, BatchOutput, EquationOfState, FreeEnergyDerivatives, State } from "./equation-of-state.js";
-import { MEMBER_COUNT, naturalDerivatives, type Order } from "./free-energy.js";
+import { MEMBER_COUNT, naturalDerivatives, type Order, SECOND_ORDER_COUNT } from "./free-energy.js";
 import {
   electronQuantities,
+  FIRST_PLASMA_QUANTITY,
+  fillPlasmaQuantities,
   fillQuantities,
   QUANTITY_COUNT,
   type QuantityName,
   quantities,
   quantityNames,
 } from "./quantities.js";
-import { stateFrom } from "./state.js";
+import { freeEnergyFrom, stateFrom } from "./state.js";
 
 /**
  * An equation of state from contributions: leaving one out switches its physics off.
@@ -36,11 +38,13 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
   const members = new Float64Array(MEMBER_COUNT);
   const cold = new Float64Array(3);
   const record = new Float64Array(QUANTITY_COUNT);
+  const natural = new Float64Array(MEMBER_COUNT);
 
   /** Members of the sum at the point's density and temperature. */
   function sum(composition: Composition, order: Order): void {
     fillPlasma(point, composition);
-    for (let i = 0; i < MEMBER_COUNT; i++) members[i] = 0;
+    const count = order === 2 ? SECOND_ORDER_COUNT : MEMBER_COUNT;
+    for (let i = 0; i < count; i++) members[i] = 0;
     for (let i = 0; i < parts.length; i++) parts[i]!.add(point, composition, order, members);
   }
 
@@ -68,6 +72,7 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
     for (const part of parts) part.addDetail?.(point, composition);
     if (temperature === 0) fillCold(composition);
     fillQuantities(point, members, cold, record, -1);
+    fillPlasmaQuantities(point, record);
     return stateFrom(density, temperature, composition, record);
   }
 
@@ -85,6 +90,7 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
       slots.push(slot);
       columns.push(column);
     }
+    const plasma = slots.some((slot) => slot >= FIRST_PLASMA_QUANTITY);
     const detailed = output.positronDensity === undefined ? [] : parts.filter((part) => part.addDetail);
     for (let i = 0; i < count; i++) {
       const matter = each === undefined ? (composition as Composition) : each[i]!;
@@ -94,6 +100,7 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
       for (let j = 0; j < detailed.length; j++) detailed[j]!.addDetail!(point, matter);
       if (point[TEMPERATURE] === 0) fillCold(matter);
       fillQuantities(point, members, cold, record, i);
+      if (plasma) fillPlasmaQuantities(point, record);
       for (let j = 0; j < columns.length; j++) {
         const value = record[slots[j]!]!;
         if (Number.isNaN(value)) refuseQuantity(quantityNames[slots[j]!]!, i);
@@ -110,11 +117,8 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
   ): FreeEnergyDerivatives {
     enter(density, temperature, composition);
     sum(composition, order);
-    const f = naturalDerivatives(members, order, new Float64Array(MEMBER_COUNT));
-    const [value, fR, fT, fRR, fRT, fTT] = f as unknown as [number, number, number, number, number, number];
-    const second = { f: value, fR, fT, fRR, fRT, fTT };
-    if (order === 2) return Object.freeze(second);
-    return Object.freeze({ ...second, fRRR: f[6]!, fRRT: f[7]!, fRTT: f[8]!, fTTT: f[9]!, fRRTT: f[10]! });
+    naturalDerivatives(members, order, natural);
+    return freeEnergyFrom(natural, order);
   }
 
   const name = parts.map((part) => part.name).join(" + ");

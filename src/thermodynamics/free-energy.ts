@@ -37,6 +37,8 @@ export const PRESSURE_RT = 8;
 export const PRESSURE_TT = 9;
 export const PRESSURE_RTT = 10;
 
+/** Members in use at order 2: the first ones. */
+export const SECOND_ORDER_COUNT = 6;
 /** Length of a member array. */
 export const MEMBER_COUNT = 11;
 

@@ -9,17 +9,17 @@ import { electronRestTemperature, speedOfLight } from "../constants.js";
 import { FermistateError, withIndex } from "../errors.js";
 import {
   DENSITY,
-  DENSITY_PARAMETER,
   ELECTRON_CHEMICAL_POTENTIAL,
   ELECTRON_COUPLING,
   ELECTRON_DEGENERACY,
   ELECTRON_DENSITY,
   FERMI_ENERGY,
   ION_COUPLING,
-  PLASMA_TEMPERATURE,
+  PLASMA_TEMPERATURE_SQUARED,
   POSITRON_DENSITY,
   RADIATION_PRESSURE,
   RELATIVITY,
+  radiusFactor,
   TEMPERATURE,
 } from "../matter/plasma.js";
 import { ENERGY, ENTROPY, HEAT, PRESSURE, PRESSURE_R, PRESSURE_T } from "./free-energy.js";
@@ -122,7 +122,7 @@ export const electronQuantities: readonly QuantityName[] = [
 const PER_LIGHT_SPEED_SQUARED = 1 / (speedOfLight * speedOfLight);
 
 /**
- * Fills `out` (order of {@link quantities}) from the summed members.
+ * Fills the first part of `out` (order of {@link quantities}) from the summed members.
  * `cold[0]`, `cold[1]`: limits of c_v/T and (dP/dT)/(rho T) at T = 0; `cold[2]`: residual entropy. Read only at T = 0.
  * Throws `outside-domain` where the sum exerts no pressure or is unstable against compression.
  */
@@ -175,17 +175,25 @@ export function fillQuantities(
   out[18] = heatCapacity;
   out[19] = -thermal * perDensity * perTemperature;
   out[20] = atZero ? cold[0]! : heatCapacity * perTemperature;
+}
+
+/** First slot of the quantities that do not come from the free energy but from the record of the point. */
+export const FIRST_PLASMA_QUANTITY = 21;
+
+/** Fills the rest of `out`: what the record of the point holds; after {@link fillQuantities}. */
+export function fillPlasmaQuantities(point: Float64Array, out: Float64Array): void {
+  const x = point[RELATIVITY]!;
   out[21] = point[ELECTRON_DENSITY]!;
   out[22] = point[ELECTRON_CHEMICAL_POTENTIAL]!;
   out[23] = point[ELECTRON_DEGENERACY]!;
   out[24] = point[POSITRON_DENSITY]!;
-  out[25] = point[RADIATION_PRESSURE]! * perPressure * perDensity;
-  out[26] = point[RELATIVITY]!;
-  out[27] = point[DENSITY_PARAMETER]!;
+  out[25] = point[RADIATION_PRESSURE]! / out[0]!;
+  out[26] = x;
+  out[27] = radiusFactor / x;
   out[28] = point[ELECTRON_COUPLING]!;
   out[29] = point[ION_COUPLING]!;
   out[30] = point[FERMI_ENERGY]! * electronRestTemperature;
-  out[31] = point[PLASMA_TEMPERATURE]!;
+  out[31] = Math.sqrt(point[PLASMA_TEMPERATURE_SQUARED]!);
 }
 
 function refuseSum(specificPressure: number, index: number): never {

@@ -1,6 +1,7 @@
-/** The state object from its record: a literal with a fixed shape, an order of magnitude faster than a loop over names. */
+/** Objects from records: literals with a fixed shape, an order of magnitude faster than a loop over names. */
 import type { Composition } from "../matter/composition.js";
-import type { State } from "./equation-of-state.js";
+import type { FreeEnergyDerivatives, State } from "./equation-of-state.js";
+import type { Order } from "./free-energy.js";
 
 /** An immutable state; `r` holds the quantities in the order of quantities.ts (a test holds the two together). */
 export function stateFrom(density: number, temperature: number, composition: Composition, r: Float64Array): State {
@@ -40,6 +41,26 @@ export function stateFrom(density: number, temperature: number, composition: Com
     ionCoupling: r[29]!,
     fermiTemperature: r[30]!,
     ionPlasmaTemperature: r[31]!,
+  });
+}
+
+/** The natural derivatives as an object; `f` in the order of free-energy.ts. */
+export function freeEnergyFrom(f: Float64Array, order: Order): FreeEnergyDerivatives {
+  if (order === 2) {
+    return Object.freeze({ f: f[0]!, fR: f[1]!, fT: f[2]!, fRR: f[3]!, fRT: f[4]!, fTT: f[5]! });
+  }
+  return Object.freeze({
+    f: f[0]!,
+    fR: f[1]!,
+    fT: f[2]!,
+    fRR: f[3]!,
+    fRT: f[4]!,
+    fTT: f[5]!,
+    fRRR: f[6]!,
+    fRRT: f[7]!,
+    fRTT: f[8]!,
+    fTTT: f[9]!,
+    fRRTT: f[10]!,
   });
 }
 
