@@ -5,6 +5,16 @@
  * @packageDocumentation
  */
 export * from "./constants.js";
+export { type ColdCorrectionsOptions, coldCorrections } from "./coulomb/cold-corrections.js";
+export {
+  type CoulombPlasma,
+  type CoulombPlasmaOptions,
+  coulombPlasma,
+  type QuantumForm,
+} from "./coulomb/coulomb-plasma.js";
+export type { LatticeName } from "./coulomb/lattice.js";
+export { meltingDensity, meltingTemperature, type Phase } from "./coulomb/phase.js";
+export { type Transition, transition, withPhase } from "./coulomb/transition.js";
 export { type ErrorCode, type ErrorDetails, FermistateError, isFermistateError } from "./errors.js";
 export { electronPositronGas } from "./fermi-gas/electron-positron-gas.js";
 export { type FermionGasOptions, fermionGas } from "./fermi-gas/fermion-gas.js";
@@ -12,14 +22,15 @@ export { type IdealIonsOptions, idealIons } from "./ions/ideal-ions.js";
 export * from "./matter/composition.js";
 export { type Nuclide, nuclide, nuclides } from "./matter/nuclides.js";
 export { radiation } from "./radiation.js";
+export { type Breakdown, breakdown, type Share } from "./thermodynamics/breakdown.js";
 export { combine } from "./thermodynamics/combine.js";
 export type { Contribution, Domain } from "./thermodynamics/contribution.js";
 export type {
   BatchInput,
   BatchOutput,
-  ElectronQuantity,
   EquationOfState,
   FreeEnergyDerivatives,
+  OptionalQuantity,
   State,
 } from "./thermodynamics/equation-of-state.js";
 export { addNaturalDerivatives, naturalOrder, type Order } from "./thermodynamics/free-energy.js";

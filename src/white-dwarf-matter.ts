@@ -1,6 +1,7 @@
 /**
  * The newcomer's equation of state: everything this library knows about the matter of a white dwarf, in one call.
  */
+import { type CoulombPlasmaOptions, coulombPlasma } from "./coulomb/coulomb-plasma.js";
 import { electronPositronGas } from "./fermi-gas/electron-positron-gas.js";
 import { idealIons } from "./ions/ideal-ions.js";
 import { radiation } from "./radiation.js";
@@ -9,6 +10,12 @@ import type { EquationOfState } from "./thermodynamics/equation-of-state.js";
 
 /** Switches of {@link whiteDwarfMatter}: each is one contribution. */
 export interface WhiteDwarfMatterOptions {
+  /**
+   * Coulomb interactions: liquid and crystal, polarisation, exchange and correlation, in place of the ideal ions. An
+   * object chooses among its terms.
+   * @defaultValue false
+   */
+  readonly coulomb?: boolean | CoulombPlasmaOptions;
   /**
    * Ideal gas of nuclei. Without it T = 0 is legal.
    * @defaultValue true
@@ -38,7 +45,9 @@ export interface WhiteDwarfMatterOptions {
  */
 export function whiteDwarfMatter(options: WhiteDwarfMatterOptions = {}): EquationOfState {
   const parts = [electronPositronGas()];
-  if (options.ions ?? true) parts.push(idealIons());
+  const coulomb = options.coulomb ?? false;
+  if (options.ions ?? true)
+    parts.push(coulomb === false ? idealIons() : coulombPlasma(coulomb === true ? {} : coulomb));
   if (options.radiation ?? true) parts.push(radiation());
   return combine(...parts);
 }

@@ -9,7 +9,7 @@ import { type Composition, requireComposition } from "../matter/composition.js";
 import type { Domain } from "../thermodynamics/contribution.js";
 import { holds, refusePoint } from "../thermodynamics/domain.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
-import { electronQuantities, type QuantityName, quantities, quantityNames } from "../thermodynamics/quantities.js";
+import { optionalQuantities, type QuantityName, quantities, quantityNames } from "../thermodynamics/quantities.js";
 import { libraryVersion } from "../version.js";
 import { type Axis, axisOf } from "./axes.js";
 import { nearestWord } from "./nearest.js";
@@ -295,7 +295,7 @@ function checkAvailable(
   byName: boolean,
 ): ColumnName[] {
   const probe = equationOfState.state(density.values[0]!, temperature.values[0]!, composition);
-  const missing = names.filter((name) => electronQuantities.includes(name) && probe[name] === undefined);
+  const missing = names.filter((name) => optionalQuantities.includes(name) && probe[name] === undefined);
   const [first] = missing;
   if (byName && first !== undefined) {
     const allowed = "quantities that a contribution provides; this one needs the electron gas";

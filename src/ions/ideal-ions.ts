@@ -10,6 +10,7 @@
  */
 import { atomicMassConstant, boltzmannConstant, reducedPlanckConstant } from "../constants.js";
 import type { Composition } from "../matter/composition.js";
+import { nuclide } from "../matter/nuclides.js";
 import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
 import type { Contribution } from "../thermodynamics/contribution.js";
 import {
@@ -31,14 +32,19 @@ export interface IdealIonsOptions {
    * @defaultValue true; choose false where another contribution describes the neutrons
    */
   readonly freeNeutrons?: boolean;
+  /** Free neutrons alone: beside a crystal, which has no ideal gas of nuclei. */
+  readonly only?: "free neutrons";
 }
 
+/** ln[(m_u/m_n)^(3/2)/2]: mass and spin of free neutrons. */
+const neutronConstant = (): number => 1.5 * Math.log(atomicMassConstant / nuclide("n").nuclearMass) - Math.LN2;
 /** (2 pi hbar^2/(m_u k))^(3/2): the volume lambda^3 of one atomic mass unit at 1 K, cm^3 K^(3/2). */
 const thermalVolume = ((2 * Math.PI * reducedPlanckConstant ** 2) / (atomicMassConstant * boltzmannConstant)) ** 1.5;
 
 /** The ideal gas of nuclei as a contribution. T = 0 is refused: a classical gas has no entropy there to speak of. */
 export function idealIons(options: IdealIonsOptions = {}): Contribution {
-  const { freeNeutrons = true } = options;
+  const { freeNeutrons = true, only } = options;
+  const ofNeutrons = only === undefined ? 0 : neutronConstant();
   return Object.freeze({
     name: "ideal ions",
     validity:
@@ -48,9 +54,13 @@ export function idealIons(options: IdealIonsOptions = {}): Contribution {
     domain: Object.freeze({ density: [1e-20, 1e18], temperature: [1, 1e13], zeroTemperature: false } as const),
     add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void {
       const temperature = point[TEMPERATURE]!;
-      const perGram = freeNeutrons ? composition.ionsPerGram : composition.chargedIonsPerGram;
-      if (perGram === 0) return; // only neutrons, and they are left out
-      const constant = freeNeutrons ? composition.ionEntropyConstant : composition.chargedIonEntropyConstant;
+      let perGram = freeNeutrons ? composition.ionsPerGram : composition.chargedIonsPerGram;
+      let constant = freeNeutrons ? composition.ionEntropyConstant : composition.chargedIonEntropyConstant;
+      if (only !== undefined) {
+        perGram = composition.ionsPerGram - composition.chargedIonsPerGram;
+        constant = ofNeutrons;
+      }
+      if (perGram === 0) return;
       const energy = perGram * boltzmannConstant * temperature; // N kT, erg/g
       const volume = thermalVolume / (temperature * Math.sqrt(temperature));
       const occupation = Math.log(perGram * point[DENSITY]! * volume);

@@ -51,6 +51,9 @@ export const POSITRON_DENSITY = 10;
 /** a T^4/3, dyn/cm^2; 0 without radiation. */
 export const RADIATION_PRESSURE = 11;
 
+/** 1 where the ions are a crystal, 0 where they are a liquid or gas. */
+export const CRYSTAL_FRACTION = 12;
+
 /** Length of the record. */
 export const POINT_LENGTH = 16;
 
@@ -79,4 +82,5 @@ export function fillPlasma(point: Float64Array, composition: Composition): void 
   point[ELECTRON_DEGENERACY] = Number.NaN;
   point[POSITRON_DENSITY] = Number.NaN;
   point[RADIATION_PRESSURE] = 0;
+  point[CRYSTAL_FRACTION] = 0;
 }

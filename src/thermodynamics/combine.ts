@@ -7,10 +7,10 @@ import { commonDomain, firstOutside, holds, refusePoint } from "./domain.js";
 import type { BatchInput, BatchOutput, EquationOfState, FreeEnergyDerivatives, State } from "./equation-of-state.js";
 import { MEMBER_COUNT, naturalDerivatives, type Order, SECOND_ORDER_COUNT } from "./free-energy.js";
 import {
-  electronQuantities,
   FIRST_PLASMA_QUANTITY,
   fillPlasmaQuantities,
   fillQuantities,
+  optionalQuantities,
   QUANTITY_COUNT,
   type QuantityName,
   quantities,
@@ -144,6 +144,16 @@ function checkContributions(contributions: readonly Contribution[]): void {
     }
     names.add(part.name);
   }
+  for (const { name, excludes = [] } of contributions) {
+    const stranger = excludes.find((one) => names.has(one));
+    if (stranger === undefined) continue;
+    const given = `${stranger} beside ${name}`;
+    throw new FermistateError("invalid-option", {
+      argument: "contributions",
+      given,
+      allowed: `${name} without ${stranger}`,
+    });
+  }
 }
 
 /** Checks every column of a batch and every composition; returns the number of rows. */
@@ -189,7 +199,7 @@ function requireColumn(argument: string, column: unknown): void {
 
 /** NaN in the record: a quantity that no contribution provides, or a contribution that broke its contract. */
 function refuseQuantity(name: QuantityName, index: number): never {
-  const unknown = electronQuantities.includes(name);
+  const unknown = optionalQuantities.includes(name);
   throw new FermistateError(unknown ? "unavailable-quantity" : "no-convergence", {
     argument: "output",
     given: name,

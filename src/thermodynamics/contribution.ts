@@ -28,6 +28,11 @@ export interface Contribution {
   /** True where it treats particles without interactions; a sum of such terms is called an ideal plasma. */
   readonly ideal?: boolean;
 
+  /** Names of contributions that it contains or that may not stand beside it; `combine` refuses such a sum. */
+  readonly excludes?: readonly string[];
+  /** Its terms one by one, where it is a sum itself: for a breakdown. */
+  readonly parts?: readonly Contribution[];
+
   /**
    * Adds its members to `members`, in erg/g.
    *

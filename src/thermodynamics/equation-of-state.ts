@@ -11,7 +11,11 @@ import type { Order } from "./free-energy.js";
 import type { QuantityName } from "./quantities.js";
 
 /** Quantities that are undefined unless a contribution (the electron gas) provides them. */
-export type ElectronQuantity = "electronChemicalPotential" | "electronDegeneracy" | "positronDensity";
+export type OptionalQuantity =
+  | "electronChemicalPotential"
+  | "electronDegeneracy"
+  | "positronDensity"
+  | "crystalFraction";
 
 /**
  * The thermodynamic state at one point; immutable. Every field but the first three is a quantity of
@@ -24,8 +28,8 @@ export type State = {
   readonly temperature: number;
   /** Composition, as given. */
   readonly composition: Composition;
-} & { readonly [Name in Exclude<QuantityName, ElectronQuantity>]: number } & {
-  readonly [Name in ElectronQuantity]: number | undefined;
+} & { readonly [Name in Exclude<QuantityName, OptionalQuantity>]: number } & {
+  readonly [Name in OptionalQuantity]: number | undefined;
 };
 
 /** Input columns of a batch: the same length, one row per point. */

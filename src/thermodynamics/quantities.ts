@@ -8,6 +8,7 @@
 import { electronRestTemperature, speedOfLight } from "../constants.js";
 import { FermistateError, withIndex } from "../errors.js";
 import {
+  CRYSTAL_FRACTION,
   DENSITY,
   ELECTRON_CHEMICAL_POTENTIAL,
   ELECTRON_COUPLING,
@@ -65,7 +66,8 @@ export type QuantityName =
   | "electronCoupling"
   | "ionCoupling"
   | "fermiTemperature"
-  | "ionPlasmaTemperature";
+  | "ionPlasmaTemperature"
+  | "crystalFraction";
 
 /** All quantities of a state, in the order of its fields and of the columns of a grid. */
 export const quantities: Readonly<Record<QuantityName, Quantity>> = {
@@ -104,6 +106,7 @@ export const quantities: Readonly<Record<QuantityName, Quantity>> = {
   ionCoupling: { unit: "1", description: "Gamma = Gamma_e <Z^(5/3)>" },
   fermiTemperature: { unit: "K", description: "Fermi energy of the net electrons over k, rest mass left out" },
   ionPlasmaTemperature: { unit: "K", description: "hbar omega_p/k of the ions" },
+  crystalFraction: { unit: "1", description: "1 where the ions are a crystal, 0 where they are a liquid or gas" },
 };
 
 /** The names in the order of the record. */
@@ -113,7 +116,7 @@ export const quantityNames: readonly QuantityName[] = Object.keys(quantities) as
 export const QUANTITY_COUNT: number = quantityNames.length;
 
 /** Quantities that only some equations of state know: NaN in the record means "no contribution says". */
-export const electronQuantities: readonly QuantityName[] = [
+export const optionalQuantities: readonly QuantityName[] = [
   "electronChemicalPotential",
   "electronDegeneracy",
   "positronDensity",
@@ -194,6 +197,7 @@ export function fillPlasmaQuantities(point: Float64Array, out: Float64Array): vo
   out[29] = point[ION_COUPLING]!;
   out[30] = point[FERMI_ENERGY]! * electronRestTemperature;
   out[31] = Math.sqrt(point[PLASMA_TEMPERATURE_SQUARED]!);
+  out[32] = point[CRYSTAL_FRACTION]!;
 }
 
 function refuseSum(specificPressure: number, index: number): never {

@@ -41,6 +41,7 @@ export function stateFrom(density: number, temperature: number, composition: Com
     ionCoupling: r[29]!,
     fermiTemperature: r[30]!,
     ionPlasmaTemperature: r[31]!,
+    crystalFraction: r[32]!,
   });
 }
 

@@ -1,0 +1,393 @@
+/**
+ * Ions as a Coulomb plasma: liquid or crystal, polarised electrons, exchange and correlation, mixtures.
+ *
+ * One contribution that takes the place of the ideal ions: a crystal has no ideal-gas term (its kinetic energy is in the
+ * phonons), so the two phases differ in what they sum.
+ *
+ *     liquid    ideal ions + f_ii(Gamma_j) + f_q(theta_j) + f_ie + mixture correction          + exchange-correlation
+ *     crystal   ground state + phonons + anharmonic + f_ie + mixing entropy + alloy deviation + exchange-correlation
+ *
+ * Terms are linear in number fractions at common electron density (Hansen, Torrie & Vieillefosse 1977, Phys. Rev. A 16,
+ * 2153, from memory) but for the two mixture corrections. Each term's file names its paper, section and range.
+ */
+import { FermistateError } from "../errors.js";
+import { idealIons } from "../ions/ideal-ions.js";
+import type { Composition } from "../matter/composition.js";
+import {
+  CRYSTAL_FRACTION,
+  DENSITY,
+  ELECTRON_COUPLING,
+  ELECTRON_DENSITY,
+  ION_COUPLING,
+  RELATIVITY,
+  radiusFactor,
+  TEMPERATURE,
+} from "../matter/plasma.js";
+import { addInverseThermal, addThermal, NATURAL_LENGTH, SINGLE_LENGTH } from "../numerics/natural.js";
+import type { Contribution } from "../thermodynamics/contribution.js";
+import { addNaturalDerivatives, type Order } from "../thermodynamics/free-energy.js";
+import { addAnharmonic, addGroundState, addPhonons, phononFit } from "./crystal.js";
+import { addCrystalPolarisation } from "./crystal-polarisation.js";
+import { addExchangeCorrelation } from "./exchange.js";
+import { bcc, fcc, type LatticeName } from "./lattice.js";
+import { addLiquidCorrelation } from "./liquid.js";
+import { addLiquidPolarisation, preparePolarisation } from "./liquid-polarisation.js";
+import { addBaikoYakovlev, addTwoOscillators, addWignerKirkwood } from "./liquid-quantum.js";
+import { addMixture } from "./mixing.js";
+import { defaultMeltingCoupling, highestCrystalDensity, type Phase } from "./phase.js";
+import {
+  POINT_CUBE_ROOT,
+  POINT_DENSITY,
+  POINT_ELECTRON_ENERGY,
+  POINT_GAMMA_E,
+  POINT_KT,
+  POINT_LENGTH,
+  POINT_LOG_DENSITY,
+  POINT_LOG_GAMMA_E,
+  POINT_ROOT,
+  POINT_ROOT_DENSITY,
+  POINT_ROOT_GAMMA_E,
+  POINT_RS,
+  POINT_T,
+  POINT_TEMPERATURE,
+  POINT_X,
+} from "./slots.js";
+import { type CoulombSpecies, coulombSpecies } from "./species.js";
+
+/** Which form the quantum correction of the liquid takes. */
+export type QuantumForm = "two-oscillators" | "wigner-kirkwood" | "baiko-yakovlev";
+
+/** Options of {@link coulombPlasma}: what is in, and which phase. */
+export interface CoulombPlasmaOptions {
+  /**
+   * Phase of the ions. "equilibrium" decides by the coupling (see phase.ts); the others force one, also where it is
+   * superheated or supercooled: the fits then end at Gamma = 100 and 200.
+   * @defaultValue "equilibrium"
+   */
+  readonly phase?: Phase | "equilibrium";
+  /**
+   * sum x_j Gamma_j at which matter melts.
+   * @defaultValue 175
+   */
+  readonly meltingCoupling?: number;
+  /**
+   * Lattice of the crystal. No anharmonic terms are known here for fcc.
+   * @defaultValue "bcc"
+   */
+  readonly lattice?: LatticeName;
+  /**
+   * Quantum correction of the liquid, or false for a classical liquid.
+   * @defaultValue "two-oscillators", which keeps the heat capacity positive at any temperature
+   */
+  readonly quantum?: QuantumForm | false;
+  /**
+   * Polarisation of the electrons by the ions.
+   * @defaultValue true
+   */
+  readonly polarisation?: boolean;
+  /**
+   * Exchange and correlation of the electrons.
+   * @defaultValue true
+   */
+  readonly exchange?: boolean;
+  /**
+   * Anharmonic terms of the crystal.
+   * @defaultValue true
+   */
+  readonly anharmonic?: boolean;
+  /**
+   * Corrections to linear mixing in liquid and crystal.
+   * @defaultValue true
+   */
+  readonly mixture?: boolean;
+  /**
+   * Whether free neutrons count as a classical gas beside the nuclei.
+   * @defaultValue true
+   */
+  readonly freeNeutrons?: boolean;
+}
+
+/** The Coulomb plasma as a contribution: what {@link coulombPlasma} returns. */
+export interface CoulombPlasma extends Contribution {
+  /** Its terms one by one, for a breakdown. */
+  readonly parts: readonly Contribution[];
+  /** The options in force, defaults filled in. */
+  readonly options: Required<CoulombPlasmaOptions>;
+}
+
+/** Terms of the sum; a part has one of them, the whole all that the options leave in. */
+interface Terms {
+  readonly idealIons: boolean;
+  readonly correlation: boolean;
+  readonly quantum: QuantumForm | false;
+  readonly lattice: boolean;
+  readonly zeroPoint: boolean;
+  readonly phonons: boolean;
+  readonly anharmonic: boolean;
+  readonly polarisation: boolean;
+  readonly liquidMixture: boolean;
+  readonly mixingEntropy: boolean;
+  readonly alloy: boolean;
+  readonly exchange: boolean;
+}
+
+const defaults: Required<CoulombPlasmaOptions> = {
+  phase: "equilibrium",
+  meltingCoupling: defaultMeltingCoupling,
+  lattice: "bcc",
+  quantum: "two-oscillators",
+  polarisation: true,
+  exchange: true,
+  anharmonic: true,
+  mixture: true,
+  freeNeutrons: true,
+};
+
+const nothing: Terms = {
+  idealIons: false,
+  correlation: false,
+  quantum: false,
+  lattice: false,
+  zeroPoint: false,
+  phonons: false,
+  anharmonic: false,
+  polarisation: false,
+  liquidMixture: false,
+  mixingEntropy: false,
+  alloy: false,
+  exchange: false,
+};
+
+/**
+ * Ions as a Coulomb liquid or crystal, with polarisation, exchange and correlation, each a switch.
+ *
+ * Contains the ideal gas of ions: do not add `idealIons()` beside it (`combine` refuses).
+ * @throws `invalid-option`, `out-of-range` (a melting coupling outside 100 to 300)
+ */
+export function coulombPlasma(options: CoulombPlasmaOptions = {}): CoulombPlasma {
+  const chosen = checked(options);
+  const terms: Terms = {
+    idealIons: true,
+    correlation: true,
+    quantum: chosen.quantum,
+    lattice: true,
+    zeroPoint: true,
+    phonons: true,
+    anharmonic: chosen.anharmonic,
+    polarisation: chosen.polarisation,
+    liquidMixture: chosen.mixture,
+    mixingEntropy: true,
+    alloy: chosen.mixture,
+    exchange: chosen.exchange,
+  };
+  const names: readonly [keyof Terms, string][] = [
+    ["idealIons", "ideal ions"],
+    ["correlation", "ion correlation"],
+    ["quantum", "quantum correction"],
+    ["lattice", "lattice energy"],
+    ["zeroPoint", "zero-point energy"],
+    ["phonons", "phonons"],
+    ["anharmonic", "anharmonic lattice"],
+    ["polarisation", "electron polarisation"],
+    ["liquidMixture", "mixture correction"],
+    ["mixingEntropy", "mixing and spin entropy"],
+    ["alloy", "alloy deviation"],
+    ["exchange", "exchange and correlation"],
+  ];
+  const parts = names
+    .filter(([term]) => terms[term] !== false)
+    .map(([term, name]) => contributionOf(name, { ...nothing, [term]: terms[term] }, chosen));
+  return Object.freeze({
+    ...contributionOf("Coulomb plasma", terms, chosen),
+    excludes: ["ideal ions", "cold corrections"],
+    parts: Object.freeze(parts),
+    options: chosen,
+  });
+}
+
+/** One contribution from a choice of terms. */
+function contributionOf(name: string, terms: Terms, options: Required<CoulombPlasmaOptions>): Contribution {
+  const lattice = options.lattice === "bcc" ? bcc : fcc;
+  const fit = phononFit(lattice);
+  const gas = idealIons({ freeNeutrons: options.freeNeutrons });
+  const neutrons = idealIons({ only: "free neutrons" });
+  const plasma = new Float64Array(POINT_LENGTH);
+  const natural = new Float64Array(NATURAL_LENGTH);
+  const ofGamma = new Float64Array(SINGLE_LENGTH);
+  const ofTheta = new Float64Array(SINGLE_LENGTH);
+  const ofBoth = new Float64Array(NATURAL_LENGTH);
+  let lastComposition: Composition | undefined;
+  let species: CoulombSpecies;
+  let crystalLimit = 0;
+
+  function enter(point: Float64Array, composition: Composition): void {
+    if (composition !== lastComposition) {
+      lastComposition = composition;
+      species = coulombSpecies(composition, lattice);
+      crystalLimit = highestCrystalDensity(composition);
+    }
+    const density = point[DENSITY]!;
+    const temperature = point[TEMPERATURE]!;
+    const x = point[RELATIVITY]!;
+    const coupling = point[ELECTRON_COUPLING]!;
+    const rs = radiusFactor / x;
+    const cubeRoot = x / species.x;
+    const rootDensity = Math.sqrt(density);
+    plasma[POINT_DENSITY] = density;
+    plasma[POINT_TEMPERATURE] = temperature;
+    plasma[POINT_KT] = species.ionsBoltzmann * temperature;
+    plasma[POINT_X] = x;
+    plasma[POINT_RS] = rs;
+    plasma[POINT_CUBE_ROOT] = cubeRoot;
+    plasma[POINT_GAMMA_E] = coupling;
+    plasma[POINT_ROOT_DENSITY] = rootDensity;
+    plasma[POINT_ROOT] = rootDensity / temperature;
+    plasma[POINT_ELECTRON_ENERGY] = species.electronsBoltzmann * species.gammaE * cubeRoot;
+    plasma[POINT_T] = (NON_RELATIVISTIC * rs) / coupling;
+  }
+
+  /** True where the ions are a crystal. */
+  function isCrystal(point: Float64Array): boolean {
+    if (options.phase !== "equilibrium") return options.phase === "crystal";
+    return point[ION_COUPLING]! >= options.meltingCoupling && point[DENSITY]! <= crystalLimit;
+  }
+
+  function addLiquid(order: Order): void {
+    const ions = species.ions;
+    plasma[POINT_LOG_GAMMA_E] = Math.log(plasma[POINT_GAMMA_E]!);
+    plasma[POINT_ROOT_GAMMA_E] = Math.sqrt(plasma[POINT_GAMMA_E]!);
+    if (terms.polarisation) preparePolarisation(order, plasma);
+    for (let i = 0; i < ions.length; i++) {
+      const ion = ions[i]!;
+      if (terms.correlation) addLiquidCorrelation(ofGamma, order, plasma, ion);
+      if (terms.quantum === "two-oscillators") addTwoOscillators(ofTheta, order, plasma, ion);
+      else if (terms.quantum === "wigner-kirkwood") addWignerKirkwood(ofTheta, order, plasma, ion);
+      else if (terms.quantum === "baiko-yakovlev") addBaikoYakovlev(ofTheta, order, plasma, ion);
+      if (terms.polarisation) addLiquidPolarisation(ofBoth, order, plasma, ion);
+    }
+    if (terms.liquidMixture && species.mixture !== undefined) {
+      // Polarised electrons change the weak-coupling limit of the mixture: the form goes with the switch.
+      const mixture = options.polarisation ? species.mixture.polarisable : species.mixture.rigid;
+      addMixture(ofGamma, order, plasma, mixture);
+    }
+  }
+
+  function addCrystal(order: Order): void {
+    const ions = species.ions;
+    const cold = plasma[POINT_TEMPERATURE] === 0;
+    if (terms.lattice || terms.zeroPoint || terms.anharmonic || terms.alloy) {
+      addGroundState(natural, order, plasma, species, terms);
+    }
+    if (terms.polarisation) plasma[POINT_LOG_DENSITY] = Math.log(plasma[POINT_DENSITY]!);
+    for (let i = 0; i < ions.length; i++) {
+      const ion = ions[i]!;
+      if (terms.phonons && !cold) addPhonons(ofTheta, order, plasma, ion, fit);
+      if (terms.anharmonic && !cold) addAnharmonic(ofBoth, order, plasma, ion, lattice);
+      if (terms.polarisation) addCrystalPolarisation(natural, order, plasma, ion, species);
+    }
+    if (terms.mixingEntropy && !cold) {
+      const constant = species.mixing + species.spin;
+      ofTheta[0]! += constant;
+      ofTheta[5]! -= constant;
+    }
+  }
+
+  return {
+    name,
+    domain: Object.freeze({ density: [1e-20, 1e18], temperature: [1, 1e13], zeroTemperature: true } as const),
+    validity:
+      "Coulomb terms assume full ionisation and electrons that are nearly uniform: outside the range of their fits ask " +
+      "regime(...) which assumption is strained.",
+
+    add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void {
+      enter(point, composition);
+      const crystal = isCrystal(point);
+      point[CRYSTAL_FRACTION] = crystal ? 1 : 0;
+      if (!crystal && point[TEMPERATURE] === 0 && composition.ionsPerGram > 0) refuseColdLiquid(options, point);
+      if (terms.idealIons) {
+        if (!crystal) gas.add(point, composition, order, members);
+        else if (options.freeNeutrons) neutrons.add(point, composition, order, members);
+      }
+      if (point[ELECTRON_DENSITY] === 0) return; // no charge, no Coulomb terms
+      natural.fill(0);
+      ofGamma.fill(0);
+      ofTheta.fill(0);
+      ofBoth.fill(0);
+      if (crystal) addCrystal(order);
+      else addLiquid(order);
+      const kT = plasma[POINT_KT]!;
+      if (kT > 0) {
+        addThermal(natural, order, kT, 1 / 3, ofGamma);
+        addThermal(natural, order, kT, 0.5, ofTheta);
+        addInverseThermal(natural, order, kT, ofBoth);
+      }
+      if (terms.exchange) addExchangeCorrelation(natural, order, plasma);
+      addNaturalDerivatives(members, order, natural);
+    },
+
+    addColdSlopes(point: Float64Array, composition: Composition, slopes: Float64Array): void {
+      // Phonons and polarisation vanish faster than T; exchange and correlation go like t^2, t = T/T_F, so that their
+      // members at t = 1e-7 give the limits to 1e-14.
+      if (!terms.exchange || point[ELECTRON_DENSITY] === 0) return;
+      enter(point, composition);
+      const tiny = 1e-7;
+      const temperature = (tiny * species.gammaE * plasma[POINT_CUBE_ROOT]!) / (NON_RELATIVISTIC * plasma[POINT_RS]!);
+      plasma[POINT_TEMPERATURE] = temperature;
+      plasma[POINT_T] = tiny;
+      natural.fill(0);
+      addExchangeCorrelation(natural, 2, plasma);
+      slopes[0]! -= natural[5]! / (temperature * temperature);
+      slopes[1]! += natural[4]! / (temperature * temperature);
+    },
+
+    residualEntropy(composition: Composition): number {
+      if (!terms.mixingEntropy) return 0;
+      const { ionsBoltzmann, mixing, spin } = coulombSpecies(composition, lattice);
+      return -ionsBoltzmann * (mixing + spin);
+    },
+  };
+}
+
+/** t = T/T_F = 2 (4/9 pi)^(2/3) r_s/Gamma_e, T_F non-relativistic. */
+const NON_RELATIVISTIC = 2 * (4 / (9 * Math.PI)) ** (2 / 3);
+
+function refuseColdLiquid(options: Required<CoulombPlasmaOptions>, point: Float64Array): never {
+  throw new FermistateError("outside-domain", {
+    argument: "temperature",
+    given: 0,
+    allowed:
+      options.phase === "liquid"
+        ? "> 0 K: a classical liquid has no entropy at T = 0 to speak of (Coulomb plasma, phase liquid)"
+        : `> 0 K at ${point[DENSITY]} g/cm^3: these nuclei do not freeze there (quantum melting)`,
+  });
+}
+
+/** The options with defaults; refuses strangers. */
+function checked(options: CoulombPlasmaOptions): Required<CoulombPlasmaOptions> {
+  const chosen = { ...defaults, ...options };
+  const closed: Readonly<Record<string, readonly unknown[]>> = {
+    phase: ["equilibrium", "liquid", "crystal"],
+    lattice: ["bcc", "fcc"],
+    quantum: ["two-oscillators", "wigner-kirkwood", "baiko-yakovlev", false],
+    polarisation: [true, false],
+    exchange: [true, false],
+    anharmonic: [true, false],
+    mixture: [true, false],
+    freeNeutrons: [true, false],
+  };
+  for (const [name, value] of Object.entries(chosen)) {
+    if (name === "meltingCoupling") continue;
+    const allowed = Object.hasOwn(closed, name) ? closed[name] : undefined;
+    if (allowed?.includes(value)) continue;
+    throw new FermistateError("invalid-option", {
+      argument: name,
+      given: value,
+      allowed: allowed === undefined ? `one of ${Object.keys(defaults).join(", ")}` : allowed.map(String).join(", "),
+    });
+  }
+  const coupling: unknown = chosen.meltingCoupling;
+  if (!(typeof coupling === "number" && coupling >= 100 && coupling <= 300)) {
+    throw new FermistateError("out-of-range", { argument: "meltingCoupling", given: coupling, allowed: "100 to 300" });
+  }
+  return Object.freeze(chosen);
+}

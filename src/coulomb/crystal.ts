@@ -1,0 +1,213 @@
+/**
+ * The Coulomb crystal: ground state, phonons, anharmonic terms.
+ *
+ *     F/N_i kT = C_M Gamma + (3/2) u_1 theta + f_th(theta) + f_ah(Gamma, theta),   no ideal-gas term: it is in the phonons
+ *
+ * What does not depend on T is a ground state of power laws in density, kept apart from the thermal part, which vanishes
+ * term by term at T -> 0: so T = 0 needs no formula of its own, and no digit is lost when Gamma kT is 1e10 times kT.
+ * Thermal fit f_th = sum ln(1 - e^(-alpha_n theta)) - A(theta)/B(theta): Baiko, Potekhin & Yakovlev 2001, Phys. Rev. E
+ * 64, 057402, error 4e-5. Anharmonic: f_ah = -sum A_k/(k Gamma^k) e^(-c_1 theta^2) - d_1 theta^2/Gamma, Farouki & Hamaguchi
+ * 1993, Phys. Rev. E 47, 4330 (classical, Gamma from 170 on), quantum suppression Potekhin & Chabrier 2010, Contrib. Plasma
+ * Phys. 50, 82; coefficients from memory, see lattice.ts. Below Gamma = 100 the anharmonic sum is meaningless.
+ */
+import {
+  addGround,
+  addScaled,
+  divideSingle,
+  lift,
+  multiply,
+  NATURAL_LENGTH,
+  SINGLE_LENGTH,
+} from "../numerics/natural.js";
+import type { Order } from "../thermodynamics/free-energy.js";
+import { ANHARMONIC_SUPPRESSION, type LatticeConstants } from "./lattice.js";
+import {
+  ION_GAMMA,
+  ION_THETA,
+  ION_X,
+  POINT_CUBE_ROOT,
+  POINT_ROOT,
+  POINT_ROOT_DENSITY,
+  POINT_TEMPERATURE,
+} from "./slots.js";
+import type { CoulombSpecies } from "./species.js";
+
+/** Energies that do not depend on temperature, each a power of density; terms as switches. */
+export interface GroundTerms {
+  /** Madelung energy. */
+  readonly lattice: boolean;
+  /** Zero-point energy of the phonons. */
+  readonly zeroPoint: boolean;
+  /** Anharmonic part. */
+  readonly anharmonic: boolean;
+  /** Deviation of a random alloy from linear mixing. */
+  readonly alloy: boolean;
+}
+
+/** Adds the ground state of the lattice to the natural derivatives of F. */
+export function addGroundState(
+  out: Float64Array,
+  order: Order,
+  point: Float64Array,
+  species: CoulombSpecies,
+  terms: GroundTerms,
+): void {
+  const cubeRoot = point[POINT_CUBE_ROOT]!;
+  const electrostatic = (terms.lattice ? species.madelung : 0) + (terms.alloy ? species.alloy : 0);
+  addGround(out, order, electrostatic * cubeRoot, 1 / 3);
+  if (terms.zeroPoint) addGround(out, order, species.zeroPoint * point[POINT_ROOT_DENSITY]!, 0.5);
+  if (terms.anharmonic) addGround(out, order, species.anharmonicGround * cubeRoot * cubeRoot, 2 / 3);
+}
+
+/** The thermal fit of a lattice with the coefficients of its derivatives: theta^k d^k/dtheta^k multiplies by n!/(n-k)!. */
+export interface PhononFit {
+  /** alpha_1 ... alpha_3. */
+  readonly exponents: Float64Array;
+  /** Coefficients of theta^k A^(k), k = 0..4. */
+  readonly numerator: readonly Float64Array[];
+  /** Coefficients of theta^k B^(k). */
+  readonly denominator: readonly Float64Array[];
+  /** alpha_8. */
+  readonly alpha8: number;
+}
+
+/** The fit of a lattice, prepared for {@link addPhonons}. */
+export function phononFit(lattice: LatticeConstants): PhononFit {
+  const falling = (coefficients: readonly number[]): Float64Array[] =>
+    Array.from({ length: 5 }, (_, k) =>
+      Float64Array.from(coefficients, (c, n) => {
+        let value = c;
+        for (let m = 0; m < k; m++) value *= n - m;
+        return value;
+      }),
+    );
+  return {
+    exponents: Float64Array.from(lattice.exponents),
+    numerator: falling(lattice.numerator),
+    denominator: falling(lattice.denominator),
+    alpha8: lattice.alpha8,
+  };
+}
+
+const top = new Float64Array(SINGLE_LENGTH);
+const bottom = new Float64Array(SINGLE_LENGTH);
+
+/** Adds x_j f_th(theta_j): u[k] = theta^k d^k f/dtheta^k, u[5] the entropy theta f' - f. Needs T > 0. */
+export function addPhonons(
+  u: Float64Array,
+  order: Order,
+  point: Float64Array,
+  ion: Float64Array,
+  fit: PhononFit,
+): void {
+  const asymptotic = 1e9; // from here on f_th is -1/(alpha_8 theta^3) to rounding, and theta^11 would overflow later
+  const extinct = 2800; // the slowest exponential is exactly 0
+  const small = 0.7; // below, 1 - e^(-x) needs expm1
+  const theta = point[POINT_ROOT]! * ion[ION_THETA]!;
+  const weight = ion[ION_X]!;
+  if (theta > asymptotic) {
+    const q = weight / (fit.alpha8 * theta * theta * theta);
+    u[0]! -= q;
+    u[1]! += 3 * q;
+    u[5]! += 4 * q;
+    u[2]! -= 12 * q;
+    if (order === 3) {
+      u[3]! += 60 * q;
+      u[4]! -= 360 * q;
+    }
+    return;
+  }
+  const highest = order === 3 ? 4 : 2;
+  for (let k = 0; k <= highest; k++) {
+    const a = fit.numerator[k]!;
+    const b = fit.denominator[k]!;
+    let over = 0;
+    let under = 0;
+    for (let n = a.length - 1; n >= 0; n--) over = over * theta + a[n]!;
+    for (let n = b.length - 1; n >= 0; n--) under = under * theta + b[n]!;
+    top[k] = over;
+    bottom[k] = under;
+  }
+  divideSingle(top, order, top, bottom);
+  u[0]! -= weight * top[0]!;
+  u[1]! -= weight * top[1]!;
+  u[2]! -= weight * top[2]!;
+  u[5]! += weight * (top[0]! - top[1]!);
+  if (order === 3) {
+    u[3]! -= weight * top[3]!;
+    u[4]! -= weight * top[4]!;
+  }
+  if (theta > extinct) return;
+
+  // Three logarithms in one: the product of (1 - e_n), kept also as 1 - lost. With n = 1/(e^x - 1) and w = x^2 n (n + 1),
+  // x (ln(1 - e^-x))' = x n, x^2 (...)'' = -w, x^3 (...)''' = w x (1 + 2n), x^4 (...)'''' = -w x^2 (1 + 6n + 6n^2).
+  let keep = 1;
+  let lost = 0;
+  let d1 = 0;
+  let d2 = 0;
+  let d3 = 0;
+  let d4 = 0;
+  for (let i = 0; i < 3; i++) {
+    const x = fit.exponents[i]! * theta;
+    const e = Math.exp(-x);
+    const rest = x < small ? -Math.expm1(-x) : 1 - e;
+    const n = e / rest;
+    const xn = x * n;
+    const w = xn * (x + xn);
+    lost += e * keep;
+    keep *= rest;
+    d1 += xn;
+    d2 -= w;
+    d3 += w * x * (1 + 2 * n);
+    d4 -= w * x * x * (1 + 6 * n * (1 + n));
+  }
+  const logarithm = theta < 4 ? Math.log(keep) : Math.log1p(-lost);
+  u[0]! += weight * logarithm;
+  u[1]! += weight * d1;
+  u[2]! += weight * d2;
+  u[5]! += weight * (d1 - logarithm);
+  if (order === 3) {
+    u[3]! += weight * d3;
+    u[4]! += weight * d4;
+  }
+}
+
+const ofGamma = new Float64Array(SINGLE_LENGTH);
+const ofTheta = new Float64Array(SINGLE_LENGTH);
+const first = new Float64Array(NATURAL_LENGTH);
+const second = new Float64Array(NATURAL_LENGTH);
+
+/** Adds x_j f_ah0(Gamma_j) e^(-c_1 theta_j^2), natural derivatives in (rho, 1/T). Needs T > 0. */
+export function addAnharmonic(
+  f: Float64Array,
+  order: Order,
+  point: Float64Array,
+  ion: Float64Array,
+  lattice: LatticeConstants,
+): void {
+  const vanished = 800; // exp of this is exactly 0: no 0 times infinity
+  const theta = point[POINT_ROOT]! * ion[ION_THETA]!;
+  const y = ANHARMONIC_SUPPRESSION * theta * theta;
+  if (y > vanished) return;
+  const e = Math.exp(-y);
+  const r = point[POINT_TEMPERATURE]! / (ion[ION_GAMMA]! * point[POINT_CUBE_ROOT]!); // 1/Gamma
+  const p1 = lattice.anharmonic[0] * r;
+  const p2 = (lattice.anharmonic[1] / 2) * r * r;
+  const p3 = (lattice.anharmonic[2] / 3) * r * r * r;
+  ofGamma[0] = -(p1 + p2 + p3);
+  ofGamma[1] = p1 + 2 * p2 + 3 * p3;
+  ofGamma[2] = -(2 * p1 + 6 * p2 + 12 * p3);
+  ofTheta[0] = e;
+  ofTheta[1] = -2 * y * e;
+  ofTheta[2] = 2 * y * (2 * y - 1) * e;
+  if (order === 3) {
+    ofGamma[3] = 6 * p1 + 24 * p2 + 60 * p3;
+    ofGamma[4] = -(24 * p1 + 120 * p2 + 360 * p3);
+    ofTheta[3] = 4 * y * y * (3 - 2 * y) * e;
+    ofTheta[4] = 4 * y * y * (3 - 12 * y + 4 * y * y) * e;
+  }
+  lift(first, order, 1 / 3, ofGamma);
+  lift(second, order, 0.5, ofTheta);
+  multiply(first, order, first, second);
+  addScaled(f, order, ion[ION_X]!, first);
+}

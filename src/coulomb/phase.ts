@@ -1,0 +1,76 @@
+/**
+ * Liquid or crystal: the rule, and where it puts the boundary.
+ *
+ * Convention: matter is a crystal where sum x_j Gamma_j >= Gamma_m, 175 by default (the classical one-component plasma
+ * melts at 175.17 with the free energies of this library; Potekhin & Chabrier 2000 give 175.0 +- 0.4). For mixtures one
+ * number stands for a phase diagram, and polarisation would move it by more than it is known: so it is a parameter.
+ * Quantum melting: no bcc crystal exists where R_S = (M/m_e) Z^(7/3) r_s is below about 160 (Ceperley & Alder 1980, Phys.
+ * Rev. Lett. 45, 566; Jones & Ceperley 1996, ibid. 76, 4572; from memory): hydrogen never freezes, helium not above 6e7
+ * g/cm^3. R_S falls with density, so the rule sets a highest density of the crystal.
+ */
+import { type Composition, requireComposition } from "../matter/composition.js";
+import { bcc } from "./lattice.js";
+import { ION_GAMMA, ION_THETA, ION_X } from "./slots.js";
+import { coulombSpecies } from "./species.js";
+
+/** A phase of the ions. */
+export type Phase = "liquid" | "crystal";
+
+/** Coupling at which matter melts, unless another is chosen. */
+export const defaultMeltingCoupling = 175;
+/** R_S below which no crystal exists. */
+export const quantumMeltingLimit = 160;
+
+/** Mean of R_S = 3 (Gamma/theta)^2 over the charged nuclei at rho = 1 g/cm^3; it falls like rho^(-1/3). */
+export function quantumRadius(composition: Composition): number {
+  const { ions } = coulombSpecies(composition, bcc);
+  let sum = 0;
+  let share = 0;
+  for (const ion of ions) {
+    const ratio = ion[ION_GAMMA]! / ion[ION_THETA]!;
+    sum += ion[ION_X]! * 3 * ratio * ratio;
+    share += ion[ION_X]!;
+  }
+  return share === 0 ? 0 : sum / share;
+}
+
+/** Highest density of a crystal of this composition, g/cm^3, by the rule of quantum melting; 0 without charged nuclei. */
+export function highestCrystalDensity(composition: Composition): number {
+  return (quantumRadius(composition) / quantumMeltingLimit) ** 3;
+}
+
+/**
+ * Temperature at which matter of a density freezes, K: T_m = sum x_j Gamma_j T/Gamma_m. 0 where it never does.
+ *
+ * @param density - g/cm^3
+ * @param meltingCoupling - Gamma_m
+ */
+export function meltingTemperature(
+  density: number,
+  composition: Composition,
+  meltingCoupling: number = defaultMeltingCoupling,
+): number {
+  requireComposition(composition);
+  if (density > highestCrystalDensity(composition)) return 0;
+  return (
+    (coulombSpecies(composition, bcc).gammaE * composition.chargeMoments.fiveThirds * Math.cbrt(density)) /
+    meltingCoupling
+  );
+}
+
+/**
+ * Density above which matter of a temperature is a crystal, g/cm^3; Infinity where it never is.
+ *
+ * @param temperature - K
+ * @param meltingCoupling - Gamma_m
+ */
+export function meltingDensity(
+  temperature: number,
+  composition: Composition,
+  meltingCoupling: number = defaultMeltingCoupling,
+): number {
+  requireComposition(composition);
+  const coupling = coulombSpecies(composition, bcc).gammaE * composition.chargeMoments.fiveThirds;
+  const density = ((meltingCoupling * temperature) / coupling) ** 3;
+  return density <= highestCrystalDensity(composition) ? density : Number.POSITIVE_INFINITY;
+}

@@ -1,0 +1,178 @@
+/**
+ * Whole states of the Coulomb plasma, liquid and crystal, and the share of each term, against values computed elsewhere with
+ * 95-112 digit Taylor arithmetic (fixtures state-liquid.json, state-crystal.json, state-third.json say how).
+ */
+import { readFileSync } from "node:fs";
+import { expect, test } from "vitest";
+import { coulombPlasma } from "../../src/coulomb/coulomb-plasma.js";
+import { electronPositronGas } from "../../src/fermi-gas/electron-positron-gas.js";
+import { type Composition, composition } from "../../src/matter/composition.js";
+import { radiation } from "../../src/radiation.js";
+import { combine } from "../../src/thermodynamics/combine.js";
+import type { Contribution } from "../../src/thermodynamics/contribution.js";
+import type { EquationOfState, FreeEnergyDerivatives, State } from "../../src/thermodynamics/equation-of-state.js";
+import { Measured } from "../measured.js";
+
+type Row = Readonly<Record<string, string>> & { readonly contrib: Readonly<Record<string, Record<string, string>>> };
+
+function rowsOf(name: string): Row[] {
+  return (JSON.parse(readFileSync(new URL(`../fixtures/${name}`, import.meta.url), "utf8")) as { rows: Row[] }).rows;
+}
+
+function compositionOf(text: string): Composition {
+  const [labels, fractions = "1"] = text.split("=");
+  const values = fractions.split(":").map(Number);
+  return composition(Object.fromEntries(labels!.split(":").map((label, i) => [label, values[i]!])));
+}
+
+const columns: Readonly<Record<string, keyof State>> = {
+  P: "pressure",
+  e: "specificEnergy",
+  s: "specificEntropy",
+  c_v: "heatCapacityV",
+  c_p: "heatCapacityP",
+  chi_rho: "chiRho",
+  chi_T: "chiT",
+  gamma1: "gamma1",
+  gamma3: "gamma3",
+  nabla_ad: "adiabaticGradient",
+  c_s: "soundSpeed",
+};
+
+/** Terms of the reference by the names of the library's parts. */
+const shares: Readonly<Record<string, readonly string[]>> = {
+  "electrons and positrons": ["electrons"],
+  radiation: ["radiation"],
+  "ideal ions": ["ions"],
+  "ion correlation": ["fii"],
+  "quantum correction": ["fq"],
+  "lattice energy": ["madelung"],
+  "zero-point energy": ["zp"],
+  phonons: ["th"],
+  "anharmonic lattice": ["ah"],
+  "electron polarisation": ["fie"],
+  "mixture correction": ["mix"],
+  "mixing and spin entropy": ["smix"],
+  "alloy deviation": ["dmix"],
+  "exchange and correlation": ["xc"],
+};
+
+const off = { polarisation: false, exchange: false, mixture: false, anharmonic: false } as const;
+const variants: Readonly<Record<string, () => readonly Contribution[]>> = {
+  "liquid all": () => [coulombPlasma({ phase: "liquid" })],
+  "liquid fii_only": () => [coulombPlasma({ phase: "liquid", quantum: false, ...off })],
+  "crystal all": () => [coulombPlasma({ phase: "crystal" })],
+  "crystal harmonic_only": () => [coulombPlasma({ phase: "crystal", ...off })],
+};
+
+for (const phase of ["liquid", "crystal"] as const) {
+  test(`${phase}: totals and the share of each term`, () => {
+    const measured = new Measured();
+    const rows = rowsOf(`state-${phase}.json`);
+    for (const row of rows) {
+      const plasma = variants[`${phase} ${row["variant"]}`]!()[0]!;
+      const eos = combine(electronPositronGas(), radiation(), plasma);
+      const matter = compositionOf(row["comp"]!);
+      const density = Number(row["rho"]);
+      const temperature = Number(row["T"]);
+      const where = `${row["variant"]} ${row["comp"]} rho ${row["rho"]} T ${row["T"]}`;
+      const state = eos.state(density, temperature, matter);
+      expect(state.crystalFraction).toBe(phase === "crystal" ? 1 : 0);
+      const largest = (column: string): number =>
+        Math.max(...Object.values(row.contrib).map((share) => Math.abs(Number(share[column]))));
+      for (const [column, field] of Object.entries(columns)) {
+        const expected = Number(row[column]);
+        // Energy and entropy are sums with terms of both signs: relative to the largest term where that is larger.
+        const scale = ["P", "e", "s", "c_v"].includes(column)
+          ? Math.max(Math.abs(expected), largest(column))
+          : undefined;
+        measured.compare(column, state[field] as number, expected, where, scale);
+      }
+      measured.compare(
+        "F",
+        state.specificFreeEnergy,
+        Number(row["F"]),
+        where,
+        Math.max(largest("F"), Math.abs(state.specificEnergy)),
+      );
+      const parts = [electronPositronGas(), radiation(), ...plasma.parts!];
+      const seen = new Set<string>();
+      for (const part of parts) {
+        const names = shares[part.name]!.filter((name) => row.contrib[name] !== undefined);
+        if (names.length === 0) {
+          const f = derivativesOf(part, density, temperature, matter);
+          expect(Math.abs(f.fR) + Math.abs(f.f), `${part.name} should add nothing at ${where}`).toBeLessThan(
+            1e-30 * Math.abs(state.specificEnergy),
+          );
+          continue;
+        }
+        const f = derivativesOf(part, density, temperature, matter);
+        const values = { P: density * f.fR, e: f.f - f.fT, s: -f.fT / temperature, c_v: -f.fTT / temperature, F: f.f };
+        for (const name of names) {
+          seen.add(name);
+          for (const [column, value] of Object.entries(values)) {
+            const expected = Number(row.contrib[name]![column]);
+            measured.compare(`share of ${column}`, value, expected, `${where} ${name}`, largest(column));
+          }
+        }
+      }
+      expect([...Object.keys(row.contrib)].filter((name) => !seen.has(name))).toEqual([]);
+    }
+    if (process.env["FERMISTATE_PRINT"]) console.info(measured.table());
+    for (const column of [...Object.keys(columns), "F"]) measured.expectBelow(column, 1e-13);
+    for (const column of ["P", "e", "s", "c_v", "F"]) measured.expectBelow(`share of ${column}`, 1e-12);
+    expect(rows.length).toBeGreaterThan(25);
+  });
+}
+
+/** Derivatives of one term; through a sum with nothing else, which may exert no pressure. */
+function derivativesOf(
+  part: Contribution,
+  density: number,
+  temperature: number,
+  matter: Composition,
+): FreeEnergyDerivatives {
+  const alone: EquationOfState = combine(part);
+  return alone.freeEnergy(density, temperature, matter);
+}
+
+test("third-order derivatives of liquid and crystal", () => {
+  const names: Readonly<Record<string, keyof FreeEnergyDerivatives>> = {
+    F: "f",
+    F_r: "fR",
+    F_t: "fT",
+    F_rr: "fRR",
+    F_rt: "fRT",
+    F_tt: "fTT",
+    F_rrr: "fRRR",
+    F_rrt: "fRRT",
+    F_rtt: "fRTT",
+    F_ttt: "fTTT",
+    F_rrtt: "fRRTT",
+  };
+  const measured = new Measured();
+  const rows = rowsOf("state-third.json").filter((row) => row["set"] !== "ideal");
+  for (const row of rows) {
+    const size = (name: string): number => Math.abs(Number(row[name]));
+    const scales: Readonly<Record<string, number>> = {
+      F_rrr: size("F_r") + size("F_rr"),
+      F_rrt: size("F_rt"),
+      F_rtt: size("F_rt"),
+      F_ttt: size("F_tt"),
+      F_rrtt: size("F_rt") + size("F_rtt"),
+    };
+    const eos = combine(
+      electronPositronGas(),
+      radiation(),
+      coulombPlasma({ phase: row["set"] as "liquid" | "crystal" }),
+    );
+    const f = eos.freeEnergy(Number(row["rho"]), Number(row["T"]), compositionOf(row["comp"]!), 3);
+    for (const [column, field] of Object.entries(names)) {
+      const where = `${row["set"]} ${row["comp"]} ${row["rho"]} ${row["T"]}`;
+      measured.compare(column, f[field]!, Number(row[column]), where, scales[column]);
+    }
+  }
+  if (process.env["FERMISTATE_PRINT"]) console.info(measured.table());
+  expect(rows.length).toBe(9);
+  for (const column of Object.keys(names)) measured.expectBelow(column, 1e-12);
+});
