@@ -12,9 +12,10 @@
  * - `out-of-range`: a finite number that no choice of physics would allow (negative density)
  * - `outside-domain`: a legal number at which this equation of state does not answer
  * - `unknown-nuclide`: a label that is not in AME2020
- * - `invalid-composition`: empty, negative, or not summing to one
+ * - `invalid-composition`: empty, negative, not summing to one, or not made by `composition(...)`
  * - `length-mismatch`: columns of a batch that do not fit each other
  * - `unavailable-quantity`: no contribution of this equation of state knows the quantity
+ * - `unstable`: the sum of contributions has no positive pressure, resists neither compression nor heating, or holds NaN
  * - `no-convergence`: an iteration did not reach its promise (a defect of the library: please report)
  * - `too-large`: a request beyond the stated size limit
  * - `invalid-option`: an option or a command-line argument that does not exist or cannot be read
@@ -28,6 +29,7 @@ export type ErrorCode =
   | "invalid-composition"
   | "length-mismatch"
   | "unavailable-quantity"
+  | "unstable"
   | "no-convergence"
   | "too-large"
   | "invalid-option"
@@ -83,6 +85,24 @@ export function requireFinite(argument: string, value: unknown, allowed: string,
   throw new FermistateError("not-a-number", withIndex({ argument, given: value, allowed }, index));
 }
 
+/** Throws `invalid-option` unless `options` is an object whose keys are all in `flags` and hold true or false. */
+export function requireFlags(argument: string, options: unknown, flags: readonly string[]): void {
+  const allowed = `an object with ${flags.map((flag) => `${flag}: true | false`).join(", ")}`;
+  if (typeof options !== "object" || options === null || Array.isArray(options)) {
+    throw new FermistateError("invalid-option", { argument, given: options, allowed });
+  }
+  for (const [name, value] of Object.entries(options)) {
+    if (!flags.includes(name)) throw new FermistateError("invalid-option", { argument, given: name, allowed });
+    if (value !== undefined && typeof value !== "boolean") {
+      throw new FermistateError("invalid-option", {
+        argument: `${argument}.${name}`,
+        given: value,
+        allowed: "true or false",
+      });
+    }
+  }
+}
+
 /** `details` with the row where there is one. */
 export function withIndex(details: ErrorDetails, index: number | undefined): ErrorDetails {
   return index === undefined ? details : { ...details, index };
@@ -94,5 +114,6 @@ function printed(value: unknown): string {
   if (Array.isArray(value) || ArrayBuffer.isView(value))
     return `an array of length ${(value as ArrayLike<unknown>).length}`;
   if (typeof value === "object" && value !== null) return "an object";
+  if (typeof value === "function") return "a function";
   return String(value);
 }

@@ -20,7 +20,12 @@ import {
   PRESSURE_TT,
 } from "./thermodynamics/free-energy.js";
 
-/** Photons as a contribution; they do not depend on composition. Their share is `radiationPressureFraction`. */
+/**
+ * Photons as a contribution: P = a T^4/3 in dyn/cm^2, whatever the composition. Exact for black-body radiation in vacuum.
+ *
+ * Alone they give an infinite heat capacity at constant pressure, as they must: pressure fixes their temperature. The share of
+ * the pressure is `radiationPressureFraction`. Answers at 1e-20 to 1e18 g/cm^3 and at T = 0 or 1 to 1e13 K.
+ */
 export function radiation(): Contribution {
   return Object.freeze({
     name: "radiation",

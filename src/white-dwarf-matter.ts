@@ -2,6 +2,7 @@
  * The newcomer's equation of state: everything this library knows about the matter of a white dwarf, in one call.
  */
 import { type CoulombPlasmaOptions, coulombPlasma } from "./coulomb/coulomb-plasma.js";
+import { requireFlags } from "./errors.js";
 import { electronPositronGas } from "./fermi-gas/electron-positron-gas.js";
 import { idealIons } from "./ions/ideal-ions.js";
 import { radiation } from "./radiation.js";
@@ -44,8 +45,9 @@ export interface WhiteDwarfMatterOptions {
  * ```
  */
 export function whiteDwarfMatter(options: WhiteDwarfMatterOptions = {}): EquationOfState {
+  const { coulomb = false, ...flags } = typeof options === "object" && options !== null ? options : { flags: options };
+  requireFlags("options", flags, ["ions", "radiation"]);
   const parts = [electronPositronGas()];
-  const coulomb = options.coulomb ?? false;
   if (options.ions ?? true)
     parts.push(coulomb === false ? idealIons() : coulombPlasma(coulomb === true ? {} : coulomb));
   if (options.radiation ?? true) parts.push(radiation());

@@ -34,5 +34,5 @@ test("P = e/3, s = 4 e/(3 T), gamma_1 = 4/3, nabla_ad = 1/4, F = -P/rho, nothing
 });
 
 test("T = 0: no photons, and alone they then exert no pressure, which is refused", () => {
-  expect(() => photons.state(1, 0, hydrogen)).toThrow(/resists compression/);
+  expect(() => photons.state(1, 0, hydrogen)).toThrow(/contributions that act on this matter/);
 });

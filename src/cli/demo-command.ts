@@ -78,7 +78,7 @@ export const demoCommand: Command = command({
         list,
         "",
         `Open ${join(out, "core-pressure.svg")} in a browser. One state in full:`,
-        "  fermistate state --density 2e6 --temperature 1e7 --composition C12=0.5,O16=0.48,Ne22=0.02",
+        "  npx fermistate state --density 2e6 --temperature 1e7 --composition C12=0.5,O16=0.48,Ne22=0.02",
         "",
       ].join("\n"),
     );

@@ -52,10 +52,7 @@ export function meltingTemperature(
 ): number {
   requireComposition(composition);
   if (density > highestCrystalDensity(composition)) return 0;
-  return (
-    (coulombSpecies(composition, bcc).gammaE * composition.chargeMoments.fiveThirds * Math.cbrt(density)) /
-    meltingCoupling
-  );
+  return (coulombSpecies(composition, bcc).gammaE * composition.couplingMoment * Math.cbrt(density)) / meltingCoupling;
 }
 
 /**
@@ -70,7 +67,7 @@ export function meltingDensity(
   meltingCoupling: number = defaultMeltingCoupling,
 ): number {
   requireComposition(composition);
-  const coupling = coulombSpecies(composition, bcc).gammaE * composition.chargeMoments.fiveThirds;
+  const coupling = coulombSpecies(composition, bcc).gammaE * composition.couplingMoment;
   const density = ((meltingCoupling * temperature) / coupling) ** 3;
   return density <= highestCrystalDensity(composition) ? density : Number.POSITIVE_INFINITY;
 }

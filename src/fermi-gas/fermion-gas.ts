@@ -40,6 +40,15 @@ export interface FermionGasOptions {
  * @throws `unknown-nuclide`, `out-of-range`, `not-a-number`, `invalid-option` (a boson, or an unknown spin)
  */
 export function fermionGas(options: FermionGasOptions): Contribution {
+  const known = ["species", "mass", "degeneracy"];
+  const stranger =
+    typeof options === "object" && options !== null
+      ? Object.keys(options).find((one) => !known.includes(one))
+      : options;
+  if (stranger !== undefined || typeof options.species !== "string") {
+    const allowed = `an object { species: "n", mass?, degeneracy? }`;
+    throw new FermistateError("invalid-option", { argument: "options", given: stranger ?? options.species, allowed });
+  }
   const label = options.species;
   const mass = options.mass ?? nuclide(label).nuclearMass;
   const degeneracy = options.degeneracy ?? spinStates(label);
@@ -74,6 +83,8 @@ export function fermionGas(options: FermionGasOptions): Contribution {
     name: `fermions ${label}`,
     validity: `An ideal gas of ${label} without antiparticles: at nuclear density a limit to compare with, no model.`,
     ideal: true,
+    // The classical gas of nuclei counts free neutrons too, unless told not to.
+    excludes: label === "n" ? ["ideal ions"] : [],
     domain: Object.freeze({ density: [1e-20, 1e18], temperature: [1, 1e13], zeroTemperature: true } as const),
 
     add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void {

@@ -74,7 +74,7 @@ export interface Grid {
   readonly domain: Domain;
   /** Where its numbers hold and what is not in them, in sentences. */
   readonly validity: readonly string[];
-  /** True where no contribution knows interactions. */
+  /** True for electrons and nuclei without interactions. */
   readonly ideal: boolean;
   /** Version of this library. */
   readonly libraryVersion: string;

@@ -2,9 +2,11 @@
 import type { Contribution } from "../thermodynamics/contribution.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 
-/** True where every contribution says that it treats particles without interactions. */
+/** True for electrons and nuclei without interactions: an ideal plasma. */
 export function isIdeal(contributions: readonly Contribution[]): boolean {
-  return contributions.every(({ ideal }) => ideal === true);
+  const names = contributions.map(({ name }) => name);
+  const plasma = names.includes("electrons and positrons") && names.some((name) => name.startsWith("ideal ions"));
+  return plasma && contributions.every(({ ideal }) => ideal === true);
 }
 
 /** Where numbers of an equation of state hold, and what is not in them. */

@@ -9,6 +9,7 @@
  * dense matter the formula's entropy turns negative: there ions are a Coulomb liquid or crystal and not this gas.
  */
 import { atomicMassConstant, boltzmannConstant, reducedPlanckConstant } from "../constants.js";
+import { requireFlags } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
 import { nuclide } from "../matter/nuclides.js";
 import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
@@ -41,15 +42,23 @@ const neutronConstant = (): number => 1.5 * Math.log(atomicMassConstant / nuclid
 /** (2 pi hbar^2/(m_u k))^(3/2): the volume lambda^3 of one atomic mass unit at 1 K, cm^3 K^(3/2). */
 const thermalVolume = ((2 * Math.PI * reducedPlanckConstant ** 2) / (atomicMassConstant * boltzmannConstant)) ** 1.5;
 
-/** The ideal gas of nuclei as a contribution. T = 0 is refused: a classical gas has no entropy there to speak of. */
+/**
+ * The ideal gas of nuclei as a contribution, F = sum_i N_i kT [ln(n_i lambda_i^3/g_i) - 1] in erg/g.
+ *
+ * Valid where n_i lambda_i^3 << 1 and the Coulomb coupling is far below 1 (Sackur 1911, Tetrode 1912). T = 0 is refused: a
+ * classical gas has no entropy there to speak of. Answers at 1e-20 to 1e18 g/cm^3 and 1 to 1e13 K.
+ * @throws `invalid-option`
+ */
 export function idealIons(options: IdealIonsOptions = {}): Contribution {
-  const { freeNeutrons = true, only } = options;
+  const { only, ...flags } = options;
+  requireFlags("options", flags, ["freeNeutrons"]);
+  const { freeNeutrons = true } = flags;
   const ofNeutrons = only === undefined ? 0 : neutronConstant();
   return Object.freeze({
-    name: "ideal ions",
+    name: only ?? (freeNeutrons ? "ideal ions" : "ideal ions without free neutrons"),
     validity:
-      "Ions are a classical gas of nuclei in their ground state: in cold dense matter, where they would freeze, its " +
-      "entropy turns negative.",
+      "Nuclei and free neutrons are a classical gas in their ground states: in cold dense matter, where nuclei freeze and " +
+      "neutrons are degenerate, its entropy turns negative.",
     ideal: true,
     domain: Object.freeze({ density: [1e-20, 1e18], temperature: [1, 1e13], zeroTemperature: false } as const),
     add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void {

@@ -62,6 +62,8 @@ export interface Composition {
   readonly meanCharge: number;
   /** Other averages over the charge. */
   readonly chargeMoments: ChargeMoments;
+  /** <Z^(5/3)> over the charged nuclei alone: the ion coupling over that of the electrons; 0 without charge. */
+  readonly couplingMoment: number;
   /** Nuclei per gram, sum X_i/(A_i m_u), 1/g. */
   readonly ionsPerGram: number;
   /** Electrons per gram, Y_e/m_u, 1/g. */
@@ -229,6 +231,8 @@ function fromSpecies(shares: readonly Share[]): Composition {
       sevenThirds: moment((z) => z * z * Math.cbrt(z)),
       fiveHalves: moment((z) => z * z * Math.sqrt(z)),
     }),
+    couplingMoment:
+      charged.length === 0 ? 0 : moment((z) => z * Math.cbrt(z) ** 2) / total(charged, (one) => one.numberFraction),
     ionsPerGram,
     electronsPerGram: electronsPerNucleon / atomicMassConstant,
     ionEntropyConstant: entropyConstant(species),

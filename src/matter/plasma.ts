@@ -7,7 +7,7 @@
  *     n_e     = rho Y_e/m_u                              net electrons per cm^3
  *     x_r     = (3 pi^2 n_e)^(1/3) hbar/(m_e c)           relativity parameter, p_F/(m_e c)
  *     r_s     = a_e/a_B,  a_e = (3/(4 pi n_e))^(1/3)      density parameter
- *     Gamma_e = e^2/(a_e kT),  Gamma = Gamma_e <Z^(5/3)>  coupling of electrons and of ions
+ *     Gamma_e = e^2/(a_e kT),  Gamma = Gamma_e <Z^(5/3)>  coupling of electrons and of (charged) ions
  *     T_F     = (sqrt(1 + x_r^2) - 1) m_e c^2/k           Fermi temperature
  *     T_p     = (hbar/k) (4 pi e^2 n_i <Z^2/M>)^(1/2)     ion plasma temperature
  *
@@ -71,11 +71,12 @@ export function fillPlasma(point: Float64Array, composition: Composition): void 
   const x = Math.cbrt(electrons * relativityFactor);
   // Without electrons the coupling is zero at every temperature, T = 0 included.
   const coupling = electrons === 0 ? 0 : (couplingFactor * x) / temperature;
+  const moment = composition.couplingMoment; // may underflow for a mean nucleus of next to no charge
   const ions = density * composition.ionsPerGram;
   point[ELECTRON_DENSITY] = electrons;
   point[RELATIVITY] = x;
   point[ELECTRON_COUPLING] = coupling;
-  point[ION_COUPLING] = coupling * composition.chargeMoments.fiveThirds;
+  point[ION_COUPLING] = moment === 0 ? 0 : coupling * moment;
   point[FERMI_ENERGY] = (x * x) / (1 + Math.sqrt(1 + x * x));
   point[PLASMA_TEMPERATURE_SQUARED] = plasmaFactor * ions * composition.plasmaFrequencySum;
   point[ELECTRON_CHEMICAL_POTENTIAL] = Number.NaN;

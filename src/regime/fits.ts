@@ -4,10 +4,11 @@
  * They are judged whether or not an equation of state with such terms is at hand: outside them nobody's numbers are
  * well founded. Ranges and reasons stand beside each judgement. Species below 1e-3 of the nuclei are left out.
  */
+
+import { defaultMeltingCoupling, type Phase, quantumMeltingLimit } from "../coulomb/phase.js";
 import type { Composition } from "../matter/composition.js";
 import { type Finding, judge } from "./finding.js";
 import { type RegimeParameters, relativisticTemperature, type SpeciesParameters } from "./parameters.js";
-import { type IonPhase, leastIonDensityParameter, meltingCoupling } from "./phase.js";
 
 /** Species below this share of the nuclei raise no finding about fits. */
 const trace = 1e-3;
@@ -18,14 +19,14 @@ export function judgeFits(
   temperature: number,
   composition: Composition,
   parameters: RegimeParameters,
-  phase: IonPhase,
+  phase: Phase,
 ): void {
   const present = composition.species.filter((one) => one.chargeNumber > 0 && one.numberFraction > trace);
   const charges = present.map((one) => one.chargeNumber);
   const species = parameters.species.filter(({ label }) => present.some((one) => one.label === label));
   if (phase === "liquid") judgeLiquid(list, parameters, species);
   else judgeCrystal(list, parameters, charges);
-  if (phase === "crystal" || parameters.ionCoupling >= meltingCoupling) judgeQuantumMelting(list, species);
+  if (phase === "crystal" || parameters.ionCoupling >= defaultMeltingCoupling) judgeQuantumMelting(list, species);
   if (phase === "crystal") judgeAlloy(list, temperature, composition, parameters, charges);
   judgeExchange(list, temperature, parameters);
 }
@@ -91,7 +92,7 @@ function judgeQuantumMelting(list: Finding[], species: readonly SpeciesParameter
       code: "quantum-melting",
       value: ionDensityParameter,
       strained: 1000,
-      outside: leastIonDensityParameter,
+      outside: quantumMeltingLimit,
       below: true,
       name: "ion density parameter R_S",
       species: label,

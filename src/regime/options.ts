@@ -1,13 +1,14 @@
 /** Options of `regime`, and their checks. */
+
+import type { Phase } from "../coulomb/phase.js";
 import { FermistateError } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
 import type { EquationOfState, State } from "../thermodynamics/equation-of-state.js";
-import type { IonPhase } from "./phase.js";
 
 /** Options of `regime`. */
 export interface RegimeOptions {
   /** Take the ions to be in this phase, instead of by the rule. */
-  readonly phase?: IonPhase;
+  readonly phase?: Phase;
   /**
    * Judge the stability of its sum at the point. Where it has interactions, nuclei are not judged as an ideal gas.
    * Its own domain applies.

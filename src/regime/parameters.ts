@@ -1,7 +1,7 @@
 /**
  * The dimensionless numbers and temperatures that say what kind of matter this is.
  *
- *     Gamma_j = Gamma_e Z_j^(5/3),  Gamma = sum x_j Gamma_j       coupling
+ *     Gamma_j = Gamma_e Z_j^(5/3),  Gamma = sum x_j Gamma_j       coupling; x_j among charged nuclei
  *     T_p,j   = (hbar/k) (4 pi e^2 n_e Z_j/M_j)^(1/2),  theta_j = T_p,j/T
  *     R_S,j   = (M_j/m_e) Z_j^(7/3) r_s = 3 (Gamma_j/theta_j)^2   density parameter of the ions
  *     t       = T/T_F,nr,  k T_F,nr = x_r^2 m_e c^2/2             reduced temperature
@@ -61,7 +61,7 @@ export interface SpeciesParameters {
 
 /** Parameters of a point; frozen. JSON writes null for the infinities named below. */
 export interface RegimeParameters {
-  /** Gamma of the ions, sum x_j Gamma_j; Infinity at T = 0 unless nothing is charged. */
+  /** Gamma of the ions, sum x_j Gamma_j over charged nuclei; Infinity at T = 0 unless nothing is charged. */
   readonly ionCoupling: number;
   /** Gamma_e = e^2/(a_e kT); as above. */
   readonly electronCoupling: number;
@@ -133,22 +133,22 @@ export function measure(density: number, temperature: number, composition: Compo
   const positrons = point[POSITRON_DENSITY]!;
   const ionPressure = density * composition.ionsPerGram * boltzmannConstant * temperature;
   const pressure = members[PRESSURE]! * density + ionPressure;
-  // A trace whose density underflows is no electron either.
-  const none = x === 0;
+  // A charge so small that its powers underflow is none.
+  const none = x === 0 || composition.plasmaFrequencySum === 0;
   const charged = none ? [] : composition.species.filter((one) => one.chargeNumber > 0);
   const species = Object.freeze(charged.map((one) => ofSpecies(one, electronDensity, rs, point)));
   // Gamma T, finite at T = 0.
   const couplingTemperature = none
     ? 0
     : (elementaryChargeSquared / (rs * bohrRadius * boltzmannConstant)) * composition.chargeMoments.fiveThirds;
-  const gamma = point[ION_COUPLING]!;
+  const gamma = none ? 0 : point[ION_COUPLING]!;
   // n_i kT Gamma stays finite at T = 0.
   const coupledPressure = density * composition.ionsPerGram * boltzmannConstant * couplingTemperature;
   const coulombPressure = coupledPressure * Math.min(0.3, Math.sqrt(gamma / 12));
 
   const parameters: RegimeParameters = Object.freeze({
     ionCoupling: gamma,
-    electronCoupling: point[ELECTRON_COUPLING]!,
+    electronCoupling: none ? 0 : point[ELECTRON_COUPLING]!,
     densityParameter: rs,
     relativityParameter: x,
     ionPlasmaTemperature: Math.sqrt(point[PLASMA_TEMPERATURE_SQUARED]!),

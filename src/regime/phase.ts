@@ -1,14 +1,11 @@
 /**
  * Which phase the ions are in, and the kind of matter in plain words.
  *
- * The rule: crystal where Gamma >= 175 and R_S >= 160 (the mean over nuclei), else fluid. Gamma of melting 175: Potekhin & Chabrier 2000, Phys.
- * Rev. E 62, 8554. Below R_S of 110 to 160 no bcc crystal of bosons or fermions exists at any temperature (Jones &
- * Ceperley 1996, Phys. Rev. Lett. 76, 4572, from memory). Words: common practice, round numbers.
+ * The rule is that of coulomb/phase.ts: crystal where Gamma >= 175 and R_S >= 160 (the mean over nuclei), else fluid.
+ * Words: common practice, round numbers.
  */
+import { defaultMeltingCoupling, type Phase, quantumMeltingLimit } from "../coulomb/phase.js";
 import { type RegimeParameters, relativisticTemperature } from "./parameters.js";
-
-/** Phase of the ions. */
-export type IonPhase = "liquid" | "crystal";
 
 /** What matter is called; the closed list of `kind`. */
 export type KindWord =
@@ -21,15 +18,10 @@ export type KindWord =
   | "crystal"
   | "free neutrons";
 
-/** Gamma of melting. */
-export const meltingCoupling = 175;
-/** R_S below which nothing freezes. */
-export const leastIonDensityParameter = 160;
-
 /** The phase by the rule; undefined where nothing is charged. */
-export function phaseOf({ ionCoupling, ionDensityParameter, species }: RegimeParameters): IonPhase | undefined {
+export function phaseOf({ ionCoupling, ionDensityParameter, species }: RegimeParameters): Phase | undefined {
   if (species.length === 0) return undefined;
-  return ionCoupling >= meltingCoupling && ionDensityParameter >= leastIonDensityParameter ? "crystal" : "liquid";
+  return ionCoupling >= defaultMeltingCoupling && ionDensityParameter >= quantumMeltingLimit ? "crystal" : "liquid";
 }
 
 /**
@@ -39,7 +31,7 @@ export function phaseOf({ ionCoupling, ionDensityParameter, species }: RegimePar
 export function kindOf(
   temperature: number,
   parameters: RegimeParameters,
-  phase: IonPhase | undefined,
+  phase: Phase | undefined,
 ): readonly KindWord[] {
   const { fermiTemperature, relativityParameter, ionCoupling } = parameters;
   const words: KindWord[] = [];

@@ -6,6 +6,8 @@
  * it is judged: ionisation.ts, fits.ts, capture.ts, reactions.ts, sums.ts. No finding means that nothing on this list is
  * strained, not that an equation of state has every effect (magnetic fields, rotation and neutrino losses are not here).
  */
+
+import type { Phase } from "../coulomb/phase.js";
 import type { Composition } from "../matter/composition.js";
 import { type CaptureThreshold, captureThresholds, judgeCapture } from "./capture.js";
 import type { Finding } from "./finding.js";
@@ -13,7 +15,7 @@ import { judgeFits } from "./fits.js";
 import { judgeIonisation } from "./ionisation.js";
 import { type RegimeOptions, readOptions } from "./options.js";
 import { measure, type RegimeParameters } from "./parameters.js";
-import { type IonPhase, type KindWord, kindOf, phaseOf } from "./phase.js";
+import { type KindWord, kindOf, phaseOf } from "./phase.js";
 import { judgeReactions } from "./reactions.js";
 import { judgeIdealIons, judgeShares, judgeStability } from "./sums.js";
 
@@ -28,7 +30,7 @@ export interface Regime {
   /** What this matter is called: ["degenerate", "relativistic", "liquid"]. */
   readonly kind: readonly KindWord[];
   /** Phase of the ions, a gas being a liquid; undefined where nothing is charged. */
-  readonly phase: IonPhase | undefined;
+  readonly phase: Phase | undefined;
   /** The plasma parameters. */
   readonly parameters: RegimeParameters;
   /** Thresholds of electron capture of the nuclides that have one. */

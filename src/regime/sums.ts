@@ -151,8 +151,7 @@ function sumOf(eos: EquationOfState, density: number, temperature: number, compo
   try {
     return fromState(eos.state(density, temperature, composition));
   } catch (error) {
-    const refused = error instanceof FermistateError ? error.argument : undefined;
-    if (refused !== "pressure" && refused !== "pressureByDensity") throw error;
+    if (!(error instanceof FermistateError && error.code === "unstable")) throw error;
     const { fR, fRR, fTT } = eos.freeEnergy(density, temperature, composition);
     const heatCapacity = temperature === 0 ? 0 : -fTT / temperature;
     return { pressure: density * fR, compressibility: 2 * fR + fRR, heatCapacity };

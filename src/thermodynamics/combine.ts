@@ -77,8 +77,8 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
   }
 
   function evaluate(input: BatchInput, output: BatchOutput): void {
-    const { density, temperature, composition } = input;
     const count = checkColumns(input, output);
+    const { density, temperature, composition } = input;
     const each = isList(composition) ? composition : undefined;
     const outside = firstOutside(domain, density, temperature);
     if (outside >= 0) refusePoint(parts, density[outside], temperature[outside], outside);
@@ -115,8 +115,16 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
     composition: Composition,
     order: Order = 2,
   ): FreeEnergyDerivatives {
+    if (order !== 2 && order !== 3) {
+      throw new FermistateError("invalid-option", { argument: "order", given: order, allowed: "2 or 3" });
+    }
     enter(density, temperature, composition);
     sum(composition, order);
+    for (let i = 0; i < (order === 2 ? SECOND_ORDER_COUNT : MEMBER_COUNT); i++) {
+      if (Number.isFinite(members[i])) continue;
+      const allowed = "finite derivatives: a contribution has added something else";
+      throw new FermistateError("unstable", { argument: "freeEnergy", given: members[i], allowed });
+    }
     naturalDerivatives(members, order, natural);
     return freeEnergyFrom(natural, order);
   }
@@ -156,8 +164,15 @@ function checkContributions(contributions: readonly Contribution[]): void {
   }
 }
 
+function requireObject(argument: string, value: unknown): void {
+  if (typeof value === "object" && value !== null) return;
+  throw new FermistateError("invalid-option", { argument, given: value, allowed: "an object of columns" });
+}
+
 /** Checks every column of a batch and every composition; returns the number of rows. */
 function checkColumns(input: BatchInput, output: BatchOutput): number {
+  requireObject("input", input);
+  requireObject("output", output);
   const { density, temperature, composition } = input;
   for (const [argument, column] of Object.entries({ density, temperature })) requireColumn(argument, column);
   const count = density.length;
@@ -200,7 +215,7 @@ function requireColumn(argument: string, column: unknown): void {
 /** NaN in the record: a quantity that no contribution provides, or a contribution that broke its contract. */
 function refuseQuantity(name: QuantityName, index: number): never {
   const unknown = optionalQuantities.includes(name);
-  throw new FermistateError(unknown ? "unavailable-quantity" : "no-convergence", {
+  throw new FermistateError(unknown ? "unavailable-quantity" : "unstable", {
     argument: "output",
     given: name,
     allowed: unknown

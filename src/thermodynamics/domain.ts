@@ -60,11 +60,12 @@ export function refusePoint(
     }
     if (kelvin === 0 ? !domain.zeroTemperature : kelvin < domain.temperature[0] || kelvin > domain.temperature[1]) {
       const zero = domain.zeroTemperature ? "0, or " : "";
+      const cure = kelvin === 0 ? "; leave it out at T = 0" : "";
       fail(
         "outside-domain",
         "temperature",
         kelvin,
-        `${zero}${compact(domain.temperature[0])} to ${compact(domain.temperature[1])} K (${name})`,
+        `${zero}${compact(domain.temperature[0])} to ${compact(domain.temperature[1])} K (${name}${cure})`,
       );
     }
   }

@@ -60,7 +60,7 @@ export interface EquationOfState {
    * @param density - baryon mass density, g/cm^3, > 0 and within {@link EquationOfState.domain}
    * @param temperature - K, within the domain; 0 where the domain says so
    * @param composition - from `composition(...)`
-   * @throws `not-a-number`, `out-of-range`, `outside-domain`, `invalid-composition`
+   * @throws `not-a-number`, `out-of-range`, `outside-domain`, `invalid-composition`, `unstable`
    */
   state(density: number, temperature: number, composition: Composition): State;
 

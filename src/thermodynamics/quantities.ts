@@ -127,7 +127,7 @@ const PER_LIGHT_SPEED_SQUARED = 1 / (speedOfLight * speedOfLight);
 /**
  * Fills the first part of `out` (order of {@link quantities}) from the summed members.
  * `cold[0]`, `cold[1]`: limits of c_v/T and (dP/dT)/(rho T) at T = 0; `cold[2]`: residual entropy. Read only at T = 0.
- * Throws `outside-domain` where the sum exerts no pressure or is unstable against compression.
+ * Throws `unstable` where the sum exerts no pressure or resists neither compression nor heating.
  */
 export function fillQuantities(
   point: Float64Array,
@@ -148,7 +148,9 @@ export function fillQuantities(
   // d ln T/d ln rho at constant entropy. A sum without thermal part does not know its temperature: there it is zero.
   const grueneisen = atZero ? (cold[0]! > 0 ? cold[1]! / cold[0]! : 0) : heat > 0 ? thermal / heat : 0;
   const adiabatic = compressibility + thermal * grueneisen; // (dP/drho) at constant entropy
-  if (!(specificPressure !== 0 && adiabatic >= 0)) refuseSum(specificPressure, index);
+  if (!(specificPressure > 0 && compressibility >= 0 && adiabatic > 0 && heat >= 0 && Number.isFinite(energy))) {
+    refuseSum(members, adiabatic, index);
+  }
   const pressure = specificPressure * density;
   const perPressure = 1 / specificPressure;
   const perDensity = 1 / density;
@@ -200,17 +202,20 @@ export function fillPlasmaQuantities(point: Float64Array, out: Float64Array): vo
   out[32] = point[CRYSTAL_FRACTION]!;
 }
 
-function refuseSum(specificPressure: number, index: number): never {
-  const none = specificPressure === 0;
-  throw new FermistateError(
-    "outside-domain",
-    withIndex(
-      {
-        argument: none ? "pressure" : "pressureByDensity",
-        given: none ? 0 : "negative at constant entropy",
-        allowed: "a sum of contributions that resists compression",
-      },
-      index < 0 ? undefined : index,
-    ),
-  );
+/** Says which of the conditions of stability fails. */
+function refuseSum(members: Float64Array, adiabatic: number, index: number): never {
+  const checks: readonly (readonly [string, number, boolean, string])[] = [
+    ["pressure over density", members[PRESSURE]!, members[PRESSURE]! > 0, "> 0: contributions that act on this matter"],
+    ["pressureByDensity", members[PRESSURE_R]!, members[PRESSURE_R]! >= 0, ">= 0 at constant temperature"],
+    ["pressureByDensity", adiabatic, adiabatic > 0, "> 0 at constant entropy"],
+    ["heatCapacityV times temperature", members[HEAT]!, members[HEAT]! >= 0, ">= 0"],
+  ];
+  const [argument, given, , allowed] = checks.find(([, , good]) => !good) ?? [
+    "specificEnergy",
+    members[ENERGY]!,
+    false,
+    "a finite number",
+  ];
+  const reason = Number.isNaN(given) ? "a number: a contribution has added NaN" : `${allowed}, for stable matter`;
+  throw new FermistateError("unstable", withIndex({ argument, given, allowed: reason }, index < 0 ? undefined : index));
 }

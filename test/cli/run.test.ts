@@ -356,7 +356,7 @@ describe("errors are one line, with a code for programs", () => {
       /^fermistate: density: given -1; allowed: > 0 g\/cm\^3 \(out-of-range\)\n$/,
     ],
     ["state --density 1e30 --temperature 1e7 --composition C12=1", 1, /1e-20 to 1e18 .* \(outside-domain\)/],
-    ["state --density 1 --temperature 0 --composition C12=1", 1, /ideal ions\) \(outside-domain\)/],
+    ["state --density 1 --temperature 0 --composition C12=1", 1, /ideal ions; leave it out at T = 0\) \(outside-domain\)/],
     [
       "state --density 1 --temperature 1e7 --composition C12=0.9",
       2,

@@ -9,7 +9,7 @@
 import { expect, test } from "vitest";
 import { boltzmann } from "../../src/fermi-gas/boltzmann.js";
 import { addGasMembers } from "../../src/fermi-gas/density-derivatives.js";
-import { ETA, NET_DENSITY, P00, RECORD_LENGTH, THETA } from "../../src/fermi-gas/record.js";
+import { ETA, N00, NET_DENSITY, P00, RECORD_LENGTH, THETA } from "../../src/fermi-gas/record.js";
 import { singleSpecies } from "../../src/fermi-gas/single-species.js";
 import { ENERGY, HEAT, MEMBER_COUNT } from "../../src/thermodynamics/free-energy.js";
 
@@ -48,7 +48,7 @@ test("far from degeneracy the Fermi integrals tend to it: first correction -2^(-
     gas[ETA] = eta;
     gas[THETA] = 1e-6;
     singleSpecies(gas, 2);
-    const n = gas[9]!;
+    const n = gas[N00]!;
     const classical = Math.sqrt(Math.PI / 2) * 1e-9 * Math.exp(eta) * (1 + (15 / 8) * 1e-6);
     const correction = n / classical - 1;
     expect(Math.abs(correction / (-(2 ** -1.5) * Math.exp(eta)) - 1)).toBeLessThan(2 * Math.exp(eta) + 1e-6);

@@ -47,8 +47,7 @@ describe("closed forms", () => {
   });
 
   test("across the borders of the three forms of P the adiabatic exponent and dP/drho agree with their closed forms", () => {
-    // dP/dn = x^2/(3E) mc^2 and Gamma_1 = n P'/P hold only if P is right: Gamma_1 from an independent long expansion
-    // of sinh integrals is the closed form evaluated at x >= 1 and its binomial series (12 terms) at x <= 0.17.
+    // dP/dn = x^2/(3E) mc^2 is a closed form of its own; P must have it as its slope, by a central difference.
     const measured = new Measured();
     for (let logX = -4; logX <= 3.8; logX += 0.01) {
       const x = 10 ** logX;
@@ -69,12 +68,12 @@ describe("closed forms", () => {
     }
     measured.expectBelow("dP/drho", 3e-15);
     measured.expectBelow("Gibbs", 2e-15);
-    measured.expectBelow("Gamma_1", 1e-12); // rounding of P over the step 0.03
+    measured.expectBelow("Gamma_1", 2e-13); // rounding of P over the step 0.03
   });
 });
 
 describe("join with finite temperature", () => {
-  for (const x of [0.05, 1, 30]) {
+  for (const x of [0.7, 1, 30]) {
     test(`x = ${x}: the difference falls as T^2, and is 2e-15 once pi^2 (kT/E_F)^2 < 1e-16`, () => {
       const density = 2 * 973932.1720105553 * x ** 3;
       const cold = gas.state(density, 0, helium);
@@ -93,9 +92,11 @@ describe("join with finite temperature", () => {
       // The same coefficient at three temperatures: the next term is a hundred times smaller per decade.
       expect(differences[1]! / differences[0]!).toBeCloseTo(1, 2);
       expect(differences[2]! / differences[1]!).toBeCloseTo(1, 4);
-      for (const ratio of [3e-9, 1e-10, 1e-12]) {
-        const temperature = ratio * cold.fermiTemperature;
-        if (temperature < 1) continue;
+      let compared = 0;
+      for (const ratio of [1e-9, 3e-9]) {
+        const temperature = Math.max(1, ratio * cold.fermiTemperature); // 1 K is the coldest but 0
+        if (temperature / cold.fermiTemperature > 3e-9) continue;
+        compared++;
         const warm = gas.state(density, temperature, helium);
         for (const field of fields) expect(Math.abs(warm[field] / cold[field] - 1), field).toBeLessThan(2e-15);
         // Ratios of two vanishing quantities join too.
@@ -103,6 +104,7 @@ describe("join with finite temperature", () => {
           expect(Math.abs(warm[field] / cold[field] - 1), field).toBeLessThan(3e-15);
         }
       }
+      expect(compared).toBe(2);
     });
   }
 
