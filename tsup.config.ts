@@ -58,6 +58,7 @@ export default defineConfig([
       index: "src/index.ts",
       grids: "src/grids/index.ts",
       charts: "src/charts/index.ts",
+      contributions: "src/contributions/index.ts",
       files: "src/files/index.ts",
       certify: "src/certify/index.ts",
     },

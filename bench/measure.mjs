@@ -27,15 +27,25 @@ const usual = [
 function methodFor(name) {
   const input = { ...points, composition: matter };
   if (name === "gas" || name === "ideal") {
-    const eos = name === "gas" ? combine(electronPositronGas()) : whiteDwarfMatter();
+    const eos = name === "gas" ? combine(electronPositronGas()) : whiteDwarfMatter({ coulomb: false });
     const output = columns(usual);
     return () => {
       eos.evaluate(input, output);
       return output.pressure[count - 1];
     };
   }
-  if (name === "all columns") {
+  if (name === "Coulomb") {
+    // Cold matter too thin to be ionised is refused: the corner below 1e5 g/cm^3 is left out.
+    const density = points.density.map((value) => Math.max(value, 1e5));
     const eos = whiteDwarfMatter();
+    const output = columns(usual);
+    return () => {
+      eos.evaluate({ ...points, density, composition: matter }, output);
+      return output.pressure[count - 1];
+    };
+  }
+  if (name === "all columns") {
+    const eos = whiteDwarfMatter({ coulomb: false });
     const output = columns(quantityNames);
     return () => {
       eos.evaluate(input, output);
@@ -43,7 +53,7 @@ function methodFor(name) {
     };
   }
   if (name === "state") {
-    const eos = whiteDwarfMatter();
+    const eos = whiteDwarfMatter({ coulomb: false });
     return () => {
       let sum = 0;
       for (let i = 0; i < count; i++) sum += eos.state(points.density[i], points.temperature[i], matter).gamma1;

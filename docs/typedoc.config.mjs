@@ -11,13 +11,14 @@ const guide = existsSync(`${folder}guide`) ? readdirSync(`${folder}guide`).filte
 /** @type {Partial<import("typedoc").TypeDocOptions>} */
 const options = {
   name: "fermistate",
-  entryPoints: ["index", "grids/index", "charts/index", "files/index", "certify/index"].map(
+  entryPoints: ["index", "grids/index", "contributions/index", "charts/index", "files/index", "certify/index"].map(
     (file) => `../src/${file}.ts`,
   ),
   tsconfig: "../test/tsconfig.json",
   out: "api",
   readme: existsSync(`${folder}../README.md`) ? "../README.md" : "none",
   projectDocuments: guide.sort().map((file) => `guide/${file}`),
+  customCss: "style.css",
   includeVersion: true,
   disableSources: true,
   githubPages: false,

@@ -14,6 +14,7 @@ export {
 } from "./coulomb/coulomb-plasma.js";
 export type { LatticeName } from "./coulomb/lattice.js";
 export { meltingDensity, meltingTemperature, type Phase } from "./coulomb/phase.js";
+export { type RigidMelting, rigidPlasmaMelting } from "./coulomb/rigid-melting.js";
 export { type Transition, transition, withPhase } from "./coulomb/transition.js";
 export { type ErrorCode, type ErrorDetails, FermistateError, isFermistateError } from "./errors.js";
 export { electronPositronGas } from "./fermi-gas/electron-positron-gas.js";
@@ -39,6 +40,6 @@ export type {
   OptionalQuantity,
   State,
 } from "./thermodynamics/equation-of-state.js";
-export { addNaturalDerivatives, naturalOrder, type Order } from "./thermodynamics/free-energy.js";
+export type { Order } from "./thermodynamics/free-energy.js";
 export { type Quantity, type QuantityName, quantities, quantityNames } from "./thermodynamics/quantities.js";
 export { type WhiteDwarfMatterOptions, whiteDwarfMatter } from "./white-dwarf-matter.js";

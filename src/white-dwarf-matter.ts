@@ -14,11 +14,11 @@ export interface WhiteDwarfMatterOptions {
   /**
    * Coulomb interactions: liquid and crystal, polarisation, exchange and correlation, in place of the ideal ions. An
    * object chooses among its terms.
-   * @defaultValue false
+   * @defaultValue true
    */
   readonly coulomb?: boolean | CoulombPlasmaOptions;
   /**
-   * Ideal gas of nuclei. Without it T = 0 is legal.
+   * Nuclei, with their Coulomb interactions or as an ideal gas.
    * @defaultValue true
    */
   readonly ions?: boolean;
@@ -30,22 +30,25 @@ export interface WhiteDwarfMatterOptions {
 }
 
 /**
- * Electrons and positrons, ideal ions and radiation.
+ * The matter of a white dwarf: electrons and positrons, ions as a Coulomb liquid or crystal, radiation; each a switch.
  *
- * What is not in: Coulomb interactions, so the pressure is 1 to 30 % too high where white dwarfs live (least in hot or
- * light-element matter, most in cold dense iron), and there is no crystal.
+ * The ions' Coulomb terms include polarisation, exchange and correlation, and the corrections for mixtures; `coulomb: false`
+ * gives the ideal plasma, whose pressure is 1 to 30 % too high where white dwarfs live. Where the sum is unstable it
+ * is refused (`unstable`): cold matter too thin to be ionised, and cold hydrogen or helium so dense that its quantum liquid is
+ * beyond the fits. `regime(...)` says which assumption is strained before that.
  *
+ * @throws `invalid-option`
  * @example
  * ```ts
  * import { composition, whiteDwarfMatter } from "fermistate";
  * const core = composition({ C12: 0.5, O16: 0.5 });
- * const state = whiteDwarfMatter().state(2e6, 1e7, core);
- * state.pressure; // => 7.6999e22
- * state.adiabaticGradient; // => 0.42463
+ * whiteDwarfMatter().state(2e6, 1e7, core).pressure; // => 7.50013e22
+ * whiteDwarfMatter({ coulomb: false }).state(2e6, 1e7, core).pressure; // => 7.6999e22
+ * whiteDwarfMatter().state(2e6, 1e6, core).crystalFraction; // => 1
  * ```
  */
 export function whiteDwarfMatter(options: WhiteDwarfMatterOptions = {}): EquationOfState {
-  const { coulomb = false, ...flags } = typeof options === "object" && options !== null ? options : { flags: options };
+  const { coulomb = true, ...flags } = typeof options === "object" && options !== null ? options : { flags: options };
   requireFlags("options", flags, ["ions", "radiation"]);
   const parts = [electronPositronGas()];
   if (options.ions ?? true)

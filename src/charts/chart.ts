@@ -5,6 +5,7 @@
  */
 import { line } from "d3-shape";
 import { FermistateError, requireFinite } from "../errors.js";
+import type { FindingsColumn } from "../grids/findings.js";
 import type { Grid } from "../grids/grid.js";
 import { nearestWord } from "../grids/nearest.js";
 import type { QuantityName } from "../thermodynamics/quantities.js";
@@ -17,7 +18,7 @@ import { element, escaped, fontStack, text, widthOf, wrapped } from "./svg.js";
 /** Options of {@link chartGrid}. */
 export interface ChartOptions {
   /** Quantity on the vertical axis: a column of the grid. @defaultValue "pressure" */
-  readonly quantity?: QuantityName;
+  readonly quantity?: QuantityName | FindingsColumn;
   /** Title. @defaultValue the quantity and the composition */
   readonly title?: string;
   /** A remark below the chart, such as where the composition comes from. */
@@ -224,7 +225,7 @@ function remarks(grid: Grid): string[] {
 /** The chart in words. */
 function describe(
   grid: Grid,
-  quantity: QuantityName,
+  quantity: QuantityName | FindingsColumn,
   lines: Lines,
   asides: readonly string[],
   notes: readonly string[],

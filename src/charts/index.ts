@@ -6,5 +6,6 @@
 
 // The types of the argument, so that this entry point is complete in itself.
 export type { Axis } from "../grids/axes.js";
+export type { FindingCount, FindingsColumn } from "../grids/findings.js";
 export type { ColumnName, Grid, GridColumns } from "../grids/grid.js";
 export { type ChartOptions, chartGrid } from "./chart.js";

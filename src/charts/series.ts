@@ -1,6 +1,5 @@
 /** The lines of a chart: one per temperature over density, or one over temperature where there is one density. */
 import type { ColumnName, Grid } from "../grids/grid.js";
-import type { QuantityName } from "../thermodynamics/quantities.js";
 import { unitText, valueText } from "./labels.js";
 
 /** One line. */
@@ -28,7 +27,7 @@ const mostLines = 8;
 const mostPoints = 1200;
 
 /** The lines of a quantity. */
-export function linesOf(grid: Grid, quantity: QuantityName): Lines {
+export function linesOf(grid: Grid, quantity: ColumnName): Lines {
   const [temperatures, densities] = grid.shape;
   const column = grid.columns[quantity]!;
   if (densities === 1) {

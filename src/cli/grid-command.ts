@@ -2,13 +2,15 @@
 import * as z from "zod/mini";
 import { FermistateError } from "../errors.js";
 import { gridToCsvPieces } from "../grids/csv.js";
-import { defaultQuantities, type GridOptions, grid } from "../grids/grid.js";
+import { defaultQuantities, type Grid, grid } from "../grids/grid.js";
 import { gridToJsonPieces } from "../grids/json.js";
+import type { GridOptions } from "../grids/request.js";
+import { regime } from "../regime/regime.js";
 import { quantityNames } from "../thermodynamics/quantities.js";
 import { type Command, command } from "./command.js";
 import { matterOf, matterOptions } from "./matter.js";
 import { checkOutput, type Output, writeOutput } from "./output.js";
-import { timeText } from "./print.js";
+import { table, timeText } from "./print.js";
 import { progressOn } from "./progress.js";
 import { axis, flag, number, oneOf, path, quantityList, wordList, words } from "./readers.js";
 
@@ -26,6 +28,12 @@ export const gridCommand: Command = command({
         "columns besides density and temperature, or all; by default pressure, energy, entropy, the first " +
         "derivatives and the electron degeneracy",
       read: z.optional(quantityList),
+    },
+    findings: {
+      help:
+        "judge every point: columns with the number of assumptions that are strained and of those that do not hold, and " +
+        "which they are; takes some 70 microseconds per point, six times as long as the rest",
+      read: flag,
     },
     out: {
       value: "PATH",
@@ -59,6 +67,10 @@ export const gridCommand: Command = command({
       "one density, printed",
     ],
     [
+      "grid --density 1e5..1e10,5-per-decade --temperature 1e7,1e8 --composition C12=0.5,O16=0.5 --findings --out judged",
+      "which assumptions are strained, and where",
+    ],
+    [
       "grid --density 1e4..1e9,51-points --temperature 0 --composition Fe56=1 --without ions,radiation --format json",
       "cold electrons in iron",
     ],
@@ -90,6 +102,7 @@ export const gridCommand: Command = command({
       temperature: options.temperature,
       quantities: [...new Set([...names, ...chart])],
       onProgress: progress.report,
+      ...(options.findings ? { findings: regime } : {}),
       ...(options["maximum-points"] === undefined ? {} : { maximumPoints: options["maximum-points"] }),
     };
     const made = evaluated(() => grid(equationOfState, matter, gridOptions), progress.done);
@@ -105,10 +118,19 @@ export const gridCommand: Command = command({
     io.out(
       `${counted(densities, "density", "densities")} x ${counted(temperatures, "temperature", "temperatures")} = ` +
         `${counted(made.rows, "state", "states")} of ${matter.name} in ${timeText(took)}; written in ` +
-        `${timeText(performance.now() - start - took)}\n${list}\n`,
+        `${timeText(performance.now() - start - took)}\n${list}\n${findingsList(made)}`,
     );
   },
 });
+
+/** Findings and at how many points; nothing where none were asked for. */
+function findingsList({ findings, rows }: Grid): string {
+  if (findings === undefined) return "";
+  const head = `Findings among ${counted(rows, "state", "states")}`;
+  if (findings.length === 0) return `${head}: none\n`;
+  const lines = findings.map(({ code, strained, outside }) => [code, String(strained), String(outside)]);
+  return `${head}\n${table([["", "strained", "outside"], ...lines], "lrr")}\n`;
+}
 
 function evaluated<T>(action: () => T, wipe: () => void): T {
   try {

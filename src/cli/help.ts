@@ -27,12 +27,17 @@ const exitCodes = [
   table(
     [
       ["0", "done"],
-      ["1", "refused or failed: outside the domain, too large, a file not written"],
+      ["1", "refused or failed: outside the domain, unstable, too large, not written"],
       ["2", "the request itself is wrong: an option, a number, a nuclide, a composition"],
     ],
     "ll",
   ),
 ].join("\n");
+
+const unstable =
+  "Cold thin matter is not ionised, and cold dense hydrogen and helium are quantum liquids beyond the fits: where the sum " +
+  "of all terms is no stable matter the point is refused (unstable). Near there, and wherever another assumption is " +
+  "strained, fermistate regime says which and by how much.";
 
 /** The help of the program. */
 export function programHelp(commands: readonly Command[]): string {
@@ -47,7 +52,7 @@ export function programHelp(commands: readonly Command[]): string {
     "",
     wrapped(
       "Pressure, energy, entropy and all their derivatives at a density, a temperature and a composition, from one " +
-        "Helmholtz free energy: electrons and positrons at any degeneracy, ideal ions, radiation.",
+        "Helmholtz free energy: electrons and positrons at any degeneracy, ions as a Coulomb liquid or crystal, radiation.",
     ),
     "",
     "Commands",
@@ -101,8 +106,13 @@ export const topics: Readonly<Record<string, () => string>> = {
   },
   conventions: () => {
     const limits = validityOf(whiteDwarfMatter());
+    const ideal = validityOf(whiteDwarfMatter({ coulomb: false })).filter((one) => !limits.includes(one));
     const list = (lines: readonly string[]): string => lines.map((one) => wrapped(one, 78, "  ")).join("\n\n");
-    return `Conventions\n\n${list(conventions)}\n\nWhere the numbers hold\n\n${list(limits)}\n`;
+    return [
+      `Conventions\n\n${list(conventions)}`,
+      `Where the numbers hold\n\n${list([...limits, unstable])}`,
+      `Where they hold with --without coulomb\n\n${list(ideal)}\n`,
+    ].join("\n\n");
   },
   axes: () => `${axisText}\n`,
 };

@@ -1,15 +1,18 @@
-/** The matter that commands speak of: the equation of state without some contributions, and a composition. */
+/** The matter that commands speak of: the equation of state without some of its terms, and a composition. */
 
 import * as z from "zod/mini";
+import type { CoulombPlasmaOptions } from "../coulomb/coulomb-plasma.js";
 import { FermistateError, isFermistateError } from "../errors.js";
 import { type Composition, composition, type NucleonFractions } from "../matter/composition.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { whiteDwarfMatter } from "../white-dwarf-matter.js";
 import type { OptionHelp } from "./command.js";
-import { flag, fractions, wordList } from "./readers.js";
+import { flag, fractions, number, oneOf, wordList } from "./readers.js";
 
-/** Contributions that can be left out. */
-const switches = ["ions", "radiation"] as const;
+/** Terms of the Coulomb plasma that can be left out. */
+const terms = ["polarisation", "exchange", "mixture", "anharmonic"] as const;
+/** All that can be left out. */
+const switches = ["ions", "coulomb", "radiation", ...terms] as const;
 
 /** Options that every command about matter shares. */
 export const matterOptions = {
@@ -23,8 +26,21 @@ export const matterOptions = {
   normalise: { help: "scale the fractions to a sum of 1 instead of refusing another sum", read: flag },
   without: {
     value: "NAME,...",
-    help: `contributions to leave out: ${switches.join(", ")}`,
+    help:
+      "what to leave out: ions (nuclei, with all their Coulomb terms), coulomb (nuclei become an ideal gas), radiation; " +
+      "or single Coulomb terms: polarisation (of the electrons by the ions), exchange (and correlation of the " +
+      "electrons), mixture (corrections to linear mixing), anharmonic (terms of the crystal)",
     read: z.optional(wordList(switches)),
+  },
+  phase: {
+    value: "liquid|crystal",
+    help: "force a phase of the ions, superheated or supercooled too; by default their coupling decides",
+    read: z.optional(oneOf(["liquid", "crystal"])),
+  },
+  "melting-coupling": {
+    value: "NUMBER",
+    help: "coupling Gamma at which the crystal melts, 100 to 300; 175 by default",
+    read: z.optional(number),
   },
 } as const satisfies Record<string, OptionHelp & { read: z.ZodMiniType }>;
 
@@ -33,15 +49,55 @@ export interface MatterChoice {
   readonly composition: NucleonFractions;
   readonly normalise: boolean;
   readonly without: readonly (typeof switches)[number][] | undefined;
+  readonly phase: "liquid" | "crystal" | undefined;
+  readonly "melting-coupling": number | undefined;
 }
 
 /** The equation of state and the composition of a choice. */
 export function matterOf(choice: MatterChoice): { equationOfState: EquationOfState; matter: Composition } {
   const without = choice.without ?? [];
-  return {
-    equationOfState: whiteDwarfMatter({ ions: !without.includes("ions"), radiation: !without.includes("radiation") }),
-    matter: compositionOf(choice),
+  const options = {
+    coulomb: coulombOf(choice),
+    ions: !without.includes("ions"),
+    radiation: !without.includes("radiation"),
   };
+  return { equationOfState: equationOf(options), matter: compositionOf(choice) };
+}
+
+/** The Coulomb terms of a choice; what would have no effect is refused. */
+function coulombOf(choice: MatterChoice): CoulombPlasmaOptions | false {
+  const { without = [], phase, "melting-coupling": meltingCoupling } = choice;
+  const left = terms.filter((name) => without.includes(name));
+  const gone = (["ions", "coulomb"] as const).find((name) => without.includes(name));
+  const refuse = (argument: string, given: unknown, allowed: string): never => {
+    throw new FermistateError("invalid-option", { argument, given, allowed });
+  };
+  if (gone !== undefined) {
+    const allowed = `only with Coulomb terms, which --without ${gone} leaves out`;
+    if (phase !== undefined) refuse("--phase", phase, allowed);
+    if (meltingCoupling !== undefined) refuse("--melting-coupling", meltingCoupling, allowed);
+    if (left[0] !== undefined) refuse("--without", left[0], allowed);
+    return false;
+  }
+  if (phase !== undefined && meltingCoupling !== undefined) {
+    refuse("--melting-coupling", meltingCoupling, "only without --phase, which forces the phase");
+  }
+  return {
+    ...Object.fromEntries(left.map((name) => [name, false])),
+    ...(phase === undefined ? {} : { phase }),
+    ...(meltingCoupling === undefined ? {} : { meltingCoupling }),
+  };
+}
+
+/** The equation of state; a wrong melting coupling bears the name it has on the command line. */
+function equationOf(options: Parameters<typeof whiteDwarfMatter>[0]): EquationOfState {
+  try {
+    return whiteDwarfMatter(options);
+  } catch (error) {
+    if (!isFermistateError(error) || error.argument !== "meltingCoupling") throw error;
+    const { code, given, allowed } = error;
+    throw new FermistateError(code, { argument: "--melting-coupling", given, allowed });
+  }
 }
 
 /** The composition; a wrong sum names the switch of the command line. */

@@ -6,10 +6,11 @@ import type { Command, CommandIo } from "./command.js";
 import { demoCommand } from "./demo-command.js";
 import { gridCommand } from "./grid-command.js";
 import { commandHelp, programHelp, topics } from "./help.js";
+import { regimeCommand } from "./regime-command.js";
 import { stateCommand } from "./state-command.js";
 
 /** All commands, in the order of the help. */
-export const commands: readonly Command[] = [stateCommand, gridCommand, demoCommand];
+export const commands: readonly Command[] = [stateCommand, gridCommand, regimeCommand, demoCommand];
 
 /**
  * Runs the program.

@@ -1,5 +1,8 @@
-/** `fermistate state`: one state, all its quantities in groups, and what each contribution adds. */
+/** `fermistate state`: one state, all its quantities in groups, what each contribution adds, and what is strained. */
+import { regimeOfState } from "../grids/findings.js";
 import { validityOf } from "../grids/validity.js";
+import { type Regime, regime } from "../regime/regime.js";
+import { type Breakdown, breakdown } from "../thermodynamics/breakdown.js";
 import type { EquationOfState, State } from "../thermodynamics/equation-of-state.js";
 import { type QuantityName, quantities, quantityNames } from "../thermodynamics/quantities.js";
 import { libraryVersion } from "../version.js";
@@ -7,7 +10,7 @@ import { type Command, command } from "./command.js";
 import { matterOf, matterOptions } from "./matter.js";
 import { numberText, percentText, shortText, table, wrapped } from "./print.js";
 import { flag, number } from "./readers.js";
-import { type Share, sharesOf } from "./shares.js";
+import { findingsText, kindText, regimeData } from "./regime-text.js";
 
 export const stateCommand: Command = command({
   name: "state",
@@ -15,12 +18,13 @@ export const stateCommand: Command = command({
   usage: "state --density G/CM3 --temperature KELVIN --composition LABEL=X,...",
   options: {
     density: { value: "G/CM3", help: "baryon mass density, g/cm^3", read: number },
-    temperature: { value: "KELVIN", help: "temperature, K; 0 is legal without ions", read: number },
+    temperature: { value: "KELVIN", help: "temperature, K; 0 is legal in crystals and without ions", read: number },
     ...matterOptions,
     json: { help: "print JSON with all digits instead of tables", read: flag },
   },
   examples: [
     ["state --density 2e6 --temperature 1e7 --composition C12=0.5,O16=0.5", "the centre of a white dwarf"],
+    ["state --density 2e6 --temperature 1e6 --composition C12=0.5,O16=0.5", "the same, cold: a crystal"],
     ["state --density 1e4 --temperature 2e9 --composition He4=1 --json", "hot enough for electron-positron pairs"],
     ["state --density 1e6 --temperature 0 --composition Fe56=1 --without ions,radiation", "cold electrons alone"],
   ],
@@ -28,9 +32,9 @@ export const stateCommand: Command = command({
   async run(options, io) {
     const { density, temperature } = options;
     const { equationOfState, matter } = matterOf(options);
-    const state = equationOfState.state(density, temperature, matter);
-    const shares = sharesOf(equationOfState, density, temperature, matter);
-    io.out(options.json ? stateJson(equationOfState, state, shares) : stateText(equationOfState, state, shares));
+    const parts = breakdown(equationOfState, density, temperature, matter);
+    const kind = regimeOfState(regime, equationOfState, parts.state);
+    io.out(options.json ? stateJson(equationOfState, parts, kind) : stateText(equationOfState, parts, kind));
   },
 });
 
@@ -72,6 +76,7 @@ const groups: readonly (readonly [title: string, names: readonly QuantityName[]]
       "ionCoupling",
       "fermiTemperature",
       "ionPlasmaTemperature",
+      "crystalFraction",
     ],
   ],
   [
@@ -88,7 +93,7 @@ const groups: readonly (readonly [title: string, names: readonly QuantityName[]]
 ];
 
 /** The state as text. */
-function stateText(equationOfState: EquationOfState, state: State, shares: readonly Share[]): string {
+function stateText(equationOfState: EquationOfState, { state, shares }: Breakdown, kind: Regime): string {
   const { density, temperature, composition } = state;
   const grouped = new Set(groups.flatMap(([, names]) => names));
   const rest = quantityNames.filter((name) => !grouped.has(name) && state[name] !== undefined);
@@ -104,10 +109,16 @@ function stateText(equationOfState: EquationOfState, state: State, shares: reado
     `electrons per nucleon ${numberText(composition.electronsPerNucleon, 6)}, mean mass number ` +
       `${numberText(composition.meanMassNumber, 6)}, mean charge number ${numberText(composition.meanCharge, 6)}`,
     "",
+    "What kind of matter",
+    kindText(kind),
+    "",
     blocks.join("\n\n"),
     "",
     "Contributions",
     shareTable(shares, state),
+    "",
+    "Findings",
+    findingsText(kind),
     "",
     "Where the numbers hold",
     ...validityOf(equationOfState).map((one) => wrapped(one, 78, "  ")),
@@ -120,7 +131,7 @@ function rowOf(state: State, name: QuantityName): string[] {
   return [name, numberText(state[name]!), unit === "1" ? "" : unit];
 }
 
-function shareTable(shares: readonly Share[], state: State): string {
+function shareTable(shares: Breakdown["shares"], state: State): string {
   const cell = (part: number, whole: number): string[] => [numberText(part, 6), percentText(part, whole)];
   const head = ["", "pressure", "", "specificEnergy", "", "specificEntropy", ""];
   const units = ["", "dyn/cm^2", "", "erg/g", "", "erg/(g K)", ""];
@@ -134,7 +145,7 @@ function shareTable(shares: readonly Share[], state: State): string {
 }
 
 /** The state as JSON text; infinities, which JSON has no number for, as "INF" and "-INF". */
-function stateJson(equationOfState: EquationOfState, state: State, shares: readonly Share[]): string {
+function stateJson(equationOfState: EquationOfState, { state, shares }: Breakdown, kind: Regime): string {
   const { density, temperature, composition } = state;
   const known = quantityNames.filter((name) => state[name] !== undefined);
   const document = {
@@ -148,6 +159,7 @@ function stateJson(equationOfState: EquationOfState, state: State, shares: reado
     temperature: { value: temperature, unit: "K" },
     quantities: Object.fromEntries(known.map((name) => [name, { value: plain(state[name]!), ...quantities[name] }])),
     contributions: shares,
+    regime: regimeData(kind),
     validity: validityOf(equationOfState),
   };
   return `${JSON.stringify(document, null, 2)}\n`;

@@ -25,7 +25,7 @@ import {
 } from "../matter/plasma.js";
 import { addInverseThermal, addThermal, NATURAL_LENGTH, SINGLE_LENGTH } from "../numerics/natural.js";
 import type { Contribution } from "../thermodynamics/contribution.js";
-import { addNaturalDerivatives, type Order } from "../thermodynamics/free-energy.js";
+import { addNaturalDerivatives, type Order, SECOND_ORDER_COUNT } from "../thermodynamics/free-energy.js";
 import { addAnharmonic, addGroundState, addPhonons, phononFit } from "./crystal.js";
 import { addCrystalPolarisation } from "./crystal-polarisation.js";
 import { addExchangeCorrelation } from "./exchange.js";
@@ -77,7 +77,7 @@ export interface CoulombPlasmaOptions {
   readonly lattice?: LatticeName;
   /**
    * Quantum correction of the liquid, or false for a classical liquid.
-   * @defaultValue "two-oscillators", which keeps the heat capacity positive at any temperature
+   * @defaultValue "two-oscillators", whose heat capacity stays within the -3 k of a quantum liquid
    */
   readonly quantum?: QuantumForm | false;
   /**
@@ -309,17 +309,22 @@ function contributionOf(name: string, terms: Terms, options: Required<CoulombPla
         else if (options.freeNeutrons) neutrons.add(point, composition, order, members);
       }
       if (point[ELECTRON_DENSITY] === 0) return; // no charge, no Coulomb terms
-      natural.fill(0);
-      ofGamma.fill(0);
-      ofTheta.fill(0);
-      ofBoth.fill(0);
+      const count = order === 2 ? SECOND_ORDER_COUNT : NATURAL_LENGTH;
+      for (let i = 0; i < count; i++) {
+        natural[i] = 0;
+        ofBoth[i] = 0;
+      }
+      for (let i = 0; i < SINGLE_LENGTH; i++) {
+        ofGamma[i] = 0;
+        ofTheta[i] = 0;
+      }
       if (crystal) addCrystal(order);
       else addLiquid(order);
-      const kT = plasma[POINT_KT]!;
-      if (kT > 0) {
-        addThermal(natural, order, kT, 1 / 3, ofGamma);
-        addThermal(natural, order, kT, 0.5, ofTheta);
-        addInverseThermal(natural, order, kT, ofBoth);
+      if (plasma[POINT_KT]! > 0) {
+        // POINT_KT is slot 0: the record is the scale.
+        if (!crystal) addThermal(natural, order, plasma, 1 / 3, ofGamma);
+        addThermal(natural, order, plasma, 0.5, ofTheta);
+        addInverseThermal(natural, order, plasma, ofBoth);
       }
       if (terms.exchange) addExchangeCorrelation(natural, order, plasma);
       addNaturalDerivatives(members, order, natural);

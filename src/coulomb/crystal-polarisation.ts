@@ -55,6 +55,66 @@ export function addCrystalPolarisation(
   ion: Float64Array,
   species: CoulombSpecies,
 ): void {
+  if (order === 2) addSecondOrder(out, point, ion, species);
+  else addByAlgebra(out, order, point, ion, species);
+}
+
+/**
+ * Order 2 written out, a third of the time of the algebra. With D = rho d/drho: D ln of the energy e = -f_inf E is
+ * (1 - v)/3, v = w/(1 + w), w = b2/x^2; that of A is (2/3)(m - k), m = a3 x^2/(b3 + a3 x^2), k = b4 x^2/(1 + b4 x^2);
+ * that of q^s is s/6; and rho^2 d^2 = D^2 - D.
+ */
+function addSecondOrder(out: Float64Array, point: Float64Array, ion: Float64Array, species: CoulombSpecies): void {
+  const x = point[POINT_X]!;
+  const x2 = x * x;
+  const w = ion[ION_B2]! / x2;
+  const v = w / (1 + w);
+  const e =
+    -species.ionsBoltzmann *
+    ion[ION_X]! *
+    ion[ION_GAMMA]! *
+    point[POINT_CUBE_ROOT]! *
+    ion[ION_F_INF]! *
+    Math.sqrt(1 + w);
+  const slope = (1 - v) / 3;
+  const bend = (2 / 9) * v * (1 - v);
+  const over = ion[ION_B3]! + ion[ION_A3]! * x2;
+  const below = 1 + ion[ION_B4]! * x2;
+  const m = (ion[ION_A3]! * x2) / over;
+  const k = (ion[ION_B4]! * x2) / below;
+  const s = ion[ION_S]!;
+  const g = ((e * over) / below) * Math.exp(s * (ion[ION_LOG_Q]! + point[POINT_LOG_DENSITY]! / 6));
+  const slopeG = slope + (2 / 3) * (m - k) + s / 6;
+  const bendG = bend + (4 / 9) * (m * (1 - m) - k * (1 - k));
+  const g1 = g * slopeG;
+  const g2 = g * (slopeG * slopeG + bendG - slopeG);
+  out[0]! += e + g;
+  out[1]! += e * slope + g1;
+  out[3]! += e * (slope * slope + bend - slope) + g2;
+  if (point[POINT_TEMPERATURE] === 0) return;
+  const theta = point[POINT_ROOT]! * ion[ION_THETA]!;
+  if (0.205 * 0.205 * theta * theta > 800) return; // H = 1 to rounding, and 0 times infinity must not arise
+  fillThermal(2, point, ion);
+  const h0 = thermal[0]!;
+  const h1 = thermal[1]!;
+  const h2 = thermal[2]!;
+  // theta^-1 ~ T rho^(-1/2).
+  out[0]! += g * h0;
+  out[1]! += g1 * h0 - 0.5 * g * h1;
+  out[2]! += g * h1;
+  out[3]! += g2 * h0 - g1 * h1 + g * (0.25 * h2 + 0.75 * h1);
+  out[4]! += g1 * h1 - 0.5 * g * (h1 + h2);
+  out[5]! += g * h2;
+}
+
+/** Any order, by the algebra of natural derivatives; exported to test the other against. */
+export function addByAlgebra(
+  out: Float64Array,
+  order: Order,
+  point: Float64Array,
+  ion: Float64Array,
+  species: CoulombSpecies,
+): void {
   const x = point[POINT_X]!;
   const x2 = x * x;
   const w = ion[ION_B2]! / x2;

@@ -10,15 +10,7 @@
  * 1993, Phys. Rev. E 47, 4330 (classical, Gamma from 170 on), quantum suppression Potekhin & Chabrier 2010, Contrib. Plasma
  * Phys. 50, 82; coefficients from memory, see lattice.ts. Below Gamma = 100 the anharmonic sum is meaningless.
  */
-import {
-  addGround,
-  addScaled,
-  divideSingle,
-  lift,
-  multiply,
-  NATURAL_LENGTH,
-  SINGLE_LENGTH,
-} from "../numerics/natural.js";
+import { addGround, divideSingle, lift, multiply, NATURAL_LENGTH, SINGLE_LENGTH } from "../numerics/natural.js";
 import type { Order } from "../thermodynamics/free-energy.js";
 import { ANHARMONIC_SUPPRESSION, type LatticeConstants } from "./lattice.js";
 import {
@@ -44,6 +36,8 @@ export interface GroundTerms {
   readonly alloy: boolean;
 }
 
+const energy = new Float64Array(1);
+
 /** Adds the ground state of the lattice to the natural derivatives of F. */
 export function addGroundState(
   out: Float64Array,
@@ -54,39 +48,45 @@ export function addGroundState(
 ): void {
   const cubeRoot = point[POINT_CUBE_ROOT]!;
   const electrostatic = (terms.lattice ? species.madelung : 0) + (terms.alloy ? species.alloy : 0);
-  addGround(out, order, electrostatic * cubeRoot, 1 / 3);
-  if (terms.zeroPoint) addGround(out, order, species.zeroPoint * point[POINT_ROOT_DENSITY]!, 0.5);
-  if (terms.anharmonic) addGround(out, order, species.anharmonicGround * cubeRoot * cubeRoot, 2 / 3);
+  energy[0] = electrostatic * cubeRoot;
+  addGround(out, order, energy, 1 / 3);
+  if (terms.zeroPoint) {
+    energy[0] = species.zeroPoint * point[POINT_ROOT_DENSITY]!;
+    addGround(out, order, energy, 0.5);
+  }
+  if (terms.anharmonic) {
+    energy[0] = species.anharmonicGround * cubeRoot * cubeRoot;
+    addGround(out, order, energy, 2 / 3);
+  }
 }
 
 /** The thermal fit of a lattice with the coefficients of its derivatives: theta^k d^k/dtheta^k multiplies by n!/(n-k)!. */
 export interface PhononFit {
   /** alpha_1 ... alpha_3. */
   readonly exponents: Float64Array;
-  /** Coefficients of theta^k A^(k), k = 0..4. */
-  readonly numerator: readonly Float64Array[];
-  /** Coefficients of theta^k B^(k). */
-  readonly denominator: readonly Float64Array[];
+  /**
+   * Coefficients of theta^n, ten per power: theta^k A^(k) and theta^k B^(k) in turn for k = 0..4. Side by side, so that their
+   * sums run in one loop and do not wait for each other.
+   */
+  readonly coefficients: Float64Array;
   /** alpha_8. */
   readonly alpha8: number;
 }
 
+const STRIDE = 10;
+
 /** The fit of a lattice, prepared for {@link addPhonons}. */
 export function phononFit(lattice: LatticeConstants): PhononFit {
-  const falling = (coefficients: readonly number[]): Float64Array[] =>
-    Array.from({ length: 5 }, (_, k) =>
-      Float64Array.from(coefficients, (c, n) => {
-        let value = c;
-        for (let m = 0; m < k; m++) value *= n - m;
-        return value;
-      }),
-    );
-  return {
-    exponents: Float64Array.from(lattice.exponents),
-    numerator: falling(lattice.numerator),
-    denominator: falling(lattice.denominator),
-    alpha8: lattice.alpha8,
-  };
+  const coefficients = new Float64Array(STRIDE * lattice.denominator.length);
+  for (let n = 0; n < lattice.denominator.length; n++) {
+    let falling = 1; // n!/(n - k)!
+    for (let k = 0; k < 5; k++) {
+      coefficients[STRIDE * n + 2 * k] = falling * (lattice.numerator[n] ?? 0);
+      coefficients[STRIDE * n + 2 * k + 1] = falling * lattice.denominator[n]!;
+      falling *= n - k;
+    }
+  }
+  return { exponents: Float64Array.from(lattice.exponents), coefficients, alpha8: lattice.alpha8 };
 }
 
 const top = new Float64Array(SINGLE_LENGTH);
@@ -117,16 +117,42 @@ export function addPhonons(
     }
     return;
   }
-  const highest = order === 3 ? 4 : 2;
-  for (let k = 0; k <= highest; k++) {
-    const a = fit.numerator[k]!;
-    const b = fit.denominator[k]!;
-    let over = 0;
-    let under = 0;
-    for (let n = a.length - 1; n >= 0; n--) over = over * theta + a[n]!;
-    for (let n = b.length - 1; n >= 0; n--) under = under * theta + b[n]!;
-    top[k] = over;
-    bottom[k] = under;
+  const c = fit.coefficients;
+  let a0 = 0;
+  let a1 = 0;
+  let a2 = 0;
+  let b0 = 0;
+  let b1 = 0;
+  let b2 = 0;
+  for (let i = c.length - 10; i >= 0; i -= 10) {
+    a0 = a0 * theta + c[i]!;
+    b0 = b0 * theta + c[i + 1]!;
+    a1 = a1 * theta + c[i + 2]!;
+    b1 = b1 * theta + c[i + 3]!;
+    a2 = a2 * theta + c[i + 4]!;
+    b2 = b2 * theta + c[i + 5]!;
+  }
+  top[0] = a0;
+  top[1] = a1;
+  top[2] = a2;
+  bottom[0] = b0;
+  bottom[1] = b1;
+  bottom[2] = b2;
+  if (order === 3) {
+    let a3 = 0;
+    let a4 = 0;
+    let b3 = 0;
+    let b4 = 0;
+    for (let i = c.length - 10; i >= 0; i -= 10) {
+      a3 = a3 * theta + c[i + 6]!;
+      b3 = b3 * theta + c[i + 7]!;
+      a4 = a4 * theta + c[i + 8]!;
+      b4 = b4 * theta + c[i + 9]!;
+    }
+    top[3] = a3;
+    top[4] = a4;
+    bottom[3] = b3;
+    bottom[4] = b4;
   }
   divideSingle(top, order, top, bottom);
   u[0]! -= weight * top[0]!;
@@ -209,5 +235,7 @@ export function addAnharmonic(
   lift(first, order, 1 / 3, ofGamma);
   lift(second, order, 0.5, ofTheta);
   multiply(first, order, first, second);
-  addScaled(f, order, ion[ION_X]!, first);
+  const weight = ion[ION_X]!;
+  const count = order === 2 ? 6 : NATURAL_LENGTH;
+  for (let i = 0; i < count; i++) f[i]! += weight * first[i]!;
 }

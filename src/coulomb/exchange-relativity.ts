@@ -10,7 +10,6 @@
  *
  * With D = x d/dx: D y = 2x/sqrt(1 + x^2) - 2 y.
  */
-import { horner } from "../numerics/natural.js";
 import { POINT_X } from "./slots.js";
 
 /** y/x in powers of x^2: 2 binomial(-1/2, n)/(2n + 3). At x = 0.25 the first term left out is 1e-17 of the sum. */
@@ -26,7 +25,9 @@ export function exchangeRelativity(out: Float64Array, order: 2 | 3, point: Float
   let y: number;
   let y1: number; // D y, as are y2 and y3 of second and third order
   if (x < 0.25) {
-    y = x * horner(series, x2);
+    y = 0;
+    for (let n = series.length - 1; n >= 0; n--) y = y * x2 + series[n]!;
+    y *= x;
     y1 = slope - 2 * y;
   } else {
     const log = Math.log(x + energy);

@@ -13,9 +13,10 @@ import { ION_THETA, ION_X, POINT_ROOT } from "./slots.js";
  * Adds x_j f(theta_j) of one species, f = sum g_i [x_i/2 + ln(1 - exp(-x_i)) - ln x_i], x_i = w_i theta, i = 1, 2.
  *
  * Own form: two oscillators per ion, three in number (g_1 + g_2 = 3) and with g_1 w_1^2 + g_2 w_2^2 = 1, so theta^2/24 is
- * exact; fitted to {@link addBaikoYakovlev}, whose energy it follows to 0.17 % for theta <= 11 and 0.5 % at 12. Stable
- * for every theta: the heat capacity falls to -3 k, which takes away the classical one, never below; the zero-point
- * energy is 0.749 hbar omega_p, 2.4 % below that of the bcc crystal. Beyond theta = 12 it extrapolates.
+ * exact; fitted to {@link addBaikoYakovlev}, whose energy it follows to 0.17 % for theta <= 11 and 0.5 % at 12. Its
+ * heat capacity falls to -3 k and never below, so the liquid's stays positive where the classical ions have 3 k (Gamma
+ * above about 100) and turns negative in weakly coupled matter beyond theta = 15, which is refused as unstable. The
+ * zero-point energy is 0.749 hbar omega_p, 2.4 % below that of the bcc crystal. Beyond theta = 12 it extrapolates.
  * Rounding, worst at theta = 1: 8e-15 of each member up to the second, third 2e-13, fourth 1e-12.
  *
  * @param u - natural members in theta, u[k] += x_j theta^k f^(k), and the entropy u[5] += x_j (theta f' - f)
@@ -30,10 +31,20 @@ export function addTwoOscillators(u: Float64Array, order: 2 | 3, point: Float64A
     // One series in theta^2 for both: the closed form loses theta^2 of its digits.
     const y = theta * theta;
     const c = x * y;
-    u[0]! += c * horner(series.value, y);
-    u[1]! += c * horner(series.first, y);
-    u[2]! += c * horner(series.second, y);
-    u[5]! += c * horner(series.entropy, y);
+    let value = 0;
+    let first = 0;
+    let second = 0;
+    let entropy = 0;
+    for (let n = series.value.length - 1; n >= 0; n--) {
+      value = value * y + series.value[n]!;
+      first = first * y + series.first[n]!;
+      second = second * y + series.second[n]!;
+      entropy = entropy * y + series.entropy[n]!;
+    }
+    u[0]! += c * value;
+    u[1]! += c * first;
+    u[2]! += c * second;
+    u[5]! += c * entropy;
     if (order === 2) return;
     u[3]! += c * horner(series.third, y);
     u[4]! += c * horner(series.fourth, y);

@@ -5,8 +5,8 @@
  * melts at 175.17 with the free energies of this library; Potekhin & Chabrier 2000 give 175.0 +- 0.4). For mixtures one
  * number stands for a phase diagram, and polarisation would move it by more than it is known: so it is a parameter.
  * Quantum melting: no bcc crystal exists where R_S = (M/m_e) Z^(7/3) r_s is below about 160 (Ceperley & Alder 1980, Phys.
- * Rev. Lett. 45, 566; Jones & Ceperley 1996, ibid. 76, 4572; from memory): hydrogen never freezes, helium not above 6e7
- * g/cm^3. R_S falls with density, so the rule sets a highest density of the crystal.
+ * Rev. Lett. 45, 566; Jones & Ceperley 1996, ibid. 76, 4572; from memory): no hydrogen crystal
+ * above 4.0e3 g/cm^3, no helium crystal above 6.5e7. R_S falls with density, so the rule sets a highest density.
  */
 import { type Composition, requireComposition } from "../matter/composition.js";
 import { bcc } from "./lattice.js";
@@ -22,7 +22,7 @@ export const defaultMeltingCoupling = 175;
 export const quantumMeltingLimit = 160;
 
 /** Mean of R_S = 3 (Gamma/theta)^2 over the charged nuclei at rho = 1 g/cm^3; it falls like rho^(-1/3). */
-export function quantumRadius(composition: Composition): number {
+function quantumRadius(composition: Composition): number {
   const { ions } = coulombSpecies(composition, bcc);
   let sum = 0;
   let share = 0;

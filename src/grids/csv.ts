@@ -68,6 +68,10 @@ export function gridToCsvMetadata(grid: Grid, csvName: string, texts: GridTexts 
       property("electrons per nucleon", grid.composition.electronsPerNucleon, "1"),
       property("mean mass number of the nuclei", grid.composition.meanMassNumber, "1"),
       property("mean charge number of the nuclei", grid.composition.meanCharge, "1"),
+      ...(grid.findings ?? []).flatMap(({ code, strained, outside }) => [
+        property(`points where ${code} is strained`, strained, "1"),
+        property(`points where ${code} is outside its range`, outside, "1"),
+      ]),
     ],
     dialect: { encoding: "utf-8", delimiter: ",", header: true, headerRowCount: 1, lineTerminators: ["\r\n"] },
     tableSchema: {

@@ -4,36 +4,25 @@
  * Row r = i_T n_rho + i_rho: the densities of the lowest temperature, then those of the next. An isotherm is one
  * temperature; a single density is legal too. Every number is what `state` gives at that point, to the last bit.
  */
-import { FermistateError, isFermistateError, requireFinite } from "../errors.js";
+import { FermistateError, isFermistateError } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import type { Domain } from "../thermodynamics/contribution.js";
-import { holds, refusePoint } from "../thermodynamics/domain.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
-import { optionalQuantities, type QuantityName, quantities, quantityNames } from "../thermodynamics/quantities.js";
+import { type QuantityName, quantities } from "../thermodynamics/quantities.js";
 import { libraryVersion } from "../version.js";
 import { type Axis, axisOf } from "./axes.js";
-import { nearestWord } from "./nearest.js";
+import { type FindingCount, type FindingsColumn, findingsColumns, findingsCounter } from "./findings.js";
+import {
+  checkAvailable,
+  checkDomain,
+  checkEquationOfState,
+  checkOptions,
+  checkQuantities,
+  checkSize,
+  errorAt,
+  type GridOptions,
+} from "./request.js";
 import { isIdeal, validityOf } from "./validity.js";
-
-/** Options of {@link grid}. */
-export interface GridOptions {
-  /** Baryon mass densities, g/cm^3: an axis, a list of increasing numbers, or one number. */
-  readonly density: Axis | ArrayLike<number> | number;
-  /** Temperatures, K: an axis, a list of increasing numbers, or one number. */
-  readonly temperature: Axis | ArrayLike<number> | number;
-  /**
-   * Quantities, in the order of the columns.
-   * @defaultValue pressure, specificEnergy, specificEntropy, heatCapacityV, chiRho, chiT, gamma1, adiabaticGradient,
-   * soundSpeed and, where a contribution knows it, electronDegeneracy
-   */
-  readonly quantities?: readonly QuantityName[];
-  /** Most points. @defaultValue 1e7 */
-  readonly maximumPoints?: number;
-  /** Most numbers in all columns together, 8 bytes each. @defaultValue 1.5e8 (1.2 GB) */
-  readonly maximumCells?: number;
-  /** Called after every few thousand points with the number of points done and of all; may throw to stop. */
-  readonly onProgress?: (done: number, total: number) => void;
-}
 
 /** Columns of a {@link Grid}, all of the same length: one row per point. */
 export type GridColumns = {
@@ -41,10 +30,10 @@ export type GridColumns = {
   readonly density: Float64Array;
   /** Temperature, K. */
   readonly temperature: Float64Array;
-} & { readonly [Name in QuantityName]?: Float64Array };
+} & { readonly [Name in QuantityName | FindingsColumn]?: Float64Array };
 
-/** Name of a column: a quantity, or one of the two axes. */
-export type ColumnName = "density" | "temperature" | QuantityName;
+/** Name of a column: one of the two axes, a quantity, or a number of findings. */
+export type ColumnName = "density" | "temperature" | QuantityName | FindingsColumn;
 
 /**
  * An evaluated grid. The object is frozen; its Float64Arrays cannot be, so treat them as read-only.
@@ -58,7 +47,7 @@ export interface Grid {
   readonly rows: number;
   /** The axes. */
   readonly axes: { readonly density: Axis; readonly temperature: Axis };
-  /** Names of all columns in order: density, temperature, then the quantities. */
+  /** Names of all columns in order: density, temperature, the quantities, the numbers of findings if asked for. */
   readonly columnNames: readonly ColumnName[];
   /** The columns by name. */
   readonly columns: GridColumns;
@@ -76,6 +65,8 @@ export interface Grid {
   readonly validity: readonly string[];
   /** True for electrons and nuclei without interactions. */
   readonly ideal: boolean;
+  /** Findings met and at how many points, in the order they were met; undefined where none were asked for. */
+  readonly findings: readonly FindingCount[] | undefined;
   /** Version of this library. */
   readonly libraryVersion: string;
 }
@@ -96,6 +87,8 @@ export const defaultQuantities: readonly QuantityName[] = [
 
 /** Rows between two reports of progress: long enough to cost nothing, short enough (some 20 ms) to look alive. */
 const chunk = 4096;
+/** The same where points are judged too, which takes much longer. */
+const judgedChunk = 256;
 
 /**
  * Evaluates an equation of state over density and temperature.
@@ -130,13 +123,22 @@ export function grid(equationOfState: EquationOfState, composition: Composition,
   const shape = [temperature.values.length, density.values.length] as const;
   const rows = shape[0] * shape[1];
   const asked = names ?? defaultQuantities;
-  checkSize(rows, asked.length + 2, options);
+  const judge = options.findings && findingsCounter(options.findings, equationOfState, composition);
+  const counts = judge === undefined ? [] : findingsColumns;
+  checkSize(rows, 2 + asked.length + counts.length, options);
   checkDomain(equationOfState, density.values, temperature.values);
-  const columnNames = checkAvailable(equationOfState, composition, density, temperature, asked, names !== undefined);
+  const found = checkAvailable(equationOfState, composition, density, temperature, asked, names !== undefined);
+  const columnNames: ColumnName[] = ["density", "temperature", ...found, ...counts];
 
   const columns = allocate(columnNames, rows);
   fillAxes(columns, density.values, temperature.values);
-  fillQuantities(equationOfState, composition, columns, columnNames, options.onProgress);
+  const step = judge === undefined ? chunk : judgedChunk;
+  for (let start = 0; start < rows; start += step) {
+    const end = Math.min(start + step, rows);
+    fillQuantities(equationOfState, composition, columns, found, start, end);
+    judge?.count(columns, start, end);
+    options.onProgress?.(end, rows);
+  }
   const units = Object.fromEntries(columnNames.map((name) => [name, columnOf(name).unit]));
   return Object.freeze({
     shape: Object.freeze(shape),
@@ -152,6 +154,7 @@ export function grid(equationOfState: EquationOfState, composition: Composition,
     domain: equationOfState.domain,
     validity: Object.freeze(validityOf(equationOfState)),
     ideal: isIdeal(equationOfState.contributions),
+    findings: judge?.met(),
     libraryVersion,
   });
 }
@@ -160,6 +163,8 @@ export function grid(equationOfState: EquationOfState, composition: Composition,
 export function columnOf(name: ColumnName): { readonly unit: string; readonly description: string } {
   if (name === "density") return { unit: "g/cm^3", description: "baryon mass density rho = n_B m_u" };
   if (name === "temperature") return { unit: "K", description: "temperature T" };
+  if (name === "findingsStrained") return { unit: "1", description: "number of assumptions that are strained here" };
+  if (name === "findingsOutside") return { unit: "1", description: "number of assumptions that do not hold here" };
   return quantities[name];
 }
 
@@ -180,32 +185,29 @@ function fillAxes(columns: GridColumns, densities: readonly number[], temperatur
   }
 }
 
+/** Fills rows `start` to `end` of the quantities. */
 function fillQuantities(
   equationOfState: EquationOfState,
   composition: Composition,
   columns: Record<ColumnName, Float64Array>,
-  names: readonly ColumnName[],
-  onProgress: GridOptions["onProgress"],
+  names: readonly QuantityName[],
+  start: number,
+  end: number,
 ): void {
-  const rows = columns.density.length;
-  for (let start = 0; start < rows; start += chunk) {
-    const end = Math.min(start + chunk, rows);
-    const part = (name: ColumnName): Float64Array => columns[name].subarray(start, end);
-    const output = Object.fromEntries(names.slice(2).map((name) => [name, part(name)]));
-    const input = { density: part("density"), temperature: part("temperature"), composition };
-    try {
-      equationOfState.evaluate(input, output);
-    } catch (error) {
-      throw located(error, columns, start);
-    }
-    for (const [name, column] of Object.entries(output)) {
-      // -1 unless there is a NaN, which no column may hold whoever wrote the equation of state.
-      const bad = column.findIndex(Number.isNaN);
-      if (bad < 0) continue;
-      const details = { argument: name, given: Number.NaN, allowed: "a number from the equation of state", index: bad };
-      throw located(new FermistateError("not-a-number", details), columns, start);
-    }
-    onProgress?.(end, rows);
+  const part = (name: ColumnName): Float64Array => columns[name].subarray(start, end);
+  const output = Object.fromEntries(names.map((name) => [name, part(name)]));
+  const input = { density: part("density"), temperature: part("temperature"), composition };
+  try {
+    equationOfState.evaluate(input, output);
+  } catch (error) {
+    throw located(error, columns, start);
+  }
+  for (const [name, column] of Object.entries(output)) {
+    // -1 unless there is a NaN, which no column may hold whoever wrote the equation of state.
+    const bad = column.findIndex(Number.isNaN);
+    if (bad < 0) continue;
+    const details = { argument: name, given: Number.NaN, allowed: "a number from the equation of state", index: bad };
+    throw located(new FermistateError("not-a-number", details), columns, start);
   }
 }
 
@@ -213,97 +215,5 @@ function fillQuantities(
 function located(error: unknown, columns: GridColumns, start: number): unknown {
   if (!isFermistateError(error) || error.index === undefined) return error;
   const index = start + error.index;
-  const at = `at density ${columns.density[index]} g/cm^3, temperature ${columns.temperature[index]} K`;
-  const { code, argument, given, allowed } = error;
-  return new FermistateError(code, { argument, given, allowed: `${allowed}; ${at}`, index });
-}
-
-const known = ["density", "temperature", "quantities", "maximumPoints", "maximumCells", "onProgress"];
-
-function checkOptions(options: GridOptions): void {
-  const allowed = `an object with density, temperature and perhaps ${known.slice(2).join(", ")}`;
-  if (typeof options !== "object" || options === null) throw invalid("options", options, allowed);
-  for (const name of Object.keys(options)) {
-    if (!known.includes(name)) throw invalid("options", name, allowed);
-  }
-  if (options.onProgress !== undefined && typeof options.onProgress !== "function") {
-    throw invalid("onProgress", options.onProgress, "a function of (done, total)");
-  }
-}
-
-function checkEquationOfState(given: EquationOfState): void {
-  const allowed = "an equation of state, such as whiteDwarfMatter() or combine(...)";
-  const good = typeof given?.evaluate === "function" && typeof given.state === "function" && Boolean(given.domain);
-  if (!good || !Array.isArray(given.contributions)) throw invalid("equationOfState", given, allowed);
-}
-
-function checkQuantities(names: readonly QuantityName[] | undefined): readonly QuantityName[] | undefined {
-  if (names === undefined) return undefined;
-  if (!Array.isArray(names) || names.length === 0) {
-    throw invalid("quantities", names, "a list of at least one name of quantityNames");
-  }
-  const seen = new Set<string>();
-  for (const name of names as readonly unknown[]) {
-    if (typeof name !== "string" || !Object.hasOwn(quantities, name)) throw unknownQuantity(name);
-    if (seen.has(name)) throw invalid("quantities", `${name} twice`, "each quantity once");
-    seen.add(name);
-  }
-  return [...names];
-}
-
-function unknownQuantity(name: unknown): FermistateError {
-  const near = typeof name === "string" ? nearestWord(name, quantityNames) : undefined;
-  const allowed = `${near === undefined ? "" : `perhaps ${near}; `}one of ${quantityNames.join(", ")}`;
-  return new FermistateError("unavailable-quantity", { argument: "quantities", given: name, allowed });
-}
-
-function checkSize(rows: number, width: number, options: GridOptions): void {
-  const points = requireLimit("maximumPoints", options.maximumPoints ?? 1e7);
-  const cells = requireLimit("maximumCells", options.maximumCells ?? 1.5e8);
-  if (rows > points) {
-    const allowed = `at most ${points} (maximumPoints)`;
-    throw new FermistateError("too-large", { argument: "points", given: rows, allowed });
-  }
-  if (rows * width > cells) {
-    const allowed = `at most ${cells} numbers in ${width} columns (maximumCells)`;
-    throw new FermistateError("too-large", { argument: "points", given: rows, allowed });
-  }
-}
-
-function requireLimit(argument: string, value: unknown): number {
-  const limit = requireFinite(argument, value, "a finite number >= 1");
-  if (limit >= 1) return limit;
-  throw new FermistateError("out-of-range", { argument, given: limit, allowed: "a finite number >= 1" });
-}
-
-/** The domain is a rectangle and perhaps T = 0, so every axis value is checked once, not every point. */
-function checkDomain(eos: EquationOfState, densities: readonly number[], temperatures: readonly number[]): void {
-  const [density] = densities as readonly [number];
-  const temperature = temperatures.at(-1)!;
-  for (const rho of densities)
-    if (!holds(eos.domain, rho, temperature)) refusePoint(eos.contributions, rho, temperature);
-  for (const t of temperatures) if (!holds(eos.domain, density, t)) refusePoint(eos.contributions, density, t);
-}
-
-/** Names of the columns; electron quantities are left out of the default, and refused when asked for by name. */
-function checkAvailable(
-  equationOfState: EquationOfState,
-  composition: Composition,
-  density: Axis,
-  temperature: Axis,
-  names: readonly QuantityName[],
-  byName: boolean,
-): ColumnName[] {
-  const probe = equationOfState.state(density.values[0]!, temperature.values[0]!, composition);
-  const missing = names.filter((name) => optionalQuantities.includes(name) && probe[name] === undefined);
-  const [first] = missing;
-  if (byName && first !== undefined) {
-    const allowed = "quantities that a contribution provides; this one needs the electron gas";
-    throw new FermistateError("unavailable-quantity", { argument: "quantities", given: first, allowed });
-  }
-  return ["density", "temperature", ...names.filter((name) => !missing.includes(name))];
-}
-
-function invalid(argument: string, given: unknown, allowed: string): FermistateError {
-  return new FermistateError("invalid-option", { argument, given, allowed });
+  return errorAt(error, index, columns.density[index]!, columns.temperature[index]!);
 }

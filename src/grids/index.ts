@@ -14,5 +14,7 @@ export {
 } from "./axes.js";
 export { csvMetadataName, gridToCsv, gridToCsvMetadata, gridToCsvPieces } from "./csv.js";
 export type { GridTexts } from "./description.js";
-export { type ColumnName, type Grid, type GridColumns, type GridOptions, grid } from "./grid.js";
+export type { FindingCount, FindingsColumn } from "./findings.js";
+export { type ColumnName, type Grid, type GridColumns, grid } from "./grid.js";
 export { gridToJson, gridToJsonPieces } from "./json.js";
+export type { GridOptions } from "./request.js";

@@ -46,6 +46,7 @@ export function* gridToJsonPieces(grid: Grid, texts: GridTexts = {}): Generator<
     },
     conventions,
     validity: grid.validity,
+    ...(grid.findings === undefined ? {} : { findings: grid.findings }),
     infinities: 'values beyond all numbers are the strings "INF" and "-INF"',
     rows: orderOfRows,
     order: grid.order,

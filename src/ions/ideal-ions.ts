@@ -42,6 +42,9 @@ const neutronConstant = (): number => 1.5 * Math.log(atomicMassConstant / nuclid
 /** (2 pi hbar^2/(m_u k))^(3/2): the volume lambda^3 of one atomic mass unit at 1 K, cm^3 K^(3/2). */
 const thermalVolume = ((2 * Math.PI * reducedPlanckConstant ** 2) / (atomicMassConstant * boltzmannConstant)) ** 1.5;
 
+/** Scratch: species per gram and entropy constant of those that count. Variables set by a branch would be boxed. */
+const counted = new Float64Array(2);
+
 /**
  * The ideal gas of nuclei as a contribution, F = sum_i N_i kT [ln(n_i lambda_i^3/g_i) - 1] in erg/g.
  *
@@ -63,12 +66,18 @@ export function idealIons(options: IdealIonsOptions = {}): Contribution {
     domain: Object.freeze({ density: [1e-20, 1e18], temperature: [1, 1e13], zeroTemperature: false } as const),
     add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void {
       const temperature = point[TEMPERATURE]!;
-      let perGram = freeNeutrons ? composition.ionsPerGram : composition.chargedIonsPerGram;
-      let constant = freeNeutrons ? composition.ionEntropyConstant : composition.chargedIonEntropyConstant;
       if (only !== undefined) {
-        perGram = composition.ionsPerGram - composition.chargedIonsPerGram;
-        constant = ofNeutrons;
+        counted[0] = composition.ionsPerGram - composition.chargedIonsPerGram;
+        counted[1] = ofNeutrons;
+      } else if (freeNeutrons) {
+        counted[0] = composition.ionsPerGram;
+        counted[1] = composition.ionEntropyConstant;
+      } else {
+        counted[0] = composition.chargedIonsPerGram;
+        counted[1] = composition.chargedIonEntropyConstant;
       }
+      const perGram = counted[0]!;
+      const constant = counted[1]!;
       if (perGram === 0) return;
       const energy = perGram * boltzmannConstant * temperature; // N kT, erg/g
       const volume = thermalVolume / (temperature * Math.sqrt(temperature));

@@ -5,7 +5,8 @@
  *
  * and functions of one variable as u[k] = v^k d^k u/dv^k, k = 0..2 (order 2) or 0..4 (order 3). The eleven are closed
  * under products, quotients and composition, so order 3 with (2,2) needs no fourth-order numbers in two variables.
- * Nothing here is a difference of logarithmic derivatives, and nothing allocates: results go into the caller's arrays.
+ * Nothing here is a difference of logarithmic derivatives, and results go into the caller's arrays. What is called at
+ * order 2 takes its numbers from records (`scale`): a double that crosses a call may be boxed.
  */
 
 /** Numbers of a function of two variables. */
@@ -58,11 +59,27 @@ export function lift(out: Float64Array, order: Order, a: number, u: Float64Array
 
 /** out = a b by Leibniz' rule; out may be a or b. */
 export function multiply(out: Float64Array, order: Order, a: Float64Array, b: Float64Array): void {
-  const [a0, a1, a2, a3, a4, a5] = [a[0]!, a[1]!, a[2]!, a[3]!, a[4]!, a[5]!];
-  const [b0, b1, b2, b3, b4, b5] = [b[0]!, b[1]!, b[2]!, b[3]!, b[4]!, b[5]!];
+  const a0 = a[0]!;
+  const a1 = a[1]!;
+  const a2 = a[2]!;
+  const a3 = a[3]!;
+  const a4 = a[4]!;
+  const a5 = a[5]!;
+  const b0 = b[0]!;
+  const b1 = b[1]!;
+  const b2 = b[2]!;
+  const b3 = b[3]!;
+  const b4 = b[4]!;
+  const b5 = b[5]!;
   if (order === 3) {
-    const [a6, a7, a8, a9] = [a[6]!, a[7]!, a[8]!, a[9]!];
-    const [b6, b7, b8, b9] = [b[6]!, b[7]!, b[8]!, b[9]!];
+    const a6 = a[6]!;
+    const a7 = a[7]!;
+    const a8 = a[8]!;
+    const a9 = a[9]!;
+    const b6 = b[6]!;
+    const b7 = b[7]!;
+    const b8 = b[8]!;
+    const b9 = b[9]!;
     out[10] = a0 * b[10]! + a[10]! * b0 + 2 * (a1 * b8 + a8 * b1 + a2 * b7 + a7 * b2) + a3 * b5 + a5 * b3 + 4 * a4 * b4;
     out[6] = a0 * b6 + 3 * (a1 * b3 + a3 * b1) + a6 * b0;
     out[7] = a0 * b7 + 2 * (a1 * b4 + a4 * b1) + a2 * b3 + a3 * b2 + a7 * b0;
@@ -80,7 +97,11 @@ export function multiply(out: Float64Array, order: Order, a: Float64Array, b: Fl
 /** out = a/b: the product rule solved term by term; out may be a or b. */
 export function divide(out: Float64Array, order: Order, a: Float64Array, b: Float64Array): void {
   const r = 1 / b[0]!;
-  const [b1, b2, b3, b4, b5] = [b[1]!, b[2]!, b[3]!, b[4]!, b[5]!];
+  const b1 = b[1]!;
+  const b2 = b[2]!;
+  const b3 = b[3]!;
+  const b4 = b[4]!;
+  const b5 = b[5]!;
   const q0 = a[0]! * r;
   const q1 = (a[1]! - q0 * b1) * r;
   const q2 = (a[2]! - q0 * b2) * r;
@@ -88,7 +109,10 @@ export function divide(out: Float64Array, order: Order, a: Float64Array, b: Floa
   const q4 = (a[4]! - q0 * b4 - q1 * b2 - q2 * b1) * r;
   const q5 = (a[5]! - q0 * b5 - 2 * q2 * b2) * r;
   if (order === 3) {
-    const [b6, b7, b8, b9] = [b[6]!, b[7]!, b[8]!, b[9]!];
+    const b6 = b[6]!;
+    const b7 = b[7]!;
+    const b8 = b[8]!;
+    const b9 = b[9]!;
     const q6 = (a[6]! - q0 * b6 - 3 * (q1 * b3 + q3 * b1)) * r;
     const q7 = (a[7]! - q0 * b7 - 2 * (q1 * b4 + q4 * b1) - q2 * b3 - q3 * b2) * r;
     const q8 = (a[8]! - q0 * b8 - 2 * (q2 * b4 + q4 * b2) - q1 * b5 - q5 * b1) * r;
@@ -110,8 +134,14 @@ export function divide(out: Float64Array, order: Order, a: Float64Array, b: Floa
 
 /** out = r(rho) a, r a function of density alone with r[i] = rho^i d^i r/d rho^i; out may be a. */
 export function multiplyDensity(out: Float64Array, order: Order, r: Float64Array, a: Float64Array): void {
-  const [r0, r1, r2] = [r[0]!, r[1]!, r[2]!];
-  const [a0, a1, a2, a4, a5] = [a[0]!, a[1]!, a[2]!, a[4]!, a[5]!];
+  const r0 = r[0]!;
+  const r1 = r[1]!;
+  const r2 = r[2]!;
+  const a0 = a[0]!;
+  const a1 = a[1]!;
+  const a2 = a[2]!;
+  const a4 = a[4]!;
+  const a5 = a[5]!;
   if (order === 3) {
     const a3 = a[3]!;
     const a8 = a[8]!;
@@ -136,10 +166,11 @@ export function addScaled(out: Float64Array, order: Order, s: number, a: Float64
 }
 
 /**
- * Free energy kT u(v) with v proportional to rho^a/T, added to the natural derivatives of F in (rho, T).
+ * Free energy kT u(v), kT = scale[0], with v proportional to rho^a/T, added to the natural derivatives of F in (rho, T).
  * u[5] is v u' - u, the entropy over k: the one member that would cancel, so the caller hands it over.
  */
-export function addThermal(out: Float64Array, order: Order, kT: number, a: number, u: Float64Array): void {
+export function addThermal(out: Float64Array, order: Order, scale: Float64Array, a: number, u: Float64Array): void {
+  const kT = scale[0]!;
   const a1 = a * (a - 1);
   const aa = a * a;
   const u1 = u[1]!;
@@ -160,8 +191,9 @@ export function addThermal(out: Float64Array, order: Order, kT: number, a: numbe
   out[10]! += kT * (aa * (2 * u2 + 4 * u3 + u[4]!) + a1 * twice);
 }
 
-/** Free energy kT f(rho, 1/T), added to the natural derivatives of F in (rho, T). */
-export function addInverseThermal(out: Float64Array, order: Order, kT: number, f: Float64Array): void {
+/** Free energy kT f(rho, 1/T), kT = scale[0], added to the natural derivatives of F in (rho, T). */
+export function addInverseThermal(out: Float64Array, order: Order, scale: Float64Array, f: Float64Array): void {
+  const kT = scale[0]!;
   out[0]! += kT * f[0]!;
   out[1]! += kT * f[1]!;
   out[2]! += kT * (f[0]! - f[2]!);
@@ -176,8 +208,9 @@ export function addInverseThermal(out: Float64Array, order: Order, kT: number, f
   out[10]! += kT * f[10]!;
 }
 
-/** Energy e rho^p, independent of temperature, added to the natural derivatives of F. */
-export function addGround(out: Float64Array, order: Order, energy: number, p: number): void {
+/** Energy scale[0] = e rho^p, independent of temperature, added to the natural derivatives of F. */
+export function addGround(out: Float64Array, order: Order, scale: Float64Array, p: number): void {
+  const energy = scale[0]!;
   const p2 = p * (p - 1);
   out[0]! += energy;
   out[1]! += energy * p;
@@ -187,8 +220,12 @@ export function addGround(out: Float64Array, order: Order, energy: number, p: nu
 
 /** One variable: out = a b; out may be a or b. */
 export function multiplySingle(out: Float64Array, order: Order, a: Float64Array, b: Float64Array): void {
-  const [a0, a1, a2] = [a[0]!, a[1]!, a[2]!];
-  const [b0, b1, b2] = [b[0]!, b[1]!, b[2]!];
+  const a0 = a[0]!;
+  const a1 = a[1]!;
+  const a2 = a[2]!;
+  const b0 = b[0]!;
+  const b1 = b[1]!;
+  const b2 = b[2]!;
   if (order === 3) {
     const a3 = a[3]!;
     const b3 = b[3]!;

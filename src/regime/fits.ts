@@ -5,6 +5,7 @@
  * well founded. Ranges and reasons stand beside each judgement. Species below 1e-3 of the nuclei are left out.
  */
 
+import { alloyDeviation } from "../coulomb/mixing.js";
 import { defaultMeltingCoupling, type Phase, quantumMeltingLimit } from "../coulomb/phase.js";
 import type { Composition } from "../matter/composition.js";
 import { type Finding, judge } from "./finding.js";
@@ -138,33 +139,19 @@ function judgeAlloy(
 }
 
 /**
- * Excess free energy of a random bcc alloy over linear mixing, per ion and Gamma_e kT, and entropy of mixing per ion and
- * k at common electron density, -sum x_j ln(x_j Z_j/<Z>).
- *
- *     sum_(i<j) Z_i^(5/3) x_i x_j C(R)/{1 + 27 (R-1)/(1 + 0.1 (R-1)) s (s - 0.3)(s - 0.7)(s - 1)}
- *     s^2 = x_j/(x_i + x_j),  R = Z_j/Z_i,  C = 0.05 (R-1)^2/{[1 + 0.64 (R-1)] [1 + 0.5 (R-1)^2]}
- *
- * (Ogata, Iyetomi, Ichimaru & Van Horn 1993, Phys. Rev. E 48, 1344; coefficients from memory.)
+ * Excess free energy of a random alloy over linear mixing, per charged nucleus and Gamma_e kT (coulomb/mixing.ts), and its
+ * entropy of mixing per nucleus and k at common electron density, -sum x_j ln(x_j Z_j/<Z>).
  */
 function alloy(composition: Composition): { deviation: number; entropy: number } {
   const charged = composition.species.filter((one) => one.chargeNumber > 0);
   const nuclei = charged.reduce((sum, one) => sum + one.numberFraction, 0);
   const mean = composition.meanCharge / nuclei;
-  let deviation = 0;
   let entropy = 0;
-  for (const [place, light] of charged.entries()) {
-    const x = light.numberFraction / nuclei;
-    entropy -= x * Math.log((x * light.chargeNumber) / mean);
-    for (const heavy of charged.slice(place + 1)) {
-      const y = heavy.numberFraction / nuclei;
-      const r = heavy.chargeNumber / light.chargeNumber - 1;
-      const s = Math.sqrt(y / (x + y));
-      const strength = (0.05 * r * r) / ((1 + 0.64 * r) * (1 + 0.5 * r * r));
-      const shape = 1 + ((27 * r) / (1 + 0.1 * r)) * s * (s - 0.3) * (s - 0.7) * (s - 1);
-      deviation += (light.chargeNumber * Math.cbrt(light.chargeNumber) ** 2 * x * y * strength) / shape;
-    }
+  for (const { numberFraction, chargeNumber } of charged) {
+    const x = numberFraction / nuclei;
+    entropy -= x * Math.log((x * chargeNumber) / mean);
   }
-  return { deviation, entropy };
+  return { deviation: alloyDeviation(charged) / nuclei, entropy };
 }
 
 /**

@@ -25,16 +25,27 @@
 /** Order of the derivatives asked for: 2 is what a state needs (6 members), 3 adds third order and (2,2): 11. */
 export type Order = 2 | 3;
 
+/** Slot of e, erg/g. */
 export const ENERGY = 0;
+/** Slot of T s, erg/g. */
 export const ENTROPY = 1;
+/** Slot of T c_v, erg/g. */
 export const HEAT = 2;
+/** Slot of P/rho, erg/g. */
 export const PRESSURE = 3;
+/** Slot of dP/drho at constant T, erg/g. */
 export const PRESSURE_R = 4;
+/** Slot of (T/rho) dP/dT, erg/g. */
 export const PRESSURE_T = 5;
+/** Slot of T^3 d2s/dT2, erg/g. */
 export const HEAT_T = 6;
+/** Slot of rho d2P/drho2, erg/g. */
 export const PRESSURE_RR = 7;
+/** Slot of T d2P/(drho dT), erg/g. */
 export const PRESSURE_RT = 8;
+/** Slot of (T^2/rho) d2P/dT2, erg/g. */
 export const PRESSURE_TT = 9;
+/** Slot of T^2 d3P/(drho dT2), erg/g. */
 export const PRESSURE_RTT = 10;
 
 /** Members in use at order 2: the first ones. */

@@ -1,7 +1,7 @@
 /** Charts: well-formed SVG with the right lines and labels; geometry against the scale's definition. */
 
 import fc from "fast-check";
-import { combine, composition, electronPositronGas, isFermistateError, whiteDwarfMatter } from "fermistate";
+import { combine, composition, electronPositronGas, isFermistateError, regime, whiteDwarfMatter } from "fermistate";
 import { type ChartOptions, chartGrid } from "fermistate/charts";
 import { type Grid, grid, linearAxis, logarithmicAxis } from "fermistate/grids";
 import { describe, expect, test } from "vitest";
@@ -10,11 +10,11 @@ import { linearTickTexts, unitText, valueText } from "../../src/charts/labels.js
 import { palette } from "../../src/charts/palette.js";
 
 const core = composition({ C12: 0.5, O16: 0.5 });
-const four = grid(whiteDwarfMatter(), core, {
+const four = grid(whiteDwarfMatter({ coulomb: false }), core, {
   density: logarithmicAxis({ from: 1e2, to: 1e10, pointsPerDecade: 10 }),
   temperature: [1e6, 1e7, 1e8, 1e9],
 });
-const many = grid(whiteDwarfMatter(), core, {
+const many = grid(whiteDwarfMatter({ coulomb: false }), core, {
   density: logarithmicAxis({ from: 1e2, to: 1e10, points: 3000 }),
   temperature: logarithmicAxis({ from: 1e5, to: 1e9, points: 50 }),
   quantities: ["pressure", "positronDensity"],
@@ -147,17 +147,44 @@ describe("shapes of grids", () => {
   const temperature = logarithmicAxis({ from: 1e6, to: 1e9, points: 20 });
 
   test("a single density is drawn over temperature", () => {
-    const svg = chartGrid(grid(whiteDwarfMatter(), core, { density: 1e6, temperature }));
+    const svg = chartGrid(grid(whiteDwarfMatter({ coulomb: false }), core, { density: 1e6, temperature }));
     expect(dataLines(svg)).toHaveLength(1);
     expect(texts(svg)).toContain("temperature T [K]");
     expect(texts(svg)).toContain("10\u2076 g/cm\u00b3");
   });
 
   test("a single point is a dot", () => {
-    const svg = chartGrid(grid(whiteDwarfMatter(), core, { density: 1e6, temperature: 1e7 }));
+    const svg = chartGrid(grid(whiteDwarfMatter({ coulomb: false }), core, { density: 1e6, temperature: 1e7 }));
     expect(readXml(svg).filter((one) => one.name === "circle")).toHaveLength(1);
     expect(svg).not.toMatch(/NaN|Infinity/);
   });
+});
+
+test("the remark on the ideal plasma stands below charts of one, and below no other", () => {
+  const at = { density: [1e6, 1e7, 1e8], temperature: [1e6, 1e8] };
+  const words = (coulomb: boolean) => texts(chartGrid(grid(whiteDwarfMatter({ coulomb }), core, at))).join(" ");
+  expect(words(false)).toMatch(/Ideal plasma, no Coulomb interactions: .* 1 to 30\u00a0% too high/);
+  expect(words(true)).toContain("Coulomb plasma");
+  expect(words(true)).not.toMatch(/Ideal plasma|too high/);
+});
+
+test("the fraction of crystal is drawn, also where it is 0 throughout", () => {
+  const density = logarithmicAxis({ from: 1e4, to: 1e10, points: 13 });
+  for (const temperature of [[1e6, 1e7], [1e9]]) {
+    const made = grid(whiteDwarfMatter(), core, { density, temperature, quantities: ["crystalFraction"] });
+    const svg = chartGrid(made, { quantity: "crystalFraction" });
+    expect(dataLines(svg)).toHaveLength(temperature.length);
+    expect(texts(svg)).toContain("crystal fraction");
+    expect(svg).not.toMatch(/NaN|Infinity|beyond the scale/);
+  }
+});
+
+test("numbers of findings are drawn like any column", () => {
+  const density = logarithmicAxis({ from: 1e4, to: 1e11, points: 15 });
+  const made = grid(whiteDwarfMatter(), core, { density, temperature: [1e7, 1e9], findings: regime });
+  const svg = chartGrid(made, { quantity: "findingsOutside" });
+  expect(dataLines(svg)).toHaveLength(2);
+  expect(texts(svg)).toContain("findings outside");
 });
 
 test("titles and notes are escaped, wrapped, and cannot leave their element", () => {
@@ -271,7 +298,7 @@ test("colours: lightness rises along the list, and the lightest keeps 3:1 agains
 });
 
 test("linear axes too: a linear grid of densities below a decade", () => {
-  const made: Grid = grid(whiteDwarfMatter(), core, {
+  const made: Grid = grid(whiteDwarfMatter({ coulomb: false }), core, {
     density: linearAxis({ from: 2e6, to: 8e6, points: 7 }),
     temperature: 1e8,
   });

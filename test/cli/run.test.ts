@@ -3,11 +3,22 @@ import { existsSync, mkdirSync, mkdtempSync, readdirSync, readFileSync, rmSync, 
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import fc from "fast-check";
-import { combine, composition, electronPositronGas, quantityNames, whiteDwarfMatter } from "fermistate";
+import {
+  breakdown,
+  type CoulombPlasmaOptions,
+  combine,
+  composition,
+  electronPositronGas,
+  isFermistateError,
+  meltingTemperature,
+  quantityNames,
+  regime,
+  transition,
+  whiteDwarfMatter,
+} from "fermistate";
 import { grid, gridToCsv, gridToCsvMetadata, logarithmicAxis } from "fermistate/grids";
 import { afterEach, beforeEach, describe, expect, test } from "vitest";
 import { commands, run } from "../../src/cli/run.js";
-import { sharesOf } from "../../src/cli/shares.js";
 import { libraryVersion } from "../../src/version.js";
 
 let cwd = "";
@@ -50,6 +61,7 @@ describe("help", () => {
     for (const word of [
       "state",
       "grid",
+      "regime",
       "demo",
       "baryon mass density",
       "Exit codes",
@@ -89,14 +101,25 @@ describe("help", () => {
     const quantities = (await command("help quantities")).out;
     for (const name of quantityNames) expect(quantities).toContain(name);
     const conventions = (await command("help conventions")).out.replaceAll(/\s+/g, " ");
-    for (const word of ["baryon mass density", "1e-20 to 1e18 g/cm^3", "1 to 1e13 K", "no Coulomb", "rest mass"]) {
+    const [full = "", ideal = ""] = conventions.split("with --without coulomb");
+    expect(full).toContain("Coulomb terms assume full ionisation");
+    expect(full).not.toContain("Ideal plasma");
+    expect(ideal).toMatch(/Ideal plasma: no Coulomb interactions .* 1 to 30 % too high/);
+    for (const word of [
+      "baryon mass density",
+      "1e-20 to 1e18 g/cm^3",
+      "1 to 1e13 K",
+      "no Coulomb",
+      "rest mass",
+      "unstable",
+    ]) {
       expect(conventions).toContain(word);
     }
     expect((await command("help axes")).out).toContain("10-per-decade");
   });
 
   test("lines fit a terminal of 80 columns, tables of quantities aside", async () => {
-    for (const line of ["help", "help state", "help grid", "help demo", "help conventions"]) {
+    for (const line of ["help", "help state", "help grid", "help regime", "help demo", "help conventions"]) {
       for (const one of (await command(line)).out.split("\n")) expect(one.length, one).toBeLessThanOrEqual(80);
     }
   });
@@ -118,7 +141,9 @@ describe("state", () => {
       expect(Math.abs(Number(printed) - state[name]!), name).toBeLessThanOrEqual(5e-10 * Math.abs(state[name]!));
     }
     expect(out).toMatch(/pressure +\S+ +dyn\/cm\^2/);
-    expect(out).toContain("no Coulomb interactions");
+    expect(out).toContain("Coulomb terms assume full ionisation");
+    expect(out).not.toContain("Ideal plasma");
+    expect((await command(`${line} --without coulomb`)).out).toContain("Ideal plasma: no Coulomb interactions");
   });
 
   test("--json has all digits", async () => {
@@ -129,32 +154,126 @@ describe("state", () => {
     expect(document).toMatchObject({ density: { value: 2e6, unit: "g/cm^3" }, temperature: { value: 1e7, unit: "K" } });
   });
 
-  test("shares of the contributions add up to the state", () => {
-    // Over 1221 points the sums differ from the state by at most 3.7e-16 (P), 6.8e-16 (e), 4.6e-16 (s) of the sum of sizes.
-    const bounds = { pressure: 8e-16, specificEnergy: 1.4e-15, specificEntropy: 1e-15 };
+  test.each([
+    // Worst of the ideal plasma: 3.7e-16 (P), 6.8e-16 (e), 4.6e-16 (s) of the sum of sizes.
+    ["ideal", false, { pressure: 8e-16, specificEnergy: 1.4e-15, specificEntropy: 1e-15 }, 1221],
+    // Worst of the full one: 5.2e-16 (P), 4.1e-16 (e), 4.5e-16 (s); 115 points of cold thin matter are unstable.
+    ["full", true, { pressure: 1e-15, specificEnergy: 8e-16, specificEntropy: 9e-16 }, 1106],
+  ] as const)("shares of the contributions add up to the state: %s plasma", (_, coulomb, bounds, count) => {
+    const eos = whiteDwarfMatter({ coulomb });
+    const worst: Record<string, number> = { pressure: 0, specificEnergy: 0, specificEntropy: 0 };
+    let judged = 0;
     for (const density of logarithmicAxis({ from: 1e-6, to: 1e12, points: 37 }).values) {
       for (const temperature of logarithmicAxis({ from: 1e3, to: 1e11, points: 33 }).values) {
-        const whole = matter.state(density, temperature, core);
-        const shares = sharesOf(matter, density, temperature, core);
+        try {
+          eos.state(density, temperature, core);
+        } catch (error) {
+          if (isFermistateError(error) && error.code === "unstable") continue;
+          throw error;
+        }
+        judged += 1;
+        const { state: whole, shares } = breakdown(eos, density, temperature, core);
         for (const name of ["pressure", "specificEnergy", "specificEntropy"] as const) {
           const sum = shares.reduce((total, share) => total + share[name], 0);
           const size = shares.reduce((total, share) => total + Math.abs(share[name]), 0);
-          const error = Math.abs(sum - whole[name]) / size;
-          if (!(error <= bounds[name])) throw new Error(`${name} at ${density}, ${temperature}: off by ${error}`);
+          worst[name] = Math.max(worst[name]!, Math.abs(sum - whole[name]) / size);
         }
+      }
+    }
+    expect(judged).toBe(count);
+    for (const [name, bound] of Object.entries(bounds)) expect(worst[name], name).toBeLessThanOrEqual(bound);
+  });
+
+  test("--json gives the shares, the Coulomb plasma by its terms", async () => {
+    const { contributions } = JSON.parse((await command(`${line} --json`)).out);
+    const { shares } = breakdown(matter, 2e6, 1e7, core);
+    expect(contributions).toEqual(shares);
+    const names = shares.map(({ name }) => name);
+    for (const name of ["ion correlation", "electron polarisation", "radiation"]) expect(names).toContain(name);
+  });
+
+  test("shares are printed with their value and in percent of the state", async () => {
+    const { out } = await command(line);
+    for (const share of breakdown(matter, 2e6, 1e7, core).shares) {
+      const row = new RegExp(`^  ${share.name} +(\\S+) +(\\S+) % +(\\S+) +(\\S+) % +(\\S+) +(\\S+) %$`, "m").exec(out);
+      const printed = row?.slice(1).map(Number) ?? [];
+      for (const [i, name] of (["pressure", "specificEnergy", "specificEntropy"] as const).entries()) {
+        expect(Math.abs(printed[2 * i]! / share[name] - 1), share.name).toBeLessThanOrEqual(5e-6); // six digits
+        const percent = (100 * share[name]) / state[name];
+        const half = Math.abs(percent) >= 1e-2 ? 0.005 : 0.05 * Math.abs(percent); // two places, or two digits
+        expect(Math.abs(printed[2 * i + 1]! - percent), share.name).toBeLessThanOrEqual(half * (1 + 1e-9));
       }
     }
   });
 
-  test("--json gives the shares", async () => {
-    const { contributions } = JSON.parse((await command(`${line} --json`)).out);
-    expect(contributions).toEqual(sharesOf(matter, 2e6, 1e7, core));
+  test("says what kind of matter it is, and none of no findings", async () => {
+    const { out } = await command(line);
+    expect(out).toMatch(/\nWhat kind of matter\n {2}degenerate, relativistic, liquid\n/);
+    expect(out).toMatch(/\nFindings\n {2}none\n/);
+    const cold = (await command("state --density 2e6 --temperature 1e6 --composition C12=0.5,O16=0.5")).out;
+    expect(cold).toMatch(/\nWhat kind of matter\n {2}degenerate, relativistic, crystal\n/);
+    expect(cold).toMatch(/crystalFraction +1\.0+\n/);
+    expect(cold).toMatch(/^ {2}phonons /m);
   });
 
-  test("shares are printed in percent", async () => {
-    const { out } = await command(line);
-    expect(out).toMatch(/electrons and positrons +\S+ +99\.84 %/);
-    expect(out).toMatch(/radiation +\S+ +3\.3e-8 %/);
+  test("lists each finding with its number against the threshold and what it means", async () => {
+    const iron = composition({ Fe56: 1 });
+    const { findings } = regime(2e9, 1e7, iron, { equationOfState: matter });
+    expect(findings.length).toBeGreaterThan(0);
+    const at = "state --density 2e9 --temperature 1e7 --composition Fe56=1";
+    const text = (await command(at)).out;
+    const words = text.slice(text.indexOf("\nFindings\n")).replaceAll(/\s+/g, " ");
+    for (const { code, severity, species, quantity, message } of findings) {
+      expect(words).toContain(` ${code}: ${severity} (${species}) ${quantity.name} is `);
+      expect(words).toContain(message);
+    }
+    expect(words).toMatch(/is 7\.28\de-6 erg, above 6\.39\de-6 erg/);
+    expect(JSON.parse((await command(`${at} --json`)).out).regime.findings).toEqual(findings);
+  });
+
+  test.each([
+    ["coulomb", { coulomb: false }],
+    ["ions", { ions: false }],
+    ["radiation", { radiation: false }],
+    ["coulomb,radiation", { coulomb: false, radiation: false }],
+    ["polarisation", { coulomb: { polarisation: false } }],
+    ["exchange", { coulomb: { exchange: false } }],
+    ["mixture", { coulomb: { mixture: false } }],
+    ["anharmonic", { coulomb: { anharmonic: false } }],
+    ["exchange,polarisation,radiation", { coulomb: { exchange: false, polarisation: false }, radiation: false }],
+  ] as const)("--without %s is the library without it", async (names, options) => {
+    const at = "--density 2e6 --temperature 1e6 --composition C12=0.5,O16=0.5"; // a crystal: all terms are at work
+    const { quantities } = JSON.parse((await command(`state ${at} --without ${names} --json`)).out);
+    const { pressure, specificEntropy } = whiteDwarfMatter(options).state(2e6, 1e6, core);
+    expect([quantities.pressure.value, quantities.specificEntropy.value]).toEqual([pressure, specificEntropy]);
+    expect(pressure).not.toBe(matter.state(2e6, 1e6, core).pressure);
+  });
+
+  test.each([
+    ["--phase liquid", { phase: "liquid" }, "liquid"],
+    ["--phase crystal", { phase: "crystal" }, "crystal"],
+    ["--melting-coupling 200", { meltingCoupling: 200 }, "liquid"],
+    ["--melting-coupling 150", { meltingCoupling: 150 }, "crystal"],
+  ] as const)("%s", async (words, coulomb: CoulombPlasmaOptions, phase) => {
+    const temperature =
+      meltingTemperature(2e6, core) * (words.includes("200") || words.includes("liquid") ? 0.98 : 1.02);
+    const at = ["--density", "2e6", "--temperature", String(temperature), "--composition", "C12=0.5,O16=0.5"];
+    const document = JSON.parse((await command(["state", ...at, ...words.split(" "), "--json"])).out);
+    const forced = whiteDwarfMatter({ coulomb }).state(2e6, temperature, core);
+    expect(document.quantities.specificEntropy.value).toBe(forced.specificEntropy);
+    expect(forced.specificEntropy).not.toBe(matter.state(2e6, temperature, core).specificEntropy);
+    expect(document.regime.phase).toBe(phase);
+    expect(document.regime.kind).toContain(phase);
+  });
+
+  test("a crystal at T = 0", async () => {
+    const { out } = await command("state --density 1e6 --temperature 0 --composition C12=1 --json");
+    const document = JSON.parse(out);
+    expect(document.quantities.crystalFraction.value).toBe(1);
+    expect(document.quantities.pressure.value).toBe(matter.state(1e6, 0, composition({ C12: 1 })).pressure);
+    expect(document.regime.parameters.ionCoupling.value).toBe("INF");
+    const text = (await command("state --density 1e6 --temperature 0 --composition C12=1")).out;
+    expect(text).not.toMatch(/NaN|Infinity|undefined/);
   });
 
   test("without contributions, at T = 0, with infinities spelled out", async () => {
@@ -215,7 +334,7 @@ describe("grid", () => {
   test("stops printing when nobody reads", async () => {
     let pieces = 0;
     const io = { out: () => ++pieces < 2, err: () => {}, isTerminal: false, cwd };
-    const many = "grid --density 1e2..1e10,1000-points --temperature 1e6..1e9,20-points --composition He4=1".split(" ");
+    const many = "grid --density 1e2..1e10,1000-points --temperature 1e6..1e9,20-points --composition C12=1".split(" ");
     expect(await run(many, io)).toBe(0);
     expect(pieces).toBe(2);
   });
@@ -270,7 +389,7 @@ describe("grid", () => {
 
   test("shows progress on a terminal only, and wipes it", async () => {
     const large =
-      "grid --density 1e2..1e10,600-points --temperature 1e6..1e9,200-points --composition He4=1 --out x --quantities pressure";
+      "grid --density 1e2..1e10,600-points --temperature 1e6..1e9,200-points --composition C12=1 --out x --quantities pressure";
     expect((await command(`${large} --overwrite`)).err).toBe("");
     const { err } = await command(`${large} --overwrite`, true);
     expect(err).toMatch(/^\rgrid: \d+ of 120000 points \(\d+ %\)/);
@@ -302,6 +421,94 @@ describe("grid", () => {
   });
 });
 
+describe("grid --findings", () => {
+  const line = "grid --density 1e4..1e10,2-per-decade --temperature 1e6,1e9 --composition C12=0.5,O16=0.5 --findings";
+  const density = logarithmicAxis({ from: 1e4, to: 1e10, pointsPerDecade: 2 });
+  const made = grid(matter, core, { density, temperature: [1e6, 1e9], findings: regime });
+
+  test("adds the columns of the library, in CSV and JSON, with the list", async () => {
+    expect((await command(line)).out).toBe(gridToCsv(made));
+    const document = JSON.parse((await command(`${line} --format json`)).out);
+    expect(document.findings).toEqual(made.findings);
+    expect(document.columns.findingsStrained.values).toEqual([...made.columns.findingsStrained!]);
+  });
+
+  test("says which were met at how many points, or none", async () => {
+    const { out } = await command(`${line} --out a`);
+    expect(out).toContain("Findings among 26 states\n");
+    expect(made.findings!.length).toBeGreaterThan(2);
+    for (const { code, strained, outside } of made.findings!) {
+      expect(out).toMatch(new RegExp(`^  ${code} +${strained} +${outside}$`, "m"));
+    }
+    expect(JSON.parse(read("a.csv-metadata.json"))["schema:additionalProperty"]).toContainEqual({
+      "@type": "schema:PropertyValue",
+      "schema:name": `points where ${made.findings![0]!.code} is strained`,
+      "schema:value": made.findings![0]!.strained,
+      "schema:unitText": "1",
+    });
+    const calm = "grid --density 2e6 --temperature 1e7 --composition C12=0.5,O16=0.5 --findings --out b";
+    expect((await command(calm)).out).toContain("Findings among 1 state: none\n");
+    expect((await command(calm.replace(" --findings --out b", " --out c"))).out).not.toContain("Findings");
+  });
+});
+
+describe("regime", () => {
+  const line = "regime --density 2e9 --temperature 1e8 --composition Fe56=1";
+  const found = regime(2e9, 1e8, composition({ Fe56: 1 }), { equationOfState: matter });
+
+  test("prints kind, parameters with units, nuclei, captures, findings", async () => {
+    const { code, out, err } = await command(line);
+    expect([code, err]).toEqual([0, ""]);
+    expect(out).toContain(`\nWhat kind of matter\n  ${found.kind.join(", ")}\n`);
+    const { species, ...numbers } = found.parameters;
+    for (const [name, value] of Object.entries(numbers)) {
+      const printed = Number(new RegExp(`^  ${name} +(\\S+)`, "m").exec(out)?.[1]);
+      expect(Math.abs(printed - value), name).toBeLessThanOrEqual(5e-6 * Math.abs(value)); // six digits
+    }
+    expect(out).toMatch(/ionPlasmaTemperature +\S+ +K /);
+    expect(out).toMatch(/electronChemicalPotential +\S+ +erg /);
+    expect(Number(/^ {2}Fe56 +(\S+)/m.exec(out)?.[1])).toBeCloseTo(species[0]!.coupling, 3);
+    expect(out).toMatch(/^ {2}Fe56 +Mn56 /m);
+    expect(out).toContain("  electron-capture: outside (Fe56)\n");
+    for (const one of out.split("\n")) expect(one.length, one).toBeLessThanOrEqual(100);
+  });
+
+  test("--json has all digits, units and the findings", async () => {
+    const document = JSON.parse((await command(`${line} --json`)).out);
+    const { species, ...numbers } = found.parameters;
+    for (const [name, value] of Object.entries(numbers)) expect(document.parameters[name].value, name).toBe(value);
+    expect(document.parameters.fermiTemperature.unit).toBe("K");
+    expect(document.species[0].coupling.value).toBe(species[0]!.coupling);
+    expect(document).toMatchObject({ kind: found.kind, phase: found.phase, findings: found.findings });
+    expect(document.captures).toEqual(found.captures);
+  });
+
+  test("judges a sum that state refuses as unstable", async () => {
+    const at = "--density 10 --temperature 1e5 --composition C12=1";
+    expect(await command(`state ${at}`)).toMatchObject({ code: 1, err: expect.stringMatching(/\(unstable\)\n$/) });
+    const { code, out } = await command(`regime ${at}`);
+    expect(code).toBe(0);
+    expect(out).toMatch(/thermodynamically-unstable: outside\n {4}pressure is -\S+ dyn\/cm\^2, not above 0\n/);
+    const phases = { liquid: "liquid", crystal: "crystal" };
+    for (const [phase, word] of Object.entries(phases)) {
+      expect(JSON.parse((await command(`regime ${at} --phase ${phase} --json`)).out).phase).toBe(word);
+    }
+    // Gamma is 77 here, so 100 keeps the liquid; at half the temperature it melts at 100 and not at 175.
+    const colder = at.replace("1e5", "5e4");
+    expect((await command(`state ${colder}`)).code).toBe(1);
+    expect(JSON.parse((await command(`regime ${colder} --json`)).out).phase).toBe("liquid");
+    expect(JSON.parse((await command(`regime ${colder} --melting-coupling 100 --json`)).out).phase).toBe("crystal");
+  });
+
+  test("infinities are spelled out, and neutrons alone have no nuclei", async () => {
+    const { out } = await command("regime --density 10 --temperature 1e7 --composition n=1");
+    expect(out).toMatch(/densityParameter +INF/);
+    expect(out).not.toMatch(/\nNuclei\n|NaN|Infinity|undefined/);
+    const ideal = "regime --density 1e8 --temperature 1e5 --composition C12=1 --without coulomb";
+    expect((await command(ideal)).out).toContain("ideal-ions-degenerate: outside");
+  });
+});
+
 describe("demo", () => {
   test("writes grids and charts of the invented star, shows a table and a state, and can be run again", async () => {
     const { code, out, err } = await command("demo");
@@ -309,19 +516,43 @@ describe("demo", () => {
     const names = readdirSync(join(cwd, "fermistate-demo"));
     expect(names).toHaveLength(12);
     for (const name of names) expect(out).toContain(join("fermistate-demo", name));
-    for (const word of ["Invented scenario", "degeneracy", "of pressure", "He4 0.98, N14 0.02"])
+    for (const word of [
+      "Invented scenario",
+      "degeneracy",
+      "of pressure",
+      "He4 0.98, N14 0.02",
+      "phonons",
+      "ion correlation",
+    ])
       expect(out).toContain(word);
     for (const name of names.filter((one) => !one.endsWith(".csv"))) {
       expect(readFileSync(join(cwd, "fermistate-demo", name), "utf8")).toContain("Invented scenario");
     }
+    expect(readFileSync(join(cwd, "fermistate-demo", "core.csv"), "utf8")).toContain("crystalFraction [1]");
     expect((await command("demo")).code).toBe(0);
     expect(readdirSync(join(cwd, "fermistate-demo"))).toHaveLength(12);
+  });
+
+  test("says where the core is a crystal", async () => {
+    const { out } = await command("demo");
+    const matterOfCore = composition({ C12: 0.5, O16: 0.48, Ne22: 0.02 });
+    const rows = [...out.matchAll(/^ +(10000|1e\d+) +(\S+e\d+) +(\S+e\d+)$/gm)];
+    expect(rows).toHaveLength(4);
+    for (const [, density, temperature, heat] of rows) {
+      const melting = transition(matter, Number(density), matterOfCore)!;
+      expect(Math.abs(Number(temperature) / melting.temperature - 1)).toBeLessThanOrEqual(5e-4); // four digits
+      expect(Math.abs(Number(heat) / melting.latentHeat - 1)).toBeLessThanOrEqual(5e-4);
+    }
+    const text = readFileSync(join(cwd, "fermistate-demo", "core.json"), "utf8");
+    const frozen = (JSON.parse(text).columns.crystalFraction.values as number[]).filter((one) => one === 1).length;
+    expect(frozen).toBeGreaterThan(0);
+    expect(out).toContain(`Core: ${frozen} of 484 states are a crystal`);
   });
 
   test("the command that it names at the end runs, and so does another folder", async () => {
     const { out } = await command("demo --out here/there");
     expect(readdirSync(join(cwd, "here/there"))).toHaveLength(12);
-    const line = /^ {2}fermistate (state .*)$/m.exec(out)?.[1] ?? "";
+    const line = /^ {2}npx fermistate (state .*)$/m.exec(out)?.[1] ?? "";
     expect((await command(line)).code).toBe(0);
   });
 
@@ -337,7 +568,7 @@ describe("errors are one line, with a code for programs", () => {
 
   test.each([
     ["stat", 2, /^fermistate: command: given "stat"; allowed: perhaps state\?/],
-    ["x", 2, /one of state, grid, demo, help/],
+    ["x", 2, /one of state, grid, regime, demo, help/],
     ["help grdi", 2, /perhaps grid\?/],
     ["help grid state", 2, /one word/],
     [`state ${at} --densty 1`, 2, /given "--densty"; allowed: perhaps --density\?/],
@@ -356,7 +587,22 @@ describe("errors are one line, with a code for programs", () => {
       /^fermistate: density: given -1; allowed: > 0 g\/cm\^3 \(out-of-range\)\n$/,
     ],
     ["state --density 1e30 --temperature 1e7 --composition C12=1", 1, /1e-20 to 1e18 .* \(outside-domain\)/],
-    ["state --density 1 --temperature 0 --composition C12=1", 1, /ideal ions; leave it out at T = 0\) \(outside-domain\)/],
+    ["state --density 1 --temperature 0 --composition C12=1", 1, /for stable matter \(unstable\)/],
+    [
+      "state --density 1 --temperature 0 --composition C12=1 --without coulomb",
+      1,
+      /ideal ions; leave it out at T = 0\) \(outside-domain\)/,
+    ],
+    ["state --density 1e6 --temperature 0 --composition H1=1", 1, /do not freeze there .*\(outside-domain\)/],
+    ["state --density 10 --temperature 1e5 --composition C12=1", 1, /for stable matter \(unstable\)/],
+    [`state ${at} --phase solid`, 2, /--phase: given "solid"; allowed: one of liquid, crystal/],
+    [`state ${at} --phase crystal --without coulomb`, 2, /--phase: .* --without coulomb leaves out/],
+    [`state ${at} --melting-coupling 170 --without ions`, 2, /--melting-coupling: .* --without ions leaves out/],
+    [`state ${at} --without coulomb,exchange`, 2, /--without: given "exchange"; .* --without coulomb leaves out/],
+    [`state ${at} --melting-coupling 170 --phase liquid`, 2, /only without --phase/],
+    [`grid ${at} --melting-coupling 17`, 2, /--melting-coupling: given 17; allowed: 100 to 300 \(out-of-range\)/],
+    ["regime --density -1 --temperature 1e7 --composition C12=1", 2, /density: given -1/],
+    [`regime ${at} --findings`, 2, /given "--findings"/],
     [
       "state --density 1 --temperature 1e7 --composition C12=0.9",
       2,
@@ -401,7 +647,20 @@ describe("errors are one line, with a code for programs", () => {
 test("no arguments make it throw, print a stack or a NaN, or leave a file behind", async () => {
   const value = fc.oneof(
     fc.double().map(String),
-    fc.constantFrom("1e7", "1e6", "0", "-0", "C12=1", "He4=0.5,C12=0.5", "pressure", "all", "1..10,3-points", "1,2,3"),
+    fc.constantFrom(
+      "1e7",
+      "1e6",
+      "0",
+      "-0",
+      "C12=1",
+      "He4=0.5,C12=0.5",
+      "pressure",
+      "all",
+      "1..10,3-points",
+      "1,2,3",
+      "liquid",
+      "175",
+    ),
     fc.string(),
   );
   const option = fc.constantFrom(
@@ -414,6 +673,9 @@ test("no arguments make it throw, print a stack or a NaN, or leave a file behind
     "format",
     "maximum-points",
     "normalise",
+    "phase",
+    "melting-coupling",
+    "findings",
     "q",
   );
   const argument = fc.oneof(
@@ -424,7 +686,9 @@ test("no arguments make it throw, print a stack or a NaN, or leave a file behind
   const good = fc.constant("state --density=1e6 --temperature=1e7 --composition=C12=1".split(" "));
   const line = fc.oneof(
     fc.array(argument, { maxLength: 8 }),
-    fc.tuple(fc.constantFrom("state", "grid", "help"), fc.array(argument, { maxLength: 8 })).map(([a, b]) => [a, ...b]),
+    fc
+      .tuple(fc.constantFrom("state", "grid", "regime", "help"), fc.array(argument, { maxLength: 8 }))
+      .map(([a, b]) => [a, ...b]),
     fc.tuple(good, fc.array(argument, { maxLength: 1 })).map(([a, b]) => [...a, ...b]),
   );
   let succeeded = 0;

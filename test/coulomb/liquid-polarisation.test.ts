@@ -63,7 +63,7 @@ test("reference rows: f, u, c_v and pressure with its derivatives", () => {
       const [gamma, rs] = row.args.map(Number) as [number, number];
       for (const order of [2, 3] as const) {
         const f = new Float64Array(11);
-        addInverseThermal(f, order, 1, members(order, pointOf(gamma, rs, alphaOfRows), ions.get(z)!));
+        addInverseThermal(f, order, Float64Array.of(1), members(order, pointOf(gamma, rs, alphaOfRows), ions.get(z)!));
         const values = {
           f: f[0]!,
           u: f[0]! - f[2]!,

@@ -1,7 +1,7 @@
 /** CSV: read back by an independent reader to the same bits; the description against the W3C's vocabulary. */
 
 import fc from "fast-check";
-import { combine, composition, electronPositronGas, quantityNames, whiteDwarfMatter } from "fermistate";
+import { combine, composition, electronPositronGas, quantityNames, regime, whiteDwarfMatter } from "fermistate";
 import {
   csvMetadataName,
   type Grid,
@@ -17,7 +17,7 @@ import { readCsv, readDouble } from "./csv-reader.js";
 import { complaintsAbout } from "./csvw.js";
 
 const core = composition({ C12: 0.5, O16: 0.48, Ne22: 0.02 });
-const hot = grid(whiteDwarfMatter(), core, {
+const hot = grid(whiteDwarfMatter({ coulomb: false }), core, {
   density: logarithmicAxis({ from: 1e-6, to: 1e12, points: 25 }),
   temperature: logarithmicAxis({ from: 1e5, to: 1e10, points: 11 }),
   quantities: quantityNames,
@@ -120,6 +120,21 @@ describe("the description", () => {
     const properties = document["schema:additionalProperty"] as Record<string, unknown>[];
     const fraction = properties.find((one) => one["schema:name"] === "nucleon fraction of Ne22");
     expect(fraction?.["schema:value"]).toBe(0.02);
+  });
+
+  test("with findings: valid, and how many points each is met at", () => {
+    const density = logarithmicAxis({ from: 1e4, to: 1e11, points: 20 });
+    const judged = grid(whiteDwarfMatter(), core, { density, temperature: [1e7, 1e9], findings: regime });
+    expectSameBits(judged, gridToCsv(judged));
+    const described = JSON.parse(gridToCsvMetadata(judged, "core.csv"));
+    expect(complaintsAbout(described)).toEqual([]);
+    const values = new Map<string, number>();
+    for (const one of described["schema:additionalProperty"]) values.set(one["schema:name"], one["schema:value"]);
+    expect(judged.findings?.some(({ outside }) => outside > 0)).toBe(true);
+    for (const { code, strained, outside } of judged.findings ?? []) {
+      expect(values.get(`points where ${code} is strained`)).toBe(strained);
+      expect(values.get(`points where ${code} is outside its range`)).toBe(outside);
+    }
   });
 
   test("goes beside the file under the name of the recommendation", () => {

@@ -7,19 +7,21 @@ import {
   type EquationOfState,
   electronPositronGas,
   FermistateError,
+  type Finding,
   idealIons,
   isFermistateError,
   type QuantityName,
   quantities,
   quantityNames,
   radiation,
+  regime,
   whiteDwarfMatter,
 } from "fermistate";
 import { type Grid, type GridOptions, grid, linearAxis, logarithmicAxis } from "fermistate/grids";
 import { describe, expect, test } from "vitest";
 
 const core = composition({ C12: 0.5, O16: 0.5 });
-const matter = whiteDwarfMatter();
+const matter = whiteDwarfMatter({ coulomb: false });
 const small: GridOptions = {
   density: logarithmicAxis({ from: 1e-3, to: 1e11, points: 29 }),
   temperature: logarithmicAxis({ from: 1e4, to: 1e10, points: 13 }),
@@ -43,6 +45,7 @@ function expectStates(made: Grid, equationOfState: EquationOfState): void {
     const temperature = made.axes.temperature.values[Math.floor(row / densities)]!;
     const state = equationOfState.state(density, temperature, made.composition);
     for (const name of made.columnNames) {
+      if (name === "findingsStrained" || name === "findingsOutside") continue;
       if (Object.is(made.columns[name]![row], state[name])) continue;
       throw new Error(`${name} at ${density}, ${temperature}: ${made.columns[name]![row]} for ${state[name]}`);
     }
@@ -72,6 +75,91 @@ describe("values", () => {
     expect(grid(matter, core, { density: 1e6, temperature: 1e7 }).shape).toEqual([1, 1]);
     expect(grid(matter, core, { density: [1, 2, 3], temperature: 1e7 }).shape).toEqual([1, 3]);
     expect(grid(matter, core, { density: 1e6, temperature: Float64Array.of(1e7, 1e8) }).shape).toEqual([2, 1]);
+  });
+});
+
+describe("the full plasma", () => {
+  const full = whiteDwarfMatter();
+
+  test("all quantities are those of eos.state, across freezing and at T = 0", () => {
+    const density = logarithmicAxis({ from: 1e4, to: 1e10, points: 25 });
+    const made = grid(full, core, { density, temperature: [0, 1e6, 3e6, 1e7, 1e9], quantities: quantityNames });
+    expectStates(made, full);
+    expect(new Set(made.columns.crystalFraction)).toEqual(new Set([0, 1]));
+    expect(made.ideal).toBe(false);
+    expect(made.validity.join(" ")).toContain("Coulomb terms");
+    expect(made.validity.join(" ")).not.toContain("Ideal plasma");
+    expect(grid(matter, core, { density: 1e6, temperature: 1e7 }).validity.join(" ")).toContain("Ideal plasma");
+  });
+
+  test("a point that is no stable matter is named", () => {
+    const first = errorOf(() => grid(full, core, { density: [10, 1e6], temperature: [1e5, 1e7] }));
+    expect(first).toMatchObject({ code: "unstable", index: 0 });
+    expect(first.allowed).toContain("at density 10 g/cm^3, temperature 100000 K");
+    const later = errorOf(() => grid(full, core, { density: [1e-9, 10], temperature: [1e5, 1e7] }));
+    expect(later).toMatchObject({ code: "unstable", index: 1 });
+    expect(later.allowed).toContain("at density 10 g/cm^3, temperature 100000 K");
+  });
+});
+
+describe("findings", () => {
+  const mix = composition({ C12: 0.4, O16: 0.4, Fe56: 0.2 });
+  const density = logarithmicAxis({ from: 1e4, to: 1e11, points: 40 });
+  const temperature = [1e6, 1e7, 1e8, 1e9, 5e9, 1e10, 3e10, 1e11, 2e11]; // 360 rows: more than one chunk of them
+
+  /** Counts by the documented rule, from `regime` itself. */
+  function expected(made: Grid, judgeOf: (density: number, temperature: number) => readonly Finding[]) {
+    const points: Record<string, { code: string; strained: number; outside: number }> = {};
+    const [strained, outside]: [number[], number[]] = [[], []];
+    for (let row = 0; row < made.rows; row++) {
+      const found = judgeOf(made.columns.density[row]!, made.columns.temperature[row]!);
+      strained.push(found.filter((one) => one.severity === "strained").length);
+      outside.push(found.filter((one) => one.severity === "outside").length);
+      const worst: Record<string, "strained" | "outside"> = {};
+      for (const one of found) if (worst[one.code] !== "outside") worst[one.code] = one.severity;
+      for (const [code, severity] of Object.entries(worst)) {
+        points[code] ??= { code, strained: 0, outside: 0 };
+        points[code][severity] += 1;
+      }
+    }
+    return { strained, outside, points: Object.values(points) };
+  }
+
+  test.each([
+    ["full", whiteDwarfMatter()],
+    ["ideal", matter],
+  ] as const)("are those of regime at every point: %s plasma", (kind, eos) => {
+    const made = grid(eos, mix, { density, temperature, quantities: ["pressure"], findings: regime });
+    expect(made.columnNames).toEqual(["density", "temperature", "pressure", "findingsStrained", "findingsOutside"]);
+    expectStates(made, eos);
+    const { strained, outside, points } = expected(made, (rho, t) => {
+      return regime(rho, t, mix, { equationOfState: eos }).findings;
+    });
+    expect([...made.columns.findingsStrained!]).toEqual(strained);
+    expect([...made.columns.findingsOutside!]).toEqual(outside);
+    expect(made.findings).toEqual(points);
+    expect(Math.max(...outside)).toBeGreaterThan(1); // captures of several nuclides at one point, counted one by one
+    expect(points.some(({ code }) => code === "ideal-ions-degenerate")).toBe(kind === "ideal");
+    expect(made.units).toMatchObject({ findingsStrained: "1", findingsOutside: "1" });
+    for (const part of [made.findings, made.findings?.[0]]) expect(Object.isFrozen(part)).toBe(true);
+  });
+
+  test("take the phase of the equation of state, forced or by its melting coupling", () => {
+    const at = { density: 1e6, temperature: 1e8, findings: regime }; // far above melting
+    const forced = grid(whiteDwarfMatter({ coulomb: { phase: "crystal" } }), core, at);
+    expect(forced.findings?.map(({ code }) => code)).toContain("superheated-crystal");
+    expect(grid(whiteDwarfMatter(), core, at).findings?.map(({ code }) => code)).not.toContain("superheated-crystal");
+  });
+
+  test("are absent unless asked for, none where nothing is strained, and count in the limit of cells", () => {
+    const at = { density: 2e6, temperature: 1e7 };
+    const full = whiteDwarfMatter();
+    expect(grid(full, core, at).findings).toBeUndefined();
+    expect(grid(full, core, { ...at, findings: regime }).findings).toEqual([]);
+    expect(errorOf(() => grid(full, core, { ...at, findings: regime, maximumCells: 13 })).code).toBe("too-large");
+    expect(grid(full, core, { ...at, findings: regime, maximumCells: 14 }).rows).toBe(1);
+    const wrong = { ...at, findings: true } as unknown as GridOptions;
+    expect(errorOf(() => grid(full, core, wrong))).toMatchObject({ code: "invalid-option", argument: "findings" });
   });
 });
 

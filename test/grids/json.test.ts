@@ -1,5 +1,5 @@
 /** JSON: read back by the engine's own reader (ECMA-404) to the same bits, infinities as the file says. */
-import { combine, composition, electronPositronGas, quantityNames, whiteDwarfMatter } from "fermistate";
+import { combine, composition, electronPositronGas, quantityNames, regime, whiteDwarfMatter } from "fermistate";
 import { type Grid, grid, gridToJson, gridToJsonPieces, logarithmicAxis } from "fermistate/grids";
 import { expect, test } from "vitest";
 import about from "../../package.json" with { type: "json" };
@@ -7,7 +7,7 @@ import { joined } from "../../src/grids/chunks.js";
 import { libraryVersion } from "../../src/version.js";
 
 const core = composition({ C12: 0.5, O16: 0.48, Ne22: 0.02 });
-const hot = grid(whiteDwarfMatter(), core, {
+const hot = grid(whiteDwarfMatter({ coulomb: false }), core, {
   density: logarithmicAxis({ from: 1e-6, to: 1e12, points: 100 }),
   temperature: logarithmicAxis({ from: 1e5, to: 1e10, points: 31 }),
   quantities: quantityNames,
@@ -54,6 +54,15 @@ test("it describes itself", () => {
   expect(JSON.stringify(document["conventions"])).toContain("baryon mass density");
   expect(JSON.stringify(document["validity"])).toContain("no Coulomb interactions");
   expect(document["infinities"]).toContain("INF");
+});
+
+test("findings: columns to the same bits, and the list", () => {
+  const density = logarithmicAxis({ from: 1e4, to: 1e11, points: 20 });
+  const judged = grid(whiteDwarfMatter(), core, { density, temperature: [1e7, 1e9], findings: regime });
+  expectSameBits(judged);
+  expect(judged.findings?.length).toBeGreaterThan(0);
+  expect(read(gridToJson(judged)).document["findings"]).toEqual(judged.findings);
+  expect(read(gridToJson(hot)).document).not.toHaveProperty("findings");
 });
 
 test("pieces are the text, and small", () => {

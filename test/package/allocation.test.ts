@@ -6,7 +6,7 @@ import { expect, test } from "vitest";
 const root = fileURLToPath(new URL("../..", import.meta.url));
 
 /** Bytes of heap per point of a batch after warming up; the young generation is large enough to collect nothing. */
-function bytesPerPoint(temperature: [number, number], density: [number, number]): number {
+function bytesPerPoint(temperature: [number, number], density: [number, number], coulomb: boolean): number {
   const program = `
     import v8 from "node:v8";
     import { composition, whiteDwarfMatter } from "./dist/index.js";
@@ -21,7 +21,7 @@ function bytesPerPoint(temperature: [number, number], density: [number, number])
       density: column(${JSON.stringify(density)}),
       composition: composition({ C12: 0.5, O16: 0.5 }),
     };
-    const eos = whiteDwarfMatter();
+    const eos = whiteDwarfMatter({ coulomb: ${coulomb} });
     for (let i = 0; i < 8; i++) eos.evaluate(input, output);
     const least = [];
     for (let i = 0; i < 5; i++) {
@@ -34,12 +34,13 @@ function bytesPerPoint(temperature: [number, number], density: [number, number])
   return Number(execFileSync(process.execPath, options, { cwd: root, encoding: "utf8" }));
 }
 
-test.each<[string, [number, number], [number, number]]>([
-  ["white dwarf", [6, 9], [2, 10]],
-  ["hot, pairs", [9, 11], [4, 12]],
-  ["whole plane", [2, 13], [-15, 15]],
-])("%s: less than half a byte per point", (_name, temperature, density) => {
-  const bytes = bytesPerPoint(temperature, density);
+test.each<[string, [number, number], [number, number], boolean]>([
+  ["ideal plasma, white dwarf", [6, 9], [2, 10], false],
+  ["ideal plasma, hot, pairs", [9, 11], [4, 12], false],
+  ["ideal plasma, whole plane", [2, 13], [-15, 15], false],
+  ["Coulomb plasma, liquid and crystal", [6, 9], [5, 9], true],
+])("%s: less than half a byte per point", (_name, temperature, density, coulomb) => {
+  const bytes = bytesPerPoint(temperature, density, coulomb);
   expect(bytes).toBeGreaterThanOrEqual(0);
   expect(bytes).toBeLessThan(0.5); // one boxed number per point would be 16; bookkeeping per call is 0.1
 });

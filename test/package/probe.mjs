@@ -31,7 +31,8 @@ export function probe(fermistate) {
     given: -1,
     allowed: "more than 0 g/cm^3",
   });
-  const eos = fermistate.whiteDwarfMatter();
+  const eos = fermistate.whiteDwarfMatter({ coulomb: false });
+  const full = fermistate.whiteDwarfMatter();
   const cold = fermistate.combine(fermistate.electronPositronGas());
   const compositions = [
     { C12: 0.5, O16: 0.5 },
@@ -50,6 +51,19 @@ export function probe(fermistate) {
           matter,
         );
         states.push({ name: composition.name, conditioning: conditioningOf(state), ...state });
+      }
+    }
+    // The Coulomb plasma where it is ionised: liquid and crystal. Its fits subtract numbers of order Gamma. Hydrogen and
+    // helium as cold and dense as this are beyond the quantum liquid, and refused.
+    const densest = "H1" in fractions ? 6 : 10;
+    for (let logT = 6; logT <= 9; logT += 0.5) {
+      for (let logRho = 5; logRho <= densest; logRho += 1) {
+        const { composition, specificFreeEnergy, energyByDensity, ...state } = full.state(
+          10 ** logRho,
+          10 ** logT,
+          matter,
+        );
+        states.push({ name: composition.name, conditioning: 4 * conditioningOf(state), ...state });
       }
     }
     for (let logRho = -14; logRho <= 14; logRho += 2) {
