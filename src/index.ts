@@ -29,6 +29,11 @@ export type { RegimeOptions } from "./regime/options.js";
 export type { RegimeParameters, SpeciesParameters } from "./regime/parameters.js";
 export type { KindWord } from "./regime/phase.js";
 export { type Regime, regime } from "./regime/regime.js";
+export {
+  type EquationOfStateWithFindings,
+  type StateWithFindings,
+  withFindings,
+} from "./regime/with-findings.js";
 export { type Breakdown, breakdown, type Share } from "./thermodynamics/breakdown.js";
 export { combine } from "./thermodynamics/combine.js";
 export type { Contribution, Domain } from "./thermodynamics/contribution.js";

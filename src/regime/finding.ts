@@ -24,6 +24,7 @@ export type FindingCode =
   | "pairs-important"
   | "radiation-dominated"
   | "ideal-ions-degenerate"
+  | "coulomb-neglected"
   | "photon-plasma-cutoff"
   | "thermodynamically-unstable";
 

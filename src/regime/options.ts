@@ -10,7 +10,8 @@ export interface RegimeOptions {
   /** Take the ions to be in this phase, instead of by the rule. */
   readonly phase?: Phase;
   /**
-   * Judge the stability of its sum at the point. Where it has interactions, nuclei are not judged as an ideal gas.
+   * Judge the stability of its sum at the point. Where it has interactions, nuclei are not judged as an ideal gas;
+   * where it has none, their coupling is.
    * Its own domain applies.
    */
   readonly equationOfState?: EquationOfState;

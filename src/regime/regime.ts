@@ -17,7 +17,7 @@ import { type RegimeOptions, readOptions } from "./options.js";
 import { measure, type RegimeParameters } from "./parameters.js";
 import { type KindWord, kindOf, phaseOf } from "./phase.js";
 import { judgeReactions } from "./reactions.js";
-import { judgeIdealIons, judgeShares, judgeStability } from "./sums.js";
+import { judgeCoupling, judgeIdealIons, judgeShares, judgeStability } from "./sums.js";
 
 /** What {@link regime} says; frozen throughout, and plain data for JSON (which writes null for infinities). */
 export interface Regime {
@@ -78,6 +78,7 @@ export function regime(
   judgeShares(findings, temperature, measured);
   const interacting = equationOfState?.contributions.some((part) => part.ideal !== true) === true;
   if (!interacting) judgeIdealIons(findings, density, temperature, composition);
+  if (equationOfState !== undefined) judgeCoupling(findings, equationOfState, parameters.ionCoupling);
   judgeStability(findings, { density, temperature, composition }, measured, { state, equationOfState });
 
   return Object.freeze({

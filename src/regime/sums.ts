@@ -44,6 +44,27 @@ export function judgeShares(list: Finding[], temperature: number, measured: Meas
 }
 
 /**
+ * Adds `coulomb-neglected` for a sum that has ideal ions and no interaction. Conventions: at a coupling of 0.1 the
+ * correlation energy is 2 % of (3/2) kT per ion (Debye-Hueckel: Gamma^(3/2) sqrt(3)/2 kT), at 1 ions are a liquid.
+ */
+export function judgeCoupling(list: Finding[], equationOfState: EquationOfState, ionCoupling: number): void {
+  const { contributions } = equationOfState;
+  const gasAlone = contributions.every((part) => part.ideal === true);
+  if (!gasAlone || !contributions.some(({ name }) => name.startsWith("ideal ions"))) return;
+  judge(list, {
+    code: "coulomb-neglected",
+    value: ionCoupling,
+    strained: 0.1,
+    outside: 1,
+    name: "Gamma, mean over the charged nuclei",
+    message: {
+      strained: "This sum leaves out the Coulomb terms, which are some per cent of the thermal energy of the nuclei.",
+      outside: "Nuclei are a liquid or a crystal here, and this sum has them as an ideal gas.",
+    },
+  });
+}
+
+/**
  * Adds `ideal-ions-degenerate`: nuclei as a classical gas need n lambda^3 << 1. Above e^(5/2), less with spins and
  * mixing, the entropy of that gas is negative. At T = 0 there is no classical gas to judge.
  */

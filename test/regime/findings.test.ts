@@ -257,10 +257,25 @@ describe("stability", () => {
     );
   });
 
+  test("a sum without interactions is judged by the coupling of its ions, at 0.1 and 1", () => {
+    const ideal = combine(electronPositronGas(), idealIons(), radiation());
+    const others = [combine(electronPositronGas()), attraction(0.1)];
+    const gamma = regime(1e4, 1e8, mix).parameters.ionCoupling; // falls like 1/T
+    const at = (coupling: number, equationOfState = ideal) =>
+      find("coulomb-neglected", [1e4, (1e8 * gamma) / coupling, mix, { equationOfState }]);
+    expect(at(0.0999)).toBeUndefined();
+    expect(at(0.1001)?.severity).toBe("strained");
+    expect(at(0.999)?.severity).toBe("strained");
+    expect(at(1.001)?.severity).toBe("outside");
+    expect(at(1.001)!.value).toBeCloseTo(1.001, 12);
+    for (const eos of others) expect(at(1.001, eos)).toBeUndefined();
+    expect(find("coulomb-neglected", [1e4, 1e7, mix])).toBeUndefined();
+  });
+
   test("an ideal sum and its state are stable; interactions switch the judgement of ideal ions off", () => {
     const eos = combine(electronPositronGas(), idealIons(), radiation());
     const options = { equationOfState: eos, state: eos.state(1e6, 2e7, mix) };
-    expect(regime(1e6, 2e7, mix, options).findings).toEqual([]);
+    expect(regime(1e6, 2e7, mix, options).findings.map(({ code }) => code)).toEqual(["coulomb-neglected"]);
     expect(find("ideal-ions-degenerate", [1e6, 1e5, mix, { equationOfState: eos }])).toBeDefined();
     expect(find("ideal-ions-degenerate", [1e6, 1e5, mix, { equationOfState: attraction(0.1) }])).toBeUndefined();
     const broken = { ...eos.state(1e6, 2e7, mix), pressure: -1 };
