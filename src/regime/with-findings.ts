@@ -12,6 +12,7 @@ export type StateWithFindings = State & {
 
 /** An equation of state whose `state` carries findings; `evaluate` and `freeEnergy` are the original ones. */
 export interface EquationOfStateWithFindings extends EquationOfState {
+  /** As {@link EquationOfState.state}, with the findings. */
   state(density: number, temperature: number, composition: Composition): StateWithFindings;
 }
 
