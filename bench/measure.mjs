@@ -35,8 +35,8 @@ function methodFor(name) {
     };
   }
   if (name === "Coulomb") {
-    // Cold matter too thin to be ionised is refused: the corner below 1e5 g/cm^3 is left out.
-    const density = points.density.map((value) => Math.max(value, 1e5));
+    // Cold matter too thin to be ionised is refused: the region's densities, moved to 1e5 to 1e10 g/cm^3.
+    const density = points.density.map((value) => 1e5 * (value / 2e2) ** (5 / 8));
     const eos = whiteDwarfMatter();
     const output = columns(usual);
     return () => {
