@@ -2,42 +2,16 @@
  * Whole states of the Coulomb plasma, liquid and crystal, and the share of each term, against values computed elsewhere with
  * 95-112 digit Taylor arithmetic (fixtures state-liquid.json, state-crystal.json, state-third.json say how).
  */
-import { readFileSync } from "node:fs";
 import { expect, test } from "vitest";
 import { coulombPlasma } from "../../src/coulomb/coulomb-plasma.js";
 import { electronPositronGas } from "../../src/fermi-gas/electron-positron-gas.js";
-import { type Composition, composition } from "../../src/matter/composition.js";
+import type { Composition } from "../../src/matter/composition.js";
 import { radiation } from "../../src/radiation.js";
 import { combine } from "../../src/thermodynamics/combine.js";
 import type { Contribution } from "../../src/thermodynamics/contribution.js";
-import type { EquationOfState, FreeEnergyDerivatives, State } from "../../src/thermodynamics/equation-of-state.js";
+import type { EquationOfState, FreeEnergyDerivatives } from "../../src/thermodynamics/equation-of-state.js";
+import { columns, compositionOf, rowsOf } from "../fixtures/states.js";
 import { Measured } from "../measured.js";
-
-type Row = Readonly<Record<string, string>> & { readonly contrib: Readonly<Record<string, Record<string, string>>> };
-
-function rowsOf(name: string): Row[] {
-  return (JSON.parse(readFileSync(new URL(`../fixtures/${name}`, import.meta.url), "utf8")) as { rows: Row[] }).rows;
-}
-
-function compositionOf(text: string): Composition {
-  const [labels, fractions = "1"] = text.split("=");
-  const values = fractions.split(":").map(Number);
-  return composition(Object.fromEntries(labels!.split(":").map((label, i) => [label, values[i]!])));
-}
-
-const columns: Readonly<Record<string, keyof State>> = {
-  P: "pressure",
-  e: "specificEnergy",
-  s: "specificEntropy",
-  c_v: "heatCapacityV",
-  c_p: "heatCapacityP",
-  chi_rho: "chiRho",
-  chi_T: "chiT",
-  gamma1: "gamma1",
-  gamma3: "gamma3",
-  nabla_ad: "adiabaticGradient",
-  c_s: "soundSpeed",
-};
 
 /** Terms of the reference by the names of the library's parts. */
 const shares: Readonly<Record<string, readonly string[]>> = {

@@ -2,42 +2,19 @@
  * Whole states and third-order members of the ideal plasma against values computed elsewhere with 95-112 digit Taylor
  * arithmetic (fixtures state-ideal.json and state-third.json say how).
  */
-import { readFileSync } from "node:fs";
 import { expect, test } from "vitest";
 import { electronPositronGas } from "../../src/fermi-gas/electron-positron-gas.js";
 import { idealIons } from "../../src/ions/ideal-ions.js";
-import { type Composition, composition } from "../../src/matter/composition.js";
 import { radiation } from "../../src/radiation.js";
 import { combine } from "../../src/thermodynamics/combine.js";
 import type { FreeEnergyDerivatives, State } from "../../src/thermodynamics/equation-of-state.js";
 import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
+import { compositionOf, rowsOf, columns as totals } from "../fixtures/states.js";
 import { Measured } from "../measured.js";
 
-type Row = Readonly<Record<string, string>> & { readonly contrib: Readonly<Record<string, Record<string, string>>> };
-
-function rowsOf(name: string): Row[] {
-  return (JSON.parse(readFileSync(new URL(`../fixtures/${name}`, import.meta.url), "utf8")) as { rows: Row[] }).rows;
-}
-
-/** "C12:O16=0.5:0.5" -> composition. */
-function compositionOf(text: string): Composition {
-  const [labels, fractions = "1"] = text.split("=");
-  const values = fractions.split(":").map(Number);
-  return composition(Object.fromEntries(labels!.split(":").map((label, i) => [label, values[i]!])));
-}
-
+/** Totals of the fixture and the plasma parameters beside them. */
 const columns: Readonly<Record<string, keyof State>> = {
-  P: "pressure",
-  e: "specificEnergy",
-  s: "specificEntropy",
-  c_v: "heatCapacityV",
-  c_p: "heatCapacityP",
-  chi_rho: "chiRho",
-  chi_T: "chiT",
-  gamma1: "gamma1",
-  gamma3: "gamma3",
-  nabla_ad: "adiabaticGradient",
-  c_s: "soundSpeed",
+  ...totals,
   Gamma: "ionCoupling",
   Gamma_e: "electronCoupling",
   r_s: "densityParameter",
