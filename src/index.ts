@@ -8,11 +8,10 @@ export * from "./constants.js";
 export { type ColdCorrectionsOptions, coldCorrections } from "./coulomb/cold-corrections.js";
 export {
   type CoulombPlasma,
-  type CoulombPlasmaOptions,
   coulombPlasma,
-  type QuantumForm,
 } from "./coulomb/coulomb-plasma.js";
 export type { LatticeName } from "./coulomb/lattice.js";
+export type { CoulombPlasmaOptions, QuantumForm } from "./coulomb/options.js";
 export { meltingDensity, meltingTemperature, type Phase } from "./coulomb/phase.js";
 export { type RigidMelting, rigidPlasmaMelting } from "./coulomb/rigid-melting.js";
 export { type Transition, transition, withPhase } from "./coulomb/transition.js";

@@ -1,7 +1,8 @@
 /**
  * The newcomer's equation of state: everything this library knows about the matter of a white dwarf, in one call.
  */
-import { type CoulombPlasmaOptions, coulombPlasma } from "./coulomb/coulomb-plasma.js";
+import { coulombPlasma } from "./coulomb/coulomb-plasma.js";
+import type { CoulombPlasmaOptions } from "./coulomb/options.js";
 import { requireFlags } from "./errors.js";
 import { electronPositronGas } from "./fermi-gas/electron-positron-gas.js";
 import { idealIons } from "./ions/ideal-ions.js";

@@ -1,7 +1,7 @@
 /** The matter that commands speak of: the equation of state without some of its terms, and a composition. */
 
 import * as z from "zod/mini";
-import type { CoulombPlasmaOptions } from "../coulomb/coulomb-plasma.js";
+import type { CoulombPlasmaOptions } from "../coulomb/options.js";
 import { FermistateError, isFermistateError } from "../errors.js";
 import { type Composition, composition, type NucleonFractions } from "../matter/composition.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";

@@ -29,12 +29,13 @@ import { addNaturalDerivatives, type Order, SECOND_ORDER_COUNT } from "../thermo
 import { addAnharmonic, addGroundState, addPhonons, phononFit } from "./crystal.js";
 import { addCrystalPolarisation } from "./crystal-polarisation.js";
 import { addExchangeCorrelation } from "./exchange.js";
-import { bcc, fcc, type LatticeName } from "./lattice.js";
+import { bcc, fcc } from "./lattice.js";
 import { addLiquidCorrelation } from "./liquid.js";
 import { addLiquidPolarisation, preparePolarisation } from "./liquid-polarisation.js";
 import { addBaikoYakovlev, addTwoOscillators, addWignerKirkwood } from "./liquid-quantum.js";
 import { addMixture } from "./mixing.js";
-import { defaultMeltingCoupling, highestCrystalDensity, type Phase } from "./phase.js";
+import { type CoulombPlasmaOptions, checkedOptions, type QuantumForm } from "./options.js";
+import { highestCrystalDensity } from "./phase.js";
 import {
   POINT_CUBE_ROOT,
   POINT_DENSITY,
@@ -53,59 +54,6 @@ import {
   POINT_X,
 } from "./slots.js";
 import { type CoulombSpecies, coulombSpecies } from "./species.js";
-
-/** Which form the quantum correction of the liquid takes. */
-export type QuantumForm = "two-oscillators" | "wigner-kirkwood" | "baiko-yakovlev";
-
-/** Options of {@link coulombPlasma}: what is in, and which phase. */
-export interface CoulombPlasmaOptions {
-  /**
-   * Phase of the ions. "equilibrium" decides by the coupling (see phase.ts); the others force one, also where it is
-   * superheated or supercooled: the fits then end at Gamma = 100 and 200.
-   * @defaultValue "equilibrium"
-   */
-  readonly phase?: Phase | "equilibrium";
-  /**
-   * sum x_j Gamma_j at which matter melts.
-   * @defaultValue 175
-   */
-  readonly meltingCoupling?: number;
-  /**
-   * Lattice of the crystal. No anharmonic terms are known here for fcc.
-   * @defaultValue "bcc"
-   */
-  readonly lattice?: LatticeName;
-  /**
-   * Quantum correction of the liquid, or false for a classical liquid.
-   * @defaultValue "two-oscillators", whose heat capacity stays within the -3 k of a quantum liquid
-   */
-  readonly quantum?: QuantumForm | false;
-  /**
-   * Polarisation of the electrons by the ions.
-   * @defaultValue true
-   */
-  readonly polarisation?: boolean;
-  /**
-   * Exchange and correlation of the electrons.
-   * @defaultValue true
-   */
-  readonly exchange?: boolean;
-  /**
-   * Anharmonic terms of the crystal.
-   * @defaultValue true
-   */
-  readonly anharmonic?: boolean;
-  /**
-   * Corrections to linear mixing in liquid and crystal.
-   * @defaultValue true
-   */
-  readonly mixture?: boolean;
-  /**
-   * Whether free neutrons count as a classical gas beside the nuclei.
-   * @defaultValue true
-   */
-  readonly freeNeutrons?: boolean;
-}
 
 /** The Coulomb plasma as a contribution: what {@link coulombPlasma} returns. */
 export interface CoulombPlasma extends Contribution {
@@ -131,18 +79,6 @@ interface Terms {
   readonly exchange: boolean;
 }
 
-const defaults: Required<CoulombPlasmaOptions> = {
-  phase: "equilibrium",
-  meltingCoupling: defaultMeltingCoupling,
-  lattice: "bcc",
-  quantum: "two-oscillators",
-  polarisation: true,
-  exchange: true,
-  anharmonic: true,
-  mixture: true,
-  freeNeutrons: true,
-};
-
 const nothing: Terms = {
   idealIons: false,
   correlation: false,
@@ -165,7 +101,7 @@ const nothing: Terms = {
  * @throws `invalid-option`, `out-of-range` (a melting coupling outside 100 to 300)
  */
 export function coulombPlasma(options: CoulombPlasmaOptions = {}): CoulombPlasma {
-  const chosen = checked(options);
+  const chosen = checkedOptions(options);
   const terms: Terms = {
     idealIons: true,
     correlation: true,
@@ -365,34 +301,4 @@ function refuseColdLiquid(options: Required<CoulombPlasmaOptions>, point: Float6
         ? "> 0 K: a classical liquid has no entropy at T = 0 to speak of (Coulomb plasma, phase liquid)"
         : `> 0 K at ${point[DENSITY]} g/cm^3: these nuclei do not freeze there (quantum melting)`,
   });
-}
-
-/** The options with defaults; refuses strangers. */
-function checked(options: CoulombPlasmaOptions): Required<CoulombPlasmaOptions> {
-  const chosen = { ...defaults, ...options };
-  const closed: Readonly<Record<string, readonly unknown[]>> = {
-    phase: ["equilibrium", "liquid", "crystal"],
-    lattice: ["bcc", "fcc"],
-    quantum: ["two-oscillators", "wigner-kirkwood", "baiko-yakovlev", false],
-    polarisation: [true, false],
-    exchange: [true, false],
-    anharmonic: [true, false],
-    mixture: [true, false],
-    freeNeutrons: [true, false],
-  };
-  for (const [name, value] of Object.entries(chosen)) {
-    if (name === "meltingCoupling") continue;
-    const allowed = Object.hasOwn(closed, name) ? closed[name] : undefined;
-    if (allowed?.includes(value)) continue;
-    throw new FermistateError("invalid-option", {
-      argument: name,
-      given: value,
-      allowed: allowed === undefined ? `one of ${Object.keys(defaults).join(", ")}` : allowed.map(String).join(", "),
-    });
-  }
-  const coupling: unknown = chosen.meltingCoupling;
-  if (!(typeof coupling === "number" && coupling >= 100 && coupling <= 300)) {
-    throw new FermistateError("out-of-range", { argument: "meltingCoupling", given: coupling, allowed: "100 to 300" });
-  }
-  return Object.freeze(chosen);
 }

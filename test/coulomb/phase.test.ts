@@ -7,9 +7,10 @@
  */
 import { describe, expect, test } from "vitest";
 import { boltzmannConstant } from "../../src/constants.js";
-import { type CoulombPlasmaOptions, coulombPlasma } from "../../src/coulomb/coulomb-plasma.js";
+import { coulombPlasma } from "../../src/coulomb/coulomb-plasma.js";
 import { bcc } from "../../src/coulomb/lattice.js";
 import { addLiquidCorrelation } from "../../src/coulomb/liquid.js";
+import type { CoulombPlasmaOptions } from "../../src/coulomb/options.js";
 import { meltingDensity, meltingTemperature } from "../../src/coulomb/phase.js";
 import * as slot from "../../src/coulomb/slots.js";
 import { transition, withPhase } from "../../src/coulomb/transition.js";
