@@ -7,9 +7,9 @@ import { electronPositronGas } from "../../src/fermi-gas/electron-positron-gas.j
 import { idealIons } from "../../src/ions/ideal-ions.js";
 import { radiation } from "../../src/radiation.js";
 import { combine } from "../../src/thermodynamics/combine.js";
-import type { FreeEnergyDerivatives, State } from "../../src/thermodynamics/equation-of-state.js";
+import type { State } from "../../src/thermodynamics/equation-of-state.js";
 import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
-import { compositionOf, rowsOf, columns as totals } from "../fixtures/states.js";
+import { compareDerivatives, compositionOf, derivativeColumns, rowsOf, columns as totals } from "../fixtures/states.js";
 import { Measured } from "../measured.js";
 
 /** Totals of the fixture and the plasma parameters beside them. */
@@ -74,41 +74,17 @@ test("112 states of He, C/O, H/He and Fe, rho 1e-8 ... 1e13 g/cm^3, T 1e4 ... 1.
 });
 
 test("derivatives of the free energy to third order and (2,2)", () => {
-  const names: Readonly<Record<string, keyof FreeEnergyDerivatives>> = {
-    F: "f",
-    F_r: "fR",
-    F_t: "fT",
-    F_rr: "fRR",
-    F_rt: "fRT",
-    F_tt: "fTT",
-    F_rrr: "fRRR",
-    F_rrt: "fRRT",
-    F_rtt: "fRTT",
-    F_ttt: "fTTT",
-    F_rrtt: "fRRTT",
-  };
   const measured = new Measured();
   const rows = rowsOf("state-third.json").filter((row) => row["set"] === "ideal");
   for (const row of rows) {
-    const size = (name: string): number => Math.abs(Number(row[name]));
-    const scales: Readonly<Record<string, number>> = {
-      F_rrr: size("F_r") + size("F_rr"),
-      F_rrt: size("F_rt"),
-      F_rtt: size("F_rt"),
-      F_ttt: size("F_tt"),
-      F_rrtt: size("F_rt") + size("F_rtt"),
-    };
     const f = whiteDwarfMatter({ coulomb: false }).freeEnergy(
       Number(row["rho"]),
       Number(row["T"]),
       compositionOf(row["comp"]!),
       3,
     );
-    for (const [column, field] of Object.entries(names)) {
-      const expected = Number(row[column]);
-      measured.compare(column, f[field]!, expected, `${row["comp"]} ${row["rho"]} ${row["T"]}`, scales[column]);
-    }
+    compareDerivatives(measured, f, row);
   }
   expect(rows.length).toBe(12);
-  for (const column of Object.keys(names)) measured.expectBelow(column, 1e-14); // measured 5.2e-15 (F_ttt)
+  for (const column of derivativeColumns) measured.expectBelow(column, 1e-14); // measured 5.2e-15 (F_ttt)
 });
