@@ -102,8 +102,9 @@ export function addMixture(u: Float64Array, order: 2 | 3, point: Float64Array, m
  * x_i x_j Z_i^(5/3) dg(Z_j/Z_i, x_j/(x_i + x_j)).
  *
  * Ogata, Iyetomi, Ichimaru & Van Horn 1993, Phys. Rev. E 48, 1344, in the sum over pairs of Medin & Cumming 2010, Phys.
- * Rev. E 81, 036107 (both from memory). For charge ratios up to 4.5; continued beyond, where it is a guess. Isotopes count as one charge, as they must; the sum
- * over pairs would not see to that by itself. Proportional to Gamma: an alloy demixes as T -> 0.
+ * Rev. E 81, 036107 (both from memory). For charge ratios up to 4.5; continued beyond, where it is a guess. Isotopes
+ * count as one charge, as they must; the sum over pairs would not see to that by itself. Proportional to Gamma: an
+ * alloy demixes as T -> 0.
  */
 export function alloyDeviation(charged: readonly Species[]): number {
   const { shares, total } = chargeShares(charged);
@@ -123,8 +124,8 @@ export function alloyDeviation(charged: readonly Species[]): number {
 /**
  * dg(R, y) = C(R)/{1 + [27 (R - 1)/(1 + 0.1 (R - 1))] s (s - 0.3) (s - 0.7) (s - 1)}, s = sqrt y.
  *
- * The braces reach zero at R = 6.06 (s = 0.12 and 0.88): the printed fit has poles outside its range. So their ratio stays
- * at 4.5 beyond it, which keeps dg positive and continuous (an own continuation, of unknown error); C(R) goes on.
+ * The braces reach zero at R = 6.06 (s = 0.12 and 0.88): the printed fit has poles outside its range. So their ratio
+ * stays at 4.5 beyond it, which keeps dg positive and continuous (an own continuation, of unknown error); C(R) goes on.
  */
 function pairDeviation(ratio: number, y: number): number {
   const d = ratio - 1;

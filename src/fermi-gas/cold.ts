@@ -2,8 +2,9 @@
  * The Fermi gas at T = 0 in closed form, free of cancellation; x = p_F/mc, natural units of record.ts.
  *
  * n = x^3/3,  e_F = sqrt(1 + x^2) - 1,  P = (1/3) int_0^x p^4/sqrt(1 + p^2) dp = [x(2x^2-3)sqrt(1+x^2) + 3 asinh x]/24
- * (Frenkel 1928, Z. Phys. 50, 234; Chandrasekhar 1935, MNRAS 95, 207). The closed form cancels like x^-4 for small x, so three forms:
- * binomial series for x^2 < 0.03, entire series in asinh x for x^2 < 1, closed form above. Measured: 1.3e-15.
+ * (Frenkel 1928, Z. Phys. 50, 234; Chandrasekhar 1935, MNRAS 95, 207). The closed form cancels like x^-4 for small x,
+ * so three forms: binomial series for x^2 < 0.03, entire series in asinh x for x^2 < 1, closed form above. Measured:
+ * 1.3e-15.
  */
 
 import { ENERGY, type Order, PRESSURE, PRESSURE_R, PRESSURE_RR } from "../thermodynamics/free-energy.js";

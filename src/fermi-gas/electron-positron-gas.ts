@@ -2,7 +2,8 @@
  * Electrons and positrons as a contribution: ideal, at any degeneracy and any relativity, charge neutrality inside.
  *
  * The gas of n_- - n_+ = rho Y_e/m_u net electrons per volume in equilibrium with pairs, mu_+ = -mu_-. Exact physics of
- * the ideal gas; measured error at most 1e-14 in P, e, s, first derivatives and c_v over rho Y_e = 1e-15 to 1e15 g/cm^3 and T = 0 and 1e2 to 1e13 K (docs/guide/fermi-gas.md). Interactions are other contributions' matter.
+ * the ideal gas; measured error at most 1e-14 in P, e, s, first derivatives and c_v over rho Y_e = 1e-15 to 1e15 g/cm^3
+ * and T = 0 and 1e2 to 1e13 K (docs/guide/fermi-gas.md). Interactions are other contributions' matter.
  */
 import {
   electronDensityUnit,
@@ -43,9 +44,9 @@ import { antiparticleDensity } from "./single-species.js";
  * The ideal electron-positron gas as a contribution: any degeneracy, any relativity, T = 0 included.
  *
  * The net density n_- - n_+ = rho Y_e/m_u is given, mu_+ = -mu_-; the energy excludes the rest mass of net electrons and
- * includes 2 m_e c^2 per pair. Measured error at most 1e-14 in P, e, s and their first derivatives over rho Y_e = 1e-15 to
- * 1e15 g/cm^3, T = 0 and 1e2 to 1e13 K (docs/guide/fermi-gas.md, with sources). Answers at 1e-20 to 1e18 g/cm^3 and at
- * T = 0 or 1 to 1e13 K. Also tells the chemical potential, the degeneracy and the density of positrons.
+ * includes 2 m_e c^2 per pair. Measured error at most 1e-14 in P, e, s and their first derivatives over rho Y_e = 1e-15
+ * to 1e15 g/cm^3, T = 0 and 1e2 to 1e13 K (docs/guide/fermi-gas.md, with sources). Answers at 1e-20 to 1e18 g/cm^3 and
+ * at T = 0 or 1 to 1e13 K. Also tells the chemical potential, the degeneracy and the density of positrons.
  */
 export function electronPositronGas(): Contribution {
   const gas = new Float64Array(RECORD_LENGTH);

@@ -45,10 +45,12 @@ export function nodesOf(rung: number): Float64Array {
 }
 
 /**
- * Subtracts from SUM_P the error of the rule in the pressure of the sea, (2/3) int_1^inf t^4/sqrt(t^2 - 1) / (e^(2 pi t/h) - 1) dt.
+ * Subtracts from SUM_P the error of the rule in the pressure of the sea,
+ * (2/3) int_1^inf t^4/sqrt(t^2 - 1) / (e^(2 pi t/h) - 1) dt.
  *
  * f_- + f_+ = 1 - (an odd function of E); the 1 leaves p^4/(3E), whose trapezoid error, wrapped round the cut of E
- * at p = i t, is this number. It depends on the step alone, so it is exact for every temperature. The rung's nodes must have been asked for before.
+ * at p = i t, is this number. It depends on the step alone, so it is exact for every temperature. The rung's nodes must
+ * have been asked for before.
  */
 export function subtractVacuumTerm(gas: Float64Array, rung: number): void {
   gas[SUM_P]! -= vacuumTerms[rung]!;

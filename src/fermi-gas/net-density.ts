@@ -48,8 +48,8 @@ import { trapezoid } from "./trapezoid.js";
 const offset = new Float64Array(2);
 
 /**
- * Fills the record at its NET_DENSITY >= 0 (> 0 without `antiparticles`), KINETIC_MU = e_F and THETA > 0. At n = 0 nothing is charged: nu = 0.
- * Throws `no-convergence` after 40 sweeps (not seen).
+ * Fills the record at its NET_DENSITY >= 0 (> 0 without `antiparticles`), KINETIC_MU = e_F and THETA > 0. At n = 0
+ * nothing is charged: nu = 0. Throws `no-convergence` after 40 sweeps (not seen).
  */
 export function solveDensity(gas: Float64Array, antiparticles: boolean, order: Order): void {
   const regime = startValue(gas, antiparticles);
