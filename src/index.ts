@@ -44,6 +44,7 @@ export type {
   OptionalQuantity,
   State,
 } from "./thermodynamics/equation-of-state.js";
+export type { Evaluator } from "./thermodynamics/evaluator.js";
 export type { Order } from "./thermodynamics/free-energy.js";
 export { type Quantity, type QuantityName, quantities, quantityNames } from "./thermodynamics/quantities.js";
 export { type WhiteDwarfMatterOptions, whiteDwarfMatter } from "./white-dwarf-matter.js";

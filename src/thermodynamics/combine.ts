@@ -1,15 +1,14 @@
 /** Contributions -> an equation of state: adds their members, turns the sum into quantities. */
 import { FermistateError, withIndex } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
-import { DENSITY, fillPlasma, POINT_LENGTH, TEMPERATURE } from "../matter/plasma.js";
+import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
 import type { Contribution } from "./contribution.js";
 import { commonDomain, firstOutside, holds, refusePoint } from "./domain.js";
 import type { BatchInput, BatchOutput, EquationOfState, FreeEnergyDerivatives, State } from "./equation-of-state.js";
+import { type Evaluator, evaluatorOf } from "./evaluator.js";
 import { MEMBER_COUNT, naturalDerivatives, type Order, SECOND_ORDER_COUNT } from "./free-energy.js";
 import {
   FIRST_PLASMA_QUANTITY,
-  fillPlasmaQuantities,
-  fillQuantities,
   optionalQuantities,
   QUANTITY_COUNT,
   type QuantityName,
@@ -34,28 +33,9 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
   checkContributions(contributions);
   const parts = Object.freeze([...contributions]);
   const domain = commonDomain(parts);
-  const point = new Float64Array(POINT_LENGTH);
-  const members = new Float64Array(MEMBER_COUNT);
-  const cold = new Float64Array(3);
-  const record = new Float64Array(QUANTITY_COUNT);
+  const own = evaluatorOf(parts);
+  const { point, members, quantities: record } = own;
   const natural = new Float64Array(MEMBER_COUNT);
-
-  /** Members of the sum at the point's density and temperature. */
-  function sum(composition: Composition, order: Order): void {
-    fillPlasma(point, composition);
-    const count = order === 2 ? SECOND_ORDER_COUNT : MEMBER_COUNT;
-    for (let i = 0; i < count; i++) members[i] = 0;
-    for (let i = 0; i < parts.length; i++) parts[i]!.add(point, composition, order, members);
-  }
-
-  /** What ratios at T = 0 need besides the members. */
-  function fillCold(composition: Composition): void {
-    cold.fill(0);
-    for (const part of parts) {
-      part.addColdSlopes?.(point, composition, cold);
-      cold[2]! += part.residualEntropy?.(composition) ?? 0;
-    }
-  }
 
   function enter(density: number, temperature: number, composition: Composition): void {
     requireComposition(composition);
@@ -68,11 +48,10 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
 
   function state(density: number, temperature: number, composition: Composition): State {
     enter(density, temperature, composition);
-    sum(composition, 2);
-    for (const part of parts) part.addDetail?.(point, composition);
-    if (temperature === 0) fillCold(composition);
-    fillQuantities(point, members, cold, record, -1);
-    fillPlasmaQuantities(point, record);
+    own.fillMembers(composition, 2);
+    own.fillDetail(composition);
+    own.fillThermodynamics(composition, -1);
+    own.fillPlasma();
     return stateFrom(density, temperature, composition, record);
   }
 
@@ -91,16 +70,15 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
       columns.push(column);
     }
     const plasma = slots.some((slot) => slot >= FIRST_PLASMA_QUANTITY);
-    const detailed = output.positronDensity === undefined ? [] : parts.filter((part) => part.addDetail);
+    const detail = output.positronDensity !== undefined;
     for (let i = 0; i < count; i++) {
       const matter = each === undefined ? (composition as Composition) : each[i]!;
       point[DENSITY] = density[i]!;
       point[TEMPERATURE] = temperature[i]!;
-      sum(matter, 2);
-      for (let j = 0; j < detailed.length; j++) detailed[j]!.addDetail!(point, matter);
-      if (point[TEMPERATURE] === 0) fillCold(matter);
-      fillQuantities(point, members, cold, record, i);
-      if (plasma) fillPlasmaQuantities(point, record);
+      own.fillMembers(matter, 2);
+      if (detail) own.fillDetail(matter);
+      own.fillThermodynamics(matter, i);
+      if (plasma) own.fillPlasma();
       for (let j = 0; j < columns.length; j++) {
         const value = record[slots[j]!]!;
         if (Number.isNaN(value)) refuseQuantity(quantityNames[slots[j]!]!, i);
@@ -119,7 +97,7 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
       throw new FermistateError("invalid-option", { argument: "order", given: order, allowed: "2 or 3" });
     }
     enter(density, temperature, composition);
-    sum(composition, order);
+    own.fillMembers(composition, order);
     for (let i = 0; i < (order === 2 ? SECOND_ORDER_COUNT : MEMBER_COUNT); i++) {
       if (Number.isFinite(members[i])) continue;
       const allowed = "finite derivatives: a contribution has added something else";
@@ -129,8 +107,9 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
     return freeEnergyFrom(natural, order);
   }
 
+  const evaluator = (): Evaluator => evaluatorOf(parts);
   const name = parts.map((part) => part.name).join(" + ");
-  return Object.freeze({ name, contributions: parts, domain, state, evaluate, freeEnergy });
+  return Object.freeze({ name, contributions: parts, domain, state, evaluate, freeEnergy, evaluator });
 }
 
 function isList(value: Composition | readonly Composition[]): value is readonly Composition[] {

@@ -7,6 +7,7 @@
  */
 import type { Composition } from "../matter/composition.js";
 import type { Contribution, Domain } from "./contribution.js";
+import type { Evaluator } from "./evaluator.js";
 import type { Order } from "./free-energy.js";
 import type { QuantityName } from "./quantities.js";
 
@@ -78,6 +79,9 @@ export interface EquationOfState {
    * @param order - 2: the six of `naturalOrder` up to second order; 3: all eleven, third order and (2,2)
    */
   freeEnergy(density: number, temperature: number, composition: Composition, order?: Order): FreeEnergyDerivatives;
+
+  /** Working space for a loop of one's own that must neither allocate nor check: see {@link Evaluator}. */
+  evaluator(): Evaluator;
 }
 
 /** Scaled derivatives rho^i T^j d^(i+j)F/(d rho^i d T^j), erg/g; the third-order ones only at order 3. */
