@@ -15,6 +15,8 @@
  * - `invalid-composition`: empty, negative, not summing to one, or not made by `composition(...)`
  * - `length-mismatch`: columns of a batch that do not fit each other
  * - `unavailable-quantity`: no contribution of this equation of state knows the quantity
+ * - `no-solution`: no state of this matter has the quantities given to `solve`
+ * - `below-cold`: an energy or pressure below that of cold matter of the given density, which `limit` tells
  * - `unstable`: the sum of contributions has no positive pressure, resists neither compression nor heating, or holds NaN
  * - `no-convergence`: an iteration did not reach its promise (a defect of the library: please report)
  * - `too-large`: a request beyond the stated size limit
@@ -29,6 +31,8 @@ export type ErrorCode =
   | "invalid-composition"
   | "length-mismatch"
   | "unavailable-quantity"
+  | "no-solution"
+  | "below-cold"
   | "unstable"
   | "no-convergence"
   | "too-large"
@@ -45,6 +49,8 @@ export interface ErrorDetails {
   readonly allowed: string;
   /** Row of a batch, counted from 0. */
   readonly index?: number;
+  /** The limiting value that the given one would have to keep, where there is one. */
+  readonly limit?: number;
 }
 
 /** The only error class this library throws on purpose. */
@@ -61,6 +67,8 @@ export class FermistateError extends Error {
   readonly allowed: string;
   /** Row of a batch, counted from 0; undefined for a single call. */
   readonly index: number | undefined;
+  /** The limiting value in the units of the argument, for `below-cold` and `no-solution`; else undefined. */
+  readonly limit: number | undefined;
 
   /** Builds the message from the details: "density: given -1, allowed ...". */
   constructor(code: ErrorCode, details: ErrorDetails) {
@@ -71,6 +79,7 @@ export class FermistateError extends Error {
     this.given = details.given;
     this.allowed = details.allowed;
     this.index = details.index;
+    this.limit = details.limit;
   }
 }
 

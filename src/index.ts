@@ -18,6 +18,9 @@ export { type Transition, transition, withPhase } from "./coulomb/transition.js"
 export { type ErrorCode, type ErrorDetails, FermistateError, isFermistateError } from "./errors.js";
 export { electronPositronGas } from "./fermi-gas/electron-positron-gas.js";
 export { type FermionGasOptions, fermionGas } from "./fermi-gas/fermion-gas.js";
+export { type SearchColumn, type SolveInput, type SolveOutput, solveColumns } from "./inverse/columns.js";
+export type { GivenName } from "./inverse/questions.js";
+export { type Given, type Guess, type Solution, type SolveOptions, solve } from "./inverse/solve.js";
 export { type IdealIonsOptions, idealIons } from "./ions/ideal-ions.js";
 export * from "./matter/composition.js";
 export { type Nuclide, nuclide, nuclides } from "./matter/nuclides.js";
@@ -35,7 +38,7 @@ export {
 } from "./regime/with-findings.js";
 export { type Breakdown, breakdown, type Share } from "./thermodynamics/breakdown.js";
 export { combine } from "./thermodynamics/combine.js";
-export type { Contribution, Domain } from "./thermodynamics/contribution.js";
+export type { Contribution, Domain, PhasePair } from "./thermodynamics/contribution.js";
 export type {
   BatchInput,
   BatchOutput,

@@ -47,5 +47,9 @@ export function radiation(): Contribution {
       members[HEAT_T]! += 24 * p;
       members[PRESSURE_TT]! += 12 * p;
     },
+    rewrite(point: Float64Array): void {
+      const square = point[TEMPERATURE]! * point[TEMPERATURE]!;
+      point[RADIATION_PRESSURE] = (radiationConstant / 3) * square * square;
+    },
   });
 }

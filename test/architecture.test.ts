@@ -17,7 +17,7 @@ const floors: readonly (readonly string[])[] = [
   ["matter"],
   ["thermodynamics"],
   ["fermi-gas", "ions", "radiation"],
-  ["coulomb"],
+  ["coulomb", "inverse"],
   ["regime"],
   ["barotropes"],
   ["tables"],

@@ -19,7 +19,7 @@ export {
   RELATIVITY,
   TEMPERATURE,
 } from "../matter/plasma.js";
-export type { Contribution, Domain } from "../thermodynamics/contribution.js";
+export type { Contribution, Domain, PhasePair } from "../thermodynamics/contribution.js";
 export {
   addNaturalDerivatives,
   ENERGY,

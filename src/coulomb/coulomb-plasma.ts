@@ -24,7 +24,7 @@ import {
   TEMPERATURE,
 } from "../matter/plasma.js";
 import { addInverseThermal, addThermal, NATURAL_LENGTH, SINGLE_LENGTH } from "../numerics/natural.js";
-import type { Contribution } from "../thermodynamics/contribution.js";
+import type { Contribution, PhasePair } from "../thermodynamics/contribution.js";
 import { addNaturalDerivatives, type Order, SECOND_ORDER_COUNT } from "../thermodynamics/free-energy.js";
 import { addAnharmonic, addGroundState, addPhonons, phononFit } from "./crystal.js";
 import { addCrystalPolarisation } from "./crystal-polarisation.js";
@@ -35,7 +35,7 @@ import { addLiquidPolarisation, preparePolarisation } from "./liquid-polarisatio
 import { addBaikoYakovlev, addTwoOscillators, addWignerKirkwood } from "./liquid-quantum.js";
 import { addMixture } from "./mixing.js";
 import { type CoulombPlasmaOptions, checkedOptions, type QuantumForm } from "./options.js";
-import { highestCrystalDensity } from "./phase.js";
+import { fillBoundary, highestCrystalDensity, type Phase } from "./phase.js";
 import {
   POINT_CUBE_ROOT,
   POINT_DENSITY,
@@ -133,8 +133,16 @@ export function coulombPlasma(options: CoulombPlasmaOptions = {}): CoulombPlasma
   const parts = names
     .filter(([term]) => terms[term] !== false)
     .map(([term, name]) => contributionOf(name, { ...nothing, [term]: terms[term] }, chosen));
+  const side = (phase: Phase): Contribution => contributionOf("Coulomb plasma", terms, { ...chosen, phase });
+  const phases: PhasePair = Object.freeze({
+    liquid: side("liquid"),
+    crystal: side("crystal"),
+    fillBoundary: (composition: Composition, boundary: Float64Array): void =>
+      fillBoundary(composition, chosen.meltingCoupling, boundary),
+  });
   return Object.freeze({
     ...contributionOf("Coulomb plasma", terms, chosen),
+    ...(chosen.phase === "equilibrium" ? { phases } : {}),
     excludes: ["ideal ions", "cold corrections"],
     parts: Object.freeze(parts),
     options: chosen,
@@ -155,6 +163,7 @@ function contributionOf(name: string, terms: Terms, options: Required<CoulombPla
   let lastComposition: Composition | undefined;
   let species: CoulombSpecies;
   let crystalLimit = 0;
+  let crystal = false;
 
   function enter(point: Float64Array, composition: Composition): void {
     if (composition !== lastComposition) {
@@ -237,7 +246,7 @@ function contributionOf(name: string, terms: Terms, options: Required<CoulombPla
 
     add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void {
       enter(point, composition);
-      const crystal = isCrystal(point);
+      crystal = isCrystal(point);
       point[CRYSTAL_FRACTION] = crystal ? 1 : 0;
       if (!crystal && point[TEMPERATURE] === 0 && composition.ionsPerGram > 0) refuseColdLiquid(options, point);
       if (terms.idealIons) {
@@ -264,6 +273,10 @@ function contributionOf(name: string, terms: Terms, options: Required<CoulombPla
       }
       if (terms.exchange) addExchangeCorrelation(natural, order, plasma);
       addNaturalDerivatives(members, order, natural);
+    },
+
+    rewrite(point: Float64Array): void {
+      point[CRYSTAL_FRACTION] = crystal ? 1 : 0;
     },
 
     addColdSlopes(point: Float64Array, composition: Composition, slopes: Float64Array): void {

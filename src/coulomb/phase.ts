@@ -51,8 +51,9 @@ export function meltingTemperature(
   meltingCoupling: number = defaultMeltingCoupling,
 ): number {
   requireComposition(composition);
-  if (density > highestCrystalDensity(composition)) return 0;
-  return (coulombSpecies(composition, bcc).gammaE * composition.couplingMoment * Math.cbrt(density)) / meltingCoupling;
+  record[0] = density;
+  fillBoundary(composition, meltingCoupling, record);
+  return record[2]!;
 }
 
 /**
@@ -67,7 +68,27 @@ export function meltingDensity(
   meltingCoupling: number = defaultMeltingCoupling,
 ): number {
   requireComposition(composition);
-  const coupling = coulombSpecies(composition, bcc).gammaE * composition.couplingMoment;
-  const density = ((meltingCoupling * temperature) / coupling) ** 3;
-  return density <= highestCrystalDensity(composition) ? density : Number.POSITIVE_INFINITY;
+  record[1] = temperature;
+  fillBoundary(composition, meltingCoupling, record);
+  return record[3]!;
+}
+
+const record = new Float64Array(5);
+let lastComposition: Composition | undefined;
+const last = new Float64Array(2);
+
+/** The boundary as a record: see PhasePair in thermodynamics/contribution.ts. Allocates nothing per call. */
+export function fillBoundary(composition: Composition, meltingCoupling: number, boundary: Float64Array): void {
+  if (composition !== lastComposition) {
+    lastComposition = composition;
+    last[0] = coulombSpecies(composition, bcc).gammaE * composition.couplingMoment;
+    last[1] = highestCrystalDensity(composition);
+  }
+  const coupling = last[0]!;
+  const highest = last[1]!;
+  const ratio = (meltingCoupling * boundary[1]!) / coupling;
+  const density = ratio * ratio * ratio;
+  boundary[2] = boundary[0]! > highest ? 0 : (coupling * Math.cbrt(boundary[0]!)) / meltingCoupling;
+  boundary[3] = density <= highest ? density : Number.POSITIVE_INFINITY;
+  boundary[4] = highest;
 }

@@ -32,6 +32,9 @@ import {
   CENTRE,
   FERMI_MOMENTUM,
   KINETIC_MU,
+  N00,
+  N01,
+  N10,
   NET_DENSITY,
   NU,
   PSI,
@@ -60,6 +63,12 @@ export function electronPositronGas(): Contribution {
     scale[0] = electronPressureUnit / point[DENSITY]!;
   }
 
+  function tellPotential(point: Float64Array): void {
+    const theta = gas[THETA]!;
+    point[ELECTRON_CHEMICAL_POTENTIAL] = electronRestEnergy * (gas[CENTRE]! + theta * gas[PSI]!);
+    point[ELECTRON_DEGENERACY] = gas[CENTRE]! === 0 ? gas[PSI]! : gas[PSI]! + gas[CENTRE]! / theta;
+  }
+
   return Object.freeze({
     name: "electrons and positrons",
     validity: "Electrons and positrons are an ideal gas, exact to rounding as such; atoms are fully ionised.",
@@ -80,9 +89,20 @@ export function electronPositronGas(): Contribution {
         solveDensity(gas, true, order);
         addGasMembers(gas, scale, order, members);
       }
+      tellPotential(point);
+    },
+
+    rewrite(point: Float64Array): void {
+      const density = gas[NET_DENSITY]!;
       const theta = gas[THETA]!;
-      point[ELECTRON_CHEMICAL_POTENTIAL] = electronRestEnergy * (gas[CENTRE]! + theta * gas[PSI]!);
-      point[ELECTRON_DEGENERACY] = gas[CENTRE]! === 0 ? gas[PSI]! : gas[PSI]! + gas[CENTRE]! / theta;
+      if (density === 0 || theta === 0) return;
+      enter(point);
+      // d psi/d ln n and d psi/d ln T as in density-derivatives.ts.
+      const byDensity = (gas[NET_DENSITY]! - density) / density;
+      const byTemperature = (gas[THETA]! - theta) / theta;
+      gas[PSI]! += (gas[N00]! * byDensity - gas[N01]! * byTemperature) / gas[N10]!;
+      gas[ANTIPARTICLES] = -1; // to be computed where asked for
+      tellPotential(point);
     },
 
     addColdSlopes(point: Float64Array, _composition: Composition, slopes: Float64Array): void {

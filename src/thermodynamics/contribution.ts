@@ -17,6 +17,23 @@ export interface Domain {
   readonly zeroTemperature: boolean;
 }
 
+/**
+ * The two sides of a contribution whose particles freeze, each smooth, and the boundary between them: what a search needs
+ * so as never to step across.
+ */
+export interface PhasePair {
+  /** The contribution with its particles a liquid everywhere. */
+  readonly liquid: Contribution;
+  /** The contribution with its particles a crystal everywhere. */
+  readonly crystal: Contribution;
+  /**
+   * Reads density [g/cm^3] and temperature [K] from slots 0 and 1 of `boundary`, writes the melting temperature of that
+   * density (0: none) to slot 2, the melting density of that temperature (Infinity: none) to slot 3 and the highest
+   * density of a crystal to slot 4.
+   */
+  fillBoundary(composition: Composition, boundary: Float64Array): void;
+}
+
 /** One term of the free energy. */
 export interface Contribution {
   /** What it is, in words; unique within one equation of state. */
@@ -32,6 +49,8 @@ export interface Contribution {
   readonly excludes?: readonly string[];
   /** Its terms one by one, where it is a sum itself: for a breakdown. */
   readonly parts?: readonly Contribution[];
+  /** Its two sides, where it changes phase within its domain. */
+  readonly phases?: PhasePair;
 
   /**
    * Adds its members to `members`, in erg/g.
@@ -55,4 +74,10 @@ export interface Contribution {
    * at the same point.
    */
   addDetail?(point: Float64Array, composition: Composition): void;
+
+  /**
+   * Writes into `point` again what `add` wrote there. Called after `add` of order 3 where a solver has moved density and
+   * temperature by a step whose square is below rounding. A contribution that writes nothing leaves it out.
+   */
+  rewrite?(point: Float64Array, composition: Composition): void;
 }

@@ -5,9 +5,9 @@
  * because a double that crosses a call which is not inlined is boxed.
  */
 import type { Composition } from "../matter/composition.js";
-import { fillPlasma, POINT_LENGTH, TEMPERATURE } from "../matter/plasma.js";
+import { DENSITY, fillPlasma, POINT_LENGTH, TEMPERATURE } from "../matter/plasma.js";
 import type { Contribution } from "./contribution.js";
-import { MEMBER_COUNT, type Order, SECOND_ORDER_COUNT } from "./free-energy.js";
+import { MEMBER_COUNT, moveMembers, type Order, SECOND_ORDER_COUNT } from "./free-energy.js";
 import { fillPlasmaQuantities, fillQuantities, QUANTITY_COUNT } from "./quantities.js";
 
 /** Records of one point and the steps that fill them; nothing is checked and nothing allocated. */
@@ -18,12 +18,19 @@ export interface Evaluator {
   readonly members: Float64Array;
   /** At T = 0: limits of c_v/T and (dP/dT)/(rho T), and the residual entropy. */
   readonly cold: Float64Array;
+  /** Step in ln rho and ln T of {@link Evaluator.move}. */
+  readonly step: Float64Array;
   /** Quantities in the order of `quantityNames`, after the two steps that fill them. */
   readonly quantities: Float64Array;
   /** Members of the sum at the point: 6 for order 2, 11 for order 3. */
   fillMembers(composition: Composition, order: Order): void;
   /** What only some callers want and costs extra (the density of positrons); after the members. */
   fillDetail(composition: Composition): void;
+  /**
+   * Moves point and second-order members by {@link Evaluator.step}, so small that its square does not count; after
+   * members of order 3. A solver's last step costs no evaluation.
+   */
+  move(composition: Composition): void;
   /**
    * Quantities that follow from the members; `row` is for the error message, -1 for none.
    * @throws `unstable`
@@ -38,6 +45,7 @@ export function evaluatorOf(parts: readonly Contribution[]): Evaluator {
   const point = new Float64Array(POINT_LENGTH);
   const members = new Float64Array(MEMBER_COUNT);
   const cold = new Float64Array(3);
+  const step = new Float64Array(2);
   const quantities = new Float64Array(QUANTITY_COUNT);
   const detailed = parts.filter((part) => part.addDetail !== undefined);
 
@@ -50,6 +58,14 @@ export function evaluatorOf(parts: readonly Contribution[]): Evaluator {
 
   function fillDetail(composition: Composition): void {
     for (let i = 0; i < detailed.length; i++) detailed[i]!.addDetail!(point, composition);
+  }
+
+  function move(composition: Composition): void {
+    moveMembers(members, step);
+    point[DENSITY]! += point[DENSITY]! * step[0]!;
+    point[TEMPERATURE]! += point[TEMPERATURE]! * step[1]!;
+    fillPlasma(point, composition);
+    for (let i = 0; i < parts.length; i++) parts[i]!.rewrite?.(point, composition);
   }
 
   function fillCold(composition: Composition): void {
@@ -69,8 +85,10 @@ export function evaluatorOf(parts: readonly Contribution[]): Evaluator {
     point,
     members,
     cold,
+    step,
     quantities,
     fillMembers,
+    move,
     fillDetail,
     fillThermodynamics,
     fillPlasma: () => fillPlasmaQuantities(point, quantities),

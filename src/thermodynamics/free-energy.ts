@@ -108,3 +108,25 @@ export function addNaturalDerivatives(members: Float64Array, order: Order, f: Fl
   members[PRESSURE_TT]! += f[8]!;
   members[PRESSURE_RTT]! += f[10]! + 2 * f[8]!;
 }
+
+/**
+ * Moves the second-order members by steps in ln rho and ln T (`step[0]`, `step[1]`) so small that their squares do not
+ * count: the third-order members are their exact derivatives.
+ */
+export function moveMembers(members: Float64Array, step: Float64Array): void {
+  const du = step[0]!;
+  const dv = step[1]!;
+  const entropy = members[ENTROPY]!;
+  const heat = members[HEAT]!;
+  const p = members[PRESSURE]!;
+  const pR = members[PRESSURE_R]!;
+  const pT = members[PRESSURE_T]!;
+  const pRT = members[PRESSURE_RT]!;
+  const pTT = members[PRESSURE_TT]!;
+  members[ENERGY]! += (p - pT) * du + heat * dv;
+  members[ENTROPY] = entropy - pT * du + (entropy + heat) * dv;
+  members[HEAT] = heat - pTT * du + (2 * heat + members[HEAT_T]!) * dv;
+  members[PRESSURE] = p + (pR - p) * du + pT * dv;
+  members[PRESSURE_R] = pR + members[PRESSURE_RR]! * du + pRT * dv;
+  members[PRESSURE_T] = pT + (pRT - pT) * du + (pT + pTT) * dv;
+}

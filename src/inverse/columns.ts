@@ -1,0 +1,232 @@
+/** Inverse questions by the column: each row starts from its neighbour's answer, nothing is allocated per row. */
+import { FermistateError, withIndex } from "../errors.js";
+import { type Composition, requireComposition } from "../matter/composition.js";
+import { firstOutside, holds, refusePoint } from "../thermodynamics/domain.js";
+import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
+import { optionalQuantities, type QuantityName, quantities, quantityNames } from "../thermodynamics/quantities.js";
+import { finish } from "./finish.js";
+import { type GivenName, type Question, questionOf, requireGiven } from "./questions.js";
+import { refuseQuestion } from "./refusal.js";
+import {
+  BOTH,
+  COEXISTENCE,
+  DENSITY_AT_TEMPERATURE,
+  DENSITY_NOW,
+  EVALUATIONS,
+  FIRST_TARGET,
+  FOUND,
+  GUESSED,
+  SECOND_TARGET,
+  TEMPERATURE_AT_DENSITY,
+  TEMPERATURE_NOW,
+} from "./slots.js";
+import { solverFor } from "./solver.js";
+
+/** Input of {@link solveColumns}: two columns of given quantities, composition, and guesses. */
+export type SolveInput = { readonly [Name in GivenName]?: Float64Array } & {
+  /** One composition for all rows, or one per row. */
+  readonly composition: Composition | readonly Composition[];
+  /** Columns of starts (density, temperature); without them each row starts from the answer of the one before. */
+  readonly guess?: { readonly density?: Float64Array; readonly temperature?: Float64Array };
+};
+
+/** What a search tells beside the quantities of the state. */
+export type SearchColumn =
+  | "density"
+  | "temperature"
+  | "evaluations"
+  | "densityConditionNumber"
+  | "temperatureConditionNumber";
+
+/** Output of {@link solveColumns}: columns of the caller; only those given are written. */
+export type SolveOutput = { readonly [Name in QuantityName | SearchColumn]?: Float64Array };
+
+const searchColumns: readonly SearchColumn[] = [
+  "density",
+  "temperature",
+  "evaluations",
+  "densityConditionNumber",
+  "temperatureConditionNumber",
+];
+
+/**
+ * The states that have two given quantities, row by row; see {@link solve}.
+ *
+ * Rows that are neighbours in a model are worth keeping in order: a row starts from the third-order expansion about the
+ * one before, and where they differ by a per cent it takes two evaluations, often one. The columns of the output may be those
+ * of the input. Where a row has no answer the error names it; rows before it are written, those after it not.
+ *
+ * @throws as {@link solve}, with the row; `length-mismatch`, `unavailable-quantity`
+ */
+export function solveColumns(equationOfState: EquationOfState, input: SolveInput, output: SolveOutput): void {
+  const question = questionOf("input", input, ["composition", "guess"]);
+  const [a, b] = question.names.map((name) => input[name]) as [unknown, unknown];
+  const first = column(question.names[0], a);
+  const second = column(question.names[1], b, first.length);
+  const count = first.length;
+  const { composition } = input;
+  const each = Array.isArray(composition) ? (composition as readonly Composition[]) : undefined;
+  checkCompositions(composition, each, count);
+  checkGiven(equationOfState, question, first, second);
+  const guessed = guesses(input, count);
+  const { slots, columns, plasma } = outputs(output, count);
+  if (question.type < 0) {
+    direct(equationOfState, { density: first, temperature: second, composition }, output);
+    return;
+  }
+
+  const solver = solverFor(equationOfState);
+  const { searcher, at, conditions } = solver;
+  const { w, place } = searcher;
+  const wantsConditions =
+    output.densityConditionNumber !== undefined || output.temperatureConditionNumber !== undefined;
+  const knowsDensity = question.type === TEMPERATURE_AT_DENSITY;
+  const knowsTemperature = question.type === DENSITY_AT_TEMPERATURE;
+  let neighbour: Composition | undefined;
+  for (let i = 0; i < count; i++) {
+    const matter = each === undefined ? (composition as Composition) : each[i]!;
+    const follows = neighbour === matter && guessed === undefined && w[TEMPERATURE_NOW]! > 0;
+    if (follows) {
+      at[0] = knowsDensity ? Math.log(first[i]! / w[DENSITY_NOW]!) : 0;
+      at[1] = knowsTemperature ? Math.log(first[i]! / w[TEMPERATURE_NOW]!) : 0;
+    }
+    w[FIRST_TARGET] = question.type === BOTH ? first[i]! : second[i]!;
+    w[SECOND_TARGET] = second[i]!;
+    w[GUESSED] = follows || guessed !== undefined ? 1 : 0;
+    if (knowsDensity) w[DENSITY_NOW] = first[i]!;
+    else if (guessed?.density !== undefined) w[DENSITY_NOW] = guessed.density[i]!;
+    else if (!follows) w[DENSITY_NOW] = 1;
+    if (knowsTemperature) w[TEMPERATURE_NOW] = first[i]!;
+    else if (guessed?.temperature !== undefined) w[TEMPERATURE_NOW] = guessed.temperature[i]!;
+    else if (!follows) w[TEMPERATURE_NOW] = 1;
+    if (follows) solver.follow(question);
+    const end = solver.find(matter, question);
+    if (end !== FOUND) {
+      if (knowsDensity) w[DENSITY_NOW] = first[i]!;
+      refuseQuestion(equationOfState, matter, solver, question, end, i);
+    }
+    if (wantsConditions) solver.fillConditions(question);
+    const { quantities: record, point } = finish(searcher, matter, plasma, i);
+    neighbour = place[0] === COEXISTENCE ? undefined : matter;
+    if (output.density !== undefined) output.density[i] = knowsDensity ? first[i]! : point[0]!;
+    if (output.temperature !== undefined) output.temperature[i] = knowsTemperature ? first[i]! : point[1]!;
+    if (output.evaluations !== undefined) output.evaluations[i] = w[EVALUATIONS]!;
+    if (wantsConditions) {
+      if (output.densityConditionNumber !== undefined) output.densityConditionNumber[i] = conditions[0]!;
+      if (output.temperatureConditionNumber !== undefined) output.temperatureConditionNumber[i] = conditions[1]!;
+    }
+    for (let j = 0; j < columns.length; j++) {
+      const value = record[slots[j]!]!;
+      if (Number.isNaN(value)) refuseQuantity(quantityNames[slots[j]!]!, i);
+      columns[j]![i] = value;
+    }
+  }
+}
+
+function column(name: string, value: unknown, rows?: number): Float64Array {
+  if (!(value instanceof Float64Array)) {
+    throw new FermistateError("invalid-option", { argument: name, given: value, allowed: "a Float64Array" });
+  }
+  if (rows !== undefined && value.length !== rows) {
+    throw new FermistateError("length-mismatch", { argument: name, given: value.length, allowed: `${rows} rows` });
+  }
+  return value;
+}
+
+function checkCompositions(one: unknown, each: readonly Composition[] | undefined, count: number): void {
+  if (each === undefined) {
+    requireComposition(one);
+    return;
+  }
+  if (each.length !== count) {
+    throw new FermistateError("length-mismatch", {
+      argument: "composition",
+      given: each.length,
+      allowed: `${count} rows`,
+    });
+  }
+  for (const composition of each) requireComposition(composition);
+}
+
+/** Every given value must be one that matter can have, before the first row is written. */
+function checkGiven(eos: EquationOfState, question: Question, first: Float64Array, second: Float64Array): void {
+  const { names, type } = question;
+  for (let i = 0; i < first.length; i++) {
+    requireGiven(names[0], first[i], i);
+    requireGiven(names[1], second[i], i);
+    const density = names[0] === "density" ? first[i]! : eos.domain.density[0];
+    const temperature = names[0] === "temperature" ? first[i]! : eos.domain.temperature[0];
+    if (!holds(eos.domain, density, temperature)) refusePoint(eos.contributions, density, temperature, i);
+  }
+  if (type < 0) {
+    const outside = firstOutside(eos.domain, first, second);
+    if (outside >= 0) refusePoint(eos.contributions, first[outside], second[outside], outside);
+  }
+}
+
+function guesses(input: SolveInput, count: number): SolveInput["guess"] {
+  const { guess } = input;
+  if (guess === undefined) return undefined;
+  if (typeof guess !== "object" || guess === null) {
+    const allowed = "an object with columns density, temperature or both";
+    throw new FermistateError("invalid-option", { argument: "guess", given: guess, allowed });
+  }
+  for (const name of ["density", "temperature"] as const) {
+    const starts = guess[name];
+    if (starts === undefined) continue;
+    column(`guess.${name}`, starts, count);
+    for (let i = 0; i < count; i++) requireGiven(name, starts[i], i);
+  }
+  return guess.density === undefined && guess.temperature === undefined ? undefined : guess;
+}
+
+/** Slots and columns of the quantities wanted, and whether the costly ones are among them. */
+function outputs(output: SolveOutput, count: number): { slots: number[]; columns: Float64Array[]; plasma: boolean } {
+  if (typeof output !== "object" || output === null) {
+    const allowed = "an object of columns";
+    throw new FermistateError("invalid-option", { argument: "output", given: output, allowed });
+  }
+  const slots: number[] = [];
+  const columns: Float64Array[] = [];
+  for (const [name, values] of Object.entries(output)) {
+    if (values === undefined) continue;
+    const own = (searchColumns as readonly string[]).includes(name);
+    if (!own && !Object.hasOwn(quantities, name)) {
+      const allowed = `one of ${[...searchColumns, ...quantityNames].join(", ")}`;
+      throw new FermistateError("unavailable-quantity", { argument: "output", given: name, allowed });
+    }
+    const target = column(name, values);
+    if (target.length < count) {
+      const allowed = `>= ${count} rows`;
+      throw new FermistateError("length-mismatch", { argument: name, given: target.length, allowed });
+    }
+    if (own) continue;
+    slots.push(quantityNames.indexOf(name as QuantityName));
+    columns.push(target);
+  }
+  return { slots, columns, plasma: output.positronDensity !== undefined };
+}
+
+/** Density and temperature given: an ordinary batch, and no search to tell of. */
+function direct(
+  eos: EquationOfState,
+  input: { density: Float64Array; temperature: Float64Array; composition: SolveInput["composition"] },
+  output: SolveOutput,
+): void {
+  const { density, temperature, evaluations, densityConditionNumber, temperatureConditionNumber, ...state } = output;
+  eos.evaluate(input, state);
+  density?.set(input.density);
+  temperature?.set(input.temperature);
+  evaluations?.fill(1, 0, input.density.length);
+  densityConditionNumber?.fill(0, 0, input.density.length);
+  temperatureConditionNumber?.fill(0, 0, input.density.length);
+}
+
+function refuseQuantity(name: QuantityName, index: number): never {
+  const unknown = optionalQuantities.includes(name);
+  const allowed = unknown ? "quantities that a contribution provides" : "a number: a contribution has added NaN";
+  throw new FermistateError(
+    unknown ? "unavailable-quantity" : "unstable",
+    withIndex({ argument: "output", given: name, allowed }, index),
+  );
+}

@@ -1,0 +1,124 @@
+/** Start, search, second attempt: what `solve` and `solveColumns` share. Allocates nothing per question. */
+import type { Composition } from "../matter/composition.js";
+import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
+import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
+import { fillFunction } from "./functions.js";
+import { predict } from "./predict.js";
+import type { Question } from "./questions.js";
+import { type Searcher, searcherOf } from "./sides.js";
+import {
+  BY_U,
+  BY_V,
+  COEXISTENCE,
+  DENSITY_AT_TEMPERATURE,
+  DENSITY_NOW,
+  ENTROPY_KIND,
+  EVALUATIONS,
+  FOUND,
+  FUNCTION_LENGTH,
+  GUESSED,
+  PRESSURE_KIND,
+  SIZE,
+  TEMPERATURE_AT_DENSITY,
+  TEMPERATURE_NOW,
+} from "./slots.js";
+import { type Starter, starterOf } from "./start.js";
+
+/** A searcher with its starts. */
+export interface Solver {
+  /** Targets, start and result are in its records. */
+  readonly searcher: Searcher;
+  /** Condition numbers of density and temperature after {@link Solver.fillConditions}. */
+  readonly conditions: Float64Array;
+  /** ln of the given density, temperature over the neighbour's: read by {@link Solver.follow}. */
+  readonly at: Float64Array;
+  /** Answers a question whose targets, known variable and (where guessed) start are in the record; see slots.ts. */
+  find(composition: Composition, question: Question): number;
+  /** Moves the start from a neighbour's place to where the answer should be. */
+  follow(question: Question): void;
+  /** Writes the condition numbers of the last result. */
+  fillConditions(question: Question): void;
+}
+
+function solverOf(eos: EquationOfState): Solver {
+  const searcher = searcherOf(eos);
+  const starter: Starter = starterOf(eos);
+  const first = eos.evaluator();
+  const { w, f, place } = searcher;
+  const conditions = new Float64Array(2);
+  const at = new Float64Array(2);
+
+  function begin(composition: Composition, { type, first: kind, second }: Question): void {
+    if (type === TEMPERATURE_AT_DENSITY) {
+      starter.temperature(composition, kind, w);
+      return;
+    }
+    if (type === DENSITY_AT_TEMPERATURE) {
+      starter.density(composition, kind, w);
+      if (kind !== PRESSURE_KIND || !starter.isRemainder(composition, kind, DENSITY, w)) return;
+      evaluate(composition, kind, second);
+      starter.againDensity(composition, kind, w, f);
+      return;
+    }
+    starter.both(composition, kind, second, w);
+    if (second === ENTROPY_KIND || !starter.isRemainder(composition, second, TEMPERATURE, w)) return;
+    evaluate(composition, kind, second);
+    starter.again(composition, kind, second, w, f);
+  }
+
+  function evaluate(composition: Composition, kind: number, second: number): void {
+    first.point[DENSITY] = w[DENSITY_NOW]!;
+    first.point[TEMPERATURE] = w[TEMPERATURE_NOW]!;
+    first.fillMembers(composition, 3);
+    w[EVALUATIONS]! += 1;
+    fillFunction(f, 0, kind, first.point, first.members);
+    if (second >= 0) fillFunction(f, FUNCTION_LENGTH, second, first.point, first.members);
+  }
+
+  function find(composition: Composition, question: Question): number {
+    const density = w[DENSITY_NOW]!;
+    const temperature = w[TEMPERATURE_NOW]!;
+    w[EVALUATIONS] = 0;
+    const guessed = w[GUESSED] === 1;
+    if (!guessed) begin(composition, question);
+    const end = searcher.search(composition, question.type, question.first, question.second);
+    if (end === FOUND || !guessed) return end;
+    // A bad guess must not cost the answer.
+    w[GUESSED] = 0;
+    w[DENSITY_NOW] = density;
+    w[TEMPERATURE_NOW] = temperature;
+    begin(composition, question);
+    return searcher.search(composition, question.type, question.first, question.second);
+  }
+
+  function fillConditions({ type }: Question): void {
+    conditions.fill(0);
+    if (place[0] === COEXISTENCE) conditions.fill(1);
+    else if (type === TEMPERATURE_AT_DENSITY) conditions[1] = Math.abs(f[SIZE]! / f[BY_V]!);
+    else if (type === DENSITY_AT_TEMPERATURE) conditions[0] = Math.abs(f[SIZE]! / f[BY_U]!);
+    else {
+      const sizeA = f[SIZE]!;
+      const sizeB = f[FUNCTION_LENGTH + SIZE]!;
+      const bU = f[FUNCTION_LENGTH + BY_U]!;
+      const bV = f[FUNCTION_LENGTH + BY_V]!;
+      const inverse = 1 / Math.abs(f[BY_U]! * bV - f[BY_V]! * bU);
+      conditions[0] = (Math.abs(bV) * sizeA + Math.abs(f[BY_V]!) * sizeB) * inverse;
+      conditions[1] = (Math.abs(bU) * sizeA + Math.abs(f[BY_U]!) * sizeB) * inverse;
+    }
+  }
+
+  const follow = ({ type }: Question): void => predict(type, w, f, at);
+  return { searcher, conditions, at, find, follow, fillConditions };
+}
+
+const known = new WeakMap<EquationOfState, Solver>();
+
+/** The solver of an equation of state; made at the first question. */
+export function solverFor(eos: EquationOfState): Solver {
+  let solver = known.get(eos);
+  if (solver === undefined) {
+    solver = solverOf(eos);
+    known.set(eos, solver);
+  }
+  return solver;
+}
