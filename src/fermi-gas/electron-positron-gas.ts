@@ -20,6 +20,7 @@ import {
   FERMI_ENERGY,
   POSITRON_DENSITY,
   RELATIVITY,
+  ROUGH_THIRD_ORDER,
   TEMPERATURE,
 } from "../matter/plasma.js";
 import type { Contribution } from "../thermodynamics/contribution.js";
@@ -39,6 +40,7 @@ import {
   NU,
   PSI,
   RECORD_LENGTH,
+  ROUGH_THIRD,
   THETA,
 } from "./record.js";
 import { antiparticleDensity } from "./single-species.js";
@@ -60,6 +62,7 @@ export function electronPositronGas(): Contribution {
     gas[FERMI_MOMENTUM] = point[RELATIVITY]!;
     gas[KINETIC_MU] = point[FERMI_ENERGY]!;
     gas[THETA] = point[TEMPERATURE]! / electronRestTemperature;
+    gas[ROUGH_THIRD] = point[ROUGH_THIRD_ORDER]!;
     scale[0] = electronPressureUnit / point[DENSITY]!;
   }
 

@@ -34,6 +34,7 @@ import {
   Q,
   REGIME_CLASSICAL,
   REGIME_DEGENERATE,
+  ROUGH_THIRD,
   START_ERROR,
   STEP_LENGTH,
   STEP_UNIT,
@@ -60,15 +61,17 @@ export function solveDensity(gas: Float64Array, antiparticles: boolean, order: O
     return;
   }
   const degenerate = regime === REGIME_DEGENERATE;
+  // One sweep does where third order may be that of a place 1e-8 beside.
+  const once = order === 3 && gas[ROUGH_THIRD] === 1;
   let near = false;
   for (let sweeps = 0; sweeps < MOST_SWEEPS; sweeps++) {
-    sweep(gas, degenerate, antiparticles, order === 3 && near ? 3 : 2);
+    sweep(gas, degenerate, antiparticles, once || (order === 3 && near) ? 3 : 2);
     gas[SWEEPS] = sweeps + 1;
     measureOffset(gas, degenerate, antiparticles);
     const distance = Math.abs(offset[STEP_LENGTH]!);
     const unit = offset[STEP_UNIT]!;
     if (sweeps === 0) gas[START_ERROR] = unit > 0 ? distance / unit : distance;
-    if (order === 2 ? distance <= TAYLOR_RADIUS * unit : near) {
+    if (order === 2 || once ? distance <= TAYLOR_RADIUS * unit : near) {
       correct(gas, order);
       return;
     }

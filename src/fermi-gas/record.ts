@@ -88,6 +88,9 @@ export const SUM_M32 = 39;
 export const SUM_P = 40;
 export const SUM_Q = 41;
 
+/** 1 where third-order members need six digits only, see matter/plasma.ts. */
+export const ROUGH_THIRD = 42;
+
 /** Length of a record. */
 export const RECORD_LENGTH = 48;
 

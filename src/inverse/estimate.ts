@@ -54,6 +54,16 @@ export interface Estimate {
 const ionPhaseSpace =
   1.5 * Math.log((2 * Math.PI * reducedPlanckConstant ** 2) / (atomicMassConstant * boltzmannConstant));
 
+/** Phase space of dilute electrons over (beta (1 + 1.25 beta))^(3/2), cm^-3. */
+const phaseSpace = electronDensityUnit * Math.sqrt(Math.PI / 2);
+
+/** (a^-4 + b^-4)^(-1/4). */
+function fourthMean(a: number, b: number): number {
+  const ratio = a < b ? a / b : b / a;
+  const square = ratio * ratio;
+  return Math.min(a, b) / Math.sqrt(Math.sqrt(1 + square * square));
+}
+
 /** An estimator with its own records. */
 export function estimateOf(matter: EstimatedMatter): Estimate {
   const point = new Float64Array(POINT_LENGTH);
@@ -68,7 +78,8 @@ export function estimateOf(matter: EstimatedMatter): Estimate {
     const perGram = n / density;
     const kT = boltzmannConstant * temperature;
     const mean = 3 - 1.5 / (1 + 1.25 * beta); // kinetic energy of a dilute gas over kT
-    const space = electronDensityUnit * Math.SQRT1_2 * Math.sqrt(Math.PI) * (beta * (1 + 1.25 * beta)) ** 1.5;
+    const spread = beta * (1 + 1.25 * beta);
+    const space = phaseSpace * spread * Math.sqrt(spread);
     const cold =
       x < 0.3
         ? x * x * (0.3 - 0.0536 * x * x)
@@ -76,12 +87,13 @@ export function estimateOf(matter: EstimatedMatter): Estimate {
     const degenerate = (Math.PI * Math.PI * beta * energy) / (x * x);
     const thermal = kT / Math.sqrt(4 / (degenerate * degenerate) + 1 / (mean * mean));
     const dilution = degenerate / (degenerate + 2 * mean);
-    const exponent = ((2 - (x / energy) ** 2) / 3) * (1 - dilution) + dilution / mean;
+    const speed = x / energy;
+    const exponent = ((2 - speed * speed) / 3) * (1 - dilution) + dilution / mean;
     const rarity = space / n;
     const dilute = mean * Math.log1p(Math.exp(1 + (1 + Math.log(rarity)) / mean));
     values[PRESSURE_KIND]! += n * (electronRestEnergy * (fermi - cold) + exponent * thermal);
     values[ENERGY_KIND]! += perGram * (electronRestEnergy * cold + thermal);
-    values[ENTROPY_KIND]! += perGram * boltzmannConstant * (degenerate ** -4 + dilute ** -4) ** -0.25;
+    values[ENTROPY_KIND]! += perGram * boltzmannConstant * fourthMean(degenerate, dilute);
     if (beta < 0.02) return;
     const pairs = space * Math.exp(-1 / beta);
     const positrons =

@@ -65,7 +65,7 @@ export function nestedSearch(
       step = along > 0 ? rest / along : heavier ? 1 : -1;
       // The temperature moves along with the density.
       const turn = (step * f[FUNCTION_LENGTH + BY_U]!) / f[FUNCTION_LENGTH + BY_V]!;
-      const small = along > 0 && Math.abs(step) <= 2e-8 && Math.abs(turn) <= 2e-8;
+      const small = along > 0 && Math.abs(step) <= 6e-9 && Math.abs(turn) <= 6e-9;
       if (Math.abs(rest) <= 4e-16 * f[SIZE]! || small) {
         w[STEP_U] = small ? step : 0;
         if (small) w[STEP_V]! -= turn;

@@ -45,7 +45,9 @@ import {
 /** A residual of this many units of the terms' size is rounding. */
 const ROUNDING = 2 * 2 ** -52;
 /** A step whose square is below rounding: the members' own derivatives make it (free-energy.ts). */
-const LAST_STEP = 2e-8;
+const LAST_STEP = 6e-9;
+/** The same where the residual is rounding: such a step is as uncertain as it is long. */
+const LAST_NOISE = 1e-5;
 /** Steps of one search before it gives up. */
 const STEPS_IN_ONE = 80;
 const STEPS_IN_TWO = 30;
@@ -95,7 +97,8 @@ export function searchOne(
     const slope = f[by]! * sign;
     if (!Number.isFinite(rest)) return LOST;
     if (Math.abs(rest) <= slack * ROUNDING * f[SIZE]!) return FOUND;
-    if (Math.abs(rest) <= 8 * ROUNDING * f[SIZE]!) slack *= 2; // the values themselves scatter there
+    const scatter = Math.abs(rest) <= 8 * ROUNDING * f[SIZE]!; // the values themselves are no smoother
+    if (scatter) slack *= 2;
     if (rest > 0) {
       low = now;
       lowSeen = true;
@@ -117,7 +120,8 @@ export function searchOne(
         step = -3 / power;
         floor = true;
       }
-      if (Math.abs(step) <= LAST_STEP) {
+      const goal = now + now * step;
+      if (Math.abs(step) <= (scatter ? LAST_NOISE : LAST_STEP) && goal >= low && goal <= high) {
         w[inDensity ? STEP_U : STEP_V] = step;
         return FOUND;
       }
@@ -175,7 +179,8 @@ export function searchTwo(
       w[STEP_V] = 0;
       return FOUND;
     }
-    if (merit <= 8 * ROUNDING) slack *= 2;
+    const scatter = merit <= 8 * ROUNDING;
+    if (scatter) slack *= 2;
     const aU = f[BY_U]!;
     const aV = f[BY_V]!;
     const bU = f[FUNCTION_LENGTH + BY_U]!;
@@ -207,7 +212,7 @@ export function searchTwo(
     du = (bV * wayA - aV * wayB) * inverse;
     dv = (aU * wayB - bU * wayA) * inverse;
     const length = Math.max(Math.abs(du), Math.abs(dv));
-    if (length <= LAST_STEP) {
+    if (length <= (scatter ? LAST_NOISE : LAST_STEP)) {
       w[STEP_U] = du;
       w[STEP_V] = dv;
       return FOUND;

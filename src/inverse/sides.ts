@@ -9,7 +9,7 @@
  * given, the coexisting phases have one pressure; with two energies or entropies, one density.
  */
 import type { Composition } from "../matter/composition.js";
-import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
+import { DENSITY, ROUGH_THIRD_ORDER, TEMPERATURE } from "../matter/plasma.js";
 import type { PhasePair } from "../thermodynamics/contribution.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { type Evaluator, evaluatorOf } from "../thermodynamics/evaluator.js";
@@ -79,6 +79,7 @@ export function searcherOf(eos: EquationOfState): Searcher {
     evaluatorOf(eos.contributions.map((part) => part.phases?.[phase] ?? part));
   const liquid = phases && sideOf("liquid");
   const crystal = phases && sideOf("crystal");
+  for (const ev of [whole, liquid, crystal]) if (ev !== undefined) ev.point[ROUGH_THIRD_ORDER] = 1;
   const [lowestDensity, highestDensity] = eos.domain.density;
   const [lowestTemperature, highestTemperature] = eos.domain.temperature;
 
@@ -152,7 +153,8 @@ export function searcherOf(eos: EquationOfState): Searcher {
       if (next < 0 || next > 2 || (next === 2 && limit >= highestDensity)) return end;
       const edge = Math.max(piece, next) === 1 ? freezing : limit;
       w[DENSITY_NOW] = edge;
-      if (rising === -way) return coexist(composition, kind, edge, edge);
+      // Where quantum melting ends the crystal no two phases are in balance: what lies in that gap has no state.
+      if (rising === -way) return edge === freezing ? coexist(composition, kind, edge, edge) : LOST;
       rising = way;
       piece = next;
     }

@@ -55,12 +55,13 @@ export interface Solution {
   /** Largest deviation of a given quantity from the state's, relative to the size of its terms. */
   readonly residual: number;
   /**
-   * By how much a relative error of the given quantities is amplified in density and temperature (0 for a given one).
-   * In degenerate matter energy and pressure hardly depend on temperature, and this is large.
+   * By how much relative errors of the two given quantities are amplified in density and temperature, and 1 for the rounding of
+   * the answer itself; 0 for what was given. In degenerate matter energy and pressure hardly depend on temperature, and this is
+   * large.
    */
   readonly conditionNumber: { readonly density: number; readonly temperature: number };
   /**
-   * Relative uncertainty of density and temperature that rounding of the given quantities leaves: 4 x 2^-52 times the condition
+   * Relative uncertainty of density and temperature that rounding of the given quantities and of the equation of state leaves: 8 x 2^-52 times the condition
    * number. Where it is not small the temperature is noise.
    */
   readonly uncertainty: { readonly density: number; readonly temperature: number };
@@ -189,7 +190,7 @@ function solutionOf(
   }
   const density = question.names[0] === "density" ? first : point[0]!;
   const temperature = question.names[0] === "temperature" ? first : point[1]!;
-  const rounding = 4 * 2 ** -52;
+  const rounding = 8 * 2 ** -52;
   return Object.freeze({
     state: stateFrom(density, temperature, composition, quantities),
     evaluations: w[EVALUATIONS]!,

@@ -93,17 +93,18 @@ function solverOf(eos: EquationOfState): Solver {
 
   function fillConditions({ type }: Question): void {
     conditions.fill(0);
+    // 1 for the rounding of the answer itself, and the amplified errors of both given quantities.
     if (place[0] === COEXISTENCE) conditions.fill(1);
-    else if (type === TEMPERATURE_AT_DENSITY) conditions[1] = Math.abs(f[SIZE]! / f[BY_V]!);
-    else if (type === DENSITY_AT_TEMPERATURE) conditions[0] = Math.abs(f[SIZE]! / f[BY_U]!);
+    else if (type === TEMPERATURE_AT_DENSITY) conditions[1] = 1 + (f[SIZE]! + Math.abs(f[BY_U]!)) / Math.abs(f[BY_V]!);
+    else if (type === DENSITY_AT_TEMPERATURE) conditions[0] = 1 + (f[SIZE]! + Math.abs(f[BY_V]!)) / Math.abs(f[BY_U]!);
     else {
       const sizeA = f[SIZE]!;
       const sizeB = f[FUNCTION_LENGTH + SIZE]!;
       const bU = f[FUNCTION_LENGTH + BY_U]!;
       const bV = f[FUNCTION_LENGTH + BY_V]!;
       const inverse = 1 / Math.abs(f[BY_U]! * bV - f[BY_V]! * bU);
-      conditions[0] = (Math.abs(bV) * sizeA + Math.abs(f[BY_V]!) * sizeB) * inverse;
-      conditions[1] = (Math.abs(bU) * sizeA + Math.abs(f[BY_U]!) * sizeB) * inverse;
+      conditions[0] = 1 + (Math.abs(bV) * sizeA + Math.abs(f[BY_V]!) * sizeB) * inverse;
+      conditions[1] = 1 + (Math.abs(bU) * sizeA + Math.abs(f[BY_U]!) * sizeB) * inverse;
     }
   }
 

@@ -54,6 +54,12 @@ export const RADIATION_PRESSURE = 11;
 /** 1 where the ions are a crystal, 0 where they are a liquid or gas. */
 export const CRYSTAL_FRACTION = 12;
 
+/**
+ * 1 where the caller needs members of third order to six digits only: a search, which steps by them and moves by 1e-8. Those up
+ * to second order keep their full accuracy. Set once by the owner of the record.
+ */
+export const ROUGH_THIRD_ORDER = 13;
+
 /** Length of the record. */
 export const POINT_LENGTH = 16;
 
