@@ -43,11 +43,11 @@ import {
 } from "./slots.js";
 
 /** A residual of this many units of the terms' size is rounding. */
-const ROUNDING = 2 * 2 ** -52;
+const ROUNDING = 3 * 2 ** -52;
 /** A step whose square is below rounding: the members' own derivatives make it (free-energy.ts). */
 const LAST_STEP = 6e-9;
 /** The same where the residual is rounding: such a step is as uncertain as it is long. */
-const LAST_NOISE = 1e-5;
+const LAST_NOISE = 2e-8;
 /** Steps of one search before it gives up. */
 const STEPS_IN_ONE = 80;
 const STEPS_IN_TWO = 30;

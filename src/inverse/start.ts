@@ -1,4 +1,4 @@
-/** Where a search begins when nobody guesses: roots of the estimate by bisection, to a few per cent of the estimate. */
+/** Where a search begins when nobody guesses: roots of the estimate to less than a per cent of it. */
 
 import { electronRestTemperature } from "../constants.js";
 import type { Composition } from "../matter/composition.js";
@@ -26,7 +26,10 @@ export interface Starter {
   again(composition: Composition, first: number, second: number, w: Float64Array, f: Float64Array): void;
 }
 
-const HALVINGS = 13;
+/** Width in the logarithm at which a start is near enough, and relative difference of a quantity that ends a search. */
+const CLOSE = 0.004;
+const NEAR = 1e-3;
+const MOST_STEPS = 60;
 
 /** A starter for an equation of state; contributions it does not know are taken for ions. */
 export function starterOf(eos: EquationOfState): Starter {
@@ -50,20 +53,37 @@ export function starterOf(eos: EquationOfState): Starter {
 
   /**
    * Temperature of the target at the density in `point`, left there. Returns -1 or 1 where the target lies below or above
-   * all values, else 0.
+   * all values, else 0. The regula falsi in the Illinois form (Dowell & Jarratt 1971, BIT 11, 168), on a difference that is
+   * bounded, so that far from the root it halves.
    */
-  function bisectTemperature(composition: Composition, kind: number, w: Float64Array, slot: number): number {
+  function findTemperature(composition: Composition, kind: number, w: Float64Array, slot: number): number {
+    const target = w[slot]!;
     let low = bottom;
     let high = top;
-    for (let i = 0; i < HALVINGS; i++) {
-      const middle = 0.5 * (low + high);
-      point[TEMPERATURE] = Math.exp(middle);
+    let atLow = -1;
+    let atHigh = 1;
+    let last = 0;
+    let now = 0.5 * (low + high);
+    for (let i = 0; i < MOST_STEPS && high - low > CLOSE; i++) {
+      now = (low * atHigh - high * atLow) / (atHigh - atLow);
+      point[TEMPERATURE] = Math.exp(now);
       estimate.fill(composition);
-      if (values[kind]! < w[slot]!) low = middle;
-      else high = middle;
+      const value = values[kind]!;
+      const miss = (value - target) / (Math.abs(value) + Math.abs(target));
+      if (miss < 0) {
+        low = now;
+        atLow = miss;
+        if (last < 0) atHigh *= 0.5;
+      } else {
+        high = now;
+        atHigh = miss;
+        if (last > 0) atLow *= 0.5;
+      }
+      last = miss;
+      if (Math.abs(miss) < NEAR) break;
     }
-    point[TEMPERATURE] = Math.exp(0.5 * (low + high));
-    return low === bottom ? -1 : high === top ? 1 : 0;
+    point[TEMPERATURE] = Math.exp(now);
+    return low === bottom && now - bottom < 0.01 ? -1 : high === top && top - now < 0.01 ? 1 : 0;
   }
 
   /**
@@ -82,50 +102,64 @@ export function starterOf(eos: EquationOfState): Starter {
 
   function temperature(composition: Composition, kind: number, w: Float64Array): void {
     point[DENSITY] = w[DENSITY_NOW]!;
-    const beyond = bisectTemperature(composition, kind, w, FIRST_TARGET);
+    const beyond = findTemperature(composition, kind, w, FIRST_TARGET);
     liftTemperature(composition, beyond < 0, w);
   }
 
   function density(composition: Composition, kind: number, w: Float64Array): void {
-    let low = thin;
-    let high = dense;
-    const sign = kind === ENTROPY_KIND ? -1 : 1;
-    point[TEMPERATURE] = Math.max(w[TEMPERATURE_NOW]!, coldest);
-    for (let i = 0; i < HALVINGS; i++) {
-      const middle = 0.5 * (low + high);
-      point[DENSITY] = Math.exp(middle);
-      estimate.fill(composition);
-      if (sign * (values[kind]! - w[FIRST_TARGET]!) < 0) low = middle;
-      else high = middle;
-    }
-    w[DENSITY_NOW] = Math.exp(0.5 * (low + high));
+    range[0] = thin;
+    range[1] = dense;
+    range[2] = CLOSE;
+    findDensity(composition, kind, -1, w);
   }
 
-  /** Between these logarithms of density, to a number of halvings. */
-  function bisectBoth(composition: Composition, first: number, second: number, w: Float64Array): void {
+  /**
+   * Density of the first target between the logarithms in `range`, to the third number there; at the temperature of the search,
+   * or (`second` >= 0) at that of the second target, which is found too.
+   */
+  function findDensity(composition: Composition, first: number, second: number, w: Float64Array): void {
+    const target = w[FIRST_TARGET]!;
+    const sign = first === ENTROPY_KIND ? -1 : 1;
     let low = range[0]!;
     let high = range[1]!;
-    for (let i = range[2]!; i > 0; i--) {
-      const middle = 0.5 * (low + high);
-      point[DENSITY] = Math.exp(middle);
-      // Too little entropy for all temperatures: the answer is denser; too little energy, or too much of either: thinner.
-      const beyond = bisectTemperature(composition, second, w, SECOND_TARGET);
+    let atLow = -1;
+    let atHigh = 1;
+    let last = 0;
+    let now = 0.5 * (low + high);
+    point[TEMPERATURE] = Math.max(w[TEMPERATURE_NOW]!, coldest);
+    for (let i = 0; i < MOST_STEPS && high - low > range[2]!; i++) {
+      now = (low * atHigh - high * atLow) / (atHigh - atLow);
+      point[DENSITY] = Math.exp(now);
+      const beyond = second < 0 ? 0 : findTemperature(composition, second, w, SECOND_TARGET);
       estimate.fill(composition);
-      const denser = beyond === 0 ? values[first]! < w[FIRST_TARGET]! : beyond < 0 && second === ENTROPY_KIND;
-      if (denser) low = middle;
-      else high = middle;
+      const value = values[first]!;
+      let miss = (sign * (value - target)) / (Math.abs(value) + Math.abs(target));
+      // Too little entropy for all temperatures: the answer is denser; too little energy, or too much of either: thinner.
+      if (beyond !== 0) miss = beyond < 0 && second === ENTROPY_KIND ? -1 : 1;
+      if (miss < 0) {
+        low = now;
+        atLow = miss;
+        if (last < 0) atHigh *= 0.5;
+      } else {
+        high = now;
+        atHigh = miss;
+        if (last > 0) atLow *= 0.5;
+      }
+      last = miss;
+      if (Math.abs(miss) < NEAR * range[2]!) break;
     }
-    w[DENSITY_NOW] = Math.exp(0.5 * (low + high));
+    w[DENSITY_NOW] = Math.exp(now);
+    if (second < 0) return;
     point[DENSITY] = w[DENSITY_NOW]!;
-    const beyond = bisectTemperature(composition, second, w, SECOND_TARGET);
+    const beyond = findTemperature(composition, second, w, SECOND_TARGET);
     liftTemperature(composition, beyond < 0, w);
   }
 
   function both(composition: Composition, first: number, second: number, w: Float64Array): void {
     range[0] = thin;
     range[1] = dense;
-    range[2] = HALVINGS;
-    bisectBoth(composition, first, second, w);
+    range[2] = CLOSE;
+    findDensity(composition, first, second, w);
   }
 
   function isRemainder(composition: Composition, kind: number, slot: number, w: Float64Array): boolean {
@@ -159,8 +193,8 @@ export function starterOf(eos: EquationOfState): Starter {
     const now = Math.log(w[DENSITY_NOW]!);
     range[0] = Math.max(thin, now - 0.1);
     range[1] = Math.min(dense, now + 0.1);
-    range[2] = 32; // to 5e-11
-    bisectBoth(composition, first, second, w);
+    range[2] = 1e-10;
+    findDensity(composition, first, second, w);
     w[FIRST_TARGET] = target;
     w[SECOND_TARGET] = other;
   }

@@ -11,10 +11,10 @@ const count = 20_000;
 
 const random = generator(7);
 const states = Array.from({ length: count }, (_, i) => randomState(matter, i, random));
-/** Neighbours within half a per cent in density and temperature; undefined across the freezing boundary. */
+/** Neighbours within a quarter of a per cent in density and temperature; undefined across the freezing boundary. */
 const neighbours = states.map((state) => {
-  const density = state.density * (1 + 0.01 * (random() - 0.5));
-  const temperature = state.temperature * (1 + 0.01 * (random() - 0.5));
+  const density = state.density * (1 + 0.005 * (random() - 0.5));
+  const temperature = state.temperature * (1 + 0.005 * (random() - 0.5));
   const neighbour = matter.state(density, temperature, state.composition);
   return neighbour.crystalFraction === state.crystalFraction ? neighbour : undefined;
 });
