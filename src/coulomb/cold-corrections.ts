@@ -70,7 +70,8 @@ export function coldCorrections(options: ColdCorrectionsOptions = {}): Contribut
   const ofSevenThirds = new Float64Array(NATURAL_LENGTH);
   const perElectron = new Float64Array(NATURAL_LENGTH);
 
-  function fill(x: number, composition: Composition, order: Order): void {
+  function fill(point: Float64Array, composition: Composition, order: Order): void {
+    const x = point[RELATIVITY]!;
     const { fiveThirds, sevenThirds } = composition.chargeMoments;
     const unit = composition.electronsPerGram * electronRestEnergy;
     ofFiveThirds.fill(0);
@@ -115,9 +116,8 @@ export function coldCorrections(options: ColdCorrectionsOptions = {}): Contribut
       "below the Fermi energy or x_r is below about 0.1.",
     excludes: ["Coulomb plasma"],
     add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void {
-      const x = point[RELATIVITY]!;
-      if (x === 0) return;
-      fill(x, composition, order);
+      if (point[RELATIVITY] === 0) return;
+      fill(point, composition, order);
       addNaturalDerivatives(members, order, ofFiveThirds);
       addNaturalDerivatives(members, order, ofSevenThirds);
       addNaturalDerivatives(members, order, perElectron);
@@ -126,9 +126,8 @@ export function coldCorrections(options: ColdCorrectionsOptions = {}): Contribut
     // At fixed n_e the first two are sums over nuclei, dF/dY_a = phi_a + (Z_a/Y_e) rho F_rho; the third has (Z_a/Y_e) F
     // for phi_a. No temperature: dF and de are the same.
     addSpecies(point: Float64Array, composition: Composition, rows: Float64Array): void {
-      const x = point[RELATIVITY]!;
-      if (x === 0) return;
-      fill(x, composition, 2);
+      if (point[RELATIVITY] === 0) return;
+      fill(point, composition, 2);
       const { fiveThirds, sevenThirds } = composition.chargeMoments;
       const first = ofFiveThirds[1]! + ofSevenThirds[1]! + perElectron[1]!;
       const second = first + ofFiveThirds[3]! + ofSevenThirds[3]! + perElectron[3]!;
