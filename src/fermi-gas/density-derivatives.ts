@@ -25,7 +25,26 @@ import {
   PRESSURE_T,
   PRESSURE_TT,
 } from "../thermodynamics/free-energy.js";
-import { CENTRE, LAMBDA, M12, M23, N00, N01, N02, N10, N11, N12, N20, N21, N30, NET_DENSITY, P00, PSI, Q, THETA } from "./record.js";
+import {
+  CENTRE,
+  LAMBDA,
+  M12,
+  M23,
+  N00,
+  N01,
+  N02,
+  N10,
+  N11,
+  N12,
+  N20,
+  N21,
+  N30,
+  NET_DENSITY,
+  P00,
+  PSI,
+  Q,
+  THETA,
+} from "./record.js";
 
 /** Adds the gas of the record to `members`, times `scale[0]`: energy per gram of one natural unit of pressure. */
 export function addGasMembers(gas: Float64Array, scale: Float64Array, order: Order, members: Float64Array): void {

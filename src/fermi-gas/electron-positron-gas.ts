@@ -25,7 +25,12 @@ import {
 } from "../matter/plasma.js";
 import type { Contribution } from "../thermodynamics/contribution.js";
 import type { Order } from "../thermodynamics/free-energy.js";
-import { SPECIES_ENERGY, SPECIES_ENTROPY, SPECIES_LENGTH, SPECIES_PRESSURE } from "../thermodynamics/species-members.js";
+import {
+  SPECIES_ENERGY,
+  SPECIES_ENTROPY,
+  SPECIES_LENGTH,
+  SPECIES_PRESSURE,
+} from "../thermodynamics/species-members.js";
 import { addColdGasSlopes, addColdMembers, fillColdParticleMembers } from "./cold.js";
 import { addGasMembers, fillParticleMembers } from "./density-derivatives.js";
 import { solveDensity } from "./net-density.js";

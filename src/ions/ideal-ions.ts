@@ -25,7 +25,12 @@ import {
   PRESSURE_RT,
   PRESSURE_T,
 } from "../thermodynamics/free-energy.js";
-import { SPECIES_ENERGY, SPECIES_ENTROPY, SPECIES_LENGTH, SPECIES_PRESSURE } from "../thermodynamics/species-members.js";
+import {
+  SPECIES_ENERGY,
+  SPECIES_ENTROPY,
+  SPECIES_LENGTH,
+  SPECIES_PRESSURE,
+} from "../thermodynamics/species-members.js";
 
 /** Options of {@link idealIons}. */
 export interface IdealIonsOptions {
