@@ -40,8 +40,25 @@ export interface SpeciesTangent {
 /** k/m_u, erg/(g K). */
 export const boltzmannPerGram: number = boltzmannConstant / atomicMassConstant;
 
-/** The tangents of a composition on a lattice, charged species in their order. */
+/** Tangents of the compositions seen, for each lattice. */
+const known = /* @__PURE__ */ new WeakMap<LatticeConstants, WeakMap<Composition, readonly SpeciesTangent[]>>();
+
+/** The tangents of a composition on a lattice, charged species in their order; computed at the first call. */
 export function speciesTangents(composition: Composition, lattice: LatticeConstants): readonly SpeciesTangent[] {
+  let ofLattice = known.get(lattice);
+  if (ofLattice === undefined) {
+    ofLattice = new WeakMap();
+    known.set(lattice, ofLattice);
+  }
+  let found = ofLattice.get(composition);
+  if (found === undefined) {
+    found = compute(composition, lattice);
+    ofLattice.set(composition, found);
+  }
+  return found;
+}
+
+function compute(composition: Composition, lattice: LatticeConstants): readonly SpeciesTangent[] {
   const { ions, gammaE } = coulombSpecies(composition, lattice);
   const charged = composition.species.filter(({ chargeNumber }) => chargeNumber > 0);
   const neutral = composition.species.length - charged.length; // these come first

@@ -124,10 +124,18 @@ export function idealIons(options: IdealIonsOptions = {}): Contribution {
   });
 }
 
-/** ln[(x_a/g_a)(m_u/M_a)^(3/2)] of each species. */
-function entropyConstants({ species }: Composition): Float64Array {
-  return Float64Array.from(
-    species,
-    (one) => Math.log(one.numberFraction / one.spinDegeneracy) + 1.5 * Math.log(atomicMassConstant / one.ionMass),
-  );
+/** What {@link entropyConstants} has computed. */
+const known = /* @__PURE__ */ new WeakMap<Composition, Float64Array>();
+
+/** ln[(x_a/g_a)(m_u/M_a)^(3/2)] of each species; computed at the first call. */
+function entropyConstants(composition: Composition): Float64Array {
+  let found = known.get(composition);
+  if (found === undefined) {
+    found = Float64Array.from(
+      composition.species,
+      (one) => Math.log(one.numberFraction / one.spinDegeneracy) + 1.5 * Math.log(atomicMassConstant / one.ionMass),
+    );
+    known.set(composition, found);
+  }
+  return found;
 }

@@ -47,7 +47,7 @@ export interface MeanDerivatives {
  * ```ts
  * import { composition, meanDerivatives, whiteDwarfMatter } from "fermistate";
  * const ideal = whiteDwarfMatter({ coulomb: false });
- * meanDerivatives(ideal, 1e6, 1e8, composition({ C12: 1 })).electronsPerNucleon.pressure; // => 1.6117e23
+ * meanDerivatives(ideal, 1e6, 1e8, composition({ C12: 1 })).electronsPerNucleon.pressure; // => 8.2526e22
  * ```
  */
 export function meanDerivatives(

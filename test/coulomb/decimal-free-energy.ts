@@ -36,7 +36,7 @@ interface Nucleus {
 }
 
 /** Terms by the names that the parts of `coulombPlasma` have, and by those of `coldCorrections`' switches. */
-export type Terms = Readonly<Record<string, Decimal>>;
+type Terms = Readonly<Record<string, Decimal>>;
 /** F of each term at density, temperature and amounts Y = X/A in the order of `composition.species`. */
 export type FreeEnergy = (density: Decimal, temperature: Decimal, amounts: readonly Decimal[]) => Terms;
 

@@ -56,7 +56,7 @@ function bytesPerCall(temperature: [number, number], coulomb: boolean): number {
     const column = (low, high) => Float64Array.from({ length: count }, () => 10 ** (low + (high - low) * random()));
     const density = column(5, 9);
     const temperature = column(${temperature});
-    const matter = composition({ C12: 0.45, O16: 0.5, Ne20: 0.05 });
+    const matters = [0.05, 0.06].map((Ne20) => composition({ C12: 0.5 - Ne20, O16: 0.5, Ne20 }));
     const evaluator = whiteDwarfMatter({ coulomb: ${coulomb} }).evaluator();
     const rows = new Float64Array(12);
     const sums = new Float64Array(12);
@@ -64,6 +64,7 @@ function bytesPerCall(temperature: [number, number], coulomb: boolean): number {
       for (let i = 0; i < count; i++) {
         evaluator.point[0] = density[i];
         evaluator.point[1] = temperature[i];
+        const matter = matters[i & 1];
         evaluator.fillMembers(matter, 2);
         evaluator.fillSpecies(matter, rows);
         for (let j = 0; j < 12; j++) sums[j] += rows[j];
