@@ -127,14 +127,14 @@ function contributionOf(name: string, terms: Terms, options: Required<CoulombPla
   const ofBoth = new Float64Array(NATURAL_LENGTH);
   let lastComposition: Composition | undefined;
   let species: CoulombSpecies;
-  let crystalLimit = 0;
+  const crystalLimit = new Float64Array(1); // a variable would be boxed at every change of composition
   let tangents: readonly SpeciesTangent[] | undefined;
 
   function enter(point: Float64Array, composition: Composition): void {
     if (composition !== lastComposition) {
       lastComposition = composition;
       species = coulombSpecies(composition, lattice);
-      crystalLimit = highestCrystalDensity(composition);
+      crystalLimit[0] = highestCrystalDensity(composition);
       tangents = undefined;
     }
     const density = point[DENSITY]!;
@@ -160,7 +160,7 @@ function contributionOf(name: string, terms: Terms, options: Required<CoulombPla
   /** True where the ions are a crystal. */
   function isCrystal(point: Float64Array): boolean {
     if (options.phase !== "equilibrium") return options.phase === "crystal";
-    return point[ION_COUPLING]! >= options.meltingCoupling && point[DENSITY]! <= crystalLimit;
+    return point[ION_COUPLING]! >= options.meltingCoupling && point[DENSITY]! <= crystalLimit[0]!;
   }
 
   function addLiquid(order: Order): void {

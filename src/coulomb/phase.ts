@@ -34,9 +34,17 @@ function quantumRadius(composition: Composition): number {
   return share === 0 ? 0 : sum / share;
 }
 
+/** Highest densities of the compositions seen. */
+const known = /* @__PURE__ */ new WeakMap<Composition, number>();
+
 /** Highest density of a crystal of this composition, g/cm^3, by the rule of quantum melting; 0 without charged nuclei. */
 export function highestCrystalDensity(composition: Composition): number {
-  return (quantumRadius(composition) / quantumMeltingLimit) ** 3;
+  let found = known.get(composition);
+  if (found === undefined) {
+    found = (quantumRadius(composition) / quantumMeltingLimit) ** 3;
+    known.set(composition, found);
+  }
+  return found;
 }
 
 /**

@@ -109,6 +109,7 @@ export function idealIons(options: IdealIonsOptions = {}): Contribution {
         constants = entropyConstants(composition);
       }
       const temperature = point[TEMPERATURE]!;
+      if (temperature === 0) return; // beside a crystal, neutrons fewer than rounding: nothing added, nothing to say
       const energy = (boltzmannConstant / atomicMassConstant) * temperature;
       const volume = thermalVolume / (temperature * Math.sqrt(temperature));
       const occupation = Math.log(composition.ionsPerGram * point[DENSITY]! * volume);
@@ -117,7 +118,8 @@ export function idealIons(options: IdealIonsOptions = {}): Contribution {
         const isNeutral = species[i]!.chargeNumber === 0;
         if (isNeutral ? !freeNeutrons : only !== undefined) continue;
         rows[row + SPECIES_ENERGY]! += 1.5 * energy;
-        rows[row + SPECIES_ENTROPY]! += energy * (1.5 - occupation - constants[i]!);
+        const constant = only === undefined ? constants[i]! : Math.log(species[i]!.numberFraction) + ofNeutrons;
+        rows[row + SPECIES_ENTROPY]! += energy * (1.5 - occupation - constant);
         rows[row + SPECIES_PRESSURE]! += energy;
       }
     },

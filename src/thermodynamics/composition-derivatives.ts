@@ -16,6 +16,7 @@ import { nuclide } from "../matter/nuclides.js";
 import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
 import { holds, refusePoint } from "./domain.js";
 import type { EquationOfState } from "./equation-of-state.js";
+import { SECOND_ORDER_COUNT } from "./free-energy.js";
 import {
   SPECIES_ENERGY,
   SPECIES_ENTROPY,
@@ -142,7 +143,8 @@ export function compositionDerivatives(
   const rows = new Float64Array(SPECIES_LENGTH * composition.species.length);
   evaluator.fillMembers(composition, 2);
   evaluator.fillSpecies(composition, rows);
-  const bad = rows.find((value) => !Number.isFinite(value));
+  const members = evaluator.members.subarray(0, SECOND_ORDER_COUNT);
+  const bad = [...members, ...rows].find((value) => !Number.isFinite(value));
   if (bad !== undefined) {
     const allowed = "finite derivatives: a contribution has added something else";
     throw new FermistateError("unstable", { argument: "composition derivatives", given: bad, allowed });

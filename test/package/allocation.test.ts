@@ -86,7 +86,7 @@ function bytesPerCall(temperature: [number, number], coulomb: boolean): number {
 test.each<[string, [number, number], boolean]>([
   ["ideal plasma", [6, 9], false],
   ["Coulomb plasma, liquid and crystal", [6, 9], true],
-])("species of an %s: less than half a byte per point", (_name, temperature, coulomb) => {
+])("%s, by species of two compositions in turn: less than half a byte per point", (_name, temperature, coulomb) => {
   const bytes = bytesPerCall(temperature, coulomb);
   expect(bytes).toBeGreaterThanOrEqual(0);
   expect(bytes).toBeLessThan(0.5);

@@ -4,9 +4,11 @@
  */
 import { describe, expect, test } from "vitest";
 import { atomicMassConstant, boltzmannConstant, planckConstant } from "../../src/constants.js";
+import { coldCorrections } from "../../src/coulomb/cold-corrections.js";
 import { coulombPlasma } from "../../src/coulomb/coulomb-plasma.js";
-import type { ErrorCode } from "../../src/errors.js";
+import type { ErrorCode, FermistateError } from "../../src/errors.js";
 import { electronPositronGas } from "../../src/fermi-gas/electron-positron-gas.js";
+import { fermionGas } from "../../src/fermi-gas/fermion-gas.js";
 import { idealIons } from "../../src/ions/ideal-ions.js";
 import { type Composition, composition } from "../../src/matter/composition.js";
 import { nuclide } from "../../src/matter/nuclides.js";
@@ -23,6 +25,7 @@ import {
   SPECIES_PRESSURE,
 } from "../../src/thermodynamics/species-members.js";
 import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
+import { uniform } from "../measured.js";
 
 const core = composition({ C12: 0.5, O16: 0.5 });
 const eos = whiteDwarfMatter();
@@ -145,6 +148,67 @@ describe("contributions of one's own", () => {
       },
     };
     refused(() => compositionDerivatives(combine(broken), 1e6, 1e7, core), "unstable", "finite");
+  });
+});
+
+describe("20 000 random points of the whole domain", () => {
+  const matters = [
+    core,
+    composition({ n: 1 }),
+    composition({ n: 0.5, Fe56: 0.5 }),
+    composition({ He4: 1, U238: 1e-300 }),
+    composition({ Fe56: 1, n: 1e-320 }),
+    composition({ H1: 1 - 1e-12, C12: 1e-12 }),
+    composition({ H1: 0.9, U238: 0.1 }),
+    composition({ meanMassNumber: 50, meanCharge: 23.5 }),
+    composition({ meanMassNumber: 1, meanCharge: 0 }),
+  ];
+  const sums = [
+    eos,
+    whiteDwarfMatter({ coulomb: false }),
+    whiteDwarfMatter({ coulomb: { phase: "crystal", lattice: "fcc" } }),
+    whiteDwarfMatter({ coulomb: { phase: "liquid", polarisation: false } }),
+    combine(electronPositronGas(), coulombPlasma({ freeNeutrons: false }), fermionGas({ species: "n" })),
+    combine(electronPositronGas(), coldCorrections(), radiation()),
+  ];
+
+  test("answer where the free energy does, with F + P/rho = sum mu N", () => {
+    const random = uniform(5);
+    const pick = <T>(list: readonly T[]): T => list[Math.floor(random() * list.length)]!;
+    let answers = 0;
+    let worst = { error: 0, where: "" };
+    for (let i = 0; i < 20_000; i++) {
+      const [sum, matter] = [pick(sums), pick(matters)];
+      const density = 10 ** (-20 + 38 * random());
+      const temperature = random() < 0.1 ? 0 : 10 ** (13 * random());
+      const where = `${sum.name} ${matter.name} rho ${density} T ${temperature}`;
+      const outcome = <T>(call: () => T): T | string => {
+        try {
+          return call();
+        } catch (error) {
+          return (error as FermistateError).code;
+        }
+      };
+      const free = outcome(() => sum.freeEnergy(density, temperature, matter));
+      const at = outcome(() => compositionDerivatives(sum, density, temperature, matter));
+      if (typeof free === "string" || typeof at === "string") {
+        expect(at, where).toBe(free);
+        continue;
+      }
+      answers++;
+      const shares = at.species.map((one, j) => {
+        const fraction = matter.species[j]!.nucleonFraction;
+        const parts = Math.max(Math.abs(one.specificEnergy), temperature * Math.abs(one.specificEntropy));
+        return { sum: fraction * one.specificFreeEnergy, size: fraction * parts };
+      });
+      const size = Math.max(...shares.map((one) => one.size), Math.abs(free.f), Math.abs(free.fR), Math.abs(free.fT));
+      const total = shares.reduce((sum, one) => sum + one.sum, 0);
+      const error = size === 0 ? 0 : Math.abs(total - free.f - free.fR) / size;
+      if (!(error <= worst.error)) worst = { error, where };
+    }
+    if (process.env["FERMISTATE_PRINT"]) console.info(answers, worst);
+    expect(answers).toBeGreaterThan(18_000);
+    expect(worst.error, worst.where).toBeLessThan(1e-14);
   });
 });
 
