@@ -38,7 +38,15 @@ export {
 } from "./regime/with-findings.js";
 export { type Breakdown, breakdown, type Share } from "./thermodynamics/breakdown.js";
 export { combine } from "./thermodynamics/combine.js";
-export type { Contribution, Domain, PhasePair } from "./thermodynamics/contribution.js";
+export {
+  type CompositionDerivatives,
+  type CompositionDerivativesOptions,
+  compositionDerivatives,
+  type DirectionalDerivatives,
+  type RestMass,
+  type SpeciesDerivatives,
+} from "./thermodynamics/composition-derivatives.js";
+export type { CompositionDependence, Contribution, Domain, PhasePair } from "./thermodynamics/contribution.js";
 export type {
   BatchInput,
   BatchOutput,
@@ -49,5 +57,10 @@ export type {
 } from "./thermodynamics/equation-of-state.js";
 export type { Evaluator } from "./thermodynamics/evaluator.js";
 export type { Order } from "./thermodynamics/free-energy.js";
+export {
+  type MeanDerivatives,
+  meanDerivatives,
+  type PressureAndEnergy,
+} from "./thermodynamics/mean-derivatives.js";
 export { type Quantity, type QuantityName, quantities, quantityNames } from "./thermodynamics/quantities.js";
 export { type WhiteDwarfMatterOptions, whiteDwarfMatter } from "./white-dwarf-matter.js";

@@ -31,6 +31,7 @@ export function radiation(): Contribution {
     name: "radiation",
     validity: "Photons in vacuum: no plasma cut-off, which matters where hbar omega_p of the electrons approaches kT.",
     ideal: true,
+    dependsOn: "none",
     domain: Object.freeze({ density: [1e-20, 1e18], temperature: [1, 1e13], zeroTemperature: true } as const),
     add(point: Float64Array, _composition: Composition, order: Order, members: Float64Array): void {
       const square = point[TEMPERATURE]! * point[TEMPERATURE]!;

@@ -19,7 +19,7 @@ export {
   RELATIVITY,
   TEMPERATURE,
 } from "../matter/plasma.js";
-export type { Contribution, Domain, PhasePair } from "../thermodynamics/contribution.js";
+export type { CompositionDependence, Contribution, Domain, PhasePair } from "../thermodynamics/contribution.js";
 export {
   addNaturalDerivatives,
   ENERGY,
@@ -38,3 +38,10 @@ export {
   PRESSURE_T,
   PRESSURE_TT,
 } from "../thermodynamics/free-energy.js";
+export {
+  SPECIES_ENERGY,
+  SPECIES_ENTROPY,
+  SPECIES_LENGTH,
+  SPECIES_PRESSURE,
+  SPECIES_RESIDUAL,
+} from "../thermodynamics/species-members.js";

@@ -20,6 +20,7 @@ import { RELATIVITY, radiusFactor } from "../matter/plasma.js";
 import { NATURAL_LENGTH, SINGLE_LENGTH } from "../numerics/natural.js";
 import type { Contribution } from "../thermodynamics/contribution.js";
 import { addNaturalDerivatives, type Order } from "../thermodynamics/free-energy.js";
+import { SPECIES_ENERGY, SPECIES_LENGTH, SPECIES_PRESSURE } from "../thermodynamics/species-members.js";
 import { exchangeRelativity } from "./exchange-relativity.js";
 import { bcc } from "./lattice.js";
 import { POINT_LENGTH, POINT_X } from "./slots.js";
@@ -64,7 +65,48 @@ export function coldCorrections(options: ColdCorrectionsOptions = {}): Contribut
   const constant = lattice === "bcc" ? -bcc.madelung : lattice === "ion-sphere" ? 0.9 : 0;
   const plasma = new Float64Array(POINT_LENGTH);
   const phi = new Float64Array(SINGLE_LENGTH);
-  const natural = new Float64Array(NATURAL_LENGTH);
+  // Linear in the nuclei, sum x_j Z_j^(5/3) and sum x_j Z_j^(7/3), and per electron.
+  const ofFiveThirds = new Float64Array(NATURAL_LENGTH);
+  const ofSevenThirds = new Float64Array(NATURAL_LENGTH);
+  const perElectron = new Float64Array(NATURAL_LENGTH);
+
+  function fill(point: Float64Array, composition: Composition, order: Order): void {
+    const x = point[RELATIVITY]!;
+    const { fiveThirds, sevenThirds } = composition.chargeMoments;
+    const unit = composition.electronsPerGram * electronRestEnergy;
+    ofFiveThirds.fill(0);
+    ofSevenThirds.fill(0);
+    perElectron.fill(0);
+    // Each term as rho^i d^i/d rho^i of its energy; x ~ rho^(1/3).
+    const electrostatic = (-unit * constant * alpha * lambda * fiveThirds * x) / composition.meanCharge;
+    add3(ofFiveThirds, electrostatic, electrostatic / 3, (-2 / 9) * electrostatic, (10 / 27) * electrostatic);
+    if (thomasFermi) {
+      const e = Math.sqrt(1 + x * x);
+      const k = (-unit * (162 / 175) * lambda * lambda * alpha * alpha * sevenThirds) / composition.meanCharge;
+      const w = (x * x) / (1 + x * x);
+      // D = x d/dx: D e = e w, D^2 e = e w (2 - w), D^3 e = e w (4 - 6w + 3w^2).
+      addOfX(ofSevenThirds, k * e, k * e * w, k * e * w * (2 - w), k * e * w * (4 - 6 * w + 3 * w * w));
+    }
+    if (exchange) {
+      plasma[POINT_X] = x;
+      exchangeRelativity(phi, order, plasma);
+      const k = (-3 / (4 * Math.PI)) * alpha * x * unit;
+      const p0 = 1 + phi[0]!;
+      const [p1, p2, p3] = [phi[1]!, phi[2]!, order === 3 ? phi[3]! : 0];
+      // Leibniz with rho^(1/3): its scaled derivatives are 1, 1/3, -2/9, 10/27.
+      add3(
+        perElectron,
+        k * p0,
+        k * (p0 / 3 + p1),
+        k * ((-2 / 9) * p0 + (2 / 3) * p1 + p2),
+        k * ((10 / 27) * p0 - (2 / 3) * p1 + p2 + p3),
+      );
+    }
+    if (correlation) {
+      const k = unit * alpha * alpha;
+      addOfX(perElectron, k * (0.031091 * Math.log(radiusFactor / x) - 0.0469), -k * 0.031091, 0, 0);
+    }
+  }
 
   return Object.freeze({
     name: "cold corrections",
@@ -74,41 +116,32 @@ export function coldCorrections(options: ColdCorrectionsOptions = {}): Contribut
       "below the Fermi energy or x_r is below about 0.1.",
     excludes: ["Coulomb plasma"],
     add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void {
-      const x = point[RELATIVITY]!;
-      if (x === 0) return;
+      if (point[RELATIVITY] === 0) return;
+      fill(point, composition, order);
+      addNaturalDerivatives(members, order, ofFiveThirds);
+      addNaturalDerivatives(members, order, ofSevenThirds);
+      addNaturalDerivatives(members, order, perElectron);
+    },
+
+    // At fixed n_e the first two are sums over nuclei, dF/dY_a = phi_a + (Z_a/Y_e) rho F_rho; the third has (Z_a/Y_e) F
+    // for phi_a. No temperature: dF and de are the same.
+    addSpecies(point: Float64Array, composition: Composition, rows: Float64Array): void {
+      if (point[RELATIVITY] === 0) return;
+      fill(point, composition, 2);
       const { fiveThirds, sevenThirds } = composition.chargeMoments;
-      const unit = composition.electronsPerGram * electronRestEnergy;
-      natural.fill(0);
-      // Each term as rho^i d^i/d rho^i of its energy; x ~ rho^(1/3).
-      const electrostatic = (-unit * constant * alpha * lambda * fiveThirds * x) / composition.meanCharge;
-      add3(natural, electrostatic, electrostatic / 3, (-2 / 9) * electrostatic, (10 / 27) * electrostatic);
-      if (thomasFermi) {
-        const e = Math.sqrt(1 + x * x);
-        const k = (-unit * (162 / 175) * lambda * lambda * alpha * alpha * sevenThirds) / composition.meanCharge;
-        const w = (x * x) / (1 + x * x);
-        // D = x d/dx: D e = e w, D^2 e = e w (2 - w), D^3 e = e w (4 - 6w + 3w^2).
-        addOfX(natural, k * e, k * e * w, k * e * w * (2 - w), k * e * w * (4 - 6 * w + 3 * w * w));
+      const first = ofFiveThirds[1]! + ofSevenThirds[1]! + perElectron[1]!;
+      const second = first + ofFiveThirds[3]! + ofSevenThirds[3]! + perElectron[3]!;
+      for (let i = 0, row = 0; i < composition.species.length; i++, row += SPECIES_LENGTH) {
+        const z = composition.species[i]!.chargeNumber;
+        const third = Math.cbrt(z);
+        const share = z / composition.electronsPerNucleon;
+        const five = (z * third * third) / (fiveThirds * composition.ionsPerNucleon);
+        const seven = (z * z * third) / (sevenThirds * composition.ionsPerNucleon);
+        rows[row + SPECIES_ENERGY]! +=
+          five * ofFiveThirds[0]! + seven * ofSevenThirds[0]! + share * (perElectron[0]! + first);
+        rows[row + SPECIES_PRESSURE]! +=
+          five * ofFiveThirds[1]! + seven * ofSevenThirds[1]! + share * (perElectron[1]! + second);
       }
-      if (exchange) {
-        plasma[POINT_X] = x;
-        exchangeRelativity(phi, order, plasma);
-        const k = (-3 / (4 * Math.PI)) * alpha * x * unit;
-        const p0 = 1 + phi[0]!;
-        const [p1, p2, p3] = [phi[1]!, phi[2]!, order === 3 ? phi[3]! : 0];
-        // Leibniz with rho^(1/3): its scaled derivatives are 1, 1/3, -2/9, 10/27.
-        add3(
-          natural,
-          k * p0,
-          k * (p0 / 3 + p1),
-          k * ((-2 / 9) * p0 + (2 / 3) * p1 + p2),
-          k * ((10 / 27) * p0 - (2 / 3) * p1 + p2 + p3),
-        );
-      }
-      if (correlation) {
-        const k = unit * alpha * alpha;
-        addOfX(natural, k * (0.031091 * Math.log(radiusFactor / x) - 0.0469), -k * 0.031091, 0, 0);
-      }
-      addNaturalDerivatives(members, order, natural);
     },
   });
 }

@@ -34,7 +34,7 @@ import { addLiquidCorrelation } from "./liquid.js";
 import { addLiquidPolarisation, preparePolarisation } from "./liquid-polarisation.js";
 import { addBaikoYakovlev, addTwoOscillators, addWignerKirkwood } from "./liquid-quantum.js";
 import { addMixture } from "./mixing.js";
-import { type CoulombPlasmaOptions, checkedOptions, type QuantumForm } from "./options.js";
+import { type CoulombPlasmaOptions, checkedOptions } from "./options.js";
 import { fillBoundary, highestCrystalDensity, type Phase } from "./phase.js";
 import {
   POINT_CUBE_ROOT,
@@ -54,6 +54,9 @@ import {
   POINT_X,
 } from "./slots.js";
 import { type CoulombSpecies, coulombSpecies } from "./species.js";
+import { addSpeciesDerivatives, type Choice } from "./species-derivatives.js";
+import { type SpeciesTangent, speciesTangents } from "./species-tangents.js";
+import { nothing, type Terms } from "./terms.js";
 
 /** The Coulomb plasma as a contribution: what {@link coulombPlasma} returns. */
 export interface CoulombPlasma extends Contribution {
@@ -62,37 +65,6 @@ export interface CoulombPlasma extends Contribution {
   /** The options in force, defaults filled in. */
   readonly options: Required<CoulombPlasmaOptions>;
 }
-
-/** Terms of the sum; a part has one of them, the whole all that the options leave in. */
-interface Terms {
-  readonly idealIons: boolean;
-  readonly correlation: boolean;
-  readonly quantum: QuantumForm | false;
-  readonly lattice: boolean;
-  readonly zeroPoint: boolean;
-  readonly phonons: boolean;
-  readonly anharmonic: boolean;
-  readonly polarisation: boolean;
-  readonly liquidMixture: boolean;
-  readonly mixingEntropy: boolean;
-  readonly alloy: boolean;
-  readonly exchange: boolean;
-}
-
-const nothing: Terms = {
-  idealIons: false,
-  correlation: false,
-  quantum: false,
-  lattice: false,
-  zeroPoint: false,
-  phonons: false,
-  anharmonic: false,
-  polarisation: false,
-  liquidMixture: false,
-  mixingEntropy: false,
-  alloy: false,
-  exchange: false,
-};
 
 /**
  * Ions as a Coulomb liquid or crystal, with polarisation, exchange and correlation, each a switch.
@@ -155,6 +127,7 @@ function contributionOf(name: string, terms: Terms, options: Required<CoulombPla
   const fit = phononFit(lattice);
   const gas = idealIons({ freeNeutrons: options.freeNeutrons });
   const neutrons = idealIons({ only: "free neutrons" });
+  const choice: Choice = { terms, lattice, fit, polarisable: options.polarisation };
   const plasma = new Float64Array(POINT_LENGTH);
   const natural = new Float64Array(NATURAL_LENGTH);
   const ofGamma = new Float64Array(SINGLE_LENGTH);
@@ -162,14 +135,16 @@ function contributionOf(name: string, terms: Terms, options: Required<CoulombPla
   const ofBoth = new Float64Array(NATURAL_LENGTH);
   let lastComposition: Composition | undefined;
   let species: CoulombSpecies;
-  let crystalLimit = 0;
   let crystal = false;
+  const crystalLimit = new Float64Array(1); // a variable would be boxed at every change of composition
+  let tangents: readonly SpeciesTangent[] | undefined;
 
   function enter(point: Float64Array, composition: Composition): void {
     if (composition !== lastComposition) {
       lastComposition = composition;
       species = coulombSpecies(composition, lattice);
-      crystalLimit = highestCrystalDensity(composition);
+      crystalLimit[0] = highestCrystalDensity(composition);
+      tangents = undefined;
     }
     const density = point[DENSITY]!;
     const temperature = point[TEMPERATURE]!;
@@ -194,7 +169,7 @@ function contributionOf(name: string, terms: Terms, options: Required<CoulombPla
   /** True where the ions are a crystal. */
   function isCrystal(point: Float64Array): boolean {
     if (options.phase !== "equilibrium") return options.phase === "crystal";
-    return point[ION_COUPLING]! >= options.meltingCoupling && point[DENSITY]! <= crystalLimit;
+    return point[ION_COUPLING]! >= options.meltingCoupling && point[DENSITY]! <= crystalLimit[0]!;
   }
 
   function addLiquid(order: Order): void {
@@ -288,16 +263,28 @@ function contributionOf(name: string, terms: Terms, options: Required<CoulombPla
       const temperature = (tiny * species.gammaE * plasma[POINT_CUBE_ROOT]!) / (NON_RELATIVISTIC * plasma[POINT_RS]!);
       plasma[POINT_TEMPERATURE] = temperature;
       plasma[POINT_T] = tiny;
-      natural.fill(0);
-      addExchangeCorrelation(natural, 2, plasma);
-      slopes[0]! -= natural[5]! / (temperature * temperature);
-      slopes[1]! += natural[4]! / (temperature * temperature);
+      ofBoth.fill(0); // not `natural`, which addSpecies may still read
+      addExchangeCorrelation(ofBoth, 2, plasma);
+      slopes[0]! -= ofBoth[5]! / (temperature * temperature);
+      slopes[1]! += ofBoth[4]! / (temperature * temperature);
     },
 
     residualEntropy(composition: Composition): number {
       if (!terms.mixingEntropy) return 0;
       const { ionsBoltzmann, mixing, spin } = coulombSpecies(composition, lattice);
       return -ionsBoltzmann * (mixing + spin);
+    },
+
+    addSpecies(point: Float64Array, composition: Composition, rows: Float64Array): void {
+      enter(point, composition);
+      const crystal = isCrystal(point);
+      if (terms.idealIons) {
+        if (!crystal) gas.addSpecies?.(point, composition, rows);
+        else if (options.freeNeutrons) neutrons.addSpecies?.(point, composition, rows);
+      }
+      if (point[ELECTRON_DENSITY] === 0) return;
+      tangents ??= speciesTangents(composition, lattice);
+      addSpeciesDerivatives(rows, choice, tangents, species, plasma, natural, crystal);
     },
   };
 }

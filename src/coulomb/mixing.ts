@@ -115,7 +115,7 @@ export function alloyDeviation(charged: readonly Species[]): number {
       const heavy = shares[j]!;
       const y = heavy.fraction / (light.fraction + heavy.fraction);
       const weight = light.fraction * heavy.fraction * light.charge * Math.cbrt(light.charge) ** 2;
-      sum += weight * pairDeviation(heavy.charge / light.charge, y);
+      sum += weight * pairDeviation(heavy.charge / light.charge, y).value;
     }
   }
   return total * sum;
@@ -126,17 +126,22 @@ export function alloyDeviation(charged: readonly Species[]): number {
  *
  * The braces reach zero at R = 6.06 (s = 0.12 and 0.88): the printed fit has poles outside its range. So their ratio
  * stays at 4.5 beyond it, which keeps dg positive and continuous (an own continuation, of unknown error); C(R) goes on.
+ * The slope is y d(dg)/dy, finite at y = 0.
  */
-function pairDeviation(ratio: number, y: number): number {
+export function pairDeviation(ratio: number, y: number): { readonly value: number; readonly slope: number } {
   const d = ratio - 1;
   const inRange = Math.min(d, 3.5);
   const s = Math.sqrt(y);
   const size = (0.05 * d * d) / ((1 + 0.64 * d) * (1 + 0.5 * d * d));
-  return size / (1 + ((27 * inRange) / (1 + 0.1 * inRange)) * s * (s - 0.3) * (s - 0.7) * (s - 1));
+  const depth = (27 * inRange) / (1 + 0.1 * inRange);
+  const value = size / (1 + depth * s * (s - 0.3) * (s - 0.7) * (s - 1));
+  // With w = s^2 - s the quartic is w (w + 0.21).
+  const bend = (2 * (s * s - s) + 0.21) * (2 * s - 1);
+  return { value, slope: (-value * value * depth * bend * s) / (2 * size) };
 }
 
 /** Charges in rising order with their fractions among charged nuclei, and the share of these among all nuclei. */
-function chargeShares(charged: readonly Species[]): {
+export function chargeShares(charged: readonly Species[]): {
   readonly shares: readonly ChargeShare[];
   readonly total: number;
 } {

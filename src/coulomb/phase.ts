@@ -34,9 +34,17 @@ function quantumRadius(composition: Composition): number {
   return share === 0 ? 0 : sum / share;
 }
 
+/** Highest densities of the compositions seen. */
+const known = /* @__PURE__ */ new WeakMap<Composition, number>();
+
 /** Highest density of a crystal of this composition, g/cm^3, by the rule of quantum melting; 0 without charged nuclei. */
 export function highestCrystalDensity(composition: Composition): number {
-  return (quantumRadius(composition) / quantumMeltingLimit) ** 3;
+  let found = known.get(composition);
+  if (found === undefined) {
+    found = (quantumRadius(composition) / quantumMeltingLimit) ** 3;
+    known.set(composition, found);
+  }
+  return found;
 }
 
 /**
@@ -74,18 +82,10 @@ export function meltingDensity(
 }
 
 const record = new Float64Array(5);
-let lastComposition: Composition | undefined;
-const last = new Float64Array(2);
-
 /** The boundary as a record: see PhasePair in thermodynamics/contribution.ts. Allocates nothing per call. */
 export function fillBoundary(composition: Composition, meltingCoupling: number, boundary: Float64Array): void {
-  if (composition !== lastComposition) {
-    lastComposition = composition;
-    last[0] = coulombSpecies(composition, bcc).gammaE * composition.couplingMoment;
-    last[1] = highestCrystalDensity(composition);
-  }
-  const coupling = last[0]!;
-  const highest = last[1]!;
+  const coupling = coulombSpecies(composition, bcc).gammaE * composition.couplingMoment;
+  const highest = highestCrystalDensity(composition);
   const ratio = (meltingCoupling * boundary[1]!) / coupling;
   const density = ratio * ratio * ratio;
   boundary[2] = boundary[0]! > highest ? 0 : (coupling * Math.cbrt(boundary[0]!)) / meltingCoupling;

@@ -88,3 +88,11 @@ export function addColdGasSlopes(gas: Float64Array, scale: Float64Array, slopes:
   slopes[0]! += heat;
   slopes[1]! += (heat * (2 - (x / total) ** 2)) / 3;
 }
+
+/** The three numbers of `fillParticleMembers` at T = 0: e_F, 0, n de_F/dn. */
+export function fillColdParticleMembers(gas: Float64Array, out: Float64Array): void {
+  const x = gas[FERMI_MOMENTUM]!;
+  out[0] = gas[KINETIC_MU]!;
+  out[1] = 0;
+  out[2] = (x * x) / (3 * (1 + gas[KINETIC_MU]!));
+}

@@ -25,7 +25,26 @@ import {
   PRESSURE_T,
   PRESSURE_TT,
 } from "../thermodynamics/free-energy.js";
-import { CENTRE, LAMBDA, M12, M23, N00, N01, N02, N10, N11, N12, N20, N21, N30, P00, PSI, Q, THETA } from "./record.js";
+import {
+  CENTRE,
+  LAMBDA,
+  M12,
+  M23,
+  N00,
+  N01,
+  N02,
+  N10,
+  N11,
+  N12,
+  N20,
+  N21,
+  N30,
+  NET_DENSITY,
+  P00,
+  PSI,
+  Q,
+  THETA,
+} from "./record.js";
 
 /** Adds the gas of the record to `members`, times `scale[0]`: energy per gram of one natural unit of pressure. */
 export function addGasMembers(gas: Float64Array, scale: Float64Array, order: Order, members: Float64Array): void {
@@ -62,4 +81,19 @@ export function addGasMembers(gas: Float64Array, scale: Float64Array, order: Ord
   members[PRESSURE_RT]! += unitTheta * n * (d + lambda * a);
   members[PRESSURE_TT]! += unitTheta * (heat + n * (f + 2 * lambda * b));
   members[PRESSURE_RTT]! += unitTheta * n * (g + 2 * lambda * d);
+}
+
+/**
+ * Derivatives of the gas by the number density of its particles, in units of m c^2: energy density mu - T mu_T, T times
+ * entropy density -T mu_T, pressure n mu_n; into `out`. Not from e, P and s: with many pairs those hardly depend on n.
+ */
+export function fillParticleMembers(gas: Float64Array, out: Float64Array): void {
+  const theta = gas[THETA]!;
+  const n = gas[NET_DENSITY]!;
+  // Without net particles mu is zero at every temperature, and CENTRE is its zero.
+  const inverse = n === 0 ? 0 : 1 / gas[N10]!;
+  const b = -gas[N01]! * inverse;
+  out[0] = gas[CENTRE]! - theta * b;
+  out[1] = -theta * (gas[PSI]! + b);
+  out[2] = theta * n * inverse;
 }

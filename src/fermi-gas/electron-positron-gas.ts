@@ -6,6 +6,7 @@
  * and T = 0 and 1e2 to 1e13 K (docs/guide/fermi-gas.md). Interactions are other contributions' matter.
  */
 import {
+  atomicMassConstant,
   electronDensityUnit,
   electronPressureUnit,
   electronRestEnergy,
@@ -25,8 +26,14 @@ import {
 } from "../matter/plasma.js";
 import type { Contribution } from "../thermodynamics/contribution.js";
 import type { Order } from "../thermodynamics/free-energy.js";
-import { addColdGasSlopes, addColdMembers } from "./cold.js";
-import { addGasMembers } from "./density-derivatives.js";
+import {
+  SPECIES_ENERGY,
+  SPECIES_ENTROPY,
+  SPECIES_LENGTH,
+  SPECIES_PRESSURE,
+} from "../thermodynamics/species-members.js";
+import { addColdGasSlopes, addColdMembers, fillColdParticleMembers } from "./cold.js";
+import { addGasMembers, fillParticleMembers } from "./density-derivatives.js";
 import { solveDensity } from "./net-density.js";
 import {
   ANTIPARTICLES,
@@ -56,6 +63,7 @@ import { antiparticleDensity } from "./single-species.js";
 export function electronPositronGas(): Contribution {
   const gas = new Float64Array(RECORD_LENGTH);
   const scale = new Float64Array(1);
+  const perParticle = new Float64Array(3);
 
   function enter(point: Float64Array): void {
     gas[NET_DENSITY] = point[ELECTRON_DENSITY]! / electronDensityUnit;
@@ -76,6 +84,7 @@ export function electronPositronGas(): Contribution {
     name: "electrons and positrons",
     validity: "Electrons and positrons are an ideal gas, exact to rounding as such; atoms are fully ionised.",
     ideal: true,
+    dependsOn: "electron density",
     domain: Object.freeze({ density: [1e-20, 1e18], temperature: [1, 1e13], zeroTemperature: true } as const),
 
     add(point: Float64Array, _composition: Composition, order: Order, members: Float64Array): void {
@@ -120,6 +129,18 @@ export function electronPositronGas(): Contribution {
         antiparticleDensity(gas);
       }
       point[POSITRON_DENSITY] = gas[ANTIPARTICLES]! * electronDensityUnit;
+    },
+
+    addSpecies(point: Float64Array, composition: Composition, rows: Float64Array): void {
+      if (point[TEMPERATURE] === 0) fillColdParticleMembers(gas, perParticle);
+      else fillParticleMembers(gas, perParticle);
+      const { species } = composition;
+      for (let i = 0, row = 0; i < species.length; i++, row += SPECIES_LENGTH) {
+        const unit = (species[i]!.chargeNumber * electronRestEnergy) / atomicMassConstant;
+        rows[row + SPECIES_ENERGY]! += unit * perParticle[0]!;
+        rows[row + SPECIES_ENTROPY]! += unit * perParticle[1]!;
+        rows[row + SPECIES_PRESSURE]! += unit * perParticle[2]!;
+      }
     },
   });
 }

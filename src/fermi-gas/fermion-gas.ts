@@ -12,8 +12,14 @@ import { nuclide } from "../matter/nuclides.js";
 import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
 import type { Contribution } from "../thermodynamics/contribution.js";
 import type { Order } from "../thermodynamics/free-energy.js";
-import { addColdGasSlopes, addColdMembers, fermiEnergy } from "./cold.js";
-import { addGasMembers } from "./density-derivatives.js";
+import {
+  SPECIES_ENERGY,
+  SPECIES_ENTROPY,
+  SPECIES_LENGTH,
+  SPECIES_PRESSURE,
+} from "../thermodynamics/species-members.js";
+import { addColdGasSlopes, addColdMembers, fermiEnergy, fillColdParticleMembers } from "./cold.js";
+import { addGasMembers, fillParticleMembers } from "./density-derivatives.js";
 import { solveDensity } from "./net-density.js";
 import { FERMI_MOMENTUM, KINETIC_MU, NET_DENSITY, RECORD_LENGTH, THETA } from "./record.js";
 
@@ -65,6 +71,7 @@ export function fermionGas(options: FermionGasOptions): Contribution {
   const densityUnit = degeneracy / (2 * Math.PI * Math.PI * wavelength ** 3);
   const gas = new Float64Array(RECORD_LENGTH);
   const scale = new Float64Array(1);
+  const perParticle = new Float64Array(3);
 
   /** Fills the record; false where the species is absent. */
   function enter(point: Float64Array, composition: Composition): boolean {
@@ -102,15 +109,32 @@ export function fermionGas(options: FermionGasOptions): Contribution {
       scale[0]! /= restTemperature * restTemperature;
       addColdGasSlopes(gas, scale, slopes);
     },
+
+    addSpecies(point: Float64Array, composition: Composition, rows: Float64Array): void {
+      const index = indexOf(composition, label);
+      if (index < 0) return;
+      if (point[TEMPERATURE] === 0) fillColdParticleMembers(gas, perParticle);
+      else fillParticleMembers(gas, perParticle);
+      const unit = restEnergy / atomicMassConstant;
+      const row = SPECIES_LENGTH * index;
+      rows[row + SPECIES_ENERGY]! += unit * perParticle[0]!;
+      rows[row + SPECIES_ENTROPY]! += unit * perParticle[1]!;
+      rows[row + SPECIES_PRESSURE]! += unit * perParticle[2]!;
+    },
   });
 }
 
 function particlesPerNucleon(composition: Composition, label: string): number {
+  const index = indexOf(composition, label);
+  return index < 0 ? 0 : composition.species[index]!.numberFraction * composition.ionsPerNucleon;
+}
+
+/** Where the species stands in the composition, -1 where it is absent. */
+function indexOf(composition: Composition, label: string): number {
   for (let i = 0; i < composition.species.length; i++) {
-    const species = composition.species[i]!;
-    if (species.label === label) return species.numberFraction * composition.ionsPerNucleon;
+    if (composition.species[i]!.label === label) return i;
   }
-  return 0;
+  return -1;
 }
 
 function spinStates(label: string): number {

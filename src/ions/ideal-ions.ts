@@ -25,6 +25,12 @@ import {
   PRESSURE_RT,
   PRESSURE_T,
 } from "../thermodynamics/free-energy.js";
+import {
+  SPECIES_ENERGY,
+  SPECIES_ENTROPY,
+  SPECIES_LENGTH,
+  SPECIES_PRESSURE,
+} from "../thermodynamics/species-members.js";
 
 /** Options of {@link idealIons}. */
 export interface IdealIonsOptions {
@@ -57,12 +63,15 @@ export function idealIons(options: IdealIonsOptions = {}): Contribution {
   requireFlags("options", flags, ["freeNeutrons"]);
   const { freeNeutrons = true } = flags;
   const ofNeutrons = only === undefined ? 0 : neutronConstant();
+  let lastComposition: Composition | undefined;
+  let constants: Float64Array;
   return Object.freeze({
     name: only ?? (freeNeutrons ? "ideal ions" : "ideal ions without free neutrons"),
     validity:
       "Nuclei and free neutrons are a classical gas in their ground states: in cold dense matter, where nuclei freeze and " +
       "neutrons are degenerate, its entropy turns negative.",
     ideal: true,
+    ...(only === undefined && freeNeutrons ? { dependsOn: "ion density" as const } : {}),
     domain: Object.freeze({ density: [1e-20, 1e18], temperature: [1, 1e13], zeroTemperature: false } as const),
     add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void {
       const temperature = point[TEMPERATURE]!;
@@ -92,5 +101,43 @@ export function idealIons(options: IdealIonsOptions = {}): Contribution {
       members[HEAT_T]! -= 1.5 * energy;
       members[PRESSURE_RT]! += energy;
     },
+
+    // N_a = Y_a/m_u, so dF/dY_a = (kT/m_u) ln(n_a lambda_a^3/g_a).
+    addSpecies(point: Float64Array, composition: Composition, rows: Float64Array): void {
+      if (composition !== lastComposition) {
+        lastComposition = composition;
+        constants = entropyConstants(composition);
+      }
+      const temperature = point[TEMPERATURE]!;
+      if (temperature === 0) return; // beside a crystal, neutrons fewer than rounding: nothing added, nothing to say
+      const energy = (boltzmannConstant / atomicMassConstant) * temperature;
+      const volume = thermalVolume / (temperature * Math.sqrt(temperature));
+      const occupation = Math.log(composition.ionsPerGram * point[DENSITY]! * volume);
+      const { species } = composition;
+      for (let i = 0, row = 0; i < species.length; i++, row += SPECIES_LENGTH) {
+        const isNeutral = species[i]!.chargeNumber === 0;
+        if (isNeutral ? !freeNeutrons : only !== undefined) continue;
+        rows[row + SPECIES_ENERGY]! += 1.5 * energy;
+        const constant = only === undefined ? constants[i]! : Math.log(species[i]!.numberFraction) + ofNeutrons;
+        rows[row + SPECIES_ENTROPY]! += energy * (1.5 - occupation - constant);
+        rows[row + SPECIES_PRESSURE]! += energy;
+      }
+    },
   });
+}
+
+/** What {@link entropyConstants} has computed. */
+const known = /* @__PURE__ */ new WeakMap<Composition, Float64Array>();
+
+/** ln[(x_a/g_a)(m_u/M_a)^(3/2)] of each species; computed at the first call. */
+function entropyConstants(composition: Composition): Float64Array {
+  let found = known.get(composition);
+  if (found === undefined) {
+    found = Float64Array.from(
+      composition.species,
+      (one) => Math.log(one.numberFraction / one.spinDegeneracy) + 1.5 * Math.log(atomicMassConstant / one.ionMass),
+    );
+    known.set(composition, found);
+  }
+  return found;
 }

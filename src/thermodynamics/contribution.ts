@@ -34,6 +34,9 @@ export interface PhasePair {
   fillBoundary(composition: Composition, boundary: Float64Array): void;
 }
 
+/** What of the composition a free energy depends on where it is not the species one by one; see {@link Contribution.dependsOn}. */
+export type CompositionDependence = "none" | "electron density" | "ion density";
+
 /** One term of the free energy. */
 export interface Contribution {
   /** What it is, in words; unique within one equation of state. */
@@ -80,4 +83,19 @@ export interface Contribution {
    * temperature by a step whose square is below rounding. A contribution that writes nothing leaves it out.
    */
   rewrite?(point: Float64Array, composition: Composition): void;
+
+  /**
+   * What of the composition it depends on, at given density and temperature: "none" (photons), "electron density" (on
+   * rho Y_e alone), "ion density" (pressure and energy on rho Y_i alone, with {@link Contribution.addSpecies} for the rest).
+   * Leave out where it is the species one by one. With "none", and with "electron density" unless the members cancel,
+   * `addSpecies` is not needed.
+   */
+  readonly dependsOn?: CompositionDependence;
+
+  /**
+   * Adds its derivatives by the amount of each species to `rows`, slots of species-members.ts; called after `add` at the
+   * same point, must allocate nothing. Without it and without `dependsOn`, composition derivatives of the sum are
+   * refused: silence would count as zero.
+   */
+  addSpecies?(point: Float64Array, composition: Composition, rows: Float64Array): void;
 }

@@ -4,13 +4,15 @@
  * The step below `state` and `evaluate`, which are made of it; inverse questions are too. Numbers travel in records
  * because a double that crosses a call which is not inlined is boxed.
  */
+import { FermistateError } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
 import { DENSITY, fillPlasma, POINT_LENGTH, TEMPERATURE } from "../matter/plasma.js";
 import type { Contribution } from "./contribution.js";
 import { MEMBER_COUNT, moveMembers, type Order, SECOND_ORDER_COUNT } from "./free-energy.js";
 import { fillPlasmaQuantities, fillQuantities, QUANTITY_COUNT } from "./quantities.js";
+import { addFromElectronDensity, SPECIES_LENGTH } from "./species-members.js";
 
-/** Records of one point and the steps that fill them; nothing is checked and nothing allocated. */
+/** Records of one point and the steps that fill them; the point is not checked, and nothing is allocated. */
 export interface Evaluator {
   /** The record of the point (matter/plasma.ts): its first two slots, density and temperature, are the input. */
   readonly point: Float64Array;
@@ -38,6 +40,12 @@ export interface Evaluator {
   fillThermodynamics(composition: Composition, row: number): void;
   /** Quantities that the record of the point holds; after the others. */
   fillPlasma(): void;
+  /**
+   * Derivatives by the amount of each species (species-members.ts) into `rows`, four numbers per species, in the order of
+   * `composition.species`; after the members, of either order. This is the form for networks: two calls per point.
+   * @throws `unavailable-quantity` where a contribution does not know them, `length-mismatch`
+   */
+  fillSpecies(composition: Composition, rows: Float64Array): void;
 }
 
 /** An evaluator for a sum of contributions. */
@@ -48,6 +56,10 @@ export function evaluatorOf(parts: readonly Contribution[]): Evaluator {
   const step = new Float64Array(2);
   const quantities = new Float64Array(QUANTITY_COUNT);
   const detailed = parts.filter((part) => part.addDetail !== undefined);
+
+  const silent = parts.find((part) => part.addSpecies === undefined && !followsFromMembers(part));
+  const perElectron = parts.filter((part) => part.addSpecies === undefined && part.dependsOn === "electron density");
+  const own = new Float64Array(MEMBER_COUNT);
 
   function fillMembers(composition: Composition, order: Order): void {
     fillPlasma(point, composition);
@@ -66,6 +78,22 @@ export function evaluatorOf(parts: readonly Contribution[]): Evaluator {
     point[TEMPERATURE]! += point[TEMPERATURE]! * step[1]!;
     fillPlasma(point, composition);
     for (let i = 0; i < parts.length; i++) parts[i]!.rewrite?.(point, composition);
+  }
+
+  function fillSpecies(composition: Composition, rows: Float64Array): void {
+    if (silent !== undefined) refuseSilent(silent);
+    const count = SPECIES_LENGTH * composition.species.length;
+    if (rows.length < count) {
+      const allowed = `>= ${count} numbers: ${SPECIES_LENGTH} per species of ${composition.name}`;
+      throw new FermistateError("length-mismatch", { argument: "rows", given: rows.length, allowed });
+    }
+    for (let i = 0; i < count; i++) rows[i] = 0;
+    for (let i = 0; i < parts.length; i++) parts[i]!.addSpecies?.(point, composition, rows);
+    for (let i = 0; i < perElectron.length; i++) {
+      for (let j = 0; j < SECOND_ORDER_COUNT; j++) own[j] = 0;
+      perElectron[i]!.add(point, composition, 2, own);
+      addFromElectronDensity(own, composition, rows);
+    }
   }
 
   function fillCold(composition: Composition): void {
@@ -92,5 +120,18 @@ export function evaluatorOf(parts: readonly Contribution[]): Evaluator {
     fillDetail,
     fillThermodynamics,
     fillPlasma: () => fillPlasmaQuantities(point, quantities),
+    fillSpecies,
+  });
+}
+
+function followsFromMembers({ dependsOn }: Contribution): boolean {
+  return dependsOn === "none" || dependsOn === "electron density";
+}
+
+function refuseSilent({ name }: Contribution): never {
+  throw new FermistateError("unavailable-quantity", {
+    argument: "composition derivatives",
+    given: name,
+    allowed: "contributions that say how they depend on the composition (dependsOn, addSpecies)",
   });
 }

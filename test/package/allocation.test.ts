@@ -1,4 +1,4 @@
-/** The batch form allocates nothing per point: heap statistics of the built library in a process of its own. */
+/** The batch form and the evaluator allocate nothing per point: heap statistics of the built library in a process of its own. */
 import { execFileSync } from "node:child_process";
 import { fileURLToPath } from "node:url";
 import { expect, test } from "vitest";
@@ -43,4 +43,51 @@ test.each<[string, [number, number], [number, number], boolean]>([
   const bytes = bytesPerPoint(temperature, density, coulomb);
   expect(bytes).toBeGreaterThanOrEqual(0);
   expect(bytes).toBeLessThan(0.5); // one boxed number per point would be 16; bookkeeping per call is 0.1
+});
+
+/** The same of a loop over an evaluator that asks for the derivatives by every species. */
+function bytesPerCall(temperature: [number, number], coulomb: boolean): number {
+  const program = `
+    import v8 from "node:v8";
+    import { composition, whiteDwarfMatter } from "./dist/index.js";
+    let seed = 7;
+    const random = () => (seed = (seed * 48271) % 2147483647) / 2147483647;
+    const count = 50_000;
+    const column = (low, high) => Float64Array.from({ length: count }, () => 10 ** (low + (high - low) * random()));
+    const density = column(5, 9);
+    const temperature = column(${temperature});
+    const matters = [0.05, 0.06].map((Ne20) => composition({ C12: 0.5 - Ne20, O16: 0.5, Ne20 }));
+    const evaluator = whiteDwarfMatter({ coulomb: ${coulomb} }).evaluator();
+    const rows = new Float64Array(12);
+    const sums = new Float64Array(12);
+    function loop() {
+      for (let i = 0; i < count; i++) {
+        evaluator.point[0] = density[i];
+        evaluator.point[1] = temperature[i];
+        const matter = matters[i & 1];
+        evaluator.fillMembers(matter, 2);
+        evaluator.fillSpecies(matter, rows);
+        for (let j = 0; j < 12; j++) sums[j] += rows[j];
+      }
+    }
+    for (let i = 0; i < 8; i++) loop();
+    const least = [];
+    for (let i = 0; i < 5; i++) {
+      const before = v8.getHeapStatistics().used_heap_size;
+      loop();
+      least.push((v8.getHeapStatistics().used_heap_size - before) / count);
+    }
+    if (!sums.every(Number.isFinite)) throw new Error("nothing computed");
+    console.log(Math.min(...least.filter((bytes) => bytes >= 0)));`;
+  const options = ["--max-semi-space-size=64", "--min-semi-space-size=64", "--input-type=module", "-e", program];
+  return Number(execFileSync(process.execPath, options, { cwd: root, encoding: "utf8" }));
+}
+
+test.each<[string, [number, number], boolean]>([
+  ["ideal plasma", [6, 9], false],
+  ["Coulomb plasma, liquid and crystal", [6, 9], true],
+])("%s, by species of two compositions in turn: less than half a byte per point", (_name, temperature, coulomb) => {
+  const bytes = bytesPerCall(temperature, coulomb);
+  expect(bytes).toBeGreaterThanOrEqual(0);
+  expect(bytes).toBeLessThan(0.5);
 });
