@@ -10,12 +10,12 @@ import type { Composition, EquationOfState } from "fermistate";
 import { solveColumns } from "./inverse.js";
 import type { Half } from "./riemann.js";
 
-/** A closed tube with a membrane in the middle. */
+/** A tube and what is in it at first. */
 export interface ShockTube {
   readonly eos: EquationOfState;
   readonly matter: Composition;
-  readonly left: Half;
-  readonly right: Half;
+  /** Matter at a distance from the middle, cm. */
+  readonly start: (x: number) => Half;
   /** cm. */
   readonly length: number;
   readonly cells: number;
@@ -47,7 +47,7 @@ const ghosts = 2;
 const courant = 0.8;
 
 /** Runs the tube to its end. Flow and sound are slow against light, so the mass of heat is left out of the inertia. */
-export function runShockTube({ eos, matter, left, right, length, cells, time }: ShockTube): ShockTubeResult {
+export function runShockTube({ eos, matter, start, length, cells, time }: ShockTube): ShockTubeResult {
   const width = length / cells;
   const size = cells + 2 * ghosts;
   const columns = (count: number): Float64Array[] => Array.from({ length: count }, () => new Float64Array(size));
@@ -67,12 +67,12 @@ export function runShockTube({ eos, matter, left, right, length, cells, time }: 
 
   const [rho, momentum, energy] = conserved;
   for (let i = 0; i < size; i++) {
-    const half = 2 * i < size ? left : right;
-    const state = eos.state(half.density, half.temperature, matter);
-    rho[i] = half.density;
-    momentum[i] = half.density * half.velocity;
-    energy[i] = half.density * (state.specificEnergy + 0.5 * half.velocity ** 2);
-    temperature[i] = half.temperature;
+    const first = start((i - ghosts + 0.5) * width - 0.5 * length);
+    const state = eos.state(first.density, first.temperature, matter);
+    rho[i] = first.density;
+    momentum[i] = first.density * first.velocity;
+    energy[i] = first.density * (state.specificEnergy + 0.5 * first.velocity ** 2);
+    temperature[i] = first.temperature;
   }
   const inside = (column: Float64Array): Float64Array => column.slice(ghosts, size - ghosts);
   const totals = (): number[] => conserved.map((column) => inside(column).reduce((sum, one) => sum + one * width, 0));
