@@ -77,7 +77,9 @@ function waveTo(eos: EquationOfState, ahead: State, pressure: number): Wave {
  */
 function shock(eos: EquationOfState, ahead: State, pressure: number): Wave {
   const mean = 0.5 * (pressure + ahead.pressure);
-  let state = isentrope(eos, ahead, pressure); // touches the Hugoniot curve to second order
+  // A weak shock is almost an isentrope; a strong one is reached along the Hugoniot curve.
+  const isWeak = pressure < 4 * ahead.pressure;
+  let state = isWeak ? isentrope(eos, ahead, pressure) : shock(eos, ahead, pressure / 4).state;
   for (let i = 0, step = 1; i < 50 && step > 1e-14; i++) {
     const { density, temperature } = state;
     const dP = pressure - state.pressure;
@@ -90,7 +92,8 @@ function shock(eos: EquationOfState, ahead: State, pressure: number): Wave {
     const part = Math.min(1, 0.7 / step);
     state = eos.state(density * Math.exp(part * dR), temperature * Math.exp(part * dT), state.composition);
   }
-  return { state, kick: Math.sqrt((pressure - ahead.pressure) * (1 / ahead.density - 1 / state.density)) };
+  const squeeze = Math.max(0, 1 / ahead.density - 1 / state.density); // rounding, in a shock of no strength
+  return { state, kick: Math.sqrt((pressure - ahead.pressure) * squeeze) };
 }
 
 /** Matter taken to another pressure at constant entropy. */
