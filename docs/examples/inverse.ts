@@ -1,5 +1,5 @@
 /** Stand-in for the library's inverse questions, until they are there: Newton in ln rho and ln T. */
-import type { BatchOutput, Composition, EquationOfState, QuantityName, State } from "fermistate";
+import { type BatchOutput, type Composition, type EquationOfState, type QuantityName, type State, transition } from "fermistate";
 
 type Name =
   | "density"
@@ -29,6 +29,19 @@ export function solve(
   options: { guess?: { density?: number; temperature?: number } } = {},
 ): { state: State; evaluations: number } {
   const [a, b] = Object.keys(given) as [Name, Name];
+  if (given.density !== undefined && (b === "specificEntropy" || b === "specificEnergy") && eos.contributions.some((c) => c.name === "Coulomb plasma")) {
+    const t = transition(eos, given.density, composition);
+    if (t !== undefined) {
+      const [c, l] = [t.crystal[b], t.liquid[b]];
+      const x = (l - given[b]!) / (l - c);
+      if (x >= 0 && x <= 1) {
+        const mixed = { ...t.liquid, crystalFraction: x };
+        for (const q of ["pressure", "specificEnergy", "specificEntropy"] as const)
+          (mixed as Record<string, unknown>)[q] = t.liquid[q] + x * (t.crystal[q] - t.liquid[q]);
+        return { state: mixed, evaluations: 2 };
+      }
+    }
+  }
   let density = given.density ?? options.guess?.density ?? 1e6;
   let temperature = given.temperature ?? options.guess?.temperature ?? 1e8;
   for (let k = 1; ; k++) {
