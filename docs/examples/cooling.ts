@@ -33,21 +33,22 @@ export interface Cooling {
 /** Cools a zone. Steps are equal in energy, so that the time of each is the energy over the mean of 1/loss. */
 export function cool({ eos, matter, density, temperatures, loss, steps }: CoolingZone): Cooling {
   const [first, last] = temperatures.map((one) => eos.state(density, one, matter));
-  const freezing = transition(eos, density, matter);
-  // The ends of each stretch are steps of their own: dT/de jumps there.
-  const isCrossed = freezing !== undefined && freezing.temperature < first!.temperature && freezing.temperature > last!.temperature;
-  const ends = [first!, ...(isCrossed ? [freezing.liquid, freezing.crystal] : []), last!].map((one) => one.specificEnergy);
+  const stations = [first!, last!];
+  if (first!.crystalFraction === 0 && last!.crystalFraction === 1) {
+    const { liquid, crystal } = transition(eos, density, matter)!;
+    stations.splice(1, 0, liquid, crystal); // steps of their own: dT/de jumps there
+  }
+  const ends = stations.map((state) => state.specificEnergy);
 
   const specificEnergy = Float64Array.from({ length: steps * (ends.length - 1) + 1 }, (_, i) => {
     const stretch = Math.min(Math.floor(i / steps), ends.length - 2);
     const share = (i - stretch * steps) / steps;
     return ends[stretch]! + share * (ends[stretch + 1]! - ends[stretch]!);
   });
-  const [temperature, crystalFraction, time] = Array.from({ length: 3 }, () => new Float64Array(specificEnergy.length)) as [
-    Float64Array,
-    Float64Array,
-    Float64Array,
-  ];
+  const [temperature, crystalFraction, time] = Array.from(
+    { length: 3 },
+    () => new Float64Array(specificEnergy.length),
+  ) as [Float64Array, Float64Array, Float64Array];
   const densities = new Float64Array(specificEnergy.length).fill(density);
   solveColumns(eos, { composition: matter, density: densities, specificEnergy }, { temperature, crystalFraction });
   for (let i = 1; i < time.length; i++) {

@@ -67,10 +67,16 @@ export function hydrostaticStar({ eos, matter, centralDensity, temperature, surf
   integrator.absoluteTolerance = 0;
   const from = Math.log(centre.pressure);
   const start = [0, (4 * Math.PI * centralDensity) / 3];
-  const { outcome, nEval } = integrator.solve(derivative, from, start, from + Math.log(surface), (_, __, lnP, [q, v]) => {
-    const radius = Math.sqrt(q!);
-    shells.push({ radius, mass: v! * radius ** 3, pressure: Math.exp(lnP), density: densityAt(lnP) });
-  });
+  const { outcome, nEval } = integrator.solve(
+    derivative,
+    from,
+    start,
+    from + Math.log(surface),
+    (_, __, lnP, [q, v]) => {
+      const radius = Math.sqrt(q!);
+      shells.push({ radius, mass: v! * radius ** 3, pressure: Math.exp(lnP), density: densityAt(lnP) });
+    },
+  );
   if (outcome !== 0) throw new Error(`the integrator gave up with outcome ${outcome}`);
   return { shells, derivatives: nEval };
 }

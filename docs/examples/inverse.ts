@@ -1,13 +1,14 @@
 /** Stand-in for the library's inverse questions, until they are there: Newton in ln rho and ln T. */
-import { type BatchOutput, type Composition, type EquationOfState, type QuantityName, type State, transition } from "fermistate";
+import {
+  type BatchOutput,
+  type Composition,
+  type EquationOfState,
+  type QuantityName,
+  type State,
+  transition,
+} from "fermistate";
 
-type Name =
-  | "density"
-  | "temperature"
-  | "pressure"
-  | "specificEnergy"
-  | "specificEntropy"
-  | "specificEnthalpy";
+type Name = "density" | "temperature" | "pressure" | "specificEnergy" | "specificEntropy" | "specificEnthalpy";
 type Given = { readonly [K in Name]?: number };
 
 function slopes(s: State, name: Name): [value: number, byLnDensity: number, byLnTemperature: number] {
@@ -29,7 +30,11 @@ export function solve(
   options: { guess?: { density?: number; temperature?: number } } = {},
 ): { state: State; evaluations: number } {
   const [a, b] = Object.keys(given) as [Name, Name];
-  if (given.density !== undefined && (b === "specificEntropy" || b === "specificEnergy") && eos.contributions.some((c) => c.name === "Coulomb plasma")) {
+  if (
+    given.density !== undefined &&
+    (b === "specificEntropy" || b === "specificEnergy") &&
+    eos.contributions.some((c) => c.name === "Coulomb plasma")
+  ) {
     const t = transition(eos, given.density, composition);
     if (t !== undefined) {
       const [c, l] = [t.crystal[b], t.liquid[b]];
@@ -62,7 +67,7 @@ export function solve(
     const damp = Math.min(1, 1.5 / size);
     density *= Math.exp(dr * damp);
     temperature *= Math.exp(dt * damp);
-    if (size < 1e-15 || k > 12 && size < 1e-12 || k > 80) return { state, evaluations: k };
+    if (size < 1e-15 || (k > 12 && size < 1e-12) || k > 80) return { state, evaluations: k };
   }
 }
 
@@ -73,6 +78,7 @@ export function solveColumns(
   },
   output: BatchOutput & { readonly temperature?: Float64Array; readonly density?: Float64Array },
 ): void {
+
   const { composition, guess, ...columns } = input;
   const names = Object.keys(columns) as Name[];
   let last = 1e8;

@@ -18,12 +18,14 @@ const mean = (i: number, of: (side: Transition["liquid"]) => number): number => 
 };
 
 test("entropy is the same everywhere, to rounding", () => {
-  const worst = Math.max(...all.map((i) => {
-    const s = isMixed(i)
-      ? mean(i, (side) => side.specificEntropy)
-      : eos.state(density[i]!, along.temperature[i]!, matter).specificEntropy;
-    return Math.abs(s / along.entropy - 1);
-  }));
+  const worst = Math.max(
+    ...all.map((i) => {
+      const s = isMixed(i)
+        ? mean(i, (side) => side.specificEntropy)
+        : eos.state(density[i]!, along.temperature[i]!, matter).specificEntropy;
+      return Math.abs(s / along.entropy - 1);
+    }),
+  );
   console.log(worst);
 });
 
@@ -32,11 +34,15 @@ test("liquid, then more and more crystal at the melting temperature, then crysta
   expect(along.crystalFraction.at(-1)).toBe(1);
   expect([...along.crystalFraction]).toEqual([...along.crystalFraction].sort((a, b) => a - b));
   expect(mixed.length).toBeGreaterThan(100);
-  for (const i of mixed) expect(Math.abs(along.temperature[i]! / meltingTemperature(density[i]!, matter) - 1)).toBeLessThan(1e-14);
+  for (const i of mixed)
+    expect(Math.abs(along.temperature[i]! / meltingTemperature(density[i]!, matter) - 1)).toBeLessThan(1e-14);
 });
 
 test("within one phase the temperature is what an integrator finds from gamma3", () => {
-  for (const [from, to] of [[0, mixed[0]! - 1], [mixed.at(-1)! + 1, all.length - 1]] as const) {
+  for (const [from, to] of [
+    [0, mixed[0]! - 1],
+    [mixed.at(-1)! + 1, all.length - 1],
+  ] as const) {
     const integrator = new Solver(1);
     integrator.relativeTolerance = 1e-13;
     integrator.absoluteTolerance = 1e-13;

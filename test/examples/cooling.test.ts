@@ -17,14 +17,26 @@ test("temperature pauses while the crystal grows", () => {
     expect(Math.abs(run.temperature[i]! / freezing.temperature - 1)).toBeLessThan(1e-14);
     //expect(Math.abs(run.crystalFraction[i]! - (i - steps) / steps)).toBeLessThan(1e-10);
   }
-  console.log(Math.max(...Array.from({length:steps+1},(_,k)=>Math.abs(run.crystalFraction[k+steps]! - k / steps))));
+  console.log(
+    Math.max(...Array.from({ length: steps + 1 }, (_, k) => Math.abs(run.crystalFraction[k + steps]! - k / steps))),
+  );
   const pause = run.time[2 * steps]! - run.time[steps]!;
   const energy = freezing.latentHeat + freezing.freeEnergyMismatch; // e_liquid - e_crystal
-  console.log(pause * loss(freezing.temperature) / energy - 1, pause * loss(freezing.temperature) / (freezing.liquid.specificEnergy-freezing.crystal.specificEnergy) - 1, freezing.freeEnergyMismatch/freezing.latentHeat);
+  console.log(
+    (pause * loss(freezing.temperature)) / energy - 1,
+    (pause * loss(freezing.temperature)) / (freezing.liquid.specificEnergy - freezing.crystal.specificEnergy) - 1,
+    freezing.freeEnergyMismatch / freezing.latentHeat,
+  );
 });
 
 test("the energy at each temperature is that of the state: none is lost", () => {
-  const worst = Math.max(...Array.from(run.time.keys()).filter((i) => i <= steps || i >= 2 * steps).map((i) => Math.abs(eos.state(density, run.temperature[i]!, matter).specificEnergy / run.specificEnergy[i]! - 1)));
+  const worst = Math.max(
+    ...Array.from(run.time.keys())
+      .filter((i) => i <= steps || i >= 2 * steps)
+      .map((i) =>
+        Math.abs(eos.state(density, run.temperature[i]!, matter).specificEnergy / run.specificEnergy[i]! - 1),
+      ),
+  );
   console.log(worst);
 });
 

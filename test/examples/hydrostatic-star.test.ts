@@ -1,5 +1,6 @@
 /** Hydrostatic stars: cold ideal electrons against Chandrasekhar's equation, a Coulomb lattice, and what the tolerance buys. */
 import {
+  atomicMassConstant,
   coldCorrections,
   combine,
   composition,
@@ -10,7 +11,6 @@ import {
   reducedPlanckConstant,
   solarMass,
   speedOfLight,
-  atomicMassConstant,
   whiteDwarfMatter,
 } from "fermistate";
 import { describe, expect, test } from "vitest";
@@ -90,6 +90,10 @@ describe("the whole matter", () => {
     });
   });
   test("freezes", () => {
-    for (const T of [0, 1e6,2e6,3e6,1e7]) for (const tolerance of [1e-6,1e-8,1e-10]) { const s=hydrostaticStar({eos,matter,centralDensity:2e6,temperature:T,surface:1e-5,tolerance}); console.log(T,tolerance,s.shells.at(-1)!.mass/solarMass,s.shells.at(-1)!.radius,s.derivatives); }
+    for (const T of [0, 1e6, 2e6, 3e6, 1e7])
+      for (const tolerance of [1e-6, 1e-8, 1e-10]) {
+        const s = hydrostaticStar({ eos, matter, centralDensity: 2e6, temperature: T, surface: 1e-5, tolerance });
+        console.log(T, tolerance, s.shells.at(-1)!.mass / solarMass, s.shells.at(-1)!.radius, s.derivatives);
+      }
   });
 });
