@@ -5,8 +5,7 @@
  * Between the entropies of liquid and crystal matter is at the melting temperature and the share of the crystal follows
  * from the lever rule; the inverse question with entropy answers that by itself, so the loop below knows of no phases.
  */
-import { type Composition, type EquationOfState, transition } from "fermistate";
-import { solveColumns } from "./inverse.js";
+import { type Composition, type EquationOfState, solveColumns, transition } from "fermistate";
 
 /** Columns along an adiabat. */
 export interface Adiabat {

@@ -4,8 +4,7 @@
  * Energy is what the zone keeps account of, and its temperature is a question to the equation of state. So no energy is
  * lost, and the pause at the melting temperature needs no special case: there the temperature stays while energy goes.
  */
-import { type Composition, type EquationOfState, transition } from "fermistate";
-import { solveColumns } from "./inverse.js";
+import { type Composition, type EquationOfState, solveColumns, transition } from "fermistate";
 
 /** A zone and how it cools. */
 export interface CoolingZone {

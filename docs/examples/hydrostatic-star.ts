@@ -9,9 +9,8 @@
  *
  * Newtonian gravity; rho is its source.
  */
-import { type Composition, type EquationOfState, gravitationalConstant } from "fermistate";
+import { type Composition, type EquationOfState, gravitationalConstant, type State, solve } from "fermistate";
 import { Solver } from "odex";
-import { solve } from "./inverse.js";
 
 /** What the star is made of and where it begins and ends. */
 export interface StarOptions {
@@ -44,17 +43,15 @@ export interface Star {
 /** Integrates a star. */
 export function hydrostaticStar({ eos, matter, centralDensity, temperature, surface, tolerance }: StarOptions): Star {
   const centre = eos.state(centralDensity, temperature, matter);
-  let density = centralDensity;
-  /** Density at ln P; the last answer is the guess, steps being small. */
-  const densityAt = (lnP: number): number => {
-    const pressure = Math.exp(lnP);
-    density = solve(eos, matter, { pressure, temperature }, { guess: { density } }).state.density;
-    return density;
+  let last = centre;
+  /** Matter at a pressure; what was found last is the start of the search. */
+  const at = (lnP: number): State => {
+    last = solve(eos, matter, { pressure: Math.exp(lnP), temperature }, { guess: last }).state;
+    return last;
   };
 
   const derivative = (lnP: number, [q, v]: number[]): number[] => {
-    const pressure = Math.exp(lnP);
-    const rho = densityAt(lnP);
+    const { pressure, density: rho } = at(lnP);
     const dq = (-2 * pressure) / (gravitationalConstant * rho * v!);
     // At the centre v = 4 pi/3 (rho - 2/5 drho) so that dv/dlnP = (4 pi/5) drho/dlnP.
     const dv = q === 0 ? (0.8 * Math.PI * rho) / centre.chiRho : 0.5 * dq * ((4 * Math.PI * rho - 3 * v!) / q!);
@@ -74,7 +71,8 @@ export function hydrostaticStar({ eos, matter, centralDensity, temperature, surf
     from + Math.log(surface),
     (_, __, lnP, [q, v]) => {
       const radius = Math.sqrt(q!);
-      shells.push({ radius, mass: v! * radius ** 3, pressure: Math.exp(lnP), density: densityAt(lnP) });
+      const { pressure, density } = at(lnP);
+      shells.push({ radius, mass: v! * radius ** 3, pressure, density });
     },
   );
   if (outcome !== 0) throw new Error(`the integrator gave up with outcome ${outcome}`);

@@ -6,8 +6,7 @@
  * the Rankine-Hugoniot conditions, rarefactions are isentropes, and of the equation of state nothing is assumed but that
  * isentropes are convex (Menikoff & Plohr 1989, Rev. Mod. Phys. 61, 75; Colella & Glaz 1985, J. Comput. Phys. 59, 264).
  */
-import type { Composition, EquationOfState, State } from "fermistate";
-import { solve } from "./inverse.js";
+import { type Composition, type EquationOfState, type State, solve } from "fermistate";
 
 /** Uniform matter: density g/cm^3, velocity cm/s, temperature K. */
 export interface Half {

@@ -6,8 +6,7 @@
  * reconstructed, the last so that no face needs the equation of state (Colella & Glaz 1985, J. Comput. Phys. 59, 264): it
  * is asked once per cell and step, for all cells in one call, with the temperature of the step before as the guess.
  */
-import type { Composition, EquationOfState } from "fermistate";
-import { solveColumns } from "./inverse.js";
+import { type Composition, type EquationOfState, solveColumns } from "fermistate";
 import type { Half } from "./riemann.js";
 
 /** A tube and what is in it at first. */

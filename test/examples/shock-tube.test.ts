@@ -1,7 +1,6 @@
 /** The shock tube: order on smooth flow, convergence to the exact solution, conservation. */
-import { composition, whiteDwarfMatter } from "fermistate";
+import { composition, solve, whiteDwarfMatter } from "fermistate";
 import { describe, expect, test } from "vitest";
-import { solve } from "../../docs/examples/inverse.js";
 import { exactRiemann, type Half } from "../../docs/examples/riemann.js";
 import { runShockTube, type ShockTubeResult } from "../../docs/examples/shock-tube.js";
 
