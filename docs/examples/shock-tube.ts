@@ -2,9 +2,13 @@
  * A shock tube in dense matter: one-dimensional Newtonian gas dynamics by the finite-volume method.
  *
  * Scheme: MUSCL-Hancock with limited linear reconstruction and HLLC fluxes (Toro 2009, Riemann Solvers and Numerical
- * Methods for Fluid Dynamics, 3rd ed., sections 10.4 and 14.4). Density, velocity, pressure and energy per volume are
+ * Methods for Fluid Dynamics, 3rd ed., chapters 10 and 14). Density, velocity, pressure and energy per volume are
  * reconstructed, the last so that no face needs the equation of state (Colella & Glaz 1985, J. Comput. Phys. 59, 264): it
  * is asked once per cell and step, for all cells in one call, with the temperature of the step before as the guess.
+ *
+ * Degenerate matter has two traps. Nearly all its energy is there at T = 0 too, so a small error of the energy is a large
+ * one of the temperature; and an energy below that of cold matter belongs to no temperature at all: `solveColumns` then
+ * throws `below-cold` and names the cell, rather than go on with a number that means nothing.
  */
 import { type Composition, type EquationOfState, solveColumns } from "fermistate";
 import type { Half } from "./riemann.js";
@@ -30,6 +34,8 @@ export interface ShockTubeResult {
   readonly velocity: Float64Array;
   readonly pressure: Float64Array;
   readonly temperature: Float64Array;
+  /** Relative error of the temperature per relative error of the energy. */
+  readonly temperatureConditionNumber: Float64Array;
   /** Mass, momentum and energy in the tube per cm^2 of its section, before and after. */
   readonly totals: { readonly before: readonly number[]; readonly after: readonly number[] };
   readonly steps: number;
@@ -49,44 +55,36 @@ const courant = 0.6;
 export function runShockTube({ eos, matter, start, length, cells, time }: ShockTube): ShockTubeResult {
   const width = length / cells;
   const size = cells + 2 * ghosts;
-  const columns = (count: number): Float64Array[] => Array.from({ length: count }, () => new Float64Array(size));
-  const conserved = columns(3) as [Float64Array, Float64Array, Float64Array]; // rho, rho u, rho (e + u^2/2)
-  const fluxes = columns(3); // through the left face of each cell
-  const primitive = columns(5);
-  const [lowFace, highFace] = [columns(5), columns(5)]; // a cell's values at its left and right face, half a step later
-  const [density, velocity, pressure, energyDensity, gamma1] = primitive as [
-    Float64Array,
-    Float64Array,
-    Float64Array,
-    Float64Array,
-    Float64Array,
-  ];
-  const specificEnergy = new Float64Array(size);
-  const temperature = new Float64Array(size);
+  const column = (): Float64Array => new Float64Array(size);
+  const [density, momentum, energy] = [column(), column(), column()]; // rho, rho u, rho (e + u^2/2)
+  const conserved = [density, momentum, energy];
+  const fluxes = conserved.map(column); // through the left face of each cell
+  const [velocity, pressure, energyDensity, gamma1] = [column(), column(), column(), column()];
+  const primitive = [density, velocity, pressure, energyDensity, gamma1];
+  const [lowFace, highFace] = [primitive.map(column), primitive.map(column)]; // of each cell, half a step later
+  const [specificEnergy, temperature, temperatureConditionNumber] = [column(), column(), column()];
 
-  const [rho, momentum, energy] = conserved;
   for (let i = 0; i < size; i++) {
     const first = start((i - ghosts + 0.5) * width - 0.5 * length);
     const state = eos.state(first.density, first.temperature, matter);
-    rho[i] = first.density;
+    density[i] = first.density;
     momentum[i] = first.density * first.velocity;
     energy[i] = first.density * (state.specificEnergy + 0.5 * first.velocity ** 2);
     temperature[i] = first.temperature;
   }
-  const inside = (column: Float64Array): Float64Array => column.slice(ghosts, size - ghosts);
-  const totals = (): number[] => conserved.map((column) => inside(column).reduce((sum, one) => sum + one * width, 0));
+  const inside = (all: Float64Array): Float64Array => all.slice(ghosts, size - ghosts);
+  const totals = (): number[] => conserved.map((one) => inside(one).reduce((sum, amount) => sum + amount * width, 0));
   const before = totals();
 
   /** From what is conserved to what the scheme needs: the one place that asks the equation of state. */
   function updatePrimitive(): void {
     for (let i = 0; i < size; i++) {
-      density[i] = rho[i]!;
-      velocity[i] = momentum[i]! / rho[i]!;
-      specificEnergy[i] = energy[i]! / rho[i]! - 0.5 * velocity[i]! ** 2;
-      energyDensity[i] = rho[i]! * specificEnergy[i]!;
+      velocity[i] = momentum[i]! / density[i]!;
+      specificEnergy[i] = energy[i]! / density[i]! - 0.5 * velocity[i]! ** 2;
+      energyDensity[i] = density[i]! * specificEnergy[i]!;
     }
     const known = { composition: matter, density, specificEnergy, guess: { temperature } };
-    solveColumns(eos, known, { temperature, pressure, gamma1 });
+    solveColumns(eos, known, { temperature, pressure, gamma1, temperatureConditionNumber });
   }
 
   updatePrimitive();
@@ -101,8 +99,8 @@ export function runShockTube({ eos, matter, start, length, cells, time }: ShockT
     for (let i = 1; i < size - 1; i++) reconstruct(primitive, i, ratio, lowFace, highFace);
     for (let i = ghosts; i <= size - ghosts; i++) hllc(highFace, i - 1, lowFace, i, fluxes, i);
     for (let k = 0; k < 3; k++) {
-      const [column, flux] = [conserved[k]!, fluxes[k]!];
-      for (let i = ghosts; i < size - ghosts; i++) column[i]! -= ratio * (flux[i + 1]! - flux[i]!);
+      const [amount, flux] = [conserved[k]!, fluxes[k]!];
+      for (let i = ghosts; i < size - ghosts; i++) amount[i]! -= ratio * (flux[i + 1]! - flux[i]!);
     }
     updatePrimitive();
     remaining -= step;
@@ -115,6 +113,7 @@ export function runShockTube({ eos, matter, start, length, cells, time }: ShockT
     velocity: inside(velocity),
     pressure: inside(pressure),
     temperature: inside(temperature),
+    temperatureConditionNumber: inside(temperatureConditionNumber),
     totals: { before, after: totals() },
     steps,
   };
@@ -153,7 +152,7 @@ function smoothness(a: number, b: number): number {
   return a * b > 0 ? (4 * a * b) / (a + b) ** 2 : 0;
 }
 
-/** Flux between two faces: two outer waves and the contact between them (ibid., equations 10.37 to 10.39). */
+/** Flux between two faces: two outer waves and the contact between them (ibid., section 10.4). */
 function hllc(
   left: readonly Float64Array[],
   i: number,
@@ -185,7 +184,7 @@ function hllc(
   flux[2]![at]! += speed * (star * (total / rho + (contact - u) * (contact + p / mass)) - total);
 }
 
-/** Speed of a wave over that of sound, by the ratio of pressures across it (ibid., equations 10.59 and 10.60). */
+/** Speed of a wave over that of sound, by the ratio of pressures across it (ibid., section 10.5). */
 function strength(ratio: number, gamma1: number): number {
   return ratio > 1 ? Math.sqrt(1 + ((gamma1 + 1) / (2 * gamma1)) * (ratio - 1)) : 1;
 }
