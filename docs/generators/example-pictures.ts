@@ -239,7 +239,7 @@ function star(): void {
       points: sequence(full, matter, 1e5, 2e10),
       colour: dark,
       mark: "line",
-      label: { words: "carbon and oxygen", at: 17, by: [-8, 10], anchor: "end" },
+      label: { words: "carbon and oxygen", at: 40, by: [-10, 4], anchor: "end" },
     },
     {
       points: sequence(full, composition({ Fe56: 1 }), 1e5, 1.1e9),
@@ -296,7 +296,7 @@ function freezing(): void {
             points: points(along.temperature),
             mark: "line",
             colour: dark,
-            label: { words: "adiabat", at: 165, by: [-8, -8], anchor: "end" },
+            label: { words: "adiabat", at: 6, by: [-8, 2], anchor: "end" },
           },
         ],
       },
@@ -327,7 +327,7 @@ function cooling(): void {
   picture(
     "cooling",
     "One zone cools and freezes",
-    "Carbon and oxygen of 1e7 g/cm\u00b3 lose 4e-3 erg/(g s) at 1e7 K, and as T^3.5.",
+    "Carbon and oxygen of 1e7 g/cm\u00b3 lose 4e-3 (T/1e7 K)^3.5 erg/(g s).",
     "Temperature over time from 3e7 to 3e6 K. It falls, stays at the melting temperature of 5.6e6 K while matter freezes, and falls " +
       "faster afterwards than a liquid would.",
     [
