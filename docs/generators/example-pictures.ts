@@ -192,8 +192,8 @@ function shockTube(): void {
     "A shock tube in degenerate carbon and oxygen",
     `At first 1e7 g/cm\u00b3 on the left, 1e6 on the right, both at 1e8 K and at rest; here ${(time * 1e6).toFixed(1)} \u00b5s later. Line: exact; dots: 100 cells.`,
     "Density, velocity, pressure and temperature along a tube of one kilometre: a rarefaction to the left, the contact, a shock " +
-      "to the right. Dots of the finite-volume scheme lie on the line of the exact solution but for two or three cells at the " +
-      "corners and jumps and, for temperature, some cells left of the contact that are too hot.",
+      "to the right. Dots of the finite-volume scheme lie on the line of the exact solution but for a few cells at the " +
+      "corners and jumps; temperature is too high in some cells left of the contact.",
     [
       panelOf("density [g/cm\u00b3]", run.density, ({ state }) => state.density),
       panelOf("velocity [1000 km/s]", run.velocity, ({ velocity }) => velocity, 1e8, "y"),
@@ -340,7 +340,7 @@ function cooling(): void {
             points: liquid,
             mark: "dashes",
             colour: middle,
-            label: { words: "if it stayed liquid", at: 170, by: [10, -8] },
+            label: { words: "if it stayed liquid", at: 192, by: [-6, 18], anchor: "end" },
           },
           {
             points: real,

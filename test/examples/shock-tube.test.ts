@@ -96,3 +96,15 @@ describe("matter of 1e7 g/cm^3 beside matter of 1e6, both at 1e8 K", () => {
     }
   });
 });
+
+test.each([
+  [1e7, 1e6],
+  [1e6, 1e4],
+  [1e9, 1e7],
+])("cold matter, %d beside %d g/cm^3: no cell falls below the coldest place of the exact solution", (dense, thin) => {
+  const [left, right] = [dense, thin].map((density) => ({ density, velocity: 0, temperature: 1e7 })) as [Half, Half];
+  const exact = exactRiemann(eos, matter, left, right);
+  const time = (0.35 * length) / exact.speeds[4]!;
+  const run = runShockTube({ eos, matter, start: (x) => (x < 0 ? left : right), length, cells: 60, time });
+  expect(Math.min(...run.temperature)).toBeGreaterThan(exact.contact[0].temperature);
+});
