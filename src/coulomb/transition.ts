@@ -23,8 +23,13 @@ export interface Transition {
   readonly crystal: State;
   /** s_liquid - s_crystal, erg/(g K). */
   readonly entropyJump: number;
-  /** T (s_liquid - s_crystal), erg/g: what freezing sets free. */
+  /** T (s_liquid - s_crystal), erg/g: what freezing sets free where the two sides are in balance. */
   readonly latentHeat: number;
+  /**
+   * e_liquid - e_crystal, erg/g: what a code that follows energy at constant density sees set free. It differs from the latent
+   * heat by the mismatch of the free energies, some 15 % for carbon and oxygen at Gamma = 175.
+   */
+  readonly energyJump: number;
   /** P_liquid - P_crystal at the same density, dyn/cm^2. */
   readonly pressureJump: number;
   /** F_liquid - F_crystal, erg/g: zero at a true transition, here what the convention leaves. */
@@ -71,6 +76,7 @@ export function transition(
     crystal,
     entropyJump,
     latentHeat: temperature * entropyJump,
+    energyJump: liquid.specificEnergy - crystal.specificEnergy,
     pressureJump: liquid.pressure - crystal.pressure,
     freeEnergyMismatch: liquid.specificFreeEnergy - crystal.specificFreeEnergy,
   });

@@ -1,5 +1,5 @@
 /** Inverse questions by the column: each row starts from its neighbour's answer, nothing is allocated per row. */
-import { FermistateError, withIndex } from "../errors.js";
+import { FermistateError, isFermistateError, withIndex } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import { firstOutside, holds, refusePoint } from "../thermodynamics/domain.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
@@ -39,7 +39,13 @@ export type SearchColumn =
   | "temperatureConditionNumber";
 
 /** Output of {@link solveColumns}: columns of the caller; only those given are written. */
-export type SolveOutput = { readonly [Name in QuantityName | SearchColumn]?: Float64Array };
+export type SolveOutput = { readonly [Name in QuantityName | SearchColumn]?: Float64Array } & {
+  /**
+   * Where given, a row without an answer gets 1 here (others 0), its other outputs stay as they were, and nothing is thrown for
+   * it: for schemes that repair such zones themselves.
+   */
+  readonly refused?: Uint8Array;
+};
 
 const searchColumns: readonly SearchColumn[] = [
   "density",
@@ -54,7 +60,8 @@ const searchColumns: readonly SearchColumn[] = [
  *
  * Rows that are neighbours in a model are worth keeping in order: a row starts from the third-order expansion about the
  * one before, and where they differ by a per cent it takes two evaluations, often one. The columns of the output may be those
- * of the input. Where a row has no answer the error names it; rows before it are written, those after it not.
+ * of the input. Where a row has no answer the error names it; rows before it are written, those after it not (unless the output has a column
+ * `refused`).
  *
  * @throws as {@link solve}, with the row; `length-mismatch`, `unavailable-quantity`
  */
@@ -83,7 +90,9 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
   const knowsDensity = question.type === TEMPERATURE_AT_DENSITY;
   const knowsTemperature = question.type === DENSITY_AT_TEMPERATURE;
   let neighbour: Composition | undefined;
-  for (let i = 0; i < count; i++) {
+  const { refused } = output;
+
+  function answer(i: number): void {
     const matter = each === undefined ? (composition as Composition) : each[i]!;
     const follows = neighbour === matter && guessed === undefined && w[TEMPERATURE_NOW]! > 0;
     if (follows) {
@@ -119,6 +128,20 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
       const value = record[slots[j]!]!;
       if (Number.isNaN(value)) refuseQuantity(quantityNames[slots[j]!]!, i);
       columns[j]![i] = value;
+    }
+  }
+
+  if (refused === undefined) for (let i = 0; i < count; i++) answer(i);
+  else {
+    for (let i = 0; i < count; i++) {
+      refused[i] = 0;
+      try {
+        answer(i);
+      } catch (error) {
+        if (!isFermistateError(error) || error.code === "unavailable-quantity") throw error;
+        refused[i] = 1;
+        neighbour = undefined;
+      }
     }
   }
 }
@@ -188,8 +211,9 @@ function outputs(output: SolveOutput, count: number): { slots: number[]; columns
   }
   const slots: number[] = [];
   const columns: Float64Array[] = [];
+  checkRefused(output.refused, count);
   for (const [name, values] of Object.entries(output)) {
-    if (values === undefined) continue;
+    if (values === undefined || name === "refused") continue;
     const own = (searchColumns as readonly string[]).includes(name);
     if (!own && !Object.hasOwn(quantities, name)) {
       const allowed = `one of ${[...searchColumns, ...quantityNames].join(", ")}`;
@@ -207,14 +231,27 @@ function outputs(output: SolveOutput, count: number): { slots: number[]; columns
   return { slots, columns, plasma: output.positronDensity !== undefined };
 }
 
+function checkRefused(refused: unknown, count: number): void {
+  if (refused === undefined) return;
+  if (!(refused instanceof Uint8Array)) {
+    throw new FermistateError("invalid-option", { argument: "refused", given: refused, allowed: "a Uint8Array" });
+  }
+  if (refused.length < count) {
+    const allowed = `>= ${count} rows`;
+    throw new FermistateError("length-mismatch", { argument: "refused", given: refused.length, allowed });
+  }
+}
+
 /** Density and temperature given: an ordinary batch, and no search to tell of. */
 function direct(
   eos: EquationOfState,
   input: { density: Float64Array; temperature: Float64Array; composition: SolveInput["composition"] },
   output: SolveOutput,
 ): void {
-  const { density, temperature, evaluations, densityConditionNumber, temperatureConditionNumber, ...state } = output;
+  const { density, temperature, evaluations, densityConditionNumber, temperatureConditionNumber, refused, ...state } =
+    output;
   eos.evaluate(input, state);
+  refused?.fill(0, 0, input.density.length);
   density?.set(input.density);
   temperature?.set(input.temperature);
   evaluations?.fill(1, 0, input.density.length);

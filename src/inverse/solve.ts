@@ -55,8 +55,8 @@ export interface Solution {
   /** Largest deviation of a given quantity from the state's, relative to the size of its terms. */
   readonly residual: number;
   /**
-   * By how much relative errors of the two given quantities are amplified in density and temperature, and 1 for the rounding of
-   * the answer itself; 0 for what was given. In degenerate matter energy and pressure hardly depend on temperature, and this is
+   * By how much relative errors of the two given quantities (energies relative to |e| + P/rho, an entropy to |s| + c_v) are
+   * amplified in density and temperature, and 1 for the rounding of the answer itself; 0 for what was given. In degenerate matter energy and pressure hardly depend on temperature, and this is
    * large.
    */
   readonly conditionNumber: { readonly density: number; readonly temperature: number };

@@ -190,7 +190,20 @@ describe("columns", () => {
     expect(temperature[0] as number).toBeCloseTo(1e7, -2);
   });
 
+  test("a column `refused` marks rows without an answer, leaves their outputs and goes on", () => {
+    const { pressure } = matter.state(1e6, 1e7, carbonOxygen);
+    const rows = { density: Float64Array.of(1e6, 1e6, 1e6), pressure: Float64Array.of(pressure, 1, pressure) };
+    const temperature = Float64Array.of(-1, -2, -3);
+    const refused = new Uint8Array(3);
+    solveColumns(matter, { composition: carbonOxygen, ...rows }, { temperature, refused });
+    expect([...refused]).toEqual([0, 1, 0]);
+    expect(temperature[1]).toBe(-2);
+    expect(temperature[2] as number).toBeCloseTo(1e7, -2);
+  });
+
   test.each<[string, object, object, string]>([
+    ["refused", { density: two, pressure: two }, { refused: new Float64Array(2) }, "invalid-option"],
+    ["short refused", { density: two, pressure: two }, { refused: new Uint8Array(1) }, "length-mismatch"],
     ["lengths", { density: two, pressure: Float64Array.of(1) }, {}, "length-mismatch"],
     ["NaN", { density: two, pressure: Float64Array.of(1e23, Number.NaN) }, {}, "not-a-number"],
     ["no column", { density: two, pressure: [1, 2] }, {}, "invalid-option"],
