@@ -91,3 +91,42 @@ test.each<[string, [number, number], boolean]>([
   expect(bytes).toBeGreaterThanOrEqual(0);
   expect(bytes).toBeLessThan(0.5);
 });
+
+test.each<[string, string]>([
+  ["density, specificEnergy", "a neighbour"],
+  ["pressure, specificEntropy", "a neighbour"],
+  ["temperature, pressure", "a neighbour"],
+  ["density, specificEnergy", "guesses"],
+  ["pressure, specificEnergy", "guesses"],
+])("solveColumns, %s, from %s: less than a byte per row", (pair, start) => {
+  const program = `
+    import v8 from "node:v8";
+    import { composition, solveColumns, whiteDwarfMatter } from "./dist/index.js";
+    const count = 20_000;
+    const wave = (i, k) => 1 + 0.3 * Math.sin((i * k) / 40);
+    const density = Float64Array.from({ length: count }, (_, i) => 1e6 * wave(i, 1));
+    const temperature = Float64Array.from({ length: count }, (_, i) => 6e7 * wave(i, 1.7));
+    const matter = whiteDwarfMatter();
+    const core = composition({ C12: 0.5, O16: 0.5 });
+    const [pressure, specificEnergy, specificEntropy, gamma1] = [0, 1, 2, 3].map(() => new Float64Array(count));
+    matter.evaluate({ density, temperature, composition: core }, { pressure, specificEnergy, specificEntropy });
+    const all = { density, temperature, pressure, specificEnergy, specificEntropy };
+    const input = { composition: core };
+    for (const name of ${JSON.stringify(pair)}.split(", ")) input[name] = all[name];
+    if (${JSON.stringify(start)} === "guesses") {
+      input.guess = { density: density.map((x) => x * 1.01), temperature: temperature.map((x) => x * 1.01) };
+    }
+    const output = { density: new Float64Array(count), temperature: new Float64Array(count), gamma1 };
+    for (let i = 0; i < 8; i++) solveColumns(matter, input, output);
+    const least = [];
+    for (let i = 0; i < 5; i++) {
+      const before = v8.getHeapStatistics().used_heap_size;
+      solveColumns(matter, input, output);
+      least.push((v8.getHeapStatistics().used_heap_size - before) / count);
+    }
+    console.log(Math.min(...least.filter((bytes) => bytes >= 0)));`;
+  const options = ["--max-semi-space-size=64", "--min-semi-space-size=64", "--input-type=module", "-e", program];
+  const bytes = Number(execFileSync(process.execPath, options, { cwd: root, encoding: "utf8" }));
+  expect(bytes).toBeGreaterThanOrEqual(0);
+  expect(bytes).toBeLessThan(1); // one boxed number per row would be 16
+});
