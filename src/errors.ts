@@ -16,6 +16,7 @@
  * - `length-mismatch`: columns of a batch that do not fit each other
  * - `unavailable-quantity`: no contribution of this equation of state knows the quantity
  * - `unstable`: the sum of contributions has no positive pressure, resists neither compression nor heating, or holds NaN
+ * - `dependent-variables`: two variables that do not fix the state at this point
  * - `no-convergence`: an iteration did not reach its promise (a defect of the library: please report)
  * - `too-large`: a request beyond the stated size limit
  * - `invalid-option`: an option or a command-line argument that does not exist or cannot be read
@@ -30,6 +31,7 @@ export type ErrorCode =
   | "length-mismatch"
   | "unavailable-quantity"
   | "unstable"
+  | "dependent-variables"
   | "no-convergence"
   | "too-large"
   | "invalid-option"

@@ -33,9 +33,19 @@ export {
   type StateWithFindings,
   withFindings,
 } from "./regime/with-findings.js";
+export type { StateVariable } from "./thermodynamics/brackets.js";
 export { type Breakdown, breakdown, type Share } from "./thermodynamics/breakdown.js";
 export { combine } from "./thermodynamics/combine.js";
 export type { Contribution, Domain } from "./thermodynamics/contribution.js";
+export {
+  type ByVariable,
+  type DerivativeColumns,
+  type Derivatives,
+  type DerivativesEvaluator,
+  type DerivativesRequest,
+  derivatives,
+  derivativesEvaluator,
+} from "./thermodynamics/derivatives.js";
 export type {
   BatchInput,
   BatchOutput,
@@ -46,5 +56,6 @@ export type {
 } from "./thermodynamics/equation-of-state.js";
 export type { Evaluator } from "./thermodynamics/evaluator.js";
 export type { Order } from "./thermodynamics/free-energy.js";
+export type { DifferentiableQuantity } from "./thermodynamics/gradients.js";
 export { type Quantity, type QuantityName, quantities, quantityNames } from "./thermodynamics/quantities.js";
 export { type WhiteDwarfMatterOptions, whiteDwarfMatter } from "./white-dwarf-matter.js";
