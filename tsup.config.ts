@@ -51,17 +51,22 @@ function writeLicences(): void {
   writeFileSync(licencesFile, [head, ...texts].join(`\n${"-".repeat(80)}\n\n`));
 }
 
+/** What package.json exports. */
+const entryPoints = {
+  index: "src/index.ts",
+  grids: "src/grids/index.ts",
+  charts: "src/charts/index.ts",
+  contributions: "src/contributions/index.ts",
+  files: "src/files/index.ts",
+  certify: "src/certify/index.ts",
+  parallel: "src/parallel/index.ts",
+};
+
 export default defineConfig([
   {
     ...shared,
-    entry: {
-      index: "src/index.ts",
-      grids: "src/grids/index.ts",
-      charts: "src/charts/index.ts",
-      contributions: "src/contributions/index.ts",
-      files: "src/files/index.ts",
-      certify: "src/certify/index.ts",
-    },
+    // The threads of fermistate/parallel find theirs beside the file that starts them.
+    entry: { ...entryPoints, "parallel-worker": "src/parallel/parallel-worker.ts" },
     format: ["esm", "cjs"],
     platform: "neutral",
     external: [/^node:/],
@@ -69,9 +74,10 @@ export default defineConfig([
     // Hands the CommonJS conversion to rollup: tsup's own breaks on class fields written by `minifySyntax`.
     treeshake: true,
     dts: {
+      entry: entryPoints,
       compilerOptions: {
         ignoreDeprecations: "6.0", // tsup sets `baseUrl`, which TypeScript 6 calls deprecated
-        types: ["node"], // for src/files only
+        types: ["node"], // for src/files and src/parallel only
         // "npm run types" asks for these; a build need not stop at them.
         isolatedDeclarations: false,
         noUnusedLocals: false,

@@ -20,6 +20,7 @@
  * - `no-convergence`: an iteration did not reach its promise (a defect of the library: please report)
  * - `too-large`: a request beyond the stated size limit
  * - `invalid-option`: an option or a command-line argument that does not exist or cannot be read
+ * - `worker-failed`: a thread of `fermistate/parallel` died or could not start, or code of the caller's failed in it
  * - `file-not-written`: the file system refused; no partial file is left
  */
 export type ErrorCode =
@@ -35,6 +36,7 @@ export type ErrorCode =
   | "no-convergence"
   | "too-large"
   | "invalid-option"
+  | "worker-failed"
   | "file-not-written";
 
 /** What was refused: the argument's name, its value, what is allowed, and where in a batch it stood. */
