@@ -24,7 +24,14 @@ const workerFile: URL = new URL(
 /** Starts `count` threads. */
 export async function startThreads(count: number, file: URL = workerFile): Promise<Threads> {
   const { Tinypool } = await import("tinypool");
-  const pool = new Tinypool({ filename: file.href, name: "answer", minThreads: count, maxThreads: count });
+  // Without atomics a thread that waits keeps its event loop: an error of the caller's code outside of a task is seen.
+  const pool = new Tinypool({
+    filename: file.href,
+    name: "answer",
+    minThreads: count,
+    maxThreads: count,
+    useAtomics: false,
+  });
   const waiting = new Set<(error: FermistateError) => void>();
   let ended: Promise<void> | undefined;
 
