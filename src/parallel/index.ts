@@ -9,4 +9,9 @@ export type {
   MatterSource,
   WhiteDwarfMatterSource,
 } from "./matter-source.js";
-export { type ParallelEvaluator, type ParallelOptions, parallelEvaluator } from "./parallel-evaluator.js";
+export {
+  type AsyncClosing,
+  type ParallelEvaluator,
+  type ParallelOptions,
+  parallelEvaluator,
+} from "./parallel-evaluator.js";

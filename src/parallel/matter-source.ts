@@ -13,7 +13,7 @@ export interface MatterModule {
    * A URL, such as `new URL("./matter.js", import.meta.url)`, or an absolute path. Not the module that asks: it would
    * run again in every thread.
    */
-  readonly module: URL | string;
+  readonly module: string | { readonly href: string };
   /**
    * Name of the export: an equation of state, or a function without arguments that returns one or promises one.
    * @defaultValue "default"
@@ -65,7 +65,7 @@ export function plainSource(source: MatterSource): PlainSource {
 }
 
 function addressOf(module: unknown): string {
-  const text = module instanceof URL ? module.href : module;
+  const text = typeof module === "object" && module !== null ? (module as { href: unknown }).href : module;
   if (typeof text === "string") {
     if (isAbsolute(text)) return pathToFileURL(text).href;
     if (URL.canParse(text)) return new URL(text).href;
@@ -97,6 +97,15 @@ export async function loadMatter(source: PlainSource): Promise<EquationOfState> 
   const given = made === undefined ? `${source.export}: no such export, or nothing returned` : made;
   const wanted = "an export that is an equation of state or a function that returns one";
   throw new FermistateError("invalid-option", { argument: "matter.export", given, allowed: wanted });
+}
+
+/** Throws `invalid-option`: a thread's module opens threads. */
+export function refuseNesting(): never {
+  throw new FermistateError("invalid-option", {
+    argument: "matter.module",
+    given: "a module that opens threads itself",
+    allowed: "a module of its own that only makes the equation of state",
+  });
 }
 
 /** An export of a module; a CommonJS module keeps its own in `default`. */

@@ -5,7 +5,7 @@ import type { Composition } from "../matter/composition.js";
 import { checkBatch } from "../thermodynamics/columns.js";
 import type { BatchInput, BatchOutput, EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { type Columns, type PlainError, packCompositions, type TaskName, unpackError } from "./block.js";
-import { asFailure, loadMatter, type MatterSource, plainSource } from "./matter-source.js";
+import { asFailure, loadMatter, type MatterSource, plainSource, refuseNesting } from "./matter-source.js";
 import { isThread } from "./thread-mark.js";
 import { startThreads, type Threads } from "./threads.js";
 
@@ -18,8 +18,18 @@ export interface ParallelOptions {
   readonly threads?: number;
 }
 
-/** An equation of state that spreads large batches over threads. */
-export interface ParallelEvaluator {
+/**
+ * The method that `await using` calls, where the caller's TypeScript knows `Symbol.asyncDispose`; nothing elsewhere, so
+ * that these types compile with any `lib`.
+ */
+export type AsyncClosing = {
+  readonly [Key in SymbolConstructor extends { readonly asyncDispose: infer Name extends symbol }
+    ? Name
+    : never]: () => Promise<void>;
+};
+
+/** An equation of state that spreads large batches over threads; closes itself at the end of an `await using`. */
+export interface ParallelEvaluator extends AsyncClosing {
   /** Number of threads. */
   readonly threads: number;
   /** The calling thread's own copy of the equation of state. */
@@ -30,7 +40,7 @@ export interface ParallelEvaluator {
    * Plain columns are copied to the threads and back: what the caller does to the input while the batch runs has no effect,
    * and a refused batch leaves the output as it was. Columns over a `SharedArrayBuffer` are used in place: leave them alone
    * until the promise is settled; a refused batch leaves some rows written. Fewer than 4096 rows, or rows that
-   * bring a new composition more often than every 16th, are done in the calling thread, which is faster there.
+   * bring a new composition more often than every 32nd, are done in the calling thread, which is faster there.
    *
    * @throws (rejects with) the errors of `EquationOfState.evaluate`, the first row that one thread would have refused;
    * `worker-failed` where a thread dies or a contribution throws an error that is not the library's. The threads are
@@ -39,14 +49,15 @@ export interface ParallelEvaluator {
   evaluate(input: BatchInput, output: BatchOutput): Promise<void>;
   /** Ends the threads; a batch under way is refused. A program may also end without it. */
   close(): Promise<void>;
-  /** As {@link ParallelEvaluator.close}: for `await using`, where the system knows `Symbol.asyncDispose`. */
-  [Symbol.asyncDispose](): Promise<void>;
 }
 
-/** Below this many rows the calling thread is as fast: a message there and back costs as much as some hundred rows. */
+/**
+ * Below this many rows (some 4 ms of the full plasma) the calling thread is nearly as fast: waking threads and messages
+ * to and fro cost 0.1 to 1 ms, by how busy the machine is.
+ */
 const smallestBatch = 4096;
-/** A composition costs a thread as much to make as some rows to evaluate. */
-const rowsPerComposition = 16;
+/** A composition costs a thread as much to make as 20 to 40 rows to evaluate. */
+const rowsPerComposition = 32;
 /** Rows of a block: long against a message, short enough that threads end together. */
 const blockRows: readonly [fewest: number, most: number] = [1024, 16384];
 
@@ -75,13 +86,7 @@ export async function parallelEvaluator(
   matter: MatterSource,
   options: ParallelOptions = {},
 ): Promise<ParallelEvaluator> {
-  if (isThread()) {
-    throw new FermistateError("invalid-option", {
-      argument: "matter.module",
-      given: "a module that opens threads itself",
-      allowed: "a module of its own that only makes the equation of state",
-    });
-  }
+  if (isThread()) refuseNesting();
   const source = plainSource(matter);
   const count = readThreads(options);
   let closed = false;

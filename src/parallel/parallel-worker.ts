@@ -1,8 +1,8 @@
 /** What runs in a thread: makes the equation of state once, then answers blocks. Never throws. */
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { type Answer, type Block, packError, run } from "./block.js";
-import { loadMatter, type PlainSource } from "./matter-source.js";
-import { markThread } from "./thread-mark.js";
+import { loadMatter, type PlainSource, refuseNesting } from "./matter-source.js";
+import { hasAskedForThreads, markThread } from "./thread-mark.js";
 
 markThread();
 
@@ -13,6 +13,7 @@ export async function answer({ source, block }: { source: PlainSource; block?: B
   try {
     matter ??= loadMatter(source);
     const made = await matter;
+    if (hasAskedForThreads()) refuseNesting(); // also where the module has caught the error that told it
     if (block !== undefined) run(made, block);
     return {};
   } catch (error) {
