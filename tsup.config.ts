@@ -51,22 +51,27 @@ function writeLicences(): void {
   writeFileSync(licencesFile, [head, ...texts].join(`\n${"-".repeat(80)}\n\n`));
 }
 
-/** What package.json exports. */
-const entryPoints = {
-  index: "src/index.ts",
-  grids: "src/grids/index.ts",
-  charts: "src/charts/index.ts",
-  contributions: "src/contributions/index.ts",
-  files: "src/files/index.ts",
-  certify: "src/certify/index.ts",
-  parallel: "src/parallel/index.ts",
-};
+/** Types are built for what package.json exports; the file of the threads needs none. */
+const { exports: exported } = JSON.parse(readFileSync("package.json", "utf8")) as { exports: Record<string, unknown> };
+const typed = Object.fromEntries(
+  Object.keys(exported)
+    .filter((name) => !name.endsWith(".json"))
+    .map((name) => (name === "." ? ["index", "src/index.ts"] : [name.slice(2), `src${name.slice(1)}/index.ts`])),
+);
 
 export default defineConfig([
   {
     ...shared,
-    // The threads of fermistate/parallel find theirs beside the file that starts them.
-    entry: { ...entryPoints, "parallel-worker": "src/parallel/parallel-worker.ts" },
+    entry: {
+      index: "src/index.ts",
+      grids: "src/grids/index.ts",
+      charts: "src/charts/index.ts",
+      contributions: "src/contributions/index.ts",
+      files: "src/files/index.ts",
+      certify: "src/certify/index.ts",
+      parallel: "src/parallel/index.ts",
+      "parallel-worker": "src/parallel/parallel-worker.ts", // stands beside parallel.js for its threads
+    },
     format: ["esm", "cjs"],
     platform: "neutral",
     external: [/^node:/],
@@ -74,7 +79,7 @@ export default defineConfig([
     // Hands the CommonJS conversion to rollup: tsup's own breaks on class fields written by `minifySyntax`.
     treeshake: true,
     dts: {
-      entry: entryPoints,
+      entry: typed,
       compilerOptions: {
         ignoreDeprecations: "6.0", // tsup sets `baseUrl`, which TypeScript 6 calls deprecated
         types: ["node"], // for src/files and src/parallel only

@@ -13,18 +13,24 @@ import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
 import type { Evaluator } from "./evaluator.js";
 import { PRESSURE, PRESSURE_R, PRESSURE_T } from "./free-energy.js";
 
-/** Two of these fix the state: the first six of the differentiable quantities, in the order of the tables below. */
-export const stateVariables = [
+/** A variable that may be held or varied: two of these fix the state. */
+export type StateVariable =
+  | "density"
+  | "temperature"
+  | "pressure"
+  | "specificEnergy"
+  | "specificEntropy"
+  | "specificEnthalpy";
+
+/** The first six of the differentiable quantities, in the order of the tables below. */
+export const stateVariables: readonly StateVariable[] = [
   "density",
   "temperature",
   "pressure",
   "specificEnergy",
   "specificEntropy",
   "specificEnthalpy",
-] as const;
-
-/** A variable that may be held or varied. */
-export type StateVariable = (typeof stateVariables)[number];
+];
 
 const COUNT = 6;
 

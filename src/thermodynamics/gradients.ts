@@ -16,6 +16,7 @@
  */
 import { speedOfLight } from "../constants.js";
 import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
+import { type StateVariable, stateVariables } from "./brackets.js";
 import type { Evaluator } from "./evaluator.js";
 import {
   ENERGY,
@@ -30,17 +31,30 @@ import {
   PRESSURE_TT,
 } from "./free-energy.js";
 
-/** A quantity whose derivatives follow from the free energy: density, temperature, and those of `State` up to c_v, c_p and the gammas. */
-export type DifferentiableQuantity = (typeof differentiable)[number];
+/** A quantity whose derivatives follow from the free energy. */
+export type DifferentiableQuantity =
+  | StateVariable
+  | "specificFreeEnergy"
+  | "heatCapacityV"
+  | "heatCapacityP"
+  | "chiRho"
+  | "chiT"
+  | "gamma1"
+  | "gamma2"
+  | "gamma3"
+  | "adiabaticGradient"
+  | "soundSpeed"
+  | "bulkModulus"
+  | "pressureByDensity"
+  | "pressureByTemperature"
+  | "energyByDensity"
+  | "energyByTemperature"
+  | "entropyByDensity"
+  | "entropyByTemperature";
 
 /** Names in the order of the record of gradients; the first seven need the members of order 2 only. */
-export const differentiable = [
-  "density",
-  "temperature",
-  "pressure",
-  "specificEnergy",
-  "specificEntropy",
-  "specificEnthalpy",
+export const differentiable: readonly DifferentiableQuantity[] = [
+  ...stateVariables,
   "specificFreeEnergy",
   "heatCapacityV",
   "heatCapacityP",
@@ -58,7 +72,7 @@ export const differentiable = [
   "energyByTemperature",
   "entropyByDensity",
   "entropyByTemperature",
-] as const;
+];
 
 /** Number of quantities whose gradient needs no third derivative of the free energy. */
 const FIRST_ORDER_COUNT = 7;

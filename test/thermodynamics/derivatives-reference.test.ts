@@ -13,7 +13,7 @@ import { stateVariables } from "../../src/thermodynamics/brackets.js";
 import { combine } from "../../src/thermodynamics/combine.js";
 import { derivatives } from "../../src/thermodynamics/derivatives.js";
 import type { EquationOfState, State } from "../../src/thermodynamics/equation-of-state.js";
-import { differentiable } from "../../src/thermodynamics/gradients.js";
+import { type DifferentiableQuantity, differentiable } from "../../src/thermodynamics/gradients.js";
 import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
 import { compositionOf, type Row, rowsOf } from "../fixtures/states.js";
 import { Measured } from "../measured.js";
@@ -73,7 +73,7 @@ function quantitiesOf(f: readonly Decimal[], rho: Decimal, kelvin: Decimal, x: D
   const cp = cv.times(gamma1).div(chiRho);
   const inertia = density.times(lightSpeedSquared).plus(density.times(energy)).plus(pressure);
   const sound = gamma1.times(pressure).div(inertia).sqrt().times(new Exact("29979245800"));
-  const all: Record<(typeof differentiable)[number], Decimal> = {
+  const all: Record<DifferentiableQuantity, Decimal> = {
     density,
     temperature,
     pressure,
