@@ -11,6 +11,7 @@ export type {
 } from "./matter-source.js";
 export {
   type AsyncClosing,
+  type BatchThreads,
   type ParallelEvaluator,
   type ParallelOptions,
   parallelEvaluator,

@@ -29,7 +29,10 @@ export type AsyncClosing = {
 };
 
 /** An equation of state that spreads large batches over threads; closes itself at the end of an `await using`. */
-export interface ParallelEvaluator extends AsyncClosing {
+export type ParallelEvaluator = BatchThreads & AsyncClosing;
+
+/** What a {@link ParallelEvaluator} offers beside that. */
+export interface BatchThreads {
   /** Number of threads. */
   readonly threads: number;
   /** The calling thread's own copy of the equation of state. */
