@@ -51,6 +51,14 @@ function writeLicences(): void {
   writeFileSync(licencesFile, [head, ...texts].join(`\n${"-".repeat(80)}\n\n`));
 }
 
+/** Types are built for what package.json exports; the file of the threads needs none. */
+const { exports: exported } = JSON.parse(readFileSync("package.json", "utf8")) as { exports: Record<string, unknown> };
+const typed = Object.fromEntries(
+  Object.keys(exported)
+    .filter((name) => !name.endsWith(".json"))
+    .map((name) => (name === "." ? ["index", "src/index.ts"] : [name.slice(2), `src${name.slice(1)}/index.ts`])),
+);
+
 export default defineConfig([
   {
     ...shared,
@@ -61,6 +69,8 @@ export default defineConfig([
       contributions: "src/contributions/index.ts",
       files: "src/files/index.ts",
       certify: "src/certify/index.ts",
+      parallel: "src/parallel/index.ts",
+      "parallel-worker": "src/parallel/parallel-worker.ts", // stands beside parallel.js for its threads
     },
     format: ["esm", "cjs"],
     platform: "neutral",
@@ -69,9 +79,10 @@ export default defineConfig([
     // Hands the CommonJS conversion to rollup: tsup's own breaks on class fields written by `minifySyntax`.
     treeshake: true,
     dts: {
+      entry: typed,
       compilerOptions: {
         ignoreDeprecations: "6.0", // tsup sets `baseUrl`, which TypeScript 6 calls deprecated
-        types: ["node"], // for src/files only
+        types: ["node"], // for src/files and src/parallel only
         // "npm run types" asks for these; a build need not stop at them.
         isolatedDeclarations: false,
         noUnusedLocals: false,

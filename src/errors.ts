@@ -18,9 +18,11 @@
  * - `no-solution`: no state of this matter has the quantities given to `solve`
  * - `below-cold`: an energy or pressure below that of cold matter of the given density, which `limit` tells
  * - `unstable`: the sum of contributions has no positive pressure, resists neither compression nor heating, or holds NaN
+ * - `dependent-variables`: two variables that do not fix the state at this point
  * - `no-convergence`: an iteration did not reach its promise (a defect of the library: please report)
  * - `too-large`: a request beyond the stated size limit
  * - `invalid-option`: an option or a command-line argument that does not exist or cannot be read
+ * - `worker-failed`: a thread of `fermistate/parallel` died or could not start, or code of the caller's failed in it
  * - `file-not-written`: the file system refused; no partial file is left
  */
 export type ErrorCode =
@@ -34,9 +36,11 @@ export type ErrorCode =
   | "no-solution"
   | "below-cold"
   | "unstable"
+  | "dependent-variables"
   | "no-convergence"
   | "too-large"
   | "invalid-option"
+  | "worker-failed"
   | "file-not-written";
 
 /** What was refused: the argument's name, its value, what is allowed, and where in a batch it stood. */

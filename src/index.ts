@@ -36,6 +36,7 @@ export {
   type StateWithFindings,
   withFindings,
 } from "./regime/with-findings.js";
+export type { StateVariable } from "./thermodynamics/brackets.js";
 export { type Breakdown, breakdown, type Share } from "./thermodynamics/breakdown.js";
 export { combine } from "./thermodynamics/combine.js";
 export {
@@ -47,6 +48,15 @@ export {
   type SpeciesDerivatives,
 } from "./thermodynamics/composition-derivatives.js";
 export type { CompositionDependence, Contribution, Domain, PhasePair } from "./thermodynamics/contribution.js";
+export {
+  type ByVariable,
+  type DerivativeColumns,
+  type Derivatives,
+  type DerivativesEvaluator,
+  type DerivativesRequest,
+  derivatives,
+  derivativesEvaluator,
+} from "./thermodynamics/derivatives.js";
 export type {
   BatchInput,
   BatchOutput,
@@ -57,6 +67,7 @@ export type {
 } from "./thermodynamics/equation-of-state.js";
 export type { Evaluator } from "./thermodynamics/evaluator.js";
 export type { Order } from "./thermodynamics/free-energy.js";
+export type { DifferentiableQuantity } from "./thermodynamics/gradients.js";
 export {
   type MeanDerivatives,
   meanDerivatives,

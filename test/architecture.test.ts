@@ -23,7 +23,7 @@ const floors: readonly (readonly string[])[] = [
   ["tables"],
   ["white-dwarf-matter", "contributions"],
   ["grids"],
-  ["charts", "files"],
+  ["charts", "files", "parallel"],
   ["certify"],
   ["structure"],
   ["index"],
@@ -35,7 +35,7 @@ const forbidden: Readonly<Record<string, readonly string[]>> = {
   // The reference shares no code with what it judges.
   certify: ["numerics", "fermi-gas"],
   // The core: sub-paths are entered by their own name.
-  index: ["grids", "charts", "files", "certify", "contributions"],
+  index: ["grids", "charts", "files", "certify", "contributions", "parallel"],
 };
 
 /** Packages a room may import; any other room imports none. `node:` stands for every module of Node. */
@@ -43,6 +43,7 @@ const packages: Readonly<Record<string, readonly string[]>> = {
   charts: ["d3-scale", "d3-shape"],
   files: ["node:"],
   certify: ["decimal.js"],
+  parallel: ["node:", "tinypool"],
   cli: ["node:", "zod/mini"],
 };
 

@@ -13,6 +13,20 @@ import { fileURLToPath, pathToFileURL } from "node:url";
 import ts from "typescript";
 import { afterAll, beforeAll, describe, expect, test, vi } from "vitest";
 import { isFermistateError } from "../src/errors.js";
+import type * as ThreadsRoom from "../src/parallel/threads.js";
+import { makeWorkshop } from "./parallel/threads-from-source.js";
+
+/** Threads of examples run a bundle of the sources. */
+const worker = vi.hoisted(() => ({ file: new URL("file:///nowhere") }));
+vi.mock("../src/parallel/threads.js", async (original) => {
+  const { startThreads } = await original<typeof ThreadsRoom>();
+  return { startThreads: (count: number) => startThreads(count, worker.file) };
+});
+beforeAll(async () => {
+  const workshop = await makeWorkshop();
+  worker.file = workshop.worker;
+  return workshop.remove;
+});
 
 const root = fileURLToPath(new URL("..", import.meta.url));
 const workshop = `${root}.cache/examples`;

@@ -17,6 +17,11 @@ export class Measured {
     this.add(name, difference === 0 ? 0 : difference / scale, `${where}: ${actual} for ${expected}`);
   }
 
+  /** Names under which something is recorded. */
+  names(): string[] {
+    return [...this.all.keys()];
+  }
+
   /** Number of errors recorded under a name. */
   count(name: string): number {
     return this.all.get(name)?.length ?? 0;

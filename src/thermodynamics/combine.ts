@@ -1,9 +1,10 @@
 /** Contributions -> an equation of state: adds their members, turns the sum into quantities. */
-import { FermistateError, withIndex } from "../errors.js";
+import { FermistateError } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
+import { checkBatch, isList } from "./columns.js";
 import type { Contribution } from "./contribution.js";
-import { commonDomain, firstOutside, holds, refusePoint } from "./domain.js";
+import { commonDomain, holds, refusePoint } from "./domain.js";
 import type { BatchInput, BatchOutput, EquationOfState, FreeEnergyDerivatives, State } from "./equation-of-state.js";
 import { type Evaluator, evaluatorOf } from "./evaluator.js";
 import { MEMBER_COUNT, naturalDerivatives, type Order, SECOND_ORDER_COUNT } from "./free-energy.js";
@@ -12,7 +13,6 @@ import {
   optionalQuantities,
   QUANTITY_COUNT,
   type QuantityName,
-  quantities,
   quantityNames,
 } from "./quantities.js";
 import { freeEnergyFrom, stateFrom } from "./state.js";
@@ -56,11 +56,9 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
   }
 
   function evaluate(input: BatchInput, output: BatchOutput): void {
-    const count = checkColumns(input, output);
+    const count = checkBatch({ contributions: parts, domain }, input, output);
     const { density, temperature, composition } = input;
     const each = isList(composition) ? composition : undefined;
-    const outside = firstOutside(domain, density, temperature);
-    if (outside >= 0) refusePoint(parts, density[outside], temperature[outside], outside);
     const slots: number[] = [];
     const columns: Float64Array[] = [];
     for (let slot = 0; slot < QUANTITY_COUNT; slot++) {
@@ -112,10 +110,6 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
   return Object.freeze({ name, contributions: parts, domain, state, evaluate, freeEnergy, evaluator });
 }
 
-function isList(value: Composition | readonly Composition[]): value is readonly Composition[] {
-  return Array.isArray(value);
-}
-
 function checkContributions(contributions: readonly Contribution[]): void {
   const allowed = "one or more contributions with different names, such as electronPositronGas()";
   const names = new Set<string>();
@@ -141,54 +135,6 @@ function checkContributions(contributions: readonly Contribution[]): void {
       allowed: `${name} without ${stranger}`,
     });
   }
-}
-
-function requireObject(argument: string, value: unknown): void {
-  if (typeof value === "object" && value !== null) return;
-  throw new FermistateError("invalid-option", { argument, given: value, allowed: "an object of columns" });
-}
-
-/** Checks every column of a batch and every composition; returns the number of rows. */
-function checkColumns(input: BatchInput, output: BatchOutput): number {
-  requireObject("input", input);
-  requireObject("output", output);
-  const { density, temperature, composition } = input;
-  for (const [argument, column] of Object.entries({ density, temperature })) requireColumn(argument, column);
-  const count = density.length;
-  const lengths: [string, number][] = [["temperature", temperature.length]];
-  if (isList(composition)) {
-    lengths.push(["composition", composition.length]);
-    for (let i = 0; i < composition.length; i++) requireComposition(composition[i]);
-  } else requireComposition(composition);
-  for (const [argument, given] of lengths) {
-    if (given !== count) {
-      throw new FermistateError("length-mismatch", { argument, given, allowed: `${count} rows, as density has` });
-    }
-  }
-  for (const [name, column] of Object.entries(output)) {
-    if (column === undefined) continue;
-    if (!Object.hasOwn(quantities, name)) {
-      const allowed = `one of ${quantityNames.join(", ")}`;
-      throw new FermistateError("unavailable-quantity", { argument: "output", given: name, allowed });
-    }
-    requireColumn(name, column);
-    if (column.length < count) {
-      throw new FermistateError("length-mismatch", {
-        argument: name,
-        given: column.length,
-        allowed: `>= ${count} rows`,
-      });
-    }
-  }
-  return count;
-}
-
-function requireColumn(argument: string, column: unknown): void {
-  if (column instanceof Float64Array) return;
-  throw new FermistateError(
-    "invalid-option",
-    withIndex({ argument, given: column, allowed: "a Float64Array" }, undefined),
-  );
 }
 
 /** NaN in the record: a quantity that no contribution provides, or a contribution that broke its contract. */

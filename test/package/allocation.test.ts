@@ -6,10 +6,15 @@ import { expect, test } from "vitest";
 const root = fileURLToPath(new URL("../..", import.meta.url));
 
 /** Bytes of heap per point of a batch after warming up; the young generation is large enough to collect nothing. */
-function bytesPerPoint(temperature: [number, number], density: [number, number], coulomb: boolean): number {
+function bytesPerPoint(
+  temperature: [number, number],
+  density: [number, number],
+  coulomb: boolean,
+  what: "states" | "derivatives" = "states",
+): number {
   const program = `
     import v8 from "node:v8";
-    import { composition, whiteDwarfMatter } from "./dist/index.js";
+    import { composition, derivativesEvaluator, whiteDwarfMatter } from "./dist/index.js";
     let seed = 7;
     const random = () => (seed = (seed * 48271) % 2147483647) / 2147483647;
     const count = 100_000;
@@ -22,11 +27,17 @@ function bytesPerPoint(temperature: [number, number], density: [number, number],
       composition: composition({ C12: 0.5, O16: 0.5 }),
     };
     const eos = whiteDwarfMatter({ coulomb: ${coulomb} });
-    for (let i = 0; i < 8; i++) eos.evaluate(input, output);
+    const jacobian = derivativesEvaluator(eos, {
+      of: ["pressure", "temperature", "gamma1", "heatCapacityV", "soundSpeed"],
+      by: ["density", "specificEnergy"],
+    });
+    const slopes = { pressure: { density: new Float64Array(count) }, gamma1: { specificEnergy: new Float64Array(count) } };
+    const evaluate = ${what === "states" ? "() => eos.evaluate(input, output)" : "() => jacobian.evaluate(input, slopes)"};
+    for (let i = 0; i < 8; i++) evaluate();
     const least = [];
     for (let i = 0; i < 5; i++) {
       const before = v8.getHeapStatistics().used_heap_size;
-      eos.evaluate(input, output);
+      evaluate();
       least.push((v8.getHeapStatistics().used_heap_size - before) / count);
     }
     console.log(Math.min(...least.filter((bytes) => bytes >= 0)));`;
@@ -129,4 +140,10 @@ test.each<[string, string]>([
   const bytes = Number(execFileSync(process.execPath, options, { cwd: root, encoding: "utf8" }));
   expect(bytes).toBeGreaterThanOrEqual(0);
   expect(bytes).toBeLessThan(1); // one boxed number per row would be 16
+});
+
+test("derivatives by two variables, ideal plasma: less than half a byte per point", () => {
+  const bytes = bytesPerPoint([6, 9], [2, 10], false, "derivatives");
+  expect(bytes).toBeGreaterThanOrEqual(0);
+  expect(bytes).toBeLessThan(0.5);
 });

@@ -3,8 +3,8 @@ import { execFileSync, spawnSync } from "node:child_process";
 import { mkdtempSync, readdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
-import { fileURLToPath } from "node:url";
-import { afterAll, beforeAll, expect, inject, test } from "vitest";
+import { fileURLToPath, pathToFileURL } from "node:url";
+import { afterAll, beforeAll, describe, expect, inject, test } from "vitest";
 
 const root = fileURLToPath(new URL("../..", import.meta.url));
 const about = JSON.parse(readFileSync(`${root}package.json`, "utf8")) as {
@@ -68,6 +68,93 @@ test("the command runs from node_modules/.bin", () => {
   });
   expect({ status, stderr }).toEqual({ status: 0, stderr: "" });
   expect(stdout).toContain(about.version);
+});
+
+/** What each parallel program does: batches on two threads, compared with one; `open` makes the evaluator. */
+const batches = (open: string): string => `
+  const rows = 9_000;
+  const density = Float64Array.from({ length: rows }, (_, i) => 1e6 + 1e3 * i);
+  const temperature = new Float64Array(rows).fill(2e7);
+  const input = { density, temperature, composition: composition({ C12: 0.5, O16: 0.5 }) };
+  const serial = new Float64Array(rows);
+  const parallel = new Float64Array(rows);
+  const evaluator = ${open};
+  evaluator.equationOfState.evaluate(input, { pressure: serial });
+  await evaluator.evaluate(input, { pressure: parallel });
+  console.log(evaluator.equationOfState.name, serial.every((value, i) => value === parallel[i]), parallel[0] > 0);
+  density[8_000] = -1;
+  await evaluator.evaluate(input, { pressure: parallel }).catch((error) => console.log(error.code, error.index));`;
+const printed = "ideal ions + radiation true true\nout-of-range 8000";
+
+describe("fermistate/parallel", () => {
+  beforeAll(() => {
+    const make = 'import { combine, idealIons, radiation } from "fermistate";';
+    writeFileSync(join(home, "matter.mjs"), `${make} export const gas = () => combine(idealIons(), radiation());`);
+    writeFileSync(
+      join(home, "matter.cjs"),
+      'const { combine, idealIons, radiation } = require("fermistate"); module.exports = combine(idealIons(), radiation());',
+    );
+  });
+
+  test("as a module; a program that does not close ends by itself", () => {
+    const code = `import { composition } from "fermistate"; import { parallelEvaluator } from "fermistate/parallel";
+      ${batches('await parallelEvaluator({ module: new URL("./matter.mjs", import.meta.url), export: "gas" }, { threads: 2 })')}`;
+    expect(run("parallel.mjs", code)).toBe(printed);
+  });
+
+  test("in CommonJS", () => {
+    const code = `const { composition } = require("fermistate"); const { parallelEvaluator } = require("fermistate/parallel");
+      (async () => { ${batches('await parallelEvaluator({ module: require.resolve("./matter.cjs") }, { threads: 2 })')}
+      await evaluator.close(); })();`;
+    expect(run("parallel.cjs", code)).toBe(printed);
+  });
+
+  test.each([
+    ["with a JavaScript module", 'new URL("./matter.mjs", import.meta.url), export: "gas"'],
+    // tsx does not reach into threads on Node 20: a module of two lines hands on to it.
+    ["with a TypeScript module behind tsx's own import", 'new URL("./typed.mjs", import.meta.url)'],
+  ])("a TypeScript program with await using, %s", (_, module) => {
+    const api = pathToFileURL(`${root}node_modules/tsx/dist/esm/api/index.mjs`).href;
+    writeFileSync(
+      join(home, "typed.mjs"),
+      `import { tsImport } from "${api}"; export default (await tsImport("./matter.ts", import.meta.url)).default;`,
+    );
+    writeFileSync(
+      join(home, "matter.ts"),
+      `import { combine, type EquationOfState, idealIons, radiation } from "fermistate";
+      const gas: EquationOfState = combine(idealIons(), radiation()); export default gas;`,
+    );
+    const code = `import { composition } from "fermistate"; import { parallelEvaluator } from "fermistate/parallel";
+      async function main(): Promise<void> {
+        await using opened = await parallelEvaluator({ module: ${module} }, { threads: 2 });
+        ${batches("opened").replaceAll("parallel[0] >", "parallel[0]! >").replace("(error)", "(error: { code: string; index: number })")}
+      }
+      void main();`;
+    writeFileSync(join(home, "parallel.mts"), code);
+    const tsx = pathToFileURL(`${root}node_modules/tsx/dist/loader.mjs`).href;
+    const options = { cwd: home, encoding: "utf8" } as const;
+    expect(execFileSync(process.execPath, ["--import", tsx, "parallel.mts"], options).trim()).toBe(printed);
+  });
+
+  test("by options of white-dwarf matter; the core loads no pool", () => {
+    const code = `import { composition } from "fermistate";
+      console.log(Object.keys(process.memoryUsage()).length > 0 && process.moduleLoadList.some((m) => m.includes("worker_threads")));
+      const { parallelEvaluator } = await import("fermistate/parallel");
+      ${batches("await parallelEvaluator({ whiteDwarfMatter: { coulomb: false } })")}
+      await evaluator.close();`;
+    expect(run("options.mjs", code)).toBe(
+      `false\n${printed.replace("ideal ions", "electrons and positrons + ideal ions")}`,
+    );
+  });
+
+  test("a program that names itself as the module is told so, not run for ever", () => {
+    const code = `import { combine, idealIons } from "fermistate"; import { parallelEvaluator } from "fermistate/parallel";
+      export default combine(idealIons());
+      await parallelEvaluator({ module: import.meta.url }, { threads: 2 }).catch((error) => console.log(error.code, error.given));`;
+    const lines = run("itself.mjs", code).split("\n"); // of the threads and of the program
+    expect(lines).toHaveLength(3);
+    expect([...new Set(lines)]).toEqual(["invalid-option a module that opens threads itself"]);
+  });
 });
 
 /** A program that uses every entry point's types: all exports are touched by name. */

@@ -1,0 +1,225 @@
+/** A batch on several cores: checks in the calling thread as the serial batch does, blocks of rows to the threads. */
+import { availableParallelism } from "node:os";
+import { FermistateError } from "../errors.js";
+import type { Composition } from "../matter/composition.js";
+import { checkBatch } from "../thermodynamics/columns.js";
+import type { BatchInput, BatchOutput, EquationOfState } from "../thermodynamics/equation-of-state.js";
+import { type Columns, type PlainError, packCompositions, type TaskName, unpackError } from "./block.js";
+import { asFailure, loadMatter, type MatterSource, plainSource, refuseNesting } from "./matter-source.js";
+import { isThread } from "./thread-mark.js";
+import { startThreads, type Threads } from "./threads.js";
+
+/** Options of {@link parallelEvaluator}. */
+export interface ParallelOptions {
+  /**
+   * Number of threads, 1 to 256.
+   * @defaultValue the number of cores that the system grants
+   */
+  readonly threads?: number;
+}
+
+/**
+ * The method that `await using` calls, where the caller's TypeScript knows `Symbol.asyncDispose`; nothing elsewhere, so
+ * that these types compile with any `lib`.
+ */
+export type AsyncClosing = {
+  readonly [Key in SymbolConstructor extends { readonly asyncDispose: infer Name extends symbol }
+    ? Name
+    : never]: () => Promise<void>;
+};
+
+/** An equation of state that spreads large batches over threads; closes itself at the end of an `await using`. */
+export type ParallelEvaluator = BatchThreads & AsyncClosing;
+
+/** What a {@link ParallelEvaluator} offers beside that. */
+export interface BatchThreads {
+  /** Number of threads. */
+  readonly threads: number;
+  /** The calling thread's own copy of the equation of state. */
+  readonly equationOfState: EquationOfState;
+  /**
+   * The batch of `EquationOfState.evaluate`, with the same numbers to the bit and the same errors.
+   *
+   * Plain columns are copied to the threads and back: what the caller does to the input while the batch runs has no effect,
+   * and a refused batch leaves the output as it was. Columns over a `SharedArrayBuffer` are used in place: leave them alone
+   * until the promise is settled; a refused batch leaves some rows written. Fewer than 4096 rows, or rows that
+   * bring a new composition more often than every 32nd, are done in the calling thread, which is faster there.
+   *
+   * @throws (rejects with) the errors of `EquationOfState.evaluate`, the first row that one thread would have refused;
+   * `worker-failed` where a thread dies or a contribution throws an error that is not the library's. The threads are
+   * started anew by the next call.
+   */
+  evaluate(input: BatchInput, output: BatchOutput): Promise<void>;
+  /** Ends the threads; a batch under way is refused. A program may also end without it. */
+  close(): Promise<void>;
+}
+
+/**
+ * Below this many rows (some 4 ms of the full plasma) the calling thread is nearly as fast: waking threads and messages
+ * to and fro cost 0.1 to 1 ms, by how busy the machine is.
+ */
+const smallestBatch = 4096;
+/** A composition costs a thread as much to make as 20 to 40 rows to evaluate. */
+const rowsPerComposition = 32;
+/** Rows of a block: long against a message, short enough that threads end together. */
+const blockRows: readonly [fewest: number, most: number] = [1024, 16384];
+
+/**
+ * Opens threads for large batches of one equation of state. Every thread makes its own copy of it, so the caller says how.
+ *
+ * Resolves when all threads have loaded. Threads do not keep a program from ending.
+ *
+ * @param matter - `{ module, export }`, or `{ whiteDwarfMatter: options }`
+ * @throws (rejects with) `invalid-option`; `worker-failed` with the reason where the module does not load in a thread
+ * @example
+ * ```ts
+ * import { composition } from "fermistate";
+ * import { parallelEvaluator } from "fermistate/parallel";
+ *
+ * const evaluator = await parallelEvaluator({ whiteDwarfMatter: {} }, { threads: 2 });
+ * const density = new Float64Array(10_000).fill(1e6);
+ * const temperature = Float64Array.from(density, (_, i) => 1e7 + 1e3 * i);
+ * const pressure = new Float64Array(10_000);
+ * await evaluator.evaluate({ density, temperature, composition: composition({ C12: 1 }) }, { pressure });
+ * await evaluator.close();
+ * pressure[9_999]; // => 2.5715212973866e22
+ * ```
+ */
+export async function parallelEvaluator(
+  matter: MatterSource,
+  options: ParallelOptions = {},
+): Promise<ParallelEvaluator> {
+  if (isThread()) refuseNesting();
+  const source = plainSource(matter);
+  const count = readThreads(options);
+  let closed = false;
+
+  /** Threads that have all loaded. */
+  async function open(): Promise<Threads> {
+    const threads = await startThreads(count);
+    const answers = await Promise.all(Array.from({ length: count }, () => threads.ask({ source })));
+    const failure = answers.find((answer) => answer.failure !== undefined)?.failure;
+    if (failure === undefined) return threads;
+    await threads.end("the equation of state could not be made");
+    throw unpackError(failure);
+  }
+
+  let threads = open();
+  // A module that would wait for itself in this thread is refused in the others first.
+  await threads;
+  const own = await loadMatter(source);
+
+  async function living(): Promise<Threads> {
+    const current = threads;
+    const isAlive = await current.then(
+      (one) => one.isAlive(),
+      () => false,
+    );
+    // Whoever comes first replaces them.
+    if (!isAlive && threads === current && !closed) threads = open();
+    return threads;
+  }
+
+  /** Spreads rows over the threads; rejects with the error of the first row that has one. */
+  async function spread(
+    task: TaskName,
+    rows: number,
+    input: Columns,
+    composition: Composition | readonly Composition[],
+    output: Columns,
+  ): Promise<void> {
+    const [fewest, most] = blockRows;
+    const size = Math.min(most, Math.max(fewest, Math.ceil(rows / (8 * count))));
+    const workers = await living();
+    let next = 0;
+    let first: PlainError | undefined;
+    // Blocks are handed out in order, so those before a failed one are done or under way: they are waited for.
+    async function lane(): Promise<void> {
+      while (next < rows && first === undefined) {
+        const from = next;
+        next = Math.min(rows, from + size);
+        const packed = packCompositions(composition, from, next);
+        const block = { task, source, from, to: next, input, output, ...packed };
+        const { failure } = await workers.ask({ source, block });
+        if (failure !== undefined && (first === undefined || before(failure, first))) first = failure;
+      }
+    }
+    await Promise.all(Array.from({ length: count }, lane));
+    if (first !== undefined) throw unpackError(first);
+  }
+
+  async function evaluate(input: BatchInput, output: BatchOutput): Promise<void> {
+    if (closed) throw closedError();
+    const rows = checkBatch(own, input, output);
+    const { density, temperature, composition } = input;
+    if (rows < smallestBatch || bringsManyCompositions(composition)) {
+      try {
+        own.evaluate(input, output);
+      } catch (error) {
+        throw asFailure(error, "worker", "contributions that throw no error of their own");
+      }
+      return;
+    }
+    const columns = Object.entries(output).filter((entry): entry is [string, Float64Array] => entry[1] !== undefined);
+    const shared = columns.map(([name, column]) => [name, isShared(column) ? column : sharedColumn(rows)] as const);
+    const inputs = { density: toShared(density), temperature: toShared(temperature) };
+    const compositions = Array.isArray(composition) ? [...composition] : composition;
+    await spread("evaluate", rows, inputs, compositions, Object.fromEntries(shared));
+    for (const [i, [, column]] of columns.entries()) {
+      const [, done] = shared[i]!;
+      if (done !== column) column.set(done);
+    }
+  }
+
+  async function close(): Promise<void> {
+    closed = true;
+    const current = await threads.catch(() => undefined);
+    await current?.end("the evaluator was closed");
+  }
+
+  const evaluator = { threads: count, equationOfState: own, evaluate, close };
+  const dispose: symbol | undefined = Symbol.asyncDispose;
+  return Object.freeze(dispose === undefined ? evaluator : { ...evaluator, [dispose]: close }) as ParallelEvaluator;
+}
+
+/** True where `a` comes before `b` in a batch; an error without row is the thread's and comes last. */
+function before(a: PlainError, b: PlainError): boolean {
+  return (a.index ?? Number.POSITIVE_INFINITY) < (b.index ?? Number.POSITIVE_INFINITY);
+}
+
+function bringsManyCompositions(composition: Composition | readonly Composition[]): boolean {
+  return Array.isArray(composition) && new Set(composition).size * rowsPerComposition > composition.length;
+}
+
+function isShared(column: Float64Array): boolean {
+  return column.buffer instanceof SharedArrayBuffer;
+}
+
+function sharedColumn(rows: number): Float64Array {
+  return new Float64Array(new SharedArrayBuffer(8 * rows));
+}
+
+function toShared(column: Float64Array): Float64Array {
+  if (isShared(column)) return column;
+  const copy = sharedColumn(column.length);
+  copy.set(column);
+  return copy;
+}
+
+function readThreads(options: ParallelOptions): number {
+  const given: Readonly<Record<string, unknown>> =
+    typeof options === "object" && options !== null ? { ...options } : { options };
+  const { threads = availableParallelism(), ...others } = given;
+  const [stranger] = Object.keys(others);
+  if (stranger !== undefined) {
+    throw new FermistateError("invalid-option", { argument: "options", given: stranger, allowed: "{ threads }" });
+  }
+  if (typeof threads === "number" && Number.isInteger(threads) && threads >= 1 && threads <= 256) return threads;
+  const allowed = "a whole number from 1 to 256";
+  throw new FermistateError("invalid-option", { argument: "options.threads", given: threads, allowed });
+}
+
+function closedError(): FermistateError {
+  const allowed = "an evaluator that is open";
+  return new FermistateError("worker-failed", { argument: "evaluator", given: "a closed evaluator", allowed });
+}

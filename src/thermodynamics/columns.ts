@@ -1,0 +1,80 @@
+/** Columns of a batch: what is checked before the first row is written. */
+import { FermistateError } from "../errors.js";
+import { type Composition, requireComposition } from "../matter/composition.js";
+import { firstOutside, refusePoint } from "./domain.js";
+import type { BatchInput, BatchOutput, EquationOfState } from "./equation-of-state.js";
+import { quantities, quantityNames } from "./quantities.js";
+
+/** True where there is one composition per row. */
+export function isList(value: Composition | readonly Composition[]): value is readonly Composition[] {
+  return Array.isArray(value);
+}
+
+/**
+ * Checks every column of a batch, every composition and every point; returns the number of rows.
+ *
+ * @throws `invalid-option`, `length-mismatch`, `invalid-composition`, `unavailable-quantity`, and as `state`, with the row
+ */
+export function checkBatch(
+  equationOfState: Pick<EquationOfState, "contributions" | "domain">,
+  input: BatchInput,
+  output: BatchOutput,
+): number {
+  requireObject("input", input);
+  requireObject("output", output);
+  const count = checkInput(input);
+  for (const [name, column] of Object.entries(output)) {
+    if (column === undefined) continue;
+    if (!Object.hasOwn(quantities, name)) {
+      const allowed = `one of ${quantityNames.join(", ")}`;
+      throw new FermistateError("unavailable-quantity", { argument: "output", given: name, allowed });
+    }
+    requireRows(name, column, count);
+  }
+  checkPoints(equationOfState, input);
+  return count;
+}
+
+/** Checks the columns of the input and every composition; returns the number of rows. */
+export function checkInput({ density, temperature, composition }: BatchInput): number {
+  for (const [argument, column] of Object.entries({ density, temperature })) requireColumn(argument, column);
+  const count = density.length;
+  const lengths: [string, number][] = [["temperature", temperature.length]];
+  if (isList(composition)) {
+    lengths.push(["composition", composition.length]);
+    for (let i = 0; i < composition.length; i++) requireComposition(composition[i]);
+  } else requireComposition(composition);
+  for (const [argument, given] of lengths) {
+    if (given !== count) {
+      throw new FermistateError("length-mismatch", { argument, given, allowed: `${count} rows, as density has` });
+    }
+  }
+  return count;
+}
+
+/** Throws for the first row outside the domain. */
+export function checkPoints(
+  { contributions, domain }: Pick<EquationOfState, "contributions" | "domain">,
+  { density, temperature }: BatchInput,
+): void {
+  const outside = firstOutside(domain, density, temperature);
+  if (outside >= 0) refusePoint(contributions, density[outside], temperature[outside], outside);
+}
+
+/** Throws `invalid-option` unless `value` is an object. */
+export function requireObject(argument: string, value: unknown): void {
+  if (typeof value === "object" && value !== null) return;
+  throw new FermistateError("invalid-option", { argument, given: value, allowed: "an object of columns" });
+}
+
+/** Throws unless `column` is a Float64Array with room for `count` rows. */
+export function requireRows(argument: string, column: unknown, count: number): void {
+  requireColumn(argument, column);
+  const given = (column as Float64Array).length;
+  if (given < count) throw new FermistateError("length-mismatch", { argument, given, allowed: `>= ${count} rows` });
+}
+
+function requireColumn(argument: string, column: unknown): void {
+  if (column instanceof Float64Array) return;
+  throw new FermistateError("invalid-option", { argument, given: column, allowed: "a Float64Array" });
+}
