@@ -21,8 +21,8 @@ static double relativity_series[14];
 static double oscillators[4];
 static double debye_hueckel_limit;
 #define OSCILLATOR_TERMS 13
-static double oscillator_value[OSCILLATOR_TERMS], oscillator_first[OSCILLATOR_TERMS];
-static double oscillator_second[OSCILLATOR_TERMS], oscillator_entropy[OSCILLATOR_TERMS];
+#define SHORT_SERIES 8
+static double oscillator_series[OSCILLATOR_TERMS];
 
 static void fill_coulomb(void) {
   static const double bernoulli[OSCILLATOR_TERMS] = {
@@ -54,11 +54,7 @@ static void fill_coulomb(void) {
   for (int i = 0; i < OSCILLATOR_TERMS; i++) {
     const int n = 2 * i + 2;
     factorial *= n * (n - 1);
-    const double value = bernoulli[i] / (n * factorial) * (g1 * pow(w1, n) + g2 * pow(w2, n));
-    oscillator_value[i] = value;
-    oscillator_first[i] = value * n;
-    oscillator_second[i] = value * (n * (n - 1));
-    oscillator_entropy[i] = value * (n - 1);
+    oscillator_series[i] = bernoulli[i] / (n * factorial) * (g1 * pow(w1, n) + g2 * pow(w2, n));
   }
 }
 
@@ -83,12 +79,14 @@ static void add_liquid_correlation(double *u, const struct plasma *point, const 
     s2 = e2 - 2 * a3 * gamma * root * horner(arctangent_deficit, 13, gamma);
     s3 = b1 * b2 * y3 * y3 * horner(logarithm_entropy, 13, y3);
   } else {
-    const double y1 = gamma / a2;
-    s1 = a1 * a2 * (log1p(sqrt(y1) + y1 / (1 + sqrt(1 + y1))) - root_z1);
+    const double y1 = gamma / a2, root_y1 = sqrt(y1), root_of_1 = sqrt(1 + y1);
+    const double arsinh = y1 < 1 ? log1p(root_y1 + y1 / (1 + root_of_1)) : log(root_y1 + root_of_1);
+    s1 = a1 * a2 * (arsinh - root_z1);
     s2 = e2 - 2 * a3 * (root - atan(root));
     s3 = b1 * b2 * (log1p(gamma / b2) - z3);
   }
-  const double s4 = e4 - 0.5 * b3 * log1p(square / b4);
+  const double ratio = square / b4;
+  const double s4 = e4 - 0.5 * b3 * (ratio < 0.5 ? log1p(ratio) : log(1 + ratio));
   const double energy = e1 + e2 + e3 + e4, entropy = s1 + s2 + s3 + s4;
   const double d1 = 0.5 * e1 * a2 * reciprocal, d3 = e3 * b2 * saturation;
   u[0] += x * (energy - entropy);
@@ -101,17 +99,17 @@ static void add_two_oscillators(double *u, const struct plasma *point, const dou
   const double theta = point->root * ion[ION_THETA], x = ion[ION_X];
   if (theta < 1) {
     const double y = theta * theta, c = x * y;
-    double value = 0, first = 0, second = 0, entropy = 0;
-    for (int n = OSCILLATOR_TERMS - 1; n >= 0; n--) {
-      value = value * y + oscillator_value[n];
-      first = first * y + oscillator_first[n];
-      second = second * y + oscillator_second[n];
-      entropy = entropy * y + oscillator_entropy[n];
+    double value = 0, slope = 0, bend = 0;
+    for (int n = (y < 0.1 ? SHORT_SERIES : OSCILLATOR_TERMS) - 1; n >= 0; n--) {
+      bend = bend * y + slope;
+      slope = slope * y + value;
+      value = value * y + oscillator_series[n];
     }
+    const double first = 2 * y * slope;
     u[0] += c * value;
-    u[1] += c * first;
-    u[2] += c * second;
-    u[5] += c * entropy;
+    u[1] += c * (2 * value + first);
+    u[2] += c * (2 * value + 5 * first + 8 * y * y * bend);
+    u[5] += c * (value + first);
     return;
   }
   for (int i = 0; i < 4; i += 2) {
@@ -205,7 +203,7 @@ static void add_mixture(double *u, const struct plasma *point, const struct mixt
   const double power = exp(alpha * (point->log_gamma_e + mixture->log_coupling));
   const double p = 1 / (1 + mixture->a * power), q = 1 / (1 + mixture->b * power);
   const double weak = mixture->amplitude * point->gamma_e * point->root_gamma_e;
-  const double f = weak * p * exp(-beta * log1p(mixture->b * power));
+  const double f = weak * p * exp(beta * log(q));
   const double slope_p = p * (1 - p), slope_q = q * (1 - q);
   const double l = alpha * (p + beta * q), l1 = -alpha * alpha * (slope_p + beta * slope_q);
   u[0] += f;
@@ -273,33 +271,20 @@ static void add_phonons(double *u, const struct plasma *point, const double *ion
   u[5] += weight * (d1 - logarithm);
 }
 
-static void lift(double *out, double a, const double *u) {
-  out[0] = u[0];
-  out[1] = a * u[1];
-  out[2] = u[1];
-  out[3] = a * a * u[2] + a * (a - 1) * u[1];
-  out[4] = a * (u[1] + u[2]);
-  out[5] = u[2];
-}
-
 static void add_anharmonic(double *f, const struct plasma *point, const double *ion) {
   const double theta = point->root * ion[ION_THETA], y = ANHARMONIC_SUPPRESSION * theta * theta;
   if (y > 800) return;
   const double e = exp(-y);
   const double r = point->temperature / (ion[ION_GAMMA] * point->cube_root);
   const double p1 = anharmonic[0] * r, p2 = anharmonic[1] / 2 * r * r, p3 = anharmonic[2] / 3 * r * r * r;
-  const double of_gamma[3] = {-(p1 + p2 + p3), p1 + 2 * p2 + 3 * p3, -(2 * p1 + 6 * p2 + 12 * p3)};
-  const double of_theta[3] = {e, -2 * y * e, 2 * y * (2 * y - 1) * e};
-  double a[NATURAL], b[NATURAL];
-  lift(a, 1.0 / 3, of_gamma);
-  lift(b, 0.5, of_theta);
-  const double weight = ion[ION_X];
-  f[0] += weight * (a[0] * b[0]);
-  f[1] += weight * (a[0] * b[1] + a[1] * b[0]);
-  f[2] += weight * (a[0] * b[2] + a[2] * b[0]);
-  f[3] += weight * (a[0] * b[3] + 2 * a[1] * b[1] + a[3] * b[0]);
-  f[4] += weight * (a[0] * b[4] + a[1] * b[2] + a[2] * b[1] + a[4] * b[0]);
-  f[5] += weight * (a[0] * b[5] + 2 * a[2] * b[2] + a[5] * b[0]);
+  const double weight = -ion[ION_X] * e;
+  const double s0 = p1 + p2 + p3, s1 = p1 + 2 * p2 + 3 * p3, s2 = p1 + 4 * p2 + 9 * p3, y2 = y * y;
+  f[0] += weight * s0;
+  f[1] -= weight * (s1 / 3 + y * s0);
+  f[2] -= weight * (s1 + 2 * y * s0);
+  f[3] += weight * (s2 / 9 + (2 * y + 1) * (s1 / 3) + y2 * s0);
+  f[4] += weight * (s2 / 3 + 5.0 / 3 * y * s1 + 2 * (y2 - y) * s0);
+  f[5] += weight * (s2 + (4 * y + 1) * s1 + (4 * y2 - 2 * y) * s0);
 }
 
 static void add_crystal_polarisation(double *out, const struct plasma *point, const double *ion, double ions) {
@@ -324,10 +309,10 @@ static void add_crystal_polarisation(double *out, const struct plasma *point, co
   const double n2 = y * y * p * (1 - p), d1 = y * b, d2 = -y * y * b * (1 + b);
   const double m1 = -(y * (q * p) + log1q) / num, m2 = n2 / num - m1 * (2 + m1);
   const double e1 = d1 / den, e2 = d2 / den - e1 * e1;
-  const double half = 0.5 * s, log_h = half * (log1p(log1q / y) - log1p(log2)), h = exp(log_h);
+  const double half = 0.5 * s, h0 = expm1(half * log1p((log1q / y - log2) / den)), h = 1 + h0;
   const double l1 = half * (m1 - e1), l2 = half * (m2 - e2);
   const double k1 = h * l1, k2 = h * (l2 + l1 * l1);
-  const double h0 = expm1(log_h), h1 = -2 * k1, h2 = 4 * k2 + 6 * k1;
+  const double h1 = -2 * k1, h2 = 4 * k2 + 6 * k1;
   out[0] += g * h0;
   out[1] += g1 * h0 - 0.5 * g * h1;
   out[2] += g * h1;
@@ -385,10 +370,16 @@ static void add_exchange(double *out, const struct plasma *point) {
     tauT = -slope;
     tauTT = 2 * slope * (1 - tau * v);
   }
-  const double w = t > 1.0 / 640000 ? 1 / sqrt(t) : 800;
-  const double square = exp(-2 * w), lost = w < 0.4 ? expm1(-2 * w) : square - 1;
-  const double over = 1 / (2 + lost), slope = 4 * square * over * over * w;
-  const double sigma = -lost * over, sigmaT = -0.5 * slope, sigmaTT = slope * (0.75 - 0.5 * sigma * w);
+  double sigma = 1, sigmaT = 0, sigmaTT = 0;
+  if (t > 1.0 / 729) {
+    const double w = 1 / sqrt(t);
+    const double square = exp(-2 * w);
+    const double lost = w < 0.4 ? expm1(-2 * w) : square - 1;
+    const double over = 1 / (2 + lost), slope = 4 * square * over * over * w;
+    sigma = -lost * over;
+    sigmaT = -0.5 * slope;
+    sigmaTT = slope * (0.75 - 0.5 * sigma * w);
+  }
 
   struct rational f = rational(0.75, 3.04363 * t2, -0.09227 * t2 * t, 1.7035 * t4, 8.31051 * t2, 5.1105 * t4);
   const double a = 0.610887 * f.q * tau, aT = 0.610887 * (f.qT * tau + f.q * tauT);

@@ -145,10 +145,11 @@ static void degenerate_start(struct gas *gas) {
   const double p2 = guess * (guess + 2);
   const double total = 1 + guess;
   const double p = sqrt(p2);
-  const double r = theta2 / p2;
+  const double inverse = 1 / p2;
+  const double r = theta2 * inverse;
   const double density =
-      p2 * p / 3 + theta2 / p * (z2 * (2 * p2 + 1) + 3 * r / p2 * (z4 + z6 * 5 * (6 * p2 + 7) * r / p2));
-  const double slope = p * total + z2 * r * total * (2 * p2 - 1) / p;
+      p2 * p / 3 + r * p * (z2 * (2 * p2 + 1) + 3 * r * inverse * (z4 + z6 * 5 * (6 * p2 + 7) * r * inverse));
+  const double slope = p * (total + z2 * r * inverse * total * (2 * p2 - 1));
   gas->kinetic_mu = guess - (density - gas->net_density) / slope;
 }
 
@@ -313,8 +314,9 @@ static void sommerfeld(struct gas *gas) {
   const double theta = gas->theta, kinetic = gas->kinetic_mu;
   const double p2 = kinetic * (kinetic + 2);
   const double states = p2 * sqrt(p2) / 3;
-  const double x = 2 * (1 + kinetic) * theta / p2;
-  const double s = theta * theta / p2;
+  const double part = theta / p2;
+  const double x = 2 * (1 + kinetic) * part;
+  const double s = theta * part;
   double a = 1.5 * x, b = 0.5 * x * a + 3 * s, c = -0.5 * x * b + 4 * s * a;
   double n00 = 1, n10 = a, n20 = b, n01 = 0, n11 = 0, n02 = 0, pressure = 0, q = 0, m12 = 0;
   for (int k = 1; k < SOMMERFELD_TERMS; k++) {
@@ -619,8 +621,9 @@ static void solve_density(struct gas *gas) {
     } else {
       trapezoid(gas);
     }
-    const double first = (gas->net_density - gas->n00) / gas->n10;
-    const double d = first / (1 + 0.5 * first * gas->n20 / gas->n10);
+    const double inverse = 1 / gas->n10;
+    const double first = (gas->net_density - gas->n00) * inverse;
+    const double d = first / (1 + 0.5 * first * gas->n20 * inverse);
     const double unit = degenerate ? gas->eta : gas->nu < 1 ? gas->nu : gas->eta > 1 ? gas->eta : 1;
     if (fabs(d) <= TAYLOR_RADIUS * unit) {
       const double lambda = gas->lambda, n = gas->n00, n10 = gas->n10, n01 = gas->n01;
