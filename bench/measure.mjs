@@ -5,23 +5,13 @@
  * its ratio to one Math.exp (the unit that makes machines comparable) and to the other module's, in the same process.
  */
 import { combine, composition, electronPositronGas, quantityNames, whiteDwarfMatter } from "../dist/index.js";
-import { count, pointsOf, regions } from "./regions.mjs";
+import { count, pointsOf, regions, usual } from "./regions.mjs";
 
 const [, , regionNumber, method, baseline] = process.argv;
 const region = regions[Number(regionNumber)];
 const points = pointsOf(region);
 const matter = composition({ C12: 0.5, O16: 0.5 });
 const columns = (names) => Object.fromEntries(names.map((name) => [name, new Float64Array(count)]));
-const usual = [
-  "pressure",
-  "specificEnergy",
-  "specificEntropy",
-  "heatCapacityV",
-  "chiRho",
-  "chiT",
-  "gamma1",
-  "soundSpeed",
-];
 
 /** A function that evaluates all points once, and a number that depends on all of them. */
 function methodFor(name) {

@@ -24,3 +24,15 @@ export function pointsOf(region) {
   }
   return { density, temperature };
 }
+
+/** The columns that a solver asks for. */
+export const usual = [
+  "pressure",
+  "specificEnergy",
+  "specificEntropy",
+  "heatCapacityV",
+  "chiRho",
+  "chiT",
+  "gamma1",
+  "soundSpeed",
+];

@@ -8,6 +8,7 @@
  * npm run bench -- --processes 9
  * npm run bench -- --baseline file:///path/to/module.mjs    another implementation in the same run: the module exports
  *     prepare({ density, temperature }, composition) and returns a function that evaluates all points once
+ * npm run bench -- --native                                 the comparison with C alone (native/)
  */
 import { execFileSync } from "node:child_process";
 import { readFileSync } from "node:fs";
@@ -15,10 +16,11 @@ import { cpus } from "node:os";
 import { fileURLToPath } from "node:url";
 import { parseArgs } from "node:util";
 import { combine, composition, electronPositronGas } from "../src/index.js";
+import { nativeRows } from "./native/native.js";
 import { regions } from "./regions.mjs";
 
 const { values } = parseArgs({
-  options: { processes: { type: "string", default: "5" }, baseline: { type: "string" } },
+  options: { processes: { type: "string", default: "5" }, baseline: { type: "string" }, native: { type: "boolean" } },
 });
 const processes = Number(values.processes);
 const here = fileURLToPath(new URL(".", import.meta.url));
@@ -63,6 +65,11 @@ function accuracyOf(region: { temperature: number[]; density: number[] }): strin
   return `P ${show(errors.pressure)}, s ${show(errors.entropy)}, ${errors.pressure.length} points`;
 }
 
+if (values.native) {
+  console.log(nativeRows(processes).join("\n"));
+  process.exit(0);
+}
+
 const load = Array.from({ length: processes }, () => {
   const program =
     'await import("./bench/regions.mjs"); const t=performance.now(); await import("./dist/index.js"); ' +
@@ -97,3 +104,4 @@ console.log(
 console.log(
   "positron density included; state: one object per call; order 3: all eleven derivatives of the electron gas.",
 );
+console.log(`\n${nativeRows(processes).join("\n")}`);

@@ -170,14 +170,13 @@ function fillThermal(order: Order, point: Float64Array, ion: Float64Array): void
   const e1 = d1 / den;
   const e2 = d2 / den - e1 * e1;
   const half = 0.5 * ion[ION_S]!;
-  const logH = half * (Math.log1p(log1q / y) - Math.log1p(log2));
-  const h = Math.exp(logH);
+  thermal[0] = Math.expm1(half * Math.log1p((log1q / y - log2) / den)); // log2 < 0: nothing cancels
+  const h = 1 + thermal[0]!;
   const l1 = half * (m1 - e1);
   const l2 = half * (m2 - e2);
   const k1 = h * l1;
   const k2 = h * (l2 + l1 * l1);
   // From y to T: exponent -2.
-  thermal[0] = Math.expm1(logH);
   thermal[1] = -2 * k1;
   thermal[2] = 4 * k2 + 6 * k1;
   if (order === 2) return;

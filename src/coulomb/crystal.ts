@@ -10,7 +10,15 @@
  * 1993, Phys. Rev. E 47, 4330 (classical, Gamma from 170 on), quantum suppression Potekhin & Chabrier 2010, Contrib. Plasma
  * Phys. 50, 82; coefficients from memory, see lattice.ts. Below Gamma = 100 the anharmonic sum is meaningless.
  */
-import { addGround, divideSingle, lift, multiply, NATURAL_LENGTH, SINGLE_LENGTH } from "../numerics/natural.js";
+import {
+  addGround,
+  addScaled,
+  divideSingle,
+  lift,
+  multiply,
+  NATURAL_LENGTH,
+  SINGLE_LENGTH,
+} from "../numerics/natural.js";
 import type { Order } from "../thermodynamics/free-energy.js";
 import { ANHARMONIC_SUPPRESSION, type LatticeConstants } from "./lattice.js";
 import {
@@ -184,6 +192,7 @@ export function addPhonons(
     keep *= rest;
     d1 += xn;
     d2 -= w;
+    if (order === 2) continue;
     d3 += w * x * (1 + 2 * n);
     d4 -= w * x * x * (1 + 6 * n * (1 + n));
   }
@@ -220,22 +229,33 @@ export function addAnharmonic(
   const p1 = lattice.anharmonic[0] * r;
   const p2 = (lattice.anharmonic[1] / 2) * r * r;
   const p3 = (lattice.anharmonic[2] / 3) * r * r * r;
+  if (order === 2) {
+    // Terms -p_k e^(-y) with p_k ~ (T rho^(-1/3))^k and y ~ rho/T^2: logarithmic slopes -(k/3 + y) in rho, -(k + 2y) in 1/T.
+    const weight = -ion[ION_X]! * e;
+    const s0 = p1 + p2 + p3;
+    const s1 = p1 + 2 * p2 + 3 * p3;
+    const s2 = p1 + 4 * p2 + 9 * p3;
+    const y2 = y * y;
+    f[0]! += weight * s0;
+    f[1]! -= weight * (s1 / 3 + y * s0);
+    f[2]! -= weight * (s1 + 2 * y * s0);
+    f[3]! += weight * (s2 / 9 + (2 * y + 1) * (s1 / 3) + y2 * s0);
+    f[4]! += weight * (s2 / 3 + (5 / 3) * y * s1 + 2 * (y2 - y) * s0);
+    f[5]! += weight * (s2 + (4 * y + 1) * s1 + (4 * y2 - 2 * y) * s0);
+    return;
+  }
   ofGamma[0] = -(p1 + p2 + p3);
   ofGamma[1] = p1 + 2 * p2 + 3 * p3;
   ofGamma[2] = -(2 * p1 + 6 * p2 + 12 * p3);
+  ofGamma[3] = 6 * p1 + 24 * p2 + 60 * p3;
+  ofGamma[4] = -(24 * p1 + 120 * p2 + 360 * p3);
   ofTheta[0] = e;
   ofTheta[1] = -2 * y * e;
   ofTheta[2] = 2 * y * (2 * y - 1) * e;
-  if (order === 3) {
-    ofGamma[3] = 6 * p1 + 24 * p2 + 60 * p3;
-    ofGamma[4] = -(24 * p1 + 120 * p2 + 360 * p3);
-    ofTheta[3] = 4 * y * y * (3 - 2 * y) * e;
-    ofTheta[4] = 4 * y * y * (3 - 12 * y + 4 * y * y) * e;
-  }
+  ofTheta[3] = 4 * y * y * (3 - 2 * y) * e;
+  ofTheta[4] = 4 * y * y * (3 - 12 * y + 4 * y * y) * e;
   lift(first, order, 1 / 3, ofGamma);
   lift(second, order, 0.5, ofTheta);
   multiply(first, order, first, second);
-  const weight = ion[ION_X]!;
-  const count = order === 2 ? 6 : NATURAL_LENGTH;
-  for (let i = 0; i < count; i++) f[i]! += weight * first[i]!;
+  addScaled(f, order, ion[ION_X]!, first);
 }

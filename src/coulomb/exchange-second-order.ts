@@ -39,15 +39,20 @@ export function addExchangeSecondOrder(
     tauT = -slope;
     tauTT = 2 * slope * (1 - tau * v);
   }
-  // sigma = tanh(w), w = t^(-1/2).
-  const w = t > 1 / 640_000 ? 1 / Math.sqrt(t) : 800;
-  const square = Math.exp(-2 * w);
-  const lost = w < 0.4 ? Math.expm1(-2 * w) : square - 1;
-  const over = 1 / (2 + lost);
-  const slope = 4 * square * over * over * w;
-  const sigma = -lost * over;
-  const sigmaT = -0.5 * slope;
-  const sigmaTT = slope * (0.75 - 0.5 * sigma * w);
+  // sigma = tanh(w), w = t^(-1/2); beyond w = 27 likewise.
+  let sigma = 1;
+  let sigmaT = 0;
+  let sigmaTT = 0;
+  if (t > 1 / 729) {
+    const w = 1 / Math.sqrt(t);
+    const square = Math.exp(-2 * w);
+    const lost = w < 0.4 ? Math.expm1(-2 * w) : square - 1;
+    const over = 1 / (2 + lost);
+    const slope = 4 * square * over * over * w;
+    sigma = -lost * over;
+    sigmaT = -0.5 * slope;
+    sigmaTT = slope * (0.75 - 0.5 * sigma * w);
+  }
 
   // a = 0.610887 q tau, q a quotient of polynomials; n, m its terms above and below.
   let n2 = 3.04363 * t2;

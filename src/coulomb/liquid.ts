@@ -66,12 +66,16 @@ export function addLiquidCorrelation(u: Float64Array, order: 2 | 3, point: Float
     s3 = b1 * b2 * y3 * y3 * horner(logarithmEntropy, y3);
   } else {
     const y1 = gamma / a2;
-    // asinh sqrt y by ln(1 + ...), whose argument is not rounded against 1.
-    s1 = a1 * a2 * (Math.log1p(Math.sqrt(y1) + y1 / (1 + Math.sqrt(1 + y1))) - rootZ1);
+    const rootY1 = Math.sqrt(y1);
+    const rootOf1 = Math.sqrt(1 + y1);
+    // asinh sqrt y; below 1 by ln(1 + ...), whose argument is not rounded against 1.
+    const asinh = y1 < 1 ? Math.log1p(rootY1 + y1 / (1 + rootOf1)) : Math.log(rootY1 + rootOf1);
+    s1 = a1 * a2 * (asinh - rootZ1);
     s2 = e2 - 2 * a3 * (root - Math.atan(root));
     s3 = b1 * b2 * (Math.log1p(gamma / b2) - z3);
   }
-  const s4 = e4 - 0.5 * b3 * Math.log1p(square / b4);
+  const ratio = square / b4;
+  const s4 = e4 - 0.5 * b3 * (ratio < 0.5 ? Math.log1p(ratio) : Math.log(1 + ratio));
   const energy = e1 + e2 + e3 + e4;
   const entropy = s1 + s2 + s3 + s4;
 

@@ -76,7 +76,7 @@ export function addMixture(u: Float64Array, order: 2 | 3, point: Float64Array, m
   const p = 1 / (1 + mixture.a * power);
   const q = 1 / (1 + mixture.b * power);
   const weak = mixture.amplitude * point[POINT_GAMMA_E]! * point[POINT_ROOT_GAMMA_E]!;
-  const f = weak * p * Math.exp(-beta * Math.log1p(mixture.b * power));
+  const f = weak * p * Math.exp(beta * Math.log(q)); // the absolute error of the logarithm counts
   const slopeP = p * (1 - p);
   const slopeQ = q * (1 - q);
   // D ln f and its derivatives, then D^k f/f by the rule for exponentials.

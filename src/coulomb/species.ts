@@ -82,7 +82,7 @@ function compute(composition: Composition, lattice: LatticeConstants): CoulombSp
   const logarithm = (ion: Float64Array): number =>
     Math.log(((ion[slot.ION_X]! / share) * ion[slot.ION_Z]!) / meanCharge);
   return Object.freeze({
-    ions: Object.freeze(ions),
+    ions, // not frozen: V8 does not inline the access to an element of a frozen array
     ionsBoltzmann,
     electronsBoltzmann: electronsPerGram * boltzmannConstant,
     gammaE,

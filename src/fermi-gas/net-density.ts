@@ -109,9 +109,9 @@ function sweep(gas: Float64Array, degenerate: boolean, antiparticles: boolean, o
 
 /** Distance in alpha to the density asked for, to second order, and the unit in which it is small. */
 function measureOffset(gas: Float64Array, degenerate: boolean, antiparticles: boolean): void {
-  const slope = gas[N10]!;
-  const first = (gas[NET_DENSITY]! - gas[N00]!) / slope;
-  offset[STEP_LENGTH] = first / (1 + (0.5 * first * gas[N20]!) / slope);
+  const inverse = 1 / gas[N10]!;
+  const first = (gas[NET_DENSITY]! - gas[N00]!) * inverse;
+  offset[STEP_LENGTH] = first / (1 + 0.5 * first * gas[N20]! * inverse);
   const eta = gas[ETA]!;
   const nu = gas[NU]!;
   offset[STEP_UNIT] = degenerate ? eta : antiparticles && nu < 1 ? nu : eta > 1 ? eta : 1;

@@ -56,8 +56,9 @@ export function sommerfeld(gas: Float64Array, order: Order): void {
   const kinetic = gas[KINETIC_MU]!;
   const p2 = kinetic * (kinetic + 2);
   const states = (p2 * Math.sqrt(p2)) / 3;
-  const x = (2 * (1 + kinetic) * theta) / p2;
-  const s = (theta * theta) / p2;
+  const part = theta / p2;
+  const x = 2 * (1 + kinetic) * part;
+  const s = theta * part;
 
   let a = 1.5 * x; // a_(2k-1)
   let b = 0.5 * x * a + 3 * s; // a_(2k)

@@ -99,10 +99,11 @@ function degenerateStart(gas: Float64Array): void {
   const p2 = guess * (guess + 2);
   const total = 1 + guess;
   const p = Math.sqrt(p2);
-  const r = theta2 / p2;
+  const inverse = 1 / p2;
+  const r = theta2 * inverse;
   const density =
-    (p2 * p) / 3 + (theta2 / p) * (z2 * (2 * p2 + 1) + ((3 * r) / p2) * (z4 + (z6 * 5 * (6 * p2 + 7) * r) / p2));
-  const slope = p * total + (z2 * r * total * (2 * p2 - 1)) / p;
+    (p2 * p) / 3 + r * p * (z2 * (2 * p2 + 1) + 3 * r * inverse * (z4 + z6 * 5 * (6 * p2 + 7) * r * inverse));
+  const slope = p * (total + z2 * r * inverse * total * (2 * p2 - 1));
   gas[KINETIC_MU] = guess - (density - gas[NET_DENSITY]!) / slope;
 }
 

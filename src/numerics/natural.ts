@@ -17,6 +17,27 @@ export const SINGLE_LENGTH = 6;
 /** Order of derivatives, as in thermodynamics/free-energy.ts. */
 type Order = 2 | 3;
 
+/** out = 0, the first six (order 2) or all; written out because `fill` is a call. */
+export function clear(out: Float64Array, order: Order): void {
+  out[0] = 0;
+  out[1] = 0;
+  out[2] = 0;
+  out[3] = 0;
+  out[4] = 0;
+  out[5] = 0;
+  if (order === 3) for (let i = 6; i < NATURAL_LENGTH; i++) out[i] = 0;
+}
+
+/** One variable: out = 0. */
+export function clearSingle(out: Float64Array): void {
+  out[0] = 0;
+  out[1] = 0;
+  out[2] = 0;
+  out[3] = 0;
+  out[4] = 0;
+  out[5] = 0;
+}
+
 /** out = value rho^p y^q. */
 export function setPower(out: Float64Array, order: Order, value: number, p: number, q: number): void {
   const p2 = p * (p - 1);

@@ -55,6 +55,7 @@ export function evaluatorOf(parts: readonly Contribution[]): Evaluator {
   const cold = new Float64Array(3);
   const step = new Float64Array(2);
   const quantities = new Float64Array(QUANTITY_COUNT);
+  const terms = [...parts]; // not frozen: V8 does not inline the access to an element of a frozen array
   const detailed = parts.filter((part) => part.addDetail !== undefined);
 
   const silent = parts.find((part) => part.addSpecies === undefined && !followsFromMembers(part));
@@ -65,7 +66,7 @@ export function evaluatorOf(parts: readonly Contribution[]): Evaluator {
     fillPlasma(point, composition);
     const count = order === 2 ? SECOND_ORDER_COUNT : MEMBER_COUNT;
     for (let i = 0; i < count; i++) members[i] = 0;
-    for (let i = 0; i < parts.length; i++) parts[i]!.add(point, composition, order, members);
+    for (let i = 0; i < terms.length; i++) terms[i]!.add(point, composition, order, members);
   }
 
   function fillDetail(composition: Composition): void {
