@@ -119,20 +119,30 @@ export function addByAlgebra(
   const x2 = x * x;
   const w = ion[ION_B2]! / x2;
   // Functions of density alone; x ~ rho^(1/3).
-  setSinglePower(energy, w, -2 / 3);
+  energy[0] = w;
+  energy[1] = -2 / 3;
+  setSinglePower(energy);
   energy[0]! += 1;
   raiseSingle(energy, order, energy, 0.5, ion[ION_F_INF]! * Math.sqrt(1 + w)); // the factor f_INF scales all members
   const lattice = species.ionsBoltzmann * ion[ION_X]! * ion[ION_GAMMA]! * point[POINT_CUBE_ROOT]!;
-  setSinglePower(power, -lattice, 1 / 3);
+  power[0] = -lattice;
+  power[1] = 1 / 3;
+  setSinglePower(power);
   multiplySingle(energy, order, energy, power);
 
-  setSinglePower(ratio, ion[ION_A3]! * x2, 2 / 3);
+  ratio[0] = ion[ION_A3]! * x2;
+  ratio[1] = 2 / 3;
+  setSinglePower(ratio);
   ratio[0]! += ion[ION_B3]!;
-  setSinglePower(under, ion[ION_B4]! * x2, 2 / 3);
+  under[0] = ion[ION_B4]! * x2;
+  under[1] = 2 / 3;
+  setSinglePower(under);
   under[0]! += 1;
   divideSingle(ratio, order, ratio, under);
   const s = ion[ION_S]!;
-  setSinglePower(power, Math.exp(s * (ion[ION_LOG_Q]! + point[POINT_LOG_DENSITY]! / 6)), s / 6);
+  power[0] = Math.exp(s * (ion[ION_LOG_Q]! + point[POINT_LOG_DENSITY]! / 6));
+  power[1] = s / 6;
+  setSinglePower(power);
   multiplySingle(ratio, order, ratio, power);
   multiplySingle(ratio, order, energy, ratio);
   out[0]! += energy[0]! + ratio[0]!;

@@ -10,15 +10,7 @@
  * 1993, Phys. Rev. E 47, 4330 (classical, Gamma from 170 on), quantum suppression Potekhin & Chabrier 2010, Contrib. Plasma
  * Phys. 50, 82; coefficients from memory, see lattice.ts. Below Gamma = 100 the anharmonic sum is meaningless.
  */
-import {
-  addGround,
-  addScaled,
-  divideSingle,
-  lift,
-  multiply,
-  NATURAL_LENGTH,
-  SINGLE_LENGTH,
-} from "../numerics/natural.js";
+import { addGround, divideSingle, lift, multiply, NATURAL_LENGTH, SINGLE_LENGTH } from "../numerics/natural.js";
 import type { Order } from "../thermodynamics/free-energy.js";
 import { ANHARMONIC_SUPPRESSION, type LatticeConstants } from "./lattice.js";
 import {
@@ -257,5 +249,6 @@ export function addAnharmonic(
   lift(first, order, 1 / 3, ofGamma);
   lift(second, order, 0.5, ofTheta);
   multiply(first, order, first, second);
-  addScaled(f, order, ion[ION_X]!, first);
+  const share = ion[ION_X]!;
+  for (let i = 0; i < NATURAL_LENGTH; i++) f[i]! += share * first[i]!;
 }

@@ -87,12 +87,16 @@ export function addByAlgebra(out: Float64Array, order: 2 | 3, point: Float64Arra
   setTemperatureFunctions(order, point);
   // Functions of t ~ T rho^(-2/3) times powers of density, r_s ~ rho^(-1/3).
   lift(exchange, order, -2 / 3, a);
-  setSinglePower(density, rootRs, -1 / 6);
+  density[0] = rootRs;
+  density[1] = -1 / 6;
+  setSinglePower(density);
   lift(term, order, -2 / 3, b);
   multiplyDensity(numerator, order, density, term);
   lift(term, order, -2 / 3, d);
   multiplyDensity(denominator, order, density, term);
-  setSinglePower(density, rs, -1 / 3);
+  density[0] = rs;
+  density[1] = -1 / 3;
+  setSinglePower(density);
   lift(term, order, -2 / 3, c);
   multiplyDensity(term, order, density, term);
   addScaled(numerator, order, 1, term);
@@ -104,7 +108,9 @@ export function addByAlgebra(out: Float64Array, order: 2 | 3, point: Float64Arra
   divide(term, order, numerator, denominator);
   multiplyDensity(exchange, order, relativity, exchange);
   addScaled(term, order, 1, exchange);
-  setSinglePower(density, -point[POINT_ELECTRON_ENERGY]!, 1 / 3);
+  density[0] = -point[POINT_ELECTRON_ENERGY]!;
+  density[1] = 1 / 3;
+  setSinglePower(density);
   multiplyDensity(term, order, density, term);
   addScaled(out, order, 1, term);
 }

@@ -88,7 +88,9 @@ export function addByAlgebra(f: Float64Array, order: 2 | 3, point: Float64Array,
   setNumerator(order, point, ion);
   setDenominator(order, point, ion);
   divide(numerator, order, numerator, denominator);
-  addScaled(f, order, -ion[slot.ION_X]!, numerator);
+  const share = -ion[slot.ION_X]!;
+  const count = order === 2 ? 6 : NATURAL_LENGTH;
+  for (let i = 0; i < count; i++) f[i]! += share * numerator[i]!;
 }
 
 /** c_DH Gamma_e^(3/2) + c_TF a h1 Gamma_e^(nu+1) [1 + w Gamma_e^(1/2)/(21 + Gamma_e (Z/r_s)^3)]. */
@@ -101,17 +103,27 @@ function setNumerator(order: 2 | 3, point: Float64Array, ion: Float64Array): voi
   const power = gamma * Math.exp(ion[slot.ION_NU]! * point[slot.POINT_LOG_GAMMA_E]!);
   // 1/(21 + v), v = Gamma_e (Z/r_s)^3 ~ rho^(4/3)/T.
   const v = (gamma * ion[slot.ION_Z3]!) / (rs * rs * rs);
-  setReciprocal(1 / (21 + v), v);
+  single[0] = 1 / (21 + v);
+  single[1] = -v;
+  setReciprocal();
   lift(factor, order, 4 / 3, single);
-  setPower(term, order, ion[slot.ION_W]! * power * root, (p + 0.5) / 3, p + 0.5);
+  term[0] = ion[slot.ION_W]! * power * root;
+  term[1] = (p + 0.5) / 3;
+  term[2] = p + 0.5;
+  setPower(term, order);
   multiply(numerator, order, factor, term);
-  setPower(term, order, power, p / 3, p);
+  term[0] = power;
+  term[1] = p / 3;
+  term[2] = p;
+  setPower(term, order);
   addScaled(numerator, order, 1, term);
   // c_TF a h1.
   const x2 = x * x;
   const linear = ion[slot.ION_H1]! * x;
   const square = ion[slot.ION_H2]! * x2;
-  setSinglePower(density, 0.2 * x2, 2 / 3);
+  density[0] = 0.2 * x2;
+  density[1] = 2 / 3;
+  setSinglePower(density);
   density[0] = 1 + density[0]!;
   single[0] = 1 + linear + square;
   single[1] = linear / 3 + (2 / 3) * square;
@@ -123,7 +135,10 @@ function setNumerator(order: 2 | 3, point: Float64Array, ion: Float64Array): voi
   const amplitude = ion[slot.ION_C_TF]!;
   for (let i = 0; i < 4; i++) density[i]! *= amplitude;
   multiplyDensity(numerator, order, density, numerator);
-  setPower(term, order, ion[slot.ION_C_DH]! * gamma * root, 0.5, 1.5);
+  term[0] = ion[slot.ION_C_DH]! * gamma * root;
+  term[1] = 0.5;
+  term[2] = 1.5;
+  setPower(term, order);
   addScaled(numerator, order, 1, term);
 }
 
@@ -133,25 +148,33 @@ function setDenominator(order: 2 | 3, point: Float64Array, ion: Float64Array): v
   const nu = ion[slot.ION_NU]!;
   const zeta = ion[slot.ION_ZETA]!;
   // g2 = 1 + zeta dilution [1 + 1/(0.001 Z^2 + v)], v = 2 Gamma_e.
-  setReciprocal(1 / (ion[slot.ION_E0]! + 2 * gamma), 2 * gamma);
+  single[0] = 1 / (ion[slot.ION_E0]! + 2 * gamma);
+  single[1] = -2 * gamma;
+  setReciprocal();
   single[0] = 1 + single[0]!;
   lift(factor, order, 1 / 3, single);
   for (let i = 0; i < 4; i++) density[i] = zeta * dilution[i]!;
   multiplyDensity(factor, order, density, factor);
   factor[0] = 1 + factor[0]!;
-  setPower(term, order, ion[slot.ION_A]! * Math.exp(nu * point[slot.POINT_LOG_GAMMA_E]!), nu / 3, nu);
+  term[0] = ion[slot.ION_A]! * Math.exp(nu * point[slot.POINT_LOG_GAMMA_E]!);
+  term[1] = nu / 3;
+  term[2] = nu;
+  setPower(term, order);
   multiply(factor, order, factor, term);
   multiplyDensity(denominator, order, lorentzByRs, factor);
-  setPower(term, order, ion[slot.ION_B]! * point[slot.POINT_ROOT_GAMMA_E]!, 1 / 6, 0.5);
+  term[0] = ion[slot.ION_B]! * point[slot.POINT_ROOT_GAMMA_E]!;
+  term[1] = 1 / 6;
+  term[2] = 0.5;
+  setPower(term, order);
   multiplyDensity(term, order, lorentz, term);
   addScaled(denominator, order, 1, term);
   denominator[0] = 1 + denominator[0]!;
 }
 
-/** single = q = 1/(c + v) as a function of v: v^k q^(k) = k! (-v q)^k q. */
-function setReciprocal(q: number, v: number): void {
-  const z = -v * q;
-  single[0] = q;
+/** single = q = 1/(c + v) as a function of v, from q and -v in its first slots: v^k q^(k) = k! (-v q)^k q. */
+function setReciprocal(): void {
+  const q = single[0]!;
+  const z = single[1]! * q;
   single[1] = q * z;
   single[2] = 2 * q * z * z;
   single[3] = 6 * q * z * z * z;

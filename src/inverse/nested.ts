@@ -54,7 +54,7 @@ export function nestedSearch(
     w[DENSITY_NOW] = density;
     const inner = searchOne(ev, composition, false, second, w, f);
     w[FIRST_TARGET] = target;
-    let step = 0.5 - 0.5;
+    let step = density;
     let heavier = false; // whether the answer lies at higher density
     if (inner === FOUND) {
       fillFunction(f, FUNCTION_LENGTH, second, ev.point, ev.members);

@@ -54,6 +54,9 @@ const STEPS_IN_TWO = 30;
 /** Longest step in a logarithm. */
 const LONGEST = 8;
 
+/** The step in hand: a variable that several branches set is boxed. */
+const stride = new Float64Array(1);
+
 /** Function records of the quantities of a search. */
 export const functionsOf = (): Float64Array => new Float64Array(2 * FUNCTION_LENGTH);
 
@@ -82,7 +85,7 @@ export function searchOne(
   let lowSeen = false;
   let highSeen = false;
   let suspicions = 0;
-  let slack = 1;
+  let limit = ROUNDING; // not 1 times it: a variable that starts as an integer is boxed later
   w[slot] = Math.min(Math.max(w[slot]!, bottom), top);
   w[STEP_U] = 0;
   w[STEP_V] = 0;
@@ -96,9 +99,9 @@ export function searchOne(
     const rest = (target - f[0]!) * sign;
     const slope = f[by]! * sign;
     if (!Number.isFinite(rest)) return LOST;
-    if (Math.abs(rest) <= slack * ROUNDING * f[SIZE]!) return FOUND;
+    if (Math.abs(rest) <= limit * f[SIZE]!) return FOUND;
     const scatter = Math.abs(rest) <= 8 * ROUNDING * f[SIZE]!; // the values themselves are no smoother
-    if (scatter) slack *= 2;
+    if (scatter) limit *= 2;
     if (rest > 0) {
       low = now;
       lowSeen = true;
@@ -108,28 +111,27 @@ export function searchOne(
       highSeen = true;
       if (now <= bottom) return BEYOND_LOWER;
     }
-    let step = 0.5 - 0.5; // a double from the start
     let floor = false;
     if (slope > 0) {
       const power = (f[twice]! * sign) / slope;
       const plain = rest / slope;
       const stretch = power * plain;
-      if (Math.abs(stretch) < 1e-5) step = plain * (1 - 0.5 * stretch);
-      else if (stretch > -0.95) step = Math.log1p(stretch) / power;
+      if (Math.abs(stretch) < 1e-5) stride[0] = plain * (1 - 0.5 * stretch);
+      else if (stretch > -0.95) stride[0] = Math.log1p(stretch) / power;
       else {
-        step = -3 / power;
+        stride[0] = -3 / power;
         floor = true;
       }
-      const goal = now + now * step;
-      if (Math.abs(step) <= (scatter ? LAST_NOISE : LAST_STEP) && goal >= low && goal <= high) {
-        w[inDensity ? STEP_U : STEP_V] = step;
+      const goal = now + now * stride[0]!;
+      if (Math.abs(stride[0]!) <= (scatter ? LAST_NOISE : LAST_STEP) && goal >= low && goal <= high) {
+        w[inDensity ? STEP_U : STEP_V] = stride[0]!;
         return FOUND;
       }
-    } else step = rest > 0 ? LONGEST : -LONGEST;
+    } else stride[0] = rest > 0 ? LONGEST : -LONGEST;
     suspicions = floor ? suspicions + 1 : 0;
-    if (step > LONGEST && !highSeen) step = LONGEST;
-    else if (step < -LONGEST && !lowSeen) step = -LONGEST;
-    let next: number = now * Math.exp(step);
+    if (stride[0]! > LONGEST && !highSeen) stride[0] = LONGEST;
+    else if (stride[0]! < -LONGEST && !lowSeen) stride[0] = -LONGEST;
+    let next: number = now * Math.exp(stride[0]!);
     if (suspicions >= 3 && rest < 0 && !lowSeen) next = bottom;
     if (suspicions >= 3 && rest > 0 && !highSeen) next = top;
     if (next <= low) next = lowSeen ? Math.sqrt(low * now) : bottom;
@@ -157,7 +159,7 @@ export function searchTwo(
   f: Float64Array,
 ): number {
   const { point, members } = ev;
-  let slack = 1;
+  let limit = ROUNDING;
   let before = Number.POSITIVE_INFINITY;
   let halvings = 0;
   w[STEP_U] = 0;
@@ -174,13 +176,13 @@ export function searchTwo(
     const shareA = Math.abs(restA) / f[SIZE]!;
     const shareB = Math.abs(restB) / f[FUNCTION_LENGTH + SIZE]!;
     const merit = shareA + shareB;
-    if (shareA <= slack * ROUNDING && shareB <= slack * ROUNDING) {
+    if (shareA <= limit && shareB <= limit) {
       w[STEP_U] = 0;
       w[STEP_V] = 0;
       return FOUND;
     }
     const scatter = merit <= 8 * ROUNDING;
-    if (scatter) slack *= 2;
+    if (scatter) limit *= 2;
     const aU = f[BY_U]!;
     const aV = f[BY_V]!;
     const bU = f[FUNCTION_LENGTH + BY_U]!;

@@ -73,6 +73,7 @@ export function searcherOf(eos: EquationOfState): Searcher {
   const place = new Int32Array(1);
   const share = new Float64Array(3);
   const boundary = new Float64Array(5);
+  const at = new Float64Array(1); // a density on its way: an argument would be boxed
   const whole = eos.evaluator();
   const phases: PhasePair | undefined = eos.contributions.find((part) => part.phases !== undefined)?.phases;
   const sideOf = (phase: "liquid" | "crystal"): Evaluator =>
@@ -106,7 +107,9 @@ export function searcherOf(eos: EquationOfState): Searcher {
       w[TEMPERATURE_NOW] = melting;
     }
     w[TEMPERATURE_NOW] = melting;
-    return coexist(composition, kind, w[DENSITY_NOW]!, w[DENSITY_NOW]!);
+    share[1] = w[DENSITY_NOW]!;
+    share[2] = w[DENSITY_NOW]!;
+    return coexist(composition, kind);
   }
 
   function atTemperature(composition: Composition, kind: number): number {
@@ -137,10 +140,11 @@ export function searcherOf(eos: EquationOfState): Searcher {
       if (end === LOST) return LOST;
       if (end === FOUND) {
         if (piece !== 1 || kind !== PRESSURE_KIND || w[DENSITY_NOW]! > 1.05 * freezing) return FOUND;
-        if (liquidReaches(composition, freezing) < w[FIRST_TARGET]!) {
+        if (boundaryPressureBelowTarget(composition)) {
           w[DENSITY_NOW]! *= 1 + w[STEP_U]!;
           w[STEP_U] = 0;
-          fillSide(crystal, composition, w[DENSITY_NOW]!, kind, 0);
+          at[0] = w[DENSITY_NOW]!;
+          fillSide(crystal, composition, kind, 0);
           return FOUND;
         }
         piece = 0; // the rule of one value: below the boundary's pressure matter is liquid
@@ -154,46 +158,52 @@ export function searcherOf(eos: EquationOfState): Searcher {
       const edge = Math.max(piece, next) === 1 ? freezing : limit;
       w[DENSITY_NOW] = edge;
       // Where quantum melting ends the crystal no two phases are in balance: what lies in that gap has no state.
-      if (rising === -way) return edge === freezing ? coexist(composition, kind, edge, edge) : LOST;
+      if (rising === -way) {
+        if (edge !== freezing) return LOST;
+        share[1] = edge;
+        share[2] = edge;
+        return coexist(composition, kind);
+      }
       rising = way;
       piece = next;
     }
     return LOST;
   }
 
-  /** Pressure of the liquid at the density of freezing; the temperature is that of the search. */
-  function liquidReaches(composition: Composition, freezing: number): number {
+  /** Whether the liquid's pressure at the density of freezing is below the target; the temperature is that of the search. */
+  function boundaryPressureBelowTarget(composition: Composition): boolean {
     const { point, members } = liquid!;
-    point[DENSITY] = freezing;
+    point[DENSITY] = boundary[3]!;
     point[TEMPERATURE] = w[TEMPERATURE_NOW]!;
     liquid!.fillMembers(composition, 3);
     w[EVALUATIONS]! += 1;
     fillFunction(f, FUNCTION_LENGTH, PRESSURE_KIND, point, members);
-    return f[FUNCTION_LENGTH]!;
+    return f[FUNCTION_LENGTH]! < w[FIRST_TARGET]!;
   }
 
-  /** Both phases at the temperature of the search and these densities: the lever rule for the first target. */
-  function coexist(composition: Composition, kind: number, ofLiquid: number, ofCrystal: number): number {
-    fillSide(liquid!, composition, ofLiquid, kind, 0);
-    fillSide(crystal!, composition, ofCrystal, kind, FUNCTION_LENGTH);
+  /** Both phases at the temperature of the search and the densities in `share`: the lever rule for the first target. */
+  function coexist(composition: Composition, kind: number): number {
+    at[0] = share[1]!;
+    fillSide(liquid!, composition, kind, 0);
+    at[0] = share[2]!;
+    fillSide(crystal!, composition, kind, FUNCTION_LENGTH);
     const frozen = (f[0]! - w[FIRST_TARGET]!) / (f[0]! - f[FUNCTION_LENGTH]!);
     if (!(frozen >= -1e-9 && frozen <= 1 + 1e-9)) return LOST;
     place[0] = COEXISTENCE;
     share[0] = Math.min(1, Math.max(0, frozen));
-    share[1] = ofLiquid;
-    share[2] = ofCrystal;
     w[STEP_U] = 0;
     w[STEP_V] = 0;
-    w[DENSITY_NOW] = 1 / (share[0]! / ofCrystal + (1 - share[0]!) / ofLiquid);
+    w[DENSITY_NOW] = 1 / (share[0]! / share[2]! + (1 - share[0]!) / share[1]!);
     return FOUND;
   }
 
-  function fillSide(side: Evaluator, composition: Composition, density: number, kind: number, at: number): void {
-    side.point[DENSITY] = density;
+  /** The function of a kind on one side, at the density in `at`. */
+  function fillSide(side: Evaluator, composition: Composition, kind: number, slot: number): void {
+    side.point[DENSITY] = at[0]!;
     side.point[TEMPERATURE] = w[TEMPERATURE_NOW]!;
     side.fillMembers(composition, 3);
     w[EVALUATIONS]! += 1;
-    fillFunction(f, at, kind, side.point, side.members);
+    fillFunction(f, slot, kind, side.point, side.members);
   }
 
   function bothUnknown(composition: Composition, first: number, second: number): number {
@@ -205,15 +215,14 @@ export function searcherOf(eos: EquationOfState): Searcher {
       place[0] = WHOLE;
       return onSide(whole, composition, first, second);
     }
-    let side = temperatureOverMelting(composition) >= 1 ? LIQUID : CRYSTAL;
+    let side = isHotter(composition) ? LIQUID : CRYSTAL;
     for (let attempt = 0; attempt < 2; attempt++) {
       place[0] = side;
       const density = w[DENSITY_NOW]!;
       const temperature = w[TEMPERATURE_NOW]!;
       const end = onSide(side === LIQUID ? liquid : crystal, composition, first, second);
       if (end === FOUND) {
-        const ratio = temperatureOverMelting(composition);
-        if (side === LIQUID ? ratio >= 1 : ratio <= 1) return FOUND;
+        if (isHotter(composition) === (side === LIQUID)) return FOUND;
       } else {
         w[DENSITY_NOW] = density;
         w[TEMPERATURE_NOW] = temperature;
@@ -233,12 +242,12 @@ export function searcherOf(eos: EquationOfState): Searcher {
     return nestedSearch(side, composition, first, second, w, f);
   }
 
-  /** T/T_m at the place of the search; Infinity where nothing freezes. */
-  function temperatureOverMelting(composition: Composition): number {
+  /** Whether the place of the search is at the melting temperature of its density or above; so where nothing freezes. */
+  function isHotter(composition: Composition): boolean {
     boundary[0] = w[DENSITY_NOW]! * (1 + w[STEP_U]!);
     boundary[1] = w[TEMPERATURE_NOW]! * (1 + w[STEP_V]!);
     phases!.fillBoundary(composition, boundary);
-    return boundary[1]! / boundary[2]!;
+    return boundary[1]! >= boundary[2]!;
   }
 
   /**
@@ -249,22 +258,23 @@ export function searcherOf(eos: EquationOfState): Searcher {
     const isobar = first === PRESSURE_KIND;
     const target = w[FIRST_TARGET]!;
     const other = w[SECOND_TARGET]!;
-    let density = w[DENSITY_NOW]! + 0;
-    let slope = 0.5 - 0.5;
-    let lastRest = 0.5 - 0.5;
-    let lastStep = 0.5 - 0.5;
+    let density: number = w[DENSITY_NOW]!;
+    let slope = target;
+    let lastRest = target;
+    let lastStep = target;
     for (let i = 0; i < 40; i++) {
       boundary[0] = density;
       phases!.fillBoundary(composition, boundary);
       if (!(boundary[2]! > 0)) return LOST;
       w[TEMPERATURE_NOW] = boundary[2]!;
-      fillSide(liquid!, composition, density, first, 0);
+      at[0] = density;
+      fillSide(liquid!, composition, first, 0);
       let rest = target - f[0]!;
       slope = f[BY_U]! + f[BY_V]! / 3;
       const size = f[SIZE]!;
       if (!isobar) {
         const ofLiquid = f[0]!;
-        fillSide(crystal!, composition, density, first, FUNCTION_LENGTH);
+        fillSide(crystal!, composition, first, FUNCTION_LENGTH);
         const ofCrystal = f[FUNCTION_LENGTH]!;
         fillFunction(f, 0, second, liquid!.point, liquid!.members);
         fillFunction(f, FUNCTION_LENGTH, second, crystal!.point, crystal!.members);
@@ -291,7 +301,9 @@ export function searcherOf(eos: EquationOfState): Searcher {
       ofCrystal = w[DENSITY_NOW]! * (1 + w[STEP_U]!);
       w[FIRST_TARGET] = other;
     }
-    const end = coexist(composition, second, density, ofCrystal);
+    share[1] = density;
+    share[2] = ofCrystal;
+    const end = coexist(composition, second);
     w[FIRST_TARGET] = target;
     return end;
   }

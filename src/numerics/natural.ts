@@ -38,11 +38,13 @@ export function clearSingle(out: Float64Array): void {
   out[5] = 0;
 }
 
-/** out = value rho^p y^q. */
-export function setPower(out: Float64Array, order: Order, value: number, p: number, q: number): void {
+/** out = value rho^p y^q; value, p and q stand in its first three slots. */
+export function setPower(out: Float64Array, order: Order): void {
+  const value = out[0]!;
+  const p = out[1]!;
+  const q = out[2]!;
   const p2 = p * (p - 1);
   const q2 = q * (q - 1);
-  out[0] = value;
   out[1] = value * p;
   out[2] = value * q;
   out[3] = value * p2;
@@ -295,10 +297,10 @@ export function raiseSingle(out: Float64Array, order: Order, a: Float64Array, p:
   out[2] = g2;
 }
 
-/** One variable: out = value v^p. */
-export function setSinglePower(out: Float64Array, value: number, p: number): void {
-  out[0] = value;
-  out[1] = value * p;
+/** One variable: out = value v^p; value and p stand in its first two slots. */
+export function setSinglePower(out: Float64Array): void {
+  const p = out[1]!;
+  out[1] = out[0]! * p;
   out[2] = out[1]! * (p - 1);
   out[3] = out[2]! * (p - 2);
   out[4] = out[3]! * (p - 3);
