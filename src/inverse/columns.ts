@@ -14,6 +14,7 @@ import {
   DENSITY_NOW,
   EVALUATIONS,
   FIRST_TARGET,
+  FOLLOWS,
   FOUND,
   GUESSED,
   SECOND_TARGET,
@@ -108,6 +109,7 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
     if (knowsTemperature) w[TEMPERATURE_NOW] = first[i]!;
     else if (guessed?.temperature !== undefined) w[TEMPERATURE_NOW] = guessed.temperature[i]!;
     else if (!follows) w[TEMPERATURE_NOW] = 1;
+    w[FOLLOWS] = 0;
     if (follows) solver.follow(question);
     const end = solver.find(matter, question);
     if (end !== FOUND) {

@@ -8,12 +8,15 @@ import {
   DENSITY_AT_TEMPERATURE,
   DENSITY_NOW,
   FIRST_TARGET,
+  FOLLOWS,
   FUNCTION_LENGTH,
   SECOND_TARGET,
   TEMPERATURE_AT_DENSITY,
   TEMPERATURE_NOW,
 } from "./slots.js";
 
+/** Within this distance the remainder of third order is below the last step of a search. */
+const NEARBY = 2e-3;
 /** Steps longer than this are no prediction. */
 const FARTHEST = 0.5;
 
@@ -43,6 +46,9 @@ export function predict(question: number, w: Float64Array, f: Float64Array, at: 
     du = (f[g + BY_V]! * restA - f[BY_V]! * restB) * inverse;
     dv = (f[BY_U]! * restB - f[g + BY_U]! * restA) * inverse;
   }
+  const distance = Math.abs(du) + Math.abs(dv);
+  // Nearer by, the prediction is the answer but for a last step, which needs members of third order.
+  w[FOLLOWS] = distance > NEARBY && distance < FARTHEST ? 1 : 0;
   if (!(Math.abs(du) < FARTHEST)) du = 0;
   if (!(Math.abs(dv) < FARTHEST)) dv = 0;
   if (question !== TEMPERATURE_AT_DENSITY) w[DENSITY_NOW]! *= Math.exp(du);

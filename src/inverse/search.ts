@@ -28,6 +28,7 @@ import {
   ENTROPY_KIND,
   EVALUATIONS,
   FIRST_TARGET,
+  FOLLOWS,
   FOUND,
   FUNCTION_LENGTH,
   HIGHEST_DENSITY,
@@ -93,7 +94,8 @@ export function searchOne(
     const now: number = w[slot]!;
     point[DENSITY] = w[DENSITY_NOW]!;
     point[TEMPERATURE] = w[TEMPERATURE_NOW]!;
-    ev.fillMembers(composition, 3);
+    const brief = i === 0 && w[FOLLOWS] === 1;
+    ev.fillMembers(composition, brief ? 2 : 3);
     w[EVALUATIONS]! += 1;
     fillFunction(f, 0, kind, point, members);
     const rest = (target - f[0]!) * sign;
@@ -123,7 +125,7 @@ export function searchOne(
         floor = true;
       }
       const goal = now + now * stride[0]!;
-      if (Math.abs(stride[0]!) <= (scatter ? LAST_NOISE : LAST_STEP) && goal >= low && goal <= high) {
+      if (!brief && Math.abs(stride[0]!) <= (scatter ? LAST_NOISE : LAST_STEP) && goal >= low && goal <= high) {
         w[inDensity ? STEP_U : STEP_V] = stride[0]!;
         return FOUND;
       }
@@ -167,7 +169,8 @@ export function searchTwo(
   for (let i = 0; i < STEPS_IN_TWO; i++) {
     point[DENSITY] = w[DENSITY_NOW]!;
     point[TEMPERATURE] = w[TEMPERATURE_NOW]!;
-    ev.fillMembers(composition, 3);
+    const brief = i === 0 && w[FOLLOWS] === 1;
+    ev.fillMembers(composition, brief ? 2 : 3);
     w[EVALUATIONS]! += 1;
     fillFunction(f, 0, first, point, members);
     fillFunction(f, FUNCTION_LENGTH, second, point, members);
@@ -214,7 +217,7 @@ export function searchTwo(
     du = (bV * wayA - aV * wayB) * inverse;
     dv = (aU * wayB - bU * wayA) * inverse;
     const length = Math.max(Math.abs(du), Math.abs(dv));
-    if (length <= (scatter ? LAST_NOISE : LAST_STEP)) {
+    if (!brief && length <= (scatter ? LAST_NOISE : LAST_STEP)) {
       w[STEP_U] = du;
       w[STEP_V] = dv;
       return FOUND;

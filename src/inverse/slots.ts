@@ -70,8 +70,13 @@ export const STEP_U = 9;
 export const STEP_V = 10;
 /** 1 where the start is a caller's guess. */
 export const GUESSED = 11;
+/**
+ * 1 where the start is a prediction from the evaluator's last place, some 1e-6 off: the members of third order left there serve
+ * for the first step, so that the first evaluation may be of second order, half as costly.
+ */
+export const FOLLOWS = 12;
 /** Length of the record of a search. */
-export const SEARCH_LENGTH = 12;
+export const SEARCH_LENGTH = 13;
 
 // How a search ends.
 

@@ -15,6 +15,7 @@ import {
   DENSITY_NOW,
   EVALUATIONS,
   FIRST_TARGET,
+  FOLLOWS,
   FOUND,
   FUNCTION_LENGTH,
   GUESSED,
@@ -104,6 +105,7 @@ export function solve(
   const solver = solverFor(equationOfState);
   const { w } = solver.searcher;
   place(solver, question, first, second);
+  w[FOLLOWS] = 0;
   w[GUESSED] = guess(solver, question, options) ? 1 : 0;
   const end = solver.find(composition, question);
   if (end !== FOUND) {
@@ -158,6 +160,7 @@ function guess(solver: Solver, { names, type, first, second }: Question, options
     w[DENSITY_NOW] = density!;
     w[TEMPERATURE_NOW] = temperature!;
     solver.follow({ names, type, first, second });
+    w[FOLLOWS] = 0; // the evaluator was elsewhere
     return true;
   }
   w[DENSITY_NOW] = density!;

@@ -14,6 +14,7 @@ import {
   DENSITY_NOW,
   ENTROPY_KIND,
   EVALUATIONS,
+  FOLLOWS,
   FOUND,
   FUNCTION_LENGTH,
   GUESSED,
@@ -85,6 +86,7 @@ function solverOf(eos: EquationOfState): Solver {
     if (end === FOUND || !guessed) return end;
     // A bad guess must not cost the answer.
     w[GUESSED] = 0;
+    w[FOLLOWS] = 0;
     w[DENSITY_NOW] = density;
     w[TEMPERATURE_NOW] = temperature;
     begin(composition, question);
