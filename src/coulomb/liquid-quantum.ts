@@ -47,8 +47,11 @@ export function addTwoOscillators(u: Float64Array, order: 2 | 3, point: Float64A
     u[2]! += c * (2 * value + 5 * first + 8 * y * y * bend);
     u[5]! += c * (value + first);
     if (order === 2) return;
-    u[3]! += c * horner(series.third, y);
-    u[4]! += c * horner(series.fourth, y);
+    at[0] = y;
+    horner(series.third, at);
+    u[3]! += c * at[1]!;
+    horner(series.fourth, at);
+    u[4]! += c * at[1]!;
     return;
   }
   for (let i = 0; i < 4; i += 2) {
@@ -108,7 +111,9 @@ export function addBaikoYakovlev(u: Float64Array, order: 2 | 3, point: Float64Ar
   const zB = (h * h) / (q4 + h * h);
   const eA = q1 * h * zA;
   const eB = q3 * zB;
-  const sA = q1 * q2 * (y < 0.05 ? y * y * horner(logarithmEntropy, y) : Math.log1p(y) - zA);
+  at[0] = y;
+  if (y < 0.05) horner(logarithmEntropy, at);
+  const sA = q1 * q2 * (y < 0.05 ? y * y * at[1]! : Math.log1p(y) - zA);
   const sB = eB - 0.5 * q3 * Math.log1p((h * h) / q4);
   const dA = eA * q2 * saturation;
   u[0]! += x * (eA - sA + (eB - sB));
@@ -119,6 +124,9 @@ export function addBaikoYakovlev(u: Float64Array, order: 2 | 3, point: Float64Ar
   u[3]! += x * (2 * eB * zB * (4 * zB - 3) - 2 * zA * dA);
   u[4]! += x * (6 * zA * zA * dA + 6 * eB * zB * (8 * zB * (1 - zB) - 1));
 }
+
+/** Argument and value of a series. */
+const at = new Float64Array(2);
 
 /** g_1, w_1, g_2, w_2 of the two oscillators. */
 const oscillators: Float64Array = /* @__PURE__ */ twoOscillators(1.17225, 0.861406);

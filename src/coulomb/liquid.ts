@@ -61,9 +61,15 @@ export function addLiquidCorrelation(u: Float64Array, order: 2 | 3, point: Float
   if (gamma < 0.06) {
     const y1 = gamma / a2;
     const y3 = gamma / b2;
-    s1 = a1 * a2 * y1 * Math.sqrt(y1) * horner(arsinhEntropy, y1);
-    s2 = e2 - 2 * a3 * gamma * root * horner(arctangentDeficit, gamma);
-    s3 = b1 * b2 * y3 * y3 * horner(logarithmEntropy, y3);
+    at[0] = y1;
+    horner(arsinhEntropy, at);
+    s1 = a1 * a2 * y1 * Math.sqrt(y1) * at[1]!;
+    at[0] = gamma;
+    horner(arctangentDeficit, at);
+    s2 = e2 - 2 * a3 * gamma * root * at[1]!;
+    at[0] = y3;
+    horner(logarithmEntropy, at);
+    s3 = b1 * b2 * y3 * y3 * at[1]!;
   } else {
     const y1 = gamma / a2;
     const rootY1 = Math.sqrt(y1);
@@ -95,6 +101,9 @@ export function addLiquidCorrelation(u: Float64Array, order: 2 | 3, point: Float
       6 * z3 * z3 * d3 +
       6 * e4 * z4 * (8 * z4 * (1 - z4) - 1));
 }
+
+/** Argument and value of a series. */
+const at = new Float64Array(2);
 
 /** [asinh sqrt y - sqrt(y/(1 + y))]/y^(3/2) by powers of y: -c_n 2n/(2n + 1), c_n = (-1/2 over n), n = 1..17. */
 const arsinhEntropy: readonly number[] = /* @__PURE__ */ binomials(17).map((c, i) => (-c * (2 * i + 2)) / (2 * i + 3));

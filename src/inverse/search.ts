@@ -17,6 +17,7 @@ import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
 import type { Evaluator } from "../thermodynamics/evaluator.js";
 import { fillFunction } from "./functions.js";
 import {
+  AGE,
   BEYOND_LOWER,
   BEYOND_UPPER,
   BY_U,
@@ -49,6 +50,8 @@ const ROUNDING = 3 * 2 ** -52;
 const LAST_STEP = 6e-9;
 /** The same where the residual is rounding: such a step is as uncertain as it is long. */
 const LAST_NOISE = 2e-8;
+/** Evaluations of second order before a search that follows a neighbour takes third order after all. */
+const BRIEF_STEPS = 3;
 /** Steps of one search before it gives up. */
 const STEPS_IN_ONE = 80;
 const STEPS_IN_TWO = 30;
@@ -94,8 +97,9 @@ export function searchOne(
     const now: number = w[slot]!;
     point[DENSITY] = w[DENSITY_NOW]!;
     point[TEMPERATURE] = w[TEMPERATURE_NOW]!;
-    const brief = i === 0 && w[FOLLOWS] === 1;
+    const brief = i < BRIEF_STEPS && w[FOLLOWS] === 1;
     ev.fillMembers(composition, brief ? 2 : 3);
+    if (!brief) w[AGE] = 0;
     w[EVALUATIONS]! += 1;
     fillFunction(f, 0, kind, point, members);
     const rest = (target - f[0]!) * sign;
@@ -169,8 +173,9 @@ export function searchTwo(
   for (let i = 0; i < STEPS_IN_TWO; i++) {
     point[DENSITY] = w[DENSITY_NOW]!;
     point[TEMPERATURE] = w[TEMPERATURE_NOW]!;
-    const brief = i === 0 && w[FOLLOWS] === 1;
+    const brief = i < BRIEF_STEPS && w[FOLLOWS] === 1;
     ev.fillMembers(composition, brief ? 2 : 3);
+    if (!brief) w[AGE] = 0;
     w[EVALUATIONS]! += 1;
     fillFunction(f, 0, first, point, members);
     fillFunction(f, FUNCTION_LENGTH, second, point, members);

@@ -71,12 +71,14 @@ export const STEP_V = 10;
 /** 1 where the start is a caller's guess. */
 export const GUESSED = 11;
 /**
- * 1 where the start is a prediction from the evaluator's last place, some 1e-6 off: the members of third order left there serve
- * for the first step, so that the first evaluation may be of second order, half as costly.
+ * 1 where the start is a prediction from the evaluator's last place: the members of third order left there serve for the
+ * steps, and evaluations of second order, half as costly, do.
  */
 export const FOLLOWS = 12;
+/** Rows since members of third order were computed. */
+export const AGE = 13;
 /** Length of the record of a search. */
-export const SEARCH_LENGTH = 13;
+export const SEARCH_LENGTH = 14;
 
 // How a search ends.
 

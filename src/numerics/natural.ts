@@ -306,9 +306,10 @@ export function setSinglePower(out: Float64Array): void {
   out[4] = out[3]! * (p - 3);
 }
 
-/** sum c[n] x^n. */
-export function horner(coefficients: readonly number[], x: number): number {
+/** x[1] = sum c[n] x[0]^n. */
+export function horner(coefficients: readonly number[], x: Float64Array): void {
+  const at = x[0]!;
   let sum = coefficients[coefficients.length - 1]!;
-  for (let n = coefficients.length - 2; n >= 0; n--) sum = sum * x + coefficients[n]!;
-  return sum;
+  for (let n = coefficients.length - 2; n >= 0; n--) sum = sum * at + coefficients[n]!;
+  x[1] = sum;
 }
