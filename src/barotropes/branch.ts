@@ -18,6 +18,7 @@ import {
   BAROTROPE_PRESSURE,
 } from "./barotrope.js";
 import { bracketedRoot } from "./root.js";
+import type { Layer } from "./stacked.js";
 
 /** What is constant along the path: a temperature (0 included) or a specific entropy. */
 export type Path =
@@ -27,22 +28,12 @@ export type Path =
 /** Why a branch ends where it does: the density asked for, the surface P = 0 above it, or radiation alone. */
 export type BranchEnd = "density" | "surface" | "radiation";
 
-/** One phase along the path, between two densities. */
-export interface Branch {
-  /** Lowest and highest density, g/cm^3. */
-  readonly density: readonly [number, number];
+/** One phase along the path, between two densities; an inversion beyond its ends gives the nearest end. */
+export interface Branch extends Layer {
   /** What the lowest density is. */
   readonly end: BranchEnd;
-  /** Pressures there. */
-  readonly pressure: readonly [number, number];
-  /** Potentials there. */
-  readonly potential: readonly [number, number];
-  /** Fills the record from its density. */
-  fillAtDensity(record: Float64Array): void;
-  /** Fills the record from its pressure; beyond the ends the nearest end. */
-  fillAtPressure(record: Float64Array): void;
-  /** Fills the record from its potential; beyond the ends the nearest end. */
-  fillAtPotential(record: Float64Array): void;
+  /** Sets what is added to w. */
+  shiftPotential(by: number): void;
 }
 
 /** Spacing of the nodes in ln rho: the start of the Newton iteration is then good to about 1e-9. */
@@ -68,7 +59,6 @@ const leastExponent = 1e-3;
 /**
  * The branch from `high` down to the lowest density at which it answers: `low`, or the surface P = 0 above it.
  *
- * @param offset - added to w
  * @throws `unstable` where dP/drho vanishes at positive pressure; `outside-domain` where the phase changes
  */
 export function branchOf(
@@ -76,7 +66,7 @@ export function branchOf(
   composition: Composition,
   path: Path,
   [low, high]: readonly [number, number],
-): Branch & { shiftPotential(by: number): void } {
+): Branch {
   const { point, members, fillMembers } = equationOfState.evaluator();
   const scratch = new Float64Array(5);
   const isotherm = path.kind === "isotherm";

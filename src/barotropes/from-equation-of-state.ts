@@ -13,17 +13,10 @@ import { isCoulombPlasma, withPhase } from "../coulomb/transition.js";
 import { FermistateError, requireFinite } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
-import {
-  BAROTROPE_DENSITY,
-  BAROTROPE_LENGTH,
-  BAROTROPE_POTENTIAL,
-  BAROTROPE_PRESSURE,
-  type Barotrope,
-  type DensityJump,
-} from "./barotrope.js";
+import { BAROTROPE_DENSITY, BAROTROPE_LENGTH, BAROTROPE_PRESSURE, type Barotrope } from "./barotrope.js";
 import { type Branch, branchOf, type Path } from "./branch.js";
-import { completeBarotrope } from "./from-record.js";
 import { requireDensityRange, requireKnown } from "./options.js";
+import { stacked } from "./stacked.js";
 
 /** Which path a barotrope follows. */
 export type BarotropeOptions =
@@ -74,9 +67,11 @@ export function barotrope(
   const range = rangeOf(equationOfState, composition, path, options.density);
   const branches = branchesOf(equationOfState, composition, path, range);
   requireReached(branches[0]!, options.density);
-  const jumps: DensityJump[] = [];
-  for (let i = 1; i < branches.length; i++) jumps.push(jumpBetween(branches[i - 1]!, branches[i]!));
-  return joinBranches(nameOf(equationOfState, composition, path), branches, jumps);
+  return stacked(
+    nameOf(equationOfState, composition, path),
+    "That of the equation of state it is made of: ask regime(...) at its densities.",
+    branches,
+  );
 }
 
 /** Refuses densities asked for that radiation alone fills. */
@@ -132,7 +127,7 @@ function branchesOf(
   composition: Composition,
   path: Path,
   [low, high]: readonly [number, number],
-): (Branch & { shiftPotential(by: number): void })[] {
+): Branch[] {
   const plasma = equationOfState.contributions.find(isCoulombPlasma);
   const branch = (matter: EquationOfState, lowest: number, highest: number) =>
     branchOf(matter, composition, path, [lowest, highest]);
@@ -165,42 +160,6 @@ function branchesOf(
   const solid = branch(crystal, begin, high);
   solid.shiftPotential(liquid.potential[1] - solid.potential[0]);
   return [liquid, solid];
-}
-
-function jumpBetween(below: Branch, above: Branch): DensityJump {
-  return Object.freeze({
-    pressure: below.pressure[1],
-    potential: below.potential[1],
-    densities: Object.freeze([below.density[1], above.density[0]] as const),
-  });
-}
-
-function joinBranches(name: string, branches: readonly Branch[], jumps: readonly DensityJump[]): Barotrope {
-  const last = branches.length - 1;
-  const pick = (record: Float64Array, slot: number): Branch => {
-    let i = last;
-    while (i > 0) {
-      const jump = jumps[i - 1]!;
-      const edge =
-        slot === BAROTROPE_DENSITY
-          ? jump.densities[1]
-          : slot === BAROTROPE_PRESSURE
-            ? jump.pressure
-            : jump.potential;
-      if (record[slot]! >= edge) break;
-      i--;
-    }
-    return branches[i]!;
-  };
-  return completeBarotrope({
-    name,
-    validity: "That of the equation of state it is made of: ask regime(...) at its densities.",
-    density: Object.freeze([branches[0]!.density[0], branches[last]!.density[1]] as const),
-    jumps: Object.freeze(jumps),
-    fillAtDensity: (record) => pick(record, BAROTROPE_DENSITY).fillAtDensity(record),
-    fillAtPressure: (record) => pick(record, BAROTROPE_PRESSURE).fillAtPressure(record),
-    fillAtPotential: (record) => pick(record, BAROTROPE_POTENTIAL).fillAtPotential(record),
-  });
 }
 
 function nameOf(equationOfState: EquationOfState, composition: Composition, path: Path): string {
