@@ -69,7 +69,7 @@ export function joinBarotropes(outer: Barotrope, inner: Barotrope, options: Join
     const allowed = `inner matter at least as dense as the outer (${end} g/cm^3) at ${pressure} dyn/cm^2`;
     throw new FermistateError("unstable", { argument: "pressure", given: begin, allowed });
   }
-  const start = Math.max(begin, end);
+  const start = begin > end * (1 + 1e-9) ? begin : end;
   return stacked(
     `${outer.name}, then ${inner.name}`,
     `Up to ${Number(end.toPrecision(4))} g/cm^3: ${outer.validity} Above: ${inner.validity}`,
