@@ -56,6 +56,7 @@ export default defineConfig([
     ...shared,
     entry: {
       index: "src/index.ts",
+      barotropes: "src/barotropes/index.ts",
       grids: "src/grids/index.ts",
       charts: "src/charts/index.ts",
       contributions: "src/contributions/index.ts",

@@ -11,9 +11,15 @@ const guide = existsSync(`${folder}guide`) ? readdirSync(`${folder}guide`).filte
 /** @type {Partial<import("typedoc").TypeDocOptions>} */
 const options = {
   name: "fermistate",
-  entryPoints: ["index", "grids/index", "contributions/index", "charts/index", "files/index", "certify/index"].map(
-    (file) => `../src/${file}.ts`,
-  ),
+  entryPoints: [
+    "index",
+    "barotropes/index",
+    "grids/index",
+    "contributions/index",
+    "charts/index",
+    "files/index",
+    "certify/index",
+  ].map((file) => `../src/${file}.ts`),
   tsconfig: "../test/tsconfig.json",
   out: "api",
   readme: existsSync(`${folder}../README.md`) ? "../README.md" : "none",

@@ -35,7 +35,7 @@ const forbidden: Readonly<Record<string, readonly string[]>> = {
   // The reference shares no code with what it judges.
   certify: ["numerics", "fermi-gas"],
   // The core: sub-paths are entered by their own name.
-  index: ["grids", "charts", "files", "certify", "contributions"],
+  index: ["barotropes", "grids", "charts", "files", "certify", "contributions"],
 };
 
 /** Packages a room may import; any other room imports none. `node:` stands for every module of Node. */

@@ -300,7 +300,8 @@ function tabulate(
       throw new FermistateError("unstable", {
         argument: "density",
         given: edge,
-        allowed: "densities at which matter has positive pressure and resists compression: give { density: [lowest, highest] }",
+        allowed:
+          "densities at which matter has positive pressure and resists compression: give { density: [lowest, highest] }",
       });
     }
     push(lowest);

@@ -240,7 +240,8 @@ function polish(x: Float64Array, y: Float64Array, start: BrokenLine): BrokenLine
   let here = bestValues(x, y, knots);
   const free = knots.length - 2;
   const scale = (x[x.length - 1]! - x[0]!) / knots.length;
-  const fresh = (): number[][] => Array.from({ length: free }, (_, i) => Array.from({ length: free }, (_, j) => +(i === j)));
+  const fresh = (): number[][] =>
+    Array.from({ length: free }, (_, i) => Array.from({ length: free }, (_, j) => +(i === j)));
   let inverse = fresh();
   let trust = 0.1 * scale;
   for (let round = 0; round < 300 && free > 0; round++) {
@@ -276,7 +277,8 @@ function polish(x: Float64Array, y: Float64Array, start: BrokenLine): BrokenLine
 
 /** The inverse Hessian after a step `s` that changed the gradient by `g`. */
 function updated(inverse: readonly number[][], s: readonly number[], g: readonly number[]): number[][] {
-  const dot = (a: readonly number[], b: readonly number[]): number => a.reduce((sum, value, i) => sum + value * b[i]!, 0);
+  const dot = (a: readonly number[], b: readonly number[]): number =>
+    a.reduce((sum, value, i) => sum + value * b[i]!, 0);
   const curvature = dot(s, g);
   if (!(curvature > 0)) return inverse.map((row) => [...row]);
   // The first update sets the scale.

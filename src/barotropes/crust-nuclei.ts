@@ -69,7 +69,9 @@ export interface PureMatter {
 }
 
 /** Matter of a nuclide at T = 0 and a pressure, by Newton in ln rho; compositions are made once. */
-export function pureMatterOf(equationOfState: EquationOfState): (nuclide: CrustNuclide, pressure: number) => PureMatter {
+export function pureMatterOf(
+  equationOfState: EquationOfState,
+): (nuclide: CrustNuclide, pressure: number) => PureMatter {
   const { point, members, fillMembers } = equationOfState.evaluator();
   const made = new Map<string, Composition>();
   const gas = new Float64Array(RECORD_LENGTH);
@@ -128,7 +130,8 @@ export function candidates(all: readonly CrustNuclide[], pressure: number, margi
     if (energy === undefined) {
       const x = momentumAt(gas, pressure, z);
       const fermi = (x * x) / (1 + Math.sqrt(1 + x * x));
-      energy = (z * (fermi - (4 / 3) * latticeFactor * Math.cbrt(z) ** 2 * x) * electronRestEnergy) / atomicMassConstant;
+      energy =
+        (z * (fermi - (4 / 3) * latticeFactor * Math.cbrt(z) ** 2 * x) * electronRestEnergy) / atomicMassConstant;
       perNucleus.set(z, energy);
     }
     return massExcess + energy / massNumber;

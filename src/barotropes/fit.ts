@@ -77,7 +77,10 @@ const mostPieces = 20;
  * report.pressure.max; // => 0.0175
  * ```
  */
-export function fitPiecewisePolytrope(source: Barotrope | BarotropeColumns, options: FitOptions): PiecewisePolytropeFit {
+export function fitPiecewisePolytrope(
+  source: Barotrope | BarotropeColumns,
+  options: FitOptions,
+): PiecewisePolytropeFit {
   requireKnown("options", options, ["pieces", "tolerance", "density", "figures"]);
   const { pieces, tolerance } = options;
   if ((pieces === undefined) === (tolerance === undefined)) {
@@ -145,7 +148,8 @@ function ofColumns(source: BarotropeColumns, { density, figures }: FitOptions): 
     throw new FermistateError("invalid-option", { argument: "figures", given: figures, allowed });
   }
   const rows = checkedRows(source);
-  const [low, high] = density === undefined ? [rows[0]!.density, rows[rows.length - 1]!.density] : requireDensityRange(density);
+  const [low, high] =
+    density === undefined ? [rows[0]!.density, rows[rows.length - 1]!.density] : requireDensityRange(density);
   const chosen = rows.filter((row) => row.density >= low && row.density <= high);
   const x = Float64Array.from(chosen, (row) => Math.log(row.density));
   const y = Float64Array.from(chosen, (row) => Math.log(row.pressure));

@@ -112,7 +112,10 @@ function rangeOf(
   const plasma = contributions.find(isCoulombPlasma);
   const crystal = plasma?.options.phase === "equilibrium" && composition.meanCharge > 0;
   const limit = crystal && freezes(plasma.options.meltingCoupling, composition, path);
-  return [domain.density[0], limit ? Math.min(domain.density[1], highestCrystalDensity(composition)) : domain.density[1]];
+  return [
+    domain.density[0],
+    limit ? Math.min(domain.density[1], highestCrystalDensity(composition)) : domain.density[1],
+  ];
 }
 
 /** Whether matter on the isotherm is a crystal at some density. */
@@ -136,7 +139,8 @@ function branchesOf(
     if (path.kind === "isotherm") equationOfState.state(high, path.temperature, composition); // refuses what it must
     return [branch(equationOfState, low, high)];
   }
-  const melting = path.temperature === 0 ? 0 : meltingDensity(path.temperature, composition, plasma.options.meltingCoupling);
+  const melting =
+    path.temperature === 0 ? 0 : meltingDensity(path.temperature, composition, plasma.options.meltingCoupling);
   const limit = highestCrystalDensity(composition);
   if (melting < high && high > limit) {
     const allowed = `up to ${limit} g/cm^3: above, the crystal melts by zero-point motion and the pressure jumps`;

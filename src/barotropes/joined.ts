@@ -73,7 +73,10 @@ export function joinBarotropes(outer: Barotrope, inner: Barotrope, options: Join
   return stacked(
     `${outer.name}, then ${inner.name}`,
     `Up to ${Number(end.toPrecision(4))} g/cm^3: ${outer.validity} Above: ${inner.validity}`,
-    [part(outer, outer.density[0], end, pressure), { ...rescaled(inner, extra), ...startOf(inner, start, extra, ofOuter) }],
+    [
+      part(outer, outer.density[0], end, pressure),
+      { ...rescaled(inner, extra), ...startOf(inner, start, extra, ofOuter) },
+    ],
   );
 }
 
@@ -100,8 +103,7 @@ function crossing(outer: Barotrope, inner: Barotrope, low: number, high: number)
     matter.fillAtPressure(record);
     return Math.log(record[BAROTROPE_DENSITY]!) + Math.log1p(record[BAROTROPE_ENERGY]! / c2);
   };
-  const difference = (log: number): number =>
-    massEnergy(inner, Math.exp(log)) - massEnergy(outer, Math.exp(log)); // > 0: the inner is denser
+  const difference = (log: number): number => massEnergy(inner, Math.exp(log)) - massEnergy(outer, Math.exp(log)); // > 0: the inner is denser
   const jumpLogs = outer.jumps.map((one) => Math.log(one.pressure));
   let above = Math.log(high) - 1e-9;
   const bottom = Math.max(Math.log(low), Math.log(high) - 20);
@@ -172,7 +174,10 @@ function startOf(
 }
 
 /** The inner barotrope with its baryon density times 1 + extra. */
-function rescaled(inner: Barotrope, extra: number): Pick<Layer, "fillAtDensity" | "fillAtPressure" | "fillAtPotential"> {
+function rescaled(
+  inner: Barotrope,
+  extra: number,
+): Pick<Layer, "fillAtDensity" | "fillAtPressure" | "fillAtPotential"> {
   const scale = 1 + extra;
   const change = (record: Float64Array): void => {
     record[BAROTROPE_DENSITY]! *= scale;

@@ -210,7 +210,8 @@ function gasOf(protons: boolean): NucleonGas {
   const shared = { name, density: Object.freeze([lowest, highest] as const), jumps: Object.freeze([]) };
   const parts = completeBarotrope({
     ...shared,
-    validity: "Ideal cold particles without interactions or nuclei: a limit to compare with, no model of neutron stars.",
+    validity:
+      "Ideal cold particles without interactions or nuclei: a limit to compare with, no model of neutron stars.",
     fillAtDensity: (record) => invert(record, BAROTROPE_DENSITY),
     fillAtPressure: (record) => invert(record, BAROTROPE_PRESSURE),
     fillAtPotential(record): void {

@@ -47,7 +47,12 @@ export interface PieceEvaluator {
 }
 
 /** The piece that goes on above `density`, where `record` holds the lower piece. */
-export function nextPiece(record: Float64Array, lower: PolytropicPiece, gamma: number, smooth: boolean): PolytropicPiece {
+export function nextPiece(
+  record: Float64Array,
+  lower: PolytropicPiece,
+  gamma: number,
+  smooth: boolean,
+): PolytropicPiece {
   const density = record[BAROTROPE_DENSITY]!;
   const pressure = record[BAROTROPE_PRESSURE]!;
   const shift = smooth ? pressure - ((pressure - lower.shift) * lower.gamma) / gamma : 0;
