@@ -98,6 +98,7 @@ export function branchOf(
       if (!isLast && !(next > lower && next < upper)) next = Math.sqrt(lower * upper);
       if (next === temperature || upper - lower <= 4e-16 * upper) {
         if (Math.abs(step) < 1e-12) return;
+        if (lower > coldest && upper < hottest) refuseBoundary(density, density); // s jumps at a temperature
         const allowed = `an entropy that matter of ${density} g/cm^3 has between ${coldest} and ${hottest} K`;
         throw new FermistateError("outside-domain", { argument: "specificEntropy", given: entropy, allowed });
       }
@@ -324,7 +325,7 @@ function tabulate(
 
 function refuseBoundary(lower: number, upper: number): never {
   const allowed =
-    `densities on one side of the boundary between liquid and crystal, here between ${lower} and ${upper} g/cm^3, ` +
+    `densities on one side of the boundary between liquid and crystal, which lies at ${lower} to ${upper} g/cm^3, ` +
     "where matter of one entropy is a mixture of both; or one phase by withPhase(equationOfState, ...)";
   throw new FermistateError("outside-domain", { argument: "density", given: [lower, upper], allowed });
 }

@@ -107,7 +107,8 @@ function fillSums(sums: Float64Array, gas: Float64Array, kinetic: number, proton
 /**
  * The ideal cold gas of neutrons, protons and electrons in beta equilibrium, 1e-10 to 1e20 g/cm^3; m_n, m_p, m_e of CODATA 2022.
  *
- * P, e, w to 1e-14 (near the onset of neutrons their small share to the rounding of the masses' difference, 2e-8). No
+ * P, e, w to 1e-14; to 1e-13 from the onset of neutrons to 1e10 g/cm^3, where P is far below mu n. The onset itself is as
+ * sharp as the difference of the masses is known, 2e-8. No
  * interactions and no nuclei: a limit to compare with, no model of neutron stars.
  * @example
  * ```ts
@@ -192,10 +193,10 @@ function gasOf(protons: boolean): NucleonGas {
       else upper = log;
       const move = residual / rate;
       const next = log + move;
-      if (Math.abs(move) < 1e-9 || (next > lower && next < upper)) {
+      if (Math.abs(move) < 1e-13 || (next > lower && next < upper)) {
         kinetic *= Math.abs(move) < 1e-3 ? 1 + move * (1 + move * (0.5 + move / 6)) : Math.exp(move);
         log = next;
-        if (Math.abs(move) < 1e-9) break;
+        if (Math.abs(move) < 1e-13) break;
       } else {
         log = 0.5 * (lower + upper);
         kinetic = Math.exp(log);

@@ -84,7 +84,7 @@ const deep = 3e30;
  * The outer crust of cold catalysed matter, from P = 0 to neutron drip.
  *
  * e and w are measured from m_u c^2 per baryon, nuclear binding included: rho (c^2 + e) is the full density of mass-energy, and
- * e is negative near the surface. Transition pressures follow from the masses to 1e-12; what they are worth is the question:
+ * e is negative near the surface. Transition pressures follow from the masses to 1e-10; what they are worth is the question:
  * measured masses end at Zn80, and the layers beyond it are those of the nuclides whose masses happen to be known.
  * Below 1e4 g/cm^3 matter is not fully ionised.
  *

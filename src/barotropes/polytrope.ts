@@ -97,7 +97,7 @@ export function polytrope(options: PolytropeOptions): BarotropicContribution {
 /**
  * K and gamma of cold, ideal, uniform electrons of a composition where they are non-relativistic and where they are
  * ultra-relativistic; worked out from the constants, to rounding. Between the limits neither is good: the pressure of the
- * full gas is below both, by 30 % of the smaller one at x = 1.
+ * full gas is below both, by 23 % of the smaller one at x = 1.
  *
  * @throws `invalid-composition`; `out-of-range` for matter without electrons
  */
