@@ -50,6 +50,13 @@ const ENERGY_SLOPE = 2;
 const WARM = 3;
 /** Scratch slot: d ln T/d ln rho along the path. */
 const WARMING = 4;
+/** Scratch slot: ln rho at which a cell is looked up. */
+const LOG = 5;
+/** Scratch slot: P or w that is looked up. */
+const TARGET = 6;
+/** Scratch slots: bracket of the temperature. */
+const COLDER = 7;
+const HOTTER = 8;
 /**
  * Below this exponent of an isotherm radiation alone carries the pressure: w loses its digits in F + P/rho, and a
  * density cannot be told from a pressure.
@@ -68,29 +75,30 @@ export function branchOf(
   [low, high]: readonly [number, number],
 ): Branch {
   const { point, members, fillMembers } = equationOfState.evaluator();
-  const scratch = new Float64Array(5);
+  const scratch = new Float64Array(9);
   const isotherm = path.kind === "isotherm";
   const entropy = path.kind === "adiabat" ? path.specificEntropy : 0;
   const [coldest, hottest] = equationOfState.domain.temperature;
   scratch[WARM] = path.kind === "isotherm" ? path.temperature : Math.sqrt(coldest * hottest);
 
-  /** Members at the density on the path. */
-  function enter(density: number): void {
-    point[DENSITY] = density;
+  /** Members at the density of the record on the path. */
+  function enter(record: Float64Array): void {
+    point[DENSITY] = record[BAROTROPE_DENSITY]!;
     point[TEMPERATURE] = scratch[WARM]!;
     fillMembers(composition, 2);
-    if (!isotherm) solveTemperature(density);
+    if (!isotherm) solveTemperature();
   }
 
   /** Newton in ln T for s(rho, T) = s, kept within the domain; leaves the members there. */
-  function solveTemperature(density: number): void {
-    let lower = coldest;
-    let upper = hottest;
+  function solveTemperature(): void {
+    scratch[COLDER] = coldest;
+    scratch[HOTTER] = hottest;
     for (let i = 0; i < 200; i++) {
       const temperature = point[TEMPERATURE]!;
       const residual = members[ENTROPY]! - entropy * temperature; // T (s - s_0)
-      if (residual > 0) upper = temperature;
-      else lower = temperature;
+      scratch[residual > 0 ? HOTTER : COLDER] = temperature;
+      const lower = scratch[COLDER]!;
+      const upper = scratch[HOTTER]!;
       const step = -residual / members[HEAT]!;
       // The next step would be of second order: this one is the last.
       const isLast = Math.abs(step) < 1e-9;
@@ -98,6 +106,7 @@ export function branchOf(
       if (!isLast && !(next > lower && next < upper)) next = Math.sqrt(lower * upper);
       if (next === temperature || upper - lower <= 4e-16 * upper) {
         if (Math.abs(step) < 1e-12) return;
+        const density = point[DENSITY]!;
         if (lower > coldest && upper < hottest) refuseBoundary(density, density); // s jumps at a temperature
         const allowed = `an entropy that matter of ${density} g/cm^3 has between ${coldest} and ${hottest} K`;
         throw new FermistateError("outside-domain", { argument: "specificEntropy", given: entropy, allowed });
@@ -108,12 +117,12 @@ export function branchOf(
       if (isLast) return;
     }
     const allowed = "an iteration that converges: please report this";
-    throw new FermistateError("no-convergence", { argument: "temperature", given: density, allowed });
+    throw new FermistateError("no-convergence", { argument: "temperature", given: point[DENSITY], allowed });
   }
 
   /** Fills the record and the slopes at its density. */
   function fillAtDensity(record: Float64Array): void {
-    enter(record[BAROTROPE_DENSITY]!);
+    enter(record);
     const specific = members[PRESSURE]!;
     const energy = members[ENERGY]!;
     const thermal = members[PRESSURE_T]!;
@@ -132,8 +141,9 @@ export function branchOf(
   const { logs, pressures, potentials, slopes, temperatures, warmings } = nodes;
   const last = logs.length - 1;
 
-  /** Index of the node at or below the value. */
-  function nodeBelow(values: Float64Array, value: number): number {
+  /** Index of the node at or below the value in the slot TARGET or, for the nodes themselves, LOG. */
+  function nodeBelow(values: Float64Array): number {
+    const value = scratch[values === logs ? LOG : TARGET]!;
     let lower = 0;
     let upper = last;
     while (upper - lower > 1) {
@@ -144,8 +154,9 @@ export function branchOf(
     return lower;
   }
 
-  /** Cubic Hermite start for the temperature on an adiabat, in cell i. */
-  function startTemperature(i: number, log: number): void {
+  /** Cubic Hermite start for the temperature on an adiabat, in cell i, at LOG. */
+  function startTemperature(i: number): void {
+    const log = scratch[LOG]!;
     const step = logs[i + 1]! - logs[i]!;
     const t = (log - logs[i]!) / step;
     const s = 1 - t;
@@ -167,7 +178,8 @@ export function branchOf(
       fillAtDensity(record);
       return;
     }
-    const i = nodeBelow(values, target);
+    scratch[TARGET] = target;
+    const i = nodeBelow(values);
     const width = values[i + 1]! - values[i]!;
     const step = logs[i + 1]! - logs[i]!;
     const t = (target - values[i]!) / width;
@@ -179,7 +191,8 @@ export function branchOf(
     let lower = logs[i]!;
     let upper = logs[i + 1]!;
     if (!(log >= lower && log <= upper)) log = lower + t * step;
-    if (!isotherm) startTemperature(i, log);
+    scratch[LOG] = log;
+    if (!isotherm) startTemperature(i);
     let density = Math.exp(log);
     for (let n = 0; n < 60; n++) {
       record[BAROTROPE_DENSITY] = density;
@@ -217,8 +230,8 @@ export function branchOf(
     potential: [potentials[0]!, potentials[last]!],
     fillAtDensity(record): void {
       if (!isotherm) {
-        const log = Math.log(record[BAROTROPE_DENSITY]!);
-        startTemperature(nodeBelow(logs, log), log);
+        scratch[LOG] = Math.log(record[BAROTROPE_DENSITY]!);
+        startTemperature(nodeBelow(logs));
       }
       fillAtDensity(record);
     },

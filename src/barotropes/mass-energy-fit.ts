@@ -21,8 +21,8 @@ import {
 import { evaluatePieces } from "./polytropic-pieces.js";
 import { type Layer, stacked } from "./stacked.js";
 
-/** zeta and d zeta/d xi at xi, written to slots 0 and 1. */
-export type LogPressure = (xi: number, out: Float64Array) => void;
+/** Writes zeta and d zeta/d xi to slots 0 and 1 of a record whose slot 2 is xi. */
+export type LogPressure = (record: Float64Array) => void;
 
 const c2 = speedOfLight * speedOfLight;
 /** Nodes per unit of xi. */
@@ -31,10 +31,12 @@ const resolution = 500;
 const abscissae = [0.5 - Math.sqrt(0.15), 0.5, 0.5 + Math.sqrt(0.15)] as const;
 const weights = [5 / 18, 8 / 18, 5 / 18] as const;
 
-const Y = 0;
-const RATIO = 1;
-const SLOPE = 2;
-const LOG_PRESSURE = 3;
+/** Slots of the scratch record: xi to evaluate at, y there, q there, width of the integral in ln E. */
+const XI = 0;
+const Y = 1;
+const RATIO = 2;
+const WIDTH = 3;
+const PER_LIGHT_SPEED_SQUARED = 1 / c2;
 
 /**
  * The barotrope of zeta(xi) for xi from `lowest` to `highest`, and below that of a polytrope of the same exponent down to P = 0.
@@ -50,60 +52,67 @@ export function massEnergyFit(
 ): Barotrope {
   const count = Math.round((highest - lowest) * resolution) + 1;
   const step = (highest - lowest) / (count - 1);
-  const out = new Float64Array(2);
+  const out = new Float64Array(3);
   const values = new Float64Array(4);
   const logs = new Float64Array(count); // y
   const densities = new Float64Array(count);
   const pressures = new Float64Array(count);
   const potentials = new Float64Array(count);
 
-  /** q/(1 + q) at xi. */
-  function share(xi: number): number {
-    logPressure(xi, out);
-    const q = 10 ** (out[0]! - xi) / c2;
-    return q / (1 + q);
+  /** Adds q/(1 + q) at the xi of `out`, times a weight, to Y. */
+  function addShare(k: number): void {
+    logPressure(out);
+    const q = Math.exp((out[0]! - out[2]!) * Math.LN10) * PER_LIGHT_SPEED_SQUARED;
+    values[Y]! += (weights[k]! * values[WIDTH]! * q) / (1 + q);
   }
 
-  /** y at xi, from the node below. */
-  function enter(xi: number): void {
-    const place = Math.max(0, Math.min(count - 1, Math.floor((xi - lowest) / step)));
+  /** Sets Y to the integral from node `place` over WIDTH in ln E, plus y at the node. */
+  function integrate(place: number): void {
+    values[Y] = logs[place]!;
+    if (values[WIDTH] === 0) return;
     const node = lowest + place * step;
-    const width = xi - node;
-    let sum = 0;
-    if (width !== 0) for (let k = 0; k < 3; k++) sum += weights[k]! * share(node + width * abscissae[k]!);
-    values[Y] = logs[place]! + sum * width * Math.LN10;
-    logPressure(xi, out);
-    values[RATIO] = 10 ** (out[0]! - xi) / c2;
-    values[SLOPE] = out[1]!;
-    values[LOG_PRESSURE] = out[0]!;
+    const width = values[WIDTH]! / Math.LN10;
+    for (let k = 0; k < 3; k++) {
+      out[2] = node + width * abscissae[k]!;
+      addShare(k);
+    }
   }
 
-  /** Fills the record from xi. */
-  function fill(record: Float64Array, xi: number): void {
-    enter(xi);
-    const q = values[RATIO]!;
+  /** Fills the record from XI. */
+  function fill(record: Float64Array): void {
+    const xi = values[XI]!;
+    const place = Math.max(0, Math.min(count - 1, Math.floor((xi - lowest) / step)));
+    values[WIDTH] = (xi - (lowest + place * step)) * Math.LN10;
+    integrate(place);
+    out[2] = xi;
+    logPressure(out);
+    const massEnergy = 10 ** xi;
+    const pressure = 10 ** out[0]!;
+    const q = (pressure / massEnergy) * PER_LIGHT_SPEED_SQUARED;
     const growth = Math.expm1(values[Y]!);
-    record[BAROTROPE_DENSITY] = 10 ** xi / (1 + growth);
-    record[BAROTROPE_PRESSURE] = 10 ** values[LOG_PRESSURE]!;
+    values[RATIO] = q;
+    record[BAROTROPE_DENSITY] = massEnergy / (1 + growth);
+    record[BAROTROPE_PRESSURE] = pressure;
     record[BAROTROPE_ENERGY] = c2 * growth;
     record[BAROTROPE_POTENTIAL] = c2 * (growth + q * (1 + growth));
-    record[BAROTROPE_GAMMA] = values[SLOPE]! * (1 + q);
+    record[BAROTROPE_GAMMA] = out[1]! * (1 + q);
   }
 
   // At the lowest density: e = e_0 + (P/rho)/(Gamma - 1), rho = E/(c^2 + e) and Gamma = zeta' (1 + q).
-  logPressure(lowest, out);
+  out[2] = lowest;
+  logPressure(out);
   const ratio = 10 ** (out[0]! - lowest) / c2;
   const gamma = out[1]! * (1 + ratio);
   logs[0] = Math.log1p(energyAtZeroDensity / c2) - Math.log1p(-ratio / (gamma - 1));
   const record = new Float64Array(BAROTROPE_LENGTH);
   for (let i = 0; i < count; i++) {
     if (i > 0) {
-      const node = lowest + (i - 1) * step;
-      let sum = 0;
-      for (let k = 0; k < 3; k++) sum += weights[k]! * share(node + step * abscissae[k]!);
-      logs[i] = logs[i - 1]! + sum * step * Math.LN10;
+      values[WIDTH] = step * Math.LN10;
+      integrate(i - 1);
+      logs[i] = values[Y]!;
     }
-    fill(record, lowest + i * step);
+    values[XI] = lowest + i * step;
+    fill(record);
     densities[i] = record[BAROTROPE_DENSITY]!;
     pressures[i] = record[BAROTROPE_PRESSURE]!;
     potentials[i] = record[BAROTROPE_POTENTIAL]!;
@@ -128,15 +137,17 @@ export function massEnergyFit(
     let upper = lowest + high * step;
     let xi = lower + Math.max(0, Math.min(1, t)) * step;
     for (let n = 0; n < 40; n++) {
-      fill(record, xi);
+      values[XI] = xi;
+      fill(record);
       const value = record[slot]!;
       const q = values[RATIO]!;
+      const slope = out[1]!;
       const rate =
         slot === BAROTROPE_DENSITY
           ? value / (1 + q)
           : slot === BAROTROPE_PRESSURE
-            ? value * values[SLOPE]!
-            : (record[BAROTROPE_PRESSURE]! / record[BAROTROPE_DENSITY]!) * values[SLOPE]!;
+            ? value * slope
+            : (record[BAROTROPE_PRESSURE]! / record[BAROTROPE_DENSITY]!) * slope;
       const move = (given - value) / (rate * Math.LN10);
       if (move > 0) lower = xi;
       else upper = xi;

@@ -65,13 +65,16 @@ const PROTONS = 1;
 const PRESSURE_SUM = 2;
 /** dn_B/dmu, per erg. */
 const SLOPE = 3;
+/** Input: mu - (m_p + m_e) c^2, erg; without protons mu - m_n c^2. */
+const KINETIC = 4;
 
-/**
- * Fills baryon density, proton density, pressure and dn_B/dmu from mu - (m_p + m_e) c^2 = `kinetic` (erg), or, without protons, from
- * mu - m_n c^2.
- */
-function fillSums(sums: Float64Array, gas: Float64Array, kinetic: number, protons: boolean): void {
-  sums.fill(0);
+/** Fills baryon density, proton density, pressure and dn_B/dmu from KINETIC. */
+function fillSums(sums: Float64Array, gas: Float64Array, protons: boolean): void {
+  const kinetic = sums[KINETIC]!;
+  sums[BARYONS] = 0;
+  sums[PROTONS] = 0;
+  sums[PRESSURE_SUM] = 0;
+  sums[SLOPE] = 0;
   let ofNeutron = kinetic / neutron.energy;
   if (protons) {
     const k = kinetic / electron.energy; // in m_e c^2, where the pair's rest energy is 1 + M
@@ -129,13 +132,14 @@ export function neutronGas(): NucleonGas {
 }
 
 function gasOf(protons: boolean): NucleonGas {
-  const sums = new Float64Array(4);
+  const sums = new Float64Array(5);
   const gas = new Float64Array(RECORD_LENGTH);
   const excess = (protons ? massOver.pair : massOver.neutron) * c2; // e at density 0
 
-  /** Fills the record from mu without rest energy. */
-  function fill(record: Float64Array, kinetic: number): void {
-    fillSums(sums, gas, kinetic, protons);
+  /** Fills the record from KINETIC. */
+  function fill(record: Float64Array): void {
+    fillSums(sums, gas, protons);
+    const kinetic = sums[KINETIC]!;
     const density = sums[BARYONS]! * atomicMassConstant;
     const pressure = sums[PRESSURE_SUM]!;
     const potential = kinetic / atomicMassConstant;
@@ -151,17 +155,20 @@ function gasOf(protons: boolean): NucleonGas {
   const [lowest, highest] = [1e-10, 1e20];
   const scratch = new Float64Array(BAROTROPE_LENGTH);
   const densityAt = (log: number): number => {
-    fillSums(sums, gas, Math.exp(log), protons);
+    sums[KINETIC] = Math.exp(log);
+    fillSums(sums, gas, protons);
     return Math.log(sums[BARYONS]! * atomicMassConstant);
   };
   const first = bracketedRoot((log) => densityAt(log) - Math.log(lowest), Math.log(1e-40), Math.log(1e-3));
   const last = bracketedRoot((log) => densityAt(log) - Math.log(highest), Math.log(1e-12), Math.log(1e8));
+  const least = Math.exp(first);
   const logs = new Float64Array(count);
   const densities = new Float64Array(count);
   const pressures = new Float64Array(count);
   for (let i = 0; i < count; i++) {
     logs[i] = first + ((last - first) * i) / (count - 1);
-    fill(scratch, Math.exp(logs[i]!));
+    sums[KINETIC] = Math.exp(logs[i]!);
+    fill(scratch);
     densities[i] = scratch[BAROTROPE_DENSITY]!;
     pressures[i] = scratch[BAROTROPE_PRESSURE]!;
   }
@@ -184,7 +191,8 @@ function gasOf(protons: boolean): NucleonGas {
     if (i === count - 1 || !(given >= values[0]!)) log = i === 0 ? logs[0]! : logs[count - 1]!;
     let kinetic = Math.exp(log);
     for (let n = 0; n < 60; n++) {
-      fillSums(sums, gas, kinetic, protons);
+      sums[KINETIC] = kinetic;
+      fillSums(sums, gas, protons);
       const baryons = sums[BARYONS]!;
       const value = byDensity ? baryons * atomicMassConstant : sums[PRESSURE_SUM]!;
       const rate = byDensity ? (kinetic * sums[SLOPE]!) / baryons : (kinetic * baryons) / value;
@@ -203,7 +211,8 @@ function gasOf(protons: boolean): NucleonGas {
         if (upper - lower < 1e-15) break;
       }
     }
-    fill(record, kinetic);
+    sums[KINETIC] = kinetic;
+    fill(record);
     record[slot] = given;
   }
 
@@ -217,11 +226,13 @@ function gasOf(protons: boolean): NucleonGas {
     fillAtPressure: (record) => invert(record, BAROTROPE_PRESSURE),
     fillAtPotential(record): void {
       const given = record[BAROTROPE_POTENTIAL]!;
-      fill(record, Math.max((given - excess) * atomicMassConstant, Math.exp(first)));
+      sums[KINETIC] = Math.max((given - excess) * atomicMassConstant, least);
+      fill(record);
       record[BAROTROPE_POTENTIAL] = given;
     },
   });
-  fillSums(sums, gas, decayEnergy * electron.energy, protons);
+  sums[KINETIC] = decayEnergy * electron.energy;
+  fillSums(sums, gas, protons);
   const neutronOnset = protons ? sums[BARYONS]! * atomicMassConstant : 0;
   return Object.freeze({
     ...parts,

@@ -98,7 +98,9 @@ export function evaluatePieces(pieces: readonly PolytropicPiece[]): PieceEvaluat
       record[BAROTROPE_POTENTIAL] = energies[i]! + gamma * energy;
       return;
     }
-    const growth = (scales[i]! / anchor) * powerIntegral(gamma - 1, Math.log(density / anchor));
+    const log = Math.log(density / anchor);
+    const integral = gamma === 1 ? log : Math.expm1((gamma - 1) * log) / (gamma - 1);
+    const growth = (scales[i]! / anchor) * integral;
     record[BAROTROPE_ENERGY] = energies[i]! + growth + (shift === 0 ? 0 : shift * (1 / anchor - 1 / density));
     record[BAROTROPE_POTENTIAL] = potentials[i]! + gamma * growth;
   }
@@ -140,9 +142,4 @@ export function evaluatePieces(pieces: readonly PolytropicPiece[]): PieceEvaluat
       return ((gamma * (gamma - 1) * scales[i]!) / anchors[i]!) * q ** (gamma - 1);
     },
   };
-}
-
-/** (exp(a L) - 1)/a, and L where a = 0. */
-function powerIntegral(exponent: number, log: number): number {
-  return exponent === 0 ? log : Math.expm1(exponent * log) / exponent;
 }

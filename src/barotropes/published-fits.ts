@@ -67,7 +67,8 @@ export function logPressureOf({ form, coefficients }: PublishedFit): LogPressure
   // Places of (a + b xi) f(c(d - xi)): a, then d.
   const straight = form === 2004 ? [6, 9, 10, 13, 14, 17] : [6, 5, 9, 12, 13, 16];
   const bumps = form === 2004 ? [] : [17, 20];
-  return (xi, out) => {
+  return (out) => {
+    const xi = out[2]!;
     const numerator = a[0]! + xi * (a[1]! + a[2]! * xi * xi);
     const denominator = 1 + a[3]! * xi;
     const crust = numerator / denominator;

@@ -15,7 +15,7 @@ export interface PublishedBarotrope {
   readonly source: string;
   /** How the numbers got here, in words. */
   readonly howKnown: string;
-  /** Densities the source gives it for, g/cm^3: baryon mass density of a piecewise polytrope, mass-energy of a formula. */
+  /** Densities at which it is used here, g/cm^3: baryon mass density of a piecewise polytrope, mass-energy of a formula. */
   readonly range: readonly [lowest: number, highest: number];
   /** The parameters, in the order of the source. */
   readonly parameters: readonly number[];
