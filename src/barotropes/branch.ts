@@ -26,7 +26,7 @@ export type Path =
   | { readonly kind: "adiabat"; readonly specificEntropy: number };
 
 /** Why a branch ends where it does: the density asked for, the surface P = 0 above it, or radiation alone. */
-export type BranchEnd = "density" | "surface" | "radiation";
+type BranchEnd = "density" | "surface" | "radiation";
 
 /** One phase along the path, between two densities; an inversion beyond its ends gives the nearest end. */
 export interface Branch extends Layer {

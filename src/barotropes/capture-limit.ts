@@ -16,7 +16,7 @@ import { type CaptureThreshold, captureThresholds } from "../regime/capture.js";
  * import { firstElectronCapture } from "fermistate/barotropes";
  * const first = firstElectronCapture(composition({ C12: 0.5, O16: 0.5 }));
  * first?.species; // => "O16"
- * first?.densityWithLattice; // => 2.06e10
+ * first?.densityWithLattice; // => 2.057e10
  * ```
  */
 export function firstElectronCapture(composition: Composition): CaptureThreshold | undefined {

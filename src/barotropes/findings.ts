@@ -38,7 +38,7 @@ const depth = 1e-14;
  * import { barotropeFindings, publishedBarotrope } from "fermistate/barotropes";
  * const [finding] = barotropeFindings(publishedBarotrope("APR4 piecewise"));
  * finding?.code; // => "acausal"
- * finding?.density; // => 1.4e15
+ * finding?.density; // => 1.446e15
  * ```
  */
 export function barotropeFindings(barotrope: Barotrope): readonly BarotropeFinding[] {

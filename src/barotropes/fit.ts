@@ -73,8 +73,8 @@ const mostPieces = 20;
  * import { barotrope, fitPiecewisePolytrope } from "fermistate/barotropes";
  * const cold = barotrope(whiteDwarfMatter(), composition({ C12: 0.5, O16: 0.5 }), { temperature: 0 });
  * const { barotrope: fit, report } = fitPiecewisePolytrope(cold, { pieces: 5, density: [1e4, 1e10] });
- * fit.pieces.map((piece) => piece.gamma); // => [1.6, 1.5, 1.4, 1.3, 1.3]
- * report.pressure.max; // => 0.0175
+ * fit.pieces.map((piece) => piece.gamma); // => [1.680, 1.606, 1.502, 1.403, 1.345]
+ * report.pressure.max; // => 0.0176
  * ```
  */
 export function fitPiecewisePolytrope(
@@ -188,7 +188,7 @@ function polytropeOf(
 }
 
 /** One row of the columns. */
-export interface Row {
+interface Row {
   readonly density: number;
   readonly pressure: number;
   readonly energy: number | undefined;

@@ -52,8 +52,8 @@ export type BarotropeOptions =
  * import { barotrope } from "fermistate/barotropes";
  * const core = composition({ C12: 0.5, O16: 0.5 });
  * const cold = barotrope(whiteDwarfMatter(), core, { temperature: 0 });
- * cold.density[0]; // => 22.68
- * cold.state(1e6).pressure; // => 2.5e22
+ * cold.density[0]; // => 25.85
+ * cold.state(1e6).pressure; // => 2.54361e22
  * ```
  */
 export function barotrope(

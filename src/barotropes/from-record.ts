@@ -33,7 +33,7 @@ export function completeBarotrope(parts: BarotropeParts): Barotrope {
 }
 
 /** The state that a filled record holds. */
-export function stateOf(record: Float64Array): BarotropeState {
+function stateOf(record: Float64Array): BarotropeState {
   const density = record[BAROTROPE_DENSITY]!;
   const pressure = record[BAROTROPE_PRESSURE]!;
   const specificEnergy = record[BAROTROPE_ENERGY]!;

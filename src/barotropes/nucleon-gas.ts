@@ -117,9 +117,9 @@ function fillSums(sums: Float64Array, gas: Float64Array, protons: boolean): void
  * ```ts
  * import { neutronProtonElectronGas } from "fermistate/barotropes";
  * const gas = neutronProtonElectronGas();
- * gas.protonFraction(1e9); // => 0.0128
- * gas.state(1e9).pressure; // => 8.472e24
- * gas.neutronOnset; // => 1.2e7
+ * gas.protonFraction(1e9); // => 0.01269
+ * gas.state(1e9).pressure; // => 8.550e24
+ * gas.neutronOnset; // => 1.2216e7
  * ```
  */
 export function neutronProtonElectronGas(): NucleonGas {

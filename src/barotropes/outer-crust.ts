@@ -94,7 +94,7 @@ const deep = 3e30;
  * import { outerCrust } from "fermistate/barotropes";
  * const crust = outerCrust();
  * crust.layers[0]?.nuclide; // => "Fe56"
- * crust.layers[0]?.density[1]; // => 8.22e6
+ * crust.layers[0]?.density[1]; // => 8.237e6
  * const iron = crust.layers.find((layer) => layer.nuclide === "Fe58");
  * iron?.density; // => [2.639e8, 2.746e8]
  * ```

@@ -72,7 +72,7 @@ export interface PiecewisePolytrope extends BarotropicContribution {
  *   referenceDensity: 1e6,
  *   referencePressure: 2e22,
  * });
- * soft.state(1e9).pressure; // => 2e26
+ * soft.state(1e9).pressure; // => 2.00000e26
  * soft.state(1e9).gamma1; // => 1.333333333333333
  * ```
  */

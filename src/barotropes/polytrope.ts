@@ -67,7 +67,7 @@ export interface DegenerateElectrons {
  * import { degenerateElectrons, polytrope } from "fermistate/barotropes";
  * const core = composition({ C12: 0.5, O16: 0.5 });
  * const cold = polytrope(degenerateElectrons(core).nonRelativistic);
- * cold.state(1e4).pressure; // => 1.46718e19
+ * cold.state(1e4).pressure; // => 1.467266e19
  * combine(cold).state(1e4, 0, core).gamma1; // => 1.666666666666667
  * polytrope({ constant: 1e13, index: 1.5 }).state(8).specificEnergy; // => 6.0e13
  * ```

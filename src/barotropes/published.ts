@@ -60,7 +60,7 @@ function list(): readonly PublishedBarotrope[] {
  * @example
  * ```ts
  * import { publishedBarotrope } from "fermistate/barotropes";
- * publishedBarotrope("BSk21").state(1e15).pressure; // => 1.7e35
+ * publishedBarotrope("BSk21").state(1e15).pressure; // => 2.787e35
  * publishedBarotrope("SLy piecewise").state(1e15).gamma1; // => 2.851
  * ```
  */

@@ -35,7 +35,7 @@ const all = (entry: string): string => `export * from "./dist/${entry}.js";`;
  */
 const limits: Record<string, number> = {
   index: 80_000,
-  barotropes: 100_000,
+  barotropes: 81_000,
   contributions: 3_000,
   grids: 8_500,
   charts: 20_000,
