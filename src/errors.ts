@@ -17,6 +17,7 @@
  * - `unavailable-quantity`: no contribution of this equation of state knows the quantity
  * - `unstable`: the sum of contributions has no positive pressure, resists neither compression nor heating, or holds NaN
  * - `no-convergence`: an iteration did not reach its promise (a defect of the library: please report)
+ * - `integration-failed`: a differential equation could not be integrated: step too small, too many steps, slope not finite
  * - `too-large`: a request beyond the stated size limit
  * - `invalid-option`: an option or a command-line argument that does not exist or cannot be read
  * - `file-not-written`: the file system refused; no partial file is left
@@ -31,6 +32,7 @@ export type ErrorCode =
   | "unavailable-quantity"
   | "unstable"
   | "no-convergence"
+  | "integration-failed"
   | "too-large"
   | "invalid-option"
   | "file-not-written";
