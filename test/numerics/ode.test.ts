@@ -44,8 +44,8 @@ describe("accuracy", () => {
       const made = orbit(0.5, { relativeTolerance: tolerance, absoluteTolerance: tolerance });
       made.integrate(2 * Math.PI);
       const [x, y] = exactOrbit(0.5, 2 * Math.PI);
-      // Errors of a period grow as time squared; 60 was measured at most over these tolerances.
-      expect(Math.hypot(made.point[1]! - x, made.point[2]! - y)).toBeLessThan(200 * tolerance);
+      // 2.4, 5.7, 20 and 59 tolerances measured, in 14 to 59 steps.
+      expect(Math.hypot(made.point[1]! - x, made.point[2]! - y)).toBeLessThan(100 * tolerance);
     },
   );
 
@@ -128,7 +128,7 @@ describe("failures say which", () => {
   const code = (argument: string) => expect.objectContaining({ code: "integration-failed", argument });
 
   test("a pole of the solution: the step becomes too small", () => {
-    const made = integrator({ size: 1, fillSlope: (point, slope) => void (slope[1] = point[1]! ** 2) });
+    const made = integrator({ size: 1, fillSlope: (point, slope) => slope.fill(point[1]! ** 2) });
     made.point.set([0, 1]); // 1/(1 - x)
     expect(() => made.integrate(2)).toThrow(code("step"));
     expect(made.point[0]).toBeCloseTo(1, 8);
@@ -140,7 +140,7 @@ describe("failures say which", () => {
   });
 
   test("a slope that is not a number, at once and on the way", () => {
-    const made = integrator({ size: 1, fillSlope: (point, slope) => void (slope[1] = Math.sqrt(1 - point[0]!)) });
+    const made = integrator({ size: 1, fillSlope: (point, slope) => slope.fill(Math.sqrt(1 - point[0]!)) });
     made.point.set([2, 1]);
     expect(() => made.integrate(3)).toThrow(code("slope"));
     made.point.set([0, 1]);

@@ -21,8 +21,8 @@ test.each(problems)("%s", (_, f, a, b, root) => {
     const found = findRoot(f, low, high);
     expect(Math.abs(found.x - root)).toBeLessThanOrEqual(Math.max(5e-16 * Math.abs(root), root === 0 ? 1e-12 : 0));
     expect(found.residual).toBe(f(found.x));
-    // x^9 and the sign are bisected down to the smallest doubles; the others take 15 at most.
-    expect(found.evaluations).toBeLessThanOrEqual(root === 0 ? 400 : 70);
+    // Measured: 122 for the zero of x^9, 54 for the jump (bisection), 16 at most for the others.
+    expect(found.evaluations).toBeLessThanOrEqual(root === 0 ? 150 : root === 1 / 3 ? 60 : 20);
   }
 });
 

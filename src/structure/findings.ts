@@ -1,0 +1,58 @@
+/** Findings about a star: what a reader of its numbers should know before using them. */
+
+/**
+ * What was found.
+ *
+ * - `acausal`: sound is faster than light somewhere in the star
+ * - `unstable-star`: the mass falls with central density: the star is unstable against radial collapse or expansion
+ * - `relativity-neglected`: a Newtonian star in which general relativity changes more than 1 % of P_c + rho_c c^2
+ * - `cut-surface`: the matter ends at a pressure above zero; what lies outside is missing
+ */
+export type StarFindingCode = "acausal" | "unstable-star" | "relativity-neglected" | "cut-surface";
+
+/** One finding; frozen. */
+export interface StarFinding {
+  /** What was found. */
+  readonly code: StarFindingCode;
+  /** The number judged. */
+  readonly value: number;
+  /** The limit it has crossed. */
+  readonly threshold: number;
+  /** One plain sentence: what it means for the user. */
+  readonly message: string;
+}
+
+/** The numbers that are judged. */
+export interface Judged {
+  /** (c_s/c)^2 at its largest; 0 in Newton's theory. */
+  readonly fastest: number;
+  /** d ln M/d ln rho_c. */
+  readonly massSlope: number;
+  /** P_c/(rho_c c^2) of a Newtonian star; 0 in Einstein's theory. */
+  readonly neglected: number;
+  /** Pressure at the surface over that at the centre. */
+  readonly surfacePressure: number;
+}
+
+/** Findings about a star. */
+export function starFindings(judged: Judged): readonly StarFinding[] {
+  const found: StarFinding[] = [];
+  const add = (code: StarFindingCode, value: number, threshold: number, message: string): void => {
+    found.push(Object.freeze({ code, value, threshold, message }));
+  };
+  const { fastest, massSlope, neglected, surfacePressure } = judged;
+  if (fastest > 1) {
+    add("acausal", Math.sqrt(fastest), 1, "Sound is faster than light in this star: the matter cannot be as it is described.");
+  }
+  if (massSlope < 0) {
+    add("unstable-star", massSlope, 0, "The mass falls with rising central density: this equilibrium does not last.");
+  }
+  if (neglected > 0.01) {
+    add("relativity-neglected", neglected, 0.01, "Newton's theory, where general relativity changes the star by per cents.");
+  }
+  if (surfacePressure > 1e-10) {
+    const message = "The matter ends at a pressure above zero: the layers outside, and their radius and mass, are missing.";
+    add("cut-surface", surfacePressure, 1e-10, message);
+  }
+  return Object.freeze(found);
+}
