@@ -62,6 +62,7 @@ export default defineConfig([
       contributions: "src/contributions/index.ts",
       files: "src/files/index.ts",
       certify: "src/certify/index.ts",
+      structure: "src/structure/index.ts",
     },
     format: ["esm", "cjs"],
     platform: "neutral",

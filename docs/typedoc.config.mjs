@@ -19,6 +19,7 @@ const options = {
     "charts/index",
     "files/index",
     "certify/index",
+    "structure/index",
   ].map((file) => `../src/${file}.ts`),
   tsconfig: "../test/tsconfig.json",
   out: "api",

@@ -44,7 +44,8 @@ export function starFindings(judged: Judged): readonly StarFinding[] {
   if (fastest > 1) {
     add("acausal", Math.sqrt(fastest), 1, "Sound is faster than light in this star: the matter cannot be as it is described.");
   }
-  if (massSlope < 0) {
+  // A star at its maximum, found to rounding, is not called unstable.
+  if (massSlope < -1e-7) {
     add("unstable-star", massSlope, 0, "The mass falls with rising central density: this equilibrium does not last.");
   }
   if (neglected > 0.01) {

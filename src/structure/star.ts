@@ -145,6 +145,7 @@ export function starMaker(
     const { centre } = solver.result;
     centre[BAROTROPE_DENSITY] = centralDensity;
     barotrope.fillAtDensity(centre);
+    centre[BAROTROPE_DENSITY] = centralDensity; // a barotrope may return it rounded
     const solution = keepsProfile ? denseSolution(solver.result.surface.length - 1) : undefined;
     solver.solve(solution?.add);
     const isGeneral = relativity === "general";
