@@ -42,17 +42,28 @@ export function starFindings(judged: Judged): readonly StarFinding[] {
   };
   const { fastest, massSlope, neglected, surfacePressure } = judged;
   if (fastest > 1) {
-    add("acausal", Math.sqrt(fastest), 1, "Sound is faster than light in this star: the matter cannot be as it is described.");
+    add(
+      "acausal",
+      Math.sqrt(fastest),
+      1,
+      "Sound is faster than light in this star: the matter cannot be as it is described.",
+    );
   }
   // A star at its maximum, found to rounding, is not called unstable.
   if (massSlope < -1e-7) {
     add("unstable-star", massSlope, 0, "The mass falls with rising central density: this equilibrium does not last.");
   }
   if (neglected > 0.01) {
-    add("relativity-neglected", neglected, 0.01, "Newton's theory, where general relativity changes the star by per cents.");
+    add(
+      "relativity-neglected",
+      neglected,
+      0.01,
+      "Newton's theory, where general relativity changes the star by per cents.",
+    );
   }
   if (surfacePressure > 1e-10) {
-    const message = "The matter ends at a pressure above zero: the layers outside, and their radius and mass, are missing.";
+    const message =
+      "The matter ends at a pressure above zero: the layers outside, and their radius and mass, are missing.";
     add("cut-surface", surfacePressure, 1e-10, message);
   }
   return Object.freeze(found);

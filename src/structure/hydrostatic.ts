@@ -49,6 +49,8 @@ const C2 = speedOfLight * speedOfLight;
 const FOUR_PI = 4 * Math.PI;
 /** The series at the centre ends here, in units of the smaller of w_c - w_surface and dP/drho: its error is this cubed. */
 const CENTRE = 1e-5;
+/** Nor does it end nearer to the centre than this, in units of w_c - w_surface, unless a core is smaller: rounding. */
+const SHALLOWEST = 1e-7;
 /** A core above a density jump that is thinner than this in w is left out: its mass is this to the power 3/2. */
 const THINNEST_CORE = 1e-9;
 /** Ratio of successive ranges of s towards the surface. */
@@ -70,7 +72,7 @@ export interface HydrostaticOptions {
 }
 
 /** What an integration leaves. */
-export interface HydrostaticResult {
+interface HydrostaticResult {
   /** Record of the matter at the centre. */
   readonly centre: Float64Array;
   /** u, v, binding at the surface in their slots. */
@@ -207,7 +209,8 @@ export function hydrostaticSolver(barotrope: Barotrope, options: HydrostaticOpti
     const energy = record[BAROTROPE_ENERGY]!;
     const pressure = record[BAROTROPE_PRESSURE]!;
     const stiffness = record[BAROTROPE_GAMMA]! * pressure;
-    point[0] = Math.sqrt(whole - CENTRE * Math.min(range, stiffness / density));
+    const wished = Math.max(CENTRE * Math.min(range, stiffness / density), SHALLOWEST * whole);
+    point[0] = Math.sqrt(whole - Math.min(wished, 0.1 * range));
     const depth = whole - point[0] ** 2;
     const enthalpy = isGeneral ? C2 + energy + pressure / density : C2;
     const sigma = isGeneral ? density * (1 + energy / C2) : density;
@@ -238,7 +241,7 @@ export function hydrostaticSolver(barotrope: Barotrope, options: HydrostaticOpti
     // The derivatives begin with the rounding of v over the depth there, which dies out: they are held more loosely.
     const loose = Math.max(tolerance, 1e-8);
     absolute[DU - 1] = loose * u1;
-    absolute[DV - 1] = (loose * v) / whole;
+    absolute[DV - 1] = v * Math.max(loose / whole, (10 * Number.EPSILON) / depth);
     if (tides) absolute[TIDE - 1] = tolerance;
     solver.firstStep = 0;
   }
@@ -278,7 +281,9 @@ export function hydrostaticSolver(barotrope: Barotrope, options: HydrostaticOpti
       .filter((w) => w > surfacePotential && w < high - THINNEST_CORE * whole);
     const ends = [surfacePotential, ...below];
     // A centre on top of a jump: the star of the phase below, since the core of the denser phase has no extent.
-    const top = barotrope.jumps.find((jump) => jump.potential <= high && jump.potential >= high - THINNEST_CORE * whole);
+    const top = barotrope.jumps.find(
+      (jump) => jump.potential <= high && jump.potential >= high - THINNEST_CORE * whole,
+    );
     if (top !== undefined) high = top.potential;
     for (let i = ends.length - 1; i >= 0; i--) {
       const low = ends[i]!;

@@ -13,8 +13,8 @@ import { requireTolerance, type Star, type StarOptions, starMaker } from "./star
 /**
  * Why masses end.
  *
- * - `relativity`: the same matter would still be stable at this density in Newton's theory
- * - `softening`: the matter itself gives way (its exponent falls below 4/3 on average), in Newton's theory too
+ * - `relativity`: general relativity alone; in Newton's theory the mass of this matter still rises, to ten times the density
+ * - `softening`: the matter itself gives way (its exponent falls below 4/3 on average), so Newton's theory has a maximum too
  * - `density-jump`: the phase above a density jump does not carry the star
  * - `end-of-domain`: the mass still rises where the barotrope ends (electron capture, say: `validity` tells)
  * - `end-of-range`: the mass still rises at the end of the range asked for; no maximum in it
@@ -77,7 +77,12 @@ export interface MaximumMassOptions extends StarOptions {
 export function maximumMass(barotrope: Barotrope, options: MaximumMassOptions = {}): MaximumMass {
   const tolerance = requireTolerance(options.tolerance);
   const make = starMaker(barotrope, options);
-  const rough = starMaker(barotrope, { ...options, rotation: false, tides: false, tolerance: Math.max(tolerance, 1e-8) });
+  const rough = starMaker(barotrope, {
+    ...options,
+    rotation: false,
+    tides: false,
+    tolerance: Math.max(tolerance, 1e-8),
+  });
   const turning: { readonly kind: "maximum" | "minimum"; readonly star: Star; readonly atJump: boolean }[] = [];
   let before: Star | undefined;
   for (const { density, isAcross } of densityGrid(barotrope, options.range)) {
@@ -129,10 +134,14 @@ function turningDensity(make: (density: number) => Star, low: Star, high: Star):
   }).x;
 }
 
+/** Relativity, unless Newton's theory has a maximum too, at this density or not ten times higher. */
 function reasonOf(barotrope: Barotrope, star: Star, options: MaximumMassOptions): MassLimitReason {
-  if (star.relativity === "newton") return "softening";
+  const { centralDensity } = star;
+  const highest = barotrope.density[1];
+  if (star.relativity === "newton" || centralDensity >= highest) return "softening";
   const inNewton = starMaker(barotrope, { ...options, relativity: "newton", rotation: false, tides: false });
-  return inNewton(star.centralDensity).massSlope > 0 ? "relativity" : "softening";
+  const above = densityGrid(barotrope, [centralDensity, Math.min(10 * centralDensity, highest)]);
+  return above.some(({ density }) => inNewton(density).massSlope < 0) ? "softening" : "relativity";
 }
 
 function messageOf(reason: MassLimitReason, barotrope: Barotrope): string {

@@ -42,7 +42,11 @@ export const nonDegenerateRadiationShare: number = Math.PI ** 4 / (960 + Math.PI
  * ```
  * @throws `not-a-number`, `out-of-range`, `invalid-option`
  */
-export function standardModel(mass: number, meanMolecularWeight: number, options: MassUnitOptions = {}): PressureShares {
+export function standardModel(
+  mass: number,
+  meanMolecularWeight: number,
+  options: MassUnitOptions = {},
+): PressureShares {
   return solveQuartic(quarticTerm(mass, meanMolecularWeight, options) / (48 * OMEGA_3 * OMEGA_3));
 }
 
@@ -71,7 +75,8 @@ function quarticTerm(mass: number, meanMolecularWeight: number, options: MassUni
   requirePositive("mass", mass, "g");
   requirePositive("meanMolecularWeight", meanMolecularWeight, "mu");
   // In this order no factor leaves the range of doubles.
-  const square = gravitationalConstant * mass * ((meanMolecularWeight * massOfUnit(options.massUnit)) / boltzmannConstant) ** 2;
+  const square =
+    gravitationalConstant * mass * ((meanMolecularWeight * massOfUnit(options.massUnit)) / boltzmannConstant) ** 2;
   return Math.PI * gravitationalConstant * radiationConstant * square * square;
 }
 

@@ -98,7 +98,11 @@ function densitiesOf({ centralDensities, range, count = 100 }: SequenceOptions):
   }
   if (centralDensities !== undefined) return centralDensities;
   if (!Number.isInteger(count) || count < 2 || count > 100_000) {
-    throw new FermistateError("out-of-range", { argument: "count", given: count, allowed: "a whole number, 2 to 100000" });
+    throw new FermistateError("out-of-range", {
+      argument: "count",
+      given: count,
+      allowed: "a whole number, 2 to 100000",
+    });
   }
   const [low, high] = requireRange(range!);
   return Float64Array.from({ length: count }, (_, i) =>

@@ -28,8 +28,8 @@ export interface StarOptions {
    */
   readonly relativity?: Relativity;
   /**
-   * Relative error per step of the integration, 1e-15 to 1e-3; mass and radius follow it in proportion.
-   * @defaultValue 1e-10
+   * Relative error per step of the integration, 1e-15 to 1e-3; the error of mass and radius is smaller than it.
+   * @defaultValue 1e-11
    */
   readonly tolerance?: number;
   /**
@@ -101,8 +101,7 @@ export interface Star {
   readonly profile: StarProfile | undefined;
 }
 
-/** The default tolerance. */
-export const DEFAULT_TOLERANCE = 1e-10;
+const DEFAULT_TOLERANCE = 1e-11;
 
 /**
  * The star of a central density.

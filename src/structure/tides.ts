@@ -20,6 +20,6 @@ export function loveNumber(y: number, compactness: number): number {
     term *= ((k + 3) / (k + 6)) * z;
   }
   const growing = (2 * (1 - compactness)) / (1 - z);
-  const decaying = -3 + z / (1 - z) + slope / sum;
+  const decaying = -3 - z / (1 - z) - slope / sum; // z falls outwards
   return ((1 - z) ** 2 / (2 * sum)) * ((growing - y) / (y - decaying));
 }

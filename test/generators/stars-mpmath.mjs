@@ -190,10 +190,13 @@ def star(n, b, order=26, digits=28):
         state = [sum(X[k]*h**k for k in range(top+1)) for X in (Q, M, MB, O, O1, Hh, H1)]
         r += h
     q, m, mbary, o, o1, H, H1 = state
-    # to the surface: q = 0, linear (q is 1e-11 of the centre, the error its square)
+    # to the surface: q = 0, linear (q is 1e-11 of the centre: the error is its square, in k_2 its power 1.75)
     nu = 2*(m/r)/(r*(1-2*m/r))
     d = q*2*(n+1)/nu
-    r += d; o += d*o1; y = r*(H1/H)
+    # first order in d; the stiffness term of H'' goes like q^(n-1), its integral is its value times d/n
+    H1 += d*(-A_[0]*H1 - B_[0]*H) - H*pi4*EPD[0]*ID[0]*d*(1/n - 1)
+    o1 += d*(-4*o1/r + J_[0]*(o1 + 4*o/r)); o += d*o1; H += d*H1
+    r += d; y = r*(H1/H)
     I = r**4*o1/6/(o + r*o1/3)                                         # J = r^4 w'/6, Omega = w + 2J/r^3
     C = m/r
     k2 = mpf(8)/5*C**5*(1-2*C)**2*(2 + 2*C*(y-1) - y)/(2*C*(6 - 3*y + 3*C*(5*y-8)) + 4*C**3*(13 - 11*y + C*(3*y-2) + 2*C**2*(1+y)) + 3*(1-2*C)**2*(2 - y + 2*C*(y-1))*log(1-2*C))

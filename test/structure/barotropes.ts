@@ -88,6 +88,47 @@ export function polytrope(constant: number, index: number, highest = 1e30): Baro
   });
 }
 
+/**
+ * Two polytropes that meet at a density: P continuous, d ln P/d ln rho not. `isMarked` lists the kink as a density jump of no
+ * height, which puts it at the end of an integration.
+ */
+export function kinked(
+  constant: number,
+  index: number,
+  kink: number,
+  indexAbove: number,
+  isMarked: boolean,
+): Barotrope {
+  const atKink = constant * kink ** (1 / index); // P/rho
+  const energy = index * atKink;
+  const potential = energy + atKink;
+  const above = atKink * kink ** (-1 / indexAbove);
+  /** w = potential + (n + 1)(P/rho - its value at the kink) above. */
+  const densityOf = (w: number): number =>
+    w <= potential
+      ? (w / ((index + 1) * constant)) ** index
+      : (((w - potential) / (indexAbove + 1) + atKink) / above) ** indexAbove;
+  return barotropeOf({
+    name: `polytropes of index ${index} and ${indexAbove}`,
+    density: [0, 1e30],
+    jumps: isMarked ? [{ pressure: kink * atKink, potential, densities: [kink, kink] }] : [],
+    fill(density, record) {
+      const isBelow = density <= kink;
+      const specific = isBelow ? constant * density ** (1 / index) : above * density ** (1 / indexAbove);
+      record[BAROTROPE_DENSITY] = density;
+      record[BAROTROPE_PRESSURE] = specific * density;
+      record[BAROTROPE_ENERGY] = isBelow ? index * specific : energy + indexAbove * (specific - atKink);
+      record[BAROTROPE_POTENTIAL] = isBelow
+        ? (index + 1) * specific
+        : potential + (indexAbove + 1) * (specific - atKink);
+      record[BAROTROPE_GAMMA] = 1 + 1 / (isBelow ? index : indexAbove);
+    },
+    fromDensity: (density) => density,
+    fromPressure: () => Number.NaN, // stars do not ask for it
+    fromPotential: densityOf,
+  });
+}
+
 /** P and e of cold fermions in units of m c^2/(pi^2 lambdabar^3) and of it: series for small x, closed forms above. */
 function coldGas(x: number): { pressure: number; energy: number } {
   const root = Math.sqrt(1 + x * x);
