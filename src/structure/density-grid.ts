@@ -50,7 +50,7 @@ export function requireRange(
   for (const end of range) requireFinite("range", end, allowed);
   const [low, high] = range;
   if (low <= 0 || low >= high || low < lowest || high > highest) {
-    throw new FermistateError("out-of-range", { argument: "range", given: range, allowed });
+    throw new FermistateError("out-of-range", { argument: "range", given: `${low} to ${high}`, allowed });
   }
   return [low, high];
 }

@@ -30,8 +30,8 @@ export interface Judged {
   readonly massSlope: number;
   /** P_c/(rho_c c^2) of a Newtonian star; 0 in Einstein's theory. */
   readonly neglected: number;
-  /** Pressure at the surface over that at the centre. */
-  readonly surfacePressure: number;
+  /** P/rho at the surface over G M/R: the share of the radius that is missing, but for a factor of a few. */
+  readonly missing: number;
 }
 
 /** Findings about a star. */
@@ -40,7 +40,7 @@ export function starFindings(judged: Judged): readonly StarFinding[] {
   const add = (code: StarFindingCode, value: number, threshold: number, message: string): void => {
     found.push(Object.freeze({ code, value, threshold, message }));
   };
-  const { fastest, massSlope, neglected, surfacePressure } = judged;
+  const { fastest, massSlope, neglected, missing } = judged;
   if (fastest > 1) {
     add(
       "acausal",
@@ -50,7 +50,7 @@ export function starFindings(judged: Judged): readonly StarFinding[] {
     );
   }
   // A star at its maximum, found to rounding, is not called unstable.
-  if (massSlope < -1e-7) {
+  if (massSlope < -1e-6) {
     add("unstable-star", massSlope, 0, "The mass falls with rising central density: this equilibrium does not last.");
   }
   if (neglected > 0.01) {
@@ -61,10 +61,10 @@ export function starFindings(judged: Judged): readonly StarFinding[] {
       "Newton's theory, where general relativity changes the star by per cents.",
     );
   }
-  if (surfacePressure > 1e-10) {
+  if (missing > 1e-8) {
     const message =
-      "The matter ends at a pressure above zero: the layers outside, and their radius and mass, are missing.";
-    add("cut-surface", surfacePressure, 1e-10, message);
+      "The matter ends at a pressure above zero: layers are missing, this share of the radius or some times as much.";
+    add("cut-surface", missing, 1e-8, message);
   }
   return Object.freeze(found);
 }

@@ -57,7 +57,7 @@ export interface LaneEmden {
  * The polytrope of index n, for any n from 0 up to, but not including, 5 (where the radius becomes infinite).
  *
  * Relative error of xi_1 and of the mass: below 1e-14 for n <= 4.5. Near 5, xi_1 = 32 sqrt(3)/(pi (5 - n)) and the rounding
- * of n alone moves it by 5e-16/(5 - n); measured 3e-14 at 4.9, 5e-13 at 4.99. Inside, theta is good to 1e-13 absolute.
+ * of n alone moves it by 5e-16/(5 - n); measured 3e-14 at 4.9, 2e-13 at 4.99, 3e-12 at 4.999. Inside, theta is good to 1e-13 absolute.
  *
  * ```ts
  * import { laneEmden } from "fermistate/structure";
@@ -157,7 +157,7 @@ const FARTHEST = Math.sqrt(50);
  * ```ts
  * import { isothermalSphere } from "fermistate/structure";
  *
- * isothermalSphere(10).at(10).potential; // => 3.73646
+ * isothermalSphere(10).at(10).potential; // => 3.73656
  * ```
  * @throws `not-a-number`, `out-of-range`
  */
@@ -202,8 +202,8 @@ export interface BonnorEbertSphere {
  * ```ts
  * import { bonnorEbertSphere } from "fermistate/structure";
  *
- * bonnorEbertSphere().mass; // => 1.18225
- * bonnorEbertSphere().densityRatio; // => 14.0419
+ * bonnorEbertSphere().mass; // => 1.18223
+ * bonnorEbertSphere().densityRatio; // => 14.0420
  * ```
  */
 export function bonnorEbertSphere(): BonnorEbertSphere {

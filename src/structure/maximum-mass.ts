@@ -77,19 +77,16 @@ export interface MaximumMassOptions extends StarOptions {
 export function maximumMass(barotrope: Barotrope, options: MaximumMassOptions = {}): MaximumMass {
   const tolerance = requireTolerance(options.tolerance);
   const make = starMaker(barotrope, options);
-  const rough = starMaker(barotrope, {
-    ...options,
-    rotation: false,
-    tides: false,
-    tolerance: Math.max(tolerance, 1e-8),
-  });
+  const bare = { ...options, rotation: false, tides: false };
+  const accurate = starMaker(barotrope, bare);
+  const rough = starMaker(barotrope, { ...bare, tolerance: Math.max(tolerance, 1e-8) });
   const turning: { readonly kind: "maximum" | "minimum"; readonly star: Star; readonly atJump: boolean }[] = [];
   let before: Star | undefined;
   for (const { density, isAcross } of densityGrid(barotrope, options.range)) {
     const star = rough(density);
     if (before !== undefined && before.massSlope * star.massSlope < 0) {
       const kind = before.massSlope > 0 ? "maximum" : "minimum";
-      const at = isAcross ? before.centralDensity : turningDensity(rough, before, star);
+      const at = isAcross ? before.centralDensity : turningDensity(accurate, before, star);
       turning.push({ kind, star: make(at), atJump: isAcross });
     }
     before = star;

@@ -58,7 +58,7 @@ export function standardModel(
  * import { solarMass } from "fermistate";
  * import { centralRadiationBound } from "fermistate/structure";
  *
- * centralRadiationBound(solarMass, 1).radiation; // => 0.0287
+ * centralRadiationBound(solarMass, 1).radiation; // => 0.02889
  * ```
  * @throws `not-a-number`, `out-of-range`, `invalid-option`
  */

@@ -176,6 +176,7 @@ function starOf(solver: HydrostaticSolver, relativity: Relativity, profile: Star
   const root = Math.sqrt(1 - 2 * compactness);
   const love = Number.isNaN(result.tide) ? undefined : loveNumber(result.tide, isGeneral ? compactness : 0);
   const inertia = result.rotation;
+  const surfacePressure = surfaceMatter[BAROTROPE_PRESSURE]!;
   return Object.freeze({
     relativity,
     centralDensity: centre[BAROTROPE_DENSITY]!,
@@ -201,7 +202,7 @@ function starOf(solver: HydrostaticSolver, relativity: Relativity, profile: Star
       fastest: result.fastest,
       massSlope: result.massSlope,
       neglected: isGeneral ? 0 : centre[BAROTROPE_PRESSURE]! / (centre[BAROTROPE_DENSITY]! * c2),
-      surfacePressure: surfaceMatter[BAROTROPE_PRESSURE]! / centre[BAROTROPE_PRESSURE]!,
+      missing: surfacePressure > 0 ? surfacePressure / (surfaceMatter[BAROTROPE_DENSITY]! * compactness * c2) : 0,
     }),
     profile,
   });
