@@ -56,6 +56,8 @@ export interface Barotrope {
   readonly density: readonly [lowest: number, highest: number];
   /** Density jumps by rising pressure; a density inside a jump is refused. */
   readonly jumps: readonly DensityJump[];
+  /** Rising potentials, erg/g, at which d rho/dw breaks and the density does not: where solvers should end a step. */
+  readonly kinks?: readonly number[];
   /** Fills the record from its density. Unchecked, allocates nothing. */
   fillAtDensity(record: Float64Array): void;
   /** Fills the record from its pressure. Unchecked, allocates nothing. */

@@ -114,6 +114,7 @@ export function piecewisePolytrope(options: PiecewisePolytropeOptions): Piecewis
   const validity = options.validity ?? "A piecewise polytrope: as good as what it was fitted to, where it was fitted.";
   return Object.freeze({
     ...contributing(name, validity, [0, highest], evaluatePieces(pieces)),
+    kinks: Object.freeze(pieces.slice(1).map((one) => one.energy + one.pressure / one.anchor)),
     pieces: Object.freeze(
       pieces.map(({ start, anchor: at, pressure: p, gamma, shift }) =>
         Object.freeze({ density: start, gamma, constant: (p - shift) / at ** gamma, shift }),

@@ -7,8 +7,8 @@
  *
  *     du/dw = K = -(2/G) (c^2/E) (1 - x)/q,      dv/dw = (4 pi sigma - 3 v) K/(2u);      Newton: K = -2/(G v).
  *
- * Both unknowns are regular from centre to surface, the surface is the end of the range of w, and density jumps stand at
- * known w (the enthalpy form: Lindblom 1992, ApJ 398, 569; Newton's theory alike). The integration runs in
+ * Both unknowns are regular from centre to surface, the surface is the end of the range of w, and density jumps and kinks stand
+ * at known w (the enthalpy form: Lindblom 1992, ApJ 398, 569; Newton's theory alike). The integration runs in
  * s = (w - w_surface)^(1/2), in which rho(w) is smooth at the surface. rho(w) does not know the centre, so the derivatives
  * of u and v with respect to the central w obey the same equations linearised, without derivatives of the matter: they give
  * dM/drho_c exactly.
@@ -54,7 +54,7 @@ const SHALLOWEST = 1e-7;
 /** A core above a density jump that is thinner than this in w is left out: its mass is this to the power 3/2. */
 const THINNEST_CORE = 1e-9;
 /** Ratio of successive ranges of s towards the surface. */
-const SHRINKING = 0.5;
+const SHRINKING = 0.7;
 
 /** Newton's theory of gravity or Einstein's. */
 export type Relativity = "newton" | "general";
@@ -111,6 +111,7 @@ export function hydrostaticSolver(barotrope: Barotrope, options: HydrostaticOpti
   surfaceMatter[BAROTROPE_DENSITY] = barotrope.density[0];
   barotrope.fillAtDensity(surfaceMatter);
   const surfacePotential = surfaceMatter[BAROTROPE_POTENTIAL]!;
+  const breaks = [...barotrope.jumps.map((jump) => jump.potential), ...(barotrope.kinks ?? [])].sort((a, b) => a - b);
   /** Ends of the present phase in w, slightly inside; the largest (c_s/c)^2. */
   const limits = new Float64Array(3);
 
@@ -276,9 +277,7 @@ export function hydrostaticSolver(barotrope: Barotrope, options: HydrostaticOpti
     limits[2] = 0;
     const watch = onStep === undefined ? {} : { onStep };
     let high = centre[BAROTROPE_POTENTIAL]!;
-    const below = barotrope.jumps
-      .map((jump) => jump.potential)
-      .filter((w) => w > surfacePotential && w < high - THINNEST_CORE * whole);
+    const below = breaks.filter((w) => w > surfacePotential && w < high - THINNEST_CORE * whole);
     const ends = [surfacePotential, ...below];
     // A centre on top of a jump: the star of the phase below, since the core of the denser phase has no extent.
     const top = barotrope.jumps.find(

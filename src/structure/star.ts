@@ -106,8 +106,9 @@ const DEFAULT_TOLERANCE = 1e-11;
 /**
  * The star of a central density.
  *
- * Mass and moment of inertia are good to 1e-10, radius to 1e-11, at the default tolerance, with a barotrope that is smooth
- * between its jumps; a kink (a piecewise polytrope has them) costs steps. The tidal numbers lose what k_2 is smaller than one by.
+ * At the default tolerance mass, moment of inertia and radius are good to 1e-10, mostly to 1e-12, where the barotrope is smooth
+ * between its jumps and the kinks it lists. A kink that it does not list may cost 200 tolerances. Tidal numbers lose ten times
+ * more; matter softer than a polytrope of index 1 at its surface (rho ~ w^n, n < 1) keeps 1e-9 of them.
  *
  * ```ts
  * import { polytrope } from "fermistate/barotropes";

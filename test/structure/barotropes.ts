@@ -24,6 +24,7 @@ interface Parametrised {
   readonly name: string;
   readonly density: readonly [number, number];
   readonly jumps?: readonly DensityJump[];
+  readonly kinks?: readonly number[];
   /** Fills the record at a parameter. */
   fill(parameter: number, record: Float64Array): void;
   /** Parameter of the density in the record. */
@@ -42,6 +43,7 @@ export function barotropeOf(gas: Parametrised): Barotrope {
     validity: "for tests",
     density: gas.density,
     jumps,
+    ...(gas.kinks === undefined ? {} : { kinks: gas.kinks }),
     fillAtDensity: (record) => gas.fill(gas.fromDensity(record[BAROTROPE_DENSITY]!), record),
     fillAtPressure: (record) => gas.fill(gas.fromPressure(record[BAROTROPE_PRESSURE]!), record),
     fillAtPotential: (record) => gas.fill(gas.fromPotential(record[BAROTROPE_POTENTIAL]!), record),
@@ -89,8 +91,7 @@ export function polytrope(constant: number, index: number, highest = 1e30): Baro
 }
 
 /**
- * Two polytropes that meet at a density: P continuous, d ln P/d ln rho not. `isMarked` lists the kink as a density jump of no
- * height, which puts it at the end of an integration.
+ * Two polytropes that meet at a density: P continuous, d ln P/d ln rho not. `isMarked` lists the kink.
  */
 export function kinked(
   constant: number,
@@ -111,7 +112,7 @@ export function kinked(
   return barotropeOf({
     name: `polytropes of index ${index} and ${indexAbove}`,
     density: [0, 1e30],
-    jumps: isMarked ? [{ pressure: kink * atKink, potential, densities: [kink, kink] }] : [],
+    ...(isMarked ? { kinks: [potential] } : {}),
     fill(density, record) {
       const isBelow = density <= kink;
       const specific = isBelow ? constant * density ** (1 / index) : above * density ** (1 / indexAbove);

@@ -48,6 +48,20 @@ describe("published fits have the maxima and radii that an independent integrati
   });
 });
 
+test("listed kinks keep the promise of the tolerance for pieces; they stand where the pieces meet", () => {
+  const pieces = publishedBarotrope("SLy piecewise");
+  const dividing = [2.44034e7, 3.78358e11, 2.6278e12, 10 ** 14.7, 1e15]; // Read et al. 2009
+  for (const density of dividing) {
+    const { potential } = pieces.state(density);
+    expect(pieces.kinks!.some((kink) => Math.abs(kink / potential - 1) < 1e-12)).toBe(true);
+  }
+  expect(pieces.kinks).toHaveLength(6); // and the join of crust and core
+  const mass = (tolerance: number): number => hydrostaticStar(pieces, { centralDensity: 1e15, tolerance }).mass;
+  for (const tolerance of [1e-7, 1e-9, 1e-11]) {
+    expect(Math.abs(mass(tolerance) / mass(1e-14) - 1)).toBeLessThan(0.3 * tolerance);
+  }
+});
+
 describe("white dwarfs of the full physics", () => {
   const core = composition({ C12: 0.5, O16: 0.5 });
 
