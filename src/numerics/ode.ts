@@ -135,6 +135,8 @@ export function integrator(system: OdeSystem, options: OdeOptions = {}): Integra
   const coefficients = new Float64Array(DENSE * size);
   const count = { evaluations: 0, steps: 0, refused: 0 };
   const error = new Float64Array(1);
+  /** Length (signed) and end of the step tried, length of the next: numbers that cross a call or a loop may be boxed. */
+  const span = new Float64Array(3);
 
   const step = {
     start: 0,
@@ -151,7 +153,8 @@ export function integrator(system: OdeSystem, options: OdeOptions = {}): Integra
   }
 
   /** trial = from + h sum a_ij k_j, with its slope. */
-  function evaluateStage(row: number, h: number): void {
+  function evaluateStage(row: number): void {
+    const h = span[0]!;
     const begin = first[row]!;
     const end = first[row + 1]!;
     for (let i = 1; i < width; i++) {
@@ -164,7 +167,7 @@ export function integrator(system: OdeSystem, options: OdeOptions = {}): Integra
   }
 
   /** Sets `error` to the estimated error over the tolerated one of the step from -> trial. */
-  function estimate(h: number): void {
+  function estimate(): void {
     let fifth = 0;
     let third = 0;
     const end = slopes[STAGES]!; // slope sum_i b_i k_i, kept there until the end is evaluated
@@ -182,12 +185,13 @@ export function integrator(system: OdeSystem, options: OdeOptions = {}): Integra
       third += (three / scale) ** 2;
     }
     const both = fifth + 0.01 * third;
-    error[0] = both === 0 ? 0 : (Math.abs(h) * fifth) / Math.sqrt(both * size);
+    error[0] = both === 0 ? 0 : (Math.abs(span[0]!) * fifth) / Math.sqrt(both * size);
   }
 
-  /** Tries a step of length h to `end`: trial, its error, nextRest. Slopes[0] is that of `from`. */
-  function attempt(h: number, end: number): void {
-    for (let row = 1; row < STAGES; row++) evaluateStage(row, h);
+  /** Tries the step of `span`: trial, its error, nextRest. Slopes[0] is that of `from`. */
+  function attempt(): void {
+    const h = span[0]!;
+    for (let row = 1; row < STAGES; row++) evaluateStage(row);
     const begin = first[STAGES]!;
     const stop = first[STAGES + 1]!;
     const mean = slopes[STAGES]!;
@@ -199,13 +203,14 @@ export function integrator(system: OdeSystem, options: OdeOptions = {}): Integra
       trial[i] = from[i]! + change;
       nextRest[i] = change - (trial[i]! - from[i]!);
     }
-    trial[0] = end;
-    estimate(h);
+    trial[0] = span[1]!;
+    estimate();
   }
 
   /** Coefficients of the dense output of the accepted step from -> point; the slope of its end is in row 12. */
-  function fillCoefficients(h: number): void {
-    for (let row = STAGES + 1; row < ROWS; row++) evaluateStage(row, h);
+  function fillCoefficients(): void {
+    const h = span[0]!;
+    for (let row = STAGES + 1; row < ROWS; row++) evaluateStage(row);
     for (let i = 1; i < width; i++) {
       const at = DENSE * (i - 1);
       const change = point[i]! - from[i]!;
@@ -267,9 +272,8 @@ export function integrator(system: OdeSystem, options: OdeOptions = {}): Integra
     return findRoot(value, step.start, step.end, { values: [atStart, atEnd] }).x;
   }
 
-  function accept(end: number): void {
+  function accept(): void {
     point.set(trial);
-    point[0] = end;
     rest.set(nextRest);
     evaluate(point, STAGES);
   }
@@ -280,47 +284,52 @@ export function integrator(system: OdeSystem, options: OdeOptions = {}): Integra
     rest.fill(0);
     evaluate(point, 0);
     const sign = Math.sign(end - point[0]!);
-    let length = instance.firstStep > 0 ? instance.firstStep : automaticStep(end);
-    if (!(length > 0)) fail("slope", length, "finite numbers");
+    span[2] = instance.firstStep > 0 ? instance.firstStep : automaticStep(end);
+    if (!(span[2] > 0)) fail("slope", span[2], "finite numbers");
     let value = event === undefined ? 0 : event(point);
     let growth = 6;
     for (let tried = 0; tried < maximumSteps; tried++) {
       const x = point[0]!;
+      const length: number = span[2]!;
       // A last step is stretched or cut rather than left as a crumb.
       const isLast = Math.abs(end - x) <= 1.01 * length;
       const h = isLast ? end - x : sign * length;
       if (x + h === x) fail("step", h, "steps that change x: the slope is singular or not smooth");
       from.set(point);
-      attempt(h, isLast ? end : x + h);
+      span[0] = h;
+      span[1] = isLast ? end : x + h;
+      attempt();
       const size = error[0]!;
       if (!(size <= 1)) {
         count.refused += 1;
         if (Number.isNaN(size) && Math.abs(h) < 1e-12 * Math.abs(end - x)) fail("slope", Number.NaN, "finite numbers");
-        length = Math.abs(h) * (Number.isFinite(size) ? Math.max(0.9 * size ** (-1 / 8), 1 / 3) : 0.1);
+        span[2] = Math.abs(h) * (Number.isFinite(size) ? Math.max(0.9 * size ** (-1 / 8), 1 / 3) : 0.1);
         growth = 1;
         continue;
       }
-      accept(isLast ? end : x + h);
+      accept();
       count.steps += 1;
-      length = Math.abs(h) * Math.min(size === 0 ? growth : Math.max(0.9 * size ** (-1 / 8), 1 / 3), growth);
+      span[2] = Math.abs(h) * Math.min(size === 0 ? growth : Math.max(0.9 * size ** (-1 / 8), 1 / 3), growth);
       growth = 6;
       const next = event === undefined ? 0 : event(point);
       const isCrossed = value * next < 0 || (next === 0 && value !== 0);
-      if (onStep !== undefined || isCrossed) fillCoefficients(h);
+      if (onStep !== undefined || isCrossed) fillCoefficients();
       if (isCrossed) {
         // The step once more, now to the event: the point has the order of the method, not of the dense output.
         const target = locate(event!, value, next);
-        attempt(target - x, target);
-        accept(target);
-        if (onStep !== undefined) fillCoefficients(target - x);
+        span[0] = target - x;
+        span[1] = target;
+        attempt();
+        accept();
+        if (onStep !== undefined) fillCoefficients();
         onStep?.(step);
-        instance.firstStep = length;
+        instance.firstStep = span[2]!;
         return true;
       }
       onStep?.(step);
       value = next;
       if (isLast) {
-        instance.firstStep = length;
+        instance.firstStep = span[2]!;
         return false;
       }
       slopes[0]!.set(slopes[STAGES]!);
