@@ -1,7 +1,7 @@
 /**
  * Writes test/fixtures/stars-mpmath.json: spheres in equilibrium by mpmath 1.3.0 (Python), 30 digits.
  *
- *     node test/generators/stars-mpmath.mjs      (ten minutes; needs python3 with mpmath)
+ *     node test/generators/stars-mpmath.mjs      (some minutes; needs python3 with mpmath)
  *
  * Taylor series of the equations in the radius, of high order and with recurrences for the powers: no Runge-Kutta method, no
  * potential as variable, nothing of src. Runs of other order and step agree to 18 digits or more.
