@@ -99,6 +99,7 @@ export default defineConfig([
     plugins: [{ name: "constants", renderChunk: (code) => ({ code: constantsOf(code) }) }],
     entry: {
       index: "src/index.ts",
+      barotropes: "src/barotropes/index.ts",
       grids: "src/grids/index.ts",
       charts: "src/charts/index.ts",
       contributions: "src/contributions/index.ts",
@@ -106,6 +107,7 @@ export default defineConfig([
       certify: "src/certify/index.ts",
       parallel: "src/parallel/index.ts",
       "parallel-worker": "src/parallel/parallel-worker.ts", // stands beside parallel.js for its threads
+      structure: "src/structure/index.ts",
     },
     format: ["esm", "cjs"],
     platform: "neutral",

@@ -105,3 +105,26 @@ console.log(
   "positron density included; state: one object per call; order 3: all eleven derivatives of the electron gas.",
 );
 console.log(`\n${nativeRows(processes).join("\n")}`);
+
+interface StarTiming {
+  readonly name: string;
+  readonly first: number;
+  readonly star: number;
+  readonly everything: number;
+  readonly sequence: number;
+  readonly maximum: number;
+  readonly error: number;
+}
+const stars = Array.from(
+  { length: processes },
+  () => JSON.parse(execFileSync(process.execPath, [`${here}measure-stars.mjs`], { encoding: "utf8" })) as StarTiming[],
+);
+console.log("\nstars in general relativity at the default tolerance, milliseconds:");
+for (const [i, { name, error }] of stars[0]!.entries()) {
+  const show = (key: "first" | "star" | "everything" | "sequence" | "maximum", digits: number): string =>
+    median(stars.map((rows) => rows[i]![key])).toFixed(digits);
+  console.log(
+    `  ${name.padEnd(24)} a star ${show("star", 2)} (the third one made ${show("first", 2)}; with rotation and tide ${show("everything", 2)}),`,
+    `200 stars ${show("sequence", 0)}, largest mass ${show("maximum", 0)}; mass against tolerance 1e-14: ${error.toExponential(1)}`,
+  );
+}

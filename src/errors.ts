@@ -20,6 +20,7 @@
  * - `unstable`: the sum of contributions has no positive pressure, resists neither compression nor heating, or holds NaN
  * - `dependent-variables`: two variables that do not fix the state at this point
  * - `no-convergence`: an iteration did not reach its promise (a defect of the library: please report)
+ * - `integration-failed`: a differential equation could not be integrated: step too small, too many steps, slope not finite
  * - `too-large`: a request beyond the stated size limit
  * - `invalid-option`: an option or a command-line argument that does not exist or cannot be read
  * - `worker-failed`: a thread of `fermistate/parallel` died or could not start, or code of the caller's failed in it
@@ -38,6 +39,7 @@ export type ErrorCode =
   | "unstable"
   | "dependent-variables"
   | "no-convergence"
+  | "integration-failed"
   | "too-large"
   | "invalid-option"
   | "worker-failed"

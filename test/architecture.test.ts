@@ -35,7 +35,7 @@ const forbidden: Readonly<Record<string, readonly string[]>> = {
   // The reference shares no code with what it judges.
   certify: ["numerics", "fermi-gas"],
   // The core: sub-paths are entered by their own name.
-  index: ["grids", "charts", "files", "certify", "contributions", "parallel"],
+  index: ["barotropes", "grids", "charts", "files", "certify", "contributions", "parallel", "structure"],
 };
 
 /** Packages a room may import; any other room imports none. `node:` stands for every module of Node. */
@@ -132,6 +132,8 @@ describe("the sources", () => {
   test("the core reaches no package and nothing of Node", () => expect(reached(imports, "index.ts")).toEqual([]));
 
   test("grids are pure too", () => expect(reached(imports, "grids/index.ts")).toEqual([]));
+
+  test("stellar structure is pure too", () => expect(reached(imports, "structure/index.ts")).toEqual([]));
 
   test("imports name files with their .js ending", () => {
     const loose = [...sources].flatMap(([file, text]) =>

@@ -82,6 +82,7 @@ export function transition(
   });
 }
 
-function isCoulombPlasma(part: Contribution): part is CoulombPlasma {
+/** Whether a contribution is the Coulomb plasma of this library. */
+export function isCoulombPlasma(part: Contribution): part is CoulombPlasma {
   return part.name === "Coulomb plasma" && "options" in part;
 }

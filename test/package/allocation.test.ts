@@ -147,3 +147,24 @@ test("derivatives by two variables, ideal plasma: less than half a byte per poin
   expect(bytes).toBeGreaterThanOrEqual(0);
   expect(bytes).toBeLessThan(0.5);
 });
+
+test("a star of 1500 evaluations leaves less than five bytes for each: the star itself and its ranges, no boxed numbers", () => {
+  const program = `
+    import v8 from "node:v8";
+    import { polytrope } from "./dist/barotropes.js";
+    import { massRadiusSequence } from "./dist/structure.js";
+    const matter = polytrope({ constant: 3e12, index: 1.5 });
+    const options = { centralDensities: new Float64Array(200).fill(1e5), tolerance: 1e-13, rotation: true, tides: true };
+    for (let i = 0; i < 6; i++) massRadiusSequence(matter, options);
+    const least = [];
+    for (let i = 0; i < 5; i++) {
+      const before = v8.getHeapStatistics().used_heap_size;
+      massRadiusSequence(matter, options);
+      least.push((v8.getHeapStatistics().used_heap_size - before) / 200);
+    }
+    console.log(Math.min(...least.filter((bytes) => bytes >= 0)));`;
+  const options = ["--max-semi-space-size=64", "--min-semi-space-size=64", "--input-type=module", "-e", program];
+  const bytes = Number(execFileSync(process.execPath, options, { cwd: root, encoding: "utf8" }));
+  expect(bytes).toBeGreaterThan(0);
+  expect(bytes).toBeLessThan(7500); // measured 4600; one number per evaluation would add 24 000
+});

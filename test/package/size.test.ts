@@ -35,12 +35,14 @@ const all = (entry: string): string => `export * from "./dist/${entry}.js";`;
  */
 const limits: Record<string, number> = {
   index: 80_000,
+  barotropes: 81_000,
   contributions: 3_000,
   grids: 8_500,
   charts: 20_000,
   files: 3_000,
   certify: 21_000,
   parallel: 60_000,
+  structure: 13_300,
 };
 
 test.each(Object.entries(limits))("fermistate %s stays under %i bytes", async (entry, limit) => {

@@ -1,0 +1,32 @@
+/** Checks of options that several makers of barotropes share. */
+import { FermistateError, requireFinite } from "../errors.js";
+
+/** Throws `invalid-option` unless `options` is an object whose keys are all known. */
+export function requireKnown(argument: string, options: unknown, known: readonly string[]): void {
+  const isObject = typeof options === "object" && options !== null && !Array.isArray(options);
+  const stranger = isObject ? Object.keys(options).find((name) => !known.includes(name)) : options;
+  if (isObject && stranger === undefined) return;
+  throw new FermistateError("invalid-option", { argument, given: stranger, allowed: `{ ${known.join(", ")} }` });
+}
+
+/** A finite number > 0. @throws `not-a-number`, `out-of-range` */
+export function requirePositive(argument: string, value: unknown, unit = ""): number {
+  const number = requireFinite(argument, value, `a finite number > 0${unit}`);
+  if (number > 0) return number;
+  throw new FermistateError("out-of-range", { argument, given: value, allowed: `> 0${unit}` });
+}
+
+/** A pair of densities, 0 < lowest < highest. @throws `invalid-option`, `not-a-number`, `out-of-range` */
+export function requireDensityRange(value: unknown): readonly [number, number] {
+  if (!Array.isArray(value) || value.length !== 2) {
+    throw new FermistateError("invalid-option", {
+      argument: "density",
+      given: value,
+      allowed: "[lowest, highest], g/cm^3",
+    });
+  }
+  const lowest = requirePositive("density[0]", value[0], " g/cm^3");
+  const highest = requirePositive("density[1]", value[1], " g/cm^3");
+  if (highest > lowest) return [lowest, highest];
+  throw new FermistateError("out-of-range", { argument: "density[1]", given: highest, allowed: `> ${lowest} g/cm^3` });
+}

@@ -1,0 +1,29 @@
+/**
+ * Stellar structure: Lane-Emden functions, stars of any barotrope in Newton's and Einstein's gravity, limiting masses,
+ * bounds. Runs in Node and browsers, no dependencies.
+ *
+ * @packageDocumentation
+ */
+export type { Barotrope, BarotropeState, DensityJump } from "../barotropes/barotrope.js";
+export { FermistateError, isFermistateError } from "../errors.js";
+export type { StarFinding, StarFindingCode } from "./findings.js";
+export type { Relativity } from "./hydrostatic.js";
+export * from "./lane-emden.js";
+export { chandrasekharMass, type MassUnit, type MassUnitOptions, uniformSphereMass } from "./limiting-mass.js";
+export {
+  type MassLimitReason,
+  type MaximumMass,
+  type MaximumMassOptions,
+  maximumMass,
+  type TurningPoint,
+} from "./maximum-mass.js";
+export type { ProfileColumns, StarPoint, StarProfile } from "./profile.js";
+export * from "./radiation-pressure.js";
+export {
+  type MassRadiusSequence,
+  massRadiusSequence,
+  type SequenceOptions,
+  type StarOfMassOptions,
+  starOfMass,
+} from "./sequence.js";
+export { hydrostaticStar, type SingleStarOptions, type Star, type StarOptions } from "./star.js";

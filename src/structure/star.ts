@@ -1,0 +1,220 @@
+/**
+ * Stars in hydrostatic equilibrium, of any barotrope, in Newton's or Einstein's theory of gravity.
+ *
+ * Conventions: Newton's source of gravity is the baryon mass density rho; Einstein's is the mass-energy density
+ * rho + rho e/c^2, so the gravitational mass holds the energy e as the barotrope defines it. The surface is where P = 0, or
+ * where the barotrope begins. The equations and their sources stand in hydrostatic.ts.
+ */
+import {
+  BAROTROPE_DENSITY,
+  BAROTROPE_ENERGY,
+  BAROTROPE_POTENTIAL,
+  BAROTROPE_PRESSURE,
+  type Barotrope,
+} from "../barotropes/barotrope.js";
+import { gravitationalConstant, speedOfLight } from "../constants.js";
+import { FermistateError, requireFinite } from "../errors.js";
+import { denseSolution } from "../numerics/dense-solution.js";
+import { type StarFinding, starFindings } from "./findings.js";
+import { BINDING, type HydrostaticSolver, hydrostaticSolver, type Relativity, U, V } from "./hydrostatic.js";
+import { type StarProfile, starProfile } from "./profile.js";
+import { loveNumber } from "./tides.js";
+
+/** How a star is integrated. */
+export interface StarOptions {
+  /**
+   * Theory of gravity: "newton" or "general" (relativity).
+   * @defaultValue "general"
+   */
+  readonly relativity?: Relativity;
+  /**
+   * Relative error per step of the integration, 1e-15 to 1e-3; the error of mass and radius is smaller than it.
+   * @defaultValue 1e-11
+   */
+  readonly tolerance?: number;
+  /**
+   * Moment of inertia too.
+   * @defaultValue false
+   */
+  readonly rotation?: boolean;
+  /**
+   * Love number and tidal deformability too; for cold or isentropic matter.
+   * @defaultValue false
+   */
+  readonly tides?: boolean;
+}
+
+/** One star. */
+export interface SingleStarOptions extends StarOptions {
+  /** Baryon mass density at the centre, g/cm^3. */
+  readonly centralDensity: number;
+  /**
+   * Keep the inside of the star as `profile`.
+   * @defaultValue false
+   */
+  readonly profile?: boolean;
+}
+
+/** A star in hydrostatic equilibrium; frozen. */
+export interface Star {
+  /** Theory of gravity. */
+  readonly relativity: Relativity;
+  /** Baryon mass density at the centre, g/cm^3. */
+  readonly centralDensity: number;
+  /** dyn/cm^2. */
+  readonly centralPressure: number;
+  /** erg/g, without rest mass. */
+  readonly centralSpecificEnergy: number;
+  /** Gravitational mass, g (M_sun is `solarMass`). */
+  readonly mass: number;
+  /** Mass of the baryons (rho integrated over proper volume), g; equal to `mass` in Newton's theory. */
+  readonly baryonMass: number;
+  /** Radius (circumference over 2 pi), cm. */
+  readonly radius: number;
+  /**
+   * Energy to take the star apart into matter of e = 0, erg: M_baryon c^2 - M c^2; in Newton's theory minus the sum of
+   * gravitational and internal energy.
+   */
+  readonly bindingEnergy: number;
+  /** G M/(R c^2). */
+  readonly compactness: number;
+  /** Redshift z of light from the surface; to first order in Newton's theory. */
+  readonly redshift: number;
+  /** Acceleration of free fall at the surface, cm/s^2. */
+  readonly surfaceGravity: number;
+  /** Density at the surface, g/cm^3; above 0 for matter with a lattice. */
+  readonly surfaceDensity: number;
+  /**
+   * d ln M/d ln rho_c along the sequence of stars, exact. The fundamental radial mode changes between stable and unstable where
+   * it changes its sign (Harrison, Thorne, Wakano & Wheeler 1965).
+   */
+  readonly massSlope: number;
+  /** g cm^2, for slow rotation (Hartle 1967); undefined unless asked for. */
+  readonly momentOfInertia: number | undefined;
+  /** k_2 of the static tide of order 2; undefined unless asked for. */
+  readonly loveNumber: number | undefined;
+  /** Lambda = (2/3) k_2 (R c^2/(G M))^5; undefined unless asked for. */
+  readonly tidalDeformability: number | undefined;
+  /** What a reader of these numbers should know. */
+  readonly findings: readonly StarFinding[];
+  /** The inside; undefined unless asked for. */
+  readonly profile: StarProfile | undefined;
+}
+
+const DEFAULT_TOLERANCE = 1e-11;
+
+/**
+ * The star of a central density.
+ *
+ * At the default tolerance mass, moment of inertia and radius are good to 1e-10, mostly to 1e-12, where the barotrope is smooth
+ * between its jumps and the kinks it lists. A kink that it does not list may cost 200 tolerances. Tidal numbers lose ten times
+ * more; matter softer than a polytrope of index 1 at its surface (rho ~ w^n, n < 1) keeps 1e-9 of them.
+ *
+ * ```ts
+ * import { polytrope } from "fermistate/barotropes";
+ * import { hydrostaticStar } from "fermistate/structure";
+ *
+ * const star = hydrostaticStar(polytrope({ constant: 1e13, index: 1.5 }), { centralDensity: 1e5, relativity: "newton" });
+ * ```
+ * @throws `not-a-number`, `out-of-range`, `invalid-option`; `outside-domain` where the barotrope does not know the
+ * density (too low, too high, inside a density jump); `unstable` for matter whose pressure does not rise with density;
+ * `integration-failed`
+ */
+export function hydrostaticStar(barotrope: Barotrope, options: SingleStarOptions): Star {
+  return starMaker(barotrope, options)(options.centralDensity, options.profile === true);
+}
+
+/** A function that makes stars of one barotrope by central density, with one working space. */
+export function starMaker(
+  barotrope: Barotrope,
+  options: StarOptions,
+): (centralDensity: number, keepsProfile?: boolean) => Star {
+  const { relativity = "general", rotation = false, tides = false } = options;
+  if (relativity !== "newton" && relativity !== "general") {
+    throw new FermistateError("invalid-option", {
+      argument: "relativity",
+      given: relativity,
+      allowed: '"newton" or "general"',
+    });
+  }
+  const tolerance = requireTolerance(options.tolerance);
+  const solver = hydrostaticSolver(barotrope, { relativity, tolerance, rotation, tides });
+  return (centralDensity, keepsProfile = false) => {
+    requireFinite("centralDensity", centralDensity, "a density in g/cm^3");
+    barotrope.state(centralDensity); // refuses what is outside the domain or inside a jump
+    const { centre } = solver.result;
+    centre[BAROTROPE_DENSITY] = centralDensity;
+    barotrope.fillAtDensity(centre);
+    centre[BAROTROPE_DENSITY] = centralDensity; // a barotrope may return it rounded
+    const solution = keepsProfile ? denseSolution(solver.result.surface.length - 1) : undefined;
+    solver.solve(solution?.add);
+    const isGeneral = relativity === "general";
+    const profile =
+      solution &&
+      starProfile({
+        barotrope,
+        solution,
+        centre: centre.slice(),
+        surface: solver.result.surface.slice(),
+        surfacePotential: solver.surfaceMatter[BAROTROPE_POTENTIAL]!,
+        isGeneral,
+      });
+    return starOf(solver, relativity, profile);
+  };
+}
+
+/** The star just integrated. */
+function starOf(solver: HydrostaticSolver, relativity: Relativity, profile: StarProfile | undefined): Star {
+  const { result, surfaceMatter } = solver;
+  const { centre, surface } = result;
+  const isGeneral = relativity === "general";
+  const c2 = speedOfLight * speedOfLight;
+  const radius = Math.sqrt(surface[U]!);
+  const cube = radius ** 3;
+  const mass = surface[V]! * cube;
+  const bindingEnergy = surface[BINDING]! * cube;
+  const compactness = (gravitationalConstant * surface[V]! * surface[U]!) / c2;
+  const root = Math.sqrt(1 - 2 * compactness);
+  const love = Number.isNaN(result.tide) ? undefined : loveNumber(result.tide, isGeneral ? compactness : 0);
+  const inertia = result.rotation;
+  const surfacePressure = surfaceMatter[BAROTROPE_PRESSURE]!;
+  return Object.freeze({
+    relativity,
+    centralDensity: centre[BAROTROPE_DENSITY]!,
+    centralPressure: centre[BAROTROPE_PRESSURE]!,
+    centralSpecificEnergy: centre[BAROTROPE_ENERGY]!,
+    mass,
+    baryonMass: isGeneral ? mass + bindingEnergy / c2 : mass,
+    radius,
+    bindingEnergy,
+    compactness,
+    redshift: isGeneral ? (2 * compactness) / (root * (1 + root)) : compactness,
+    surfaceGravity: (gravitationalConstant * surface[V]! * radius) / (isGeneral ? root : 1),
+    surfaceDensity: surfaceMatter[BAROTROPE_DENSITY]!,
+    massSlope: result.massSlope,
+    momentOfInertia: Number.isNaN(inertia)
+      ? undefined
+      : isGeneral
+        ? ((c2 / gravitationalConstant) * cube * inertia) / (6 + 2 * inertia)
+        : inertia * cube * radius * radius,
+    loveNumber: love,
+    tidalDeformability: love === undefined ? undefined : (2 / 3) * love * compactness ** -5,
+    findings: starFindings({
+      fastest: result.fastest,
+      massSlope: result.massSlope,
+      neglected: isGeneral ? 0 : centre[BAROTROPE_PRESSURE]! / (centre[BAROTROPE_DENSITY]! * c2),
+      missing: surfacePressure > 0 ? surfacePressure / (surfaceMatter[BAROTROPE_DENSITY]! * compactness * c2) : 0,
+    }),
+    profile,
+  });
+}
+
+/** The tolerance asked for, checked. */
+export function requireTolerance(tolerance: unknown = DEFAULT_TOLERANCE): number {
+  const allowed = "a relative tolerance from 1e-15 to 1e-3";
+  const value = requireFinite("tolerance", tolerance, allowed);
+  if (value < 1e-15 || value > 1e-3) {
+    throw new FermistateError("out-of-range", { argument: "tolerance", given: value, allowed });
+  }
+  return value;
+}
