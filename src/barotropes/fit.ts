@@ -138,7 +138,10 @@ function ofBarotrope(source: Barotrope, { density, figures }: FitOptions): Fitte
   return (pieces) => {
     const line = fitBrokenLine(x, y, xFine, yFine, pieces, candidates);
     const fit = polytropeOf(line, low, energy, high);
-    return Object.freeze({ barotrope: fit, report: measureAgainst(source, fit, range, figures) });
+    const breaks = fit.pieces
+      .slice(1)
+      .map((piece, i) => ({ density: piece.density, gammaBelow: fit.pieces[i]!.gamma }));
+    return Object.freeze({ barotrope: fit, report: measureAgainst(source, fit, breaks, range, figures) });
   };
 }
 

@@ -36,3 +36,4 @@ export {
   polytrope,
 } from "./polytrope.js";
 export { type PublishedBarotrope, publishedBarotrope, publishedBarotropes } from "./published.js";
+export { fitSmoothBarotrope, type SmoothBarotrope, type SmoothFit, type SmoothFitOptions } from "./smooth-fit.js";
