@@ -1,7 +1,7 @@
 /**
  * One phase of matter along a path of constant temperature or entropy: evaluation and inversion.
  *
- * The walk from the highest density down makes the nodes from which inversions start, and finds the surface where P = 0.
+ * The walk from the highest density down makes the nodes from which inversions start, and finds the surface P = 0.
  */
 import { FermistateError } from "../errors.js";
 import type { Composition } from "../matter/composition.js";

@@ -76,7 +76,10 @@ class Tally {
   }
 }
 
-/** Compares with a barotrope at {@link fresh} densities, at the breaks and at the ends; each maximum is then narrowed down. */
+/**
+ * Compares with a barotrope at {@link fresh} densities, at the breaks and at the ends; each maximum is then narrowed
+ * down.
+ */
 export function measureAgainst(
   source: Barotrope,
   fit: Barotrope,

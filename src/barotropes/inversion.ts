@@ -1,9 +1,10 @@
 /**
  * Inversion of a barotrope from P and from w, by a table to start from and Newton's method on the barotrope itself.
  *
- * Nodes by rising density hold P, w and C = dP/drho. Since d ln rho/dw = 1/C and d ln rho/dP = 1/(rho C) are finite even where
- * P = 0, cubic Hermite interpolation of ln rho starts a Newton iteration that ends after one or two evaluations at rounding; the
- * bracket of two nodes safeguards it. Doubles travel in a scratch record, so that none is boxed.
+ * Nodes by rising density hold P, w and C = dP/drho. Since d ln rho/dw = 1/C and d ln rho/dP = 1/(rho C) are finite
+ * even where P = 0, cubic Hermite interpolation of ln rho starts a Newton iteration that ends after one or two
+ * evaluations at rounding; the bracket of two nodes safeguards it. Doubles travel in a scratch record, so that none is
+ * boxed.
  */
 import { BAROTROPE_DENSITY, BAROTROPE_ENERGY, BAROTROPE_POTENTIAL, BAROTROPE_PRESSURE } from "./barotrope.js";
 

@@ -1,12 +1,14 @@
 /**
- * A smooth analytic barotrope fitted to cold or isentropic matter: one Chebyshev series for the energy, everything else its derivatives.
+ * A smooth analytic barotrope fitted to cold or isentropic matter: one Chebyshev series for the energy, everything else
+ * its derivatives.
  *
  *     e = G - e_s,   ln G = C(t) = sum_k c_k T_k(t),   t linear in ln rho, from -1 to 1
  *     P/rho = G C',   dP/drho = G (C'^2 + C'' + C'),   w = G (1 + C') - e_s          (' = d/d ln rho)
  *
- * so the first law holds exactly whatever the coefficients. They interpolate the source at Chebyshev points, which for a smooth
- * source is as good as the best polynomial but for a factor of 2 or 3 (Trefethen 2013, Approximation Theory and Approximation Practice,
- * chapter 16): the error falls geometrically with the number of terms. e_s makes G positive down to the surface.
+ * so the first law holds exactly whatever the coefficients. They interpolate the source at Chebyshev points, which for
+ * a smooth source is as good as the best polynomial but for a factor of 2 or 3 (Trefethen 2013, Approximation Theory
+ * and Approximation Practice, chapter 16): the error falls geometrically with the number of terms. e_s makes G positive
+ * down to the surface.
  */
 import { FermistateError } from "../errors.js";
 import {
@@ -21,7 +23,7 @@ import {
 import { type FitReport, measureAgainst } from "./fit-report.js";
 import { requireDensity } from "./from-record.js";
 import { ENERGY_SLOPE, INVERSION_SLOTS, inversionOf, SLOPE } from "./inversion.js";
-import { requireDensityRange, requireKnown, requirePositive } from "./options.js";
+import { requireBarotrope, requireDensityRange, requireKnown, requirePositive } from "./options.js";
 import { type BarotropicContribution, contributing } from "./polytrope.js";
 
 /** Options of {@link fitSmoothBarotrope}: either the number of terms or the error allowed. */
@@ -55,10 +57,12 @@ export interface SmoothFit {
 const [fewest, most] = [3, 60] as const;
 
 /**
- * Fits a smooth analytic barotrope to cold or isentropic matter without a density jump: a fast stand-in with a continuous sound speed.
+ * Fits a smooth analytic barotrope to cold or isentropic matter without a density jump: a fast stand-in with a
+ * continuous sound speed.
  *
- * Cold carbon and oxygen from 1e4 to 1e10 g/cm^3 take 16 terms for 1e-4 in P, 23 for 1e-6, 30 for 1e-8; 40 reach 1e-10, more do not. A range
- * that begins at a surface P = 0 has no relative error of P to speak of: begin above it. Where the source has kinks (layers, pieces), fit pieces to it.
+ * Cold carbon and oxygen from 1e4 to 1e10 g/cm^3 take 16 terms for 1e-4 in P, 23 for 1e-6, 30 for 1e-8; 40 reach 1e-10,
+ * more do not. A range that begins at a surface P = 0 has no relative error of P to speak of: begin above it. Where the
+ * source has kinks (layers, pieces), fit pieces to it.
  *
  * @throws `invalid-option` (an isotherm; a density jump in the range), `out-of-range`, `outside-domain`, `not-a-number`; `unstable` where
  *   too few terms make matter that does not resist compression
@@ -73,6 +77,7 @@ const [fewest, most] = [3, 60] as const;
  * ```
  */
 export function fitSmoothBarotrope(source: Barotrope, options: SmoothFitOptions): SmoothFit {
+  requireBarotrope("source", source);
   requireKnown("options", options, ["terms", "tolerance", "density", "figures"]);
   const { terms, tolerance, figures } = options;
   if ((terms === undefined) === (tolerance === undefined)) {
