@@ -222,9 +222,9 @@ function gasOf(protons: boolean): NucleonGas {
   }
 
   const name = protons ? "ideal neutrons, protons and electrons" : "ideal neutrons";
-  const shared = { name, density: Object.freeze([lowest, highest] as const), jumps: Object.freeze([]) };
+  const identity = { name, density: Object.freeze([lowest, highest] as const), jumps: Object.freeze([]) };
   const parts = completeBarotrope({
-    ...shared,
+    ...identity,
     validity:
       "Ideal cold particles without interactions or nuclei: a limit to compare with, no model of neutron stars.",
     fillAtDensity: (record) => invert(record, BAROTROPE_DENSITY),
@@ -243,7 +243,7 @@ function gasOf(protons: boolean): NucleonGas {
     ...parts,
     neutronOnset,
     protonFraction(density: number): number {
-      requireDensity(shared, density);
+      requireDensity(identity, density);
       scratch[BAROTROPE_DENSITY] = density;
       invert(scratch, BAROTROPE_DENSITY);
       return sums[PROTONS]! / sums[BARYONS]!;
