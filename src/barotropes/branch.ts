@@ -1,9 +1,7 @@
 /**
  * One phase of matter along a path of constant temperature or entropy: evaluation and inversion.
  *
- * A table of nodes, equally spaced in ln rho, holds P, w and C = dP/drho along the path. Since d ln rho/dw = 1/C and
- * d ln rho/dP = 1/(rho C) are finite even where P = 0, cubic Hermite interpolation of ln rho starts a Newton iteration that ends
- * after one or two evaluations at rounding; the bracket of two nodes safeguards it.
+ * The walk from the highest density down makes the nodes from which inversions start, and finds the surface P = 0.
  */
 import { FermistateError } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
@@ -17,6 +15,7 @@ import {
   BAROTROPE_POTENTIAL,
   BAROTROPE_PRESSURE,
 } from "./barotrope.js";
+import { ENERGY_SLOPE, INVERSION_SLOTS, type InversionNodes, inversionOf, LOG, OFFSET, SLOPE } from "./inversion.js";
 import { bracketedRoot } from "./root.js";
 import type { Layer } from "./stacked.js";
 
@@ -38,25 +37,13 @@ export interface Branch extends Layer {
 
 /** Spacing of the nodes in ln rho: the start of the Newton iteration is then good to about 1e-9. */
 const spacing = 0.02;
-/** A Newton step in ln rho below this changes nothing but the last digit: it is applied without another evaluation. */
-const lastStep = 1e-12;
-/** Shift added to w, set once the branches are joined. */
-const OFFSET = 0;
-/** Scratch slot of a Newton iteration: the current value of C = dP/drho along the path. */
-const SLOPE = 1;
-/** Scratch slot: de/d ln rho along the path. */
-const ENERGY_SLOPE = 2;
 /** Scratch slot: temperature, the start of the solution for it on an adiabat. */
-const WARM = 3;
+const WARM = INVERSION_SLOTS;
 /** Scratch slot: d ln T/d ln rho along the path. */
-const WARMING = 4;
-/** Scratch slot: ln rho at which a cell is looked up. */
-const LOG = 5;
-/** Scratch slot: P or w that is looked up. */
-const TARGET = 6;
+const WARMING = INVERSION_SLOTS + 1;
 /** Scratch slots: bracket of the temperature. */
-const COLDER = 7;
-const HOTTER = 8;
+const COLDER = INVERSION_SLOTS + 2;
+const HOTTER = INVERSION_SLOTS + 3;
 /**
  * Below this exponent of an isotherm radiation alone carries the pressure: w loses its digits in F + P/rho, and a
  * density cannot be told from a pressure.
@@ -75,7 +62,7 @@ export function branchOf(
   [low, high]: readonly [number, number],
 ): Branch {
   const { point, members, fillMembers } = equationOfState.evaluator();
-  const scratch = new Float64Array(9);
+  const scratch = new Float64Array(INVERSION_SLOTS + 4);
   const isotherm = path.kind === "isotherm";
   const entropy = path.kind === "adiabat" ? path.specificEntropy : 0;
   const [coldest, hottest] = equationOfState.domain.temperature;
@@ -138,21 +125,8 @@ export function branchOf(
   }
 
   const nodes = tabulate(low, high, fillAtDensity, scratch, point);
-  const { logs, pressures, potentials, slopes, temperatures, warmings } = nodes;
+  const { logs, pressures, potentials, temperatures, warmings } = nodes;
   const last = logs.length - 1;
-
-  /** Index of the node at or below the value in the slot TARGET or, for the nodes themselves, LOG. */
-  function nodeBelow(values: Float64Array): number {
-    const value = scratch[values === logs ? LOG : TARGET]!;
-    let lower = 0;
-    let upper = last;
-    while (upper - lower > 1) {
-      const middle = (lower + upper) >> 1;
-      if (values[middle]! <= value) lower = middle;
-      else upper = middle;
-    }
-    return lower;
-  }
 
   /** Cubic Hermite start for the temperature on an adiabat, in cell i, at LOG. */
   function startTemperature(i: number): void {
@@ -165,63 +139,7 @@ export function branchOf(
     scratch[WARM] = temperatures[i]! * Math.exp(curve);
   }
 
-  /** Newton for the density at which slot `slot` has the value it has now. */
-  function invert(record: Float64Array, slot: number): void {
-    const given = record[slot]!;
-    const byPressure = slot === BAROTROPE_PRESSURE;
-    const values = byPressure ? pressures : potentials;
-    const offset = byPressure ? 0 : scratch[OFFSET]!;
-    const target = given - offset;
-    if (!(target > values[0]! && target < values[last]!)) {
-      record[BAROTROPE_DENSITY] = target >= values[last]! ? nodes.density[1] : nodes.density[0];
-      if (!isotherm) scratch[WARM] = temperatures[target >= values[last]! ? last : 0]!;
-      fillAtDensity(record);
-      return;
-    }
-    scratch[TARGET] = target;
-    const i = nodeBelow(values);
-    const width = values[i + 1]! - values[i]!;
-    const step = logs[i + 1]! - logs[i]!;
-    const t = (target - values[i]!) / width;
-    const unit = byPressure ? Math.exp(logs[i]!) : 1;
-    const lowSlope = width / (slopes[i]! * unit);
-    const highSlope = width / (slopes[i + 1]! * (byPressure ? unit * Math.exp(step) : 1));
-    const s = 1 - t;
-    let log = logs[i]! + t * t * (3 - 2 * t) * step + t * s * (s * lowSlope - t * highSlope);
-    let lower = logs[i]!;
-    let upper = logs[i + 1]!;
-    if (!(log >= lower && log <= upper)) log = lower + t * step;
-    scratch[LOG] = log;
-    if (!isotherm) startTemperature(i);
-    let density = Math.exp(log);
-    for (let n = 0; n < 60; n++) {
-      record[BAROTROPE_DENSITY] = density;
-      fillAtDensity(record);
-      const residual = record[slot]! - given;
-      if (residual > 0) upper = log;
-      else lower = log;
-      const move = -residual / (byPressure ? scratch[SLOPE]! * density : scratch[SLOPE]!);
-      if (Math.abs(move) < lastStep) {
-        record[BAROTROPE_DENSITY] = density * (1 + move);
-        record[BAROTROPE_PRESSURE]! += scratch[SLOPE]! * density * move;
-        record[BAROTROPE_ENERGY]! += scratch[ENERGY_SLOPE]! * move;
-        record[BAROTROPE_POTENTIAL]! += scratch[SLOPE]! * move;
-        record[slot] = given;
-        return;
-      }
-      // The step in rho itself while it is small: exp(log) would round ln rho first.
-      const next = log + move;
-      if (next > lower && next < upper) {
-        log = next;
-        density = Math.abs(move) < 1e-3 ? density * (1 + move * (1 + move * (0.5 + move / 6))) : Math.exp(log);
-      } else {
-        log = 0.5 * (lower + upper);
-        density = Math.exp(log);
-      }
-      if (upper - lower < 4e-16 * Math.abs(upper)) break;
-    }
-    record[slot] = given;
-  }
+  const inversion = inversionOf(nodes, fillAtDensity, scratch, isotherm ? undefined : startTemperature);
 
   return {
     density: nodes.density,
@@ -231,26 +149,21 @@ export function branchOf(
     fillAtDensity(record): void {
       if (!isotherm) {
         scratch[LOG] = Math.log(record[BAROTROPE_DENSITY]!);
-        startTemperature(nodeBelow(logs));
+        startTemperature(inversion.cellOfLog());
       }
       fillAtDensity(record);
     },
-    fillAtPressure: (record) => invert(record, BAROTROPE_PRESSURE),
-    fillAtPotential: (record) => invert(record, BAROTROPE_POTENTIAL),
+    fillAtPressure: inversion.fillAtPressure,
+    fillAtPotential: inversion.fillAtPotential,
     shiftPotential(by): void {
       scratch[OFFSET] = by;
     },
   };
 }
 
-/** Nodes by rising density; w without offset. */
-interface Nodes {
-  readonly density: readonly [number, number];
+/** Nodes of the walk. */
+interface Nodes extends InversionNodes {
   readonly end: BranchEnd;
-  readonly logs: Float64Array;
-  readonly pressures: Float64Array;
-  readonly potentials: Float64Array;
-  readonly slopes: Float64Array;
   readonly temperatures: Float64Array;
   readonly warmings: Float64Array;
 }

@@ -1,11 +1,12 @@
 /**
  * The continuous broken line of k pieces that fits points best in the sense of least squares, breaks free.
  *
- * First the global optimum with breaks on a grid of candidates, by dynamic programming: the least sum of squares of the points left of
- * a candidate, as a function of the line's value v there, is the lower envelope of quadratic functions of v, which is carried from
- * candidate to candidate and from piece to piece (functional pruning; Maidstone, Hocking, Rigaill & Fearnhead 2017, Stat. Comput. 27,
- * 519, for changes in mean; Fearnhead, Maidstone & Letchford 2019, J. Comput. Graph. Stat. 28, 265, for changes in slope). Then
- * a quasi-Newton search from there with the breaks free.
+ * First the global optimum with breaks on a grid of candidates, by dynamic programming: the least sum of squares of the
+ * points left of a candidate, as a function of the line's value v there, is the lower envelope of quadratic functions
+ * of v, which is carried from candidate to candidate and from piece to piece (functional pruning; Maidstone, Hocking,
+ * Rigaill & Fearnhead 2017, Stat. Comput. 27, 519, for changes in mean; Fearnhead, Maidstone & Letchford 2019, J.
+ * Comput. Graph. Stat. 28, 265, for changes in slope; from memory). Then a quasi-Newton search from there with the
+ * breaks free.
  */
 
 /** A broken line: ends and breaks by rising x, with its values there. */
@@ -186,7 +187,10 @@ function trace(
   return { x: xs, y: ys };
 }
 
-/** The best values at given knots, by the tridiagonal normal equations, with the sum of squares and its slope in each break. */
+/**
+ * The best values at given knots, by the tridiagonal normal equations, with the sum of squares and its slope in each
+ * break.
+ */
 function bestValues(x: Float64Array, y: Float64Array, knots: readonly number[]): Projection {
   const count = knots.length;
   const diagonal = new Float64Array(count);
@@ -234,7 +238,10 @@ interface Projection {
   readonly sum: number;
 }
 
-/** Quasi-Newton (Broyden, Fletcher, Goldfarb, Shanno 1970) on the breaks, the values being optimal for each choice of them. */
+/**
+ * Quasi-Newton (Broyden, Fletcher, Goldfarb, Shanno 1970) on the breaks, the values being optimal for each choice of
+ * them.
+ */
 function polish(x: Float64Array, y: Float64Array, start: BrokenLine): BrokenLine {
   let knots = start.x;
   let here = bestValues(x, y, knots);

@@ -3,11 +3,12 @@ import { type Composition, requireComposition } from "../matter/composition.js";
 import { type CaptureThreshold, captureThresholds } from "../regime/capture.js";
 
 /**
- * The electron capture that sets in at the lowest density in cold matter of a composition; undefined where AME2020 has no
- * daughter for any of its nuclides.
+ * The electron capture that sets in at the lowest density in cold matter of a composition; undefined where AME2020 has
+ * no daughter for any of its nuclides.
  *
  * `densityWithLattice` is that density, g/cm^3; at a ground state's threshold to 1 keV or better in energy. A star whose centre
- * is denser loses electrons there: a barotrope of fixed composition ends. Thresholds of all nuclides: `regime(...).captures`.
+ * is denser loses electrons there: a barotrope of fixed composition ends. Thresholds of all nuclides:
+ * `regime(...).captures`.
  *
  * @throws `invalid-composition`
  * @example

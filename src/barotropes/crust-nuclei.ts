@@ -4,9 +4,9 @@
  *     g(P) = w(P) + Delta,   Delta = [(M_atom + B_el/c^2)/(A m_u) - 1] c^2
  *
  * w is that of the equation of state (electrons, lattice) at the pressure P; Delta is the mass excess per gram, from
- * AME2020. In dense matter no electron is bound: a nucleus weighs M_atom - Z m_e + B_el/c^2, with the binding energy of the electrons
- * B_el = 14.4381 Z^2.39 + 1.55468e-6 Z^5.35 eV (Lunney, Pearson & Thibault 2003, Rev. Mod. Phys. 75, 1021). Leaving B_el out is
- * a convention, and it decides how thick the layer of Fe58 is.
+ * AME2020. In dense matter no electron is bound: a nucleus weighs M_atom - Z m_e + B_el/c^2, with the binding energy of
+ * the electrons B_el = 14.4381 Z^2.39 + 1.55468e-6 Z^5.35 eV (Lunney, Pearson & Thibault 2003, Rev. Mod. Phys. 75,
+ * 1021). Leaving B_el out is a convention, and it decides how thick the layer of Fe58 is.
  */
 import {
   atomicMassConstant,

@@ -1,4 +1,7 @@
-/** What is wrong with a barotrope: where it is acausal, where it resists no compression, where its w does not belong to its P. */
+/**
+ * What is wrong with a barotrope: where it is acausal, where it resists no compression, where its w does not belong to
+ * its P.
+ */
 import { speedOfLight } from "../constants.js";
 import {
   BAROTROPE_DENSITY,
@@ -9,10 +12,14 @@ import {
   type Barotrope,
 } from "./barotrope.js";
 import { soundSpeedSquared } from "./from-record.js";
+import { requireBarotrope } from "./options.js";
 
 /** One thing that is wrong. */
 export interface BarotropeFinding {
-  /** `acausal`: sound faster than light; `unstable`: P <= 0 or d ln P/d ln rho <= 0; `inconsistent`: dw is not dP/rho, to 1 %. */
+  /**
+   * `acausal`: sound faster than light; `unstable`: P <= 0 or d ln P/d ln rho <= 0; `inconsistent`: dw is not dP/rho,
+   * to 1 %.
+   */
   readonly code: "acausal" | "unstable" | "inconsistent";
   /** Lowest density at which it is so, g/cm^3; for `inconsistent` the end of the first step. */
   readonly density: number;
@@ -28,11 +35,13 @@ const steps = 2000;
 const depth = 1e-14;
 
 /**
- * Looks at a barotrope over the upper 14 decades of its densities in 2000 steps; at most one finding of each kind, the one at the
- * lowest density, narrowed down to the last digit for `acausal` and `unstable`. An empty list means that none was seen.
+ * Looks at a barotrope over the upper 14 decades of its densities in 2000 steps; at most one finding of each kind, the
+ * one at the lowest density, narrowed down to the last digit for `acausal` and `unstable`. An empty list means that
+ * none was seen.
  *
  * A Newtonian star does not mind an acausal barotrope, a relativistic one whose centre lies below that density neither.
  *
+ * @throws `invalid-option`
  * @example
  * ```ts
  * import { barotropeFindings, publishedBarotrope } from "fermistate/barotropes";
@@ -42,6 +51,7 @@ const depth = 1e-14;
  * ```
  */
 export function barotropeFindings(barotrope: Barotrope): readonly BarotropeFinding[] {
+  requireBarotrope("barotrope", barotrope);
   const record = new Float64Array(BAROTROPE_LENGTH);
   const at = (density: number): void => {
     record[BAROTROPE_DENSITY] = density;

@@ -7,7 +7,6 @@ import {
   BAROTROPE_PRESSURE,
   type Barotrope,
 } from "./barotrope.js";
-import type { PiecewisePolytrope } from "./piecewise-polytrope.js";
 
 /** The error of one quantity. */
 export interface FitError {
@@ -43,6 +42,12 @@ export interface FitReport {
   readonly figures: Readonly<Record<string, FigureError>>;
 }
 
+/** A density at which the exponent of a fit jumps, and the exponent below it. */
+export interface Break {
+  readonly density: number;
+  readonly gammaBelow: number;
+}
+
 /** Densities compared, halfway between equal steps in log rho. */
 const fresh = 10_000;
 
@@ -71,10 +76,14 @@ class Tally {
   }
 }
 
-/** Compares with a barotrope at {@link fresh} densities, at the breaks and at the ends; each maximum is then narrowed down. */
+/**
+ * Compares with a barotrope at {@link fresh} densities, at the breaks and at the ends; each maximum is then narrowed
+ * down.
+ */
 export function measureAgainst(
   source: Barotrope,
-  fit: PiecewisePolytrope,
+  fit: Barotrope,
+  breaks: readonly Break[],
   [low, high]: readonly [number, number],
   figures: ((barotrope: Barotrope) => Readonly<Record<string, number>>) | undefined,
 ): FitReport {
@@ -102,12 +111,11 @@ export function measureAgainst(
     count += 1;
     for (const name of names) tallies[name].add(errors[name](), density);
   }
-  for (const [i, { density }] of fit.pieces.entries()) {
-    if (i === 0 || density <= low || density >= high) continue;
+  for (const { density, gammaBelow } of breaks) {
+    if (density <= low || density >= high) continue;
     compare(density);
     for (const name of names) tallies[name].raise(errors[name](), density);
-    // The piece below, whose exponent ends here.
-    tallies.gamma1.raise(fit.pieces[i - 1]!.gamma / truth[BAROTROPE_GAMMA]! - 1, density);
+    tallies.gamma1.raise(gammaBelow / truth[BAROTROPE_GAMMA]! - 1, density);
   }
   for (const end of [low, high]) {
     compare(end);

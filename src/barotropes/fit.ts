@@ -1,8 +1,8 @@
 /**
  * A piecewise polytrope fitted to a barotrope or to columns: least squares in log P, continuous, with the best breaks.
  *
- * In ln rho and ln P a piecewise polytrope is a broken line, so broken-line.ts finds it; e follows from P by the first law. What
- * the fit is worth is measured at densities that it has not seen.
+ * In ln rho and ln P a piecewise polytrope is a broken line, so broken-line.ts finds it; e follows from P by the first
+ * law. What the fit is worth is measured at densities that it has not seen.
  */
 import { FermistateError, requireFinite } from "../errors.js";
 import {
@@ -40,8 +40,8 @@ export interface FitOptions {
    */
   readonly density?: readonly [lowest: number, highest: number];
   /**
-   * Numbers that a barotrope leads to, by name, such as maximum mass and radius: computed with the source and with the fit, and
-   * compared in the report. Needs a barotrope as source.
+   * Numbers that a barotrope leads to, by name, such as maximum mass and radius: computed with the source and with the
+   * fit, and compared in the report. Needs a barotrope as source.
    */
   readonly figures?: (barotrope: Barotrope) => Readonly<Record<string, number>>;
 }
@@ -54,16 +54,18 @@ export interface PiecewisePolytropeFit {
   readonly report: FitReport;
 }
 
-/** Points in ln rho that the search for breaks sees, those that may be breaks at first, and those of the final search. */
+/**
+ * Points in ln rho that the search for breaks sees, those that may be breaks at first, and those of the final search.
+ */
 const [coarse, candidates, fine] = [500, 60, 4000] as const;
 const mostPieces = 20;
 
 /**
- * Fits a piecewise polytrope to a barotrope or to columns: least squares in log P over densities equally spaced in log rho (for columns:
- * over their rows), P and e exactly continuous, the breaks the best there are.
+ * Fits a piecewise polytrope to a barotrope or to columns: least squares in log P over densities equally spaced in log
+ * rho (for columns: over their rows), P and e exactly continuous, the breaks the best there are.
  *
- * e agrees with the source at the lowest density of the fit. A piecewise polytrope has jumps in gamma1 and in the sound speed at each
- * break, by up to a third of its error there; the error in P falls like 1/pieces^2.
+ * e agrees with the source at the lowest density of the fit. gamma1 and the sound speed of a piecewise polytrope jump
+ * at each break; the error in P falls like 1/pieces^2, that of gamma1 like 1/pieces.
  *
  * @throws `invalid-option`, `length-mismatch`, `not-a-number`, `out-of-range` (columns that do not rise, with the row; an exponent of the
  *   fit that no matter has), `outside-domain`
@@ -138,7 +140,10 @@ function ofBarotrope(source: Barotrope, { density, figures }: FitOptions): Fitte
   return (pieces) => {
     const line = fitBrokenLine(x, y, xFine, yFine, pieces, candidates);
     const fit = polytropeOf(line, low, energy, high);
-    return Object.freeze({ barotrope: fit, report: measureAgainst(source, fit, range, figures) });
+    const breaks = fit.pieces
+      .slice(1)
+      .map((piece, i) => ({ density: piece.density, gammaBelow: fit.pieces[i]!.gamma }));
+    return Object.freeze({ barotrope: fit, report: measureAgainst(source, fit, breaks, range, figures) });
   };
 }
 

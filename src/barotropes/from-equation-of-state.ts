@@ -3,9 +3,9 @@
  *
  *     T = 0, adiabat   w = e + P/rho                 isotherm   w = F + P/rho       (dw = dP/rho along each)
  *
- * Cold matter with a Coulomb lattice has P = 0 at a density above zero, its surface, which is found to the last digit. An
- * isotherm crosses from the liquid to the crystal where the equation of state says so; at the pressure of the liquid there the
- * crystal is denser by 1e-5 to 1e-3, a density jump. The rule that puts the boundary there is a convention
+ * Cold matter with a Coulomb lattice has P = 0 at a density above zero, its surface, which is found to the last digit.
+ * An isotherm crosses from the liquid to the crystal where the equation of state says so; at the pressure of the liquid
+ * there the crystal is denser by 1e-5 to 1e-3, a density jump. The rule that puts the boundary there is a convention
  * (coulomb/phase.ts), so the two Gibbs energies differ a little; w of the crystal is shifted to be continuous.
  */
 import { highestCrystalDensity, meltingDensity } from "../coulomb/phase.js";
@@ -40,9 +40,9 @@ export type BarotropeOptions =
 /**
  * The barotrope of an equation of state along T = 0, an isotherm or an adiabat.
  *
- * P, e and w are those of the equation of state to rounding; inversion from P or w costs one or two evaluations and is good to
- * rounding over the exponent. Beyond its ends an inversion gives the end. An adiabat that meets the boundary between liquid and
- * crystal is refused: there matter is a mixture of both; force a phase with `withPhase`.
+ * P, e and w are those of the equation of state to rounding; inversion from P or w costs one or two evaluations and is
+ * good to rounding over the exponent. Beyond its ends an inversion gives the end. An adiabat that meets the boundary
+ * between liquid and crystal is refused: there matter is a mixture of both; force a phase with `withPhase`.
  *
  * @throws `invalid-option`, `invalid-composition`, `not-a-number`, `out-of-range`, `outside-domain`; `unstable` where matter
  *   stops resisting compression at positive pressure within the densities asked for

@@ -1,6 +1,7 @@
 /**
- * Barotropes: matter whose pressure depends on density alone, for whoever builds stars. Polytropes, any equation of state
- * along an isotherm or an adiabat, fits, published neutron-star matter, cold catalysed matter. Runs in Node and browsers.
+ * Barotropes: matter whose pressure depends on density alone, for whoever builds stars. Polytropes, any equation of
+ * state along an isotherm or an adiabat, fits, published neutron-star matter, cold catalysed matter. Runs in Node and
+ * browsers.
  *
  * @packageDocumentation
  */
@@ -36,3 +37,4 @@ export {
   polytrope,
 } from "./polytrope.js";
 export { type PublishedBarotrope, publishedBarotrope, publishedBarotropes } from "./published.js";
+export { fitSmoothBarotrope, type SmoothBarotrope, type SmoothFit, type SmoothFitOptions } from "./smooth-fit.js";

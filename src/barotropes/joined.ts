@@ -1,8 +1,9 @@
 /**
  * Two barotropes joined at a pressure: outer matter below it, inner matter above.
  *
- * The inner one keeps its P as a function of the density of mass-energy E. Its baryon density is only known up to a factor s,
- * as dE/(E + P) = d rho/rho; the factor makes the enthalpy per baryon (E + P)/rho, which is c^2 + w, continuous:
+ * The inner one keeps its P as a function of the density of mass-energy E. Its baryon density is only known up to a
+ * factor s, as dE/(E + P) = d rho/rho; the factor makes the enthalpy per baryon (E + P)/rho, which is c^2 + w,
+ * continuous:
  *
  *     rho' = s rho,   c^2 + w' = (c^2 + w)/s,   c^2 + e' = (c^2 + e)/s
  */
@@ -16,7 +17,7 @@ import {
   BAROTROPE_PRESSURE,
   type Barotrope,
 } from "./barotrope.js";
-import { requireKnown, requirePositive } from "./options.js";
+import { requireBarotrope, requireKnown, requirePositive } from "./options.js";
 import { bracketedRoot } from "./root.js";
 import { type Layer, stacked } from "./stacked.js";
 
@@ -37,13 +38,15 @@ const step = 0.005;
 /**
  * Outer and inner matter as one barotrope: a crust on a core.
  *
- * P and w are continuous; the density jumps by what the two disagree at the pressure given, or not at all where they cross. Both
- * must count e from the same zero, the mass m_u c^2 per baryon, for rho to mean the same: then the factor s differs from 1 by
- * the difference of their binding energies, 1e-3 or less.
+ * P and w are continuous; the density jumps by what the two disagree at the pressure given, or not at all where they
+ * cross. Both must count e from the same zero, the mass m_u c^2 per baryon, for rho to mean the same: then the factor s
+ * differs from 1 by the difference of their binding energies, 1e-3 or less.
  *
  * @throws `outside-domain` where the pressure is not in both; `unstable` where the inner matter is thinner there, or nowhere as dense
  */
 export function joinBarotropes(outer: Barotrope, inner: Barotrope, options: JoinOptions = {}): Barotrope {
+  requireBarotrope("outer", outer);
+  requireBarotrope("inner", inner);
   requireKnown("options", options, ["pressure"]);
   const [low, high] = overlap(outer, inner);
   const at = options.pressure === undefined ? crossing(outer, inner, low, high) : options.pressure;
@@ -103,7 +106,8 @@ function crossing(outer: Barotrope, inner: Barotrope, low: number, high: number)
     matter.fillAtPressure(record);
     return Math.log(record[BAROTROPE_DENSITY]!) + Math.log1p(record[BAROTROPE_ENERGY]! / c2);
   };
-  const difference = (log: number): number => massEnergy(inner, Math.exp(log)) - massEnergy(outer, Math.exp(log)); // > 0: the inner is denser
+  // Positive where the inner one is denser.
+  const difference = (log: number): number => massEnergy(inner, Math.exp(log)) - massEnergy(outer, Math.exp(log));
   const jumpLogs = outer.jumps.map((one) => Math.log(one.pressure));
   let above = Math.log(high) - 1e-9;
   const bottom = Math.max(Math.log(low), Math.log(high) - 20);

@@ -1,11 +1,13 @@
 /**
- * A barotrope from P as a smooth function of the density of mass-energy E/c^2, the form in which matter of neutron stars is published.
+ * A barotrope from P as a smooth function of the density of mass-energy E/c^2, the form in which matter of neutron
+ * stars is published.
  *
  *     xi = log10(E/c^2), zeta(xi) = log10 P;  q = P/E;  d ln(rho)/d ln(E) = 1/(1 + q)     (first law at T = 0)
  *     y = ln(E/(rho c^2)) = y_0 + int q/(1 + q) d ln E;   e = c^2 (exp(y) - 1),  w = c^2 (exp(y)(1 + q) - 1)
  *
- * y is integrated once between nodes of xi, by Gauss's rule with 3 points from the node below to any xi: the integrand is smooth
- * on the scale of the nodes, so e and P fit each other to rounding. y_0 is the choice of rho at the lowest density.
+ * y is integrated once between nodes of xi, by Gauss's rule with 3 points from the node below to any xi: the integrand
+ * is smooth on the scale of the nodes, so e and P fit each other to rounding. y_0 is the choice of rho at the lowest
+ * density.
  */
 import { speedOfLight } from "../constants.js";
 import { FermistateError } from "../errors.js";
@@ -39,7 +41,8 @@ const WIDTH = 3;
 const PER_LIGHT_SPEED_SQUARED = 1 / c2;
 
 /**
- * The barotrope of zeta(xi) for xi from `lowest` to `highest`, and below that of a polytrope of the same exponent down to P = 0.
+ * The barotrope of zeta(xi) for xi from `lowest` to `highest`, and below that of a polytrope of the same exponent down
+ * to P = 0.
  *
  * @param energyAtZeroDensity - e at density 0, erg/g: fixes rho
  */

@@ -3,9 +3,10 @@
  *
  *     mu_n = mu_p + mu_e (rest masses in),  n_p = n_e,  w = mu/m_u - c^2 with mu = mu_p + mu_e, the Gibbs energy per baryon
  *
- * Below the onset, mu_p + mu_e < m_n c^2, there are no neutrons (Harrison, Thorne, Wakano & Wheeler 1965, Gravitation Theory and
- * Gravitational Collapse; Shapiro & Teukolsky 1983, Black Holes, White Dwarfs, and Neutron Stars, section 8.2). A proton and an
- * electron of equal momentum p share the kinetic energy K = m_u w + (m_u - m_p - m_e) c^2 like two bodies of one mass W:
+ * Below the onset, mu_p + mu_e < m_n c^2, there are no neutrons (Harrison, Thorne, Wakano & Wheeler 1965, Gravitation
+ * Theory and Gravitational Collapse; Shapiro & Teukolsky 1983, Black Holes, White Dwarfs, and Neutron Stars, section
+ * 8.2). A proton and an electron of equal momentum p share the kinetic energy K = m_u w + (m_u - m_p - m_e) c^2 like
+ * two bodies of one mass W:
  *
  *     p^2 c^2 = K (K + 2 m_e c^2)(K + 2 m_p c^2)(K + 2 (m_p + m_e) c^2)/(4 W^2),    W = K + (m_p + m_e) c^2
  *
@@ -108,11 +109,12 @@ function fillSums(sums: Float64Array, gas: Float64Array, protons: boolean): void
 }
 
 /**
- * The ideal cold gas of neutrons, protons and electrons in beta equilibrium, 1e-10 to 1e20 g/cm^3; m_n, m_p, m_e of CODATA 2022.
+ * The ideal cold gas of neutrons, protons and electrons in beta equilibrium, 1e-10 to 1e20 g/cm^3; m_n, m_p, m_e of
+ * CODATA 2022.
  *
- * P, e, w to 1e-14; to 1e-13 from the onset of neutrons to 1e10 g/cm^3, where P is far below mu n. The onset itself is as
- * sharp as the difference of the masses is known, 2e-8. No
- * interactions and no nuclei: a limit to compare with, no model of neutron stars.
+ * P, e, w to 1e-14; to 1e-13 from the onset of neutrons to 1e10 g/cm^3, where P is far below mu n. The onset itself is
+ * as sharp as the difference of the masses is known, 2e-8. No interactions and no nuclei: a limit to compare with, no
+ * model of neutron stars.
  * @example
  * ```ts
  * import { neutronProtonElectronGas } from "fermistate/barotropes";
@@ -126,7 +128,10 @@ export function neutronProtonElectronGas(): NucleonGas {
   return gasOf(true);
 }
 
-/** The ideal cold gas of neutrons, 1e-10 to 1e20 g/cm^3 (Oppenheimer & Volkoff 1939, Phys. Rev. 55, 374). P, e, w to 1e-14. */
+/**
+ * The ideal cold gas of neutrons, 1e-10 to 1e20 g/cm^3 (Oppenheimer & Volkoff 1939, Phys. Rev. 55, 374). P, e, w to
+ * 1e-14.
+ */
 export function neutronGas(): NucleonGas {
   return gasOf(false);
 }
@@ -217,9 +222,9 @@ function gasOf(protons: boolean): NucleonGas {
   }
 
   const name = protons ? "ideal neutrons, protons and electrons" : "ideal neutrons";
-  const shared = { name, density: Object.freeze([lowest, highest] as const), jumps: Object.freeze([]) };
+  const identity = { name, density: Object.freeze([lowest, highest] as const), jumps: Object.freeze([]) };
   const parts = completeBarotrope({
-    ...shared,
+    ...identity,
     validity:
       "Ideal cold particles without interactions or nuclei: a limit to compare with, no model of neutron stars.",
     fillAtDensity: (record) => invert(record, BAROTROPE_DENSITY),
@@ -238,7 +243,7 @@ function gasOf(protons: boolean): NucleonGas {
     ...parts,
     neutronOnset,
     protonFraction(density: number): number {
-      requireDensity(shared, density);
+      requireDensity(identity, density);
       scratch[BAROTROPE_DENSITY] = density;
       invert(scratch, BAROTROPE_DENSITY);
       return sums[PROTONS]! / sums[BARYONS]!;

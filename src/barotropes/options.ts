@@ -1,5 +1,6 @@
 /** Checks of options that several makers of barotropes share. */
 import { FermistateError, requireFinite } from "../errors.js";
+import type { Barotrope } from "./barotrope.js";
 
 /** Throws `invalid-option` unless `options` is an object whose keys are all known. */
 export function requireKnown(argument: string, options: unknown, known: readonly string[]): void {
@@ -7,6 +8,16 @@ export function requireKnown(argument: string, options: unknown, known: readonly
   const stranger = isObject ? Object.keys(options).find((name) => !known.includes(name)) : options;
   if (isObject && stranger === undefined) return;
   throw new FermistateError("invalid-option", { argument, given: stranger, allowed: `{ ${known.join(", ")} }` });
+}
+
+/** Throws `invalid-option` unless `value` has the members of a barotrope; returns it. */
+export function requireBarotrope(argument: string, value: unknown): Barotrope {
+  const given = (typeof value === "object" && value !== null ? value : {}) as Partial<Barotrope>;
+  const fills = [given.fillAtDensity, given.fillAtPressure, given.fillAtPotential];
+  const isOne =
+    fills.every((fill) => typeof fill === "function") && Array.isArray(given.density) && given.jumps !== undefined;
+  if (isOne) return value as Barotrope;
+  throw new FermistateError("invalid-option", { argument, given: value, allowed: "a barotrope" });
 }
 
 /** A finite number > 0. @throws `not-a-number`, `out-of-range` */

@@ -1,10 +1,11 @@
 /**
  * The outer crust of a neutron star: cold catalysed matter from the surface to neutron drip.
  *
- * At each pressure the nuclide with the least Gibbs energy per baryon (Baym, Pethick & Sutherland 1971, ApJ 170, 299), pure, in
- * a bcc lattice. Where two share the least one the density jumps at constant pressure. Neutrons drip where g reaches the
- * mass of the neutron. The layers are the lower envelope of the curves g(P), which cross in pairs at most once: the envelope
- * between two pressures follows from the crossing of the two nuclides at its ends, and the nuclide below it, if there is one.
+ * At each pressure the nuclide with the least Gibbs energy per baryon (Baym, Pethick & Sutherland 1971, ApJ 170, 299),
+ * pure, in a bcc lattice. Where two share the least one the density jumps at constant pressure. Neutrons drip where g
+ * reaches the mass of the neutron. The layers are the lower envelope of the curves g(P), which cross in pairs at most
+ * once: the envelope between two pressures follows from the crossing of the two nuclides at its ends, and the nuclide
+ * below it, if there is one.
  */
 import { coldCorrections } from "../coulomb/cold-corrections.js";
 import { requireFlags } from "../errors.js";
@@ -35,9 +36,9 @@ import { type Layer, stacked } from "./stacked.js";
 /** Options of {@link outerCrust}. */
 export interface OuterCrustOptions {
   /**
-   * Whether the binding energy of the atom's electrons is put back into the mass of the nucleus. With it there is a thin layer of
-   * Fe58, 5 % in pressure; without it, the convention of the rest of this library, 0.1 % are left of it, where it is preferred
-   * by 1 eV per baryon, which is less than the masses are known to.
+   * Whether the binding energy of the atom's electrons is put back into the mass of the nucleus. With it there is a
+   * thin layer of Fe58, 5 % in pressure; without it, the convention of the rest of this library, 0.1 % are left of it,
+   * where it is preferred by 1 eV per baryon, which is less than the masses are known to.
    * @defaultValue true
    */
   readonly electronBinding?: boolean;
@@ -83,10 +84,10 @@ const deep = 3e30;
 /**
  * The outer crust of cold catalysed matter, from P = 0 to neutron drip.
  *
- * e and w are measured from m_u c^2 per baryon, nuclear binding included: rho (c^2 + e) is the full density of mass-energy, and
- * e is negative near the surface. Transition pressures follow from the masses to 1e-10; what they are worth is the question:
- * measured masses end at Zn80, and the layers beyond it are those of the nuclides whose masses happen to be known.
- * Below 1e4 g/cm^3 matter is not fully ionised.
+ * e and w are measured from m_u c^2 per baryon, nuclear binding included: rho (c^2 + e) is the full density of
+ * mass-energy, and e is negative near the surface. Transition pressures follow from the masses to 1e-10; what they are
+ * worth is the question: measured masses end at Zn80, and the layers beyond it are those of the nuclides whose masses
+ * happen to be known. Below 1e4 g/cm^3 matter is not fully ionised.
  *
  * @throws `invalid-option`, and the errors of the equation of state at T = 0
  * @example

@@ -16,8 +16,8 @@ export interface PiecewisePolytropeOptions {
   /** The pressure there, dyn/cm^2. */
   readonly referencePressure: number;
   /**
-   * What stays continuous besides P, e and w: nothing, so that the sound speed jumps at each join, or the slope dP/drho and
-   * with it the sound speed, by P = K rho^Gamma + Lambda.
+   * What stays continuous besides P, e and w: nothing, so that the sound speed jumps at each join, or the slope dP/drho
+   * and with it the sound speed, by P = K rho^Gamma + Lambda.
    * @defaultValue "pressure"
    */
   readonly continuous?: "pressure" | "sound speed";
@@ -56,11 +56,12 @@ export interface PiecewisePolytrope extends BarotropicContribution {
 }
 
 /**
- * A piecewise polytrope P = K_i rho^Gamma_i (+ Lambda_i), defined from density 0; only one K is given, the others follow.
+ * A piecewise polytrope P = K_i rho^Gamma_i (+ Lambda_i), defined from density 0; only one K is given, the others
+ * follow.
  *
- * P, e and w are continuous to rounding: each piece starts from the point where the last one ends (Read, Lackey, Owen & Friedman
- * 2009, Phys. Rev. D 79, 124032; with a continuous sound speed O'Boyle, Markakis, Stergioulas & Read 2020, Phys. Rev. D 102,
- * 083027). P, e, w to 4 units of rounding.
+ * P, e and w are continuous to rounding: each piece starts from the point where the last one ends (Read, Lackey, Owen &
+ * Friedman 2009, Phys. Rev. D 79, 124032; with a continuous sound speed O'Boyle, Markakis, Stergioulas & Read 2020,
+ * Phys. Rev. D 102, 083027). P, e, w to 4 units of rounding.
  *
  * @throws `invalid-option`, `length-mismatch`, `not-a-number`, `out-of-range`
  * @example

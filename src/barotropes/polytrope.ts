@@ -2,8 +2,8 @@
  * Polytropes P = K rho^gamma: as a barotrope and as a contribution to the free energy.
  *
  * F = e = K rho^(gamma-1)/(gamma-1): no thermal part, so entropy and heat capacity are zero. The two limits of cold
- * electrons, with x^3 = 3 n_e/n_0 and P_0, n_0 the units of constants.ts (Chandrasekhar 1939, An Introduction to the Study of
- * Stellar Structure, chapter 10):
+ * electrons, with x^3 = 3 n_e/n_0 and P_0, n_0 the units of constants.ts (Chandrasekhar 1939, An Introduction to the
+ * Study of Stellar Structure, chapter 10):
  *
  *     P = P_0 x^5/15    x << 1    gamma = 5/3, n = 3/2          P = P_0 x^4/12    x >> 1    gamma = 4/3, n = 3
  */
@@ -57,8 +57,8 @@ export interface DegenerateElectrons {
 /**
  * A polytrope, defined from density 0, where P = e = w = 0.
  *
- * Exact: P, e and w to 1 or 2 units of rounding, inversions to 3. As a contribution it ignores composition and temperature.
- * Acausal above some density where gamma > 2: `barotropeFindings` says where.
+ * Exact: P, e and w to 1 or 2 units of rounding, inversions to 3. As a contribution it ignores composition and
+ * temperature. Acausal above some density where gamma > 2: `barotropeFindings` says where.
  *
  * @throws `not-a-number`, `out-of-range`, `invalid-option`
  * @example
@@ -96,8 +96,8 @@ export function polytrope(options: PolytropeOptions): BarotropicContribution {
 
 /**
  * K and gamma of cold, ideal, uniform electrons of a composition where they are non-relativistic and where they are
- * ultra-relativistic; worked out from the constants, to rounding. Between the limits neither is good: the pressure of the
- * full gas is below both, by 23 % of the smaller one at x = 1.
+ * ultra-relativistic; worked out from the constants, to rounding. Between the limits neither is good: the pressure of
+ * the full gas is below both, by 23 % of the smaller one at x = 1.
  *
  * @throws `invalid-composition`; `out-of-range` for matter without electrons
  */

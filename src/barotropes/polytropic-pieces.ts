@@ -6,9 +6,9 @@
  *     w = e + P/rho = w_a + (p/rho_a) Gamma (q^(Gamma-1) - 1)/(Gamma-1)
  *
  * so de = P drho/rho^2 holds in each piece, and joining at a density keeps P, e and w continuous. With Lambda = 0 these
- * are the usual pieces, whose sound speed jumps. With Lambda the slope dP/drho can be kept as well, which makes the sound
- * speed continuous: p_(i+1) Gamma_(i+1) = p_i Gamma_i at the join (O'Boyle, Markakis, Stergioulas & Read 2020, Phys. Rev. D
- * 102, 083027; derived here from that condition).
+ * are the usual pieces, whose sound speed jumps. With Lambda the slope dP/drho can be kept as well, which makes the
+ * sound speed continuous: p_(i+1) Gamma_(i+1) = p_i Gamma_i at the join (O'Boyle, Markakis, Stergioulas & Read 2020,
+ * Phys. Rev. D 102, 083027; derived here from that condition).
  */
 import {
   BAROTROPE_DENSITY,

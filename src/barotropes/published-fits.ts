@@ -9,8 +9,9 @@
  *                   + (a10 + a11 xi) f(a12(a13-xi)) + (a14 + a15 xi) f(a16(a17-xi))
  *                   + a18/(1 + [a19(xi-a20)]^2) + a21/(1 + [a22(xi-a23)]^2)
  *
- * Haensel & Potekhin 2004, Astron. Astrophys. 428, 191, table 1; Potekhin, Fantina, Chamel, Pearson & Goriely 2013, Astron. Astrophys.
- * 560, A48, table 2. The coefficients are from memory; the maximum masses they give are the published ones.
+ * Haensel & Potekhin 2004, Astron. Astrophys. 428, 191, table 1; Potekhin, Fantina, Chamel, Pearson & Goriely 2013,
+ * Astron. Astrophys. 560, A48, table 2. The coefficients are from memory; the maximum masses they give are the
+ * published ones.
  */
 import type { LogPressure } from "./mass-energy-fit.js";
 

@@ -1,10 +1,11 @@
 /**
  * Piecewise polytropes of neutron-star matter: one crust of four pieces, a core of three.
  *
- * Read, Lackey, Owen & Friedman 2009, Phys. Rev. D 79, 124032, tables II and III; from memory, confirmed by the maximum masses
- * they give. P/c^2 = K rho^Gamma in the crust (K in g/cc); the core has P(rho_1) = p_1 at rho_1 = 10^14.7 g/cm^3 and divides at rho_1
- * and rho_2 = 10^15. The core's first piece begins where it meets the last piece of the crust. Of the crust's printed K the first
- * is used and the others follow from continuity: they agree to the rounding of the print, 1.2e-4 at most.
+ * Read, Lackey, Owen & Friedman 2009, Phys. Rev. D 79, 124032, tables II and III; from memory, confirmed by the maximum
+ * masses they give. P/c^2 = K rho^Gamma in the crust (K in g/cc); the core has P(rho_1) = p_1 at rho_1 = 10^14.7 g/cm^3
+ * and divides at rho_1 and rho_2 = 10^15. The core's first piece begins where it meets the last piece of the crust. Of
+ * the crust's printed K the first is used and the others follow from continuity: they agree to the rounding of the
+ * print, 1.2e-4 at most.
  */
 import { speedOfLight } from "../constants.js";
 import { type PiecewisePolytrope, piecewisePolytrope } from "./piecewise-polytrope.js";

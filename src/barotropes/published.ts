@@ -15,7 +15,9 @@ export interface PublishedBarotrope {
   readonly source: string;
   /** How the numbers got here, in words. */
   readonly howKnown: string;
-  /** Densities at which it is used here, g/cm^3: baryon mass density of a piecewise polytrope, mass-energy of a formula. */
+  /**
+   * Densities at which it is used here, g/cm^3: baryon mass density of a piecewise polytrope, mass-energy of a formula.
+   */
   readonly range: readonly [lowest: number, highest: number];
   /** The parameters, in the order of the source. */
   readonly parameters: readonly number[];
@@ -51,10 +53,11 @@ function list(): readonly PublishedBarotrope[] {
 /**
  * A published barotrope by name.
  *
- * The piecewise polytropes take e = 0 at density 0. The formulas of crust and core ("SLy", "FPS", "BSk19", "BSk20", "BSk21") give P as a function
- * of the density of mass-energy; rho follows from the first law, with the mass of Fe56 per baryon at density 0, where a polytrope of
- * the formula's own exponent replaces it below 1e6 g/cm^3. P and e fit each other to 1e-13; what the numbers are worth is 1 % or so.
- * Most are acausal above some density beyond that of the heaviest star: `barotropeFindings` says where.
+ * The piecewise polytropes take e = 0 at density 0. The formulas of crust and core ("SLy", "FPS", "BSk19", "BSk20",
+ * "BSk21") give P as a function of the density of mass-energy; rho follows from the first law, with the mass of Fe56
+ * per baryon at density 0, where a polytrope of the formula's own exponent replaces it below 1e6 g/cm^3. P and e fit
+ * each other to 1e-13; what the numbers are worth is 1 % or so. Most are acausal above some density beyond that of the
+ * heaviest star: `barotropeFindings` says where.
  *
  * @throws `invalid-option` for a name that is not in {@link publishedBarotropes}
  * @example

@@ -4,9 +4,12 @@ import { type BrokenLine, fitBrokenLine } from "../../src/barotropes/broken-line
 import { firstElectronCapture } from "../../src/barotropes/capture-limit.js";
 import { type BarotropeColumns, type FitOptions, fitPiecewisePolytrope } from "../../src/barotropes/fit.js";
 import { barotrope } from "../../src/barotropes/from-equation-of-state.js";
+import { outerCrust } from "../../src/barotropes/outer-crust.js";
 import { piecewisePolytrope } from "../../src/barotropes/piecewise-polytrope.js";
+import { fitSmoothBarotrope } from "../../src/barotropes/smooth-fit.js";
 import { isFermistateError } from "../../src/errors.js";
 import { composition } from "../../src/matter/composition.js";
+import { combine } from "../../src/thermodynamics/combine.js";
 import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
 import { uniform } from "../measured.js";
 
@@ -216,6 +219,73 @@ describe("columns", () => {
     expect(codeOf(() => fitPiecewisePolytrope(cold, { pieces: 2 }))).toBe("invalid-option density");
     expect(codeOf(() => fitPiecewisePolytrope(cold, { pieces: 2, density: [1, 1e6] }))).toBe("outside-domain density");
   });
+});
+
+describe("smooth fits", () => {
+  test("the error falls geometrically, and what is reported is true at 10,000 densities of the test's own", () => {
+    // Largest errors of P and gamma1 from the run that made this test.
+    for (const [terms, ofP, ofGamma] of [
+      [16, 7e-5, 7e-4],
+      [24, 4e-7, 8e-6],
+      [40, 2e-10, 1e-8],
+    ] as const) {
+      const { barotrope: fit, report } = fitSmoothBarotrope(cold, { terms, density: [1e4, 1e10] });
+      expect(report.pressure.max).toBeLessThan(ofP);
+      expect(report.gamma1!.max).toBeLessThan(ofGamma);
+      const random = uniform(terms);
+      let found = 0;
+      for (let i = 0; i < 10_000; i++) {
+        const density = 1e4 * 1e6 ** random();
+        found = Math.max(found, Math.abs(fit.state(density).pressure / cold.state(density).pressure - 1));
+      }
+      // At 40 terms the error is noise of 1e-11 here and there.
+      expect(found).toBeLessThan(report.pressure.max * (terms === 40 ? 1.5 : 1 + 1e-7));
+    }
+  });
+
+  test("first law, third order and inversion", () => {
+    const { barotrope: fit } = fitSmoothBarotrope(cold, { tolerance: 1e-6, density: [1e4, 1e10] });
+    const eos = combine(fit);
+    const record = new Float64Array(5);
+    for (const density of [2e4, 1e6, 5e9]) {
+      const state = fit.state(density);
+      expect(Math.abs(eos.state(density, 0, core).pressure / state.pressure - 1)).toBeLessThan(1e-15);
+      const h = 1e-4;
+      const at = (sign: number) => eos.freeEnergy(density * Math.exp(sign * h), 0, core, 3);
+      const [below, here, above] = [at(-1), at(0), at(1)];
+      // d/d ln rho of F_10 and F_20 by central differences, which err by h^2.
+      expect(Math.abs((above.f - below.f) / (2 * h) / here.fR - 1)).toBeLessThan(2e-8);
+      expect(Math.abs((above.fR - below.fR) / (2 * h) / (here.fR + here.fRR) - 1)).toBeLessThan(2e-7);
+      expect(Math.abs((above.fRR - below.fRR) / (2 * h) / (2 * here.fRR + here.fRRR!) - 1)).toBeLessThan(2e-6);
+      record[1] = state.pressure;
+      fit.fillAtPressure(record);
+      expect(Math.abs(record[0]! / density - 1)).toBeLessThan(1e-14);
+      record[3] = state.potential;
+      fit.fillAtPotential(record);
+      expect(Math.abs(record[0]! / density - 1)).toBeLessThan(1e-14);
+    }
+  });
+
+  test.each<[string, () => unknown, string]>([
+    [
+      "an isotherm",
+      () =>
+        fitSmoothBarotrope(barotrope(whiteDwarfMatter(), core, { temperature: 1e8, density: [1e3, 1e6] }), {
+          terms: 9,
+          density: [1e4, 1e5],
+        }),
+      "invalid-option source",
+    ],
+    ["layers", () => fitSmoothBarotrope(outerCrust(), { terms: 9, density: [1e6, 1e8] }), "invalid-option density"],
+    ["two terms", () => fitSmoothBarotrope(cold, { terms: 2, density: [1e4, 1e10] }), "out-of-range terms"],
+    ["no choice", () => fitSmoothBarotrope(cold, { density: [1e4, 1e10] }), "invalid-option options"],
+    ["a density outside", () => fitSmoothBarotrope(cold, { terms: 9, density: [1, 1e10] }), "outside-domain density"],
+    [
+      "too few terms next to the surface",
+      () => fitSmoothBarotrope(cold, { terms: 12, density: [cold.density[0], 1e12] }),
+      "unstable terms",
+    ],
+  ])("refuses %s", (_, action, code) => expect(codeOf(action)).toBe(code));
 });
 
 test("the first electron capture of a composition", () => {

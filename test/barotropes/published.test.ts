@@ -1,9 +1,11 @@
 /** Published barotropes: the recomputed pressures, the join of crust and core, first law, causality. */
 import { describe, expect, test } from "vitest";
 import { barotropeFindings } from "../../src/barotropes/findings.js";
+import { joinBarotropes } from "../../src/barotropes/joined.js";
 import type { PiecewisePolytrope } from "../../src/barotropes/piecewise-polytrope.js";
 import { publishedBarotrope, publishedBarotropes } from "../../src/barotropes/published.js";
 import { bracketedRoot } from "../../src/barotropes/root.js";
+import { fitSmoothBarotrope } from "../../src/barotropes/smooth-fit.js";
 import { speedOfLight } from "../../src/constants.js";
 import { isFermistateError } from "../../src/errors.js";
 import { Measured } from "../measured.js";
@@ -132,6 +134,14 @@ describe("findings", () => {
     };
     expect(barotropeFindings(shifted).map(({ code }) => code)).toContain("inconsistent");
   });
+});
+
+test.each([
+  ["findings", () => barotropeFindings(undefined as never)],
+  ["a join", () => joinBarotropes(publishedBarotrope("SLy"), { density: [0, 1] } as never)],
+  ["a smooth fit", () => fitSmoothBarotrope(null as never, { terms: 5, density: [1, 2] })],
+])("%s of something else is refused", (_, action) => {
+  expect(action).toThrow(/allowed: a barotrope/);
 });
 
 test("a name that is not there is refused with those that are", () => {
