@@ -17,7 +17,7 @@ import {
 } from "./slots.js";
 
 /** Rows over which members of third order serve: they enter the steps only, so that 10 % in them cost no evaluation. */
-const OLDEST = 6;
+const OLDEST = 3;
 /** Steps longer than this are no prediction. */
 const FARTHEST = 0.5;
 

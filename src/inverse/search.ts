@@ -50,8 +50,11 @@ const ROUNDING = 3 * 2 ** -52;
 const LAST_STEP = 6e-9;
 /** The same where the residual is rounding: such a step is as uncertain as it is long. */
 const LAST_NOISE = 2e-8;
-/** Evaluations of second order before a search that follows a neighbour takes third order after all. */
-const BRIEF_STEPS = 3;
+/**
+ * A search that follows a neighbour begins with an evaluation of second order, and goes on with one where its step is shorter than
+ * this: the next residual is rounding then, and no last step is left that would need third order.
+ */
+const SURE_STEP = 5e-7;
 /** Steps of one search before it gives up. */
 const STEPS_IN_ONE = 80;
 const STEPS_IN_TWO = 30;
@@ -97,7 +100,7 @@ export function searchOne(
     const now: number = w[slot]!;
     point[DENSITY] = w[DENSITY_NOW]!;
     point[TEMPERATURE] = w[TEMPERATURE_NOW]!;
-    const brief = i < BRIEF_STEPS && w[FOLLOWS] === 1;
+    const brief = w[FOLLOWS] === 1 && (i === 0 || (i === 1 && Math.abs(stride[0]!) < SURE_STEP));
     ev.fillMembers(composition, brief ? 2 : 3);
     if (!brief) w[AGE] = 0;
     w[EVALUATIONS]! += 1;
@@ -173,7 +176,7 @@ export function searchTwo(
   for (let i = 0; i < STEPS_IN_TWO; i++) {
     point[DENSITY] = w[DENSITY_NOW]!;
     point[TEMPERATURE] = w[TEMPERATURE_NOW]!;
-    const brief = i < BRIEF_STEPS && w[FOLLOWS] === 1;
+    const brief = w[FOLLOWS] === 1 && (i === 0 || (i === 1 && Math.abs(w[STEP_U]!) + Math.abs(w[STEP_V]!) < SURE_STEP));
     ev.fillMembers(composition, brief ? 2 : 3);
     if (!brief) w[AGE] = 0;
     w[EVALUATIONS]! += 1;
