@@ -1,5 +1,6 @@
 /** Inverse questions by the column: the answers of `solve`, two evaluations a row along a model, guesses, compositions. */
 import { describe, expect, test } from "vitest";
+import * as library from "../../src/index.js";
 import {
   combine,
   composition,
@@ -11,9 +12,10 @@ import {
   solveColumns,
   whiteDwarfMatter,
 } from "../../src/index.js";
-import { compositions, generator } from "./domain.js";
+import { compositionsOf, generator } from "./domain.js";
 
 const matter = whiteDwarfMatter();
+const compositions = compositionsOf(library);
 const carbonOxygen = compositions[0] as ReturnType<typeof composition>;
 const rows = 500;
 const names = ["pressure", "specificEnergy", "specificEntropy", "specificEnthalpy"] as const;
