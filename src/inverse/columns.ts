@@ -1,9 +1,10 @@
 /** Inverse questions by the column: each row starts from its neighbour's answer, nothing is allocated per row. */
-import { FermistateError, isFermistateError, withIndex } from "../errors.js";
+import { FermistateError, isFermistateError } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
+import { isList, refuseQuantity, requireColumn, requireObject, requireRows } from "../thermodynamics/columns.js";
 import { firstOutside, holds, refusePoint } from "../thermodynamics/domain.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
-import { optionalQuantities, type QuantityName, quantities, quantityNames } from "../thermodynamics/quantities.js";
+import { type QuantityName, quantities, quantityNames } from "../thermodynamics/quantities.js";
 import { finish } from "./finish.js";
 import { type GivenName, type Question, questionOf, requireGiven } from "./questions.js";
 import { refuseQuestion } from "./refusal.js";
@@ -73,7 +74,7 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
   const second = column(question.names[1], b, first.length);
   const count = first.length;
   const { composition } = input;
-  const each = Array.isArray(composition) ? (composition as readonly Composition[]) : undefined;
+  const each = isList(composition) ? composition : undefined;
   checkCompositions(composition, each, count);
   checkGiven(equationOfState, question, first, second);
   const guessed = guesses(input, count);
@@ -149,13 +150,10 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
 }
 
 function column(name: string, value: unknown, rows?: number): Float64Array {
-  if (!(value instanceof Float64Array)) {
-    throw new FermistateError("invalid-option", { argument: name, given: value, allowed: "a Float64Array" });
-  }
-  if (rows !== undefined && value.length !== rows) {
-    throw new FermistateError("length-mismatch", { argument: name, given: value.length, allowed: `${rows} rows` });
-  }
-  return value;
+  requireColumn(name, value);
+  const found = value as Float64Array;
+  if (rows === undefined || found.length === rows) return found;
+  throw new FermistateError("length-mismatch", { argument: name, given: found.length, allowed: `${rows} rows` });
 }
 
 function checkCompositions(one: unknown, each: readonly Composition[] | undefined, count: number): void {
@@ -207,10 +205,7 @@ function guesses(input: SolveInput, count: number): SolveInput["guess"] {
 
 /** Slots and columns of the quantities wanted, and whether the costly ones are among them. */
 function outputs(output: SolveOutput, count: number): { slots: number[]; columns: Float64Array[]; plasma: boolean } {
-  if (typeof output !== "object" || output === null) {
-    const allowed = "an object of columns";
-    throw new FermistateError("invalid-option", { argument: "output", given: output, allowed });
-  }
+  requireObject("output", output);
   const slots: number[] = [];
   const columns: Float64Array[] = [];
   checkRefused(output.refused, count);
@@ -221,14 +216,10 @@ function outputs(output: SolveOutput, count: number): { slots: number[]; columns
       const allowed = `one of ${[...searchColumns, ...quantityNames].join(", ")}`;
       throw new FermistateError("unavailable-quantity", { argument: "output", given: name, allowed });
     }
-    const target = column(name, values);
-    if (target.length < count) {
-      const allowed = `>= ${count} rows`;
-      throw new FermistateError("length-mismatch", { argument: name, given: target.length, allowed });
-    }
+    requireRows(name, values, count);
     if (own) continue;
     slots.push(quantityNames.indexOf(name as QuantityName));
-    columns.push(target);
+    columns.push(values as Float64Array);
   }
   return { slots, columns, plasma: output.positronDensity !== undefined };
 }
@@ -259,13 +250,4 @@ function direct(
   evaluations?.fill(1, 0, input.density.length);
   densityConditionNumber?.fill(0, 0, input.density.length);
   temperatureConditionNumber?.fill(0, 0, input.density.length);
-}
-
-function refuseQuantity(name: QuantityName, index: number): never {
-  const unknown = optionalQuantities.includes(name);
-  const allowed = unknown ? "quantities that a contribution provides" : "a number: a contribution has added NaN";
-  throw new FermistateError(
-    unknown ? "unavailable-quantity" : "unstable",
-    withIndex({ argument: "output", given: name, allowed }, index),
-  );
 }

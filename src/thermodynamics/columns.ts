@@ -3,7 +3,7 @@ import { FermistateError } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import { firstOutside, refusePoint } from "./domain.js";
 import type { BatchInput, BatchOutput, EquationOfState } from "./equation-of-state.js";
-import { quantities, quantityNames } from "./quantities.js";
+import { optionalQuantities, type QuantityName, quantities, quantityNames } from "./quantities.js";
 
 /** True where there is one composition per row. */
 export function isList(value: Composition | readonly Composition[]): value is readonly Composition[] {
@@ -74,7 +74,21 @@ export function requireRows(argument: string, column: unknown, count: number): v
   if (given < count) throw new FermistateError("length-mismatch", { argument, given, allowed: `>= ${count} rows` });
 }
 
-function requireColumn(argument: string, column: unknown): void {
+/** Throws `invalid-option` unless `column` is a Float64Array. */
+export function requireColumn(argument: string, column: unknown): void {
   if (column instanceof Float64Array) return;
   throw new FermistateError("invalid-option", { argument, given: column, allowed: "a Float64Array" });
+}
+
+/** NaN in the record: a quantity that no contribution provides, or a contribution that broke its contract. */
+export function refuseQuantity(name: QuantityName, index: number): never {
+  const unknown = optionalQuantities.includes(name);
+  throw new FermistateError(unknown ? "unavailable-quantity" : "unstable", {
+    argument: "output",
+    given: name,
+    allowed: unknown
+      ? "quantities that a contribution provides (the electron gas for this one)"
+      : "a number: a contribution has added NaN",
+    index,
+  });
 }

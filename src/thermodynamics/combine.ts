@@ -2,19 +2,13 @@
 import { FermistateError } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
-import { checkBatch, isList } from "./columns.js";
+import { checkBatch, isList, refuseQuantity } from "./columns.js";
 import type { Contribution } from "./contribution.js";
 import { commonDomain, holds, refusePoint } from "./domain.js";
 import type { BatchInput, BatchOutput, EquationOfState, FreeEnergyDerivatives, State } from "./equation-of-state.js";
 import { type Evaluator, evaluatorOf } from "./evaluator.js";
 import { MEMBER_COUNT, naturalDerivatives, type Order, SECOND_ORDER_COUNT } from "./free-energy.js";
-import {
-  FIRST_PLASMA_QUANTITY,
-  optionalQuantities,
-  QUANTITY_COUNT,
-  type QuantityName,
-  quantityNames,
-} from "./quantities.js";
+import { FIRST_PLASMA_QUANTITY, QUANTITY_COUNT, quantityNames } from "./quantities.js";
 import { freeEnergyFrom, stateFrom } from "./state.js";
 
 /**
@@ -135,17 +129,4 @@ function checkContributions(contributions: readonly Contribution[]): void {
       allowed: `${name} without ${stranger}`,
     });
   }
-}
-
-/** NaN in the record: a quantity that no contribution provides, or a contribution that broke its contract. */
-function refuseQuantity(name: QuantityName, index: number): never {
-  const unknown = optionalQuantities.includes(name);
-  throw new FermistateError(unknown ? "unavailable-quantity" : "unstable", {
-    argument: "output",
-    given: name,
-    allowed: unknown
-      ? "quantities that a contribution provides (the electron gas for this one)"
-      : "a number: a contribution has added NaN",
-    index,
-  });
 }

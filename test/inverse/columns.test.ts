@@ -13,6 +13,7 @@ import {
   whiteDwarfMatter,
 } from "../../src/index.js";
 import { compositionsOf, generator } from "./domain.js";
+import { pairs } from "./pairs.js";
 
 const matter = whiteDwarfMatter();
 const compositions = compositionsOf(library);
@@ -42,20 +43,6 @@ function walk(density0: number, temperature0: number) {
   matter.evaluate({ density, temperature, composition: carbonOxygen }, state);
   return { density, temperature, ...state };
 }
-
-const pairs = [
-  ["density", "pressure"],
-  ["density", "specificEnergy"],
-  ["density", "specificEntropy"],
-  ["density", "specificEnthalpy"],
-  ["temperature", "pressure"],
-  ["temperature", "specificEntropy"],
-  ["pressure", "specificEntropy"],
-  ["pressure", "specificEnergy"],
-  ["pressure", "specificEnthalpy"],
-  ["specificEnthalpy", "specificEntropy"],
-  ["specificEnergy", "specificEntropy"],
-] as const;
 
 // The last number: evaluations a row measured for the worst pair, rounded up. Where pairs are made the quantities bend most.
 describe.each([

@@ -16,6 +16,7 @@ import {
   solveColumns,
   whiteDwarfMatter,
 } from "../../src/index.js";
+import { pairs } from "./pairs.js";
 
 const matter = whiteDwarfMatter();
 const carbonOxygen = composition({ C12: 0.5, O16: 0.5 });
@@ -123,19 +124,6 @@ test("whatever is asked: a state with what was given, or a typed error, in a bou
     ),
     specificEnthalpy: spread(0, 40),
   };
-  const pairs = [
-    ["density", "pressure"],
-    ["density", "specificEnergy"],
-    ["density", "specificEntropy"],
-    ["density", "specificEnthalpy"],
-    ["temperature", "pressure"],
-    ["temperature", "specificEntropy"],
-    ["pressure", "specificEntropy"],
-    ["pressure", "specificEnergy"],
-    ["pressure", "specificEnthalpy"],
-    ["specificEnthalpy", "specificEntropy"],
-    ["specificEnergy", "specificEntropy"],
-  ] as const;
   let answered = 0;
   fc.assert(
     fc.property(fc.constantFrom(...pairs), fc.record(values), ([first, second], all) => {

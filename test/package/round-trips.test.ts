@@ -5,6 +5,7 @@
 import { describe, expect, test } from "vitest";
 import type { Given, GivenName, State } from "../../src/index.js";
 import { generator, randomStates } from "../inverse/domain.js";
+import { pairs } from "../inverse/pairs.js";
 
 /** The built library: the sources take eight times as long under the test runner, and this is half a million questions. */
 const library = (await import(
@@ -66,21 +67,6 @@ function tally(names: readonly [GivenName, GivenName], guessed: boolean): Tally 
     shareAboveFour: aboveFour / asked,
   };
 }
-
-/** Every pair with an unknown. */
-const pairs: readonly (readonly [GivenName, GivenName])[] = [
-  ["density", "pressure"],
-  ["density", "specificEnergy"],
-  ["density", "specificEntropy"],
-  ["density", "specificEnthalpy"],
-  ["temperature", "pressure"],
-  ["temperature", "specificEntropy"],
-  ["pressure", "specificEntropy"],
-  ["pressure", "specificEnergy"],
-  ["pressure", "specificEnthalpy"],
-  ["specificEnthalpy", "specificEntropy"],
-  ["specificEnergy", "specificEntropy"],
-];
 
 describe.each(pairs)("%s and %s of 20 000 states", (...names) => {
   test("found without a guess: to the conditioning limit, four evaluations in the mean", () => {
