@@ -2,7 +2,7 @@
 import { FermistateError, isFermistateError } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import { isList, refuseQuantity, requireColumn, requireObject, requireRows } from "../thermodynamics/columns.js";
-import { firstOutside, holds, refusePoint } from "../thermodynamics/domain.js";
+import { holds, refusePoint } from "../thermodynamics/domain.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { type QuantityName, quantities, quantityNames } from "../thermodynamics/quantities.js";
 import { finish } from "./finish.js";
@@ -62,7 +62,8 @@ const searchColumns: readonly SearchColumn[] = [
  *
  * Rows that are neighbours in a model are worth keeping in order: a row starts from the third-order expansion about the
  * one before, and where they differ by a per cent it takes two evaluations, often one. The columns of the output may be those
- * of the input. Where a row has no answer the error names it; rows before it are written, those after it not (unless the output has a column
+ * of the input. Values that no matter has (NaN, a negative density) are refused before the first row is written. Where a row has no answer the error
+ * names it; rows before it are written, those after it not (unless the output has a column
  * `refused`).
  *
  * @throws as {@link solve}, with the row; `length-mismatch`, `unavailable-quantity`
@@ -76,9 +77,12 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
   const { composition } = input;
   const each = isList(composition) ? composition : undefined;
   checkCompositions(composition, each, count);
-  checkGiven(equationOfState, question, first, second);
   const guessed = guesses(input, count);
   const { slots, columns, plasma } = outputs(output, count);
+  const { refused } = output;
+  if (refused === undefined) {
+    for (let i = 0; i < count; i++) checkGiven(equationOfState, question, first, second, i);
+  }
   if (question.type < 0) {
     direct(equationOfState, { density: first, temperature: second, composition }, output);
     return;
@@ -92,11 +96,10 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
   const knowsDensity = question.type === TEMPERATURE_AT_DENSITY;
   const knowsTemperature = question.type === DENSITY_AT_TEMPERATURE;
   let neighbour: Composition | undefined;
-  const { refused } = output;
 
   function answer(i: number): void {
     const matter = each === undefined ? (composition as Composition) : each[i]!;
-    const follows = neighbour === matter && guessed === undefined && w[TEMPERATURE_NOW]! > 0;
+    const follows = isNear(neighbour, matter) && guessed === undefined && w[TEMPERATURE_NOW]! > 0;
     if (follows) {
       at[0] = knowsDensity ? Math.log(first[i]! / w[DENSITY_NOW]!) : 0;
       at[1] = knowsTemperature ? Math.log(first[i]! / w[TEMPERATURE_NOW]!) : 0;
@@ -112,6 +115,7 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
     else if (!follows) w[TEMPERATURE_NOW] = 1;
     w[FOLLOWS] = 0;
     if (follows) solver.follow(question);
+    if (neighbour !== matter) w[FOLLOWS] = 0;
     const end = solver.find(matter, question);
     if (end !== FOUND) {
       if (knowsDensity) w[DENSITY_NOW] = first[i]!;
@@ -139,6 +143,7 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
     for (let i = 0; i < count; i++) {
       refused[i] = 0;
       try {
+        checkGiven(equationOfState, question, first, second, i);
         answer(i);
       } catch (error) {
         if (!isFermistateError(error) || error.code === "unavailable-quantity") throw error;
@@ -147,6 +152,14 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
       }
     }
   }
+}
+
+/** Compositions near enough for the answer of one to lead to that of the other: matter that burns differs from zone to zone. */
+function isNear(a: Composition | undefined, b: Composition): boolean {
+  if (a === undefined || a === b) return a !== undefined;
+  const electrons = a.electronsPerGram - b.electronsPerGram;
+  const ions = a.ionsPerGram - b.ionsPerGram;
+  return Math.abs(electrons) <= 0.02 * b.electronsPerGram && Math.abs(ions) <= 0.05 * b.ionsPerGram;
 }
 
 function column(name: string, value: unknown, rows?: number): Float64Array {
@@ -171,20 +184,19 @@ function checkCompositions(one: unknown, each: readonly Composition[] | undefine
   for (const composition of each) requireComposition(composition);
 }
 
-/** Every given value must be one that matter can have, before the first row is written. */
-function checkGiven(eos: EquationOfState, question: Question, first: Float64Array, second: Float64Array): void {
-  const { names, type } = question;
-  for (let i = 0; i < first.length; i++) {
-    requireGiven(names[0], first[i], i);
-    requireGiven(names[1], second[i], i);
-    const density = names[0] === "density" ? first[i]! : eos.domain.density[0];
-    const temperature = names[0] === "temperature" ? first[i]! : eos.domain.temperature[0];
-    if (!holds(eos.domain, density, temperature)) refusePoint(eos.contributions, density, temperature, i);
-  }
-  if (type < 0) {
-    const outside = firstOutside(eos.domain, first, second);
-    if (outside >= 0) refusePoint(eos.contributions, first[outside], second[outside], outside);
-  }
+/** A given value must be one that matter can have, and lie inside the domain. */
+function checkGiven(
+  eos: EquationOfState,
+  { names, type }: Question,
+  first: Float64Array,
+  second: Float64Array,
+  i: number,
+): void {
+  requireGiven(names[0], first[i], i);
+  requireGiven(names[1], second[i], i);
+  const density = names[0] === "density" ? first[i]! : eos.domain.density[0];
+  const temperature = names[0] === "temperature" ? first[i]! : type < 0 ? second[i]! : eos.domain.temperature[0];
+  if (!holds(eos.domain, density, temperature)) refusePoint(eos.contributions, density, temperature, i);
 }
 
 function guesses(input: SolveInput, count: number): SolveInput["guess"] {
@@ -198,7 +210,7 @@ function guesses(input: SolveInput, count: number): SolveInput["guess"] {
     const starts = guess[name];
     if (starts === undefined) continue;
     column(`guess.${name}`, starts, count);
-    for (let i = 0; i < count; i++) requireGiven(name, starts[i], i);
+    for (let i = 0; i < count; i++) requireGiven(name, starts[i], i, `guess.${name}`);
   }
   return guess.density === undefined && guess.temperature === undefined ? undefined : guess;
 }

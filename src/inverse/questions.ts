@@ -75,13 +75,10 @@ const allowed: Readonly<Record<GivenName, string>> = {
 };
 
 /** Refuses a given value that no matter has. @throws `not-a-number`, `out-of-range` */
-export function requireGiven(name: GivenName, value: unknown, index?: number): void {
-  const number = requireFinite(name, value, allowed[name], index);
+export function requireGiven(name: GivenName, value: unknown, index?: number, argument: string = name): void {
+  const number = requireFinite(argument, value, allowed[name], index);
   const wrong = name === "temperature" ? number < 0 : (name === "density" || name === "pressure") && number <= 0;
   if (wrong) {
-    throw new FermistateError(
-      "out-of-range",
-      withIndex({ argument: name, given: number, allowed: allowed[name] }, index),
-    );
+    throw new FermistateError("out-of-range", withIndex({ argument, given: number, allowed: allowed[name] }, index));
   }
 }

@@ -39,7 +39,7 @@ export interface Guess {
 
 /** Options of {@link solve}. */
 export interface SolveOptions {
-  /** A start: what is missing or useless in it is made up for. */
+  /** A start: finite numbers; what is missing in it, or far off, is made up for. */
   readonly guess?: Guess | State;
 }
 
@@ -150,7 +150,7 @@ function guess(solver: Solver, { names, type, first, second }: Question, options
     ["temperature", temperature],
   ] as const) {
     if (value === undefined) return false;
-    requireGiven(name, value);
+    requireGiven(name, value, undefined, `guess.${name}`);
   }
   if ("pressureByDensity" in start && start.temperature > 0) {
     solver.at[0] = Math.log(density! / start.density);

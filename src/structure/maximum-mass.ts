@@ -6,9 +6,9 @@
  * The maximum is found as a root of the exact slope dM/drho_c, not by comparing masses, so its density is as good as its mass.
  */
 import type { Barotrope } from "../barotropes/barotrope.js";
-import { findRoot } from "../numerics/roots.js";
 import { densityGrid } from "./density-grid.js";
 import { requireTolerance, type Star, type StarOptions, starMaker } from "./star.js";
+import { turningDensity } from "./turning-density.js";
 
 /**
  * Why masses end.
@@ -121,14 +121,6 @@ export function maximumMass(barotrope: Barotrope, options: MaximumMassOptions = 
       ),
     ),
   });
-}
-
-/** Central density between two stars at which dM/drho_c = 0. */
-function turningDensity(make: (density: number) => Star, low: Star, high: Star): number {
-  return findRoot((density) => make(density).massSlope, low.centralDensity, high.centralDensity, {
-    values: [low.massSlope, high.massSlope],
-    relativeTolerance: 1e-9,
-  }).x;
 }
 
 /** Relativity, unless Newton's theory has a maximum too, at this density or not ten times higher. */

@@ -4,6 +4,7 @@ import { FermistateError, requireFinite } from "../errors.js";
 import { findRoot } from "../numerics/roots.js";
 import { densityGrid, requireRange } from "./density-grid.js";
 import { requireTolerance, type Star, type StarOptions, starMaker } from "./star.js";
+import { turningDensity } from "./turning-density.js";
 
 /** Which stars of a sequence. */
 export interface SequenceOptions extends StarOptions {
@@ -141,9 +142,15 @@ export function starOfMass(barotrope: Barotrope, mass: number, options: StarOfMa
     const star = make(density);
     lightest = Math.min(lightest, star.mass);
     heaviest = Math.max(heaviest, star.mass);
-    if (before !== undefined && !isAcross && excess(before) <= 0 && excess(star) >= 0) {
-      const root = findRoot((at) => excess(make(at)), before.centralDensity, density, {
-        values: [excess(before), excess(star)],
+    let above = star;
+    if (before !== undefined && !isAcross && before.massSlope > 0 && star.massSlope < 0) {
+      // The maximum lies between the two.
+      above = make(turningDensity(make, before, star));
+      heaviest = Math.max(heaviest, above.mass);
+    }
+    if (before !== undefined && !isAcross && excess(before) <= 0 && excess(above) >= 0) {
+      const root = findRoot((at) => excess(make(at)), before.centralDensity, above.centralDensity, {
+        values: [excess(before), excess(above)],
         relativeTolerance: 0.01 * tolerance,
       });
       return make(root.x, options.profile === true);

@@ -124,11 +124,22 @@ export function hydrostaticStar(barotrope: Barotrope, options: SingleStarOptions
   return starMaker(barotrope, options)(options.centralDensity, options.profile === true);
 }
 
+/** An equation of state in place of a barotrope, or no options, is a likely mistake. */
+function requireBarotrope(barotrope: unknown, options: unknown): void {
+  if (typeof (barotrope as Barotrope | undefined)?.fillAtPotential !== "function") {
+    const allowed = "a barotrope: barotrope(equationOfState, composition, { temperature: 0 }) makes one";
+    throw new FermistateError("invalid-option", { argument: "barotrope", given: barotrope, allowed });
+  }
+  if (typeof options === "object" && options !== null) return;
+  throw new FermistateError("invalid-option", { argument: "options", given: options, allowed: "an object" });
+}
+
 /** A function that makes stars of one barotrope by central density, with one working space. */
 export function starMaker(
   barotrope: Barotrope,
   options: StarOptions,
 ): (centralDensity: number, keepsProfile?: boolean) => Star {
+  requireBarotrope(barotrope, options);
   const { relativity = "general", rotation = false, tides = false } = options;
   if (relativity !== "newton" && relativity !== "general") {
     throw new FermistateError("invalid-option", {

@@ -9,6 +9,7 @@ import { piecewisePolytrope } from "../../src/barotropes/piecewise-polytrope.js"
 import { fitSmoothBarotrope } from "../../src/barotropes/smooth-fit.js";
 import { isFermistateError } from "../../src/errors.js";
 import { composition } from "../../src/matter/composition.js";
+import { regime } from "../../src/regime/regime.js";
 import { combine } from "../../src/thermodynamics/combine.js";
 import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
 import { uniform } from "../measured.js";
@@ -295,6 +296,9 @@ test("the first electron capture of a composition", () => {
   expect(Math.abs(firstElectronCapture(composition({ O16: 1 }))!.densityWithLattice / 2.05927e10 - 1)).toBeLessThan(
     1e-5,
   );
+  // The lattice's share of the threshold is that of the density where it counts, as `regime` tells it there.
+  const there = regime(first.densityWithLattice, 1e7, core).captures.find(({ species }) => species === first.species)!;
+  expect(first.latticeShift / there.latticeShift).toBeCloseTo(1, 12);
   expect(firstElectronCapture(composition({ n: 1 }))).toBeUndefined();
 });
 

@@ -53,9 +53,8 @@ describe("values that no matter has", () => {
     expect(refusal(() => solve(matter, {} as never, { density: 1, pressure: 1e20 })).code).toBe("invalid-composition");
     const given = { density: 1e6, pressure: 2e23 };
     expect(refusal(() => solve(matter, carbonOxygen, given, { guess: 3 as never })).code).toBe("invalid-option");
-    expect(refusal(() => solve(matter, carbonOxygen, given, { guess: { temperature: Number.NaN } })).code).toBe(
-      "not-a-number",
-    );
+    const error = refusal(() => solve(matter, carbonOxygen, given, { guess: { temperature: Number.NaN } }));
+    expect([error.code, error.argument]).toEqual(["not-a-number", "guess.temperature"]);
   });
 });
 
@@ -180,11 +179,12 @@ describe("columns", () => {
 
   test("a column `refused` marks rows without an answer, leaves their outputs and goes on", () => {
     const { pressure } = matter.state(1e6, 1e7, carbonOxygen);
-    const rows = { density: Float64Array.of(1e6, 1e6, 1e6), pressure: Float64Array.of(pressure, 1, pressure) };
-    const temperature = Float64Array.of(-1, -2, -3);
-    const refused = new Uint8Array(3);
-    solveColumns(matter, { composition: carbonOxygen, ...rows }, { temperature, refused });
-    expect([...refused]).toEqual([0, 1, 0]);
+    const density = Float64Array.of(1e6, 1e6, 1e6, -1, 1e6, Number.NaN, 1e30);
+    const given = Float64Array.of(pressure, 1, pressure, pressure, Number.POSITIVE_INFINITY, pressure, pressure);
+    const temperature = new Float64Array(7).fill(-2);
+    const refused = new Uint8Array(7);
+    solveColumns(matter, { composition: carbonOxygen, density, pressure: given }, { temperature, refused });
+    expect([...refused]).toEqual([0, 1, 0, 1, 1, 1, 1]);
     expect(temperature[1]).toBe(-2);
     expect(temperature[2] as number).toBeCloseTo(1e7, -2);
   });

@@ -4,6 +4,7 @@ import { solarMass } from "../../src/constants.js";
 import { maximumMass } from "../../src/structure/maximum-mass.js";
 import { massRadiusSequence, starOfMass } from "../../src/structure/sequence.js";
 import { hydrostaticStar } from "../../src/structure/star.js";
+import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
 import { coldElectrons, coldNeutrons, kinked, polytrope } from "./barotropes.js";
 
 describe("massRadiusSequence", () => {
@@ -58,6 +59,19 @@ describe("massRadiusSequence", () => {
 });
 
 describe("starOfMass", () => {
+  test("up to the largest mass itself, between the stars of the scan", () => {
+    const largest = maximumMass(coldNeutrons());
+    const star = starOfMass(coldNeutrons(), largest.mass * (1 - 1e-9));
+    expect(star.mass / largest.mass).toBeCloseTo(1 - 1e-9, 11);
+    expect(star.massSlope).toBeGreaterThan(0);
+    expect(() => starOfMass(coldNeutrons(), largest.mass * (1 + 1e-9))).toThrow("rising branches");
+  });
+
+  test("an equation of state in place of a barotrope, or no options: a typed error", () => {
+    expect(() => hydrostaticStar(whiteDwarfMatter() as never, { centralDensity: 1e8 })).toThrow("a barotrope");
+    expect(() => hydrostaticStar(coldNeutrons(), undefined as never)).toThrow("an object");
+  });
+
   test.each([0.2, 0.6, 1, 1.3])("%d solar masses of ideal electrons", (wanted) => {
     const star = starOfMass(coldElectrons(2), wanted * solarMass, { relativity: "newton" });
     expect(Math.abs(star.mass / (wanted * solarMass) - 1)).toBeLessThan(1e-11);
