@@ -113,7 +113,7 @@ test.each<[string, string]>([
   const program = `
     import v8 from "node:v8";
     import { composition, solveColumns, whiteDwarfMatter } from "./dist/index.js";
-    const count = 20_000;
+    const count = 6000;
     const wave = (i, k) => 1 + 0.3 * Math.sin((i * k) / 40);
     const density = Float64Array.from({ length: count }, (_, i) => 1e6 * wave(i, 1));
     const temperature = Float64Array.from({ length: count }, (_, i) => 6e7 * wave(i, 1.7));
