@@ -12,7 +12,7 @@ const { composition, normalise } = matterOptions;
 
 export const limitingMassCommand: Command = command({
   name: "limiting-mass",
-  summary: "the largest mass of a white dwarf, one assumption after the other",
+  summary: "the limiting mass, one assumption after the other",
   usage: "limiting-mass --composition LABEL=X,... [--temperature KELVIN | --cold]",
   options: {
     composition,

@@ -102,7 +102,7 @@ const tolerance = 1e-10;
  * The limiting mass of a composition under one assumption after the other: nine rungs, from a uniform sphere to a warm star
  * whose nuclei capture electrons.
  *
- * Limits at infinite density are those of P/rho^(4/3) at 1e18 g/cm^3, good to 1e-7; masses of stars to 1e-9 for the
+ * Limits at infinite density are those of P/rho^(4/3) at 1e18 g/cm^3, good to 1e-7; masses of stars to 1e-8 for the
  * matter as it is modelled. Not in it: rotation, magnetic fields, nuclear burning (a carbon core ignites before it
  * collapses). The first capture counts, of however rare a nuclide: leave traces out. Helium and hydrogen are no crystals at
  * these densities: their rung of moving nuclei is formal, and says so. The isothermal core is matter of one

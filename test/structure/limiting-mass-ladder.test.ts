@@ -70,7 +70,7 @@ describe("Newton's limits", () => {
 
   test("ideal electrons tend to it: Chandrasekhar's model 1/y_0^2 = 1e-4 (5.82202/mu_e^2), and the end", () => {
     const { matter, mass, solarMasses } = ladder(core)["ideal-electrons"];
-    expect(Math.abs(solarMasses * 4 - 5.8251902)).toBeLessThan(3e-7);
+    expect(Math.abs(solarMasses * 4 - 5.8251902)).toBeLessThan(2e-7);
     // rho_c = mu_e m_u x^3/(3 pi^2 lambdabar^3), x^2 = y_0^2 - 1; 9.739330e5 g/cm^3 at x = 1, mu_e = 1 (CODATA 2022).
     const centralDensity = 2 * 9.73933e5 * (1e4 - 1) ** 1.5;
     const star = hydrostaticStar(matter!, { centralDensity, relativity: "newton" });
@@ -93,9 +93,9 @@ describe("Newton's limits", () => {
     const thomasFermi = (4 / 3) * (162 / 175) * (alpha * lambda) ** 2 * Math.cbrt(z) ** 4;
     const nucleons = composition({ [label]: 1 }).electronsPerNucleon * (a / z); // A m_u over the mass of the nuclide
     const limit = (share: number): number => ideal * nucleons ** 2 * share ** 1.5;
-    expect(off(rungs.lattice.solarMasses, limit(1 - lattice))).toBeLessThan(2e-7);
+    expect(off(rungs.lattice.solarMasses, limit(1 - lattice))).toBeLessThan(1e-7);
     const all = limit(1 - lattice + exchange - thomasFermi);
-    expect(off(rungs["exchange-and-screening"].solarMasses, all)).toBeLessThan(2e-7);
+    expect(off(rungs["exchange-and-screening"].solarMasses, all)).toBeLessThan(1e-7);
   });
 
   test.each(["ideal-electrons", "lattice", "exchange-and-screening"] as const)("%s: the mass rises to it", (code) => {
