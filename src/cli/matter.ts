@@ -101,7 +101,10 @@ function equationOf(options: Parameters<typeof whiteDwarfMatter>[0]): EquationOf
 }
 
 /** The composition; a wrong sum names the switch of the command line. */
-function compositionOf({ composition: fractions, normalise }: MatterChoice): Composition {
+export function compositionOf({
+  composition: fractions,
+  normalise,
+}: Pick<MatterChoice, "composition" | "normalise">): Composition {
   try {
     return composition(fractions, { normalise });
   } catch (error) {

@@ -6,11 +6,18 @@ import type { Command, CommandIo } from "./command.js";
 import { demoCommand } from "./demo-command.js";
 import { gridCommand } from "./grid-command.js";
 import { commandHelp, programHelp, topics } from "./help.js";
+import { limitingMassCommand } from "./limiting-mass-command.js";
 import { regimeCommand } from "./regime-command.js";
 import { stateCommand } from "./state-command.js";
 
 /** All commands, in the order of the help. */
-export const commands: readonly Command[] = [stateCommand, gridCommand, regimeCommand, demoCommand];
+export const commands: readonly Command[] = [
+  stateCommand,
+  gridCommand,
+  regimeCommand,
+  limitingMassCommand,
+  demoCommand,
+];
 
 /**
  * Runs the program.

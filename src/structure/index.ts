@@ -11,6 +11,13 @@ export type { Relativity } from "./hydrostatic.js";
 export * from "./lane-emden.js";
 export { chandrasekharMass, type MassUnit, type MassUnitOptions, uniformSphereMass } from "./limiting-mass.js";
 export {
+  type LadderEnd,
+  type LadderOptions,
+  type LadderRung,
+  type LadderRungCode,
+  limitingMassLadder,
+} from "./limiting-mass-ladder.js";
+export {
   type MassLimitReason,
   type MaximumMass,
   type MaximumMassOptions,

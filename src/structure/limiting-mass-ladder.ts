@@ -1,0 +1,346 @@
+/**
+ * The limiting mass of white dwarfs of a composition, one assumption after the other.
+ *
+ * In Newton's theory cold matter without motion of its nuclei has no densest star: electrons, lattice, exchange and
+ * screening all grow as rho^(4/3) at the end, so that the mass rises towards that of a polytrope of index 3,
+ *
+ *     M = (K/K_0)^(3/2) M_Ch,    K = lim P/rho^(4/3),    K_0 that of the ideal gas (Chandrasekhar 1931, ApJ 74, 81),
+ *
+ * while the radius goes to zero. Relativity makes the mass turn at a finite density (Chandrasekhar & Tooper 1964, ApJ
+ * 139, 1396), electron capture may end the sequence before (Hamada & Salpeter 1961, ApJ 134, 683): the lower density decides.
+ * The zero-point energy of the nuclei grows as rho^(1/2), faster than that of the electrons, so it has no place in Newton's
+ * limit and comes after relativity. The rungs before take the classic terms of coulomb/cold-corrections.ts (Salpeter 1961,
+ * ApJ 134, 669), those after the Coulomb plasma.
+ */
+import type { Barotrope } from "../barotropes/barotrope.js";
+import { firstElectronCapture } from "../barotropes/capture-limit.js";
+import { barotrope } from "../barotropes/from-equation-of-state.js";
+import { degenerateElectrons, polytrope } from "../barotropes/polytrope.js";
+import { solarMass } from "../constants.js";
+import { coldCorrections } from "../coulomb/cold-corrections.js";
+import { coulombPlasma } from "../coulomb/coulomb-plasma.js";
+import { highestCrystalDensity } from "../coulomb/phase.js";
+import { FermistateError, requireFinite } from "../errors.js";
+import { electronPositronGas } from "../fermi-gas/electron-positron-gas.js";
+import { type Composition, requireComposition } from "../matter/composition.js";
+import type { CaptureThreshold } from "../regime/capture.js";
+import { combine } from "../thermodynamics/combine.js";
+import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
+import { whiteDwarfMatter } from "../white-dwarf-matter.js";
+import type { Relativity } from "./hydrostatic.js";
+import { chandrasekharMass, uniformSphereMass } from "./limiting-mass.js";
+import { maximumMass } from "./maximum-mass.js";
+import { hydrostaticStar } from "./star.js";
+
+/** The rungs by rising number of assumptions, in the order of {@link limitingMassLadder}. */
+export type LadderRungCode =
+  | "uniform-sphere"
+  | "index-3-polytrope"
+  | "ideal-electrons"
+  | "lattice"
+  | "exchange-and-screening"
+  | "general-relativity"
+  | "moving-nuclei"
+  | "electron-capture"
+  | "isothermal-core";
+
+/**
+ * Why there is no heavier star.
+ *
+ * - `energy`: above it, gravity wins at every radius
+ * - `scale-free`: stars of every central density have this mass
+ * - `infinite-density`: the limit of the mass as the central density grows without end
+ * - `relativity`: the mass turns at a finite central density, by general relativity
+ * - `electron-capture`: the mass still rises where nuclei begin to capture electrons
+ */
+export type LadderEnd = "energy" | "scale-free" | "infinite-density" | "relativity" | "electron-capture";
+
+/** The limiting mass under the assumptions of one rung and those below it; frozen. */
+export interface LadderRung {
+  /** Stable name for programs. */
+  readonly code: LadderRungCode;
+  /** Plain name. */
+  readonly name: string;
+  /** What it assumes, in a line. */
+  readonly assumes: string;
+  /** g; gravitational mass where relativity is in. */
+  readonly mass: number;
+  /** The same in solar masses. */
+  readonly solarMasses: number;
+  /** Radius of the heaviest star, cm; undefined where there is none of finite density. */
+  readonly radius: number | undefined;
+  /** Its central density, g/cm^3; undefined where there is none of finite density. */
+  readonly centralDensity: number | undefined;
+  /** Why there is no heavier star. */
+  readonly end: LadderEnd;
+  /** The same in a sentence. */
+  readonly message: string;
+  /** The theory of gravity. */
+  readonly relativity: Relativity;
+  /** The matter, for `massRadiusSequence` and the like; undefined for the uniform sphere. */
+  readonly matter: Barotrope | undefined;
+}
+
+/** Options of {@link limitingMassLadder}. */
+export interface LadderOptions {
+  /**
+   * Temperature of the isothermal core, K: 1e6 to 5e8; false leaves that rung out.
+   * @defaultValue 1e8
+   */
+  readonly temperature?: number | false;
+}
+
+/** Central densities among which relativity turns the mass; it does at 1e10 to 3e10 g/cm^3. */
+const range = [1e9, 2e11] as const;
+/** Colder: as cold. Hotter: an isothermal star has hardly an end, and carbon has long burnt. */
+const temperatures = [1e6, 5e8] as const;
+/** Nuclei whose crystal melts by its own vibration below this density, g/cm^3, are no crystal in the stars looked at. */
+const densest = 3e10;
+const tolerance = 1e-10;
+
+/**
+ * The limiting mass of a composition under one assumption after the other: nine rungs, from a uniform sphere to a warm star
+ * whose nuclei capture electrons.
+ *
+ * Limits at infinite density are those of P/rho^(4/3) at 1e18 g/cm^3, good to 1e-7; masses of stars to 1e-8 for the
+ * matter as it is modelled. Not in it: rotation, magnetic fields, nuclear burning (a carbon core ignites before it
+ * collapses). The first capture counts, of however rare a nuclide: leave traces out. Helium and hydrogen are no crystals at
+ * these densities: their rung of moving nuclei is formal, and says so. The isothermal core is matter of one
+ * temperature out to where radiation alone would carry it: its mass is good,
+ * its radius an upper bound for a star whose envelope is cooler.
+ *
+ * @throws `invalid-composition`, `invalid-option`, `not-a-number`; `out-of-range` for a temperature outside 1e6 to 5e8 K
+ * or matter without nuclei; `outside-domain` for nuclei that capture electrons at any density, or below every star here;
+ * `unstable` and `outside-domain` where cold matter (hydrogen) or the warm matter (mixtures of very unlike nuclei) has no
+ * answer
+ * @example
+ * ```ts
+ * import { composition } from "fermistate";
+ * import { limitingMassLadder } from "fermistate/structure";
+ * const rungs = limitingMassLadder(composition({ C12: 0.5, O16: 0.5 }));
+ * rungs[1]?.solarMasses; // => 1.456298
+ * ```
+ */
+export function limitingMassLadder(composition: Composition, options: LadderOptions = {}): readonly LadderRung[] {
+  requireComposition(composition);
+  const temperature = temperatureOf(options);
+  requireNuclei(composition);
+  const capture = captureOf(composition);
+  const ideal = barotrope(combine(electronPositronGas()), composition, { temperature: 0 });
+  const massPerElectron = 1 / composition.electronsPerNucleon;
+  const { ultraRelativistic } = degenerateElectrons(composition);
+  const limit = limitOf(ultraRelativistic.constant, chandrasekharMass(massPerElectron));
+  const melts = highestCrystalDensity(composition) < densest;
+  const [lattice, still, moving] = coldMatter().map((matter) => barotrope(matter, composition, { temperature: 0 }));
+
+  const rungs = [
+    rung({
+      code: "uniform-sphere",
+      name: "uniform sphere",
+      assumes: "one density throughout, electrons as fast as light, Newton's gravity; energy alone",
+      mass: uniformSphereMass(massPerElectron),
+      end: "energy",
+      message: "Above this mass the energy falls without end as the sphere shrinks; below, it expands.",
+      relativity: "newton",
+    }),
+    rung({
+      code: "index-3-polytrope",
+      name: "polytrope of index 3",
+      assumes: "hydrostatic equilibrium instead of one density; electrons as fast as light at every depth",
+      mass: chandrasekharMass(massPerElectron),
+      end: "scale-free",
+      message: "Stars of every central density have this mass: pressure and gravity grow alike.",
+      relativity: "newton",
+      matter: polytrope(ultraRelativistic),
+    }),
+    rung({
+      code: "ideal-electrons",
+      name: "ideal electrons",
+      assumes: "cold ideal electrons with their full relation of energy and momentum",
+      ...limit(ideal),
+    }),
+    rung({
+      code: "lattice",
+      name: "with the Coulomb lattice",
+      assumes: "point nuclei at rest in a bcc lattice, uniform electrons",
+      ...limit(lattice!),
+    }),
+    rung({
+      code: "exchange-and-screening",
+      name: "with exchange and screening",
+      assumes: "exchange and correlation of the electrons, screening after Thomas and Fermi",
+      ...limit(still!),
+    }),
+    rung({
+      code: "general-relativity",
+      name: "in general relativity",
+      assumes: "Einstein's gravity instead of Newton's",
+      ...heaviest(still!, undefined),
+    }),
+    rung({
+      code: "moving-nuclei",
+      name: "with moving nuclei",
+      assumes: melts
+        ? "zero-point vibration, screening of real nuclei (formal: nuclei so light are no crystal here)"
+        : "zero-point vibration of the crystal, screening of real nuclei",
+      ...heaviest(moving!, undefined),
+    }),
+    rung({
+      code: "electron-capture",
+      name: "until electron capture",
+      assumes:
+        capture === undefined
+          ? "nuclei keep their charge: no threshold of electron capture is known for them"
+          : `nuclei keep their charge up to the first capture (${capture.species} to ${capture.product}, lattice included)`,
+      ...heaviest(moving!, capture),
+    }),
+  ];
+  if (temperature !== false) rungs.push(warmRung(composition, temperature, melts, capture, rungs.at(-1)!));
+  return Object.freeze(rungs);
+}
+
+/** The last rung; where it fails, the refusal says how to do without it. */
+function warmRung(
+  composition: Composition,
+  temperature: number,
+  melts: boolean,
+  capture: CaptureThreshold | undefined,
+  cold: LadderRung,
+): LadderRung {
+  try {
+    const warm = barotrope(warmMatter(melts), composition, { temperature });
+    const outcome = heaviest(warm, capture);
+    const allowed = `a star not ${mostSwollen} times as wide as the cold one`;
+    if (outcome.radius! > mostSwollen * cold.radius!) {
+      throw new FermistateError("outside-domain", { argument: "radius", given: outcome.radius, allowed });
+    }
+    return rung({
+      code: "isothermal-core",
+      name: "with an isothermal core",
+      assumes: `ions, electrons and radiation at ${shortest(temperature)} K instead of 0`,
+      ...outcome,
+    });
+  } catch (error) {
+    if (!(error instanceof FermistateError)) throw error;
+    const allowed = `one at which the warm star exists (${error.message}); or false, without this rung`;
+    throw new FermistateError(error.code, { argument: "temperature", given: temperature, allowed });
+  }
+}
+
+/** Wider isothermal stars are mostly envelope: their mass says nothing on the core. */
+const mostSwollen = 3;
+
+/** A rung before its derived members. */
+type Draft = Omit<LadderRung, "solarMasses" | "radius" | "centralDensity" | "matter"> &
+  Partial<Pick<LadderRung, "radius" | "centralDensity" | "matter">>;
+
+function rung(draft: Draft): LadderRung {
+  const { code, name, assumes, mass, radius, centralDensity, end, message, relativity, matter } = draft;
+  const solarMasses = mass / solarMass;
+  return Object.freeze({
+    code,
+    name,
+    assumes,
+    mass,
+    solarMasses,
+    radius,
+    centralDensity,
+    end,
+    message,
+    relativity,
+    matter,
+  });
+}
+
+type Outcome = Omit<Draft, "code" | "name" | "assumes">;
+
+/** The limit of Newtonian masses of matter that tends to a polytrope of index 3. */
+function limitOf(idealConstant: number, idealMass: number): (matter: Barotrope) => Outcome {
+  return (matter) => {
+    const { pressure, density } = matter.state(matter.density[1]);
+    const ratio = pressure / (idealConstant * density * Math.cbrt(density));
+    return {
+      mass: idealMass * ratio * Math.sqrt(ratio),
+      end: "infinite-density",
+      message: "The mass rises towards this limit as the central density grows without end; no star has it.",
+      relativity: "newton",
+      matter,
+    };
+  };
+}
+
+/** The heaviest star in general relativity, up to a capture. */
+function heaviest(matter: Barotrope, capture: CaptureThreshold | undefined): Outcome {
+  const threshold = capture?.densityWithLattice ?? Number.POSITIVE_INFINITY;
+  const most = maximumMass(matter, { range: [range[0], Math.min(range[1], matter.density[1])], tolerance });
+  const turns = most.turningPoints.find(({ kind }) => kind === "maximum");
+  if (turns !== undefined && turns.centralDensity <= threshold) {
+    const { mass, radius, centralDensity } = turns;
+    const message =
+      capture === undefined
+        ? "The mass turns at this central density: denser stars collapse by general relativity."
+        : `The mass turns before ${capture.species} captures electrons (at ${short(threshold)} g/cm^3): relativity decides.`;
+    return { mass, radius, centralDensity, end: "relativity", message, relativity: "general", matter };
+  }
+  if (turns === undefined || capture === undefined) {
+    const allowed = `matter whose mass turns between ${shortest(range[0])} and ${shortest(range[1])} g/cm^3`;
+    throw new FermistateError("outside-domain", { argument: "composition", given: matter.name, allowed });
+  }
+  const { mass, radius, centralDensity } = hydrostaticStar(matter, { centralDensity: threshold, tolerance });
+  const turn = short(turns.centralDensity);
+  const message = `${capture.species} captures electrons at this central density, before relativity turns the mass (at ${turn} g/cm^3).`;
+  return { mass, radius, centralDensity, end: "electron-capture", message, relativity: "general", matter };
+}
+
+/** Cold matter: the lattice at rest, with exchange and screening, with the motion of the nuclei too. */
+function coldMatter(): readonly EquationOfState[] {
+  const electrons = electronPositronGas();
+  return [
+    combine(electrons, coldCorrections({ thomasFermi: false, exchange: false, correlation: false })),
+    combine(electrons, coldCorrections()),
+    combine(electrons, coulombPlasma({ phase: "crystal" })),
+  ];
+}
+
+/** All terms; nuclei too light for a crystal at these densities are a liquid at all of them. */
+function warmMatter(melts: boolean): EquationOfState {
+  return whiteDwarfMatter(melts ? { coulomb: { phase: "liquid" } } : {});
+}
+
+function temperatureOf(options: unknown): number | false {
+  const allowed = `${shortest(temperatures[0])} to ${shortest(temperatures[1])} K, or false`;
+  if (typeof options !== "object" || options === null || Array.isArray(options)) {
+    throw new FermistateError("invalid-option", { argument: "options", given: options, allowed: "{ temperature }" });
+  }
+  const stranger = Object.keys(options).find((name) => name !== "temperature");
+  if (stranger !== undefined) {
+    throw new FermistateError("invalid-option", { argument: "options", given: stranger, allowed: "{ temperature }" });
+  }
+  const given = (options as LadderOptions).temperature ?? 1e8;
+  if (given === false) return false;
+  const temperature = requireFinite("temperature", given, allowed);
+  if (temperature >= temperatures[0] && temperature <= temperatures[1]) return temperature;
+  throw new FermistateError("out-of-range", { argument: "temperature", given: temperature, allowed });
+}
+
+function requireNuclei({ name, meanCharge }: Composition): void {
+  if (meanCharge > 0) return;
+  const allowed = "matter with charged nuclei";
+  throw new FermistateError("out-of-range", { argument: "composition", given: name, allowed });
+}
+
+/** The first capture; refuses nuclei that capture where no star of these sequences is. */
+function captureOf(composition: Composition): CaptureThreshold | undefined {
+  const capture = firstElectronCapture(composition);
+  if (capture === undefined || capture.densityWithLattice >= lowestCapture) return capture;
+  const given = `${capture.species}, ${short(capture.densityWithLattice)} g/cm^3`;
+  const allowed = `nuclides that capture no electrons below ${shortest(lowestCapture)} g/cm^3`;
+  throw new FermistateError("outside-domain", { argument: "composition", given, allowed });
+}
+
+/** Stars of lower central density are no limit that a white dwarf would know. */
+const lowestCapture = 1e7;
+
+/** 1e8 for 100000000. */
+const shortest = (value: number): string => value.toExponential().replace("+", "");
+const short = (value: number): string => value.toPrecision(4).replace("+", "");
