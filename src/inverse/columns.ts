@@ -209,8 +209,9 @@ function guesses(input: SolveInput, count: number): SolveInput["guess"] {
   for (const name of ["density", "temperature"] as const) {
     const starts = guess[name];
     if (starts === undefined) continue;
-    column(`guess.${name}`, starts, count);
-    for (let i = 0; i < count; i++) requireGiven(name, starts[i], i, `guess.${name}`);
+    const argument = `guess.${name}`;
+    column(argument, starts, count);
+    for (let i = 0; i < count; i++) requireGiven(name, starts[i], i, argument);
   }
   return guess.density === undefined && guess.temperature === undefined ? undefined : guess;
 }
