@@ -106,6 +106,28 @@ console.log(
 );
 console.log(`\n${nativeRows(processes).join("\n")}`);
 
+interface InverseTiming {
+  readonly density: number;
+  readonly temperature: number;
+  readonly ratio: number;
+  readonly direct: number;
+  readonly evaluations: number;
+}
+const inverses = Array.from(
+  { length: processes },
+  () =>
+    JSON.parse(execFileSync(process.execPath, [`${here}measure-inverse.mjs`], { encoding: "utf8" })) as InverseTiming[],
+);
+console.log("\ntemperature from density and energy along a model, each zone from its neighbour, C/O:");
+for (const [i, { density, temperature, evaluations }] of inverses[0]!.entries()) {
+  const show = (key: "ratio" | "direct", digits: number): string =>
+    median(inverses.map((rows) => rows[i]![key])).toFixed(digits);
+  console.log(
+    `  about ${density} g/cm^3, ${temperature} K: ${show("ratio", 2)} x the direct state (${show("direct", 0)} ns),`,
+    `${evaluations.toFixed(2)} evaluations`,
+  );
+}
+
 interface StarTiming {
   readonly name: string;
   readonly first: number;
