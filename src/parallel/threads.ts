@@ -44,8 +44,10 @@ export async function startThreads(count: number, file: URL = workerFile): Promi
   }
 
   pool.on("error", (error: unknown) => void end(String(error)));
+  // An error of the thread may be reported in the same turn of the event loop as its exit, and only a few promises later:
+  // it names the reason, so the exit waits a turn for it.
   for (const thread of pool.threads) {
-    thread.once("exit", (code: number) => void end(`a thread has exited with code ${code}`));
+    thread.once("exit", (code: number) => setImmediate(() => void end(`a thread has exited with code ${code}`)));
   }
 
   function ask(request: unknown): Promise<Answer> {
