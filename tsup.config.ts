@@ -108,6 +108,7 @@ export default defineConfig([
       parallel: "src/parallel/index.ts",
       "parallel-worker": "src/parallel/parallel-worker.ts", // stands beside parallel.js for its threads
       structure: "src/structure/index.ts",
+      tables: "src/tables/index.ts",
     },
     format: ["esm", "cjs"],
     platform: "neutral",

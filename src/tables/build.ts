@@ -1,0 +1,44 @@
+/** A table of any equation of state at one composition: plan, strips, assembly, certificate. */
+import type { Composition } from "../matter/composition.js";
+import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
+import { libraryVersion } from "../version.js";
+import { assembleSheets } from "./assemble.js";
+import { certificateOf } from "./certificate.js";
+import { type TableOptions, type TablePlan, tablePlan } from "./plan.js";
+import { buildStrip, type Strip } from "./strip.js";
+import type { FreeEnergyTable } from "./table.js";
+
+/**
+ * Builds a table of `eos` at one composition, in this thread.
+ *
+ * @throws as {@link tablePlan}
+ */
+export function buildTable(eos: EquationOfState, composition: Composition, options: TableOptions): FreeEnergyTable {
+  const plan = tablePlan(eos, composition, options);
+  const strips = Array.from({ length: plan.density.blocks }, (_, index) => buildStrip(plan, index));
+  return assembleTable(plan, strips);
+}
+
+/** A table from all strips of its plan, in their order. */
+export function assembleTable(plan: TablePlan, strips: readonly Strip[]): FreeEnergyTable {
+  const sheets = assembleSheets(plan, strips);
+  const above = strips.reduce((sum, strip) => sum + strip.blocksAboveTarget, 0);
+  const certificate = certificateOf(plan, sheets, above);
+  const named = [...plan.tabulated, ...plan.beside];
+  return {
+    layout: 1,
+    composition: plan.composition,
+    density: plan.density,
+    temperature: plan.temperature,
+    cold: plan.cold,
+    sheets,
+    ...(plan.freezing === undefined ? {} : { freezing: plan.freezing }),
+    source: {
+      tabulated: plan.tabulated.map((part) => part.name),
+      beside: plan.beside.map((part) => part.name),
+      validity: named.flatMap((part) => (part.validity === undefined ? [] : [`${part.name}: ${part.validity}`])),
+      version: libraryVersion,
+    },
+    certificate,
+  };
+}
