@@ -33,10 +33,11 @@ const MOST_STEPS = 60;
 
 /** A starter for an equation of state; contributions it does not know are taken for ions. */
 export function starterOf(eos: EquationOfState): Starter {
-  const has = (name: string): boolean => eos.contributions.some((part) => part.name === name);
+  const names = eos.contributions.flatMap((part) => part.standsFor ?? [part.name]);
+  const has = (name: string): boolean => names.includes(name);
   const estimate: Estimate = estimateOf({
     electrons: has("electrons and positrons"),
-    ions: eos.contributions.some(({ name }) => name !== "electrons and positrons" && name !== "radiation"),
+    ions: names.some((name) => name !== "electrons and positrons" && name !== "radiation"),
     coulomb: has("Coulomb plasma"),
     radiation: has("radiation"),
   });

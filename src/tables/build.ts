@@ -27,6 +27,9 @@ export function assembleTable(plan: TablePlan, strips: readonly Strip[]): FreeEn
   const named = [...plan.tabulated, ...plan.beside];
   return {
     layout: 1,
+    holdsFor: plan.tabulated.every((part) => part.dependsOn === "electron density")
+      ? "electron density"
+      : "one composition",
     composition: plan.composition,
     density: plan.density,
     temperature: plan.temperature,

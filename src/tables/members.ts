@@ -23,18 +23,21 @@ import type { Surface } from "./surface.js";
 /** Adds the members of F_0 - G to `members`. */
 export function addTableMembers(cold: ColdLookUp, surface: Surface, order: number, members: Float64Array): void {
   const { out } = surface;
-  const f = cold.out;
-  const g = Math.exp(out[0]!) * powersOfTwo[surface.exponent[0]! + powerOffset]!;
+  const share = surface.share[0]!;
+  const g = share * Math.exp(out[0]!) * powersOfTwo[surface.exponent[0]! + powerOffset]!;
+  const f0 = share * cold.out[0]!;
+  const f1 = share * cold.out[1]!;
+  const f2 = share * cold.out[2]!;
   const u = out[1]!;
   const v = out[2]!;
   const uu = out[3]! + u * u;
   const uv = out[4]! + u * v;
   const vv = out[5]! + v * v;
-  members[ENERGY]! += f[0]! + g * (v - 1);
+  members[ENERGY]! += f0 + g * (v - 1);
   members[ENTROPY]! += g * v;
   members[HEAT]! += g * (vv - v);
-  members[PRESSURE]! += f[1]! - g * u;
-  members[PRESSURE_R]! += f[2]! + f[1]! - g * (uu + u);
+  members[PRESSURE]! += f1 - g * u;
+  members[PRESSURE_R]! += f2 + f1 - g * (uu + u);
   members[PRESSURE_T]! -= g * uv;
   if (order === 2) return;
   const luu = out[3]!;
@@ -49,7 +52,7 @@ export function addTableMembers(cold: ColdLookUp, surface: Surface, order: numbe
   const pairs = luu * lvv + 2 * luv * luv;
   const g22 = out[10]! + 2 * (u * uvv + v * uuv) + pairs + luu * v * v + u * u * lvv + 4 * u * v * luv + u * u * v * v;
   members[HEAT_T]! += g * (g03 - 3 * vv + 2 * v);
-  members[PRESSURE_RR]! += f[3]! + f[2]! - g * (g30 + uu);
+  members[PRESSURE_RR]! += share * cold.out[3]! + f2 - g * (g30 + uu);
   members[PRESSURE_RT]! -= g * (g21 + uv);
   members[PRESSURE_TT]! -= g * (g12 - uv);
   members[PRESSURE_RTT]! -= g * (g22 - g21 + g12 - uv);

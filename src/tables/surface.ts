@@ -23,6 +23,8 @@ export interface Surface {
   readonly out: Float64Array;
   /** Slot 0: the exponent k of the block. */
   readonly exponent: Int32Array;
+  /** Slot 0: what the free energy is multiplied by, 1 for the composition of the table. */
+  readonly share: Float64Array;
   readonly basisU: Float64Array;
   readonly basisV: Float64Array;
   readonly rows: Float64Array;
@@ -83,6 +85,7 @@ export function surfaceOf(sheet: TableSheet, density: TableAxis, temperature: Ta
     at: record(2),
     out: record(SURFACE_LENGTH),
     exponent: new Int32Array(1),
+    share: Float64Array.of(1),
     basisU: record(BASIS_LENGTH),
     basisV: record(BASIS_LENGTH),
     rows: record(24),

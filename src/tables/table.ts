@@ -108,11 +108,16 @@ export interface TableCertificate {
   readonly errors: Readonly<Record<CertifiedQuantity, CertifiedError>>;
 }
 
-/** A table of the free energy at one composition. */
+/** A table of the free energy. */
 export interface FreeEnergyTable {
   /** Version of this layout. */
   readonly layout: 1;
-  /** The composition it holds for. */
+  /**
+   * "one composition", or "electron density": of electrons and positrons alone, which know only rho Y_e, so that the table
+   * holds for all compositions and its densities are those of `composition`.
+   */
+  readonly holdsFor: "one composition" | "electron density";
+  /** The composition it was made at. */
   readonly composition: Composition;
   /** Baryon mass density, g/cm^3. */
   readonly density: TableAxis;

@@ -1,22 +1,32 @@
 /** A table as a contribution, and as an equation of state with what stands beside it. */
+import { boltzmannConstant } from "../constants.js";
 import { FermistateError } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
-import { CRYSTAL_FRACTION, DENSITY, TEMPERATURE } from "../matter/point.js";
+import {
+  CRYSTAL_FRACTION,
+  DENSITY,
+  ELECTRON_CHEMICAL_POTENTIAL,
+  ELECTRON_DEGENERACY,
+  TEMPERATURE,
+} from "../matter/point.js";
 import { radiation } from "../radiation.js";
 import { combine } from "../thermodynamics/combine.js";
 import type { Contribution, Domain, PhasePair } from "../thermodynamics/contribution.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
-import type { Order } from "../thermodynamics/free-energy.js";
+import { ENERGY, ENTROPY, type Order, PRESSURE, SECOND_ORDER_COUNT } from "../thermodynamics/free-energy.js";
 import { coldLookUp, fillCold } from "./cold.js";
+import { fillBeyond, nearestBlocks } from "./extension.js";
 import { addTableMembers } from "./members.js";
-import { fillSurface, surfaceOf } from "./surface.js";
+import { fillSurface, type Surface, surfaceOf } from "./surface.js";
 import type { FreeEnergyTable, SheetPhase } from "./table.js";
 
 /**
  * The tabulated part alone, as a contribution: for sums of one's own.
  *
- * It answers for the composition of the table only, and refuses others (`invalid-composition`). A state of a table tells neither
- * the chemical potential of the electrons nor composition derivatives: the free energy of one composition does not hold them.
+ * A table of one composition refuses others (`invalid-composition`), and its states tell neither the chemical potential of the
+ * electrons nor composition derivatives: the free energy of one composition does not hold them. A table of electrons and
+ * positrons alone takes any composition; their chemical potential is (F + P/rho) m_u/Y_e, whose error is that of the pressure times
+ * P/(n_e kT) where pairs outnumber the net electrons.
  */
 export function tabulated(table: FreeEnergyTable): Contribution {
   const { freezing } = table;
@@ -58,16 +68,21 @@ export function tableEquationOfState(table: FreeEnergyTable, ...beside: readonly
 
 function contributionOf(table: FreeEnergyTable, phase: SheetPhase | "equilibrium"): Contribution {
   const cold = coldLookUp(table.cold, table.density);
-  const lookUp = (name: SheetPhase): ReturnType<typeof surfaceOf> | undefined => {
+  const lookUp = (name: SheetPhase): Surface | undefined => {
     const sheet = table.sheets.find((one) => one.phase === name);
     return sheet && surfaceOf(sheet, table.density, table.temperature);
   };
   const low = lookUp(phase === "equilibrium" ? "crystal" : phase);
   const high = phase === "equilibrium" ? lookUp("liquid") : low;
   if (low === undefined || high === undefined) throw new Error(`a table without the sheet ${phase}`);
+  const lowNearest = nearestBlocks(low);
+  const highNearest = nearestBlocks(high);
   const factor = table.freezing?.factor ?? 0;
   const highest = table.freezing?.highestDensity ?? 0;
-  const accepted = acceptance(table.composition);
+  const perElectron = table.holdsFor === "electron density";
+  const accepted: Acceptance = { own: table.composition, perElectron, last: undefined, share: Float64Array.of(1) };
+  const own = new Float64Array(SECOND_ORDER_COUNT);
+  const [lowest, top] = [table.density.lowest, table.density.highest];
   const domain: Domain = Object.freeze({
     density: Object.freeze([table.density.lowest, table.density.highest] as const),
     temperature: Object.freeze([table.temperature.lowest, table.temperature.highest] as const),
@@ -81,27 +96,61 @@ function contributionOf(table: FreeEnergyTable, phase: SheetPhase | "equilibrium
     return density <= highest && point[TEMPERATURE]! <= factor * Math.cbrt(density) ? 1 : 0;
   }
 
+  /** Looks up the point: sheet, cold curve, share. False where the matter has none of what the table holds. */
+  function lookUpAt(point: Float64Array, composition: Composition, order: Order): Surface | undefined {
+    if (composition !== accepted.last) accept(accepted, composition);
+    const share = accepted.share[0]!;
+    if (share === 0) return undefined;
+    const density = point[DENSITY]! * share;
+    if (!(density >= lowest && density <= top)) refuseDensity(table, point, share);
+    const surface = crystalAt(point) === 1 ? low! : high!;
+    const u = Math.log(density);
+    surface.share[0] = share;
+    surface.at[0] = u;
+    surface.at[1] = Math.log(point[TEMPERATURE]!);
+    cold.at[0] = u;
+    if (!fillSurface(surface, order)) {
+      const nearest = surface === low ? lowNearest : highNearest;
+      if (!fillBeyond(surface, nearest, order, phase === "liquid" || phase === "crystal")) refuseBlock(point);
+    }
+    fillCold(cold, order);
+    return surface;
+  }
+
+  function tellPhase(point: Float64Array): void {
+    if (table.freezing !== undefined) point[CRYSTAL_FRACTION] = crystalAt(point);
+  }
+
+  /** mu - m_e c^2 = d(rho F)/d n_e, from the members of the gas alone. */
+  function tellPotential(point: Float64Array, surface: Surface, composition: Composition): void {
+    for (let k = 0; k < SECOND_ORDER_COUNT; k++) own[k] = 0;
+    addTableMembers(cold, surface, 2, own);
+    const potential = (own[ENERGY]! - own[ENTROPY]! + own[PRESSURE]!) / composition.electronsPerGram;
+    point[ELECTRON_CHEMICAL_POTENTIAL] = potential;
+    point[ELECTRON_DEGENERACY] = potential / (boltzmannConstant * point[TEMPERATURE]!);
+  }
+
   return {
     name: `table of ${table.source.tabulated.join(" + ")}`,
     domain,
+    standsFor: table.source.tabulated,
+    excludes: table.source.tabulated,
+    ...(perElectron ? { dependsOn: "electron density" as const } : {}),
     validity:
-      `Interpolated at ${table.composition.name}: pressure within ${bound(table, "pressure")}, entropy within ` +
-      `${bound(table, "specificEntropy")} of the equation of state it was made from. ${table.source.validity.join(" ")}`,
+      `Interpolated: pressure within ${bound(table, "pressure")}, entropy within ${bound(table, "specificEntropy")} of the ` +
+      `equation of state it was made from. ${table.source.validity.join(" ")}`,
     add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void {
-      if (composition !== accepted.last) accept(accepted, composition);
-      const crystal = crystalAt(point);
-      const surface = crystal === 1 ? low : high;
-      point[CRYSTAL_FRACTION] = crystal;
-      const u = Math.log(point[DENSITY]!);
-      surface.at[0] = u;
-      surface.at[1] = Math.log(point[TEMPERATURE]!);
-      cold.at[0] = u;
-      if (!fillSurface(surface, order)) refuseBlock(point);
-      fillCold(cold, order);
+      const surface = lookUpAt(point, composition, order);
+      if (surface === undefined) return;
+      tellPhase(point);
       addTableMembers(cold, surface, order, members);
+      if (perElectron) tellPotential(point, surface, composition);
     },
-    rewrite(point: Float64Array): void {
-      point[CRYSTAL_FRACTION] = crystalAt(point);
+    rewrite(point: Float64Array, composition: Composition): void {
+      tellPhase(point);
+      if (!perElectron) return;
+      const surface = lookUpAt(point, composition, 2);
+      if (surface !== undefined) tellPotential(point, surface, composition);
     },
   };
 }
@@ -109,35 +158,52 @@ function contributionOf(table: FreeEnergyTable, phase: SheetPhase | "equilibrium
 const bound = (table: FreeEnergyTable, name: "pressure" | "specificEntropy"): string =>
   table.certificate.errors[name].bound.toExponential(1).replace("e+", "e");
 
-/** The composition of a table, and the last object seen that equals it. */
+/** The composition of a table, and the last object seen that it holds for. */
 interface Acceptance {
   readonly own: Composition;
-  last: Composition;
+  readonly perElectron: boolean;
+  last: Composition | undefined;
+  /** Slot 0: density of the table over density of the matter. */
+  readonly share: Float64Array;
 }
 
-const acceptance = (own: Composition): Acceptance => ({ own, last: own });
-
-/** Refuses a composition other than the table's; an equal one made anew passes. */
+/** Refuses a composition that the table does not hold for; one equal to its own but made anew passes. */
 function accept(accepted: Acceptance, composition: Composition): void {
   const { own } = accepted;
   requireComposition(composition);
-  const same =
-    composition.species.length === own.species.length &&
-    composition.species.every((one, i) => {
-      const mine = own.species[i]!;
-      return one.label === mine.label && one.nucleonFraction === mine.nucleonFraction && one.ionMass === mine.ionMass;
-    });
-  if (!same) {
+  if (accepted.perElectron) accepted.share[0] = composition.electronsPerNucleon / own.electronsPerNucleon;
+  else if (!isSame(composition, own)) {
     const allowed = `${own.name}: this table holds one composition`;
     throw new FermistateError("invalid-composition", { argument: "composition", given: composition.name, allowed });
   }
   accepted.last = composition;
 }
 
+function isSame(a: Composition, b: Composition): boolean {
+  return (
+    a.species.length === b.species.length &&
+    a.species.every((one, i) => {
+      const other = b.species[i]!;
+      return (
+        one.label === other.label && one.nucleonFraction === other.nucleonFraction && one.ionMass === other.ionMass
+      );
+    })
+  );
+}
+
+function refuseDensity(table: FreeEnergyTable, point: Float64Array, share: number): never {
+  const { lowest, highest } = table.density;
+  throw new FermistateError("outside-domain", {
+    argument: "density",
+    given: point[DENSITY]!,
+    allowed: `${lowest / share} to ${highest / share} g/cm^3 for this composition (table)`,
+  });
+}
+
 function refuseBlock(point: Float64Array): never {
   throw new FermistateError("outside-domain", {
     argument: "density, temperature",
     given: `${point[DENSITY]} g/cm^3, ${point[TEMPERATURE]} K`,
-    allowed: "where the sheet of this phase has blocks",
+    allowed: "where the matter that was tabulated has a positive entropy",
   });
 }

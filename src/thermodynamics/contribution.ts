@@ -50,6 +50,8 @@ export interface Contribution {
 
   /** Names of contributions that it contains or that may not stand beside it; `combine` refuses such a sum. */
   readonly excludes?: readonly string[];
+  /** Names of the contributions whose place it takes, where it is a table of them. */
+  readonly standsFor?: readonly string[];
   /** Its terms one by one, where it is a sum itself: for a breakdown. */
   readonly parts?: readonly Contribution[];
   /** Its two sides, where it changes phase within its domain. */
