@@ -24,6 +24,7 @@ const floors: readonly (readonly string[])[] = [
   ["white-dwarf-matter", "contributions"],
   ["grids"],
   ["charts", "files", "parallel"],
+  ["table-build"],
   ["certify"],
   ["structure"],
   ["index"],
@@ -35,7 +36,18 @@ const forbidden: Readonly<Record<string, readonly string[]>> = {
   // The reference shares no code with what it judges.
   certify: ["numerics", "fermi-gas"],
   // The core: sub-paths are entered by their own name.
-  index: ["barotropes", "grids", "charts", "files", "certify", "contributions", "parallel", "structure"],
+  index: [
+    "barotropes",
+    "grids",
+    "charts",
+    "files",
+    "certify",
+    "contributions",
+    "parallel",
+    "structure",
+    "tables",
+    "table-build",
+  ],
 };
 
 /** Packages a room may import; any other room imports none. `node:` stands for every module of Node. */
@@ -44,6 +56,7 @@ const packages: Readonly<Record<string, readonly string[]>> = {
   files: ["node:"],
   certify: ["decimal.js"],
   parallel: ["node:", "tinypool"],
+  "table-build": ["node:", "zod/mini"],
   cli: ["node:", "zod/mini"],
 };
 

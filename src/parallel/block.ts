@@ -35,6 +35,12 @@ export interface Block {
   readonly which?: Uint32Array;
 }
 
+/** What a thread is asked: to make its equation of state, and to do a block where there is one. */
+export interface Question {
+  readonly source: PlainSource;
+  readonly block?: Block;
+}
+
 /** What a thread answers: nothing but a failure, the numbers are in the columns. */
 export interface Answer {
   readonly failure?: PlainError;

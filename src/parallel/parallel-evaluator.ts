@@ -4,7 +4,15 @@ import { FermistateError } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
 import { checkBatch } from "../thermodynamics/columns.js";
 import type { BatchInput, BatchOutput, EquationOfState } from "../thermodynamics/equation-of-state.js";
-import { type Columns, type PlainError, packCompositions, type TaskName, unpackError } from "./block.js";
+import {
+  type Answer,
+  type Columns,
+  type PlainError,
+  packCompositions,
+  type Question,
+  type TaskName,
+  unpackError,
+} from "./block.js";
 import { asFailure, loadMatter, type MatterSource, plainSource, refuseNesting } from "./matter-source.js";
 import { isThread } from "./thread-mark.js";
 import { startThreads, type Threads } from "./threads.js";
@@ -64,6 +72,12 @@ const rowsPerComposition = 32;
 /** Rows of a block: long against a message, short enough that threads end together. */
 const blockRows: readonly [fewest: number, most: number] = [1024, 16384];
 
+/** The built file of parallel-worker.ts stands beside the file this code is built into. */
+const workerFile: URL = new URL(
+  import.meta.url.endsWith(".cjs") ? "./parallel-worker.cjs" : "./parallel-worker.js",
+  import.meta.url,
+);
+
 /**
  * Opens threads for large batches of one equation of state. Every thread makes its own copy of it, so the caller says how.
  *
@@ -95,8 +109,8 @@ export async function parallelEvaluator(
   let closed = false;
 
   /** Threads that have all loaded. */
-  async function open(): Promise<Threads> {
-    const threads = await startThreads(count);
+  async function open(): Promise<Threads<Question, Answer>> {
+    const threads = await startThreads<Question, Answer>(count, workerFile);
     const answers = await Promise.all(Array.from({ length: count }, () => threads.ask({ source })));
     const failure = answers.find((answer) => answer.failure !== undefined)?.failure;
     if (failure === undefined) return threads;
@@ -109,7 +123,7 @@ export async function parallelEvaluator(
   await threads;
   const own = await loadMatter(source);
 
-  async function living(): Promise<Threads> {
+  async function living(): Promise<Threads<Question, Answer>> {
     const current = threads;
     const isAlive = await current.then(
       (one) => one.isAlive(),

@@ -1,7 +1,7 @@
 /** What runs in a thread: makes the equation of state once, then answers blocks. Never throws. */
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
-import { type Answer, type Block, packError, run } from "./block.js";
-import { loadMatter, type PlainSource, refuseNesting } from "./matter-source.js";
+import { type Answer, packError, type Question, run } from "./block.js";
+import { loadMatter, refuseNesting } from "./matter-source.js";
 import { hasAskedForThreads, markThread } from "./thread-mark.js";
 
 markThread();
@@ -9,7 +9,7 @@ markThread();
 let matter: Promise<EquationOfState> | undefined;
 
 /** Answers a block; without one, makes the equation of state. */
-export async function answer({ source, block }: { source: PlainSource; block?: Block }): Promise<Answer> {
+export async function answer({ source, block }: Question): Promise<Answer> {
   try {
     matter ??= loadMatter(source);
     const made = await matter;

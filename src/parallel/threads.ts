@@ -3,26 +3,23 @@
  * once nobody writes to the shared columns any more. (The pool alone would wait forever for a thread that has exited.)
  */
 import { FermistateError } from "../errors.js";
-import type { Answer } from "./block.js";
 
 /** Several threads that answer requests. */
-export interface Threads {
+export interface Threads<Request, Answer> {
   /** False once a thread has died or {@link Threads.end} was called. */
   isAlive(): boolean;
   /** One request to one thread. Rejects with `worker-failed` when the threads end before it is answered. */
-  ask(request: unknown): Promise<Answer>;
+  ask(request: Request): Promise<Answer>;
   /** Ends all threads; what is under way is refused for the reason given. */
   end(reason: string): Promise<void>;
 }
 
-/** The built file of parallel-worker.ts stands beside the file this code is built into. */
-const workerFile: URL = new URL(
-  import.meta.url.endsWith(".cjs") ? "./parallel-worker.cjs" : "./parallel-worker.js",
-  import.meta.url,
-);
-
-/** Starts `count` threads. */
-export async function startThreads(count: number, file: URL = workerFile): Promise<Threads> {
+/**
+ * Starts `count` threads.
+ *
+ * @param file - a module that exports `answer(request)`
+ */
+export async function startThreads<Request, Answer>(count: number, file: URL): Promise<Threads<Request, Answer>> {
   const { Tinypool } = await import("tinypool");
   // Without atomics a thread that waits keeps its event loop: an error of the caller's code outside of a task is seen.
   const pool = new Tinypool({
@@ -50,7 +47,7 @@ export async function startThreads(count: number, file: URL = workerFile): Promi
     thread.once("exit", (code: number) => setImmediate(() => void end(`a thread has exited with code ${code}`)));
   }
 
-  function ask(request: unknown): Promise<Answer> {
+  function ask(request: Request): Promise<Answer> {
     if (ended !== undefined) return ended.then(() => Promise.reject(failure("the threads have ended")));
     return new Promise((resolve, reject) => {
       waiting.add(reject);

@@ -2,6 +2,7 @@
 import { afterAll, afterEach, beforeAll, describe, expect, test, vi } from "vitest";
 import type { FermistateError } from "../../src/errors.js";
 import { type Composition, composition } from "../../src/matter/composition.js";
+import type { Answer } from "../../src/parallel/block.js";
 import { type MatterSource, type ParallelEvaluator, parallelEvaluator } from "../../src/parallel/index.js";
 import type * as ThreadsRoom from "../../src/parallel/threads.js";
 import type { BatchInput, BatchOutput, EquationOfState } from "../../src/thermodynamics/equation-of-state.js";
@@ -16,7 +17,7 @@ vi.mock("../../src/parallel/threads.js", async (original) => {
   const { startThreads } = await original<typeof ThreadsRoom>();
   return {
     async startThreads(count: number) {
-      const threads = await startThreads(count, bench.worker);
+      const threads = await startThreads<unknown, Answer>(count, bench.worker);
       const ask = (request: unknown) => {
         bench.asked++;
         return threads.ask(request);
