@@ -29,9 +29,7 @@ export function coldLookUp(curve: ColdCurve, density: TableAxis): ColdLookUp {
 export function fillCold(curve: ColdLookUp, order: number): void {
   const { nodes, basis, out, perUnit } = curve;
   const x = (curve.at[0]! - curve.start) * perUnit;
-  const i = Math.min(Math.max(Math.floor(x), 0), curve.intervals - 1) | 0;
-  basis[0] = x - i;
-  fillBasis(basis);
+  const i = Math.min(x | 0, curve.intervals - 1);
   const k = 3 * i;
   const f0 = nodes[k]!;
   const f1 = nodes[k + 1]!;
@@ -39,11 +37,35 @@ export function fillCold(curve: ColdLookUp, order: number): void {
   const f4 = nodes[k + 4]!;
   const f5 = nodes[k + 5]!;
   const rise = nodes[k + 3]! - f0;
-  out[0] = f0 + basis[3]! * rise + basis[1]! * f1 + basis[2]! * f2 + basis[4]! * f4 + basis[5]! * f5;
-  out[1] = perUnit * (basis[9]! * rise + basis[7]! * f1 + basis[8]! * f2 + basis[10]! * f4 + basis[11]! * f5);
+  // The basis of numerics/quintic.ts, in registers.
+  const t = x - i;
+  const r = 1 - t;
+  const t2 = t * t;
+  const r2 = r * r;
+  const tr = t * r;
+  out[0] =
+    f0 +
+    t2 * t * (1 + 3 * r + 6 * r2) * rise +
+    r2 * tr * (1 + 3 * t) * f1 +
+    0.5 * r2 * r * t2 * f2 -
+    t2 * tr * (1 + 3 * r) * f4 +
+    0.5 * t2 * t * r2 * f5;
+  out[1] =
+    perUnit *
+    (30 * tr * tr * rise +
+      r2 * (1 + 2 * t - 15 * t2) * f1 +
+      0.5 * r * tr * (2 - 5 * t) * f2 +
+      t2 * (1 + 2 * r - 15 * r2) * f4 -
+      0.5 * t * tr * (2 - 5 * r) * f5);
   out[2] =
-    perUnit * perUnit * (basis[15]! * rise + basis[13]! * f1 + basis[14]! * f2 + basis[16]! * f4 + basis[17]! * f5);
+    perUnit *
+    perUnit *
+    (12 * tr * (5 * (r - t) * rise - (3 - 5 * t) * f1 + (3 - 5 * r) * f4) +
+      r * (1 - 8 * t + 10 * t2) * f2 +
+      t * (1 - 8 * r + 10 * r2) * f5);
   if (order === 3) {
+    basis[0] = t;
+    fillBasis(basis);
     const third = basis[21]! * rise + basis[19]! * f1 + basis[20]! * f2 + basis[22]! * f4 + basis[23]! * f5;
     out[3] = perUnit * perUnit * perUnit * third;
   }

@@ -1,23 +1,16 @@
 /** A table as a contribution, and as an equation of state with what stands beside it. */
 import { boltzmannConstant } from "../constants.js";
 import { FermistateError } from "../errors.js";
-import { type Composition, requireComposition } from "../matter/composition.js";
-import {
-  CRYSTAL_FRACTION,
-  DENSITY,
-  ELECTRON_CHEMICAL_POTENTIAL,
-  ELECTRON_DEGENERACY,
-  TEMPERATURE,
-} from "../matter/point.js";
+import type { Composition } from "../matter/composition.js";
+import { ELECTRON_CHEMICAL_POTENTIAL, ELECTRON_DEGENERACY, TEMPERATURE } from "../matter/point.js";
 import { radiation } from "../radiation.js";
 import { combine } from "../thermodynamics/combine.js";
 import type { Contribution, Domain, PhasePair } from "../thermodynamics/contribution.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { ENERGY, ENTROPY, type Order, PRESSURE, SECOND_ORDER_COUNT } from "../thermodynamics/free-energy.js";
-import { coldLookUp, fillCold } from "./cold.js";
-import { fillBeyond, nearestBlocks } from "./extension.js";
+import { lookUp, type TableLookUp, tableLookUp, tellPhase } from "./look-up.js";
 import { addTableMembers } from "./members.js";
-import { fillSurface, type Surface, surfaceOf } from "./surface.js";
+import type { Surface } from "./surface.js";
 import type { FreeEnergyTable, SheetPhase } from "./table.js";
 
 /**
@@ -67,69 +60,14 @@ export function tableEquationOfState(table: FreeEnergyTable, ...beside: readonly
 }
 
 function contributionOf(table: FreeEnergyTable, phase: SheetPhase | "equilibrium"): Contribution {
-  const cold = coldLookUp(table.cold, table.density);
-  const lookUp = (name: SheetPhase): Surface | undefined => {
-    const sheet = table.sheets.find((one) => one.phase === name);
-    return sheet && surfaceOf(sheet, table.density, table.temperature);
-  };
-  const low = lookUp(phase === "equilibrium" ? "crystal" : phase);
-  const high = phase === "equilibrium" ? lookUp("liquid") : low;
-  if (low === undefined || high === undefined) throw new Error(`a table without the sheet ${phase}`);
-  const lowNearest = nearestBlocks(low);
-  const highNearest = nearestBlocks(high);
-  const factor = table.freezing?.factor ?? 0;
-  const highest = table.freezing?.highestDensity ?? 0;
-  const perElectron = table.holdsFor === "electron density";
-  const accepted: Acceptance = { own: table.composition, perElectron, last: undefined, share: Float64Array.of(1) };
+  const look = tableLookUp(table, phase);
   const own = new Float64Array(SECOND_ORDER_COUNT);
-  const [lowest, top] = [table.density.lowest, table.density.highest];
+  const perElectron = table.holdsFor === "electron density";
   const domain: Domain = Object.freeze({
     density: Object.freeze([table.density.lowest, table.density.highest] as const),
     temperature: Object.freeze([table.temperature.lowest, table.temperature.highest] as const),
     zeroTemperature: false,
   });
-
-  /** 1 where the ions are a crystal. */
-  function crystalAt(point: Float64Array): number {
-    if (phase !== "equilibrium") return phase === "crystal" ? 1 : 0;
-    const density = point[DENSITY]!;
-    return density <= highest && point[TEMPERATURE]! <= factor * Math.cbrt(density) ? 1 : 0;
-  }
-
-  /** Looks up the point: sheet, cold curve, share. False where the matter has none of what the table holds. */
-  function lookUpAt(point: Float64Array, composition: Composition, order: Order): Surface | undefined {
-    if (composition !== accepted.last) accept(accepted, composition);
-    const share = accepted.share[0]!;
-    if (share === 0) return undefined;
-    const density = point[DENSITY]! * share;
-    if (!(density >= lowest && density <= top)) refuseDensity(table, point, share);
-    const surface = crystalAt(point) === 1 ? low! : high!;
-    const u = Math.log(density);
-    surface.share[0] = share;
-    surface.at[0] = u;
-    surface.at[1] = Math.log(point[TEMPERATURE]!);
-    cold.at[0] = u;
-    if (!fillSurface(surface, order)) {
-      const nearest = surface === low ? lowNearest : highNearest;
-      if (!fillBeyond(surface, nearest, order, phase === "liquid" || phase === "crystal")) refuseBlock(point);
-    }
-    fillCold(cold, order);
-    return surface;
-  }
-
-  function tellPhase(point: Float64Array): void {
-    if (table.freezing !== undefined) point[CRYSTAL_FRACTION] = crystalAt(point);
-  }
-
-  /** mu - m_e c^2 = d(rho F)/d n_e, from the members of the gas alone. */
-  function tellPotential(point: Float64Array, surface: Surface, composition: Composition): void {
-    for (let k = 0; k < SECOND_ORDER_COUNT; k++) own[k] = 0;
-    addTableMembers(cold, surface, 2, own);
-    const potential = (own[ENERGY]! - own[ENTROPY]! + own[PRESSURE]!) / composition.electronsPerGram;
-    point[ELECTRON_CHEMICAL_POTENTIAL] = potential;
-    point[ELECTRON_DEGENERACY] = potential / (boltzmannConstant * point[TEMPERATURE]!);
-  }
-
   return {
     name: `table of ${table.source.tabulated.join(" + ")}`,
     domain,
@@ -140,70 +78,34 @@ function contributionOf(table: FreeEnergyTable, phase: SheetPhase | "equilibrium
       `Interpolated: pressure within ${bound(table, "pressure")}, entropy within ${bound(table, "specificEntropy")} of the ` +
       `equation of state it was made from. ${table.source.validity.join(" ")}`,
     add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void {
-      const surface = lookUpAt(point, composition, order);
+      const surface = lookUp(look, point, composition, order);
       if (surface === undefined) return;
-      tellPhase(point);
-      addTableMembers(cold, surface, order, members);
-      if (perElectron) tellPotential(point, surface, composition);
+      addTableMembers(look.cold, surface, order, members);
+      if (perElectron) tellPotential(look, surface, own, point, composition);
     },
     rewrite(point: Float64Array, composition: Composition): void {
-      tellPhase(point);
+      tellPhase(look, point);
       if (!perElectron) return;
-      const surface = lookUpAt(point, composition, 2);
-      if (surface !== undefined) tellPotential(point, surface, composition);
+      const surface = lookUp(look, point, composition, 2);
+      if (surface !== undefined) tellPotential(look, surface, own, point, composition);
     },
   };
 }
 
+/** mu - m_e c^2 = d(rho F)/d n_e, from the members of the gas alone. */
+function tellPotential(
+  look: TableLookUp,
+  surface: Surface,
+  own: Float64Array,
+  point: Float64Array,
+  composition: Composition,
+): void {
+  for (let k = 0; k < SECOND_ORDER_COUNT; k++) own[k] = 0;
+  addTableMembers(look.cold, surface, 2, own);
+  const potential = (own[ENERGY]! - own[ENTROPY]! + own[PRESSURE]!) / composition.electronsPerGram;
+  point[ELECTRON_CHEMICAL_POTENTIAL] = potential;
+  point[ELECTRON_DEGENERACY] = potential / (boltzmannConstant * point[TEMPERATURE]!);
+}
+
 const bound = (table: FreeEnergyTable, name: "pressure" | "specificEntropy"): string =>
   table.certificate.errors[name].bound.toExponential(1).replace("e+", "e");
-
-/** The composition of a table, and the last object seen that it holds for. */
-interface Acceptance {
-  readonly own: Composition;
-  readonly perElectron: boolean;
-  last: Composition | undefined;
-  /** Slot 0: density of the table over density of the matter. */
-  readonly share: Float64Array;
-}
-
-/** Refuses a composition that the table does not hold for; one equal to its own but made anew passes. */
-function accept(accepted: Acceptance, composition: Composition): void {
-  const { own } = accepted;
-  requireComposition(composition);
-  if (accepted.perElectron) accepted.share[0] = composition.electronsPerNucleon / own.electronsPerNucleon;
-  else if (!isSame(composition, own)) {
-    const allowed = `${own.name}: this table holds one composition`;
-    throw new FermistateError("invalid-composition", { argument: "composition", given: composition.name, allowed });
-  }
-  accepted.last = composition;
-}
-
-function isSame(a: Composition, b: Composition): boolean {
-  return (
-    a.species.length === b.species.length &&
-    a.species.every((one, i) => {
-      const other = b.species[i]!;
-      return (
-        one.label === other.label && one.nucleonFraction === other.nucleonFraction && one.ionMass === other.ionMass
-      );
-    })
-  );
-}
-
-function refuseDensity(table: FreeEnergyTable, point: Float64Array, share: number): never {
-  const { lowest, highest } = table.density;
-  throw new FermistateError("outside-domain", {
-    argument: "density",
-    given: point[DENSITY]!,
-    allowed: `${lowest / share} to ${highest / share} g/cm^3 for this composition (table)`,
-  });
-}
-
-function refuseBlock(point: Float64Array): never {
-  throw new FermistateError("outside-domain", {
-    argument: "density, temperature",
-    given: `${point[DENSITY]} g/cm^3, ${point[TEMPERATURE]} K`,
-    allowed: "where the matter that was tabulated has a positive entropy",
-  });
-}
