@@ -25,6 +25,7 @@
  * - `invalid-option`: an option or a command-line argument that does not exist or cannot be read
  * - `worker-failed`: a thread of `fermistate/parallel` died or could not start, or code of the caller's failed in it
  * - `file-not-written`: the file system refused; no partial file is left
+ * - `invalid-file`: a file or bytes that are not what they claim: damaged, truncated, of another version
  */
 export type ErrorCode =
   | "not-a-number"
@@ -43,7 +44,8 @@ export type ErrorCode =
   | "too-large"
   | "invalid-option"
   | "worker-failed"
-  | "file-not-written";
+  | "file-not-written"
+  | "invalid-file";
 
 /** What was refused: the argument's name, its value, what is allowed, and where in a batch it stood. */
 export interface ErrorDetails {

@@ -1,5 +1,5 @@
 /**
- * Text files written whole or not at all. Node only.
+ * Files written whole or not at all. Node only.
  *
  * Each text goes to a new file of a random name in the folder of its target, is flushed to the disk (fsync), and takes
  * the target's name by `rename`, which POSIX makes atomic: a reader sees the old file or the new one, never a part.
@@ -12,14 +12,20 @@ import { FermistateError } from "../errors.js";
 import { reasonOf, refused } from "./refusal.js";
 import { makeFolders, type Target, targetOf } from "./target.js";
 
-/** A text: a string, or pieces of one, made as they are written (no piece may end inside a surrogate pair). */
-export type Text = string | Iterable<string> | AsyncIterable<string>;
+/**
+ * A text: a string, or pieces of one, made as they are written (no piece may end inside a surrogate pair). Bytes, such as
+ * those of an HDF5 file, are written as they are.
+ */
+export type Text = Piece | Iterable<Piece> | AsyncIterable<Piece>;
+
+/** Characters or bytes. */
+export type Piece = string | Uint8Array;
 
 /** One file to write. */
 export interface TextFile {
   /** Path of the file. A symbolic link is followed: the file it names is replaced, the link stays. */
   readonly path: string;
-  /** What to write, in UTF-8. */
+  /** What to write, in UTF-8, or bytes. */
   readonly text: Text;
 }
 
@@ -42,7 +48,7 @@ export interface WrittenFile {
 }
 
 /**
- * Writes one text file whole or not at all.
+ * Writes one file whole or not at all.
  *
  * @throws FermistateError `file-not-written` with the path and the system's reason: a missing folder (unless
  * `createFolders`), no permission, a full disk, a target that is a folder or a device, an existing file where
@@ -61,7 +67,7 @@ export async function writeText(path: string, text: Text, options: WriteOptions 
 }
 
 /**
- * Writes several text files; none takes its name before all are complete on the disk.
+ * Writes several files; none takes its name before all are complete on the disk.
  *
  * The names are then taken one after the other. Should the system refuse one of them in that last step, which all checks
  * before make unlikely, the error says which files are already new.
@@ -118,21 +124,25 @@ async function writePieces(
   signal: WriteOptions["signal"],
 ): Promise<number> {
   let bytes = 0;
-  for await (const piece of typeof text === "string" ? [text] : text) {
+  for await (const piece of isPiece(text) ? [text] : text) {
     if (signal?.aborted) throw refused(path, "writing was interrupted");
-    if (typeof piece !== "string") {
+    if (!isPiece(piece)) {
       throw new FermistateError("invalid-option", {
         argument: "text",
         given: piece,
-        allowed: "pieces that are strings",
+        allowed: "pieces that are strings or bytes (Uint8Array)",
       });
     }
-    const data = Buffer.from(piece, "utf8");
+    const data = typeof piece === "string" ? Buffer.from(piece, "utf8") : piece;
     await attempt(path, () => file.appendFile(data));
     bytes += data.length;
   }
   if (signal?.aborted) throw refused(path, "writing was interrupted");
   return bytes;
+}
+
+function isPiece(value: unknown): value is Piece {
+  return typeof value === "string" || value instanceof Uint8Array;
 }
 
 /** Gives every complete file its name. */
@@ -206,7 +216,7 @@ function checkFiles(files: readonly TextFile[]): void {
     if (typeof path !== "string" || path === "" || path.includes("\0")) fail("path", path, "the path of a file");
     const iterable =
       typeof text === "object" && text !== null && (Symbol.iterator in text || Symbol.asyncIterator in text);
-    if (typeof text !== "string" && !iterable) fail("text", text, "a string or pieces of one");
+    if (!isPiece(text) && !iterable) fail("text", text, "a string, bytes (Uint8Array) or pieces of them");
   }
 }
 

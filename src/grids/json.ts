@@ -28,8 +28,27 @@ export function gridToJson(grid: Grid, texts: GridTexts = {}): string {
 
 /** The text of {@link gridToJson} in pieces of about 64 kB, so that memory stays bounded. */
 export function* gridToJsonPieces(grid: Grid, texts: GridTexts = {}): Generator<string, void, undefined> {
+  let piece = `${JSON.stringify(aboutGrid(grid, texts), null, 2).slice(0, -2)},\n  "columns": {`;
+  for (const [i, name] of grid.columnNames.entries()) {
+    const { unit, description } = columnOf(name);
+    const about = JSON.stringify({ unit, description }, null, 6).slice(0, -2);
+    piece += `${i === 0 ? "" : ","}\n    "${name}": ${about},\n      "values": [`;
+    const column = grid.columns[name]!;
+    for (let start = 0; start < column.length; start += batch) {
+      piece += (start === 0 ? "" : ",") + numbersText(Array.from(column.subarray(start, start + batch)), '"');
+      if (piece.length < pieceLength) continue;
+      yield piece;
+      piece = "";
+    }
+    piece += "]\n    }";
+  }
+  yield `${piece}\n  }\n}\n`;
+}
+
+/** What a grid is, but for its columns: all that a file says of it besides numbers and units. */
+export function aboutGrid(grid: Grid, texts: GridTexts): Readonly<Record<string, unknown>> {
   const { composition } = grid;
-  const head = {
+  return {
     title: titleOf(grid, texts),
     ...(texts.note === undefined ? {} : { note: texts.note }),
     creator: `fermistate ${grid.libraryVersion}`,
@@ -52,19 +71,4 @@ export function* gridToJsonPieces(grid: Grid, texts: GridTexts = {}): Generator<
     order: grid.order,
     shape: grid.shape,
   };
-  let piece = `${JSON.stringify(head, null, 2).slice(0, -2)},\n  "columns": {`;
-  for (const [i, name] of grid.columnNames.entries()) {
-    const { unit, description } = columnOf(name);
-    const about = JSON.stringify({ unit, description }, null, 6).slice(0, -2);
-    piece += `${i === 0 ? "" : ","}\n    "${name}": ${about},\n      "values": [`;
-    const column = grid.columns[name]!;
-    for (let start = 0; start < column.length; start += batch) {
-      piece += (start === 0 ? "" : ",") + numbersText(Array.from(column.subarray(start, start + batch)), '"');
-      if (piece.length < pieceLength) continue;
-      yield piece;
-      piece = "";
-    }
-    piece += "]\n    }";
-  }
-  yield `${piece}\n  }\n}\n`;
 }

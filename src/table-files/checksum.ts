@@ -1,0 +1,30 @@
+/** The checksum of a table: of what it says, whatever the file that carries it. `checksumRecipe` has it in words. */
+import type { FreeEnergyTable } from "../tables/table.js";
+import { type Item, itemsOf } from "./items.js";
+import { sha256, utf8 } from "./platform.js";
+
+/**
+ * SHA-256 of the content of a table, 64 hexadecimal digits: equal for equal tables in HDF5, in CSV and in memory.
+ *
+ * @throws FermistateError `invalid-option` in a browser's page that was not served by https or localhost
+ */
+export async function tableChecksum(table: FreeEnergyTable): Promise<string> {
+  return checksumOf(itemsOf(table));
+}
+
+/** The same of items. */
+export async function checksumOf(items: readonly Item[]): Promise<string> {
+  let list = "";
+  for (const item of items) {
+    const shape = item.shape.length === 0 ? "scalar" : item.shape.join("x");
+    list += `${await sha256(bytesOf(item))} ${item.kind} ${shape} ${item.name}\n`;
+  }
+  return sha256(utf8(list));
+}
+
+/** The bytes of an item: a view of its memory, which is little-endian wherever WebAssembly is at home. */
+function bytesOf({ kind, values }: Item): Uint8Array {
+  if (kind === "text") return utf8((values as readonly string[]).map((text) => `${text}\n`).join(""));
+  const { buffer, byteOffset, byteLength } = values as Exclude<Item["values"], readonly string[]>;
+  return new Uint8Array(buffer, byteOffset, byteLength);
+}

@@ -1,0 +1,58 @@
+/** A table as an HDF5 file. */
+import type { FreeEnergyTable } from "../tables/table.js";
+import { libraryVersion } from "../version.js";
+import { checkTable } from "./check.js";
+import { checksumOf } from "./checksum.js";
+import { checkedTable, requireBytes } from "./checked.js";
+import { hdf5OfItems } from "./hdf5-items.js";
+import { hdf5Reader } from "./hdf5-reader.js";
+import { formatItems, itemsOf } from "./items.js";
+import { checksumRecipe, recipe, title } from "./meanings.js";
+import { optionalPackage } from "./optional.js";
+
+/**
+ * The bytes of an HDF5 file that holds a table and describes itself.
+ *
+ * Every part is a dataset with attributes `units` and `description`; the root's attribute `reading` says how to get numbers
+ * out, `checksum_recipe` how the checksum in `format/checksum` is made. Datasets are contiguous and not compressed: any
+ * HDF5 library reads them, and {@link tableFromHdf5}. The same table gives the same bytes.
+ *
+ * Needs the package h5wasm, which is optional: `npm install h5wasm`.
+ *
+ * @throws FermistateError `invalid-option` where `table` is no table of this layout, or h5wasm is missing
+ * @example
+ * ```ts no-run
+ * import { writeText } from "fermistate/files";
+ * import { tableToHdf5 } from "fermistate/table-files";
+ * await writeText("core.h5", await tableToHdf5(table));
+ * ```
+ */
+export async function tableToHdf5(table: FreeEnergyTable): Promise<Uint8Array> {
+  const items = itemsOf(checkTable(table, "invalid-option"));
+  const checksum = await checksumOf(items);
+  const hdf5 = await optionalPackage("h5wasm", "HDF5", () => import("h5wasm"));
+  await hdf5.ready;
+  return hdf5OfItems(hdf5, [...items, ...formatItems(items, checksum)], {
+    title: `${title}: ${table.composition.name}`,
+    creator: `fermistate ${libraryVersion}`,
+    reading: recipe,
+    checksum_recipe: checksumRecipe,
+  });
+}
+
+/**
+ * The table in an HDF5 file of {@link tableToHdf5}. Needs no package; runs in browsers.
+ *
+ * What comes back equals what was written, or there is an error: structure, sizes, levels, numbers and the checksum of the
+ * content are checked. Takes memory for the numbers once more while the checksum is made, whatever the file claims; nothing
+ * in a file is run.
+ *
+ * @param bytes - the whole file
+ * @throws FermistateError `invalid-file` for a file that is damaged, truncated, of another version or layout, or written by
+ * another program
+ */
+export async function tableFromHdf5(bytes: Uint8Array): Promise<FreeEnergyTable> {
+  requireBytes(bytes);
+  const read = hdf5Reader(bytes);
+  return checkedTable(read, read("format/checksum", "text", [])[0]!);
+}

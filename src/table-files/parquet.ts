@@ -1,0 +1,50 @@
+/** A grid as an Apache Parquet file. */
+import type { GridTexts } from "../grids/description.js";
+import { columnOf, type Grid } from "../grids/grid.js";
+import { aboutGrid } from "../grids/json.js";
+import { optionalPackage } from "./optional.js";
+
+/**
+ * The bytes of a Parquet file with the columns of a grid, doubles that read back to the same bits, infinities included.
+ *
+ * The file's key-value metadata are `title`, `creator`, `units` and `descriptions` (JSON, by column) and `about` (JSON: what
+ * the grid is, its composition, conventions and validity, as in `gridToJson`).
+ *
+ * Needs the package hyparquet-writer, which is optional: `npm install hyparquet-writer`.
+ *
+ * @throws FermistateError `invalid-option` where hyparquet-writer is missing
+ * @example
+ * ```ts
+ * import { composition, whiteDwarfMatter } from "fermistate";
+ * import { grid } from "fermistate/grids";
+ * import { gridToParquet } from "fermistate/table-files";
+ * const made = grid(whiteDwarfMatter(), composition({ He4: 1 }), { density: [1e4, 1e5], temperature: 1e8 });
+ * const bytes = await gridToParquet(made);
+ * String.fromCharCode(...bytes.subarray(0, 4)); // => "PAR1"
+ * ```
+ */
+export async function gridToParquet(grid: Grid, texts: GridTexts = {}): Promise<Uint8Array> {
+  const { parquetWriteBuffer } = await optionalPackage("hyparquet-writer", "Parquet", () => import("hyparquet-writer"));
+  const byColumn = (of: (name: (typeof grid.columnNames)[number]) => string): string =>
+    JSON.stringify(Object.fromEntries(grid.columnNames.map((name) => [name, of(name)])));
+  const { title, creator, infinities, ...about } = aboutGrid(grid, texts); // infinities are themselves here
+  const buffer = parquetWriteBuffer({
+    columnData: grid.columnNames.map((name) => ({
+      name,
+      data: grid.columns[name]!,
+      type: "DOUBLE",
+      nullable: false,
+      // A dictionary would take -0 for 0; the axes have no zero with a sign, and repeat.
+      ...(name === "density" || name === "temperature" ? {} : { encoding: "PLAIN" }),
+    })),
+    createdBy: String(creator),
+    kvMetadata: [
+      { key: "title", value: String(title) },
+      { key: "creator", value: String(creator) },
+      { key: "units", value: byColumn((name) => columnOf(name).unit) },
+      { key: "descriptions", value: byColumn((name) => columnOf(name).description) },
+      { key: "about", value: JSON.stringify(about) },
+    ],
+  });
+  return new Uint8Array(buffer);
+}
