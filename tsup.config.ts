@@ -108,6 +108,7 @@ export default defineConfig([
       parallel: "src/parallel/index.ts",
       "parallel-worker": "src/parallel/parallel-worker.ts", // stands beside parallel.js for its threads
       structure: "src/structure/index.ts",
+      "table-files": "src/table-files/index.ts",
       tables: "src/tables/index.ts",
       "table-build": "src/table-build/index.ts",
       "strip-worker": "src/table-build/strip-worker.ts", // stands beside table-build.js for its threads

@@ -21,6 +21,7 @@ const options = {
     "certify/index",
     "parallel/index",
     "structure/index",
+    "table-files/index",
   ].map((file) => `../src/${file}.ts`),
   tsconfig: "../test/tsconfig.json",
   out: "api",

@@ -23,7 +23,7 @@ const floors: readonly (readonly string[])[] = [
   ["tables"],
   ["white-dwarf-matter", "contributions"],
   ["grids"],
-  ["charts", "files", "parallel"],
+  ["charts", "files", "parallel", "table-files"],
   ["table-build"],
   ["certify"],
   ["structure"],
@@ -47,6 +47,7 @@ const forbidden: Readonly<Record<string, readonly string[]>> = {
     "structure",
     "tables",
     "table-build",
+    "table-files",
   ],
 };
 
@@ -57,6 +58,7 @@ const packages: Readonly<Record<string, readonly string[]>> = {
   certify: ["decimal.js"],
   parallel: ["node:", "tinypool"],
   "table-build": ["node:", "zod/mini"],
+  "table-files": ["h5wasm", "hyparquet-writer", "zod/mini"],
   cli: ["node:", "zod/mini"],
 };
 

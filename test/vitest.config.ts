@@ -23,7 +23,7 @@ export default defineConfig({
         resolve: {
           alias: [
             { find: /^fermistate$/, replacement: `${root}src/index.ts` },
-            { find: /^fermistate\/(\w+)$/, replacement: `${root}src/$1/index.ts` },
+            { find: /^fermistate\/([\w-]+)$/, replacement: `${root}src/$1/index.ts` },
           ],
         },
         test: {

@@ -31,6 +31,7 @@ const errorOfQuantity = z.object({
 
 const structure = z.object({
   layout: z.literal(LAYOUT),
+  holdsFor: z.enum(["one composition", "electron density"]),
   density: axis,
   temperature: axis,
   cold: z.object({ temperature: notNegative, nodes: z.instanceof(Float64Array) }),

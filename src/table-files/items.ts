@@ -68,6 +68,7 @@ export function itemsOf(table: FreeEnergyTable): Item[] {
   const errors = certified.map((name) => certificate.errors[name]);
   return [
     integer("format/layout", table.layout),
+    text("composition/holds_for", table.holdsFor),
     text("composition/name", matter.name),
     texts(
       "composition/label",
@@ -136,6 +137,7 @@ export function tableOfItems(read: ReadItem): FreeEnergyTable {
     highest: read(`${name}/highest`, "float64", [])[0]!,
     blocks: read(`${name}/blocks`, "int32", [])[0]!,
   });
+  const holdsFor = read("composition/holds_for", "text", [])[0] as FreeEnergyTable["holdsFor"];
   const matter = readComposition(read);
   const density = axis("axes/density");
   const temperature = axis("axes/temperature");
@@ -179,6 +181,7 @@ export function tableOfItems(read: ReadItem): FreeEnergyTable {
   const certificate = { places, target, blocksAboveTarget, errors };
   return {
     layout,
+    holdsFor,
     composition: matter,
     density,
     temperature,

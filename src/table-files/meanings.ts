@@ -25,6 +25,8 @@ export const recipe: readonly string[] = [
     "between two nodes, too.",
   "With a liquid and a crystal sheet the crystal one holds at T < sheets/freezing/factor rho^(1/3) and rho <= " +
     "sheets/freezing/highest_density, else the liquid one.",
+  "Where composition/holds_for is electron density: matter of y times the electrons per nucleon of this composition has " +
+    "y F(y rho, T).",
   "Derived constants follow CODATA 2022. Compositions are nucleon fractions: a species has X rho/(A m_u) nuclei per cm^3.",
 ];
 
@@ -41,6 +43,9 @@ const relative =
 
 const meanings: Readonly<Record<string, Meaning>> = {
   "format/layout": { units: "1", description: "version of this layout" },
+  "composition/holds_for": {
+    description: "one composition, or electron density: electrons and positrons alone, in any composition",
+  },
   "composition/name": { description: "the composition in words" },
   "composition/label": { description: "nuclides by charge number, then mass number; mean: one fictitious nucleus" },
   "composition/mass_number": { units: "1", description: "mass number A" },

@@ -74,6 +74,7 @@ export function inventedTable(
     phases === 1 ? [sheet("single", 30, everywhere)] : [sheet("liquid", 30, everywhere), sheet("crystal", 29.9, partly)];
   return {
     layout: 1,
+    holdsFor: "one composition",
     composition: matter,
     density,
     temperature,
