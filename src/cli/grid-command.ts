@@ -6,6 +6,7 @@ import { defaultQuantities, type Grid, grid } from "../grids/grid.js";
 import { gridToJsonPieces } from "../grids/json.js";
 import type { GridOptions } from "../grids/request.js";
 import { regime } from "../regime/regime.js";
+import { parquetWriter } from "../table-files/parquet.js";
 import { quantityNames } from "../thermodynamics/quantities.js";
 import { type Command, command } from "./command.js";
 import { matterOf, matterOptions } from "./matter.js";
@@ -16,7 +17,7 @@ import { axis, flag, number, oneOf, path, quantityList, wordList, words } from "
 
 export const gridCommand: Command = command({
   name: "grid",
-  summary: "many states over density and temperature: CSV, JSON, charts",
+  summary: "many states over density and temperature: CSV, JSON, Parquet, charts",
   usage: "grid --density AXIS --temperature AXIS --composition LABEL=X,... [--out PATH]",
   options: {
     density: { value: "AXIS", help: "baryon mass densities, g/cm^3; how to write an axis stands below", read: axis },
@@ -41,9 +42,11 @@ export const gridCommand: Command = command({
       read: z.optional(path),
     },
     format: {
-      value: "csv|json|both",
-      help: "csv (with its description beside it), json (which describes itself) or both; csv by default",
-      read: z._default(oneOf(["csv", "json", "both"]), "csv"),
+      value: "csv|json|both|parquet",
+      help:
+        "csv (with its description beside it), json (which describes itself), both, or parquet (needs the package " +
+        "hyparquet-writer); csv by default",
+      read: z._default(oneOf(["csv", "json", "both", "parquet"]), "csv"),
     },
     chart: {
       value: "NAME,...",
@@ -81,18 +84,20 @@ export const gridCommand: Command = command({
   async run(options, io) {
     const { out, chart = [], format } = options;
     if (out === undefined && chart.length > 0) throw needsOut("--chart");
-    if (out === undefined && format === "both") throw needsOut("--format both");
+    if (out === undefined && (format === "both" || format === "parquet")) throw needsOut(`--format ${format}`);
     const { equationOfState, matter } = matterOf(options);
     const outputOptions = { overwrite: options.overwrite, createFolders: options["create-folders"] };
     const output: Output = {
-      base: (out ?? "").replace(/\.(csv|json|svg)$/i, ""),
-      csv: format !== "json",
-      json: format !== "csv",
+      base: (out ?? "").replace(/\.(csv|json|svg|parquet)$/i, ""),
+      csv: format === "csv" || format === "both",
+      json: format === "json" || format === "both",
+      parquet: format === "parquet",
       charts: chart,
       ...(options.title === undefined ? {} : { title: options.title }),
       ...(options.note === undefined ? {} : { note: options.note }),
     };
     if (out !== undefined) await checkOutput([output], io.cwd, outputOptions);
+    if (output.parquet) await parquetWriter(); // before the work
 
     const start = performance.now();
     const names = options.quantities ?? defaultQuantities;

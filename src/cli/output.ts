@@ -6,6 +6,7 @@ import { type TextFile, writeTexts } from "../files/write.js";
 import { csvMetadataName, gridToCsvMetadata, gridToCsvPieces } from "../grids/csv.js";
 import type { Grid } from "../grids/grid.js";
 import { gridToJsonPieces } from "../grids/json.js";
+import { gridToParquet } from "../table-files/parquet.js";
 import type { QuantityName } from "../thermodynamics/quantities.js";
 import { interruptible } from "./interrupt.js";
 import { bytesText, table } from "./print.js";
@@ -16,6 +17,7 @@ export interface Output {
   readonly base: string;
   readonly csv: boolean;
   readonly json: boolean;
+  readonly parquet: boolean;
   /** Quantities drawn, one chart each. */
   readonly charts: readonly QuantityName[];
   readonly title?: string;
@@ -45,6 +47,7 @@ function entriesOf(output: Output): Entry[] {
         ]
       : []),
     ...(output.json ? [{ path: `${base}.json`, about: "columns and meanings in one" }] : []),
+    ...(output.parquet ? [{ path: `${base}.parquet`, about: "the columns, with units in the metadata" }] : []),
     ...charts.map((name) => ({ path: `${base}-${name}.svg`, about: `chart of ${name}` })),
   ];
 }
@@ -62,7 +65,7 @@ export async function writeOutput(
   options: OutputOptions,
 ): Promise<string> {
   const entries = made.flatMap(({ output }) => entriesOf(output));
-  const texts = made.flatMap(({ grid, output }) => textsOf(grid, output));
+  const texts = (await Promise.all(made.map(({ grid, output }) => textsOf(grid, output)))).flat();
   const files: TextFile[] = entries.map(({ path }, i) => ({ path: resolve(cwd, path), text: texts[i]! }));
   const written = await interruptible((signal) => writeTexts(files, { ...options, signal }));
   return table(
@@ -72,13 +75,14 @@ export async function writeOutput(
 }
 
 /** Texts in the order of {@link entriesOf}. */
-function textsOf(grid: Grid, output: Output): TextFile["text"][] {
+async function textsOf(grid: Grid, output: Output): Promise<TextFile["text"][]> {
   const { title, note } = output;
   const texts = { ...(title === undefined ? {} : { title }), ...(note === undefined ? {} : { note }) };
   const csvName = `${output.base}.csv`.split(/[/\\]/).at(-1)!;
   return [
     ...(output.csv ? [gridToCsvPieces(grid), gridToCsvMetadata(grid, csvName, texts)] : []),
     ...(output.json ? [gridToJsonPieces(grid, texts)] : []),
+    ...(output.parquet ? [await gridToParquet(grid, texts)] : []),
     ...output.charts.map((quantity) => chartGrid(grid, { quantity, ...texts })),
   ];
 }

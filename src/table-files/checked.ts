@@ -10,9 +10,19 @@ import { itemsOf, LAYOUT, type ReadItem, tableOfItems } from "./items.js";
 export async function checkedTable(read: ReadItem, checksum: string): Promise<FreeEnergyTable> {
   const layout = read("format/layout", "int32", [])[0];
   if (layout !== LAYOUT) throw invalidFile("layout", layout, `${LAYOUT}: another version of this library wrote it`);
-  const table = checkTable(described(read), "invalid-file");
-  // Of the table, not of the items read: names and numbers that follow from others must be theirs.
-  const found = await checksumOf(itemsOf(table));
+  const names = new Set<string>();
+  const noted: ReadItem = (name, kind, shape) => {
+    names.add(name);
+    return read(name, kind, shape);
+  };
+  const table = checkTable(described(noted), "invalid-file");
+  const items = itemsOf(table);
+  for (const { name, kind, shape, values } of items) {
+    if (names.has(name)) continue; // it has become part of the table; the rest follows from that
+    const stated = Array.from<unknown>(read(name, kind, shape));
+    if (stated.some((value, i) => value !== values[i])) throw invalidFile(name, stated, `${Array.from<unknown>(values)}`);
+  }
+  const found = await checksumOf(items);
   if (found !== checksum) throw invalidFile("checksum of the content", found, `${checksum}, as the file states it`);
   return table;
 }

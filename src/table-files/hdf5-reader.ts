@@ -44,8 +44,10 @@ type Header = ReadonlyMap<number, readonly Uint8Array[]>;
  *
  * @throws FermistateError `invalid-file`, here and from the function returned
  */
-export function hdf5Reader(bytes: Uint8Array): ReadItem {
-  const view = viewOf(bytes);
+export function hdf5Reader(given: Uint8Array): ReadItem {
+  const view = viewOf(given);
+  const bytes = new Uint8Array(given.buffer, given.byteOffset, given.byteLength); // slices of a Node Buffer are no copies
+
   const root = superblock(bytes, view);
   const headers = new Map<number, Header>();
   let left = bytes.length;

@@ -23,7 +23,7 @@ export const recipe: readonly string[] = [
     "Hermite patch).",
   "cold/nodes has F_0, dF_0/du, d2F_0/du2 at equal steps of u over the whole density axis, ends included: degree five " +
     "between two nodes, too.",
-  "With a liquid and a crystal sheet the crystal one holds at T < sheets/freezing/factor rho^(1/3) and rho <= " +
+  "With a liquid and a crystal sheet the crystal one holds at T <= sheets/freezing/factor rho^(1/3) and rho <= " +
     "sheets/freezing/highest_density, else the liquid one.",
   "Where composition/holds_for is electron density: matter of y times the electrons per nucleon of this composition has " +
     "y F(y rho, T).",

@@ -24,7 +24,7 @@ import { optionalPackage } from "./optional.js";
  * ```
  */
 export async function gridToParquet(grid: Grid, texts: GridTexts = {}): Promise<Uint8Array> {
-  const { parquetWriteBuffer } = await optionalPackage("hyparquet-writer", "Parquet", () => import("hyparquet-writer"));
+  const { parquetWriteBuffer } = await parquetWriter();
   const byColumn = (of: (name: (typeof grid.columnNames)[number]) => string): string =>
     JSON.stringify(Object.fromEntries(grid.columnNames.map((name) => [name, of(name)])));
   const { title, creator, infinities, ...about } = aboutGrid(grid, texts); // infinities are themselves here
@@ -47,4 +47,9 @@ export async function gridToParquet(grid: Grid, texts: GridTexts = {}): Promise<
     ],
   });
   return new Uint8Array(buffer);
+}
+
+/** The package that writes Parquet. @throws FermistateError `invalid-option` where it is missing */
+export function parquetWriter(): Promise<typeof import("hyparquet-writer")> {
+  return optionalPackage("hyparquet-writer", "Parquet", () => import("hyparquet-writer"));
 }

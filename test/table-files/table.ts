@@ -8,17 +8,17 @@ import type { CertifiedError, FreeEnergyTable, TableSheet } from "../../src/tabl
 const density = { lowest: 1e4, highest: 1e8, blocks: 2 };
 const temperature = { lowest: 1e6, highest: 1e8, blocks: 3 };
 
-/** d^(i+j)/(du^i dv^j) of the invented L = a + 0.7 u - 0.4 v + 0.01 u v + 0.3 sin(0.9 u + 0.5 v). */
+/** d^(i+j)/(du^i dv^j) of the invented L = a - 0.2 u + 1.8 v + 0.05 sin(0.9 u + 0.5 v). */
 export function inventedSurface(a: number, u: number, v: number, i: number, j: number): number {
   const polynomial = [
-    [a + 0.7 * u - 0.4 * v + 0.01 * u * v, -0.4 + 0.01 * u, 0],
-    [0.7 + 0.01 * v, 0.01, 0],
+    [a - 0.2 * u + 1.8 * v, 1.8, 0],
+    [-0.2, 0, 0],
     [0, 0, 0],
   ];
   const phase = 0.9 * u + 0.5 * v;
   const n = i + j;
   const wave = [Math.sin(phase), Math.cos(phase), -Math.sin(phase), -Math.cos(phase)][n % 4]!;
-  return polynomial[i]![j]! + 0.3 * 0.9 ** i * 0.5 ** j * wave;
+  return polynomial[i]![j]! + 0.05 * 0.9 ** i * 0.5 ** j * wave;
 }
 
 /** F_0, F_0' and F_0'' of the invented cold curve 1e15 exp(u/3), erg/g. */
@@ -71,7 +71,7 @@ export function inventedTable(
   const everywhere = [[1, 0, 3], [0, 1, 3], [2, 1, 4], [1, 1, 5], [0, 0, 5], [1, 2, 6]] as const; // biome-ignore format: a matrix
   const partly = [[1, 1, 3], [0, 0, 3], [-1, -1, 0], [1, 0, 4], [2, 0, 4], [-1, -1, 0]] as const; // biome-ignore format: a matrix
   const sheets =
-    phases === 1 ? [sheet("single", 30, everywhere)] : [sheet("liquid", 30, everywhere), sheet("crystal", 29.9, partly)];
+    phases === 1 ? [sheet("single", 8.5, everywhere)] : [sheet("liquid", 8.5, everywhere), sheet("crystal", 8.4, partly)];
   return {
     layout: 1,
     holdsFor: "one composition",
