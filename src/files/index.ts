@@ -3,4 +3,12 @@
  *
  * @packageDocumentation
  */
-export { type Piece, type Text, type TextFile, type WriteOptions, type WrittenFile, writeText, writeTexts } from "./write.js";
+export {
+  type Piece,
+  type Text,
+  type TextFile,
+  type WriteOptions,
+  type WrittenFile,
+  writeText,
+  writeTexts,
+} from "./write.js";

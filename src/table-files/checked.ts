@@ -20,7 +20,8 @@ export async function checkedTable(read: ReadItem, checksum: string): Promise<Fr
   for (const { name, kind, shape, values } of items) {
     if (names.has(name)) continue; // it has become part of the table; the rest follows from that
     const stated = Array.from<unknown>(read(name, kind, shape));
-    if (stated.some((value, i) => value !== values[i])) throw invalidFile(name, stated, `${Array.from<unknown>(values)}`);
+    if (stated.some((value, i) => value !== values[i]))
+      throw invalidFile(name, stated, `${Array.from<unknown>(values)}`);
   }
   const found = await checksumOf(items);
   if (found !== checksum) throw invalidFile("checksum of the content", found, `${checksum}, as the file states it`);
@@ -39,5 +40,9 @@ function described(read: ReadItem): FreeEnergyTable {
 /** Throws `invalid-option` unless `bytes` are a Uint8Array. */
 export function requireBytes(bytes: unknown): void {
   if (bytes instanceof Uint8Array) return;
-  throw new FermistateError("invalid-option", { argument: "bytes", given: bytes, allowed: "a Uint8Array: the whole file" });
+  throw new FermistateError("invalid-option", {
+    argument: "bytes",
+    given: bytes,
+    allowed: "a Uint8Array: the whole file",
+  });
 }

@@ -1,6 +1,13 @@
 /** Reads the texts of `csv.ts`, trusting nothing in them; memory is taken for what is there, not for what is claimed. */
 import * as z from "zod/mini";
-import { COLD_LENGTH, highestLevel, NODE_LENGTH, type SheetPhase, type TableAxis, type TableSheet } from "../tables/table.js";
+import {
+  COLD_LENGTH,
+  highestLevel,
+  NODE_LENGTH,
+  type SheetPhase,
+  type TableAxis,
+  type TableSheet,
+} from "../tables/table.js";
 import { invalidFile } from "./invalid.js";
 import type { Arrays, Kind, ReadItem } from "./items.js";
 import { columnsOf, nodeRows } from "./rows.js";
@@ -86,7 +93,8 @@ export function readSheets(
   const rows = rowsOf(texts.nodes, "nodes");
   const counts = levels.map(nodesOf);
   const expected = counts.reduce((sum, count) => sum + count, 0);
-  if (rows.count !== expected) throw invalidFile("texts.nodes", `${rows.count} rows`, `${expected} by the levels of the blocks`);
+  if (rows.count !== expected)
+    throw invalidFile("texts.nodes", `${rows.count} rows`, `${expected} by the levels of the blocks`);
   return levels.map((sheet, i) => {
     const nodes = new Float64Array(NODE_LENGTH * counts[i]!);
     for (const row of nodeRows(sheet, density, temperature)) {
@@ -120,7 +128,11 @@ function readLevels(
   const rows = rowsOf(text, "blocks");
   const blocks = densityBlocks * temperatureBlocks;
   if (rows.count !== phases.length * blocks) {
-    throw invalidFile("texts.blocks", `${rows.count} rows`, `${phases.length} x ${densityBlocks} x ${temperatureBlocks}`);
+    throw invalidFile(
+      "texts.blocks",
+      `${rows.count} rows`,
+      `${phases.length} x ${densityBlocks} x ${temperatureBlocks}`,
+    );
   }
   return phases.map((phase) => {
     const sheet = {
@@ -172,7 +184,8 @@ function* recordsOf(text: string, file: string, width: number): Generator<readon
   for (let start = 0; start < text.length; ) {
     const end = text.indexOf("\n", start);
     const fields = text.slice(start, text[end - 1] === "\r" ? end - 1 : end).split(",");
-    if (fields.length !== width) throw invalidFile(`texts.${file}`, `a row of ${fields.length} fields`, `${width} fields`);
+    if (fields.length !== width)
+      throw invalidFile(`texts.${file}`, `a row of ${fields.length} fields`, `${width} fields`);
     yield fields;
     start = end + 1;
   }

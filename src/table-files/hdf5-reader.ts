@@ -187,7 +187,8 @@ function dataset(header: Header, name: string, kind: Kind): Dataset {
   const length = count * width;
   const place = viewOf(layout);
   const stored = address(place, 10);
-  if (length !== stored) throw invalidFile(argument, `${name} of ${stored} bytes`, `${length} bytes, as its shape has it`);
+  if (length !== stored)
+    throw invalidFile(argument, `${name} of ${stored} bytes`, `${length} bytes, as its shape has it`);
   if (kind === "text" && (count > mostTexts || width === 0)) {
     throw invalidFile(argument, `${name} of ${count} texts`, `at most ${mostTexts}, of one byte or more`);
   }

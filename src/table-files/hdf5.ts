@@ -2,8 +2,8 @@
 import type { FreeEnergyTable } from "../tables/table.js";
 import { libraryVersion } from "../version.js";
 import { checkTable } from "./check.js";
-import { checksumOf } from "./checksum.js";
 import { checkedTable, requireBytes } from "./checked.js";
+import { checksumOf } from "./checksum.js";
 import { hdf5OfItems } from "./hdf5-items.js";
 import { hdf5Reader } from "./hdf5-reader.js";
 import { formatItems, itemsOf } from "./items.js";

@@ -4,8 +4,9 @@
  *
  * @packageDocumentation
  */
+
+export type * from "../tables/table.js";
 export { tableChecksum } from "./checksum.js";
 export { type TableCsv, tableCsvNames, tableFromCsv, tableToCsv } from "./csv.js";
 export { tableFromHdf5, tableToHdf5 } from "./hdf5.js";
 export { gridToParquet } from "./parquet.js";
-export type * from "../tables/table.js";

@@ -115,11 +115,7 @@ export function itemsOf(table: FreeEnergyTable): Item[] {
         errors.map((one) => one[column]),
       ),
     ),
-    float64(
-      "certificate/errors/worst",
-      Float64Array.from(errors.flatMap((one) => one.worst)),
-      [errors.length, 2],
-    ),
+    float64("certificate/errors/worst", Float64Array.from(errors.flatMap((one) => one.worst)), [errors.length, 2]),
   ];
 }
 
@@ -239,7 +235,12 @@ const float64 = (name: string, values: Float64Array, shape: readonly number[]): 
 const numbers = (name: string, values: readonly number[]): Item =>
   float64(name, Float64Array.from(values), [values.length]);
 const number = (name: string, value: number): Item => float64(name, Float64Array.of(value), []);
-const integer = (name: string, value: number): Item => ({ name, kind: "int32", shape: [], values: Int32Array.of(value) });
+const integer = (name: string, value: number): Item => ({
+  name,
+  kind: "int32",
+  shape: [],
+  values: Int32Array.of(value),
+});
 const texts = (name: string, values: readonly string[]): Item => ({
   name,
   kind: "text",

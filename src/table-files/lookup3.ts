@@ -42,9 +42,7 @@ export function lookup3(bytes: Uint8Array): number {
 
 /** Four bytes, the lowest first; zeros beyond the end. */
 function word(bytes: Uint8Array, at: number): number {
-  return (
-    (bytes[at] ?? 0) | ((bytes[at + 1] ?? 0) << 8) | ((bytes[at + 2] ?? 0) << 16) | ((bytes[at + 3] ?? 0) << 24)
-  );
+  return (bytes[at] ?? 0) | ((bytes[at + 1] ?? 0) << 8) | ((bytes[at + 2] ?? 0) << 16) | ((bytes[at + 3] ?? 0) << 24);
 }
 
 function turned(value: number, bits: number): number {

@@ -80,7 +80,10 @@ const meanings: Readonly<Record<string, Meaning>> = {
   "certificate/errors/largest": { units: "1", description: "largest error measured, by quantity" },
   "certificate/errors/percentile99": { units: "1", description: "99 of 100 places are below, by quantity" },
   "certificate/errors/median": { units: "1", description: "half of the places are below, by quantity" },
-  "certificate/errors/worst": { units: "g/cm^3, K", description: "density and temperature of the largest error, by quantity" },
+  "certificate/errors/worst": {
+    units: "g/cm^3, K",
+    description: "density and temperature of the largest error, by quantity",
+  },
 };
 
 /** The meaning of an item; sheets share theirs. */

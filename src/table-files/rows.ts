@@ -55,7 +55,12 @@ export const columnsOf: Readonly<Record<"nodes" | "blocks" | "cold", readonly Co
     sheet,
     densityBlock,
     temperatureBlock,
-    { name: "density_level", datatype: "integer", units: "1", description: "2^level cells along density; -1: no block" },
+    {
+      name: "density_level",
+      datatype: "integer",
+      units: "1",
+      description: "2^level cells along density; -1: no block",
+    },
     { name: "temperature_level", datatype: "integer", units: "1", description: "2^level cells along temperature" },
     { name: "exponent", datatype: "integer", units: "1", description: "k in F = F_0 - 2^k exp L" },
   ],

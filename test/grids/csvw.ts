@@ -20,8 +20,8 @@ const allowed = {
 };
 /** 5.8: common properties are prefixed names or URLs; prefixes are those of the RDFa initial context (2014), in part. */
 const prefixes = ["dc", "dcterms", "dc11", "schema", "rdf", "rdfs", "skos", "prov", "xsd", "csvw"];
-/** 5.11.1: built-in datatypes, numeric ones. */
-const numeric = "number decimal integer long int short byte double float".split(" ");
+/** 5.11.1: built-in datatypes, in part. */
+const builtIn = "number decimal integer long int short byte double float string".split(" ");
 
 function common(key: string): boolean {
   const [prefix = "", name] = key.split(":");
@@ -78,7 +78,7 @@ export function complaintsAbout(document: Json): string[] {
     found.push(...unknown(name, column, [...allowed.column, ...inherited]));
     require(/^[A-Za-z0-9][A-Za-z0-9_.]*$/.test(name), `${name} is no name of a column`);
     require(typeof column["titles"] === "string" && column["titles"] !== "", `${name}: titles`);
-    require(numeric.includes(String(column["datatype"])), `${name}: datatype`);
+    require(builtIn.includes(String(column["datatype"])), `${name}: datatype`);
     require(typeof column["required"] === "boolean", `${name}: required is true or false`);
     for (const [key, value] of Object.entries(column))
       if (common(key)) found.push(...commonValues(`${name}.${key}`, value));

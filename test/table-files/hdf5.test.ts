@@ -6,9 +6,9 @@ import { join } from "node:path";
 import * as h5wasm from "h5wasm";
 import { afterAll, describe, expect, test } from "vitest";
 import { composition } from "../../src/matter/composition.js";
+import { tableChecksum, tableFromHdf5, tableToHdf5 } from "../../src/table-files/index.js";
 import { lookup3 } from "../../src/table-files/lookup3.js";
 import { optionalPackage } from "../../src/table-files/optional.js";
-import { tableChecksum, tableFromHdf5, tableToHdf5 } from "../../src/table-files/index.js";
 import { tableEquationOfState } from "../../src/tables/index.js";
 import { inventedTable } from "./table.js";
 
@@ -93,7 +93,10 @@ describe("other programs", () => {
     const text = execFileSync("h5dump", ["-m", "%.17g", "-y", "-w", "0", "-d", "/sheets/liquid/nodes", path], {
       encoding: "utf8",
     });
-    const numbers = /DATA \{([^}]*)\}/.exec(text)![1]!.split(/[\s,]+/).filter((word) => word !== "");
+    const numbers = /DATA \{([^}]*)\}/
+      .exec(text)![1]!
+      .split(/[\s,]+/)
+      .filter((word) => word !== "");
     expect(Float64Array.from(numbers, Number)).toEqual(table.sheets[0]!.nodes);
   });
 
@@ -134,7 +137,7 @@ describe("other programs", () => {
 
 describe("what is not a table is refused", () => {
   const good = inventedTable(2);
-  const [liquid, crystal] = good.sheets as [typeof good.sheets[0], typeof good.sheets[0]];
+  const [liquid, crystal] = good.sheets as [(typeof good.sheets)[0], (typeof good.sheets)[0]];
   test.each([
     ["nothing", null, "table"],
     ["another layout", { ...good, layout: 2 }, "table.layout"],
@@ -145,14 +148,42 @@ describe("what is not a table is refused", () => {
     ["one sheet of two", { ...good, sheets: [liquid] }, "table.sheets"],
     ["sheets in another order", { ...good, sheets: [crystal, liquid] }, "table.sheets"],
     ["no freezing line", { ...good, freezing: undefined }, "table.freezing"],
-    ["short levels", { ...good, sheets: [{ ...liquid, densityLevels: new Int8Array(3) }, crystal] }, "table.sheets.liquid.densityLevels"],
-    ["a level of 9", { ...good, sheets: [{ ...liquid, densityLevels: new Int8Array(6).fill(9) }, crystal] }, "table.sheets.liquid.densityLevels[0]"],
-    ["a level of -1", { ...good, sheets: [{ ...liquid, temperatureLevels: new Int8Array(6).fill(-1) }, crystal] }, "table.sheets.liquid.temperatureLevels[0]"],
-    ["a huge exponent", { ...good, sheets: [{ ...liquid, exponents: new Int16Array(6).fill(2000) }, crystal] }, "table.sheets.liquid.exponents[0]"],
-    ["nodes that lack", { ...good, sheets: [{ ...liquid, nodes: liquid.nodes.slice(9) }, crystal] }, "table.sheets.liquid.nodes"],
-    ["NaN in a node", { ...good, sheets: [{ ...liquid, nodes: liquid.nodes.map((x, i) => (i === 7 ? NaN : x)) }, crystal] }, "table.sheets.liquid.nodes[7]"],
+    [
+      "short levels",
+      { ...good, sheets: [{ ...liquid, densityLevels: new Int8Array(3) }, crystal] },
+      "table.sheets.liquid.densityLevels",
+    ],
+    [
+      "a level of 9",
+      { ...good, sheets: [{ ...liquid, densityLevels: new Int8Array(6).fill(9) }, crystal] },
+      "table.sheets.liquid.densityLevels[0]",
+    ],
+    [
+      "a level of -1",
+      { ...good, sheets: [{ ...liquid, temperatureLevels: new Int8Array(6).fill(-1) }, crystal] },
+      "table.sheets.liquid.temperatureLevels[0]",
+    ],
+    [
+      "a huge exponent",
+      { ...good, sheets: [{ ...liquid, exponents: new Int16Array(6).fill(2000) }, crystal] },
+      "table.sheets.liquid.exponents[0]",
+    ],
+    [
+      "nodes that lack",
+      { ...good, sheets: [{ ...liquid, nodes: liquid.nodes.slice(9) }, crystal] },
+      "table.sheets.liquid.nodes",
+    ],
+    [
+      "NaN in a node",
+      { ...good, sheets: [{ ...liquid, nodes: liquid.nodes.map((x, i) => (i === 7 ? NaN : x)) }, crystal] },
+      "table.sheets.liquid.nodes[7]",
+    ],
     ["one cold node", { ...good, cold: { temperature: 0, nodes: new Float64Array(3) } }, "table.cold.nodes"],
-    ["NaN in the cold curve", { ...good, cold: { temperature: 0, nodes: new Float64Array(6).fill(NaN) } }, "table.cold.nodes[0]"],
+    [
+      "NaN in the cold curve",
+      { ...good, cold: { temperature: 0, nodes: new Float64Array(6).fill(NaN) } },
+      "table.cold.nodes[0]",
+    ],
     ["an array of another kind", { ...good, cold: { temperature: 0, nodes: [1, 2, 3, 4, 5, 6] } }, "table.cold.nodes"],
     ["two lines of text", { ...good, source: { ...good.source, validity: ["a\nb"] } }, "table.source.validity.0"],
     ["a certificate of -0", { ...good, certificate: { ...good.certificate, target: -0 } }, "table.certificate.target"],
@@ -184,17 +215,34 @@ describe("files that lie, with good checksums of HDF5's own", () => {
     file.close();
     return FS.readFile("/lie.h5") as Uint8Array;
   }
-  const write = (path: string, data: never) => (file: h5wasm.File) => (file.get(path) as h5wasm.Dataset).write_slice([[]], data);
+  const write = (path: string, data: never) => (file: h5wasm.File) =>
+    (file.get(path) as h5wasm.Dataset).write_slice([[]], data);
 
   test.each([
-    ["a number changed", write("cold/nodes", inventedTable(2).cold.nodes.map((x) => x * 1.0000001) as never), "checksum of the content"],
+    [
+      "a number changed",
+      write("cold/nodes", inventedTable(2).cold.nodes.map((x) => x * 1.0000001) as never),
+      "checksum of the content",
+    ],
     ["NaN", write("cold/nodes", new Float64Array(27).fill(NaN) as never), "table.cold.nodes[0]"],
     ["another layout", write("format/layout", Int32Array.of(2) as never), "layout"],
-    ["fractions of no sum", write("composition/nucleon_fraction", Float64Array.of(0.3, 0.3) as never), "sum of fractions"],
+    [
+      "fractions of no sum",
+      write("composition/nucleon_fraction", Float64Array.of(0.3, 0.3) as never),
+      "sum of fractions",
+    ],
     ["an axis that falls", write("axes/density/lowest", Float64Array.of(1e9) as never), "table.density.highest"],
     ["negative blocks", write("axes/density/blocks", Int32Array.of(-2) as never), "bytes"],
-    ["a mass number that is not the nuclide's", write("composition/mass_number", Float64Array.of(13, 16) as never), "composition/mass_number"],
-    ["a level of 100", write("sheets/liquid/density_level", new Int8Array(6).fill(100) as never), "table.sheets.liquid.densityLevels[0]"],
+    [
+      "a mass number that is not the nuclide's",
+      write("composition/mass_number", Float64Array.of(13, 16) as never),
+      "composition/mass_number",
+    ],
+    [
+      "a level of 100",
+      write("sheets/liquid/density_level", new Int8Array(6).fill(100) as never),
+      "table.sheets.liquid.densityLevels[0]",
+    ],
   ])("%s", async (_, change, argument) => {
     await expect(tableFromHdf5(await changed(change))).rejects.toMatchObject({ code: "invalid-file", argument });
   });

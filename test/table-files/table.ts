@@ -27,7 +27,11 @@ export function inventedCold(u: number): [number, number, number] {
   return [value, value / 3, value / 9];
 }
 
-function sheet(phase: TableSheet["phase"], a: number, levels: readonly (readonly [number, number, number])[]): TableSheet {
+function sheet(
+  phase: TableSheet["phase"],
+  a: number,
+  levels: readonly (readonly [number, number, number])[],
+): TableSheet {
   const nodes: number[] = [];
   const stepU = Math.log(density.highest / density.lowest) / density.blocks;
   const stepV = Math.log(temperature.highest / temperature.lowest) / temperature.blocks;
@@ -71,7 +75,9 @@ export function inventedTable(
   const everywhere = [[1, 0, 3], [0, 1, 3], [2, 1, 4], [1, 1, 5], [0, 0, 5], [1, 2, 6]] as const; // biome-ignore format: a matrix
   const partly = [[1, 1, 3], [0, 0, 3], [-1, -1, 0], [1, 0, 4], [2, 0, 4], [-1, -1, 0]] as const; // biome-ignore format: a matrix
   const sheets =
-    phases === 1 ? [sheet("single", 8.5, everywhere)] : [sheet("liquid", 8.5, everywhere), sheet("crystal", 8.4, partly)];
+    phases === 1
+      ? [sheet("single", 8.5, everywhere)]
+      : [sheet("liquid", 8.5, everywhere), sheet("crystal", 8.4, partly)];
   return {
     layout: 1,
     holdsFor: "one composition",
