@@ -49,11 +49,15 @@ export function tableCsvNames(name: string): { readonly [File in keyof TableCsv]
  * @param name - what the names of the files begin with, see {@link tableCsvNames}
  * @throws FermistateError `invalid-option` where `table` is no table of this layout or `name` no name
  * @example
- * ```ts no-run
+ * ```ts
+ * import { composition, whiteDwarfMatter } from "fermistate";
  * import { writeTexts } from "fermistate/files";
  * import { tableCsvNames, tableToCsv } from "fermistate/table-files";
- * const texts = await tableToCsv(table, "core");
- * const { metadata, nodes, blocks, cold } = tableCsvNames("core");
+ * import { buildTable } from "fermistate/tables";
+ * const region = { density: [1e6, 3e6], temperature: [2e7, 3e7], accuracy: 1e-3 } as const;
+ * const table = buildTable(whiteDwarfMatter(), composition({ He4: 1 }), region);
+ * const texts = await tableToCsv(table, "helium");
+ * const { metadata, nodes, blocks, cold } = tableCsvNames("helium");
  * await writeTexts([
  *   { path: metadata, text: texts.metadata },
  *   { path: nodes, text: texts.nodes },

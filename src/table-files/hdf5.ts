@@ -21,10 +21,14 @@ import { optionalPackage } from "./optional.js";
  *
  * @throws FermistateError `invalid-option` where `table` is no table of this layout, or h5wasm is missing
  * @example
- * ```ts no-run
+ * ```ts
+ * import { composition, whiteDwarfMatter } from "fermistate";
  * import { writeText } from "fermistate/files";
  * import { tableToHdf5 } from "fermistate/table-files";
- * await writeText("core.h5", await tableToHdf5(table));
+ * import { buildTable } from "fermistate/tables";
+ * const region = { density: [1e6, 3e6], temperature: [2e7, 3e7], accuracy: 1e-3 } as const;
+ * const table = buildTable(whiteDwarfMatter(), composition({ He4: 1 }), region);
+ * await writeText("helium.h5", await tableToHdf5(table));
  * ```
  */
 export async function tableToHdf5(table: FreeEnergyTable): Promise<Uint8Array> {

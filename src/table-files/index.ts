@@ -5,7 +5,23 @@
  * @packageDocumentation
  */
 
-export type * from "../tables/table.js";
+// The types of the arguments, so that this entry point is complete in itself.
+export type { Axis } from "../grids/axes.js";
+export type { GridTexts } from "../grids/description.js";
+export type { FindingCount, FindingsColumn } from "../grids/findings.js";
+export type { ColumnName, Grid, GridColumns } from "../grids/grid.js";
+export type {
+  CertifiedError,
+  CertifiedQuantity,
+  ColdCurve,
+  FreeEnergyTable,
+  FreezingLine,
+  SheetPhase,
+  TableAxis,
+  TableCertificate,
+  TableSheet,
+  TableSource,
+} from "../tables/table.js";
 export { tableChecksum } from "./checksum.js";
 export { type TableCsv, tableCsvNames, tableFromCsv, tableToCsv } from "./csv.js";
 export { tableFromHdf5, tableToHdf5 } from "./hdf5.js";

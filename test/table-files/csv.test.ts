@@ -27,8 +27,8 @@ describe.each([1, 2] as const)("a table of %i sheets", (sheets) => {
 test("the description obeys CSV on the Web for every file, and names and explains all columns", async () => {
   const texts = await tableToCsv(inventedTable(2), "core of mine");
   const names = tableCsvNames("core of mine");
-  const { tables, ...common } = JSON.parse(texts.metadata) as { tables: Record<string, never>[] };
-  expect(tables.map(({ url }) => decodeURIComponent(url!))).toEqual([names.nodes, names.blocks, names.cold]);
+  const { tables, ...common } = JSON.parse(texts.metadata) as { tables: Record<string, unknown>[] };
+  expect(tables.map(({ url }) => decodeURIComponent(String(url)))).toEqual([names.nodes, names.blocks, names.cold]);
   for (const [i, text] of [texts.nodes, texts.blocks, texts.cold].entries()) {
     expect(complaintsAbout({ ...common, ...tables[i] })).toEqual([]);
     const columns = (tables[i]!["tableSchema"] as { columns: Record<string, string>[] }).columns;

@@ -9,7 +9,7 @@ const density = { lowest: 1e4, highest: 1e8, blocks: 2 };
 const temperature = { lowest: 1e6, highest: 1e8, blocks: 3 };
 
 /** d^(i+j)/(du^i dv^j) of the invented L = a - 0.2 u + 1.8 v + 0.05 sin(0.9 u + 0.5 v). */
-export function inventedSurface(a: number, u: number, v: number, i: number, j: number): number {
+function inventedSurface(a: number, u: number, v: number, i: number, j: number): number {
   const polynomial = [
     [a - 0.2 * u + 1.8 * v, 1.8, 0],
     [-0.2, 0, 0],
@@ -22,7 +22,7 @@ export function inventedSurface(a: number, u: number, v: number, i: number, j: n
 }
 
 /** F_0, F_0' and F_0'' of the invented cold curve 1e15 exp(u/3), erg/g. */
-export function inventedCold(u: number): [number, number, number] {
+function inventedCold(u: number): [number, number, number] {
   const value = 1e15 * Math.exp(u / 3);
   return [value, value / 3, value / 9];
 }
