@@ -17,7 +17,7 @@ import { axis, flag, number, oneOf, path, quantityList, wordList, words } from "
 
 export const gridCommand: Command = command({
   name: "grid",
-  summary: "many states over density and temperature: CSV, JSON, Parquet, charts",
+  summary: "many states over density and temperature: CSV, JSON, charts",
   usage: "grid --density AXIS --temperature AXIS --composition LABEL=X,... [--out PATH]",
   options: {
     density: { value: "AXIS", help: "baryon mass densities, g/cm^3; how to write an axis stands below", read: axis },

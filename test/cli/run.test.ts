@@ -17,6 +17,7 @@ import {
   whiteDwarfMatter,
 } from "fermistate";
 import { grid, gridToCsv, gridToCsvMetadata, logarithmicAxis } from "fermistate/grids";
+import { gridToParquet } from "fermistate/table-files";
 import { afterEach, beforeEach, describe, expect, test } from "vitest";
 import { commands, run } from "../../src/cli/run.js";
 import { libraryVersion } from "../../src/version.js";
@@ -321,6 +322,15 @@ describe("grid", () => {
     for (const name of names) expect(out).toContain(`  ${name} `);
     expect(out).toMatch(/81 densities x 4 temperatures = 324 states of C12 0\.5, O16 0\.5 in \d+ ms/);
     expect(out).toMatch(/core\.csv +7\d\.\d kB/);
+  });
+
+  test("writes Parquet", async () => {
+    const { code, out, err } = await command(`${line} --out core.parquet --format parquet --note Invented.`);
+    expect([code, err]).toEqual([0, ""]);
+    expect(readdirSync(cwd)).toEqual(["core.parquet"]);
+    expect(out).toMatch(/core\.parquet +\d+\.\d kB +the columns, with units in the metadata/);
+    const bytes = readFileSync(join(cwd, "core.parquet"));
+    expect(Buffer.compare(bytes, await gridToParquet(made, { note: "Invented." }))).toBe(0);
   });
 
   test("prints CSV or JSON where there is no --out", async () => {
@@ -631,7 +641,8 @@ describe("errors are one line, with a code for programs", () => {
     [`grid ${at} --quantities presure`, 2, /perhaps pressure/],
     [`grid ${at} --chart pressure`, 2, /only together with --out/],
     [`grid ${at} --format both`, 2, /only together with --out/],
-    [`grid ${at} --format xml`, 2, /one of csv, json, both/],
+    [`grid ${at} --format parquet`, 2, /only together with --out/],
+    [`grid ${at} --format xml`, 2, /one of csv, json, both, parquet/],
     [`grid ${at} --out`, 2, /--out: given ""/],
     ["demo --out", 2, /--out: given ""/],
     ["demo now", 2, /options only/],

@@ -45,6 +45,16 @@ async function errorOf(promise: Promise<unknown>): Promise<FermistateError> {
 }
 
 describe("what is written", () => {
+  test("bytes, and bytes among characters, as they are", async () => {
+    const bytes = Uint8Array.of(0, 255, 13, 10, 0xc3, 0x28);
+    expect(await writeText(at("a"), bytes.subarray(1))).toEqual({ path: at("a"), bytes: 5 });
+    expect([...readFileSync(at("a"))]).toEqual([255, 13, 10, 0xc3, 0x28]);
+    await writeText(at("b"), ["\u03c1", bytes, Buffer.from("x")]);
+    expect([...readFileSync(at("b"))]).toEqual([0xcf, 0x81, 0, 255, 13, 10, 0xc3, 0x28, 0x78]);
+    await writeText(at("c"), new Uint8Array(0));
+    expect(readFileSync(at("c"))).toHaveLength(0);
+  });
+
   test("a string, pieces, pieces that come later; the length in bytes, not characters", async () => {
     expect(await writeText(at("a.txt"), "\u03c1 = 1\n")).toEqual({ path: at("a.txt"), bytes: 7 });
     function* pieces() {

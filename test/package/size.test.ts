@@ -42,7 +42,7 @@ const limits: Record<string, number> = {
   files: 3_000,
   certify: 21_000,
   parallel: 60_000,
-  "table-files": 60_000, // most of it AME2020 for compositions, and zod; h5wasm and hyparquet-writer are loaded when needed
+  "table-files": 53_500, // most of it AME2020 for compositions, and zod; h5wasm and hyparquet-writer are loaded when needed
   structure: 70_000, // limitingMassLadder brings the equation of state and AME2020; a program without it does not pay
 };
 
