@@ -15,7 +15,8 @@ import { optionalPackage } from "./optional.js";
  *
  * Every part is a dataset with attributes `units` and `description`; the root's attribute `reading` says how to get numbers
  * out, `checksum_recipe` how the checksum in `format/checksum` is made. Datasets are contiguous and not compressed: any
- * HDF5 library reads them, and {@link tableFromHdf5}. The same table gives the same bytes.
+ * HDF5 library reads them, and {@link tableFromHdf5}, which has read them once before they are returned. The same table gives
+ * the same bytes.
  *
  * Needs the package h5wasm, which is optional: `npm install h5wasm`.
  *
@@ -36,12 +37,14 @@ export async function tableToHdf5(table: FreeEnergyTable): Promise<Uint8Array> {
   const checksum = await checksumOf(items);
   const hdf5 = await optionalPackage("h5wasm", "HDF5", () => import("h5wasm"));
   await hdf5.ready;
-  return hdf5OfItems(hdf5, [...items, ...formatItems(items, checksum)], {
+  const bytes = hdf5OfItems(hdf5, [...items, ...formatItems(items, checksum)], {
     title: `${title}: ${table.composition.name}`,
     creator: `fermistate ${libraryVersion}`,
     reading: recipe,
     checksum_recipe: checksumRecipe,
   });
+  await tableFromHdf5(bytes); // h5wasm passes over what libhdf5 fails to write
+  return bytes;
 }
 
 /**

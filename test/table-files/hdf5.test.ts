@@ -6,10 +6,11 @@ import { join } from "node:path";
 import * as h5wasm from "h5wasm";
 import { afterAll, describe, expect, test } from "vitest";
 import { composition } from "../../src/matter/composition.js";
-import { tableChecksum, tableFromHdf5, tableToHdf5 } from "../../src/table-files/index.js";
+import { tableChecksum, tableFromCsv, tableFromHdf5, tableToCsv, tableToHdf5 } from "../../src/table-files/index.js";
 import { lookup3 } from "../../src/table-files/lookup3.js";
 import { optionalPackage } from "../../src/table-files/optional.js";
-import { tableEquationOfState } from "../../src/tables/index.js";
+import { buildTable, tableEquationOfState } from "../../src/tables/index.js";
+import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
 import { inventedTable } from "./table.js";
 
 const folder = mkdtempSync(join(tmpdir(), "fermistate-hdf5-"));
@@ -44,6 +45,19 @@ test("the same table gives the same bytes, whatever the time", async () => {
   const second = await tableToHdf5(inventedTable(2));
   expect(Buffer.compare(first, second)).toBe(0);
   expect(Math.abs(Date.now() / 1000 - before)).toBeLessThan(10); // the clock goes on
+});
+
+test("a true table of two phases comes back, in HDF5 and in CSV, and gives the same states", async () => {
+  const matter = composition({ C12: 0.5, O16: 0.5 });
+  const region = { density: [1e6, 1e7], temperature: [2e6, 1e7], accuracy: 1e-4 } as const;
+  const table = buildTable(whiteDwarfMatter(), matter, region);
+  expect(table.sheets.map(({ phase }) => phase)).toEqual(["liquid", "crystal"]);
+  const bytes = await tableToHdf5(table);
+  const back = await tableFromHdf5(bytes);
+  expect(back).toEqual(table);
+  expect(await tableFromCsv(await tableToCsv(table, "core"))).toEqual(table);
+  const pressure = (one: typeof table): number => tableEquationOfState(one).state(3e6, 5e6, matter).pressure;
+  expect(pressure(back)).toBe(pressure(table));
 });
 
 test("an electron table comes back", async () => {
