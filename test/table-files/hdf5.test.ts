@@ -265,6 +265,41 @@ describe("files that lie, with good checksums of HDF5's own", () => {
     await expect(tableFromHdf5(await changed(change))).rejects.toMatchObject({ code: "invalid-file", argument });
   });
 
+  test("a file cut or continued tells how long it should be", async () => {
+    const bytes = await tableToHdf5(inventedTable(2));
+    const allowed = `the ${bytes.length} bytes that its superblock states`;
+    const longer = Uint8Array.from([...bytes, 0]);
+    for (const other of [bytes.subarray(0, -1), bytes.subarray(0, 1000), longer]) {
+      const given = `${other.length} bytes`;
+      await expect(tableFromHdf5(other)).rejects.toMatchObject({ code: "invalid-file", given, allowed });
+    }
+    await expect(tableFromHdf5(bytes.subarray(0, 40))).rejects.toMatchObject({
+      given: "no HDF5 signature at its start",
+    });
+  });
+
+  test.each([
+    ["of a size that its bytes do not have", 2n ** 40n, undefined, /nodes of \d+ bytes/],
+    ["of a size and as many bytes, beyond the file", 2n ** 40n, 72n * 2n ** 40n, /nodes of 79164837199872 bytes/],
+    ["beyond all numbers", 2n ** 64n - 1n, 2n ** 64n - 1n, /nodes of \d/],
+  ])("nodes %s", async (_, size, stored, given) => {
+    const bytes = await tableToHdf5(inventedTable(1));
+    const view = new DataView(bytes.buffer, bytes.byteOffset);
+    const nodes = inventedTable(1).sheets[0]!.nodes.length / 9;
+    // The dataspace message: version 2, rank 3, with largest sizes, simple; then the sizes. It is the header's first, 28 bytes in.
+    const at = Buffer.from(bytes).indexOf(Uint8Array.of(2, 3, 1, 1, nodes, 0, 0, 0, 0, 0, 0, 0, 3));
+    view.setBigUint64(at + 4, size, true);
+    const layout = Buffer.from(bytes).indexOf(Uint8Array.of(8, 18, 0, 0, 3, 1), at); // type, length, flags; version 3, contiguous
+    if (stored !== undefined) view.setBigUint64(layout + 14, stored, true);
+    const head = Buffer.from(bytes).lastIndexOf("OHDR", at);
+    const end = head + 24 + view.getUint16(head + 22, true);
+    view.setUint32(end, lookup3(bytes.subarray(head, end)), true);
+    await expect(tableFromHdf5(bytes)).rejects.toMatchObject({
+      code: "invalid-file",
+      given: expect.stringMatching(given),
+    });
+  });
+
   test("a file of another program", async () => {
     const { FS } = await h5wasm.ready;
     const file = new h5wasm.File("/other.h5", "w");
