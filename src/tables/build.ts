@@ -1,4 +1,5 @@
 /** A table of any equation of state at one composition: plan, strips, assembly, certificate. */
+import { FermistateError } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { libraryVersion } from "../version.js";
@@ -6,7 +7,7 @@ import { assembleSheets } from "./assemble.js";
 import { certificateOf } from "./certificate.js";
 import { type TableOptions, type TablePlan, tablePlan } from "./plan.js";
 import { buildStrip, type Strip } from "./strip.js";
-import type { FreeEnergyTable } from "./table.js";
+import type { FreeEnergyTable, TableSheet } from "./table.js";
 
 /**
  * Builds a table of `eos` at one composition, in this thread.
@@ -22,6 +23,7 @@ export function buildTable(eos: EquationOfState, composition: Composition, optio
 /** A table from all strips of its plan, in their order. */
 export function assembleTable(plan: TablePlan, strips: readonly Strip[]): FreeEnergyTable {
   const sheets = assembleSheets(plan, strips);
+  if (sheets.some(({ densityLevels }) => densityLevels.every((level) => level < 0))) refuseEmpty(sheets);
   const above = strips.reduce((sum, strip) => sum + strip.blocksAboveTarget, 0);
   const certificate = certificateOf(plan, sheets, above);
   const named = [...plan.tabulated, ...plan.beside];
@@ -44,4 +46,12 @@ export function assembleTable(plan: TablePlan, strips: readonly Strip[]): FreeEn
     },
     certificate,
   };
+}
+
+function refuseEmpty(sheets: readonly TableSheet[]): never {
+  throw new FermistateError("unstable", {
+    argument: "eos",
+    given: `no entropy above zero in the region (${sheets.map(({ phase }) => phase).join(", ")})`,
+    allowed: "matter with a positive entropy: a table holds the logarithm of what heat does",
+  });
 }
