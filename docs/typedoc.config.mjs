@@ -21,6 +21,8 @@ const options = {
     "certify/index",
     "parallel/index",
     "structure/index",
+    "tables/index",
+    "table-build/index",
   ].map((file) => `../src/${file}.ts`),
   tsconfig: "../test/tsconfig.json",
   out: "api",

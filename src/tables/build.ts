@@ -10,13 +10,24 @@ import { buildStrip, type Strip } from "./strip.js";
 import type { FreeEnergyTable, TableSheet } from "./table.js";
 
 /**
- * Builds a table of `eos` at one composition, in this thread.
+ * Builds a table of `eos` at one composition, in this thread: a second or two a megabyte. Large tables: `fermistate/table-build`.
  *
- * @throws as {@link tablePlan}
+ * @param onProgress - called with the number of strips of density that are finished, and of all
+ * @throws `not-a-number`, `out-of-range`, `invalid-option`, `invalid-composition`; `outside-domain` for a region beyond that of the
+ * equation of state; `unstable` for matter without positive entropy
  */
-export function buildTable(eos: EquationOfState, composition: Composition, options: TableOptions): FreeEnergyTable {
+export function buildTable(
+  eos: EquationOfState,
+  composition: Composition,
+  options: TableOptions,
+  onProgress?: (done: number, all: number) => void,
+): FreeEnergyTable {
   const plan = tablePlan(eos, composition, options);
-  const strips = Array.from({ length: plan.density.blocks }, (_, index) => buildStrip(plan, index));
+  const strips: Strip[] = [];
+  for (let index = 0; index < plan.density.blocks; index++) {
+    strips.push(buildStrip(plan, index));
+    onProgress?.(index + 1, plan.density.blocks);
+  }
   return assembleTable(plan, strips);
 }
 
