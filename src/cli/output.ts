@@ -6,6 +6,7 @@ import { type TextFile, writeTexts } from "../files/write.js";
 import { csvMetadataName, gridToCsvMetadata, gridToCsvPieces } from "../grids/csv.js";
 import type { Grid } from "../grids/grid.js";
 import { gridToJsonPieces } from "../grids/json.js";
+import { gridToNpz } from "../grids/npz.js";
 import type { QuantityName } from "../thermodynamics/quantities.js";
 import { interruptible } from "./interrupt.js";
 import { bytesText, table } from "./print.js";
@@ -16,6 +17,7 @@ export interface Output {
   readonly base: string;
   readonly csv: boolean;
   readonly json: boolean;
+  readonly npz: boolean;
   /** Quantities drawn, one chart each. */
   readonly charts: readonly QuantityName[];
   readonly title?: string;
@@ -45,6 +47,7 @@ function entriesOf(output: Output): Entry[] {
         ]
       : []),
     ...(output.json ? [{ path: `${base}.json`, about: "columns and meanings in one" }] : []),
+    ...(output.npz ? [{ path: `${base}.npz`, about: "arrays for NumPy, with their meanings" }] : []),
     ...charts.map((name) => ({ path: `${base}-${name}.svg`, about: `chart of ${name}` })),
   ];
 }
@@ -79,6 +82,7 @@ function textsOf(grid: Grid, output: Output): TextFile["text"][] {
   return [
     ...(output.csv ? [gridToCsvPieces(grid), gridToCsvMetadata(grid, csvName, texts)] : []),
     ...(output.json ? [gridToJsonPieces(grid, texts)] : []),
+    ...(output.npz ? [gridToNpz(grid, texts)] : []),
     ...output.charts.map((quantity) => chartGrid(grid, { quantity, ...texts })),
   ];
 }
