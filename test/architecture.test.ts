@@ -24,7 +24,7 @@ const floors: readonly (readonly string[])[] = [
   ["white-dwarf-matter", "contributions"],
   ["grids"],
   ["charts", "files", "parallel"],
-  ["certify"],
+  ["certify", "compare"],
   ["structure"],
   ["index"],
   ["cli"],
@@ -35,7 +35,7 @@ const forbidden: Readonly<Record<string, readonly string[]>> = {
   // The reference shares no code with what it judges.
   certify: ["numerics", "fermi-gas"],
   // The core: sub-paths are entered by their own name.
-  index: ["barotropes", "grids", "charts", "files", "certify", "contributions", "parallel", "structure"],
+  index: ["barotropes", "grids", "charts", "files", "certify", "compare", "contributions", "parallel", "structure"],
 };
 
 /** Packages a room may import; any other room imports none. `node:` stands for every module of Node. */
@@ -132,6 +132,9 @@ describe("the sources", () => {
   test("the core reaches no package and nothing of Node", () => expect(reached(imports, "index.ts")).toEqual([]));
 
   test("grids are pure too", () => expect(reached(imports, "grids/index.ts")).toEqual([]));
+
+  test("comparisons reach charts only", () =>
+    expect(reached(imports, "compare/index.ts")).toEqual(["d3-scale", "d3-shape"]));
 
   test("stellar structure is pure too", () => expect(reached(imports, "structure/index.ts")).toEqual([]));
 
