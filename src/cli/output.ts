@@ -36,6 +36,11 @@ interface Entry {
   readonly about: string;
 }
 
+/** A file with its content. */
+export interface WritableEntry extends Entry {
+  readonly text: TextFile["text"];
+}
+
 /** The files of an output; `about` needs the number of rows only. */
 function entriesOf(output: Output): Entry[] {
   const { base, charts } = output;
@@ -64,9 +69,22 @@ export async function writeOutput(
   cwd: string,
   options: OutputOptions,
 ): Promise<string> {
-  const entries = made.flatMap(({ output }) => entriesOf(output));
   const texts = made.flatMap(({ grid, output }) => textsOf(grid, output));
-  const files: TextFile[] = entries.map(({ path }, i) => ({ path: resolve(cwd, path), text: texts[i]! }));
+  const entries = made.flatMap(({ output }) => entriesOf(output));
+  return writeEntries(
+    entries.map((entry, i) => ({ ...entry, text: texts[i]! })),
+    cwd,
+    options,
+  );
+}
+
+/** Writes files, all or none, and returns the printed list of them. */
+export async function writeEntries(
+  entries: readonly WritableEntry[],
+  cwd: string,
+  options: OutputOptions,
+): Promise<string> {
+  const files = entries.map(({ path, text }) => ({ path: resolve(cwd, path), text }));
   const written = await interruptible((signal) => writeTexts(files, { ...options, signal }));
   return table(
     entries.map(({ path, about }, i) => [path, bytesText(written[i]!.bytes), about]),

@@ -68,14 +68,15 @@ function suspectsOf(line: readonly number[], difference: Float64Array, search: J
       (one): one is number => one !== undefined && !Number.isNaN(one),
     );
     const mean = beside.reduce((sum, one) => sum + one, 0) / beside.length;
-    return beside.length === 0 ? Number.NaN : Math.abs(change - mean);
+    return beside.length === 0 ? Number.NaN : (Math.abs(change - mean) * beside.length) / 2; // at an end, half a bend
   });
   const sorted = bends.filter((one) => !Number.isNaN(one)).sort((a, b) => a - b);
-  const typical = sorted[Math.floor(sorted.length / 2)] ?? 0;
+  const typical = sorted[Math.floor(sorted.length / 4)] ?? 0; // a jump bends three steps of a short line
   return bends.flatMap((bend, i) => {
     const [from, to] = [line[i]!, line[i + 1]!];
     if (search.temperatures[Math.floor(from / search.densities.length)] === 0) return [];
-    const isTop = bend >= (bends[i - 1] ?? 0) && bend >= (bends[i + 1] ?? 0) && bend > 4 * typical && bend > least;
+    const isTop =
+      bend >= 0.99 * (bends[i - 1] || 0) && bend >= 0.99 * (bends[i + 1] || 0) && bend > 4 * typical && bend > least;
     const isPhase = search.answers.some((list) => phaseOf(list[from]!) !== phaseOf(list[to]!));
     const isKnown = !Number.isNaN(changes[i]!);
     return isKnown && (isTop || isPhase) ? [{ from, to, bend: Math.max(bend || 0, Math.abs(changes[i]!)) }] : [];

@@ -52,7 +52,7 @@ const known = [
 ];
 
 /** Quantities where none are named. */
-const standard: readonly QuantityName[] = [
+export const standardQuantities: readonly QuantityName[] = [
   "pressure",
   "specificEnergy",
   "specificEntropy",
@@ -97,7 +97,7 @@ export function readRequest(a: EquationOfState, b: EquationOfState, options: Com
     compositions: [pair[0]!, pair[1]!],
     density,
     temperature,
-    quantities: checkQuantities(options.quantities) ?? standard,
+    quantities: checkQuantities(options.quantities) ?? standardQuantities,
     names: [names[0], names[1]],
     consistency,
     onProgress,

@@ -8,7 +8,7 @@ import { findingWords, numberWords, sizeWords } from "./words.js";
 const roundingSize = 1e-13;
 
 /**
- * A comparison as text of at most 96 columns: what agrees and how well, where it does not, refusals, other zeros of energy,
+ * A comparison as text of at most 80 columns (but for long names): what agrees and how well, where it does not, refusals, other zeros of energy,
  * inconsistent derivatives, wrong signs and jumps.
  */
 export function comparisonText(found: Comparison): string {
@@ -21,8 +21,11 @@ export function comparisonText(found: Comparison): string {
   return [
     `Comparison of ${names[0]} (a) and ${names[1]} (b)`,
     ...[0, 1].map((k) => `  ${names[k]!.padEnd(width)}  ${equationsOfState[k]}; ${compositions[k]}`),
-    `  density ${ends(axes.density.values, "g/cm^3")}, temperature ${ends(axes.temperature.values, "K")}: ` +
-      `${shape[1]} x ${shape[0]} points, ${refusals.both} of them answered by both`,
+    ...wrapped(
+      `density ${ends(axes.density.values, "g/cm^3")}, temperature ${ends(axes.temperature.values, "K")}: ` +
+        `${shape[1]} x ${shape[0]} points, ${refusals.both} of them answered by both`,
+      "  ",
+    ),
     "",
     "Differences, relative",
     ...table(found),
@@ -187,10 +190,10 @@ function consistencyLines({ names, consistency }: Comparison): string[] {
       one.relation,
       one.missed === 0 ? "holds" : sizeWords(one.largest),
       sizeWords(one.resolution),
-      `${one.missed} of ${one.measured}`,
-      one.unresolved === 0 ? "" : `${one.unresolved} not measured`,
+      String(one.missed),
+      String(one.measured),
     ];
-    const rows = [["", "missed by", "seen to", "points missed", ""], ...checks.map(cells)];
+    const rows = [["", "missed by", "seen to", "missed", "measured"], ...checks.map(cells)];
     const widths = rows[0]!.map((_, i) => Math.max(...rows.map((row) => row[i]!.length)));
     return [
       `Thermodynamics of ${names[k]}, measured from its values`,
@@ -200,12 +203,12 @@ function consistencyLines({ names, consistency }: Comparison): string[] {
   });
 }
 
-/** Words in lines of at most 96 characters. */
+/** Words in lines of at most 78 characters. */
 function wrapped(words: string, indent: string, hang = `${indent}  `): string[] {
   const lines: string[] = [];
   let line = indent;
   for (const word of words.split(" ")) {
-    if (line.trim() !== "" && line.length + 1 + word.length > 96) {
+    if (line.trim() !== "" && line.length + 1 + word.length > 78) {
       lines.push(line);
       line = hang + word;
     } else line = line.trim() === "" ? line + word : `${line} ${word}`;
