@@ -113,7 +113,8 @@ function halve(name: QuantityName, from: number, to: number, search: JumpSearch)
   /** How unlike a straight line. */
   const bend = (p: Sample, m: Sample, q: Sample): number => Math.abs(m.difference - (p.difference + q.difference) / 2);
 
-  let [low, high] = [at(0), at(1)];
+  const ends = [at(0), at(1)] as const;
+  let [low, high] = ends;
   const whole = Math.abs(high.difference - low.difference);
   let middle = between(low, high);
   for (let i = 0; i < halvings; i++) {
@@ -126,13 +127,22 @@ function halve(name: QuantityName, from: number, to: number, search: JumpSearch)
   const size = Math.abs(high.difference - low.difference);
   const smooth = 100 * whole * 2 ** -halvings;
   if (!(size > Math.max(least, smooth))) return undefined;
-  const own = ([0, 1] as const).map((k) => {
-    const [p, q] = [low.answers[k], high.answers[k]];
-    return isState(p) && isState(q) ? Math.abs(relativeDifference(name, p, q, { energy: 0, entropy: 0 })) : Number.NaN;
+  const [first, second] = ([0, 1] as const).map((k) => changeOf(name, low.answers[k], high.answers[k])) as [
+    number,
+    number,
+  ];
+  const jumps = ([0, 1] as const).map((k) => {
+    const smoothly = 100 * changeOf(name, ends[0].answers[k], ends[1].answers[k]) * 2 ** -halvings;
+    return (k === 0 ? first : second) > Math.max(least, smoothly);
   });
-  const jumps = own.map((one) => one > Math.max(least, size / 10));
-  const of = jumps[0] === jumps[1] ? "both" : jumps[0] === true ? "first" : "second";
+  const of = jumps[0] && jumps[1] ? "both" : first > second ? "first" : "second";
   return { quantity: name, of, size, density: low.density, temperature: low.temperature, steps: 1 };
+}
+
+/** Relative change of a quantity of one of the two. */
+function changeOf(name: QuantityName, from: Answer, to: Answer): number {
+  if (!isState(from) || !isState(to)) return Number.NaN;
+  return Math.abs(relativeDifference(name, from, to, { energy: 0, entropy: 0 }));
 }
 
 /** Between two numbers at equal ratios; exact where they are one, and at the ends. */
