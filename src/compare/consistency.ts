@@ -33,7 +33,7 @@ const functions = ["specificFreeEnergy", "pressure", "specificEntropy", "specifi
 type FunctionName = (typeof functions)[number];
 
 /** Rounding that algebraic relations may show. */
-const rounding = 8 * 2 ** -52;
+const rounding = 64 * 2 ** -52;
 /** Uncertainty beyond which a point says nothing. */
 const coarse = 0.01;
 
@@ -150,7 +150,8 @@ function checkOf(
   let [measured, unresolved, missed, largest, worst] = [0, 0, 0, 0, -1];
   const seen: number[] = [];
   for (let row = 0; row < residual.length; row++) {
-    if (!(error[row]! <= coarse)) {
+    // NaN of a foreign equation of state is nothing measured.
+    if (!(error[row]! <= coarse) || Number.isNaN(residual[row]!)) {
       unresolved += 1;
       continue;
     }

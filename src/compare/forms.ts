@@ -1,6 +1,7 @@
 /** A comparison as JSON, CSV and maps. */
 import { nameOf } from "../charts/labels.js";
-import { chartMap, type MapOptions } from "../charts/map.js";
+import { chartMap } from "../charts/map.js";
+import type { MapOptions } from "../charts/map-request.js";
 import { FermistateError } from "../errors.js";
 import type { QuantityName } from "../thermodynamics/quantities.js";
 import type { Comparison, ConsistencyName, QuantityDifference } from "./result.js";

@@ -5,7 +5,7 @@
  */
 
 // The types of arguments and results, so that this entry point is complete in itself.
-export type { MapMark, MapOptions } from "../charts/map.js";
+export type { MapMark, MapOptions } from "../charts/map-request.js";
 export type { Axis } from "../grids/axes.js";
 export { compare } from "./compare.js";
 export { type ComparisonMapOptions, comparisonCsv, comparisonJson, comparisonMap } from "./forms.js";

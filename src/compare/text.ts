@@ -43,6 +43,12 @@ export function comparisonSummary(found: Comparison): string[] {
   return [
     ...refusalSentences(found),
     ...(found.refusals.both === 0 ? [] : found.quantities.map(quantitySentence)),
+    ...found.quantities.flatMap(({ name, points }) => {
+      const without = found.refusals.both - points;
+      return without === 0
+        ? []
+        : [`${name} is no number, or not known to one of the two, at ${without} points that both answer.`];
+    }),
     ...offsetSentences(found),
     ...consistencySentences(found),
     ...found.signs.map((one) => signSentence(found, one)),

@@ -282,6 +282,16 @@ describe("refusals are part of the result", () => {
     );
   });
 
+  test("a quantity that is no number at some points is told, and nothing is claimed of it", () => {
+    const holey = changed(ideal, ({ temperature }) => (temperature > 4e9 ? { chiRho: Number.NaN } : {}));
+    const some = compare(ideal, holey, region({ quantities: ["chiRho"] }));
+    expect(quantity(some, "chiRho")).toMatchObject({ points: 54, largest: 0 });
+    expect(check(some, 1, "chiRho")).toMatchObject({ measured: 54, unresolved: 9, missed: 0 });
+    expect(comparisonSummary(some).join("\n")).toContain(
+      "chiRho is no number, or not known to one of the two, at 9 points",
+    );
+  });
+
   test("nothing in common is said, and no map of it drawn", () => {
     const never: EquationOfState = {
       ...ideal,
