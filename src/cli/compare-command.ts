@@ -47,7 +47,7 @@ export const compareCommand: Command = command({
       read: z.optional(quantityList),
     },
     "skip-consistency": {
-      help: "do not measure the thermodynamic consistency of each, which takes most of the time",
+      help: "do not measure the thermodynamic consistency of each, which takes half of the time",
       read: flag,
     },
     format: {

@@ -14,7 +14,7 @@ import { statisticsOf } from "./difference.js";
 import type { ConsistencyCheck, ConsistencyName, Place } from "./result.js";
 
 /** The relations. */
-export const relations: Readonly<Record<ConsistencyName, string>> = {
+const relations: Readonly<Record<ConsistencyName, string>> = {
   "free-energy": "F = e - T s",
   pressure: "P = rho^2 dF/drho",
   entropy: "s = -dF/dT",

@@ -21,7 +21,7 @@ export interface CompareOptions {
   readonly quantities?: readonly QuantityName[];
   /** What the two are called in texts and maps. @defaultValue "first" and "second" */
   readonly names?: readonly [a: string, b: string];
-  /** Measure the thermodynamic inconsistency of each; four fifths of the time. @defaultValue true */
+  /** Measure the thermodynamic inconsistency of each; half of the time. @defaultValue true */
   readonly consistency?: boolean;
   /** Most points. @defaultValue 1e5 */
   readonly maximumPoints?: number;

@@ -53,15 +53,19 @@ export interface WorstPlace extends Place {
 
 /** Largest and median difference of the points of one region. */
 export interface RegionDifference {
+  /** Which region. */
   readonly region: Region;
   /** Points compared. */
   readonly points: number;
+  /** Largest size of the difference. */
   readonly largest: number;
+  /** Size that half of its points stay within. */
   readonly median: number;
 }
 
 /** One quantity, compared. */
 export interface QuantityDifference {
+  /** Which quantity. */
   readonly name: QuantityName;
   /** Unit in cgs, "1" for a pure number. */
   readonly unit: string;
@@ -88,21 +92,27 @@ export interface QuantityDifference {
 
 /** A constant by which b lies above a: another zero of energy or entropy. */
 export interface Offset {
+  /** Which of the two. */
   readonly name: "specificEnergy" | "specificEntropy";
   /** b - a, in the unit of the quantity. */
   readonly value: number;
+  /** Unit in cgs. */
   readonly unit: string;
-  /** Mean size of the relative difference before and after it is removed. */
+  /** Mean size of the relative difference with the constant. */
   readonly before: number;
+  /** The same without it. */
   readonly after: number;
 }
 
 /** Points where one answers and the other refuses. */
 export interface Refusals {
-  /** Points where both answer, only the first, only the second, none. */
+  /** Points where both answer. */
   readonly both: number;
+  /** Points where only the first answers. */
   readonly onlyFirst: number;
+  /** Points where only the second answers. */
   readonly onlySecond: number;
+  /** Points where none answers. */
   readonly none: number;
   /** 3 where both answer, 1 only the first, 2 only the second, 0 none: one number per point. */
   readonly answers: Uint8Array;
@@ -114,6 +124,7 @@ export interface Refusals {
 export interface RefusalCount {
   /** A code of FermistateError; "not-a-number" for a state that holds none, "other-error" for a foreign error. */
   readonly code: string;
+  /** Points refused with it. */
   readonly points: number;
   /** The first such point. */
   readonly example: Place;
@@ -135,6 +146,7 @@ export type ConsistencyName =
 
 /** One relation of thermodynamics, measured from values alone at every point of one equation of state. */
 export interface ConsistencyCheck {
+  /** Which relation. */
   readonly name: ConsistencyName;
   /** The relation as a formula. */
   readonly relation: string;
@@ -168,21 +180,25 @@ export interface SignCount {
     | "gamma1"
     | "measuredHeatCapacity"
     | "measuredPressureByDensity";
+  /** Points where that is so. */
   readonly points: number;
-  /** The most negative value, relative to its scale for the measured ones, and where. */
+  /** The most negative value; of measured ones relative to P and to P/rho. */
   readonly value: number;
+  /** Where it is most negative. */
   readonly worst: Place;
 }
 
 /** A discontinuity of one of the two where the other is smooth or jumps differently. */
 export interface Jump {
+  /** Which quantity. */
   readonly quantity: QuantityName;
   /** Which of the two jumps. */
   readonly of: "first" | "second" | "both";
   /** Relative size of the largest one found. */
   readonly size: number;
-  /** Where that is: the place between two points of the grid, found by halving. */
+  /** Where that is, g/cm^3: between two points of the grid, found by halving. */
   readonly density: number;
+  /** Where that is, K. */
   readonly temperature: number;
   /** Steps of the grid in which one was found. Small jumps between others may stay unseen. */
   readonly steps: number;
@@ -196,16 +212,24 @@ export interface Comparison {
   readonly equationsOfState: readonly [a: string, b: string];
   /** Their compositions. */
   readonly compositions: readonly [a: string, b: string];
+  /** The axes of the grid. */
   readonly axes: { readonly density: Axis; readonly temperature: Axis };
   /** Numbers of temperatures and of densities; row = i_temperature * densities + i_density. */
   readonly shape: readonly [temperatures: number, densities: number];
+  /** Points of the grid. */
   readonly rows: number;
+  /** The quantities in the order asked for. */
   readonly quantities: readonly QuantityDifference[];
+  /** Constants taken out of the differences. */
   readonly offsets: readonly Offset[];
+  /** Who answers where. */
   readonly refusals: Refusals;
   /** Thermodynamic consistency of each; empty where it was not asked for. */
   readonly consistency: readonly [a: readonly ConsistencyCheck[], b: readonly ConsistencyCheck[]];
+  /** Signs of no stable matter. */
   readonly signs: readonly SignCount[];
+  /** Discontinuities found, at most one entry per quantity. */
   readonly jumps: readonly Jump[];
+  /** Version of this library. */
   readonly libraryVersion: string;
 }
