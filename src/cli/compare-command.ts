@@ -71,17 +71,17 @@ export const compareCommand: Command = command({
   },
   examples: [
     [
-      "compare --density 1e4..1e9,30-points --temperature 1e6..1e9,20-points --composition C12=0.5,O16=0.5 " +
+      "compare --density 1e4..1e9,20-points --temperature 1e6..1e9,12-points --composition C12=0.5,O16=0.5 " +
         "--against-without coulomb",
       "what interactions do to a white dwarf's core",
     ],
     [
-      "compare --density 1e4..1e9,60-points --temperature 1e6..1e9,40-points --composition C12=1 " +
+      "compare --density 1e4..1e9,30-points --temperature 1e6..1e9,20-points --composition C12=1 " +
         "--against-without polarisation --out polarisation --map pressure,heatCapacityV",
       "one term, with maps",
     ],
     [
-      "compare --density 1e6..1e9,20-points --temperature 1e7..1e9,20-points --composition C12=1 " +
+      "compare --density 1e6..1e9,10-points --temperature 1e7..1e9,10-points --composition C12=1 " +
         "--against-composition O16=1 --format csv",
       "carbon against oxygen, point by point",
     ],
