@@ -19,6 +19,7 @@ const options = {
     "charts/index",
     "files/index",
     "certify/index",
+    "compare/index",
     "parallel/index",
     "structure/index",
     "tables/index",

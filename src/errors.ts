@@ -24,6 +24,7 @@
  * - `too-large`: a request beyond the stated size limit
  * - `invalid-option`: an option or a command-line argument that does not exist or cannot be read
  * - `worker-failed`: a thread of `fermistate/parallel` died or could not start, or code of the caller's failed in it
+ * - `invalid-file`: a file or bytes that are not what they claim: damaged, truncated, another version
  * - `file-not-written`: the file system refused; no partial file is left
  */
 export type ErrorCode =
@@ -43,6 +44,7 @@ export type ErrorCode =
   | "too-large"
   | "invalid-option"
   | "worker-failed"
+  | "invalid-file"
   | "file-not-written";
 
 /** What was refused: the argument's name, its value, what is allowed, and where in a batch it stood. */

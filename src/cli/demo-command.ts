@@ -53,7 +53,7 @@ export const demoCommand: Command = command({
     const equationOfState = whiteDwarfMatter();
     const outputOptions = { overwrite: true, createFolders: true };
     const outputs = parts.map(
-      ({ name, title }): Output => ({ base: join(out, name), csv: true, json: true, charts, title, note }),
+      ({ name, title }): Output => ({ base: join(out, name), csv: true, json: true, npz: false, charts, title, note }),
     );
     await checkOutput(outputs, io.cwd, outputOptions);
     const start = performance.now();

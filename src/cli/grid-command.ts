@@ -16,7 +16,7 @@ import { axis, flag, number, oneOf, path, quantityList, wordList, words } from "
 
 export const gridCommand: Command = command({
   name: "grid",
-  summary: "many states over density and temperature: CSV, JSON, charts",
+  summary: "many states over density and temperature: files and charts",
   usage: "grid --density AXIS --temperature AXIS --composition LABEL=X,... [--out PATH]",
   options: {
     density: { value: "AXIS", help: "baryon mass densities, g/cm^3; how to write an axis stands below", read: axis },
@@ -41,9 +41,11 @@ export const gridCommand: Command = command({
       read: z.optional(path),
     },
     format: {
-      value: "csv|json|both",
-      help: "csv (with its description beside it), json (which describes itself) or both; csv by default",
-      read: z._default(oneOf(["csv", "json", "both"]), "csv"),
+      value: "csv|json|both|npz",
+      help:
+        "csv (with its description beside it), json (which describes itself), both of them, or npz (arrays for " +
+        "numpy.load, described by the text inside); csv by default",
+      read: z._default(oneOf(["csv", "json", "both", "npz"]), "csv"),
     },
     chart: {
       value: "NAME,...",
@@ -81,13 +83,14 @@ export const gridCommand: Command = command({
   async run(options, io) {
     const { out, chart = [], format } = options;
     if (out === undefined && chart.length > 0) throw needsOut("--chart");
-    if (out === undefined && format === "both") throw needsOut("--format both");
+    if (out === undefined && (format === "both" || format === "npz")) throw needsOut(`--format ${format}`);
     const { equationOfState, matter } = matterOf(options);
     const outputOptions = { overwrite: options.overwrite, createFolders: options["create-folders"] };
     const output: Output = {
-      base: (out ?? "").replace(/\.(csv|json|svg)$/i, ""),
-      csv: format !== "json",
-      json: format !== "csv",
+      base: (out ?? "").replace(/\.(csv|json|npz|svg)$/i, ""),
+      csv: format === "csv" || format === "both",
+      json: format === "json" || format === "both",
+      npz: format === "npz",
       charts: chart,
       ...(options.title === undefined ? {} : { title: options.title }),
       ...(options.note === undefined ? {} : { note: options.note }),

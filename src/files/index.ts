@@ -1,5 +1,5 @@
 /**
- * Text files written whole or not at all, such as those of `fermistate/grids`. Node only.
+ * Files written whole or not at all, such as those of `fermistate/grids`. Node only.
  *
  * @packageDocumentation
  */

@@ -1,5 +1,5 @@
 /**
- * Text files written whole or not at all. Node only.
+ * Files written whole or not at all: texts, and bytes. Node only.
  *
  * Each text goes to a new file of a random name in the folder of its target, is flushed to the disk (fsync), and takes
  * the target's name by `rename`, which POSIX makes atomic: a reader sees the old file or the new one, never a part.
@@ -12,14 +12,17 @@ import { FermistateError } from "../errors.js";
 import { reasonOf, refused } from "./refusal.js";
 import { makeFolders, type Target, targetOf } from "./target.js";
 
-/** A text: a string, or pieces of one, made as they are written (no piece may end inside a surrogate pair). */
-export type Text = string | Iterable<string> | AsyncIterable<string>;
+/**
+ * A text: a string, or pieces of one, made as they are written (no piece may end inside a surrogate pair); or bytes, which
+ * are written as they are.
+ */
+export type Text = string | Uint8Array | Iterable<string> | AsyncIterable<string>;
 
 /** One file to write. */
 export interface TextFile {
   /** Path of the file. A symbolic link is followed: the file it names is replaced, the link stays. */
   readonly path: string;
-  /** What to write, in UTF-8. */
+  /** What to write; texts in UTF-8. */
   readonly text: Text;
 }
 
@@ -118,16 +121,17 @@ async function writePieces(
   signal: WriteOptions["signal"],
 ): Promise<number> {
   let bytes = 0;
-  for await (const piece of typeof text === "string" ? [text] : text) {
+  const isWhole = typeof text === "string" || text instanceof Uint8Array;
+  for await (const piece of isWhole ? [text] : text) {
     if (signal?.aborted) throw refused(path, "writing was interrupted");
-    if (typeof piece !== "string") {
+    if (typeof piece !== "string" && !(isWhole && piece instanceof Uint8Array)) {
       throw new FermistateError("invalid-option", {
         argument: "text",
         given: piece,
         allowed: "pieces that are strings",
       });
     }
-    const data = Buffer.from(piece, "utf8");
+    const data = typeof piece === "string" ? Buffer.from(piece, "utf8") : piece;
     await attempt(path, () => file.appendFile(data));
     bytes += data.length;
   }
@@ -206,7 +210,7 @@ function checkFiles(files: readonly TextFile[]): void {
     if (typeof path !== "string" || path === "" || path.includes("\0")) fail("path", path, "the path of a file");
     const iterable =
       typeof text === "object" && text !== null && (Symbol.iterator in text || Symbol.asyncIterator in text);
-    if (typeof text !== "string" && !iterable) fail("text", text, "a string or pieces of one");
+    if (typeof text !== "string" && !iterable) fail("text", text, "a string, pieces of one, or bytes");
   }
 }
 

@@ -16,7 +16,7 @@ import {
   transition,
   whiteDwarfMatter,
 } from "fermistate";
-import { grid, gridToCsv, gridToCsvMetadata, logarithmicAxis } from "fermistate/grids";
+import { grid, gridToCsv, gridToCsvMetadata, gridToNpz, logarithmicAxis } from "fermistate/grids";
 import { afterEach, beforeEach, describe, expect, test } from "vitest";
 import { commands, run } from "../../src/cli/run.js";
 import { libraryVersion } from "../../src/version.js";
@@ -323,6 +323,14 @@ describe("grid", () => {
     expect(out).toMatch(/core\.csv +7\d\.\d kB/);
   });
 
+  test("--format npz writes what the library writes", async () => {
+    const { code, out } = await command(`${line} --out core.npz --format npz`);
+    expect(code).toBe(0);
+    expect(readdirSync(cwd)).toEqual(["core.npz"]);
+    expect(new Uint8Array(readFileSync(join(cwd, "core.npz")))).toEqual(gridToNpz(made));
+    expect(out).toMatch(/core\.npz +\d+\.\d kB {2}arrays for NumPy/);
+  });
+
   test("prints CSV or JSON where there is no --out", async () => {
     expect((await command(line)).out).toBe(gridToCsv(made));
     expect(JSON.parse((await command(`${line} --format json`)).out).columns.pressure.values[3]).toBe(
@@ -568,7 +576,7 @@ describe("errors are one line, with a code for programs", () => {
 
   test.each([
     ["stat", 2, /^fermistate: command: given "stat"; allowed: perhaps state\?/],
-    ["x", 2, /one of state, grid, regime, limiting-mass, demo, help/],
+    ["x", 2, /one of state, grid, regime, compare, limiting-mass, demo, help/],
     ["help grdi", 2, /perhaps grid\?/],
     ["help grid state", 2, /one word/],
     [`state ${at} --densty 1`, 2, /given "--densty"; allowed: perhaps --density\?/],
@@ -631,6 +639,7 @@ describe("errors are one line, with a code for programs", () => {
     [`grid ${at} --quantities presure`, 2, /perhaps pressure/],
     [`grid ${at} --chart pressure`, 2, /only together with --out/],
     [`grid ${at} --format both`, 2, /only together with --out/],
+    [`grid ${at} --format npz`, 2, /only together with --out/],
     [`grid ${at} --format xml`, 2, /one of csv, json, both/],
     [`grid ${at} --out`, 2, /--out: given ""/],
     ["demo --out", 2, /--out: given ""/],

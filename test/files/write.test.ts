@@ -209,6 +209,15 @@ describe("what fails leaves nothing", () => {
     expect(readdirSync(folder)).toEqual([]);
   });
 
+  test("bytes are written as they are, whole; a piece of a text is never taken for bytes", async () => {
+    const bytes = Uint8Array.of(0x93, 0, 255, 10);
+    expect((await writeText(at("a.npy"), bytes)).bytes).toBe(4);
+    expect([...readFileSync(at("a.npy"))]).toEqual([...bytes]);
+    const error = await errorOf(writeText(at("b.txt"), [bytes as unknown as string]));
+    expect(error).toMatchObject({ code: "invalid-option", argument: "text" });
+    expect(readdirSync(folder)).toEqual(["a.npy"]);
+  });
+
   test("a piece that is no string", async () => {
     const error = await errorOf(writeText(at("a.txt"), ["a", 3 as unknown as string]));
     expect(error).toMatchObject({ code: "invalid-option", given: 3 });

@@ -37,9 +37,10 @@ const limits: Record<string, number> = {
   index: 80_000,
   barotropes: 81_000,
   contributions: 3_000,
-  grids: 8_500,
-  charts: 20_000,
+  grids: 12_500,
+  charts: 24_000,
   files: 3_000,
+  compare: 82_000, // regime brings the electron gas and AME2020
   certify: 21_000,
   parallel: 60_000,
   tables: 90_000,
