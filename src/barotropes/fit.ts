@@ -11,6 +11,7 @@ import {
   BAROTROPE_LENGTH,
   BAROTROPE_PRESSURE,
   type Barotrope,
+  type BarotropeLimit,
 } from "./barotrope.js";
 import { fitBrokenLine } from "./broken-line.js";
 import { type FitReport, measureAgainst, measureAtRows } from "./fit-report.js";
@@ -139,7 +140,7 @@ function ofBarotrope(source: Barotrope, { density, figures }: FitOptions): Fitte
   const energy = record[BAROTROPE_ENERGY]!;
   return (pieces) => {
     const line = fitBrokenLine(x, y, xFine, yFine, pieces, candidates);
-    const fit = polytropeOf(line, low, energy, high);
+    const fit = polytropeOf(line, low, energy, high, source.limits ?? []);
     const breaks = fit.pieces
       .slice(1)
       .map((piece, i) => ({ density: piece.density, gammaBelow: fit.pieces[i]!.gamma }));
@@ -165,7 +166,7 @@ function ofColumns(source: BarotropeColumns, { density, figures }: FitOptions): 
     }
     const line = fitBrokenLine(x, y, x, y, pieces, candidates);
     const first = chosen[0]!;
-    const fit = polytropeOf(line, first.density, first.energy, chosen[chosen.length - 1]!.density);
+    const fit = polytropeOf(line, first.density, first.energy, chosen[chosen.length - 1]!.density, []);
     return Object.freeze({ barotrope: fit, report: measureAtRows(chosen, fit) });
   };
 }
@@ -176,11 +177,12 @@ function polytropeOf(
   low: number,
   energy: number | undefined,
   high: number,
+  limits: readonly BarotropeLimit[],
 ): PiecewisePolytrope {
   const gammas = x.slice(1).map((end, i) => (y[i + 1]! - y[i]!) / (end - x[i]!));
   const [first, pressure] = [gammas[0]!, Math.exp(y[0]!)];
   const energyAtZeroDensity = energy === undefined || !(first > 1) ? 0 : energy - pressure / low / (first - 1);
-  return piecewisePolytrope({
+  const fit = piecewisePolytrope({
     gammas,
     dividingDensities: x.slice(1, -1).map(Math.exp),
     referenceDensity: low,
@@ -188,9 +190,20 @@ function polytropeOf(
     energyAtZeroDensity,
     highestDensity: high,
     name: `fit of ${gammas.length} pieces`,
-    validity: `A fit over ${low} to ${high} g/cm^3; its report says how good. Below, its first piece goes on.`,
+    validity: `A fit over ${shortest(low)} to ${shortest(high)} g/cm^3; its report says how good. Below, its first piece goes on.`,
   });
+  const message = "Below this density nothing was fitted: the first piece of the fit goes on.";
+  const own: BarotropeLimit = Object.freeze({ code: "extrapolated", density: low, side: "below", message });
+  return Object.freeze({ ...fit, limits: Object.freeze([...limitsWithin(limits, high), own]) });
 }
+
+/** Limits that a fit up to a density takes over from its source. */
+function limitsWithin(limits: readonly BarotropeLimit[], highest: number): readonly BarotropeLimit[] {
+  return limits.filter(({ side, density }) => side === "above" && density < highest);
+}
+
+/** Six digits at most. */
+const shortest = (value: number): string => String(Number(value.toPrecision(6)));
 
 /** One row of the columns. */
 interface Row {

@@ -15,6 +15,7 @@ import { type Composition, requireComposition } from "../matter/composition.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { BAROTROPE_DENSITY, BAROTROPE_LENGTH, BAROTROPE_PRESSURE, type Barotrope } from "./barotrope.js";
 import { type Branch, branchOf, type Path } from "./branch.js";
+import { compositionLimits } from "./capture-limit.js";
 import { requireDensityRange, requireKnown } from "./options.js";
 import { stacked } from "./stacked.js";
 
@@ -69,8 +70,9 @@ export function barotrope(
   requireReached(branches[0]!, options.density);
   return stacked(
     nameOf(equationOfState, composition, path),
-    "That of the equation of state it is made of: ask regime(...) at its densities.",
+    "That of the equation of state it is made of: regime(...) tells, state by state. The composition stays as given.",
     branches,
+    compositionLimits(composition, range[1]),
   );
 }
 

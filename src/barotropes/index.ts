@@ -13,6 +13,7 @@ export {
   BAROTROPE_POTENTIAL,
   BAROTROPE_PRESSURE,
   type Barotrope,
+  type BarotropeLimit,
   type BarotropeState,
   type DensityJump,
 } from "./barotrope.js";

@@ -257,6 +257,7 @@ function smoothBarotrope(source: Barotrope, range: readonly [number, number], co
   };
   return Object.freeze({
     ...contributing(name, validity, range, pieces),
+    limits: Object.freeze((source.limits ?? []).filter(({ side, density }) => side === "above" && density < range[1])),
     coefficients: Object.freeze(Array.from(coefficients)),
     energyShift,
   });

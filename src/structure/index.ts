@@ -4,10 +4,10 @@
  *
  * @packageDocumentation
  */
-export type { Barotrope, BarotropeState, DensityJump } from "../barotropes/barotrope.js";
+export type { Barotrope, BarotropeLimit, BarotropeState, DensityJump } from "../barotropes/barotrope.js";
 export { FermistateError, isFermistateError } from "../errors.js";
 export type { StarFinding, StarFindingCode } from "./findings.js";
-export type { Relativity } from "./hydrostatic.js";
+export type { Relativity } from "./hydrostatic-equations.js";
 export * from "./lane-emden.js";
 export { chandrasekharMass, type MassUnit, type MassUnitOptions, uniformSphereMass } from "./limiting-mass.js";
 export {
@@ -30,7 +30,8 @@ export {
   type MassRadiusSequence,
   massRadiusSequence,
   type SequenceOptions,
+  type SequenceWith,
   type StarOfMassOptions,
   starOfMass,
 } from "./sequence.js";
-export { hydrostaticStar, type SingleStarOptions, type Star, type StarOptions } from "./star.js";
+export { hydrostaticStar, type SingleStarOptions, type Star, type StarOptions, type StarWith } from "./star.js";

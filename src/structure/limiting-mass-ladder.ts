@@ -27,7 +27,7 @@ import type { CaptureThreshold } from "../regime/capture.js";
 import { combine } from "../thermodynamics/combine.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { whiteDwarfMatter } from "../white-dwarf-matter.js";
-import type { Relativity } from "./hydrostatic.js";
+import type { Relativity } from "./hydrostatic-equations.js";
 import { chandrasekharMass, uniformSphereMass } from "./limiting-mass.js";
 import { maximumMass } from "./maximum-mass.js";
 import { hydrostaticStar } from "./star.js";

@@ -7,7 +7,7 @@
  */
 import type { Barotrope } from "../barotropes/barotrope.js";
 import { densityGrid } from "./density-grid.js";
-import { requireTolerance, type Star, type StarOptions, starMaker } from "./star.js";
+import { requireStarOptions, requireTolerance, type Star, type StarOptions, starMaker } from "./star.js";
 import { turningDensity } from "./turning-density.js";
 
 /**
@@ -75,6 +75,7 @@ export interface MaximumMassOptions extends StarOptions {
  * @throws as `hydrostaticStar`
  */
 export function maximumMass(barotrope: Barotrope, options: MaximumMassOptions = {}): MaximumMass {
+  requireStarOptions(options, ["range"]);
   const tolerance = requireTolerance(options.tolerance);
   const make = starMaker(barotrope, options);
   const bare = { ...options, rotation: false, tides: false };

@@ -3,7 +3,7 @@ import type { Barotrope } from "../barotropes/barotrope.js";
 import { FermistateError, requireFinite } from "../errors.js";
 import { findRoot } from "../numerics/roots.js";
 import { densityGrid, requireRange } from "./density-grid.js";
-import { requireTolerance, type Star, type StarOptions, starMaker } from "./star.js";
+import { requireStarOptions, requireTolerance, type Star, type StarOptions, type StarWith, starMaker } from "./star.js";
 import { turningDensity } from "./turning-density.js";
 
 /** Which stars of a sequence. */
@@ -35,11 +35,20 @@ export interface MassRadiusSequence {
   readonly bindingEnergy: Float64Array;
   /** d ln M/d ln rho_c. */
   readonly massSlope: Float64Array;
-  /** g cm^2; NaN unless asked for. */
-  readonly momentOfInertia: Float64Array;
-  /** NaN unless asked for. */
-  readonly tidalDeformability: Float64Array;
+  /** g cm^2; undefined unless asked for. */
+  readonly momentOfInertia: Float64Array | undefined;
+  /** Undefined unless asked for. */
+  readonly loveNumber: Float64Array | undefined;
+  /** Undefined unless asked for. */
+  readonly tidalDeformability: Float64Array | undefined;
 }
+
+/** A sequence whose optional columns are there where the options ask for them by the word `true`. */
+export type SequenceWith<Options> = MassRadiusSequence &
+  (Options extends { readonly rotation: true } ? { readonly momentOfInertia: Float64Array } : unknown) &
+  (Options extends { readonly tides: true }
+    ? { readonly loveNumber: Float64Array; readonly tidalDeformability: Float64Array }
+    : unknown);
 
 const columnNames = [
   "centralDensity",
@@ -49,9 +58,9 @@ const columnNames = [
   "radius",
   "bindingEnergy",
   "massSlope",
-  "momentOfInertia",
-  "tidalDeformability",
 ] as const;
+const ofRotation = ["momentOfInertia"] as const;
+const ofTides = ["loveNumber", "tidalDeformability"] as const;
 
 /**
  * Mass, radius and what else is asked for along central densities.
@@ -65,17 +74,21 @@ const columnNames = [
  * ```
  * @throws as `hydrostaticStar`, with the row; `invalid-option`
  */
-export function massRadiusSequence(barotrope: Barotrope, options: SequenceOptions): MassRadiusSequence {
+export function massRadiusSequence<const Options extends SequenceOptions>(
+  barotrope: Barotrope,
+  options: Options,
+): SequenceWith<Options> {
+  requireStarOptions(options, ["centralDensities", "range", "count"]);
   const densities = densitiesOf(options);
   const make = starMaker(barotrope, options);
-  const columns = Object.fromEntries(
-    columnNames.map((name) => [name, new Float64Array(densities.length)]),
-  ) as unknown as MassRadiusSequence;
+  const { rotation = false, tides = false } = options;
+  const asked = [...columnNames, ...(rotation ? ofRotation : []), ...(tides ? ofTides : [])];
+  const columns = asked.map((name) => [name, new Float64Array(densities.length)] as const);
   for (let i = 0; i < densities.length; i++) {
     const star = withRow(i, () => make(densities[i]!));
-    for (const name of columnNames) columns[name][i] = star[name] ?? Number.NaN;
+    for (const [name, column] of columns) column[i] = star[name]!;
   }
-  return Object.freeze(columns);
+  return Object.freeze(Object.fromEntries(columns)) as unknown as SequenceWith<Options>;
 }
 
 /** The action; its refusals get the row. */
@@ -131,7 +144,16 @@ export interface StarOfMassOptions extends StarOptions {
  * Where white dwarfs and neutron stars have the same mass, `range` chooses. The mass is met to the tolerance.
  * @throws as `hydrostaticStar`; `outside-domain` where no star of the range has this mass
  */
-export function starOfMass(barotrope: Barotrope, mass: number, options: StarOfMassOptions = {}): Star {
+export function starOfMass<const Options extends StarOfMassOptions = Record<never, never>>(
+  barotrope: Barotrope,
+  mass: number,
+  options?: Options,
+): StarWith<Options> {
+  return searchStar(barotrope, mass, options ?? {}) as StarWith<Options>;
+}
+
+function searchStar(barotrope: Barotrope, mass: number, options: StarOfMassOptions): Star {
+  requireStarOptions(options, ["range", "profile"]);
   requireFinite("mass", mass, "a mass in g");
   const tolerance = requireTolerance(options.tolerance);
   const make = starMaker(barotrope, options);
