@@ -14,7 +14,7 @@ import {
   type BarotropeLimit,
 } from "./barotrope.js";
 import { fitBrokenLine } from "./broken-line.js";
-import { type FitReport, measureAgainst, measureAtRows } from "./fit-report.js";
+import { type Figures, type FitReport, measureAgainst, measureAtRows, withFigures } from "./fit-report.js";
 import { requireDensity } from "./from-record.js";
 import { requireDensityRange, requireKnown, requirePositive } from "./options.js";
 import { type PiecewisePolytrope, piecewisePolytrope } from "./piecewise-polytrope.js";
@@ -41,10 +41,11 @@ export interface FitOptions {
    */
   readonly density?: readonly [lowest: number, highest: number];
   /**
-   * Numbers that a barotrope leads to, by name, such as maximum mass and radius: computed with the source and with the
-   * fit, and compared in the report. Needs a barotrope as source.
+   * Numbers that a barotrope leads to, by name, computed with the source and with the fit and compared in the report:
+   * `starFigures(...)` of `fermistate/structure` makes them of stars, the largest mass and its radius among them. Needs a
+   * barotrope as source.
    */
-  readonly figures?: (barotrope: Barotrope) => Readonly<Record<string, number>>;
+  readonly figures?: Figures;
 }
 
 /** A fit and what it is worth. */
@@ -94,7 +95,14 @@ export function fitPiecewisePolytrope(
     throw new FermistateError("out-of-range", { argument: "pieces", given: pieces, allowed: `1 to ${mostPieces}` });
   }
   const fitted = isBarotrope(source) ? ofBarotrope(source, options) : ofColumns(source, options);
-  if (pieces !== undefined) return fitted(pieces);
+  const { barotrope, report } = pieces === undefined ? fewest(fitted, tolerance) : fitted(pieces);
+  if (options.figures === undefined || !isBarotrope(source)) return Object.freeze({ barotrope, report });
+  const range = requireDensityRange(options.density);
+  return Object.freeze({ barotrope, report: withFigures(report, options.figures, source, barotrope, range) });
+}
+
+/** The fit of the fewest pieces that keeps the error. */
+function fewest(fitted: Fitted, tolerance: number | undefined): PiecewisePolytropeFit {
   const allowedError = requirePositive("tolerance", tolerance);
   let best = Number.POSITIVE_INFINITY;
   for (let count = 1; count <= mostPieces; count++) {
@@ -117,7 +125,7 @@ function isBarotrope(source: Barotrope | BarotropeColumns): source is Barotrope 
 
 type Fitted = (pieces: number) => PiecewisePolytropeFit;
 
-function ofBarotrope(source: Barotrope, { density, figures }: FitOptions): Fitted {
+function ofBarotrope(source: Barotrope, { density }: FitOptions): Fitted {
   const range = requireDensityRange(density);
   for (const end of range) requireDensity(source, end);
   const record = new Float64Array(BAROTROPE_LENGTH);
@@ -144,7 +152,7 @@ function ofBarotrope(source: Barotrope, { density, figures }: FitOptions): Fitte
     const breaks = fit.pieces
       .slice(1)
       .map((piece, i) => ({ density: piece.density, gammaBelow: fit.pieces[i]!.gamma }));
-    return Object.freeze({ barotrope: fit, report: measureAgainst(source, fit, breaks, range, figures) });
+    return Object.freeze({ barotrope: fit, report: measureAgainst(source, fit, breaks, range) });
   };
 }
 

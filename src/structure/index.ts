@@ -35,3 +35,4 @@ export {
   starOfMass,
 } from "./sequence.js";
 export { hydrostaticStar, type SingleStarOptions, type Star, type StarOptions, type StarWith } from "./star.js";
+export { type StarFigures, type StarFiguresOptions, starFigures } from "./star-figures.js";
