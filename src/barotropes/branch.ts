@@ -31,7 +31,7 @@ type BranchEnd = "density" | "surface" | "radiation";
 export interface Branch extends Layer {
   /** What the lowest density is. */
   readonly end: BranchEnd;
-  /** Sets what is added to w. */
+  /** Sets what is added to w, `potential` included. */
   shiftPotential(by: number): void;
 }
 
@@ -145,7 +145,10 @@ export function branchOf(
     density: nodes.density,
     end: nodes.end,
     pressure: [pressures[0]!, pressures[last]!],
-    potential: [potentials[0]!, potentials[last]!],
+    get potential(): readonly [number, number] {
+      const shift = scratch[OFFSET]!;
+      return [potentials[0]! + shift, potentials[last]! + shift];
+    },
     fillAtDensity(record): void {
       if (!isotherm) {
         scratch[LOG] = Math.log(record[BAROTROPE_DENSITY]!);
