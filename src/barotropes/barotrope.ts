@@ -71,7 +71,10 @@ export interface Barotrope {
   readonly density: readonly [lowest: number, highest: number];
   /** Density jumps by rising pressure; a density inside a jump is refused. */
   readonly jumps: readonly DensityJump[];
-  /** Rising potentials, erg/g, at which d rho/dw breaks and the density does not: where solvers should end a step. */
+  /**
+   * Potentials, erg/g, at which d rho/dw breaks and the density does not, or near which it changes fast: where solvers should
+   * end a step.
+   */
   readonly kinks?: readonly number[];
   /** Densities beyond which the physics is another, as far as known; it answers there all the same. */
   readonly limits?: readonly BarotropeLimit[];

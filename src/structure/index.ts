@@ -31,8 +31,7 @@ export {
   massRadiusSequence,
   type SequenceOptions,
   type SequenceWith,
-  type StarOfMassOptions,
-  starOfMass,
 } from "./sequence.js";
 export { hydrostaticStar, type SingleStarOptions, type Star, type StarOptions, type StarWith } from "./star.js";
 export { type StarFigures, type StarFiguresOptions, starFigures } from "./star-figures.js";
+export { type StarOfMassOptions, starOfMass } from "./star-of-mass.js";

@@ -1,10 +1,8 @@
-/** Sequences of stars of one barotrope by central density, and the star of a given mass. */
+/** Sequences of stars of one barotrope by central density. */
 import type { Barotrope } from "../barotropes/barotrope.js";
-import { FermistateError, requireFinite } from "../errors.js";
-import { findRoot } from "../numerics/roots.js";
-import { densityGrid, requireRange } from "./density-grid.js";
-import { requireStarOptions, requireTolerance, type Star, type StarOptions, type StarWith, starMaker } from "./star.js";
-import { turningDensity } from "./turning-density.js";
+import { FermistateError } from "../errors.js";
+import { requireRange } from "./sequence-scan.js";
+import { requireStarOptions, type StarOptions, starMaker } from "./star.js";
 
 /** Which stars of a sequence. */
 export interface SequenceOptions extends StarOptions {
@@ -122,66 +120,4 @@ function densitiesOf({ centralDensities, range, count = 100 }: SequenceOptions):
   return Float64Array.from({ length: count }, (_, i) =>
     i === count - 1 ? high : low * (high / low) ** (i / (count - 1)),
   );
-}
-
-/** Which star of a mass. */
-export interface StarOfMassOptions extends StarOptions {
-  /**
-   * Central densities to search, g/cm^3.
-   * @defaultValue those of the barotrope, sixteen decades of them at most
-   */
-  readonly range?: readonly [lowest: number, highest: number];
-  /**
-   * Keep the inside of the star as `profile`.
-   * @defaultValue false
-   */
-  readonly profile?: boolean;
-}
-
-/**
- * The stable star of a gravitational mass: the least dense one in the range on a branch where mass rises with density.
- *
- * Where white dwarfs and neutron stars have the same mass, `range` chooses. The mass is met to the tolerance.
- * @throws as `hydrostaticStar`; `outside-domain` where no star of the range has this mass
- */
-export function starOfMass<const Options extends StarOfMassOptions = Record<never, never>>(
-  barotrope: Barotrope,
-  mass: number,
-  options?: Options,
-): StarWith<Options> {
-  return searchStar(barotrope, mass, options ?? {}) as StarWith<Options>;
-}
-
-function searchStar(barotrope: Barotrope, mass: number, options: StarOfMassOptions): Star {
-  requireStarOptions(options, ["range", "profile"]);
-  requireFinite("mass", mass, "a mass in g");
-  const tolerance = requireTolerance(options.tolerance);
-  const make = starMaker(barotrope, options);
-  const excess = (star: Star): number => Math.log(star.mass / mass);
-  let before: Star | undefined;
-  let [lightest, heaviest] = [Number.POSITIVE_INFINITY, 0];
-  for (const { density, isAcross } of densityGrid(barotrope, options.range)) {
-    const star = make(density);
-    lightest = Math.min(lightest, star.mass);
-    heaviest = Math.max(heaviest, star.mass);
-    let above = star;
-    if (before !== undefined && !isAcross && before.massSlope > 0 && star.massSlope < 0) {
-      // The maximum lies between the two.
-      above = make(turningDensity(make, before, star));
-      heaviest = Math.max(heaviest, above.mass);
-    }
-    if (before !== undefined && !isAcross && excess(before) <= 0 && excess(above) >= 0) {
-      const root = findRoot((at) => excess(make(at)), before.centralDensity, above.centralDensity, {
-        values: [excess(before), excess(above)],
-        relativeTolerance: 0.01 * tolerance,
-      });
-      return make(root.x, options.profile === true);
-    }
-    before = star;
-  }
-  throw new FermistateError("outside-domain", {
-    argument: "mass",
-    given: mass,
-    allowed: `masses of stars of ${barotrope.name} on rising branches, within ${lightest} to ${heaviest} g`,
-  });
 }

@@ -7,8 +7,8 @@ import type { Barotrope } from "../barotropes/barotrope.js";
 import { requireKnown } from "../barotropes/options.js";
 import type { Relativity } from "./hydrostatic-equations.js";
 import { maximumMass } from "./maximum-mass.js";
-import { starOfMass } from "./sequence.js";
 import { hydrostaticStar } from "./star.js";
+import { starOfMass } from "./star-of-mass.js";
 
 /** Options of {@link starFigures}. */
 export interface StarFiguresOptions {

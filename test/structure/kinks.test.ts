@@ -37,6 +37,22 @@ describe("the error stays below the tolerance", () => {
   });
 });
 
+test("formulas with narrow features: below ten tolerances at every central density, a hundred and more without stops", () => {
+  const without: number[] = [];
+  for (const name of ["SLy", "FPS", "BSk19", "BSk20", "BSk21"]) {
+    const matter = publishedBarotrope(name);
+    for (let i = 0; i < 20; i++) {
+      const centralDensity = 3e14 * (1 + 0.1 * i);
+      const exact = hydrostaticStar(matter, { centralDensity, tolerance: 1e-14 }).mass;
+      const error = (one: Barotrope): number =>
+        Math.abs(hydrostaticStar(one, { centralDensity, tolerance: 1e-11 }).mass / exact - 1) / 1e-11;
+      expect(error(matter), `${name} ${centralDensity}`).toBeLessThan(10);
+      without.push(error({ ...matter, kinks: [] }));
+    }
+  }
+  expect(Math.max(...without)).toBeGreaterThan(100);
+});
+
 describe("where they stand", () => {
   test("joined matter keeps the kinks of both, and has one where they meet without a jump", () => {
     const pieces = piecewisePolytrope({

@@ -10,8 +10,8 @@ import { publishedBarotrope } from "../../src/barotropes/published.js";
 import { solarMass } from "../../src/constants.js";
 import { composition } from "../../src/matter/composition.js";
 import { maximumMass } from "../../src/structure/maximum-mass.js";
-import { starOfMass } from "../../src/structure/sequence.js";
 import { hydrostaticStar, starMaker } from "../../src/structure/star.js";
+import { starOfMass } from "../../src/structure/star-of-mass.js";
 import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
 import { publishedRows } from "./published.js";
 
@@ -100,7 +100,17 @@ describe("catalysed matter", () => {
   test("joined to a core: two families, white dwarfs and neutron stars", () => {
     const matter = joinBarotropes(crust, publishedBarotrope("BSk21"));
     const { turningPoints, mass, reason } = maximumMass(matter);
-    expect(turningPoints.map(({ kind }) => kind)).toEqual(["maximum", "minimum", "maximum"]);
+    // Between them a family of unstable stars whose mass rises and falls again: their inner crust alone would carry them.
+    const kinds = ["maximum", "minimum", "maximum", "minimum", "maximum"];
+    expect(turningPoints.map(({ kind }) => kind)).toEqual(kinds);
+    const lightest = turningPoints[3]!;
+    expect((lightest.mass / solarMass).toFixed(2)).toBe("0.09"); // the least mass of a neutron star: common practice
+    for (const { centralDensity } of turningPoints) {
+      const [below, above] = [1 - 1e-4, 1 + 1e-4].map((factor) =>
+        hydrostaticStar(matter, { centralDensity: centralDensity * factor }),
+      );
+      expect(below!.massSlope * above!.massSlope).toBeLessThan(0);
+    }
     expect(reason).toBe("relativity");
     expect(Math.abs(mass / solarMass / 2.27404 - 1)).toBeLessThan(1e-5);
     // 1.4 solar masses: I of (1-2)e45 g cm^2 and Lambda of some hundreds are common practice.

@@ -2,8 +2,9 @@
 import { describe, expect, test } from "vitest";
 import { solarMass } from "../../src/constants.js";
 import { maximumMass } from "../../src/structure/maximum-mass.js";
-import { massRadiusSequence, starOfMass } from "../../src/structure/sequence.js";
+import { massRadiusSequence } from "../../src/structure/sequence.js";
 import { hydrostaticStar } from "../../src/structure/star.js";
+import { starOfMass } from "../../src/structure/star-of-mass.js";
 import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
 import { coldElectrons, coldNeutrons, kinked, polytrope } from "./barotropes.js";
 

@@ -8,9 +8,9 @@ import { fitSmoothBarotrope } from "../../src/barotropes/smooth-fit.js";
 import { solarMass } from "../../src/constants.js";
 import { composition } from "../../src/matter/composition.js";
 import { maximumMass } from "../../src/structure/maximum-mass.js";
-import { starOfMass } from "../../src/structure/sequence.js";
 import { hydrostaticStar } from "../../src/structure/star.js";
 import { starFigures } from "../../src/structure/star-figures.js";
+import { starOfMass } from "../../src/structure/star-of-mass.js";
 import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
 
 const cold = barotrope(whiteDwarfMatter(), composition({ C12: 0.5, O16: 0.5 }), { temperature: 0 });
