@@ -8,15 +8,10 @@ export type { Barotrope, BarotropeLimit, BarotropeState, DensityJump } from "../
 export { FermistateError, isFermistateError } from "../errors.js";
 export type { StarFinding, StarFindingCode } from "./findings.js";
 export type { Relativity } from "./hydrostatic-equations.js";
+export type { LadderEnd, LadderRung, LadderRungCode } from "./ladder-rung.js";
 export * from "./lane-emden.js";
 export { chandrasekharMass, type MassUnit, type MassUnitOptions, uniformSphereMass } from "./limiting-mass.js";
-export {
-  type LadderEnd,
-  type LadderOptions,
-  type LadderRung,
-  type LadderRungCode,
-  limitingMassLadder,
-} from "./limiting-mass-ladder.js";
+export { type LadderOptions, limitingMassLadder } from "./limiting-mass-ladder.js";
 export {
   type MassLimitReason,
   type MaximumMass,

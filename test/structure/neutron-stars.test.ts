@@ -9,7 +9,9 @@ import { outerCrust } from "../../src/barotropes/outer-crust.js";
 import { publishedBarotrope } from "../../src/barotropes/published.js";
 import { solarMass } from "../../src/constants.js";
 import { composition } from "../../src/matter/composition.js";
+import { findRoot } from "../../src/numerics/roots.js";
 import { maximumMass } from "../../src/structure/maximum-mass.js";
+import type { StarProfile } from "../../src/structure/profile.js";
 import { hydrostaticStar, starMaker } from "../../src/structure/star.js";
 import { starOfMass } from "../../src/structure/star-of-mass.js";
 import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
@@ -46,6 +48,29 @@ describe("published fits have the maxima and radii that an independent integrati
     const most = maximumMass(publishedBarotrope(name), { range: [3e14, 3.6e15] });
     expect(Math.abs(most.mass / solarMass / row!.value - 1)).toBeLessThan(1e-5);
   });
+});
+
+/** Radius at which the density falls to 1e6 g/cm^3: there the recomputed stars end, where the formulas were fitted from. */
+function radiusOfFormula(star: { readonly radius: number; readonly profile: StarProfile }): number {
+  const { at } = star.profile;
+  return findRoot((radius) => at(radius).density - 1e6, 0.9 * star.radius, star.radius, { relativeTolerance: 1e-12 }).x;
+}
+
+test.each([
+  // Recomputed outside this library: radius of 1.4 solar masses, of the heaviest star, km.
+  ["SLy", 11.698, 9.9807],
+  ["FPS", 10.8277, 9.2478],
+  ["BSk19", 10.7356, 9.1021],
+  ["BSk20", 11.7403, 10.1705],
+  ["BSk21", 12.5863, 11.039],
+] as const)("%s, analytic representation: radii", (name, ofMass, ofMaximum) => {
+  const matter = publishedBarotrope(name);
+  const star = starOfMass(matter, 1.4 * solarMass, { range: [1e14, 3e15], profile: true });
+  expect(Math.abs(radiusOfFormula(star) / 1e5 - ofMass)).toBeLessThan(6e-5); // half a unit of the last digit
+  const { centralDensity } = maximumMass(matter, { range: [3e14, 3.6e15] });
+  const heaviest = hydrostaticStar(matter, { centralDensity, profile: true });
+  // Its maximum was found by comparing masses, which leaves some 1e-4 of its density and a tenth of that in the radius.
+  expect(Math.abs(radiusOfFormula(heaviest) / 1e5 / ofMaximum - 1)).toBeLessThan(2e-5);
 });
 
 test("listed kinks keep the promise of the tolerance for pieces; they stand where the pieces meet", () => {
