@@ -11,7 +11,7 @@ import type { BarotropeLimit } from "./barotrope.js";
 const schematic = 1e6;
 
 /** Baryon mass density at the centre of the heaviest star, g/cm^3, in general relativity, rounded up. */
-export const heaviestCentres: Readonly<Record<string, number>> = {
+const heaviestCentres: Readonly<Record<string, number>> = {
   "SLy piecewise": 2.007e15,
   "APR3 piecewise": 1.645e15,
   "APR4 piecewise": 1.916e15,

@@ -2,6 +2,7 @@
  * Stars of the library's own barotropes: published neutron-star fits against recomputed maxima, the full physics of white dwarfs,
  * catalysed matter with its layers.
  */
+import { readFileSync } from "node:fs";
 import { describe, expect, test } from "vitest";
 import { barotrope } from "../../src/barotropes/from-equation-of-state.js";
 import { joinBarotropes } from "../../src/barotropes/joined.js";
@@ -47,6 +48,27 @@ describe("published fits have the maxima and radii that an independent integrati
     const [row] = publishedRows(quantity, "=");
     const most = maximumMass(publishedBarotrope(name), { range: [3e14, 3.6e15] });
     expect(Math.abs(most.mass / solarMass / row!.value - 1)).toBeLessThan(1e-5);
+  });
+});
+
+describe("all pieces of Read et al. 2009 against another integration (test/generators/published-stars.mjs)", () => {
+  const { rows } = JSON.parse(readFileSync(new URL("../fixtures/published-stars.json", import.meta.url), "utf8")) as {
+    rows: Record<string, Record<"mass" | "radius" | "centralDensity" | "radiusAt1_4", string>>;
+  };
+
+  test.each(Object.entries(rows))("%s", (name, row) => {
+    const matter = publishedBarotrope(`${name} piecewise`);
+    const most = maximumMass(matter, { range: [3e14, 4e15] });
+    const off = (value: number, expected: string): number => Math.abs(value / Number(expected) - 1);
+    expect(off(most.mass / solarMass, row.mass)).toBeLessThan(2e-11);
+    expect(off(most.centralDensity, row.centralDensity)).toBeLessThan(2e-6); // a parabola through masses found it there
+    expect(off(most.radius / 1e5, row.radius)).toBeLessThan(1e-6);
+    const star = starOfMass(matter, 1.4 * solarMass, { range: [1e14, 4e15] });
+    expect(off(star.radius / 1e5, row.radiusAt1_4)).toBeLessThan(2e-11);
+    // The limit that the matter states is its heaviest star, rounded up.
+    const limit = matter.limits!.find(({ side }) => side === "above")!.density;
+    expect(limit).toBeGreaterThan(most.centralDensity);
+    expect(limit).toBeLessThan(1.001 * most.centralDensity);
   });
 });
 
