@@ -27,6 +27,13 @@ export {
   type SequenceOptions,
   type SequenceWith,
 } from "./sequence.js";
-export { hydrostaticStar, type SingleStarOptions, type Star, type StarOptions, type StarWith } from "./star.js";
+export {
+  hydrostaticStar,
+  type Known,
+  type SingleStarOptions,
+  type Star,
+  type StarOptions,
+  type StarWith,
+} from "./star.js";
 export { type StarFigures, type StarFiguresOptions, starFigures } from "./star-figures.js";
 export { type StarOfMassOptions, starOfMass } from "./star-of-mass.js";

@@ -2,7 +2,7 @@
 import type { Barotrope } from "../barotropes/barotrope.js";
 import { FermistateError } from "../errors.js";
 import { requireRange } from "./sequence-scan.js";
-import { requireStarOptions, type StarOptions, starMaker } from "./star.js";
+import { type Known, requireStarOptions, type StarOptions, starMaker } from "./star.js";
 
 /** Which stars of a sequence. */
 export interface SequenceOptions extends StarOptions {
@@ -74,7 +74,7 @@ const ofTides = ["loveNumber", "tidalDeformability"] as const;
  */
 export function massRadiusSequence<const Options extends SequenceOptions>(
   barotrope: Barotrope,
-  options: Options,
+  options: Known<Options, SequenceOptions>,
 ): SequenceWith<Options> {
   requireStarOptions(options, ["centralDensities", "range", "count"]);
   const densities = densitiesOf(options);

@@ -3,7 +3,15 @@ import type { Barotrope } from "../barotropes/barotrope.js";
 import { FermistateError, requireFinite } from "../errors.js";
 import { findRoot } from "../numerics/roots.js";
 import { scanSequence } from "./sequence-scan.js";
-import { requireStarOptions, requireTolerance, type Star, type StarOptions, type StarWith, starMaker } from "./star.js";
+import {
+  type Known,
+  requireStarOptions,
+  requireTolerance,
+  type Star,
+  type StarOptions,
+  type StarWith,
+  starMaker,
+} from "./star.js";
 import { turningDensity } from "./turning-density.js";
 
 /** Which star of a mass. */
@@ -29,7 +37,7 @@ export interface StarOfMassOptions extends StarOptions {
 export function starOfMass<const Options extends StarOfMassOptions = Record<never, never>>(
   barotrope: Barotrope,
   mass: number,
-  options?: Options,
+  options?: Known<Options, StarOfMassOptions>,
 ): StarWith<Options> {
   return find(barotrope, mass, options ?? {}) as StarWith<Options>;
 }

@@ -113,6 +113,9 @@ export type StarWith<Options> = Star &
     ? { readonly loveNumber: number; readonly tidalDeformability: number }
     : unknown);
 
+/** Options without unknown names: a slip of the pen does not compile. */
+export type Known<Options, All> = Options & { readonly [Name in Exclude<keyof Options, keyof All>]: never };
+
 const DEFAULT_TOLERANCE = 1e-11;
 
 /**
@@ -134,7 +137,7 @@ const DEFAULT_TOLERANCE = 1e-11;
  */
 export function hydrostaticStar<const Options extends SingleStarOptions>(
   barotrope: Barotrope,
-  options: Options,
+  options: Known<Options, SingleStarOptions>,
 ): StarWith<Options> {
   requireStarOptions(options, ["centralDensity", "profile"]);
   return starMaker(barotrope, options)(options.centralDensity, options.profile === true) as StarWith<Options>;

@@ -44,6 +44,16 @@ describe("massRadiusSequence", () => {
     expect(turning.tidalDeformability).toBeUndefined();
   });
 
+  test("a slip in a literal does not compile, and what is asked for has its type", () => {
+    const barotrope = coldElectrons(2);
+    // @ts-expect-error: relativty
+    expect(() => hydrostaticStar(barotrope, { centralDensity: 1e6, relativty: "newton" })).toThrow("relativty");
+    // @ts-expect-error: cuont
+    expect(() => massRadiusSequence(barotrope, { range: [1e6, 1e7], cuont: 3 })).toThrow("cuont");
+    const star = hydrostaticStar(barotrope, { centralDensity: 1e6, profile: true });
+    expect(star.profile.at(0).density).toBeCloseTo(1e6, 4);
+  });
+
   test("unknown options, and options of the wrong kind, are refused by all", () => {
     const barotrope = coldElectrons(2);
     const calls: readonly ((options: object) => unknown)[] = [
