@@ -5,8 +5,7 @@
  *     node test/generators/published-stars.mjs      (a minute; needs nothing)
  *
  * Nothing of src: radius and mass as unknowns, the fourth root of ln((E + P)/(rho c^2)) as variable, Gragg's extrapolated midpoint
- * rule in steps that never cross a joint of the pieces, a maximum from a parabola through masses. Runs with half the steps agree
- * to 1e-11.
+ * rule in steps that never cross a joint of the pieces, a maximum from a parabola through masses.
  */
 import { writeFileSync } from "node:fs";
 
@@ -53,7 +52,7 @@ function piecesOf([logP, ...gammas]) {
     const h = last === undefined ? 0 : Math.log(1 + a + (gamma / (gamma - 1)) * constant * from ** (gamma - 1));
     all.push({ gamma, k: constant, a, from, h });
   };
-  crust.gammas.forEach((gamma, i) => push(gamma, i === 0 ? 0 : crust.breaks[i - 1], crust.k));
+  for (const [i, gamma] of crust.gammas.entries()) push(gamma, i === 0 ? 0 : crust.breaks[i - 1], crust.k);
   const coreK = 10 ** logP / c ** 2 / rho1 ** gammas[0];
   push(gammas[0], (all[3].k / coreK) ** (1 / (gammas[0] - all[3].gamma)));
   push(gammas[1], rho1);
