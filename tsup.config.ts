@@ -105,6 +105,7 @@ export default defineConfig([
       contributions: "src/contributions/index.ts",
       files: "src/files/index.ts",
       certify: "src/certify/index.ts",
+      compare: "src/compare/index.ts",
       parallel: "src/parallel/index.ts",
       "parallel-worker": "src/parallel/parallel-worker.ts", // stands beside parallel.js for its threads
       structure: "src/structure/index.ts",

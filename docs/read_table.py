@@ -130,7 +130,7 @@ class Table:
     def phase(self, density, temperature):
         """Name of the sheet that holds."""
         if self.freezing is None:
-            return "single"
+            return next(iter(self.sheets))
         factor, highest = self.freezing
         frozen = density <= highest and temperature <= factor * density ** (1 / 3)
         return "crystal" if frozen else "liquid"

@@ -24,8 +24,8 @@
  * - `too-large`: a request beyond the stated size limit
  * - `invalid-option`: an option or a command-line argument that does not exist or cannot be read
  * - `worker-failed`: a thread of `fermistate/parallel` died or could not start, or code of the caller's failed in it
+ * - `invalid-file`: a file or bytes that are not what they claim: damaged, truncated, another version
  * - `file-not-written`: the file system refused; no partial file is left
- * - `invalid-file`: a file or bytes that are not what they claim: damaged, truncated, of another version
  */
 export type ErrorCode =
   | "not-a-number"
@@ -44,8 +44,8 @@ export type ErrorCode =
   | "too-large"
   | "invalid-option"
   | "worker-failed"
-  | "file-not-written"
-  | "invalid-file";
+  | "invalid-file"
+  | "file-not-written";
 
 /** What was refused: the argument's name, its value, what is allowed, and where in a batch it stood. */
 export interface ErrorDetails {

@@ -25,7 +25,7 @@ const floors: readonly (readonly string[])[] = [
   ["grids"],
   ["charts", "files", "parallel", "table-files"],
   ["table-build"],
-  ["certify"],
+  ["certify", "compare"],
   ["structure"],
   ["index"],
   ["cli"],
@@ -42,6 +42,7 @@ const forbidden: Readonly<Record<string, readonly string[]>> = {
     "charts",
     "files",
     "certify",
+    "compare",
     "contributions",
     "parallel",
     "structure",
@@ -147,6 +148,8 @@ describe("the sources", () => {
   test("the core reaches no package and nothing of Node", () => expect(reached(imports, "index.ts")).toEqual([]));
 
   test("grids are pure too", () => expect(reached(imports, "grids/index.ts")).toEqual([]));
+
+  test("comparisons reach charts only", () => expect(reached(imports, "compare/index.ts")).toEqual(["d3-scale"]));
 
   test("stellar structure is pure too", () => expect(reached(imports, "structure/index.ts")).toEqual([]));
 

@@ -20,7 +20,8 @@ import { makeWorkshop } from "./parallel/threads-from-source.js";
 const worker = vi.hoisted(() => ({ file: new URL("file:///nowhere") }));
 vi.mock("../src/parallel/threads.js", async (original) => {
   const { startThreads } = await original<typeof ThreadsRoom>();
-  return { startThreads: (count: number) => startThreads(count, worker.file) };
+  const built = (file: URL): URL => new URL(`./${file.pathname.split("/").at(-1)}`, worker.file);
+  return { startThreads: (count: number, file: URL) => startThreads(count, built(file)) };
 });
 beforeAll(async () => {
   const workshop = await makeWorkshop();

@@ -11,7 +11,8 @@ import { ink } from "../../src/charts/palette.js";
 import { element, escaped, fontStack, text } from "../../src/charts/svg.js";
 import { solarMass } from "../../src/constants.js";
 import { composition } from "../../src/matter/composition.js";
-import { type LadderRungCode, limitingMassLadder } from "../../src/structure/limiting-mass-ladder.js";
+import type { LadderRungCode } from "../../src/structure/ladder-rung.js";
+import { limitingMassLadder } from "../../src/structure/limiting-mass-ladder.js";
 import { massRadiusSequence } from "../../src/structure/sequence.js";
 
 const rungs = limitingMassLadder(composition({ C12: 0.5, O16: 0.5 }));

@@ -30,6 +30,21 @@ export interface DensityJump {
   readonly densities: readonly [below: number, above: number];
 }
 
+/** A density beyond which matter is no longer what the barotrope takes it for. */
+export interface BarotropeLimit {
+  /**
+   * `electron-capture`: nuclei catch electrons, the composition changes; `neutron-drip`: neutrons leave the nuclei;
+   * `extrapolated`: a fit or a published representation goes beyond the densities it was made for.
+   */
+  readonly code: "electron-capture" | "neutron-drip" | "extrapolated";
+  /** g/cm^3. */
+  readonly density: number;
+  /** Whether it is the densities above it or those below that are concerned. */
+  readonly side: "above" | "below";
+  /** In a sentence. */
+  readonly message: string;
+}
+
 /** The state of a barotrope at one density; immutable. */
 export interface BarotropeState {
   /** Baryon mass density, g/cm^3. */
@@ -56,8 +71,13 @@ export interface Barotrope {
   readonly density: readonly [lowest: number, highest: number];
   /** Density jumps by rising pressure; a density inside a jump is refused. */
   readonly jumps: readonly DensityJump[];
-  /** Rising potentials, erg/g, at which d rho/dw breaks and the density does not: where solvers should end a step. */
+  /**
+   * Potentials, erg/g, at which d rho/dw breaks and the density does not, or near which it changes fast: where solvers should
+   * end a step.
+   */
   readonly kinks?: readonly number[];
+  /** Densities beyond which the physics is another, as far as known; it answers there all the same. */
+  readonly limits?: readonly BarotropeLimit[];
   /** Fills the record from its density. Unchecked, allocates nothing. */
   fillAtDensity(record: Float64Array): void;
   /** Fills the record from its pressure. Unchecked, allocates nothing. */

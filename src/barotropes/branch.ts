@@ -6,6 +6,7 @@
 import { FermistateError } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
 import { CRYSTAL_FRACTION, DENSITY, TEMPERATURE } from "../matter/plasma.js";
+import { findRoot } from "../numerics/roots.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { ENERGY, ENTROPY, HEAT, PRESSURE, PRESSURE_R, PRESSURE_T } from "../thermodynamics/free-energy.js";
 import {
@@ -16,7 +17,6 @@ import {
   BAROTROPE_PRESSURE,
 } from "./barotrope.js";
 import { ENERGY_SLOPE, INVERSION_SLOTS, type InversionNodes, inversionOf, LOG, OFFSET, SLOPE } from "./inversion.js";
-import { bracketedRoot } from "./root.js";
 import type { Layer } from "./stacked.js";
 
 /** What is constant along the path: a temperature (0 included) or a specific entropy. */
@@ -31,7 +31,7 @@ type BranchEnd = "density" | "surface" | "radiation";
 export interface Branch extends Layer {
   /** What the lowest density is. */
   readonly end: BranchEnd;
-  /** Sets what is added to w. */
+  /** Sets what is added to w, `potential` included. */
   shiftPotential(by: number): void;
 }
 
@@ -145,7 +145,10 @@ export function branchOf(
     density: nodes.density,
     end: nodes.end,
     pressure: [pressures[0]!, pressures[last]!],
-    potential: [potentials[0]!, potentials[last]!],
+    get potential(): readonly [number, number] {
+      const shift = scratch[OFFSET]!;
+      return [potentials[0]! + shift, potentials[last]! + shift];
+    },
     fillAtDensity(record): void {
       if (!isotherm) {
         scratch[LOG] = Math.log(record[BAROTROPE_DENSITY]!);
@@ -218,12 +221,12 @@ function tabulate(
     };
     const negative = record[BAROTROPE_PRESSURE]! <= 0;
     if (i > 0 && negative) {
-      lowest = bracketedRoot(pressureAt, density, above);
+      lowest = findRoot(pressureAt, density, above).x;
       // The first double whose pressure is positive: the exponent is finite there.
       while (pressureAt(lowest) <= 0) lowest *= 1 + Number.EPSILON;
     }
     if (i === 0 || !negative || scratch[SLOPE]! <= 0) {
-      const edge = i === 0 || negative ? density : bracketedRoot(slopeAt, density, above);
+      const edge = i === 0 || negative ? density : findRoot(slopeAt, density, above).x;
       throw new FermistateError("unstable", {
         argument: "density",
         given: edge,

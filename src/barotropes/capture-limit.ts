@@ -1,7 +1,9 @@
-/** The density above which cold matter does not keep its composition: its first electron capture. */
+/** Densities above which cold matter does not keep its composition: its first electron capture, neutron drip. */
 import { type Composition, requireComposition } from "../matter/composition.js";
 import { DENSITY, fillPlasma, POINT_LENGTH, RELATIVITY, radiusFactor } from "../matter/plasma.js";
 import { type CaptureThreshold, captureThresholds } from "../regime/capture.js";
+import { dripDensity } from "../regime/reactions.js";
+import type { BarotropeLimit } from "./barotrope.js";
 
 /**
  * The electron capture that sets in at the lowest density in cold matter of a composition; undefined where AME2020 has
@@ -34,4 +36,24 @@ export function firstElectronCapture(composition: Composition): CaptureThreshold
   fillPlasma(point, composition);
   const there = captureThresholds(composition, radiusFactor / point[RELATIVITY]!);
   return there.thresholds.find(({ species }) => species === first.species);
+}
+
+/** Electron capture and neutron drip, where they come below the highest density of matter that keeps its composition. */
+export function compositionLimits(composition: Composition, highest: number): BarotropeLimit[] {
+  const limits: BarotropeLimit[] = [];
+  const add = (code: BarotropeLimit["code"], density: number, message: string): void => {
+    if (density < highest) limits.push(Object.freeze({ code, density, side: "above", message }));
+  };
+  const capture = firstElectronCapture(composition);
+  if (capture !== undefined) {
+    const { species, product, densityWithLattice } = capture;
+    const message =
+      `${species} captures electrons (to ${product}) in cold matter above this density: the composition does not stay as ` +
+      "given, and the electrons lost no longer press.";
+    add("electron-capture", densityWithLattice, message);
+  }
+  const drip =
+    "Neutrons leave the nuclei above this density: matter of nuclei and electrons alone is no longer its model.";
+  if (composition.meanCharge > 0) add("neutron-drip", dripDensity, drip);
+  return limits;
 }

@@ -1,6 +1,6 @@
 /**
  * What is wrong with a barotrope: where it is acausal, where it resists no compression, where its w does not belong to
- * its P.
+ * its P; and the limits it knows of.
  */
 import { speedOfLight } from "../constants.js";
 import {
@@ -10,6 +10,7 @@ import {
   BAROTROPE_POTENTIAL,
   BAROTROPE_PRESSURE,
   type Barotrope,
+  type BarotropeLimit,
 } from "./barotrope.js";
 import { soundSpeedSquared } from "./from-record.js";
 import { requireBarotrope } from "./options.js";
@@ -18,12 +19,15 @@ import { requireBarotrope } from "./options.js";
 export interface BarotropeFinding {
   /**
    * `acausal`: sound faster than light; `unstable`: P <= 0 or d ln P/d ln rho <= 0; `inconsistent`: dw is not dP/rho,
-   * to 1 %.
+   * to 1 %. `electron-capture`, `neutron-drip`, `extrapolated`: it answers beyond one of its `limits`.
    */
-  readonly code: "acausal" | "unstable" | "inconsistent";
-  /** Lowest density at which it is so, g/cm^3; for `inconsistent` the end of the first step. */
+  readonly code: "acausal" | "unstable" | "inconsistent" | BarotropeLimit["code"];
+  /**
+   * Lowest density at which it is so, g/cm^3; for `inconsistent` the end of the first step, for a limit that concerns
+   * lower densities the highest one.
+   */
   readonly density: number;
-  /** The number: (c_s/c)^2, d ln P/d ln rho, or how far dw is outside its bounds. */
+  /** The number: (c_s/c)^2, d ln P/d ln rho, or how far dw is outside its bounds; for a limit the density it answers to. */
   readonly value: number;
   /** In words. */
   readonly message: string;
@@ -36,8 +40,8 @@ const depth = 1e-14;
 
 /**
  * Looks at a barotrope over the upper 14 decades of its densities in 2000 steps; at most one finding of each kind, the
- * one at the lowest density, narrowed down to the last digit for `acausal` and `unstable`. An empty list means that
- * none was seen.
+ * one at the lowest density, narrowed down to the last digit for `acausal` and `unstable`. The limits that the barotrope
+ * itself states and goes beyond follow. An empty list means that none was seen.
  *
  * A Newtonian star does not mind an acausal barotrope, a relativistic one whose centre lies below that density neither.
  *
@@ -83,21 +87,32 @@ export function barotropeFindings(barotrope: Barotrope): readonly BarotropeFindi
       !(density === lowest && record[BAROTROPE_PRESSURE] === 0)
     ) {
       const edge = i === 0 ? low : edgeOf(below, density, (rho) => !(stability(rho) > 0));
-      add("unstable", edge, stability(edge), "Matter has no pressure or does not resist compression from here.");
+      add(
+        "unstable",
+        edge,
+        stability(edge),
+        "The pressure is not positive, or does not rise with density, from here on.",
+      );
     }
     if (!found.has("acausal") && causality(density) > 1) {
       const edge = i === 0 ? low : edgeOf(below, density, (rho) => causality(rho) > 1);
-      add("acausal", edge, causality(edge), "The sound speed exceeds that of light from here.");
+      add("acausal", edge, causality(edge), "Sound is faster than light from this density on.");
     }
     at(density);
     if (before !== undefined && !jumped) {
       const error = potentialError(before, record);
-      if (error > 0) add("inconsistent", density, error, "The potential does not follow dw = dP/rho.");
+      if (error > 0)
+        add("inconsistent", density, error, "The potential w does not belong to the pressure: dw is not dP/rho.");
     }
     before = record.slice();
     below = density;
   }
-  return Object.freeze([...found.values()]);
+  const beyond = (barotrope.limits ?? [])
+    .filter(({ side, density }) => (side === "above" ? density < highest : density > lowest))
+    .map(({ code, density, side, message }): BarotropeFinding => {
+      return Object.freeze({ code, density, value: side === "above" ? highest : lowest, message });
+    });
+  return Object.freeze([...found.values(), ...beyond]);
 }
 
 /** The boundary between a density where it is not so and one where it is, by bisection. */

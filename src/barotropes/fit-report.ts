@@ -1,4 +1,6 @@
 /** What a fit is worth: errors in P, e and gamma1 at densities it has not seen, and in the numbers it leads to. */
+
+import { FermistateError } from "../errors.js";
 import {
   BAROTROPE_DENSITY,
   BAROTROPE_ENERGY,
@@ -20,13 +22,19 @@ export interface FitError {
 
 /** One number that the barotrope leads to. */
 export interface FigureError {
-  /** With the source. */
-  readonly source: number;
-  /** With the fit. */
-  readonly fit: number;
-  /** fit/source - 1. */
-  readonly relativeError: number;
+  /** With the source; undefined where only the fit has it. */
+  readonly source: number | undefined;
+  /** With the fit; undefined where only the source has it. */
+  readonly fit: number | undefined;
+  /** fit/source - 1; undefined unless both have it. */
+  readonly relativeError: number | undefined;
 }
+
+/** Numbers that a barotrope leads to, by name; `density` is the range of the fit, g/cm^3. */
+export type Figures = (
+  barotrope: Barotrope,
+  density: readonly [lowest: number, highest: number],
+) => Readonly<Record<string, number>>;
 
 /** Errors of a fit. */
 export interface FitReport {
@@ -85,7 +93,6 @@ export function measureAgainst(
   fit: Barotrope,
   breaks: readonly Break[],
   [low, high]: readonly [number, number],
-  figures: ((barotrope: Barotrope) => Readonly<Record<string, number>>) | undefined,
 ): FitReport {
   const truth = new Float64Array(BAROTROPE_LENGTH);
   const record = new Float64Array(BAROTROPE_LENGTH);
@@ -133,7 +140,7 @@ export function measureAgainst(
     specificEnergy: tallies.specificEnergy.result(),
     gamma1: tallies.gamma1.result(),
     densities: count,
-    figures: figures === undefined ? Object.freeze({}) : compareFigures(figures(source), figures(fit)),
+    figures: Object.freeze({}),
   });
 }
 
@@ -189,13 +196,25 @@ function energyError(record: Float64Array, truth: Float64Array): number {
   return (record[BAROTROPE_ENERGY]! - energy) / scale;
 }
 
-function compareFigures(
-  source: Readonly<Record<string, number>>,
-  fit: Readonly<Record<string, number>>,
-): Readonly<Record<string, FigureError>> {
-  const entries = Object.entries(source).map(([name, value]): [string, FigureError] => {
-    const other = fit[name] ?? Number.NaN;
-    return [name, Object.freeze({ source: value, fit: other, relativeError: other / value - 1 })];
+/** The report with the figures asked for. */
+export function withFigures(
+  report: FitReport,
+  figures: Figures | undefined,
+  source: Barotrope,
+  fit: Barotrope,
+  density: readonly [number, number],
+): FitReport {
+  if (figures === undefined) return report;
+  if (typeof figures !== "function") {
+    const allowed = "a function from a barotrope to named numbers";
+    throw new FermistateError("invalid-option", { argument: "figures", given: figures, allowed });
+  }
+  const [ofSource, ofFit] = [figures(source, density), figures(fit, density)];
+  const names = [...new Set([...Object.keys(ofSource), ...Object.keys(ofFit)])];
+  const entries = names.map((name): [string, FigureError] => {
+    const [a, b] = [ofSource[name], ofFit[name]];
+    const relativeError = a === undefined || b === undefined ? undefined : b / a - 1;
+    return [name, Object.freeze({ source: a, fit: b, relativeError })];
   });
-  return Object.freeze(Object.fromEntries(entries));
+  return Object.freeze({ ...report, figures: Object.freeze(Object.fromEntries(entries)) });
 }

@@ -11,9 +11,10 @@ import {
   BAROTROPE_LENGTH,
   BAROTROPE_PRESSURE,
   type Barotrope,
+  type BarotropeLimit,
 } from "./barotrope.js";
 import { fitBrokenLine } from "./broken-line.js";
-import { type FitReport, measureAgainst, measureAtRows } from "./fit-report.js";
+import { type Figures, type FitReport, measureAgainst, measureAtRows, withFigures } from "./fit-report.js";
 import { requireDensity } from "./from-record.js";
 import { requireDensityRange, requireKnown, requirePositive } from "./options.js";
 import { type PiecewisePolytrope, piecewisePolytrope } from "./piecewise-polytrope.js";
@@ -40,10 +41,11 @@ export interface FitOptions {
    */
   readonly density?: readonly [lowest: number, highest: number];
   /**
-   * Numbers that a barotrope leads to, by name, such as maximum mass and radius: computed with the source and with the
-   * fit, and compared in the report. Needs a barotrope as source.
+   * Numbers that a barotrope leads to, by name, computed with the source and with the fit and compared in the report:
+   * `starFigures(...)` of `fermistate/structure` makes them of stars, the largest mass and its radius among them. Needs a
+   * barotrope as source.
    */
-  readonly figures?: (barotrope: Barotrope) => Readonly<Record<string, number>>;
+  readonly figures?: Figures;
 }
 
 /** A fit and what it is worth. */
@@ -93,7 +95,14 @@ export function fitPiecewisePolytrope(
     throw new FermistateError("out-of-range", { argument: "pieces", given: pieces, allowed: `1 to ${mostPieces}` });
   }
   const fitted = isBarotrope(source) ? ofBarotrope(source, options) : ofColumns(source, options);
-  if (pieces !== undefined) return fitted(pieces);
+  const { barotrope, report } = pieces === undefined ? fewest(fitted, tolerance) : fitted(pieces);
+  if (options.figures === undefined || !isBarotrope(source)) return Object.freeze({ barotrope, report });
+  const range = requireDensityRange(options.density);
+  return Object.freeze({ barotrope, report: withFigures(report, options.figures, source, barotrope, range) });
+}
+
+/** The fit of the fewest pieces that keeps the error. */
+function fewest(fitted: Fitted, tolerance: number | undefined): PiecewisePolytropeFit {
   const allowedError = requirePositive("tolerance", tolerance);
   let best = Number.POSITIVE_INFINITY;
   for (let count = 1; count <= mostPieces; count++) {
@@ -116,7 +125,7 @@ function isBarotrope(source: Barotrope | BarotropeColumns): source is Barotrope 
 
 type Fitted = (pieces: number) => PiecewisePolytropeFit;
 
-function ofBarotrope(source: Barotrope, { density, figures }: FitOptions): Fitted {
+function ofBarotrope(source: Barotrope, { density }: FitOptions): Fitted {
   const range = requireDensityRange(density);
   for (const end of range) requireDensity(source, end);
   const record = new Float64Array(BAROTROPE_LENGTH);
@@ -139,11 +148,11 @@ function ofBarotrope(source: Barotrope, { density, figures }: FitOptions): Fitte
   const energy = record[BAROTROPE_ENERGY]!;
   return (pieces) => {
     const line = fitBrokenLine(x, y, xFine, yFine, pieces, candidates);
-    const fit = polytropeOf(line, low, energy, high);
+    const fit = polytropeOf(line, low, energy, high, source.limits ?? []);
     const breaks = fit.pieces
       .slice(1)
       .map((piece, i) => ({ density: piece.density, gammaBelow: fit.pieces[i]!.gamma }));
-    return Object.freeze({ barotrope: fit, report: measureAgainst(source, fit, breaks, range, figures) });
+    return Object.freeze({ barotrope: fit, report: measureAgainst(source, fit, breaks, range) });
   };
 }
 
@@ -165,7 +174,7 @@ function ofColumns(source: BarotropeColumns, { density, figures }: FitOptions): 
     }
     const line = fitBrokenLine(x, y, x, y, pieces, candidates);
     const first = chosen[0]!;
-    const fit = polytropeOf(line, first.density, first.energy, chosen[chosen.length - 1]!.density);
+    const fit = polytropeOf(line, first.density, first.energy, chosen[chosen.length - 1]!.density, []);
     return Object.freeze({ barotrope: fit, report: measureAtRows(chosen, fit) });
   };
 }
@@ -176,11 +185,12 @@ function polytropeOf(
   low: number,
   energy: number | undefined,
   high: number,
+  limits: readonly BarotropeLimit[],
 ): PiecewisePolytrope {
   const gammas = x.slice(1).map((end, i) => (y[i + 1]! - y[i]!) / (end - x[i]!));
   const [first, pressure] = [gammas[0]!, Math.exp(y[0]!)];
   const energyAtZeroDensity = energy === undefined || !(first > 1) ? 0 : energy - pressure / low / (first - 1);
-  return piecewisePolytrope({
+  const fit = piecewisePolytrope({
     gammas,
     dividingDensities: x.slice(1, -1).map(Math.exp),
     referenceDensity: low,
@@ -188,9 +198,20 @@ function polytropeOf(
     energyAtZeroDensity,
     highestDensity: high,
     name: `fit of ${gammas.length} pieces`,
-    validity: `A fit over ${low} to ${high} g/cm^3; its report says how good. Below, its first piece goes on.`,
+    validity: `A fit over ${shortest(low)} to ${shortest(high)} g/cm^3; its report says how good. Below, its first piece goes on.`,
   });
+  const message = "Below this density nothing was fitted: the first piece of the fit goes on.";
+  const own: BarotropeLimit = Object.freeze({ code: "extrapolated", density: low, side: "below", message });
+  return Object.freeze({ ...fit, limits: Object.freeze([...limitsWithin(limits, high), own]) });
 }
+
+/** Limits that a fit up to a density takes over from its source. */
+function limitsWithin(limits: readonly BarotropeLimit[], highest: number): readonly BarotropeLimit[] {
+  return limits.filter(({ side, density }) => side === "above" && density < highest);
+}
+
+/** Six digits at most. */
+const shortest = (value: number): string => String(Number(value.toPrecision(6)));
 
 /** One row of the columns. */
 interface Row {

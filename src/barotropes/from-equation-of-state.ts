@@ -5,7 +5,8 @@
  *
  * Cold matter with a Coulomb lattice has P = 0 at a density above zero, its surface, which is found to the last digit.
  * An isotherm crosses from the liquid to the crystal where the equation of state says so; at the pressure of the liquid
- * there the crystal is denser by 1e-5 to 1e-3, a density jump. The rule that puts the boundary there is a convention
+ * there the crystal is denser by 1e-5 to 1e-3, a density jump; an adiabat goes through mixtures of both
+ * (freezing-adiabat.ts). The rule that puts the boundary there is a convention
  * (coulomb/phase.ts), so the two Gibbs energies differ a little; w of the crystal is shifted to be continuous.
  */
 import { highestCrystalDensity, meltingDensity } from "../coulomb/phase.js";
@@ -15,6 +16,8 @@ import { type Composition, requireComposition } from "../matter/composition.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { BAROTROPE_DENSITY, BAROTROPE_LENGTH, BAROTROPE_PRESSURE, type Barotrope } from "./barotrope.js";
 import { type Branch, branchOf, type Path } from "./branch.js";
+import { compositionLimits } from "./capture-limit.js";
+import { freezingBranches } from "./freezing-adiabat.js";
 import { requireDensityRange, requireKnown } from "./options.js";
 import { stacked } from "./stacked.js";
 
@@ -41,8 +44,9 @@ export type BarotropeOptions =
  * The barotrope of an equation of state along T = 0, an isotherm or an adiabat.
  *
  * P, e and w are those of the equation of state to rounding; inversion from P or w costs one or two evaluations and is
- * good to rounding over the exponent. Beyond its ends an inversion gives the end. An adiabat that meets the boundary
- * between liquid and crystal is refused: there matter is a mixture of both; force a phase with `withPhase`.
+ * good to rounding over the exponent. Beyond its ends an inversion gives the end. An adiabat of matter that freezes goes
+ * through mixtures of liquid and crystal at the melting temperature, by the lever rule as in `solve`: a phase of its own with a kink at
+ * both ends.
  *
  * @throws `invalid-option`, `invalid-composition`, `not-a-number`, `out-of-range`, `outside-domain`; `unstable` where matter
  *   stops resisting compression at positive pressure within the densities asked for
@@ -69,8 +73,9 @@ export function barotrope(
   requireReached(branches[0]!, options.density);
   return stacked(
     nameOf(equationOfState, composition, path),
-    "That of the equation of state it is made of: ask regime(...) at its densities.",
+    "That of the equation of state it is made of: regime(...) tells, state by state. The composition stays as given.",
     branches,
+    compositionLimits(composition, range[1]),
   );
 }
 
@@ -135,9 +140,13 @@ function branchesOf(
   const branch = (matter: EquationOfState, lowest: number, highest: number) =>
     branchOf(matter, composition, path, [lowest, highest]);
   const fixed = plasma === undefined || plasma.options.phase !== "equilibrium" || composition.meanCharge === 0;
-  if (path.kind === "adiabat" || fixed) {
+  if (fixed) {
     if (path.kind === "isotherm") equationOfState.state(high, path.temperature, composition); // refuses what it must
     return [branch(equationOfState, low, high)];
+  }
+  if (path.kind === "adiabat") {
+    const { meltingCoupling } = plasma.options;
+    return freezingBranches(equationOfState, composition, path.specificEntropy, [low, high], meltingCoupling);
   }
   const melting =
     path.temperature === 0 ? 0 : meltingDensity(path.temperature, composition, plasma.options.meltingCoupling);

@@ -13,13 +13,14 @@ export {
   BAROTROPE_POTENTIAL,
   BAROTROPE_PRESSURE,
   type Barotrope,
+  type BarotropeLimit,
   type BarotropeState,
   type DensityJump,
 } from "./barotrope.js";
 export { firstElectronCapture } from "./capture-limit.js";
 export { type BarotropeFinding, barotropeFindings } from "./findings.js";
 export { type BarotropeColumns, type FitOptions, fitPiecewisePolytrope, type PiecewisePolytropeFit } from "./fit.js";
-export type { FigureError, FitError, FitReport } from "./fit-report.js";
+export type { FigureError, Figures, FitError, FitReport } from "./fit-report.js";
 export { type BarotropeOptions, barotrope } from "./from-equation-of-state.js";
 export { type JoinOptions, joinBarotropes } from "./joined.js";
 export { type NucleonGas, neutronGas, neutronProtonElectronGas } from "./nucleon-gas.js";

@@ -9,6 +9,7 @@
  */
 import { speedOfLight } from "../constants.js";
 import { FermistateError } from "../errors.js";
+import { findRoot } from "../numerics/roots.js";
 import {
   BAROTROPE_DENSITY,
   BAROTROPE_ENERGY,
@@ -16,9 +17,9 @@ import {
   BAROTROPE_POTENTIAL,
   BAROTROPE_PRESSURE,
   type Barotrope,
+  type BarotropeLimit,
 } from "./barotrope.js";
 import { requireBarotrope, requireKnown, requirePositive } from "./options.js";
-import { bracketedRoot } from "./root.js";
 import { type Layer, stacked } from "./stacked.js";
 
 /** Options of {@link joinBarotropes}. */
@@ -80,7 +81,16 @@ export function joinBarotropes(outer: Barotrope, inner: Barotrope, options: Join
       part(outer, outer.density[0], end, pressure),
       { ...rescaled(inner, extra), ...startOf(inner, start, extra, ofOuter) },
     ],
+    limitsOf(outer, end, inner, start, 1 + extra),
   );
+}
+
+/** Limits that concern the part of each that is used. */
+function limitsOf(outer: Barotrope, end: number, inner: Barotrope, start: number, scale: number): BarotropeLimit[] {
+  const isInOuter = ({ side, density }: BarotropeLimit): boolean => side === "below" || density < end;
+  const isInInner = ({ side, density }: BarotropeLimit): boolean => side === "above" || density > start;
+  const ofInner = (inner.limits ?? []).map((limit) => Object.freeze({ ...limit, density: limit.density * scale }));
+  return [...(outer.limits ?? []).filter(isInOuter), ...ofInner.filter(isInInner)];
 }
 
 /** Pressures that both have. */
@@ -115,8 +125,7 @@ function crossing(outer: Barotrope, inner: Barotrope, low: number, high: number)
     const below = Math.max(bottom, above - step);
     const [ofBelow, ofAbove] = [difference(below), difference(above)];
     if (ofBelow * ofAbove <= 0) {
-      const sign = ofAbove >= ofBelow ? 1 : -1;
-      const log = bracketedRoot((x) => sign * difference(x), below, above);
+      const log = findRoot(difference, below, above, { values: [ofBelow, ofAbove] }).x;
       // A root on a jump of the outer matter is the jump's pressure to the last digit.
       const jump = jumpLogs.findIndex((one) => Math.abs(one - log) < 1e-9);
       return jump < 0 ? Math.exp(log) : outer.jumps[jump]!.pressure;
@@ -145,35 +154,38 @@ function part(matter: Barotrope, low: number, high: number, pressure: number): L
     pressure: [first[BAROTROPE_PRESSURE]!, pressure],
     potential: [first[BAROTROPE_POTENTIAL]!, last[BAROTROPE_POTENTIAL]!],
     jumps: matter.jumps.filter(({ densities: [, above] }) => above <= high),
+    kinks: (matter.kinks ?? []).filter((kink) => kink < last[BAROTROPE_POTENTIAL]!),
     fillAtDensity: matter.fillAtDensity,
     fillAtPressure: matter.fillAtPressure,
     fillAtPotential: matter.fillAtPotential,
   };
 }
 
-/** Where the inner layer begins and ends after its change of scale, and its jumps. */
+/** Where the inner layer begins and ends after its change of scale, its jumps and kinks. */
 function startOf(
   inner: Barotrope,
   start: number,
   extra: number,
   ofOuter: Float64Array,
-): Pick<Layer, "density" | "pressure" | "potential" | "jumps"> {
+): Pick<Layer, "density" | "pressure" | "potential" | "jumps" | "kinks"> {
   const record = new Float64Array(BAROTROPE_LENGTH);
   const scale = 1 + extra;
+  const rescaledPotential = (potential: number): number => (potential - extra * c2) / scale;
   record[BAROTROPE_DENSITY] = inner.density[1];
   inner.fillAtDensity(record);
   const jumps = inner.jumps
     .filter(({ pressure }) => pressure > ofOuter[BAROTROPE_PRESSURE]!)
     .map(({ pressure, potential, densities }) => ({
       pressure,
-      potential: (potential - extra * c2) / scale,
+      potential: rescaledPotential(potential),
       densities: [densities[0] * scale, densities[1] * scale] as const,
     }));
   return {
     density: [start, inner.density[1] * scale],
     pressure: [ofOuter[BAROTROPE_PRESSURE]!, record[BAROTROPE_PRESSURE]!],
-    potential: [ofOuter[BAROTROPE_POTENTIAL]!, (record[BAROTROPE_POTENTIAL]! - extra * c2) / scale],
+    potential: [ofOuter[BAROTROPE_POTENTIAL]!, rescaledPotential(record[BAROTROPE_POTENTIAL]!)],
     jumps,
+    kinks: (inner.kinks ?? []).map(rescaledPotential).filter((kink) => kink > ofOuter[BAROTROPE_POTENTIAL]!),
   };
 }
 

@@ -29,6 +29,12 @@ export type LogPressure = (record: Float64Array) => void;
 const c2 = speedOfLight * speedOfLight;
 /** Nodes per unit of xi. */
 const resolution = 500;
+/**
+ * Every so many nodes from this xi on a solver should end a step: the formulas have features a tenth of a decade wide there, which long
+ * steps do not notice (errors of stars of up to a thousand tolerances, below ten with these ends).
+ */
+const stops = 0.1 * resolution;
+const stopsFrom = 11;
 /** Gauss's rule on [0, 1]. */
 const abscissae = [0.5 - Math.sqrt(0.15), 0.5, 0.5 + Math.sqrt(0.15)] as const;
 const weights = [5 / 18, 8 / 18, 5 / 18] as const;
@@ -169,6 +175,7 @@ export function massEnergyFit(
     density: [densities[0]!, densities[last]!],
     pressure: [pressures[0]!, pressures[last]!],
     potential: [potentials[0]!, potentials[last]!],
+    kinks: Array.from(potentials).filter((_, i) => i > stopsFrom * resolution - lowest * resolution && i % stops === 0),
     fillAtDensity: (r) => invert(r, BAROTROPE_DENSITY, densities),
     fillAtPressure: (r) => invert(r, BAROTROPE_PRESSURE, pressures),
     fillAtPotential: (r) => invert(r, BAROTROPE_POTENTIAL, potentials),

@@ -23,6 +23,7 @@ import {
 } from "../constants.js";
 import { coldPressure } from "../fermi-gas/cold.js";
 import { KINETIC_MU, P00, RECORD_LENGTH } from "../fermi-gas/record.js";
+import { findRoot } from "../numerics/roots.js";
 import {
   BAROTROPE_DENSITY,
   BAROTROPE_ENERGY,
@@ -33,7 +34,6 @@ import {
   type Barotrope,
 } from "./barotrope.js";
 import { completeBarotrope, requireDensity } from "./from-record.js";
-import { bracketedRoot } from "./root.js";
 
 /** A barotrope that knows how many of its baryons are protons. */
 export interface NucleonGas extends Barotrope {
@@ -164,8 +164,8 @@ function gasOf(protons: boolean): NucleonGas {
     fillSums(sums, gas, protons);
     return Math.log(sums[BARYONS]! * atomicMassConstant);
   };
-  const first = bracketedRoot((log) => densityAt(log) - Math.log(lowest), Math.log(1e-40), Math.log(1e-3));
-  const last = bracketedRoot((log) => densityAt(log) - Math.log(highest), Math.log(1e-12), Math.log(1e8));
+  const first = findRoot((log) => densityAt(log) - Math.log(lowest), Math.log(1e-40), Math.log(1e-3)).x;
+  const last = findRoot((log) => densityAt(log) - Math.log(highest), Math.log(1e-12), Math.log(1e8)).x;
   const least = Math.exp(first);
   const logs = new Float64Array(count);
   const densities = new Float64Array(count);
@@ -221,10 +221,16 @@ function gasOf(protons: boolean): NucleonGas {
     record[slot] = given;
   }
 
+  sums[KINETIC] = decayEnergy * electron.energy;
+  fillSums(sums, gas, protons);
+  const neutronOnset = protons ? sums[BARYONS]! * atomicMassConstant : 0;
+  // Above it n_n ~ (mu - mu_onset)^(3/2): no solver should step over that.
+  const kinks = protons ? [excess + sums[KINETIC]! / atomicMassConstant] : [];
   const name = protons ? "ideal neutrons, protons and electrons" : "ideal neutrons";
   const identity = { name, density: Object.freeze([lowest, highest] as const), jumps: Object.freeze([]) };
   const parts = completeBarotrope({
     ...identity,
+    kinks: Object.freeze(kinks),
     validity:
       "Ideal cold particles without interactions or nuclei: a limit to compare with, no model of neutron stars.",
     fillAtDensity: (record) => invert(record, BAROTROPE_DENSITY),
@@ -236,9 +242,6 @@ function gasOf(protons: boolean): NucleonGas {
       record[BAROTROPE_POTENTIAL] = given;
     },
   });
-  sums[KINETIC] = decayEnergy * electron.energy;
-  fillSums(sums, gas, protons);
-  const neutronOnset = protons ? sums[BARYONS]! * atomicMassConstant : 0;
   return Object.freeze({
     ...parts,
     neutronOnset,

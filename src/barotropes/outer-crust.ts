@@ -11,6 +11,7 @@ import { coldCorrections } from "../coulomb/cold-corrections.js";
 import { requireFlags } from "../errors.js";
 import { electronPositronGas } from "../fermi-gas/electron-positron-gas.js";
 import { composition } from "../matter/composition.js";
+import { findRoot } from "../numerics/roots.js";
 import { combine } from "../thermodynamics/combine.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import {
@@ -30,7 +31,6 @@ import {
   pureMatterOf,
 } from "./crust-nuclei.js";
 import { barotrope } from "./from-equation-of-state.js";
-import { bracketedRoot } from "./root.js";
 import { type Layer, stacked } from "./stacked.js";
 
 /** Options of {@link outerCrust}. */
@@ -126,14 +126,14 @@ export function outerCrust(options: OuterCrustOptions = {}): OuterCrust {
       const ofPotential = pure(above, pressure).potential - pure(below, pressure).potential;
       return ofPotential + (above.massExcess - below.massExcess);
     };
-    const pressure = Math.exp(bracketedRoot(difference, Math.log(low), Math.log(high)));
+    const pressure = Math.exp(findRoot(difference, Math.log(low), Math.log(high)).x);
     const { nuclide } = best(pressure);
     if (nuclide === above || nuclide === below) return [{ pressure, above, below }];
     return [...transitions(low, above, pressure, nuclide), ...transitions(pressure, nuclide, high, below)];
   }
 
   const free = neutronMassExcess();
-  const drip = Math.exp(bracketedRoot((log) => best(Math.exp(log)).energy - free, Math.log(1e28), Math.log(deep)));
+  const drip = Math.exp(findRoot((log) => best(Math.exp(log)).energy - free, Math.log(1e28), Math.log(deep)).x);
   const found = transitions(shallow, best(shallow).nuclide, drip, best(drip).nuclide);
   return crustOf(equationOfState, pure, found, best(shallow).nuclide, drip);
 }

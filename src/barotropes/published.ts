@@ -5,6 +5,7 @@ import { nuclide } from "../matter/nuclides.js";
 import type { Barotrope } from "./barotrope.js";
 import { massEnergyFit } from "./mass-energy-fit.js";
 import { logPressureOf, publishedFits } from "./published-fits.js";
+import { publishedLimits } from "./published-limits.js";
 import { publishedCores, publishedPieces } from "./published-pieces.js";
 
 /** A published parameter set. */
@@ -57,7 +58,7 @@ function list(): readonly PublishedBarotrope[] {
  * "BSk21") give P as a function of the density of mass-energy; rho follows from the first law, with the mass of Fe56
  * per baryon at density 0, where a polytrope of the formula's own exponent replaces it below 1e6 g/cm^3. P and e fit
  * each other to 1e-13; what the numbers are worth is 1 % or so. Most are acausal above some density beyond that of the
- * heaviest star: `barotropeFindings` says where.
+ * heaviest star. `barotropeFindings` says where, and where that star is.
  *
  * @throws `invalid-option` for a name that is not in {@link publishedBarotropes}
  * @example
@@ -74,12 +75,16 @@ export function publishedBarotrope(name: string): Barotrope {
     throw new FermistateError("invalid-option", { argument: "name", given: name, allowed });
   }
   const validity =
-    `Neutron-star matter in beta equilibrium at T = 0, parameters from memory: ${found.source}. ` +
-    "A representation, good to about 1 %; below 1e6 g/cm^3 schematic.";
+    `Cold neutron-star matter in beta equilibrium; parameters from memory of ${found.source}. Good to about 1 % from ` +
+    "1e6 g/cm^3 to the centre of its heaviest star; a schematic envelope below, an extrapolation above.";
   if (Object.hasOwn(publishedFits, name)) {
     const fit = publishedFits[name as keyof typeof publishedFits];
     const iron = (nuclide("Fe56").atomicMass / 56 - 1) * speedOfLight * speedOfLight;
-    return massEnergyFit(name, validity, logPressureOf(fit), [6, 16], iron);
+    return withLimits(massEnergyFit(name, validity, logPressureOf(fit), [6, 16], iron));
   }
-  return publishedPieces(name, validity, found.parameters as readonly [number, number, number, number]);
+  return withLimits(publishedPieces(name, validity, found.parameters as readonly [number, number, number, number]));
+}
+
+function withLimits(matter: Barotrope): Barotrope {
+  return Object.freeze({ ...matter, limits: publishedLimits(matter.name) });
 }

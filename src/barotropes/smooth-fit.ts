@@ -20,7 +20,7 @@ import {
   BAROTROPE_PRESSURE,
   type Barotrope,
 } from "./barotrope.js";
-import { type FitReport, measureAgainst } from "./fit-report.js";
+import { type Figures, type FitReport, measureAgainst, withFigures } from "./fit-report.js";
 import { requireDensity } from "./from-record.js";
 import { ENERGY_SLOPE, INVERSION_SLOTS, inversionOf, SLOPE } from "./inversion.js";
 import { requireBarotrope, requireDensityRange, requireKnown, requirePositive } from "./options.js";
@@ -35,7 +35,7 @@ export interface SmoothFitOptions {
   /** Lowest and highest density of the fit, g/cm^3. */
   readonly density: readonly [lowest: number, highest: number];
   /** As in `fitPiecewisePolytrope`: numbers that a barotrope leads to, compared in the report. */
-  readonly figures?: (barotrope: Barotrope) => Readonly<Record<string, number>>;
+  readonly figures?: Figures;
 }
 
 /** A smooth barotrope: its coefficients are all there is to it. */
@@ -92,15 +92,17 @@ export function fitSmoothBarotrope(source: Barotrope, options: SmoothFitOptions)
   requireSmooth(source, range);
   const fitted = (count: number): SmoothFit => {
     const fit = smoothBarotrope(source, range, count);
-    return Object.freeze({ barotrope: fit, report: measureAgainst(source, fit, [], range, figures) });
+    return Object.freeze({ barotrope: fit, report: measureAgainst(source, fit, [], range) });
   };
-  if (terms !== undefined) return fitted(terms);
+  const complete = ({ barotrope: fit, report }: SmoothFit): SmoothFit =>
+    Object.freeze({ barotrope: fit, report: withFigures(report, figures, source, fit, range) });
+  if (terms !== undefined) return complete(fitted(terms));
   const allowedError = requirePositive("tolerance", tolerance);
   let best = Number.POSITIVE_INFINITY;
   for (let count = fewest; count <= most; count++) {
     if (!isStable(series(source, range, count).coefficients, range)) continue;
     const fit = fitted(count);
-    if (fit.report.pressure.max <= allowedError) return fit;
+    if (fit.report.pressure.max <= allowedError) return complete(fit);
     best = Math.min(best, fit.report.pressure.max);
   }
   const allowed = `>= ${best.toPrecision(3)}, the least error of up to ${most} terms`;
@@ -257,6 +259,7 @@ function smoothBarotrope(source: Barotrope, range: readonly [number, number], co
   };
   return Object.freeze({
     ...contributing(name, validity, range, pieces),
+    limits: Object.freeze((source.limits ?? []).filter(({ side, density }) => side === "above" && density < range[1])),
     coefficients: Object.freeze(Array.from(coefficients)),
     energyShift,
   });

@@ -4,6 +4,7 @@ import {
   BAROTROPE_POTENTIAL,
   BAROTROPE_PRESSURE,
   type Barotrope,
+  type BarotropeLimit,
   type DensityJump,
 } from "./barotrope.js";
 import { completeBarotrope } from "./from-record.js";
@@ -18,6 +19,8 @@ export interface Layer {
   readonly potential: readonly [number, number];
   /** Density jumps inside the layer. */
   readonly jumps?: readonly DensityJump[];
+  /** Potentials of the kinks inside the layer. */
+  readonly kinks?: readonly number[];
   /** Fills the record from its density. */
   fillAtDensity(record: Float64Array): void;
   /** Fills the record from its pressure. */
@@ -26,8 +29,16 @@ export interface Layer {
   fillAtPotential(record: Float64Array): void;
 }
 
-/** Layers by rising density; each begins at the pressure and potential at which the one before ends. */
-export function stacked(name: string, validity: string, layers: readonly Layer[]): Barotrope {
+/**
+ * Layers by rising density; each begins at the pressure and potential at which the one before ends. Where the density
+ * does not jump between two, there is a kink.
+ */
+export function stacked(
+  name: string,
+  validity: string,
+  layers: readonly Layer[],
+  limits: readonly BarotropeLimit[] = [],
+): Barotrope {
   const last = layers.length - 1;
   const starts = [
     Float64Array.from(layers, (one) => one.density[0]),
@@ -48,24 +59,24 @@ export function stacked(name: string, validity: string, layers: readonly Layer[]
   }
 
   const jumps: DensityJump[] = [];
+  const kinks: number[] = [];
   for (const [i, layer] of layers.entries()) {
-    const below = i === 0 ? layer : layers[i - 1]!;
-    if (layer.density[0] > below.density[1] && i > 0) {
-      jumps.push(
-        Object.freeze({
-          pressure: layer.pressure[0],
-          potential: layer.potential[0],
-          densities: Object.freeze([below.density[1], layer.density[0]] as const),
-        }),
-      );
+    if (i > 0) {
+      const [pressure, potential] = [layer.pressure[0], layer.potential[0]];
+      const densities = Object.freeze([layers[i - 1]!.density[1], layer.density[0]] as const);
+      if (densities[1] > densities[0]) jumps.push(Object.freeze({ pressure, potential, densities }));
+      else kinks.push(potential);
     }
     jumps.push(...(layer.jumps ?? []));
+    kinks.push(...(layer.kinks ?? []));
   }
   return completeBarotrope({
     name,
     validity,
     density: Object.freeze([layers[0]!.density[0], layers[last]!.density[1]] as const),
     jumps: Object.freeze(jumps),
+    kinks: Object.freeze(kinks),
+    limits: Object.freeze(limits),
     fillAtDensity: (record) => pick(starts[0], record[BAROTROPE_DENSITY]!).fillAtDensity(record),
     fillAtPressure: (record) => pick(starts[1], record[BAROTROPE_PRESSURE]!).fillAtPressure(record),
     fillAtPotential: (record) => pick(starts[2], record[BAROTROPE_POTENTIAL]!).fillAtPotential(record),

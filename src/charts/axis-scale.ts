@@ -42,12 +42,14 @@ export type PixelRange = readonly [low: number, high: number];
  *
  * @param margin - empty share of the axis beyond the values at each end
  * @param pitch - pixels from label to label, at least
+ * @param forced - the kind of scale where the caller knows better; logarithmic needs a positive value
  */
 export function axisScale(
   values: readonly number[],
   range: PixelRange,
   margin: number,
   pitch: { readonly logarithmic: number; readonly linear: number },
+  forced?: "logarithmic" | "linear",
 ): AxisScale {
   let low = Number.POSITIVE_INFINITY;
   let high = Number.NEGATIVE_INFINITY;
@@ -59,8 +61,9 @@ export function axisScale(
   }
   const room = Math.abs(range[1] - range[0]);
   const most = Math.max(2, Math.floor(room / pitch.logarithmic));
-  if (low >= 0 && high >= 9.999 * smallest) return logarithmic(smallest, high, range, margin, most);
-  if (low < 0 && spansDecades(values)) return symmetric(low, high, values, range, margin, most);
+  const isLogarithmic = forced === undefined ? low >= 0 && high >= 9.999 * smallest : forced === "logarithmic";
+  if (isLogarithmic) return logarithmic(smallest, high, range, margin, most);
+  if (forced === undefined && low < 0 && spansDecades(values)) return symmetric(low, high, values, range, margin, most);
   return linear(low, high, range, margin, Math.max(2, Math.floor(room / pitch.linear)));
 }
 

@@ -1,5 +1,5 @@
 /**
- * Charts of grids as SVG text. Runs in Node and browsers.
+ * Charts of grids, and maps over density and temperature, as SVG text. Runs in Node and browsers.
  *
  * @packageDocumentation
  */
@@ -9,3 +9,5 @@ export type { Axis } from "../grids/axes.js";
 export type { FindingCount, FindingsColumn } from "../grids/findings.js";
 export type { ColumnName, Grid, GridColumns } from "../grids/grid.js";
 export { type ChartOptions, chartGrid } from "./chart.js";
+export { chartMap, mapOfGrid } from "./map.js";
+export type { MapData, MapMark, MapOptions } from "./map-request.js";

@@ -57,6 +57,7 @@ export const demoCommand: Command = command({
         base: join(out, name),
         csv: true,
         json: true,
+        npz: false,
         parquet: false,
         charts,
         title,

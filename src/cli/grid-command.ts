@@ -17,7 +17,7 @@ import { axis, flag, number, oneOf, path, quantityList, wordList, words } from "
 
 export const gridCommand: Command = command({
   name: "grid",
-  summary: "many states over density and temperature: CSV, JSON, charts",
+  summary: "many states over density and temperature: files and charts",
   usage: "grid --density AXIS --temperature AXIS --composition LABEL=X,... [--out PATH]",
   options: {
     density: { value: "AXIS", help: "baryon mass densities, g/cm^3; how to write an axis stands below", read: axis },
@@ -42,11 +42,11 @@ export const gridCommand: Command = command({
       read: z.optional(path),
     },
     format: {
-      value: "csv|json|both|parquet",
+      value: "csv|json|both|npz|parquet",
       help:
-        "csv (with its description beside it), json (which describes itself), both, or parquet (needs the package " +
-        "hyparquet-writer); csv by default",
-      read: z._default(oneOf(["csv", "json", "both", "parquet"]), "csv"),
+        "csv (with its description beside it), json (which describes itself), both of them, npz (arrays for " +
+        "numpy.load, described by the text inside), or parquet (needs the package hyparquet-writer); csv by default",
+      read: z._default(oneOf(["csv", "json", "both", "npz", "parquet"]), "csv"),
     },
     chart: {
       value: "NAME,...",
@@ -84,13 +84,14 @@ export const gridCommand: Command = command({
   async run(options, io) {
     const { out, chart = [], format } = options;
     if (out === undefined && chart.length > 0) throw needsOut("--chart");
-    if (out === undefined && (format === "both" || format === "parquet")) throw needsOut(`--format ${format}`);
+    if (out === undefined && ["both", "npz", "parquet"].includes(format)) throw needsOut(`--format ${format}`);
     const { equationOfState, matter } = matterOf(options);
     const outputOptions = { overwrite: options.overwrite, createFolders: options["create-folders"] };
     const output: Output = {
-      base: (out ?? "").replace(/\.(csv|json|svg|parquet)$/i, ""),
+      base: (out ?? "").replace(/\.(csv|json|npz|parquet|svg)$/i, ""),
       csv: format === "csv" || format === "both",
       json: format === "json" || format === "both",
+      npz: format === "npz",
       parquet: format === "parquet",
       charts: chart,
       ...(options.title === undefined ? {} : { title: options.title }),

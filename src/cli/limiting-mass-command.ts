@@ -1,7 +1,8 @@
 /** `fermistate limiting-mass`: the limiting mass of a composition, one assumption after the other. */
 import * as z from "zod/mini";
 import { FermistateError } from "../errors.js";
-import { type LadderRung, limitingMassLadder } from "../structure/limiting-mass-ladder.js";
+import type { LadderRung } from "../structure/ladder-rung.js";
+import { limitingMassLadder } from "../structure/limiting-mass-ladder.js";
 import { libraryVersion } from "../version.js";
 import { type Command, command } from "./command.js";
 import { compositionOf, matterOptions } from "./matter.js";

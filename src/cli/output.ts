@@ -6,6 +6,7 @@ import { type TextFile, writeTexts } from "../files/write.js";
 import { csvMetadataName, gridToCsvMetadata, gridToCsvPieces } from "../grids/csv.js";
 import type { Grid } from "../grids/grid.js";
 import { gridToJsonPieces } from "../grids/json.js";
+import { gridToNpz } from "../grids/npz.js";
 import { gridToParquet } from "../table-files/parquet.js";
 import type { QuantityName } from "../thermodynamics/quantities.js";
 import { interruptible } from "./interrupt.js";
@@ -17,6 +18,7 @@ export interface Output {
   readonly base: string;
   readonly csv: boolean;
   readonly json: boolean;
+  readonly npz: boolean;
   readonly parquet: boolean;
   /** Quantities drawn, one chart each. */
   readonly charts: readonly QuantityName[];
@@ -36,6 +38,11 @@ interface Entry {
   readonly about: string;
 }
 
+/** A file with its content. */
+export interface WritableEntry extends Entry {
+  readonly text: TextFile["text"];
+}
+
 /** The files of an output; `about` needs the number of rows only. */
 function entriesOf(output: Output): Entry[] {
   const { base, charts } = output;
@@ -47,6 +54,7 @@ function entriesOf(output: Output): Entry[] {
         ]
       : []),
     ...(output.json ? [{ path: `${base}.json`, about: "columns and meanings in one" }] : []),
+    ...(output.npz ? [{ path: `${base}.npz`, about: "arrays for NumPy, with their meanings" }] : []),
     ...(output.parquet ? [{ path: `${base}.parquet`, about: "the columns, with units in the metadata" }] : []),
     ...charts.map((name) => ({ path: `${base}-${name}.svg`, about: `chart of ${name}` })),
   ];
@@ -64,9 +72,22 @@ export async function writeOutput(
   cwd: string,
   options: OutputOptions,
 ): Promise<string> {
-  const entries = made.flatMap(({ output }) => entriesOf(output));
   const texts = (await Promise.all(made.map(({ grid, output }) => textsOf(grid, output)))).flat();
-  const files: TextFile[] = entries.map(({ path }, i) => ({ path: resolve(cwd, path), text: texts[i]! }));
+  const entries = made.flatMap(({ output }) => entriesOf(output));
+  return writeEntries(
+    entries.map((entry, i) => ({ ...entry, text: texts[i]! })),
+    cwd,
+    options,
+  );
+}
+
+/** Writes files, all or none, and returns the printed list of them. */
+export async function writeEntries(
+  entries: readonly WritableEntry[],
+  cwd: string,
+  options: OutputOptions,
+): Promise<string> {
+  const files = entries.map(({ path, text }) => ({ path: resolve(cwd, path), text }));
   const written = await interruptible((signal) => writeTexts(files, { ...options, signal }));
   return table(
     entries.map(({ path, about }, i) => [path, bytesText(written[i]!.bytes), about]),
@@ -82,6 +103,7 @@ async function textsOf(grid: Grid, output: Output): Promise<TextFile["text"][]> 
   return [
     ...(output.csv ? [gridToCsvPieces(grid), gridToCsvMetadata(grid, csvName, texts)] : []),
     ...(output.json ? [gridToJsonPieces(grid, texts)] : []),
+    ...(output.npz ? [gridToNpz(grid, texts)] : []),
     ...(output.parquet ? [await gridToParquet(grid, texts)] : []),
     ...output.charts.map((quantity) => chartGrid(grid, { quantity, ...texts })),
   ];

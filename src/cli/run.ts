@@ -3,6 +3,7 @@ import { type ErrorCode, FermistateError, isFermistateError } from "../errors.js
 import { nearestWord } from "../grids/nearest.js";
 import { libraryVersion } from "../version.js";
 import type { Command, CommandIo } from "./command.js";
+import { compareCommand } from "./compare-command.js";
 import { demoCommand } from "./demo-command.js";
 import { gridCommand } from "./grid-command.js";
 import { commandHelp, programHelp, topics } from "./help.js";
@@ -15,6 +16,7 @@ export const commands: readonly Command[] = [
   stateCommand,
   gridCommand,
   regimeCommand,
+  compareCommand,
   limitingMassCommand,
   demoCommand,
 ];

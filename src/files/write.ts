@@ -1,5 +1,5 @@
 /**
- * Files written whole or not at all. Node only.
+ * Files written whole or not at all: texts, and bytes. Node only.
  *
  * Each text goes to a new file of a random name in the folder of its target, is flushed to the disk (fsync), and takes
  * the target's name by `rename`, which POSIX makes atomic: a reader sees the old file or the new one, never a part.
@@ -13,19 +13,16 @@ import { reasonOf, refused } from "./refusal.js";
 import { makeFolders, type Target, targetOf } from "./target.js";
 
 /**
- * A text: a string, or pieces of one, made as they are written (no piece may end inside a surrogate pair). Bytes, such as
- * those of an HDF5 file, are written as they are.
+ * A text: a string, or pieces of one, made as they are written (no piece may end inside a surrogate pair); or bytes, which
+ * are written as they are.
  */
-export type Text = Piece | Iterable<Piece> | AsyncIterable<Piece>;
-
-/** Characters or bytes. */
-export type Piece = string | Uint8Array;
+export type Text = string | Uint8Array | Iterable<string> | AsyncIterable<string>;
 
 /** One file to write. */
 export interface TextFile {
   /** Path of the file. A symbolic link is followed: the file it names is replaced, the link stays. */
   readonly path: string;
-  /** What to write, in UTF-8, or bytes. */
+  /** What to write; texts in UTF-8. */
   readonly text: Text;
 }
 
@@ -48,7 +45,7 @@ export interface WrittenFile {
 }
 
 /**
- * Writes one file whole or not at all.
+ * Writes one text file whole or not at all.
  *
  * @throws FermistateError `file-not-written` with the path and the system's reason: a missing folder (unless
  * `createFolders`), no permission, a full disk, a target that is a folder or a device, an existing file where
@@ -67,7 +64,7 @@ export async function writeText(path: string, text: Text, options: WriteOptions 
 }
 
 /**
- * Writes several files; none takes its name before all are complete on the disk.
+ * Writes several text files; none takes its name before all are complete on the disk.
  *
  * The names are then taken one after the other. Should the system refuse one of them in that last step, which all checks
  * before make unlikely, the error says which files are already new.
@@ -124,13 +121,14 @@ async function writePieces(
   signal: WriteOptions["signal"],
 ): Promise<number> {
   let bytes = 0;
-  for await (const piece of isPiece(text) ? [text] : text) {
+  const isWhole = typeof text === "string" || text instanceof Uint8Array;
+  for await (const piece of isWhole ? [text] : text) {
     if (signal?.aborted) throw refused(path, "writing was interrupted");
-    if (!isPiece(piece)) {
+    if (typeof piece !== "string" && !(isWhole && piece instanceof Uint8Array)) {
       throw new FermistateError("invalid-option", {
         argument: "text",
         given: piece,
-        allowed: "pieces that are strings or bytes (Uint8Array)",
+        allowed: "pieces that are strings",
       });
     }
     const data = typeof piece === "string" ? Buffer.from(piece, "utf8") : piece;
@@ -139,10 +137,6 @@ async function writePieces(
   }
   if (signal?.aborted) throw refused(path, "writing was interrupted");
   return bytes;
-}
-
-function isPiece(value: unknown): value is Piece {
-  return typeof value === "string" || value instanceof Uint8Array;
 }
 
 /** Gives every complete file its name. */
@@ -216,7 +210,7 @@ function checkFiles(files: readonly TextFile[]): void {
     if (typeof path !== "string" || path === "" || path.includes("\0")) fail("path", path, "the path of a file");
     const iterable =
       typeof text === "object" && text !== null && (Symbol.iterator in text || Symbol.asyncIterator in text);
-    if (!isPiece(text) && !iterable) fail("text", text, "a string, bytes (Uint8Array) or pieces of them");
+    if (typeof text !== "string" && !iterable) fail("text", text, "a string, pieces of one, or bytes");
   }
 }
 

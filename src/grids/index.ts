@@ -1,5 +1,5 @@
 /**
- * Grids: an equation of state over densities and temperatures, as columns, CSV or JSON. Runs in Node and browsers.
+ * Grids: an equation of state over densities and temperatures, as columns, CSV, JSON or NumPy arrays. Runs in Node and browsers.
  *
  * @packageDocumentation
  */
@@ -17,4 +17,6 @@ export type { GridTexts } from "./description.js";
 export type { FindingCount, FindingsColumn } from "./findings.js";
 export { type ColumnName, type Grid, type GridColumns, grid } from "./grid.js";
 export { gridToJson, gridToJsonPieces } from "./json.js";
+export { arrayFromNpy, arrayToNpy, type NumberArray } from "./npy.js";
+export { arraysFromNpz, arraysToNpz, gridToNpz } from "./npz.js";
 export type { GridOptions } from "./request.js";

@@ -10,12 +10,10 @@ import type { Evaluator } from "../thermodynamics/evaluator.js";
 import { fillFunction } from "./functions.js";
 import { searchOne } from "./search.js";
 import {
-  BEYOND_LOWER,
   BEYOND_UPPER,
   BY_U,
   BY_V,
   DENSITY_NOW,
-  ENTROPY_KIND,
   FIRST_TARGET,
   FOUND,
   FUNCTION_LENGTH,
@@ -74,9 +72,8 @@ export function nestedSearch(
       }
     } else if (inner === LOST) break;
     else {
-      // Too cold a target for this density: thinner matter has less of it, but more entropy. Too hot: thinner too.
-      heavier = inner === BEYOND_LOWER && second === ENTROPY_KIND;
-      if (inner === BEYOND_UPPER) heavier = false;
+      // No temperature of the domain gives the target at this density: to where its bound comes nearer to it.
+      heavier = (inner === BEYOND_UPPER) === f[BY_U]! > 0;
       step = heavier ? 0.7 : -0.7;
       w[TEMPERATURE_NOW] = Math.sqrt(w[LOWEST_TEMPERATURE]! * w[HIGHEST_TEMPERATURE]!);
     }

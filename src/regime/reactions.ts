@@ -11,7 +11,7 @@ import type { Composition } from "../matter/composition.js";
 import { type Finding, judge } from "./finding.js";
 
 /** Density of neutron drip in cold catalysed matter, g/cm^3. */
-const dripDensity = 4.3e11;
+export const dripDensity = 4.3e11;
 /** Fuels below this share of the nucleons raise no finding. */
 const leastFuel = 1e-3;
 

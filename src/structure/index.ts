@@ -4,19 +4,14 @@
  *
  * @packageDocumentation
  */
-export type { Barotrope, BarotropeState, DensityJump } from "../barotropes/barotrope.js";
+export type { Barotrope, BarotropeLimit, BarotropeState, DensityJump } from "../barotropes/barotrope.js";
 export { FermistateError, isFermistateError } from "../errors.js";
 export type { StarFinding, StarFindingCode } from "./findings.js";
-export type { Relativity } from "./hydrostatic.js";
+export type { Relativity } from "./hydrostatic-equations.js";
+export type { LadderEnd, LadderRung, LadderRungCode } from "./ladder-rung.js";
 export * from "./lane-emden.js";
 export { chandrasekharMass, type MassUnit, type MassUnitOptions, uniformSphereMass } from "./limiting-mass.js";
-export {
-  type LadderEnd,
-  type LadderOptions,
-  type LadderRung,
-  type LadderRungCode,
-  limitingMassLadder,
-} from "./limiting-mass-ladder.js";
+export { type LadderOptions, limitingMassLadder } from "./limiting-mass-ladder.js";
 export {
   type MassLimitReason,
   type MaximumMass,
@@ -30,7 +25,15 @@ export {
   type MassRadiusSequence,
   massRadiusSequence,
   type SequenceOptions,
-  type StarOfMassOptions,
-  starOfMass,
+  type SequenceWith,
 } from "./sequence.js";
-export { hydrostaticStar, type SingleStarOptions, type Star, type StarOptions } from "./star.js";
+export {
+  hydrostaticStar,
+  type Known,
+  type SingleStarOptions,
+  type Star,
+  type StarOptions,
+  type StarWith,
+} from "./star.js";
+export { type StarFigures, type StarFiguresOptions, starFigures } from "./star-figures.js";
+export { type StarOfMassOptions, starOfMass } from "./star-of-mass.js";

@@ -16,7 +16,6 @@ import type { Barotrope } from "../barotropes/barotrope.js";
 import { firstElectronCapture } from "../barotropes/capture-limit.js";
 import { barotrope } from "../barotropes/from-equation-of-state.js";
 import { degenerateElectrons, polytrope } from "../barotropes/polytrope.js";
-import { solarMass } from "../constants.js";
 import { coldCorrections } from "../coulomb/cold-corrections.js";
 import { coulombPlasma } from "../coulomb/coulomb-plasma.js";
 import { highestCrystalDensity } from "../coulomb/phase.js";
@@ -27,59 +26,9 @@ import type { CaptureThreshold } from "../regime/capture.js";
 import { combine } from "../thermodynamics/combine.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { whiteDwarfMatter } from "../white-dwarf-matter.js";
-import type { Relativity } from "./hydrostatic.js";
+import { heaviest, limitOf } from "./ladder-limits.js";
+import { type LadderRung, rung, short, shortest } from "./ladder-rung.js";
 import { chandrasekharMass, uniformSphereMass } from "./limiting-mass.js";
-import { maximumMass } from "./maximum-mass.js";
-import { hydrostaticStar } from "./star.js";
-
-/** The rungs by rising number of assumptions, in the order of {@link limitingMassLadder}. */
-export type LadderRungCode =
-  | "uniform-sphere"
-  | "index-3-polytrope"
-  | "ideal-electrons"
-  | "lattice"
-  | "exchange-and-screening"
-  | "general-relativity"
-  | "moving-nuclei"
-  | "electron-capture"
-  | "isothermal-core";
-
-/**
- * Why there is no heavier star.
- *
- * - `energy`: above it, gravity wins at every radius
- * - `scale-free`: stars of every central density have this mass
- * - `infinite-density`: the limit of the mass as the central density grows without end
- * - `relativity`: the mass turns at a finite central density, by general relativity
- * - `electron-capture`: the mass still rises where nuclei begin to capture electrons
- */
-export type LadderEnd = "energy" | "scale-free" | "infinite-density" | "relativity" | "electron-capture";
-
-/** The limiting mass under the assumptions of one rung and those below it; frozen. */
-export interface LadderRung {
-  /** Stable name for programs. */
-  readonly code: LadderRungCode;
-  /** Plain name. */
-  readonly name: string;
-  /** What it assumes, in a line. */
-  readonly assumes: string;
-  /** g; gravitational mass where relativity is in. */
-  readonly mass: number;
-  /** The same in solar masses. */
-  readonly solarMasses: number;
-  /** Radius of the heaviest star, cm; undefined where there is none of finite density. */
-  readonly radius: number | undefined;
-  /** Its central density, g/cm^3; undefined where there is none of finite density. */
-  readonly centralDensity: number | undefined;
-  /** Why there is no heavier star. */
-  readonly end: LadderEnd;
-  /** The same in a sentence. */
-  readonly message: string;
-  /** The theory of gravity. */
-  readonly relativity: Relativity;
-  /** The matter, for `massRadiusSequence` and the like; undefined for the uniform sphere. */
-  readonly matter: Barotrope | undefined;
-}
 
 /** Options of {@link limitingMassLadder}. */
 export interface LadderOptions {
@@ -90,13 +39,10 @@ export interface LadderOptions {
   readonly temperature?: number | false;
 }
 
-/** Central densities among which relativity turns the mass; it does at 1e10 to 3e10 g/cm^3. */
-const range = [1e9, 2e11] as const;
 /** Colder: as cold. Hotter: an isothermal star has hardly an end, and carbon has long burnt. */
 const temperatures = [1e6, 5e8] as const;
 /** Nuclei whose crystal melts by its own vibration below this density, g/cm^3, are no crystal in the stars looked at. */
 const densest = 3e10;
-const tolerance = 1e-10;
 
 /**
  * The limiting mass of a composition under one assumption after the other: nine rungs, from a uniform sphere to a warm star
@@ -104,15 +50,15 @@ const tolerance = 1e-10;
  *
  * Limits at infinite density are those of P/rho^(4/3) at 1e18 g/cm^3, good to 1e-7; masses of stars to 1e-8 for the
  * matter as it is modelled. Not in it: rotation, magnetic fields, nuclear burning (a carbon core ignites before it
- * collapses). The first capture counts, of however rare a nuclide: leave traces out. Helium and hydrogen are no crystals at
- * these densities: their rung of moving nuclei is formal, and says so. The isothermal core is matter of one
+ * collapses). The first capture counts, of however rare a nuclide: leave traces out. Helium is no crystal at
+ * these densities: its rung of moving nuclei is formal, and says so. The isothermal core is matter of one
  * temperature out to where radiation alone would carry it: its mass is good,
  * its radius an upper bound for a star whose envelope is cooler.
  *
  * @throws `invalid-composition`, `invalid-option`, `not-a-number`; `out-of-range` for a temperature outside 1e6 to 5e8 K
  * or matter without nuclei; `outside-domain` for nuclei that capture electrons at any density, or below every star here;
- * `unstable` and `outside-domain` where cold matter (hydrogen) or the warm matter (mixtures of very unlike nuclei) has no
- * answer
+ * `unstable` and `outside-domain` where cold matter (hydrogen) or the warm matter (mixtures of very unlike nuclei; light
+ * nuclei at 5e8 K, whose star is mostly envelope) has no answer
  * @example
  * ```ts
  * import { composition } from "fermistate";
@@ -131,7 +77,7 @@ export function limitingMassLadder(composition: Composition, options: LadderOpti
   const { ultraRelativistic } = degenerateElectrons(composition);
   const limit = limitOf(ultraRelativistic.constant, chandrasekharMass(massPerElectron));
   const melts = highestCrystalDensity(composition) < densest;
-  const [lattice, still, moving] = coldMatter().map((matter) => barotrope(matter, composition, { temperature: 0 }));
+  const [lattice, still, moving] = coldBarotropes(composition);
 
   const rungs = [
     rung({
@@ -222,7 +168,11 @@ function warmRung(
     });
   } catch (error) {
     if (!(error instanceof FermistateError)) throw error;
-    const allowed = `one at which the warm star exists (${error.message}); or false, without this rung`;
+    const why =
+      error.code === "unstable"
+        ? "where they freeze, nuclei so unlike have a crystal thinner than the liquid in this model, which no star can have"
+        : "so warm, the star is mostly envelope";
+    const allowed = `one at which the warm star exists (${why}: ${error.message}); or false, without this rung`;
     throw new FermistateError(error.code, { argument: "temperature", given: temperature, allowed });
   }
 }
@@ -230,66 +180,18 @@ function warmRung(
 /** Wider isothermal stars are mostly envelope: their mass says nothing on the core. */
 const mostSwollen = 3;
 
-/** A rung before its derived members. */
-type Draft = Omit<LadderRung, "solarMasses" | "radius" | "centralDensity" | "matter"> &
-  Partial<Pick<LadderRung, "radius" | "centralDensity" | "matter">>;
-
-function rung(draft: Draft): LadderRung {
-  const { code, name, assumes, mass, radius, centralDensity, end, message, relativity, matter } = draft;
-  const solarMasses = mass / solarMass;
-  return Object.freeze({
-    code,
-    name,
-    assumes,
-    mass,
-    solarMasses,
-    radius,
-    centralDensity,
-    end,
-    message,
-    relativity,
-    matter,
-  });
-}
-
-type Outcome = Omit<Draft, "code" | "name" | "assumes">;
-
-/** The limit of Newtonian masses of matter that tends to a polytrope of index 3. */
-function limitOf(idealConstant: number, idealMass: number): (matter: Barotrope) => Outcome {
-  return (matter) => {
-    const { pressure, density } = matter.state(matter.density[1]);
-    const ratio = pressure / (idealConstant * density * Math.cbrt(density));
-    return {
-      mass: idealMass * ratio * Math.sqrt(ratio),
-      end: "infinite-density",
-      message: "The mass rises towards this limit as the central density grows without end; no star has it.",
-      relativity: "newton",
-      matter,
-    };
-  };
-}
-
-/** The heaviest star in general relativity, up to a capture. */
-function heaviest(matter: Barotrope, capture: CaptureThreshold | undefined): Outcome {
-  const threshold = capture?.densityWithLattice ?? Number.POSITIVE_INFINITY;
-  const most = maximumMass(matter, { range: [range[0], Math.min(range[1], matter.density[1])], tolerance });
-  const turns = most.turningPoints.find(({ kind }) => kind === "maximum");
-  if (turns !== undefined && turns.centralDensity <= threshold) {
-    const { mass, radius, centralDensity } = turns;
-    const message =
-      capture === undefined
-        ? "The mass turns at this central density: denser stars collapse by general relativity."
-        : `The mass turns before ${capture.species} captures electrons (at ${short(threshold)} g/cm^3): relativity decides.`;
-    return { mass, radius, centralDensity, end: "relativity", message, relativity: "general", matter };
+/** The cold barotropes; where the crystal does not carry, the refusal says so. */
+function coldBarotropes(composition: Composition): readonly Barotrope[] {
+  try {
+    return coldMatter().map((matter) => barotrope(matter, composition, { temperature: 0 }));
+  } catch (error) {
+    if (!(error instanceof FermistateError) || error.code !== "unstable") throw error;
+    const allowed =
+      "matter whose nuclei make a cold crystal: at the densities of these stars zero-point motion keeps hydrogen, and matter " +
+      "with much of it, from being one, and the terms of a crystal leave it no pressure (hydrogen also captures electrons " +
+      "from 1.2e7 g/cm^3 on). Without lattice: chandrasekharMass(mu_e), or maximumMass of ideal electrons";
+    throw new FermistateError("unstable", { argument: "composition", given: composition.name, allowed });
   }
-  if (turns === undefined || capture === undefined) {
-    const allowed = `matter whose mass turns between ${shortest(range[0])} and ${shortest(range[1])} g/cm^3`;
-    throw new FermistateError("outside-domain", { argument: "composition", given: matter.name, allowed });
-  }
-  const { mass, radius, centralDensity } = hydrostaticStar(matter, { centralDensity: threshold, tolerance });
-  const turn = short(turns.centralDensity);
-  const message = `${capture.species} captures electrons at this central density, before relativity turns the mass (at ${turn} g/cm^3).`;
-  return { mass, radius, centralDensity, end: "electron-capture", message, relativity: "general", matter };
 }
 
 /** Cold matter: the lattice at rest, with exchange and screening, with the motion of the nuclei too. */
@@ -340,7 +242,3 @@ function captureOf(composition: Composition): CaptureThreshold | undefined {
 
 /** Stars of lower central density are no limit that a white dwarf would know. */
 const lowestCapture = 1e7;
-
-/** 1e8 for 100000000. */
-const shortest = (value: number): string => value.toExponential().replace("+", "");
-const short = (value: number): string => value.toPrecision(4).replace("+", "");

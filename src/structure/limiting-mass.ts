@@ -6,6 +6,7 @@
  *
  *     M = ((3 pi)^(1/2)/2) omega_3 (hbar c/G)^(3/2)/(mu_e m)^2,    omega_3 = -xi_1^2 theta'(xi_1) at n = 3.
  */
+import { requireKnown } from "../barotropes/options.js";
 import {
   atomicMassConstant,
   gravitationalConstant,
@@ -36,7 +37,9 @@ export const OMEGA_3 = 2.0182359509662284;
 const HYDROGEN_IN_U = 1.007825031898;
 
 /** The unit in g. */
-export function massOfUnit(massUnit: MassUnit = "atomic-mass-constant"): number {
+export function massOfUnit(options: MassUnitOptions): number {
+  requireKnown("options", options, ["massUnit"]);
+  const { massUnit = "atomic-mass-constant" } = options;
   if (massUnit === "atomic-mass-constant") return atomicMassConstant;
   if (massUnit === "hydrogen-atom") return HYDROGEN_IN_U * atomicMassConstant;
   if (massUnit === "proton") return protonMass;
@@ -53,10 +56,10 @@ export function requirePositive(argument: string, value: unknown, unit: string):
 }
 
 /** (hbar c/G)^(3/2)/(mu_e m)^2, g. */
-function massScale(massPerElectron: number, massUnit: MassUnit | undefined): number {
+function massScale(massPerElectron: number, options: MassUnitOptions): number {
   requirePositive("massPerElectron", massPerElectron, "mu_e");
   const planck = (reducedPlanckConstant * speedOfLight) / gravitationalConstant;
-  return (planck * Math.sqrt(planck)) / (massPerElectron * massOfUnit(massUnit)) ** 2;
+  return (planck * Math.sqrt(planck)) / (massPerElectron * massOfUnit(options)) ** 2;
 }
 
 /**
@@ -74,7 +77,7 @@ function massScale(massPerElectron: number, massUnit: MassUnit | undefined): num
  * @throws `not-a-number`, `out-of-range`, `invalid-option`
  */
 export function chandrasekharMass(massPerElectron: number, options: MassUnitOptions = {}): number {
-  return 0.5 * Math.sqrt(3 * Math.PI) * OMEGA_3 * massScale(massPerElectron, options.massUnit);
+  return 0.5 * Math.sqrt(3 * Math.PI) * OMEGA_3 * massScale(massPerElectron, options);
 }
 
 /**
@@ -85,5 +88,5 @@ export function chandrasekharMass(massPerElectron: number, options: MassUnitOpti
  * @throws `not-a-number`, `out-of-range`, `invalid-option`
  */
 export function uniformSphereMass(massPerElectron: number, options: MassUnitOptions = {}): number {
-  return (1.25 * Math.cbrt((9 * Math.PI) / 4)) ** 1.5 * massScale(massPerElectron, options.massUnit);
+  return (1.25 * Math.cbrt((9 * Math.PI) / 4)) ** 1.5 * massScale(massPerElectron, options);
 }

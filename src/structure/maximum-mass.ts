@@ -6,8 +6,8 @@
  * The maximum is found as a root of the exact slope dM/drho_c, not by comparing masses, so its density is as good as its mass.
  */
 import type { Barotrope } from "../barotropes/barotrope.js";
-import { densityGrid } from "./density-grid.js";
-import { requireTolerance, type Star, type StarOptions, starMaker } from "./star.js";
+import { scanSequence } from "./sequence-scan.js";
+import { requireStarOptions, requireTolerance, type Star, type StarOptions, starMaker } from "./star.js";
 import { turningDensity } from "./turning-density.js";
 
 /**
@@ -75,23 +75,23 @@ export interface MaximumMassOptions extends StarOptions {
  * @throws as `hydrostaticStar`
  */
 export function maximumMass(barotrope: Barotrope, options: MaximumMassOptions = {}): MaximumMass {
+  requireStarOptions(options, ["range"]);
   const tolerance = requireTolerance(options.tolerance);
   const make = starMaker(barotrope, options);
   const bare = { ...options, rotation: false, tides: false };
   const accurate = starMaker(barotrope, bare);
   const rough = starMaker(barotrope, { ...bare, tolerance: Math.max(tolerance, 1e-8) });
   const turning: { readonly kind: "maximum" | "minimum"; readonly star: Star; readonly atJump: boolean }[] = [];
-  let before: Star | undefined;
-  for (const { density, isAcross } of densityGrid(barotrope, options.range)) {
-    const star = rough(density);
-    if (before !== undefined && before.massSlope * star.massSlope < 0) {
-      const kind = before.massSlope > 0 ? "maximum" : "minimum";
-      const at = isAcross ? before.centralDensity : turningDensity(accurate, before, star);
+  let last = Number.NaN;
+  for (const { low, high, isAcross } of scanSequence(barotrope, rough, options.range)) {
+    if (low.massSlope * high.massSlope < 0) {
+      const kind = low.massSlope > 0 ? "maximum" : "minimum";
+      const at = isAcross ? low.centralDensity : turningDensity(accurate, low, high);
       turning.push({ kind, star: make(at), atJump: isAcross });
     }
-    before = star;
+    last = high.centralDensity;
   }
-  const end = make(before!.centralDensity);
+  const end = make(last);
   const maxima = turning.filter(({ kind }) => kind === "maximum");
   const highest = maxima.reduce<(typeof maxima)[number] | undefined>(
     (best, one) => (best === undefined || one.star.mass > best.star.mass ? one : best),
@@ -129,8 +129,13 @@ function reasonOf(barotrope: Barotrope, star: Star, options: MaximumMassOptions)
   const highest = barotrope.density[1];
   if (star.relativity === "newton" || centralDensity >= highest) return "softening";
   const inNewton = starMaker(barotrope, { ...options, relativity: "newton", rotation: false, tides: false });
-  const above = densityGrid(barotrope, [centralDensity, Math.min(10 * centralDensity, highest)]);
-  return above.some(({ density }) => inNewton(density).massSlope < 0) ? "softening" : "relativity";
+  for (const { low, high } of scanSequence(barotrope, inNewton, [
+    centralDensity,
+    Math.min(10 * centralDensity, highest),
+  ])) {
+    if (low.massSlope < 0 || high.massSlope < 0) return "softening";
+  }
+  return "relativity";
 }
 
 function messageOf(reason: MassLimitReason, barotrope: Barotrope): string {

@@ -10,7 +10,7 @@ import {
 import { speedOfLight } from "../constants.js";
 import { FermistateError, requireFinite } from "../errors.js";
 import type { DenseSolution } from "../numerics/dense-solution.js";
-import { BINDING, U, V } from "./hydrostatic.js";
+import { BINDING, U, V } from "./hydrostatic-equations.js";
 
 /** A star at one radius. */
 export interface StarPoint {

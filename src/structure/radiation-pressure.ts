@@ -15,6 +15,7 @@
  *
  * Newton's theory, ideal gas. Sources from memory; every constant is derived in the tests.
  */
+import { requireKnown } from "../barotropes/options.js";
 import { boltzmannConstant, gravitationalConstant, radiationConstant } from "../constants.js";
 import { chandrasekharMass, type MassUnitOptions, massOfUnit, OMEGA_3, requirePositive } from "./limiting-mass.js";
 
@@ -75,8 +76,7 @@ function quarticTerm(mass: number, meanMolecularWeight: number, options: MassUni
   requirePositive("mass", mass, "g");
   requirePositive("meanMolecularWeight", meanMolecularWeight, "mu");
   // In this order no factor leaves the range of doubles.
-  const square =
-    gravitationalConstant * mass * ((meanMolecularWeight * massOfUnit(options.massUnit)) / boltzmannConstant) ** 2;
+  const square = gravitationalConstant * mass * ((meanMolecularWeight * massOfUnit(options)) / boltzmannConstant) ** 2;
   return Math.PI * gravitationalConstant * radiationConstant * square * square;
 }
 
@@ -185,14 +185,15 @@ export interface HydrostaticViolation {
  * const model = { mass: 2e33, radius: 1e9, centralDensity: 1e7, centralPressure: 1e22 };
  * hydrostaticViolations(model)[0]?.code; // => "central-pressure-too-low"
  * ```
- * @throws `not-a-number`, `out-of-range`
+ * @throws `not-a-number`, `out-of-range`, `invalid-option`
  */
 export function hydrostaticViolations(
   model: HydrostaticModel,
   options: MassUnitOptions & { readonly tolerance?: number } = {},
 ): readonly HydrostaticViolation[] {
   const { mass, radius, centralDensity, centralPressure, centralRadiationShare, meanMolecularWeight } = model;
-  const { tolerance = 1e-9 } = options;
+  requireKnown("options", options, ["massUnit", "tolerance"]);
+  const { tolerance = 1e-9, ...unit } = options;
   const { lowest, highest } = centralPressureBounds(mass, radius, centralDensity);
   requirePositive("centralPressure", centralPressure, "dyn/cm^2");
   const found: HydrostaticViolation[] = [];
@@ -204,7 +205,7 @@ export function hydrostaticViolations(
   hold("central-pressure-too-low", centralPressure, lowest, true);
   hold("central-pressure-too-high", centralPressure, highest, false);
   if (centralRadiationShare !== undefined && meanMolecularWeight !== undefined) {
-    const { radiation } = centralRadiationBound(mass, meanMolecularWeight, options);
+    const { radiation } = centralRadiationBound(mass, meanMolecularWeight, unit);
     hold("radiation-too-high", requirePositive("centralRadiationShare", centralRadiationShare, ""), radiation, false);
   }
   return Object.freeze(found);

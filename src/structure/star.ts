@@ -3,7 +3,7 @@
  *
  * Conventions: Newton's source of gravity is the baryon mass density rho; Einstein's is the mass-energy density
  * rho + rho e/c^2, so the gravitational mass holds the energy e as the barotrope defines it. The surface is where P = 0, or
- * where the barotrope begins. The equations and their sources stand in hydrostatic.ts.
+ * where the barotrope begins. The equations and their sources stand in hydrostatic-equations.ts.
  */
 import {
   BAROTROPE_DENSITY,
@@ -11,12 +11,16 @@ import {
   BAROTROPE_POTENTIAL,
   BAROTROPE_PRESSURE,
   type Barotrope,
+  type BarotropeLimit,
 } from "../barotropes/barotrope.js";
+import { requireKnown } from "../barotropes/options.js";
 import { gravitationalConstant, speedOfLight } from "../constants.js";
 import { FermistateError, requireFinite } from "../errors.js";
 import { denseSolution } from "../numerics/dense-solution.js";
+import type { OdeStep } from "../numerics/ode.js";
 import { type StarFinding, starFindings } from "./findings.js";
-import { BINDING, type HydrostaticSolver, hydrostaticSolver, type Relativity, U, V } from "./hydrostatic.js";
+import { type HydrostaticSolver, hydrostaticSolver } from "./hydrostatic.js";
+import { BINDING, type Relativity, U, V } from "./hydrostatic-equations.js";
 import { type StarProfile, starProfile } from "./profile.js";
 import { loveNumber } from "./tides.js";
 
@@ -101,6 +105,17 @@ export interface Star {
   readonly profile: StarProfile | undefined;
 }
 
+/** A star whose optional members are there where the options ask for them by the word `true`. */
+export type StarWith<Options> = Star &
+  (Options extends { readonly profile: true } ? { readonly profile: StarProfile } : unknown) &
+  (Options extends { readonly rotation: true } ? { readonly momentOfInertia: number } : unknown) &
+  (Options extends { readonly tides: true }
+    ? { readonly loveNumber: number; readonly tidalDeformability: number }
+    : unknown);
+
+/** Options without unknown names: a slip of the pen does not compile. */
+export type Known<Options, All> = Options & { readonly [Name in Exclude<keyof Options, keyof All>]: never };
+
 const DEFAULT_TOLERANCE = 1e-11;
 
 /**
@@ -120,18 +135,31 @@ const DEFAULT_TOLERANCE = 1e-11;
  * density (too low, too high, inside a density jump); `unstable` for matter whose pressure does not rise with density;
  * `integration-failed`
  */
-export function hydrostaticStar(barotrope: Barotrope, options: SingleStarOptions): Star {
-  return starMaker(barotrope, options)(options.centralDensity, options.profile === true);
+export function hydrostaticStar<const Options extends SingleStarOptions>(
+  barotrope: Barotrope,
+  options: Known<Options, SingleStarOptions>,
+): StarWith<Options> {
+  requireStarOptions(options, ["centralDensity", "profile"]);
+  return starMaker(barotrope, options)(options.centralDensity, options.profile === true) as StarWith<Options>;
 }
 
-/** An equation of state in place of a barotrope, or no options, is a likely mistake. */
-function requireBarotrope(barotrope: unknown, options: unknown): void {
-  if (typeof (barotrope as Barotrope | undefined)?.fillAtPotential !== "function") {
-    const allowed = "a barotrope: barotrope(equationOfState, composition, { temperature: 0 }) makes one";
-    throw new FermistateError("invalid-option", { argument: "barotrope", given: barotrope, allowed });
+/** An equation of state in place of a barotrope is a likely mistake. */
+function requireBarotrope(barotrope: unknown): void {
+  if (typeof (barotrope as Barotrope | undefined)?.fillAtPotential === "function") return;
+  const allowed = "a barotrope: barotrope(equationOfState, composition, { temperature: 0 }) makes one";
+  throw new FermistateError("invalid-option", { argument: "barotrope", given: barotrope, allowed });
+}
+
+const ownOptions = ["relativity", "tolerance", "rotation", "tides"];
+
+/** Throws `invalid-option` unless the options are those of every star and the ones named here. */
+export function requireStarOptions(options: unknown, others: readonly string[]): void {
+  requireKnown("options", options, [...others, ...ownOptions]);
+  for (const name of ["rotation", "tides", "profile"]) {
+    const given = (options as Readonly<Record<string, unknown>>)[name];
+    if (given === undefined || typeof given === "boolean") continue;
+    throw new FermistateError("invalid-option", { argument: name, given, allowed: "true or false" });
   }
-  if (typeof options === "object" && options !== null) return;
-  throw new FermistateError("invalid-option", { argument: "options", given: options, allowed: "an object" });
 }
 
 /** A function that makes stars of one barotrope by central density, with one working space. */
@@ -139,7 +167,7 @@ export function starMaker(
   barotrope: Barotrope,
   options: StarOptions,
 ): (centralDensity: number, keepsProfile?: boolean) => Star {
-  requireBarotrope(barotrope, options);
+  requireBarotrope(barotrope);
   const { relativity = "general", rotation = false, tides = false } = options;
   if (relativity !== "newton" && relativity !== "general") {
     throw new FermistateError("invalid-option", {
@@ -158,7 +186,7 @@ export function starMaker(
     barotrope.fillAtDensity(centre);
     centre[BAROTROPE_DENSITY] = centralDensity; // a barotrope may return it rounded
     const solution = keepsProfile ? denseSolution(solver.result.surface.length - 1) : undefined;
-    solver.solve(solution?.add);
+    integrate(solver, tolerance, solution?.add);
     const isGeneral = relativity === "general";
     const profile =
       solution &&
@@ -170,12 +198,43 @@ export function starMaker(
         surfacePotential: solver.surfaceMatter[BAROTROPE_POTENTIAL]!,
         isGeneral,
       });
-    return starOf(solver, relativity, profile);
+    return starOf(solver, { relativity, tolerance, limits: barotrope.limits ?? [] }, profile);
   };
 }
 
+/** Integrates; where the rounding of the potential makes that impossible, the refusal says which tolerance is left. */
+function integrate(solver: HydrostaticSolver, tolerance: number, onStep: ((step: OdeStep) => void) | undefined): void {
+  try {
+    solver.solve(onStep);
+  } catch (error) {
+    const rounding = roundingOf(solver);
+    if (!(error instanceof FermistateError) || error.code !== "integration-failed" || rounding < tolerance) throw error;
+    const allowed =
+      `${(4 * rounding).toExponential(1)} to 1e-3 at this central density: the zero of energy of this matter is so far ` +
+      "off that the potential at the centre has no more digits";
+    throw new FermistateError("out-of-range", { argument: "tolerance", given: tolerance, allowed });
+  }
+}
+
+/** Rounding of the potential over its rise from surface to centre. */
+function roundingOf({ result, surfaceMatter }: HydrostaticSolver): number {
+  const top = result.centre[BAROTROPE_POTENTIAL]!;
+  return (Number.EPSILON * Math.abs(top)) / (top - surfaceMatter[BAROTROPE_POTENTIAL]!);
+}
+
+/** What else is known of a star. */
+interface StarContext {
+  readonly relativity: Relativity;
+  readonly tolerance: number;
+  readonly limits: readonly BarotropeLimit[];
+}
+
 /** The star just integrated. */
-function starOf(solver: HydrostaticSolver, relativity: Relativity, profile: StarProfile | undefined): Star {
+function starOf(
+  solver: HydrostaticSolver,
+  { relativity, tolerance, limits }: StarContext,
+  profile: StarProfile | undefined,
+): Star {
   const { result, surfaceMatter } = solver;
   const { centre, surface } = result;
   const isGeneral = relativity === "general";
@@ -212,9 +271,14 @@ function starOf(solver: HydrostaticSolver, relativity: Relativity, profile: Star
     tidalDeformability: love === undefined ? undefined : (2 / 3) * love * compactness ** -5,
     findings: starFindings({
       fastest: result.fastest,
+      softest: result.softest,
       massSlope: result.massSlope,
       neglected: isGeneral ? 0 : centre[BAROTROPE_PRESSURE]! / (centre[BAROTROPE_DENSITY]! * c2),
       missing: surfacePressure > 0 ? surfacePressure / (surfaceMatter[BAROTROPE_DENSITY]! * compactness * c2) : 0,
+      rounding: roundingOf(solver),
+      tolerance,
+      centralDensity: centre[BAROTROPE_DENSITY]!,
+      limits,
     }),
     profile,
   });

@@ -53,7 +53,7 @@ export interface FolderResult {
  * Makes the strips of a table, or of a share of it, as files of a folder; those that are there already are kept.
  *
  * @param folder - made if missing; must be empty or hold strips of the same request
- * @throws (rejects with) the errors of `tablePlan`, `file-not-written`; `invalid-option` where the folder belongs to another
+ * @throws (rejects with) the errors of `buildTable`, `file-not-written`; `invalid-option` where the folder belongs to another
  * table; `worker-failed`
  */
 export async function buildInFolder(

@@ -3,6 +3,11 @@
  *
  * @packageDocumentation
  */
+export { FermistateError, isFermistateError } from "../errors.js";
+export type { MeanNucleus, NucleonFractions } from "../matter/composition.js";
+export type { MatterModule, MatterSource, WhiteDwarfMatterSource } from "../parallel/matter-source.js";
+export type { TableOptions } from "../tables/plan.js";
+export type { FreeEnergyTable } from "../tables/table.js";
 export {
   assembleFolders,
   buildInFolder,

@@ -85,8 +85,8 @@ export function checkTable(table: unknown, code: ErrorCode): FreeEnergyTable {
     if (!(highest > lowest)) fail(`table.${name}.highest`, highest, `above the lowest, ${lowest}`);
   }
   const phases = sheets.map((sheet) => sheet.phase).join(" and ");
-  if (phases !== "single" && phases !== "liquid and crystal") {
-    fail("table.sheets", phases, "one sheet, single, or two, liquid and crystal");
+  if (sheets.length === 2 && phases !== "liquid and crystal") {
+    fail("table.sheets", phases, "one sheet, or two: liquid and crystal");
   }
   if ((freezing === undefined) !== (sheets.length === 1)) {
     fail("table.freezing", freezing, "a freezing line where there are two sheets, none where there is one");

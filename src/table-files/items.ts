@@ -143,14 +143,15 @@ export function tableOfItems(read: ReadItem): FreeEnergyTable {
   };
   const phases = read("sheets/phase", "text", [undefined]) as readonly SheetPhase[];
   const sheets = phases.map((phase) => readSheet(read, phase, [density.blocks, temperature.blocks]));
-  const freezing = phases.includes("crystal")
-    ? {
-        freezing: {
-          factor: read("sheets/freezing/factor", "float64", [])[0]!,
-          highestDensity: read("sheets/freezing/highest_density", "float64", [])[0]!,
-        },
-      }
-    : {};
+  const freezing =
+    phases.length === 2
+      ? {
+          freezing: {
+            factor: read("sheets/freezing/factor", "float64", [])[0]!,
+            highestDensity: read("sheets/freezing/highest_density", "float64", [])[0]!,
+          },
+        }
+      : {};
   const source = {
     tabulated: read("source/tabulated", "text", [undefined]),
     beside: read("source/beside", "text", [undefined]),

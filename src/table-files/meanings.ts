@@ -78,8 +78,11 @@ const meanings: Readonly<Record<string, Meaning>> = {
   "certificate/quantity": { description: `quantities whose error is stated. ${relative}` },
   "certificate/errors/bound": { units: "1", description: "twice the largest error measured, by quantity" },
   "certificate/errors/largest": { units: "1", description: "largest error measured, by quantity" },
-  "certificate/errors/percentile99": { units: "1", description: "99 of 100 places are below, by quantity" },
-  "certificate/errors/median": { units: "1", description: "half of the places are below, by quantity" },
+  "certificate/errors/percentile99": {
+    units: "1",
+    description: "on 99 % of the area in u and v the error is below, by quantity",
+  },
+  "certificate/errors/median": { units: "1", description: "on half of the area the error is below, by quantity" },
   "certificate/errors/worst": {
     units: "g/cm^3, K",
     description: "density and temperature of the largest error, by quantity",

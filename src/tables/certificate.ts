@@ -13,10 +13,12 @@ import { fillWhole } from "./strip.js";
 import { fillSurface, type Surface, surfaceOf } from "./surface.js";
 import type { CertifiedError, CertifiedQuantity, TableCertificate, TableSheet } from "./table.js";
 
-/** Errors found in a part of a table, by quantity: mergeable. */
-export interface Measured {
+/** Errors found in a table, by quantity. */
+interface Measured {
   /** All errors of each quantity. */
   readonly errors: readonly number[][];
+  /** What each place stands for: the area of its cell in ln rho and ln T, in blocks. */
+  readonly weights: number[];
   /** Largest error of each quantity and its place. */
   readonly worst: { error: number; density: number; temperature: number }[];
 }
@@ -35,14 +37,14 @@ export function certificateOf(
   blocksAboveTarget: number,
 ): TableCertificate {
   const errors: number[][] = certifiedQuantities.map(() => []);
+  const weights: number[] = [];
   const worst = certifiedQuantities.map(() => ({ error: 0, density: 0, temperature: 0 }));
   sheets.forEach((sheet, s) => {
     const surface = surfaceOf(sheet, plan.density, plan.temperature);
-    measureSheet(plan, plan.sheets[s]!, sheet, surface, { errors, worst });
+    measureSheet(plan, plan.sheets[s]!, sheet, surface, { errors, weights, worst });
   });
   const states = certifiedQuantities.map((name, k): readonly [CertifiedQuantity, CertifiedError] => {
-    const sorted = Float64Array.from(errors[k]!).sort();
-    const at = (share: number): number => sorted[Math.min(sorted.length - 1, Math.floor(share * sorted.length))] ?? 0;
+    const at = percentiles(errors[k]!, weights);
     const { error, density, temperature } = worst[k]!;
     return [
       name,
@@ -60,6 +62,20 @@ export function certificateOf(
     target: plan.accuracy,
     blocksAboveTarget,
     errors: Object.fromEntries(states) as Record<CertifiedQuantity, CertifiedError>,
+  };
+}
+
+/** The error that a share of the area does not exceed. */
+function percentiles(errors: readonly number[], weights: readonly number[]): (share: number) => number {
+  const order = Uint32Array.from(errors.keys()).sort((a, b) => errors[a]! - errors[b]!);
+  const all = weights.reduce((sum, weight) => sum + weight, 0);
+  return (share) => {
+    let sum = 0;
+    for (const i of order) {
+      sum += weights[i]!;
+      if (sum >= share * all) return errors[i]!;
+    }
+    return 0;
   };
 }
 
@@ -93,6 +109,7 @@ function measureSheet(plan: TablePlan, source: SheetPlan, sheet: TableSheet, sur
       members.fill(0);
       addTableMembers(plan.lookUp, surface, 2, members);
       fillErrors(members, source.sampler.members, whole, errors);
+      into.weights.push(1 / (rows * cells * perCell));
       for (let k = 0; k < errors.length; k++) {
         into.errors[k]!.push(errors[k]!);
         if (errors[k]! > into.worst[k]!.error) into.worst[k] = { error: errors[k]!, density, temperature };

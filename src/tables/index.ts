@@ -4,9 +4,11 @@
  * @packageDocumentation
  */
 export { FermistateError, isFermistateError } from "../errors.js";
-export { assembleTable, buildTable } from "./build.js";
-export { type TableOptions, type TablePlan, tablePlan } from "./plan.js";
-export { buildStrip, type SheetStrip, type Strip } from "./strip.js";
+export type { Composition, Species } from "../matter/composition.js";
+export type { Contribution, Domain } from "../thermodynamics/contribution.js";
+export type { EquationOfState } from "../thermodynamics/equation-of-state.js";
+export { buildTable } from "./build.js";
+export type { TableOptions } from "./plan.js";
 export {
   type CertifiedError,
   type CertifiedQuantity,

@@ -21,7 +21,8 @@ export interface TableLookUp {
   readonly liquid: Surface;
   readonly nearestCrystal: Int32Array;
   readonly nearestLiquid: Int32Array;
-  readonly freezes: boolean;
+  /** Whether a point is told its phase. */
+  readonly tellsPhase: boolean;
   /** Ends of density; 1/T_m^3 times density; highest density of a crystal: in a record, so that none is boxed. */
   readonly limits: Float64Array;
   /** Slot 0: density of the table over density of the matter, for the last composition. */
@@ -52,16 +53,16 @@ export function tableLookUp(table: FreeEnergyTable, phase: SheetPhase | "equilib
     liquid,
     nearestCrystal: nearestBlocks(crystal),
     nearestLiquid: nearestBlocks(liquid),
-    freezes: table.freezing !== undefined,
+    tellsPhase: phase !== "single",
     limits: Float64Array.of(table.density.lowest, table.density.highest, 1 / factor, highestDensity),
     share: Float64Array.of(1),
     last: undefined,
   };
 }
 
-/** Whether the ions are a crystal, and tells the point so where the matter freezes. */
+/** Whether the ions are a crystal, and tells the point so where the table knows their phase. */
 export function tellPhase(look: TableLookUp, point: Float64Array): boolean {
-  if (!look.freezes) return false;
+  if (!look.tellsPhase) return false;
   const density = point[DENSITY]!;
   const ratio = point[TEMPERATURE]! * look.limits[2]!;
   const isCrystal =

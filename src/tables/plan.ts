@@ -90,25 +90,26 @@ export function tablePlan(eos: EquationOfState, composition: Composition, option
   const density = axis(checked.density, blockDecades[0]);
   const temperature = axis(checked.temperature, blockDecades[1]);
   const rungs = { ends: ladder(temperature) };
-  const freezing = freezingLine(tabulated, composition, density);
+  const line = freezingLine(tabulated, composition, density);
+  const phases = phasesOf(line, density, temperature);
+  const freezing = phases.length === 2 ? line : undefined;
   const side = (phase: "liquid" | "crystal"): readonly Contribution[] =>
     tabulated.map((part) => part.phases?.[phase] ?? part);
   const coldest = temperature.lowest;
   const zero = (parts: readonly Contribution[]): boolean => parts.every((part) => part.domain.zeroTemperature);
-  const coldParts = freezing === undefined ? tabulated : side("crystal");
-  const isFrozen = freezing !== undefined && zero(coldParts);
+  const partsOf = (phase: SheetPhase): readonly Contribution[] => (phase === "single" ? tabulated : side(phase));
+  const coldParts = partsOf(phases.at(-1)!);
+  const isFrozen = phases.at(-1) === "crystal" && zero(coldParts);
   const cold = coldCurve(coldParts, composition, density, isFrozen ? 0 : coldest);
-  const plan = (phase: SheetPhase, parts: readonly Contribution[]): SheetPlan => ({
-    phase,
-    parts,
-    sampler: samplerOf(parts, composition),
-    isNear: nearness(phase, freezing),
-    blocksAt: blocksOf(phase, density, rungs, freezing),
-  });
-  const sheets =
-    freezing === undefined
-      ? [plan("single", tabulated)]
-      : [plan("liquid", side("liquid")), plan("crystal", side("crystal"))];
+  const sheets = phases.map(
+    (phase): SheetPlan => ({
+      phase,
+      parts: partsOf(phase),
+      sampler: samplerOf(partsOf(phase), composition),
+      isNear: nearness(phase, freezing),
+      blocksAt: blocksOf(phase, density, rungs, freezing),
+    }),
+  );
   return {
     composition,
     density,
@@ -136,6 +137,17 @@ export function ladder({ lowest, highest, blocks }: TableAxis): readonly number[
   return Array.from({ length: blocks + 1 }, (_, i) => (i === blocks ? high : low + ((high - low) * i) / blocks));
 }
 
+/** The phases that matter has in a region: one sheet each. */
+function phasesOf(line: FreezingLine | undefined, density: TableAxis, temperature: TableAxis): readonly SheetPhase[] {
+  if (line === undefined) return ["single"];
+  const densest = Math.min(density.highest, line.highestDensity);
+  const isLiquid =
+    density.highest > line.highestDensity || temperature.highest > line.factor * Math.cbrt(density.lowest);
+  const isCrystal = temperature.lowest < line.factor * Math.cbrt(densest);
+  if (isLiquid && isCrystal) return ["liquid", "crystal"];
+  return [isCrystal ? "crystal" : "liquid"];
+}
+
 /** The line of the contribution that freezes, where some matter of the region does. */
 function freezingLine(
   parts: readonly Contribution[],
@@ -152,7 +164,7 @@ function freezingLine(
   };
   meltingAt(density.lowest);
   const highest = boundary[4]!;
-  if (!(highest > density.lowest)) return undefined;
+  if (!(highest > density.lowest)) return { factor: 0, highestDensity: highest };
   const factor = meltingAt(density.lowest) / Math.cbrt(density.lowest);
   const other = Math.min(highest, density.highest);
   const isLine = Math.abs(meltingAt(other * (1 - 1e-12)) / (factor * Math.cbrt(other)) - 1) < 1e-9;

@@ -98,8 +98,7 @@ function columns(plan: TablePlan, sheet: SheetPlan, index: number, bottom: numbe
   const made = new Map<number, Column>();
   const lowest = Math.exp(plan.rungs.ends[bottom]!);
   function start(u: number): readonly [number, number, number] {
-    const isBottom = bottom === 0 && (sheet.phase !== "liquid" || plan.sheets.length === 1);
-    if (isBottom) {
+    if (bottom === 0 && sheet === plan.sheets.at(-1)) {
       return plan.cold.temperature === 0 ? heatFromZero(sheet.sampler, u, lowest) : heatAt(sheet.sampler, u, lowest);
     }
     plan.lookUp.at[0] = u;

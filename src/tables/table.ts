@@ -83,9 +83,9 @@ export interface CertifiedError {
   readonly bound: number;
   /** Largest error measured, relative as {@link TableCertificate} says. */
   readonly largest: number;
-  /** 99 of 100 places are below. */
+  /** On 99 % of the area in ln rho and ln T the error is below. */
   readonly percentile99: number;
-  /** Half of the places are below. */
+  /** On half of the area the error is below. */
   readonly median: number;
   /** Where the largest one was found: density, g/cm^3, and temperature, K. */
   readonly worst: readonly [density: number, temperature: number];
@@ -125,7 +125,7 @@ export interface FreeEnergyTable {
   readonly temperature: TableAxis;
   /** F_0. */
   readonly cold: ColdCurve;
-  /** One sheet ("single"), or "liquid" and "crystal". */
+  /** One sheet of the matter or of the one phase it has in the region, or "liquid" and "crystal". */
   readonly sheets: readonly TableSheet[];
   /** Where there are two sheets, the line between them. */
   readonly freezing?: FreezingLine;

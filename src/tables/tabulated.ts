@@ -1,6 +1,7 @@
 /** A table as a contribution, and as an equation of state with what stands beside it. */
 import { boltzmannConstant } from "../constants.js";
 import { FermistateError } from "../errors.js";
+import { idealIons } from "../ions/ideal-ions.js";
 import type { Composition } from "../matter/composition.js";
 import { ELECTRON_CHEMICAL_POTENTIAL, ELECTRON_DEGENERACY, TEMPERATURE } from "../matter/point.js";
 import { radiation } from "../radiation.js";
@@ -41,7 +42,7 @@ export function tabulated(table: FreeEnergyTable): Contribution {
 }
 
 /** What stands beside a table, by the name that its source tells. */
-const companions: Readonly<Record<string, () => Contribution>> = { radiation };
+const companions: Readonly<Record<string, () => Contribution>> = { radiation, "ideal ions": idealIons };
 
 /**
  * A table as an equation of state: the same interface as the physics it was made from, at the composition of the table.

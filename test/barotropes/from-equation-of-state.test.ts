@@ -12,7 +12,7 @@ import {
 import { type BarotropeOptions, barotrope } from "../../src/barotropes/from-equation-of-state.js";
 import { coldCorrections } from "../../src/coulomb/cold-corrections.js";
 import { meltingDensity } from "../../src/coulomb/phase.js";
-import { withPhase } from "../../src/coulomb/transition.js";
+import { transition, withPhase } from "../../src/coulomb/transition.js";
 import { isFermistateError } from "../../src/errors.js";
 import { electronPositronGas } from "../../src/fermi-gas/electron-positron-gas.js";
 import { idealIons } from "../../src/ions/ideal-ions.js";
@@ -146,6 +146,7 @@ describe("paths", () => {
     expect(above / below - 1).toBeGreaterThan(2e-5);
     expect(above / below - 1).toBeLessThan(1e-4);
     const [liquid, crystal] = [matter.state(below), matter.state(above)];
+    expect(Math.abs(jump!.potential / liquid.potential - 1)).toBeLessThan(1e-14);
     expect(Math.abs(liquid.pressure / crystal.pressure - 1)).toBeLessThan(1e-14);
     expect(Math.abs(liquid.potential / crystal.potential - 1)).toBeLessThan(1e-14);
     expect(crystal.pressure).toBeCloseTo(withPhase(full, "crystal").state(above, 1e7, core).pressure, 10);
@@ -207,9 +208,19 @@ test.each<[string, () => Barotrope, string]>([
   ],
   ["cool matter too thin to resist compression", () => barotrope(full, core, { temperature: 1e4 }), "unstable density"],
   [
-    "an adiabat through the boundary",
-    () => barotrope(full, core, { specificEntropy: 3e7, density: [1e3, 1e9] }),
-    "outside-domain density",
+    "an adiabat of cold helium to where zero-point motion melts it",
+    () => barotrope(full, composition({ He4: 1 }), { specificEntropy: 1e7, density: [1e3, 1e9] }),
+    "outside-domain density[1]",
+  ],
+  [
+    "an adiabat where the crystal has the larger entropy (thin iron, beyond linear response)",
+    () => {
+      const iron = composition({ Fe56: 1 });
+      const { liquid, crystal } = transition(full, 1e4, iron)!;
+      const specificEntropy = 0.5 * (liquid.specificEntropy + crystal.specificEntropy);
+      return barotrope(full, iron, { specificEntropy, density: [9e3, 1.1e4] });
+    },
+    "unstable density",
   ],
   [
     "radiation alone",

@@ -9,11 +9,11 @@ import {
 } from "../../src/barotropes/barotrope.js";
 import { barotrope } from "../../src/barotropes/from-equation-of-state.js";
 import { neutronGas, neutronProtonElectronGas } from "../../src/barotropes/nucleon-gas.js";
-import { bracketedRoot } from "../../src/barotropes/root.js";
 import { atomicMassConstant, neutronMass, speedOfLight } from "../../src/constants.js";
 import { isFermistateError } from "../../src/errors.js";
 import { fermionGas } from "../../src/fermi-gas/fermion-gas.js";
 import { composition } from "../../src/matter/composition.js";
+import { findRoot } from "../../src/numerics/roots.js";
 import { combine } from "../../src/thermodynamics/combine.js";
 import { Measured } from "../measured.js";
 
@@ -26,11 +26,7 @@ const gas = neutronProtonElectronGas();
 test("pressure and proton fraction at given mass-energy, to the seven digits printed", () => {
   const measured = new Measured();
   for (const [massEnergy, quantity, expected] of fixture.rows) {
-    const rho = bracketedRoot(
-      (x) => x * (1 + gas.state(x).specificEnergy / c2) - massEnergy,
-      massEnergy / 10,
-      massEnergy,
-    );
+    const rho = findRoot((x) => x * (1 + gas.state(x).specificEnergy / c2) - massEnergy, massEnergy / 10, massEnergy).x;
     const found = quantity === "P" ? gas.state(rho).pressure : gas.protonFraction(rho);
     measured.compare(quantity, found, expected, `${massEnergy}`);
   }

@@ -1,13 +1,18 @@
 /** Published barotropes: the recomputed pressures, the join of crust and core, first law, causality. */
 import { describe, expect, test } from "vitest";
 import { barotropeFindings } from "../../src/barotropes/findings.js";
+import { fitPiecewisePolytrope } from "../../src/barotropes/fit.js";
+import { barotrope } from "../../src/barotropes/from-equation-of-state.js";
 import { joinBarotropes } from "../../src/barotropes/joined.js";
+import { outerCrust } from "../../src/barotropes/outer-crust.js";
 import type { PiecewisePolytrope } from "../../src/barotropes/piecewise-polytrope.js";
 import { publishedBarotrope, publishedBarotropes } from "../../src/barotropes/published.js";
-import { bracketedRoot } from "../../src/barotropes/root.js";
 import { fitSmoothBarotrope } from "../../src/barotropes/smooth-fit.js";
 import { speedOfLight } from "../../src/constants.js";
 import { isFermistateError } from "../../src/errors.js";
+import { composition } from "../../src/matter/composition.js";
+import { findRoot } from "../../src/numerics/roots.js";
+import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
 import { Measured } from "../measured.js";
 
 const c2 = speedOfLight ** 2;
@@ -27,7 +32,7 @@ test("the formulas: pressure at given mass-energy, to the six decimals printed",
     const matter = publishedBarotrope(name);
     for (const [i, xi] of [6, 8, 10, 11, 11.5, 12].entries()) {
       const excess = (rho: number): number => rho * (1 + matter.state(rho).specificEnergy / c2) - 10 ** xi;
-      const rho = bracketedRoot(excess, 0.9 * 10 ** xi, 1.1 * 10 ** xi);
+      const rho = findRoot(excess, 0.9 * 10 ** xi, 1.1 * 10 ** xi).x;
       measured.add("log10 P", Math.abs(Math.log10(matter.state(rho).pressure) - row[i]!), `${name} at ${xi}`);
     }
   }
@@ -100,16 +105,43 @@ describe("findings", () => {
     for (const { name } of publishedBarotropes) {
       const matter = publishedBarotrope(name);
       const found = barotropeFindings(matter);
-      expect(found.filter(({ code }) => code !== "acausal")).toEqual([]);
-      for (const { density, value } of found) {
+      const seen = found.filter(({ code }) => code === "acausal");
+      expect(found.filter(({ code }) => code !== "acausal").map(({ code }) => code)).toEqual(
+        Array(2).fill("extrapolated"),
+      );
+      for (const { density, value } of seen) {
         expect(value).toBeGreaterThan(1);
         expect(matter.state(density * (1 - 1e-9)).soundSpeed).toBeLessThanOrEqual(speedOfLight);
         expect(matter.state(density * (1 + 1e-6)).soundSpeed).toBeGreaterThan(speedOfLight);
       }
     }
     // A polytrope with gamma <= 2 never is: c_s^2/c^2 rises to gamma - 1.
-    expect(barotropeFindings(publishedBarotrope("APR4 piecewise")).map(({ code }) => code)).toEqual(["acausal"]);
-    expect(barotropeFindings(publishedBarotrope("MS1 piecewise"))).toEqual([]);
+    const codes = (name: string) => barotropeFindings(publishedBarotrope(name)).map(({ code }) => code);
+    expect(codes("APR4 piecewise")[0]).toBe("acausal");
+    expect(codes("MS1 piecewise")).not.toContain("acausal");
+  });
+
+  test("limits: stated once each, kept by a join where they apply, and by fits", () => {
+    const low = publishedBarotrope("SLy");
+    expect(barotropeFindings(low).filter(({ code }) => code === "extrapolated")).toMatchObject([
+      { density: 1e6, value: 0 },
+      { density: 2.008e15, value: low.density[1] },
+    ]);
+    // The crust reaches below what the core's own envelope was schematic for.
+    const joined = joinBarotropes(outerCrust(), low);
+    const [limit] = joined.limits!;
+    expect(joined.limits).toHaveLength(1);
+    expect(limit).toMatchObject({ code: "extrapolated", side: "above" });
+    expect(Math.abs(limit!.density / 2.008e15 - 1)).toBeLessThan(2e-3); // the join rescales rho
+    const core = barotrope(whiteDwarfMatter(), composition({ Fe56: 1 }), { temperature: 0, density: [1e4, 1e12] });
+    expect(barotropeFindings(core).map(({ code }) => code)).toEqual(["electron-capture", "neutron-drip"]);
+    const { barotrope: fit } = fitPiecewisePolytrope(core, { pieces: 3, density: [1e5, 1e11] });
+    expect(barotropeFindings(fit).map(({ code, density }) => [code, density])).toEqual([
+      ["electron-capture", core.limits![0]!.density],
+      ["extrapolated", 1e5],
+    ]);
+    const { barotrope: smooth } = fitSmoothBarotrope(core, { terms: 10, density: [1e5, 1e9] });
+    expect(barotropeFindings(smooth)).toEqual([]);
   });
 
   test("a pressure that falls, and a potential that belongs to another one", () => {

@@ -8,6 +8,7 @@ import { describe, expect, test } from "vitest";
 import { axisScale, isDrawable } from "../../src/charts/axis-scale.js";
 import { linearTickTexts, unitText, valueText } from "../../src/charts/labels.js";
 import { palette } from "../../src/charts/palette.js";
+import { readXml } from "./xml.js";
 
 const core = composition({ C12: 0.5, O16: 0.5 });
 const four = grid(whiteDwarfMatter({ coulomb: false }), core, {
@@ -20,27 +21,6 @@ const many = grid(whiteDwarfMatter({ coulomb: false }), core, {
   quantities: ["pressure", "positronDensity"],
 });
 const cold = grid(combine(electronPositronGas()), core, { density: [1e4, 1e5, 1e6], temperature: [0, 1e7] });
-
-/** Elements of a text as a strict reader sees them; throws where tags do not match or a character is not escaped. */
-function readXml(text: string): { name: string; attributes: Record<string, string>; content: string }[] {
-  const found: { name: string; attributes: Record<string, string>; content: string }[] = [];
-  const open: { name: string; at: number; index: number }[] = [];
-  for (const match of text.matchAll(/<(\/?)([a-z]+)((?: [\w:-]+="[^"<]*")*)(\/?)>|([<>])|&(?!amp;|lt;|gt;|quot;)/g)) {
-    const [whole, closing, name = "", list = "", single] = match;
-    if (match[2] === undefined) throw new Error(`unescaped ${whole} at ${match.index}`);
-    if (closing === "/") {
-      const last = open.pop();
-      if (last?.name !== name) throw new Error(`</${name}> closes ${last?.name}`);
-      found[last.index]!.content = text.slice(last.at, match.index);
-      continue;
-    }
-    const attributes = Object.fromEntries([...list.matchAll(/([\w:-]+)="([^"]*)"/g)].map((one) => [one[1]!, one[2]!]));
-    found.push({ name, attributes, content: "" });
-    if (single !== "/") open.push({ name, at: match.index + whole.length, index: found.length - 1 });
-  }
-  if (open.length > 0) throw new Error(`${open.at(-1)?.name} stays open`);
-  return found;
-}
 
 const dataLines = (svg: string) =>
   readXml(svg.slice(svg.indexOf("<g "), svg.indexOf("</g>") + 4)).filter((one) => one.name === "path");

@@ -16,7 +16,7 @@ import {
   transition,
   whiteDwarfMatter,
 } from "fermistate";
-import { grid, gridToCsv, gridToCsvMetadata, logarithmicAxis } from "fermistate/grids";
+import { grid, gridToCsv, gridToCsvMetadata, gridToNpz, logarithmicAxis } from "fermistate/grids";
 import { gridToParquet } from "fermistate/table-files";
 import { afterEach, beforeEach, describe, expect, test } from "vitest";
 import { commands, run } from "../../src/cli/run.js";
@@ -333,6 +333,14 @@ describe("grid", () => {
     expect(Buffer.compare(bytes, await gridToParquet(made, { note: "Invented." }))).toBe(0);
   });
 
+  test("--format npz writes what the library writes", async () => {
+    const { code, out } = await command(`${line} --out core.npz --format npz`);
+    expect(code).toBe(0);
+    expect(readdirSync(cwd)).toEqual(["core.npz"]);
+    expect(new Uint8Array(readFileSync(join(cwd, "core.npz")))).toEqual(gridToNpz(made));
+    expect(out).toMatch(/core\.npz +\d+\.\d kB {2}arrays for NumPy/);
+  });
+
   test("prints CSV or JSON where there is no --out", async () => {
     expect((await command(line)).out).toBe(gridToCsv(made));
     expect(JSON.parse((await command(`${line} --format json`)).out).columns.pressure.values[3]).toBe(
@@ -578,7 +586,7 @@ describe("errors are one line, with a code for programs", () => {
 
   test.each([
     ["stat", 2, /^fermistate: command: given "stat"; allowed: perhaps state\?/],
-    ["x", 2, /one of state, grid, regime, limiting-mass, demo, help/],
+    ["x", 2, /one of state, grid, regime, compare, limiting-mass, demo, help/],
     ["help grdi", 2, /perhaps grid\?/],
     ["help grid state", 2, /one word/],
     [`state ${at} --densty 1`, 2, /given "--densty"; allowed: perhaps --density\?/],
@@ -641,8 +649,9 @@ describe("errors are one line, with a code for programs", () => {
     [`grid ${at} --quantities presure`, 2, /perhaps pressure/],
     [`grid ${at} --chart pressure`, 2, /only together with --out/],
     [`grid ${at} --format both`, 2, /only together with --out/],
+    [`grid ${at} --format npz`, 2, /only together with --out/],
     [`grid ${at} --format parquet`, 2, /only together with --out/],
-    [`grid ${at} --format xml`, 2, /one of csv, json, both, parquet/],
+    [`grid ${at} --format xml`, 2, /one of csv, json, both, npz, parquet/],
     [`grid ${at} --out`, 2, /--out: given ""/],
     ["demo --out", 2, /--out: given ""/],
     ["demo now", 2, /options only/],

@@ -45,12 +45,10 @@ async function errorOf(promise: Promise<unknown>): Promise<FermistateError> {
 }
 
 describe("what is written", () => {
-  test("bytes, and bytes among characters, as they are", async () => {
+  test("bytes as they are", async () => {
     const bytes = Uint8Array.of(0, 255, 13, 10, 0xc3, 0x28);
     expect(await writeText(at("a"), bytes.subarray(1))).toEqual({ path: at("a"), bytes: 5 });
     expect([...readFileSync(at("a"))]).toEqual([255, 13, 10, 0xc3, 0x28]);
-    await writeText(at("b"), ["\u03c1", bytes, Buffer.from("x")]);
-    expect([...readFileSync(at("b"))]).toEqual([0xcf, 0x81, 0, 255, 13, 10, 0xc3, 0x28, 0x78]);
     await writeText(at("c"), new Uint8Array(0));
     expect(readFileSync(at("c"))).toHaveLength(0);
   });
@@ -217,6 +215,15 @@ describe("what fails leaves nothing", () => {
     ];
     await expect(writeTexts(files, { createFolders: true })).rejects.toThrow(new RangeError("no more"));
     expect(readdirSync(folder)).toEqual([]);
+  });
+
+  test("bytes are written as they are, whole; a piece of a text is never taken for bytes", async () => {
+    const bytes = Uint8Array.of(0x93, 0, 255, 10);
+    expect((await writeText(at("a.npy"), bytes)).bytes).toBe(4);
+    expect([...readFileSync(at("a.npy"))]).toEqual([...bytes]);
+    const error = await errorOf(writeText(at("b.txt"), [bytes as unknown as string]));
+    expect(error).toMatchObject({ code: "invalid-option", argument: "text" });
+    expect(readdirSync(folder)).toEqual(["a.npy"]);
   });
 
   test("a piece that is no string", async () => {

@@ -86,6 +86,27 @@ const batches = (open: string): string => `
   await evaluator.evaluate(input, { pressure: parallel }).catch((error) => console.log(error.code, error.index));`;
 const printed = "ideal ions + radiation true true\nout-of-range 8000";
 
+test.each([
+  [
+    "mjs",
+    'import { assembleFolders, buildInFolder } from "fermistate/table-build"; import { tableEquationOfState } from "fermistate/tables";',
+  ],
+  [
+    "cjs",
+    'const { assembleFolders, buildInFolder } = require("fermistate/table-build"); const { tableEquationOfState } = require("fermistate/tables");',
+  ],
+])("fermistate/table-build on two threads, as %s", (kind, imports) => {
+  const code = `${imports}
+    (async () => {
+      const options = { density: [1e6, 1e7], temperature: [1e8, 1e9], accuracy: 1e-2 };
+      const request = { matter: { whiteDwarfMatter: {} }, composition: { C12: 1 }, options };
+      console.log(JSON.stringify(await buildInFolder("table-${kind}", request, { threads: 2 })));
+      const table = await assembleFolders("table-${kind}");
+      console.log(tableEquationOfState(table).state(3e6, 3e8, table.composition).pressure.toPrecision(4));
+    })();`;
+  expect(run(`table.${kind}`, code)).toBe('{"made":2,"kept":0,"left":0,"strips":2}\n1.363e+23');
+});
+
 describe("fermistate/parallel", () => {
   beforeAll(() => {
     const make = 'import { combine, idealIons, radiation } from "fermistate";';

@@ -37,11 +37,14 @@ const limits: Record<string, number> = {
   index: 80_000,
   barotropes: 81_000,
   contributions: 3_000,
-  grids: 8_500,
-  charts: 20_000,
+  grids: 12_500,
+  charts: 24_000,
   files: 3_000,
+  compare: 82_000, // regime brings the electron gas and AME2020
   certify: 21_000,
   parallel: 60_000,
+  tables: 90_000,
+  "table-build": 90_000,
   "table-files": 53_500, // most of it AME2020 for compositions, and zod; h5wasm and hyparquet-writer are loaded when needed
   structure: 70_000, // limitingMassLadder brings the equation of state and AME2020; a program without it does not pay
 };
@@ -50,6 +53,7 @@ const limits: Record<string, number> = {
 const externals: Record<string, string[]> = {
   files: ["node:*"],
   parallel: ["node:*", "tinypool"],
+  "table-build": ["node:*", "tinypool", "zod/mini"],
   "table-files": ["h5wasm", "hyparquet-writer"],
 };
 

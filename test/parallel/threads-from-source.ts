@@ -23,6 +23,7 @@ export async function makeWorkshop(): Promise<Workshop> {
   await build({
     entryPoints: {
       "parallel-worker": `${root}src/parallel/parallel-worker.ts`,
+      "strip-worker": `${root}src/table-build/strip-worker.ts`,
       core: `${root}src/index.ts`,
       parallel: `${root}src/parallel/index.ts`,
     },
@@ -31,7 +32,7 @@ export async function makeWorkshop(): Promise<Workshop> {
     splitting: true,
     format: "esm",
     platform: "node",
-    external: ["tinypool"],
+    external: ["tinypool", "zod"],
     logLevel: "silent",
   });
   writeFileSync(join(folder, "package.json"), '{ "type": "module" }');

@@ -162,6 +162,14 @@ describe("a star with a denser core", () => {
 });
 
 describe("where a jump ends the sequence", () => {
+  test("a range inside the jump is refused, one that ends in it ends below", () => {
+    const matter = twoPhases(1e10, 1e5, 1.3);
+    const most = (low: number, high: number) => maximumMass(matter, { relativity: "newton", range: [low, high] });
+    expect(() => most(1.1e5, 1.2e5)).toThrow(expect.objectContaining({ code: "outside-domain", argument: "range" }));
+    for (const low of [1e4, 1e5])
+      expect(most(low, 1.2e5)).toMatchObject({ reason: "end-of-range", centralDensity: 1e5 });
+  });
+
   test("a core denser by more than 3/2 is unstable, by less stable (Ramsey 1950, Lighthill 1950; Seidov 1971)", () => {
     const range = [1e4, 1e6] as const;
     for (const [ratio, isEnd] of [

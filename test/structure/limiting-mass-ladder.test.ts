@@ -7,7 +7,8 @@
 import { describe, expect, test } from "vitest";
 import { fineStructureConstant, solarMass } from "../../src/constants.js";
 import { composition, type NucleonFractions } from "../../src/matter/composition.js";
-import { type LadderRung, type LadderRungCode, limitingMassLadder } from "../../src/structure/limiting-mass-ladder.js";
+import type { LadderRung, LadderRungCode } from "../../src/structure/ladder-rung.js";
+import { limitingMassLadder } from "../../src/structure/limiting-mass-ladder.js";
 import { maximumMass } from "../../src/structure/maximum-mass.js";
 import { massRadiusSequence } from "../../src/structure/sequence.js";
 import { hydrostaticStar } from "../../src/structure/star.js";
@@ -234,6 +235,40 @@ test("refusals name what is wrong", () => {
   expect(of({ n: 1 })).toThrow(expect.objectContaining({ code: "out-of-range", argument: "composition" }));
   expect(of({ N14: 1 })).toThrow(expect.objectContaining({ code: "outside-domain", argument: "composition" }));
   expect(of({ C12: 0.2, Fe56: 0.8 })).toThrow(
-    expect.objectContaining({ code: "unstable", argument: "temperature", allowed: expect.stringContaining("false") }),
+    expect.objectContaining({
+      code: "unstable",
+      argument: "temperature",
+      allowed: expect.stringMatching(/unlike[\s\S]*thinner than the liquid[\s\S]*false/),
+    }),
   );
+  for (const fractions of [{ H1: 1 }, { H1: 0.7, He4: 0.3 }]) {
+    expect(of(fractions)).toThrow(
+      expect.objectContaining({
+        code: "unstable",
+        argument: "composition",
+        allowed: expect.stringMatching(/hydrogen[\s\S]*chandrasekharMass/),
+      }),
+    );
+  }
+});
+
+test("a star that the heat has blown up is refused; cooler it is there, and less than three times as wide", () => {
+  // Argon 36 captures at 2e7 g/cm^3, so its heaviest star is thin enough for 5e8 K to matter.
+  const argon = composition({ Ar36: 1 });
+  expect(() => limitingMassLadder(argon, { temperature: 5e8 })).toThrow(
+    expect.objectContaining({
+      code: "outside-domain",
+      argument: "temperature",
+      allowed: expect.stringMatching(/envelope[\s\S]*3 times/),
+    }),
+  );
+  const [cold, warm] = limitingMassLadder(argon, { temperature: 1e8 }).slice(-2);
+  expect(warm!.radius! / cold!.radius!).toBeGreaterThan(1);
+  expect(warm!.radius! / cold!.radius!).toBeLessThan(3);
+});
+
+test("carbon and iron without the warm rung", () => {
+  const rungs = limitingMassLadder(composition({ C12: 0.2, Fe56: 0.8 }), { temperature: false });
+  expect(rungs.map(({ code }) => code)).not.toContain("isothermal-core");
+  expect(rungs.at(-1)).toMatchObject({ end: "electron-capture", assumes: expect.stringContaining("Fe56") });
 });

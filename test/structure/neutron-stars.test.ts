@@ -2,6 +2,7 @@
  * Stars of the library's own barotropes: published neutron-star fits against recomputed maxima, the full physics of white dwarfs,
  * catalysed matter with its layers.
  */
+import { readFileSync } from "node:fs";
 import { describe, expect, test } from "vitest";
 import { barotrope } from "../../src/barotropes/from-equation-of-state.js";
 import { joinBarotropes } from "../../src/barotropes/joined.js";
@@ -9,9 +10,11 @@ import { outerCrust } from "../../src/barotropes/outer-crust.js";
 import { publishedBarotrope } from "../../src/barotropes/published.js";
 import { solarMass } from "../../src/constants.js";
 import { composition } from "../../src/matter/composition.js";
+import { findRoot } from "../../src/numerics/roots.js";
 import { maximumMass } from "../../src/structure/maximum-mass.js";
-import { starOfMass } from "../../src/structure/sequence.js";
+import type { StarProfile } from "../../src/structure/profile.js";
 import { hydrostaticStar, starMaker } from "../../src/structure/star.js";
+import { starOfMass } from "../../src/structure/star-of-mass.js";
 import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
 import { publishedRows } from "./published.js";
 
@@ -46,6 +49,50 @@ describe("published fits have the maxima and radii that an independent integrati
     const most = maximumMass(publishedBarotrope(name), { range: [3e14, 3.6e15] });
     expect(Math.abs(most.mass / solarMass / row!.value - 1)).toBeLessThan(1e-5);
   });
+});
+
+describe("all pieces of Read et al. 2009 against another integration (test/generators/published-stars.mjs)", () => {
+  const { rows } = JSON.parse(readFileSync(new URL("../fixtures/published-stars.json", import.meta.url), "utf8")) as {
+    rows: Record<string, Record<"mass" | "radius" | "centralDensity" | "radiusAt1_4", string>>;
+  };
+
+  test.each(Object.entries(rows))("%s", (name, row) => {
+    const matter = publishedBarotrope(`${name} piecewise`);
+    const most = maximumMass(matter, { range: [3e14, 4e15] });
+    const off = (value: number, expected: string): number => Math.abs(value / Number(expected) - 1);
+    expect(off(most.mass / solarMass, row.mass)).toBeLessThan(2e-11);
+    expect(off(most.centralDensity, row.centralDensity)).toBeLessThan(2e-6); // a parabola through masses found it there
+    expect(off(most.radius / 1e5, row.radius)).toBeLessThan(1e-6);
+    const star = starOfMass(matter, 1.4 * solarMass, { range: [1e14, 4e15] });
+    expect(off(star.radius / 1e5, row.radiusAt1_4)).toBeLessThan(2e-11);
+    // The limit that the matter states is its heaviest star, rounded up.
+    const limit = matter.limits!.find(({ side }) => side === "above")!.density;
+    expect(limit).toBeGreaterThan(most.centralDensity);
+    expect(limit).toBeLessThan(1.001 * most.centralDensity);
+  });
+});
+
+/** Radius at which the density falls to 1e6 g/cm^3: there the recomputed stars end, where the formulas were fitted from. */
+function radiusOfFormula(star: { readonly radius: number; readonly profile: StarProfile }): number {
+  const { at } = star.profile;
+  return findRoot((radius) => at(radius).density - 1e6, 0.9 * star.radius, star.radius, { relativeTolerance: 1e-12 }).x;
+}
+
+test.each([
+  // Recomputed outside this library: radius of 1.4 solar masses, of the heaviest star, km.
+  ["SLy", 11.698, 9.9807],
+  ["FPS", 10.8277, 9.2478],
+  ["BSk19", 10.7356, 9.1021],
+  ["BSk20", 11.7403, 10.1705],
+  ["BSk21", 12.5863, 11.039],
+] as const)("%s, analytic representation: radii", (name, ofMass, ofMaximum) => {
+  const matter = publishedBarotrope(name);
+  const star = starOfMass(matter, 1.4 * solarMass, { range: [1e14, 3e15], profile: true });
+  expect(Math.abs(radiusOfFormula(star) / 1e5 - ofMass)).toBeLessThan(6e-5); // half a unit of the last digit
+  const { centralDensity } = maximumMass(matter, { range: [3e14, 3.6e15] });
+  const heaviest = hydrostaticStar(matter, { centralDensity, profile: true });
+  // Its maximum was found by comparing masses, which leaves some 1e-4 of its density and a tenth of that in the radius.
+  expect(Math.abs(radiusOfFormula(heaviest) / 1e5 / ofMaximum - 1)).toBeLessThan(2e-5);
 });
 
 test("listed kinks keep the promise of the tolerance for pieces; they stand where the pieces meet", () => {
@@ -100,7 +147,17 @@ describe("catalysed matter", () => {
   test("joined to a core: two families, white dwarfs and neutron stars", () => {
     const matter = joinBarotropes(crust, publishedBarotrope("BSk21"));
     const { turningPoints, mass, reason } = maximumMass(matter);
-    expect(turningPoints.map(({ kind }) => kind)).toEqual(["maximum", "minimum", "maximum"]);
+    // Between them a family of unstable stars whose mass rises and falls again: their inner crust alone would carry them.
+    const kinds = ["maximum", "minimum", "maximum", "minimum", "maximum"];
+    expect(turningPoints.map(({ kind }) => kind)).toEqual(kinds);
+    const lightest = turningPoints[3]!;
+    expect((lightest.mass / solarMass).toFixed(2)).toBe("0.09"); // the least mass of a neutron star: common practice
+    for (const { centralDensity } of turningPoints) {
+      const [below, above] = [1 - 1e-4, 1 + 1e-4].map((factor) =>
+        hydrostaticStar(matter, { centralDensity: centralDensity * factor }),
+      );
+      expect(below!.massSlope * above!.massSlope).toBeLessThan(0);
+    }
     expect(reason).toBe("relativity");
     expect(Math.abs(mass / solarMass / 2.27404 - 1)).toBeLessThan(1e-5);
     // 1.4 solar masses: I of (1-2)e45 g cm^2 and Lambda of some hundreds are common practice.

@@ -2,8 +2,9 @@
 import { describe, expect, test } from "vitest";
 import { solarMass } from "../../src/constants.js";
 import { maximumMass } from "../../src/structure/maximum-mass.js";
-import { massRadiusSequence, starOfMass } from "../../src/structure/sequence.js";
+import { massRadiusSequence } from "../../src/structure/sequence.js";
 import { hydrostaticStar } from "../../src/structure/star.js";
+import { starOfMass } from "../../src/structure/star-of-mass.js";
 import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
 import { coldElectrons, coldNeutrons, kinked, polytrope } from "./barotropes.js";
 
@@ -33,9 +34,44 @@ describe("massRadiusSequence", () => {
     }
   });
 
-  test("what was not asked for is NaN", () => {
-    const { momentOfInertia, tidalDeformability } = massRadiusSequence(coldElectrons(2), { centralDensities: [1e6] });
-    expect([momentOfInertia[0], tidalDeformability[0]]).toEqual([Number.NaN, Number.NaN]);
+  test("what was not asked for has no column", () => {
+    const plain = massRadiusSequence(coldElectrons(2), { centralDensities: [1e6] });
+    expect(Object.keys(plain)).not.toContain("momentOfInertia");
+    const { momentOfInertia, loveNumber, tidalDeformability } = plain;
+    expect([momentOfInertia, loveNumber, tidalDeformability]).toEqual([undefined, undefined, undefined]);
+    const turning = massRadiusSequence(coldElectrons(2), { centralDensities: [1e6], rotation: true });
+    expect(turning.momentOfInertia[0]).toBeGreaterThan(0); // and its type says that it is there
+    expect(turning.tidalDeformability).toBeUndefined();
+  });
+
+  test("a slip in a literal does not compile, and what is asked for has its type", () => {
+    const barotrope = coldElectrons(2);
+    // @ts-expect-error: relativty
+    expect(() => hydrostaticStar(barotrope, { centralDensity: 1e6, relativty: "newton" })).toThrow("relativty");
+    // @ts-expect-error: cuont
+    expect(() => massRadiusSequence(barotrope, { range: [1e6, 1e7], cuont: 3 })).toThrow("cuont");
+    const star = hydrostaticStar(barotrope, { centralDensity: 1e6, profile: true });
+    expect(star.profile.at(0).density).toBeCloseTo(1e6, 4);
+  });
+
+  test("unknown options, and options of the wrong kind, are refused by all", () => {
+    const barotrope = coldElectrons(2);
+    const calls: readonly ((options: object) => unknown)[] = [
+      (options) => hydrostaticStar(barotrope, { centralDensity: 1e6, ...options }),
+      (options) => massRadiusSequence(barotrope, { centralDensities: [1e6], ...options }),
+      (options) => starOfMass(barotrope, solarMass, options),
+      (options) => maximumMass(barotrope, options),
+    ];
+    for (const call of calls) {
+      expect(() => call({ relativty: "newton" })).toThrow(
+        expect.objectContaining({
+          code: "invalid-option",
+          given: "relativty",
+          allowed: expect.stringContaining("tides"),
+        }),
+      );
+      expect(() => call({ tides: 1 })).toThrow(expect.objectContaining({ code: "invalid-option", argument: "tides" }));
+    }
   });
 
   test("refusals name the row or the option", () => {
@@ -69,7 +105,7 @@ describe("starOfMass", () => {
 
   test("an equation of state in place of a barotrope, or no options: a typed error", () => {
     expect(() => hydrostaticStar(whiteDwarfMatter() as never, { centralDensity: 1e8 })).toThrow("a barotrope");
-    expect(() => hydrostaticStar(coldNeutrons(), undefined as never)).toThrow("an object");
+    expect(() => hydrostaticStar(coldNeutrons(), undefined as never)).toThrow("centralDensity, profile");
   });
 
   test.each([0.2, 0.6, 1, 1.3])("%d solar masses of ideal electrons", (wanted) => {

@@ -60,6 +60,13 @@ test("a true table of two phases comes back, in HDF5 and in CSV, and gives the s
   expect(pressure(back)).toBe(pressure(table));
 });
 
+test.each(["liquid", "crystal"] as const)("a table of the %s alone comes back", async (phase) => {
+  const table = inventedTable(1);
+  const one = { ...table, sheets: [{ ...table.sheets[0]!, phase }] };
+  expect(await tableFromHdf5(await tableToHdf5(one))).toEqual(one);
+  expect(await tableFromCsv(await tableToCsv(one, "core"))).toEqual(one);
+});
+
 test("an electron table comes back", async () => {
   const table = { ...inventedTable(1), holdsFor: "electron density" } as const;
   expect(await tableFromHdf5(await tableToHdf5(table))).toEqual(table);
@@ -159,7 +166,7 @@ describe("what is not a table is refused", () => {
     ["axis that falls", { ...good, density: { lowest: 2, highest: 1, blocks: 2 } }, "table.density.highest"],
     ["an infinite axis", { ...good, density: { ...good.density, highest: Infinity } }, "table.density.highest"],
     ["half a block", { ...good, density: { ...good.density, blocks: 1.5 } }, "table.density.blocks"],
-    ["one sheet of two", { ...good, sheets: [liquid] }, "table.sheets"],
+    ["one sheet of two", { ...good, sheets: [liquid] }, "table.freezing"],
     ["sheets in another order", { ...good, sheets: [crystal, liquid] }, "table.sheets"],
     ["no freezing line", { ...good, freezing: undefined }, "table.freezing"],
     [
