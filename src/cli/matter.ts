@@ -5,7 +5,7 @@ import type { CoulombPlasmaOptions } from "../coulomb/options.js";
 import { FermistateError, isFermistateError } from "../errors.js";
 import { type Composition, composition, type NucleonFractions } from "../matter/composition.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
-import { whiteDwarfMatter } from "../white-dwarf-matter.js";
+import { type WhiteDwarfMatterOptions, whiteDwarfMatter } from "../white-dwarf-matter.js";
 import type { OptionHelp } from "./command.js";
 import { flag, fractions, number, oneOf, wordList } from "./readers.js";
 
@@ -55,17 +55,21 @@ export interface MatterChoice {
 
 /** The equation of state and the composition of a choice. */
 export function matterOf(choice: MatterChoice): { equationOfState: EquationOfState; matter: Composition } {
+  return { equationOfState: equationOf(switchesOf(choice)), matter: compositionOf(choice) };
+}
+
+/** The options of `whiteDwarfMatter` of a choice: plain data. */
+export function switchesOf(choice: Omit<MatterChoice, "composition" | "normalise">): WhiteDwarfMatterOptions {
   const without = choice.without ?? [];
-  const options = {
+  return {
     coulomb: coulombOf(choice),
     ions: !without.includes("ions"),
     radiation: !without.includes("radiation"),
   };
-  return { equationOfState: equationOf(options), matter: compositionOf(choice) };
 }
 
 /** The Coulomb terms of a choice; what would have no effect is refused. */
-function coulombOf(choice: MatterChoice): CoulombPlasmaOptions | false {
+function coulombOf(choice: Omit<MatterChoice, "composition" | "normalise">): CoulombPlasmaOptions | false {
   const { without = [], phase, "melting-coupling": meltingCoupling } = choice;
   const left = terms.filter((name) => without.includes(name));
   const gone = (["ions", "coulomb"] as const).find((name) => without.includes(name));
@@ -90,7 +94,7 @@ function coulombOf(choice: MatterChoice): CoulombPlasmaOptions | false {
 }
 
 /** The equation of state; a wrong melting coupling bears the name it has on the command line. */
-function equationOf(options: Parameters<typeof whiteDwarfMatter>[0]): EquationOfState {
+function equationOf(options: WhiteDwarfMatterOptions): EquationOfState {
   try {
     return whiteDwarfMatter(options);
   } catch (error) {

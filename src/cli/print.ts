@@ -30,8 +30,9 @@ export function bytesText(bytes: number): string {
   return `${(bytes / 1000 ** order).toFixed(1)} ${["B", "kB", "MB", "GB"][order]}`;
 }
 
-/** Milliseconds as "12 ms" or "3.4 s". */
+/** Milliseconds as "12 ms", "3.4 s" or "12 min". */
 export function timeText(milliseconds: number): string {
+  if (milliseconds >= 600_000) return `${Math.round(milliseconds / 60_000)} min`;
   return milliseconds < 1000 ? `${Math.max(1, Math.round(milliseconds))} ms` : `${(milliseconds / 1000).toFixed(1)} s`;
 }
 

@@ -45,6 +45,29 @@ export const axis: z.ZodMiniType<Axis, string> = reader((text) => {
   return listedAxis(text.split(",").map((one) => toNumber(one, forms)));
 });
 
+/** Two ends of a range: "1e4..1e9". */
+export const interval: z.ZodMiniType<readonly [number, number], string> = reader((text) => {
+  const [from, to, ...rest] = text.split("..");
+  if (from === undefined || to === undefined || rest.length > 0) throw new Unreadable("a range such as 1e4..1e9");
+  return [toNumber(from, "a range such as 1e4..1e9"), toNumber(to, "a range such as 1e4..1e9")];
+});
+
+/** A share: "2/5" is the second of five. */
+export const share: z.ZodMiniType<readonly [number, number], string> = reader((text) => {
+  const [, number, of] = /^(\d+)\/(\d+)$/.exec(text) ?? [];
+  if (number === undefined || Number(number) < 1 || Number(number) > Number(of)) {
+    throw new Unreadable("a share K/N with 1 <= K <= N, such as 2/5");
+  }
+  return [Number(number), Number(of)];
+});
+
+/** Texts separated by commas. */
+export const textList: z.ZodMiniType<readonly string[], string> = reader((text) => {
+  const found = text.split(",").map((one) => one.trim());
+  if (found.includes("")) throw new Unreadable("names separated by commas");
+  return found;
+});
+
 /** Nucleon fractions: "C12=0.5,O16=0.5", or a mean nucleus "meanMassNumber=13.7,meanCharge=6.85". */
 export const fractions: z.ZodMiniType<NucleonFractions, string> = reader((text) => {
   const form = "nucleon fractions such as C12=0.5,O16=0.5";

@@ -10,6 +10,7 @@ import { commandHelp, programHelp, topics } from "./help.js";
 import { limitingMassCommand } from "./limiting-mass-command.js";
 import { regimeCommand } from "./regime-command.js";
 import { stateCommand } from "./state-command.js";
+import { tableCommand } from "./table-command.js";
 
 /** All commands, in the order of the help. */
 export const commands: readonly Command[] = [
@@ -17,6 +18,7 @@ export const commands: readonly Command[] = [
   gridCommand,
   regimeCommand,
   compareCommand,
+  tableCommand,
   limitingMassCommand,
   demoCommand,
 ];
