@@ -16,8 +16,10 @@ import {
   TEMPERATURE_NOW,
 } from "./slots.js";
 
-/** Rows over which members of third order serve: they enter steps only (last ones of 3e-13), so that 10 % in them cost nothing. */
+/** Rows over which members of third order serve: they enter steps only (last ones of 5e-14), so that 10 % in them cost nothing. */
 const OLDEST = 5;
+/** Distance in ln rho and ln T up to which they do. */
+const NEAR = 0.05;
 /** Steps longer than this are no prediction. */
 const FARTHEST = 0.5;
 
@@ -68,7 +70,7 @@ export function predict(question: number, w: Float64Array, f: Float64Array, at: 
   let dv = move[V]!;
   const distance = Math.abs(du) + Math.abs(dv);
   w[AGE]! += 1;
-  w[FOLLOWS] = w[AGE]! <= OLDEST && distance < FARTHEST ? 1 : 0;
+  w[FOLLOWS] = w[AGE]! <= OLDEST && distance < NEAR ? 1 : 0;
   if (!(Math.abs(du) < FARTHEST)) du = 0;
   if (!(Math.abs(dv) < FARTHEST)) dv = 0;
   if (question !== TEMPERATURE_AT_DENSITY) w[DENSITY_NOW]! *= Math.exp(du);

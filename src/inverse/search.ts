@@ -48,14 +48,15 @@ import {
 const ROUNDING = 3 * 2 ** -52;
 /** A step whose square is below rounding: the members' own derivatives make it (free-energy.ts). */
 const LAST_STEP = 6e-9;
-/**
- * The same after an evaluation of second order, with members of third order that are those of the place before (4e-6 away at
- * most) or of a neighbour (to 10 %): what they make wrong is below rounding.
- */
-const LAST_FRESH = 1e-9;
-const LAST_STALE = 3e-13;
 /** The same where the residual is rounding: such a step is as uncertain as it is long. */
 const LAST_NOISE = 2e-8;
+/**
+ * The same two after an evaluation of second order, with members of third order from the place before, 4e-6 away at most, and with
+ * those of a neighbour, good to 10 %: what they make wrong stays near 1e-14 of the second-order members.
+ */
+const LAST_FRESH = 1e-10;
+const FRESH_NOISE = 2e-9;
+const LAST_STALE = 5e-14;
 /**
  * An evaluation of second order does after a step shorter than this: with the members of third order of the place before, and with
  * those of a neighbour, the next residual is rounding.
@@ -142,7 +143,15 @@ export function searchOne(
         floor = true;
       }
       const goal = now + now * stride[0]!;
-      const last = scatter ? LAST_NOISE : !brief ? LAST_STEP : w[AGE] === 0 ? LAST_FRESH : LAST_STALE;
+      const last = brief
+        ? w[AGE]! > 0
+          ? LAST_STALE
+          : scatter
+            ? FRESH_NOISE
+            : LAST_FRESH
+        : scatter
+          ? LAST_NOISE
+          : LAST_STEP;
       if (Math.abs(stride[0]!) <= last && goal >= low && goal <= high) {
         w[inDensity ? STEP_U : STEP_V] = stride[0]!;
         return FOUND;
@@ -239,7 +248,16 @@ export function searchTwo(
     du = (bV * wayA - aV * wayB) * inverse;
     dv = (aU * wayB - bU * wayA) * inverse;
     const length = Math.max(Math.abs(du), Math.abs(dv));
-    if (length <= (scatter ? LAST_NOISE : !brief ? LAST_STEP : w[AGE] === 0 ? LAST_FRESH : LAST_STALE)) {
+    const last = brief
+      ? w[AGE]! > 0
+        ? LAST_STALE
+        : scatter
+          ? FRESH_NOISE
+          : LAST_FRESH
+      : scatter
+        ? LAST_NOISE
+        : LAST_STEP;
+    if (length <= last) {
       w[STEP_U] = du;
       w[STEP_V] = dv;
       return FOUND;
