@@ -92,10 +92,12 @@ function exponentials() {
   return sum;
 }
 
+/** Processor time, as the program tells its own: on a busy machine the clock would count the neighbours. */
 const time = (task) => {
-  const start = performance.now();
+  const start = process.cpuUsage();
   task();
-  return (performance.now() - start) * 1e6;
+  const { user, system } = process.cpuUsage(start);
+  return (user + system) * 1e3;
 };
 const median = (values) => Float64Array.from(values).sort()[values.length >> 1];
 

@@ -2,7 +2,8 @@
  * JavaScript against C: the library's batch and the same algorithm compiled on the spot (the C files of this folder), in
  * turns within each process. Skipped where there is no C compiler.
  *
- * The compiler may do all that leaves results as they are: no -ffast-math, no fused multiply-add.
+ * Two baselines: all that a compiler may do for this machine while results stay as they are (no -ffast-math, no fused
+ * multiply-add), and what a package is compiled with as a rule.
  */
 import { execFileSync } from "node:child_process";
 import { mkdtempSync, rmSync, writeFileSync } from "node:fs";
@@ -13,7 +14,10 @@ import { composition } from "../../src/index.js";
 import { tablesFor } from "./tables.js";
 
 const here = fileURLToPath(new URL(".", import.meta.url));
-const flags = ["-std=c11", "-O3", "-march=native", "-ffp-contract=off", "-fno-math-errno"];
+const baselines = [
+  ["-std=c11", "-O3", "-march=native", "-ffp-contract=off", "-fno-math-errno"],
+  ["-std=c11", "-O2", "-ffp-contract=off"],
+];
 
 /** One sum of one process, as measure.mjs prints it; times in nanoseconds per point. */
 interface Row {
@@ -33,15 +37,18 @@ export function nativeRows(processes: number): string[] {
   try {
     const version = compilerVersion(compiler);
     if (version === undefined) return [`no C compiler (${compiler}): the native baseline is skipped`];
-    const program = join(folder, "native");
     writeFileSync(join(folder, "tables.h"), tablesFor(composition({ C12: 0.5, O16: 0.5 })));
-    execFileSync(compiler, [...flags, "-I", folder, "-o", program, join(here, "main.c"), "-lm"], { stdio: "inherit" });
-    const all = Array.from({ length: processes }, (_, i) => {
-      const command = [...onOneProcessor(i), process.execPath, join(here, "measure.mjs"), program, folder];
-      return JSON.parse(execFileSync(command[0]!, command.slice(1), { encoding: "utf8" })) as Row[];
+    return baselines.flatMap((flags, k) => {
+      const program = join(folder, `native-${k}`);
+      const files = ["-I", folder, "-o", program, join(here, "main.c"), "-lm"];
+      execFileSync(compiler, [...flags, ...files], { stdio: "inherit" });
+      const all = Array.from({ length: processes }, (_, i) => {
+        const command = [...onOneProcessor(i), process.execPath, join(here, "measure.mjs"), program, folder];
+        return JSON.parse(execFileSync(command[0]!, command.slice(1), { encoding: "utf8" })) as Row[];
+      });
+      const head = `JavaScript over C (${version}, ${flags.join(" ")}): C/O, T 1e6..1e9 K, rho 1e5..1e10 g/cm^3`;
+      return [head, ...all[0]!.map((_, i) => lineOf(all.map((rows) => rows[i]!)))];
     });
-    const head = `JavaScript over C (${version}, ${flags.join(" ")}): C/O, T 1e6..1e9 K, rho 1e5..1e10 g/cm^3`;
-    return [head, ...all[0]!.map((_, i) => lineOf(all.map((rows) => rows[i]!)))];
   } finally {
     rmSync(folder, { recursive: true });
   }

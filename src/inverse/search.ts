@@ -51,9 +51,17 @@ const LAST_STEP = 6e-9;
 /** The same where the residual is rounding: such a step is as uncertain as it is long. */
 const LAST_NOISE = 2e-8;
 /**
- * A search that follows a neighbour begins with an evaluation of second order, and goes on with one where its step is shorter than
- * this: the next residual is rounding then, and no last step is left that would need third order.
+ * The same two after an evaluation of second order, with members of third order from the place before, 4e-6 away at most, and with
+ * those of a neighbour, good to 10 %: what they make wrong stays near 1e-14 of the second-order members.
  */
+const LAST_FRESH = 1e-10;
+const FRESH_NOISE = 2e-9;
+const LAST_STALE = 5e-14;
+/**
+ * An evaluation of second order does after a step shorter than this: with the members of third order of the place before, and with
+ * those of a neighbour, the next residual is rounding.
+ */
+const SURE_FRESH = 4e-6;
 const SURE_STEP = 5e-7;
 /** Steps of one search before it gives up. */
 const STEPS_IN_ONE = 80;
@@ -92,6 +100,7 @@ export function searchOne(
   let lowSeen = false;
   let highSeen = false;
   let suspicions = 0;
+  let doubtful = false;
   let limit = ROUNDING; // not 1 times it: a variable that starts as an integer is boxed later
   w[slot] = Math.min(Math.max(w[slot]!, bottom), top);
   w[STEP_U] = 0;
@@ -100,7 +109,9 @@ export function searchOne(
     const now: number = w[slot]!;
     point[DENSITY] = w[DENSITY_NOW]!;
     point[TEMPERATURE] = w[TEMPERATURE_NOW]!;
-    const brief = w[FOLLOWS] === 1 && (i === 0 || (i === 1 && Math.abs(stride[0]!) < SURE_STEP));
+    const sure = w[AGE] === 0 ? SURE_FRESH : SURE_STEP;
+    const brief: boolean = i === 0 ? w[FOLLOWS] === 1 : !doubtful && Math.abs(stride[0]!) < sure;
+    doubtful = brief && i > 0;
     ev.fillMembers(composition, brief ? 2 : 3);
     if (!brief) w[AGE] = 0;
     w[EVALUATIONS]! += 1;
@@ -132,7 +143,16 @@ export function searchOne(
         floor = true;
       }
       const goal = now + now * stride[0]!;
-      if (!brief && Math.abs(stride[0]!) <= (scatter ? LAST_NOISE : LAST_STEP) && goal >= low && goal <= high) {
+      const last = brief
+        ? w[AGE]! > 0
+          ? LAST_STALE
+          : scatter
+            ? FRESH_NOISE
+            : LAST_FRESH
+        : scatter
+          ? LAST_NOISE
+          : LAST_STEP;
+      if (Math.abs(stride[0]!) <= last && goal >= low && goal <= high) {
         w[inDensity ? STEP_U : STEP_V] = stride[0]!;
         return FOUND;
       }
@@ -171,12 +191,15 @@ export function searchTwo(
   let limit = ROUNDING;
   let before = Number.POSITIVE_INFINITY;
   let halvings = 0;
+  let doubtful = false;
   w[STEP_U] = 0;
   w[STEP_V] = 0;
   for (let i = 0; i < STEPS_IN_TWO; i++) {
     point[DENSITY] = w[DENSITY_NOW]!;
     point[TEMPERATURE] = w[TEMPERATURE_NOW]!;
-    const brief = w[FOLLOWS] === 1 && (i === 0 || (i === 1 && Math.abs(w[STEP_U]!) + Math.abs(w[STEP_V]!) < SURE_STEP));
+    const sure = w[AGE] === 0 ? SURE_FRESH : SURE_STEP;
+    const brief: boolean = i === 0 ? w[FOLLOWS] === 1 : !doubtful && Math.abs(w[STEP_U]!) + Math.abs(w[STEP_V]!) < sure;
+    doubtful = brief && i > 0;
     ev.fillMembers(composition, brief ? 2 : 3);
     if (!brief) w[AGE] = 0;
     w[EVALUATIONS]! += 1;
@@ -225,7 +248,16 @@ export function searchTwo(
     du = (bV * wayA - aV * wayB) * inverse;
     dv = (aU * wayB - bU * wayA) * inverse;
     const length = Math.max(Math.abs(du), Math.abs(dv));
-    if (!brief && length <= (scatter ? LAST_NOISE : LAST_STEP)) {
+    const last = brief
+      ? w[AGE]! > 0
+        ? LAST_STALE
+        : scatter
+          ? FRESH_NOISE
+          : LAST_FRESH
+      : scatter
+        ? LAST_NOISE
+        : LAST_STEP;
+    if (length <= last) {
       w[STEP_U] = du;
       w[STEP_V] = dv;
       return FOUND;
@@ -263,6 +295,7 @@ export function searchTwo(
  * other variable's step, half of it is taken off, on short steps only.
  */
 function stretched(rest: number, bend: number, short: boolean, alone: boolean): number {
+  if (rest === 0) return short ? -0.5 * bend : 0;
   const ratio = bend / rest;
   if (Math.abs(ratio) < 1e-5) return rest * (1 - 0.5 * ratio);
   if (alone && ratio <= -0.95) return 3.15 * rest;

@@ -27,6 +27,7 @@ import {
   DENSITY_NOW,
   EVALUATIONS,
   FIRST_TARGET,
+  FOLLOWS,
   FOUND,
   FUNCTION_LENGTH,
   GUESSED,
@@ -84,6 +85,12 @@ export function searcherOf(eos: EquationOfState): Searcher {
   const [lowestDensity, highestDensity] = eos.domain.density;
   const [lowestTemperature, highestTemperature] = eos.domain.temperature;
 
+  /** Goes to a side: members of third order that an evaluator kept are of a neighbour only where it answered the row before. */
+  function enter(side: number): void {
+    if (place[0] !== side) w[FOLLOWS] = 0;
+    place[0] = side;
+  }
+
   function atDensity(composition: Composition, kind: number): number {
     w[LOWEST_TEMPERATURE] = lowestTemperature;
     w[HIGHEST_TEMPERATURE] = highestTemperature;
@@ -92,12 +99,12 @@ export function searcherOf(eos: EquationOfState): Searcher {
     phases?.fillBoundary(composition, boundary);
     const melting = phases === undefined ? 0 : boundary[2]!;
     if (liquid === undefined || crystal === undefined || melting <= lowestTemperature) {
-      place[0] = WHOLE;
+      enter(WHOLE);
       return searchOne(whole, composition, false, kind, w, f);
     }
     let side = w[TEMPERATURE_NOW]! >= melting ? LIQUID : CRYSTAL;
     for (let attempt = 0; ; attempt++) {
-      place[0] = side;
+      enter(side);
       w[LOWEST_TEMPERATURE] = side === LIQUID ? melting : lowestTemperature;
       w[HIGHEST_TEMPERATURE] = side === LIQUID ? highestTemperature : melting;
       const end = searchOne(side === LIQUID ? liquid : crystal, composition, false, kind, w, f);
@@ -121,7 +128,7 @@ export function searcherOf(eos: EquationOfState): Searcher {
     const freezing = phases === undefined ? Number.POSITIVE_INFINITY : boundary[3]!;
     const limit = boundary[4]!;
     if (liquid === undefined || crystal === undefined || freezing >= highestDensity) {
-      place[0] = WHOLE;
+      enter(WHOLE);
       return searchOne(whole, composition, true, kind, w, f);
     }
     // Three pieces by rising density: liquid, crystal, and liquid again where quantum melting forbids a crystal.
@@ -131,7 +138,7 @@ export function searcherOf(eos: EquationOfState): Searcher {
     let rising = 0;
     for (let attempt = 0; attempt < 4; attempt++) {
       const side = piece === 1 ? crystal : liquid;
-      place[0] = piece === 1 ? CRYSTAL : LIQUID;
+      enter(piece === 1 ? CRYSTAL : LIQUID);
       // The crystal may reach a little below its boundary: where its pressure there is above that of the liquid.
       const below = kind === PRESSURE_KIND ? 0.9 * freezing : freezing;
       w[LOWEST_DENSITY] = piece === 0 ? lowestDensity : piece === 1 ? Math.max(below, lowestDensity) : limit;
@@ -212,12 +219,12 @@ export function searcherOf(eos: EquationOfState): Searcher {
     w[LOWEST_TEMPERATURE] = lowestTemperature;
     w[HIGHEST_TEMPERATURE] = highestTemperature;
     if (liquid === undefined || crystal === undefined) {
-      place[0] = WHOLE;
+      enter(WHOLE);
       return onSide(whole, composition, first, second);
     }
     let side = isHotter(composition) ? LIQUID : CRYSTAL;
     for (let attempt = 0; attempt < 2; attempt++) {
-      place[0] = side;
+      enter(side);
       const density = w[DENSITY_NOW]!;
       const temperature = w[TEMPERATURE_NOW]!;
       const end = onSide(side === LIQUID ? liquid : crystal, composition, first, second);
@@ -239,6 +246,7 @@ export function searcherOf(eos: EquationOfState): Searcher {
     if (end === FOUND) return FOUND;
     w[DENSITY_NOW] = density;
     w[TEMPERATURE_NOW] = temperature;
+    w[FOLLOWS] = 0;
     return nestedSearch(side, composition, first, second, w, f);
   }
 

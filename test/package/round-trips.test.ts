@@ -82,11 +82,8 @@ describe.each(pairs)("%s and %s of 20 000 states", (...names) => {
   test("found from a neighbour's state: two evaluations in the mean", () => {
     const found = tally(names, true);
     if (process.env["FERMISTATE_PRINT"]) console.log(names.join(", "), JSON.stringify(found));
-    // Two but where the values scatter: measured 1.94 to 2.05, and 2.10 with pressure and energy or enthalpy.
-    expect(found.meanEvaluations).toBeLessThanOrEqual(
-      names[0] === "pressure" && names[1] !== "specificEntropy" ? 2.15 : 2.06,
-    );
-    expect(found.mostEvaluations).toBeLessThan(300);
+    expect(found.meanEvaluations).toBeLessThanOrEqual(2); // measured 1.79 to 1.993; more than two where the values scatter
+    expect(found.mostEvaluations).toBeLessThan(20);
     expect(found.shareAboveFour).toBeLessThan(1e-3);
     expect(found.worstError).toBeLessThanOrEqual(8);
     expect(found.worstResidual).toBeLessThan(4e-15);
