@@ -12,7 +12,7 @@
  */
 import type { Composition } from "../matter/composition.js";
 import { CRYSTAL_FRACTION } from "../matter/point.js";
-import type { Contribution, Physics, PhasePair } from "../thermodynamics/contribution.js";
+import type { Contribution, PhasePair, Physics } from "../thermodynamics/contribution.js";
 import type { Order } from "../thermodynamics/free-energy.js";
 import { type CoulombPlasmaOptions, checkedOptions } from "./options.js";
 import { fillBoundary, type Phase } from "./phase.js";

@@ -145,11 +145,11 @@ export function addColdCoulombSlopes(
   composition: Composition,
   slopes: Float64Array,
 ): void {
-  // Phonons and polarisation vanish faster than T; exchange and correlation go like t^2, t = T/T_F, so that their
-  // members at t = 1e-7 give the limits to 1e-14.
+  // Phonons and polarisation vanish faster than T; exchange and correlation go like t^2 with a correction of order t^3,
+  // t = T/T_F, and their members do not cancel: at t = 1e-20 they give the limits.
   if (!sum.terms.exchange || point[ELECTRON_DENSITY] === 0) return;
   const species = enter(sum, point, composition);
-  const tiny = 1e-7;
+  const tiny = 1e-20;
   const temperature = (tiny * species.gammaE * plasma[POINT_CUBE_ROOT]!) / (NON_RELATIVISTIC * plasma[POINT_RS]!);
   plasma[POINT_TEMPERATURE] = temperature;
   plasma[POINT_T] = tiny;
