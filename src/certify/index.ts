@@ -5,6 +5,13 @@
  */
 export { FermistateError, isFermistateError } from "../errors.js";
 export {
+  certificateCsv,
+  certificateText,
+  type ErrorMap,
+  errorMaps,
+  stateCertificateText,
+} from "./certificate-text.js";
+export {
   type Certificate,
   type CertificateColumns,
   type CertifiedErrors,

@@ -2,6 +2,7 @@
 import { type ErrorCode, FermistateError, isFermistateError } from "../errors.js";
 import { nearestWord } from "../grids/nearest.js";
 import { libraryVersion } from "../version.js";
+import { certifyCommand } from "./certify-command.js";
 import type { Command, CommandIo } from "./command.js";
 import { demoCommand } from "./demo-command.js";
 import { gridCommand } from "./grid-command.js";
@@ -16,6 +17,7 @@ export const commands: readonly Command[] = [
   gridCommand,
   regimeCommand,
   limitingMassCommand,
+  certifyCommand,
   demoCommand,
 ];
 
