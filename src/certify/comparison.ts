@@ -71,7 +71,9 @@ export function compareAt(
   const length = lengthFor(names);
   const { physics } = subject;
   const phaseAtBoundary = own.crystal;
-  const state = referenceState({ physics, composition, density, temperature, digits, length, phaseAtBoundary });
+  const positrons = names.includes("positronDensity");
+  const at = { physics, composition, density, temperature };
+  const state = referenceState({ ...at, digits, length, phaseAtBoundary, positrons });
   const others = uncertifiedTerms(subject, composition, density, temperature, length);
   const references = referenceQuantities({ ...state, terms: [...state.terms, ...others] }, names, digits);
   const shares = others.length === 0 ? undefined : referenceQuantities({ ...state, terms: others }, names, digits);

@@ -4,7 +4,7 @@ import { FermistateError } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
 import { coldEntropySlope } from "./cold.js";
 import * as constants from "./constants.js";
-import { type ReferenceElectronGas, referenceElectronGas } from "./electron-gas.js";
+import { type Extent, electronGas, type ReferenceElectronGas } from "./electron-gas.js";
 import { arithmetic, exactDecimal } from "./exact.js";
 import { exactMatter } from "./plasma.js";
 
@@ -20,13 +20,14 @@ export interface ElectronTerm {
 /**
  * Electrons and positrons at a point.
  *
- * @throws FermistateError as {@link referenceElectronGas}; `invalid-composition` for matter without electrons
+ * @throws FermistateError as `referenceElectronGas`; `invalid-composition` for matter without electrons
  */
 export function electronTerm(
   composition: Composition,
   density: number,
   temperature: number,
   digits: number,
+  extent: Extent,
 ): ElectronTerm {
   const D = arithmetic(digits + 20);
   const { electronsPerGram } = exactMatter(D, composition);
@@ -37,7 +38,7 @@ export function electronTerm(
   const rho = exactDecimal(D, "density", density);
   const T = exactDecimal(D, "temperature", temperature);
   const n = rho.times(electronsPerGram);
-  const gas = referenceElectronGas({ netElectronDensity: n, temperature: T }, { digits });
+  const gas = electronGas({ netElectronDensity: n, temperature: T }, digits, extent);
   const per = (value: Decimal, inDensity: number, inTemperature: number): Decimal =>
     new D(value).times(n.pow(inDensity)).times(T.pow(inTemperature)).div(rho);
   // F_rho = P/rho^2 and F_T = -s give every derivative; n and rho are proportional

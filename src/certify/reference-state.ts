@@ -25,6 +25,8 @@ export interface ReferenceRequest {
   readonly digits: number;
   readonly length: SeriesLength;
   readonly phaseAtBoundary: boolean;
+  /** Whether the density of positrons is wanted where it counts in nothing else. */
+  readonly positrons: boolean;
 }
 
 /** What the reference knows at a point. */
@@ -46,7 +48,10 @@ export interface ReferenceState {
 export function referenceState(request: ReferenceRequest): ReferenceState {
   const { physics, composition, density, temperature, digits } = request;
   const electrons = physics.some(({ model }) => model === electronModel)
-    ? electronTerm(composition, density, temperature, digits)
+    ? electronTerm(composition, density, temperature, digits, {
+        thirdOrder: request.length > 6,
+        rarePositrons: request.positrons,
+      })
     : undefined;
   const others = temperature === 0 ? coldTerms(request) : referenceTerms(request);
   const electronList: readonly ReferenceTerm[] =
