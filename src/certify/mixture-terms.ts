@@ -34,7 +34,7 @@ export function liquidMixture(plasma: Plasma, polarisable: boolean): Series | un
   const first = mean((z) => z);
   const second = mean((z) => z.times(z));
   const fiveHalves = mean((z) => z.pow("2.5"));
-  const coupling = mean((z) => z.pow(new D(5).div(3)));
+  const coupling = chargedMean(matter, (one) => one.coupling);
   const separate = polarisable ? mean((z) => z.plus(1).pow("1.5").times(z)) : fiveHalves;
   const together = (polarisable ? second.plus(first) : second).pow("1.5").div(first.sqrt());
   const delta = separate.minus(together).div(fiveHalves);

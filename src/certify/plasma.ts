@@ -24,6 +24,8 @@ export interface ExactSpecies {
   readonly g: number;
   /** Nuclei per gram. */
   readonly perGram: Decimal;
+  /** Z^(5/3). */
+  readonly coupling: Decimal;
 }
 
 /** Species and the sums over them. */
@@ -37,8 +39,18 @@ export interface ExactMatter {
   readonly electronsPerGram: Decimal;
 }
 
+const kept = new WeakMap<Composition, Map<number, ExactMatter>>();
+
 /** A composition in exact numbers. */
 export function exactMatter(D: Arithmetic, composition: Composition): ExactMatter {
+  const byPrecision = kept.get(composition) ?? new Map<number, ExactMatter>();
+  kept.set(composition, byPrecision);
+  const found = byPrecision.get(D.precision) ?? makeMatter(D, composition);
+  byPrecision.set(D.precision, found);
+  return found;
+}
+
+function makeMatter(D: Arithmetic, composition: Composition): ExactMatter {
   const all = composition.species.map((one): ExactSpecies => {
     const z = exactDecimal(D, "chargeNumber", one.chargeNumber);
     const a = exactDecimal(D, "massNumber", one.massNumber);
@@ -48,6 +60,7 @@ export function exactMatter(D: Arithmetic, composition: Composition): ExactMatte
       z,
       mass: inU.times(constants.atomicMassConstant).minus(z.times(constants.electronMass)),
       g: one.spinDegeneracy,
+      coupling: z.isZero() ? z : z.pow(new D(5).div(3)),
       perGram: exactDecimal(D, "nucleonFraction", one.nucleonFraction).div(a).div(constants.atomicMassConstant),
     };
   });
@@ -126,7 +139,7 @@ export function plasmaAt(
     gammaE,
     rs,
     x: rs.pow(-1).times(pi.times(9).div(4).pow(third).times(alpha)),
-    gamma: ({ z }) => gammaE.times(z.pow(third.times(5))),
+    gamma: ({ coupling }) => gammaE.times(coupling),
     theta: ({ z, mass }) => frequency.times(z.div(mass).sqrt()),
   };
 }
@@ -137,7 +150,7 @@ export function crystalMargins(
   meltingCoupling: number,
 ): { readonly coupling: Decimal; readonly quantum: Decimal } {
   const third = new D(1).div(3);
-  const coupling = gammaE.c[0]!.times(chargedMean(matter, ({ z }) => z.pow(third.times(5))));
+  const coupling = gammaE.c[0]!.times(chargedMean(matter, (one) => one.coupling));
   const quantum = rs.c[0]!.times(
     chargedMean(matter, ({ z, mass }) => z.pow(third.times(7)).times(mass).div(constants.electronMass)),
   );

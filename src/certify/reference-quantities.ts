@@ -165,7 +165,7 @@ function plasmaQuantity(
       return hasElectrons && !T.isZero() ? alone(plasma.gammaE.c[0]) : undefined;
     case "ionCoupling": {
       if (!hasElectrons || T.isZero()) return undefined;
-      const moment = chargedMean(matter, ({ z }) => z.pow(new plasma.D(5).div(3)));
+      const moment = chargedMean(matter, (one) => one.coupling);
       return alone(plasma.gammaE.c[0]!.times(moment));
     }
     case "fermiTemperature": {

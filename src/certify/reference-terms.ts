@@ -2,7 +2,7 @@
  * The terms of the free energy at a point with their natural derivatives, to a number of digits.
  *
  * Formulas lose digits (differences at weak coupling, a temperature derivative of what hardly depends on temperature), and
- * how many depends on where. So each point is worked out at two precisions 10 digits apart; where they differ by more
+ * how many depends on where. So each point is worked out at two precisions 8 digits apart; where they differ by more
  * than was asked for, both are raised.
  */
 import { Decimal } from "decimal.js";
@@ -45,12 +45,12 @@ export interface TermRequest {
   readonly guard?: number;
 }
 
-const step = 10;
+const step = 8;
 const highestPrecision = 400;
 
 /** All terms but those of electrons and positrons. */
 export function referenceTerms(request: TermRequest): ReferenceTerms {
-  const { digits, guard = 14 } = request;
+  const { digits, guard = 9 } = request;
   let precision = digits + guard;
   let coarse = termsAt(request, precision);
   for (;;) {

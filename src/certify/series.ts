@@ -7,7 +7,7 @@
  * coefficients. (Automatic differentiation; Griewank & Walther 2008, Evaluating Derivatives, chapter 13.)
  */
 import type { Decimal } from "decimal.js";
-import type { Arithmetic } from "./exact.js";
+import { type Arithmetic, positivePower } from "./exact.js";
 
 /** Powers of u and v of the coefficients, in their order. */
 export const powers: readonly (readonly [u: number, v: number])[] = [
@@ -91,7 +91,7 @@ export class Series {
   pow(power: Scalar): Series {
     const [D, x] = [this.D, this.c[0]!];
     const p = new D(power);
-    const out = [x.pow(p)];
+    const out = [positivePower(x, p)];
     for (let k = 1; k <= 4; k++) out.push(out[k - 1]!.times(p.minus(k - 1)).div(x.times(k)));
     return this.through(out as unknown as Coefficients);
   }
@@ -145,7 +145,7 @@ export class Series {
     const [D, x] = [this.D, this.c[0]!];
     const p = new D(power);
     const polynomial = [x.times(x).plus(1), x.times(2), new D(1)];
-    const out = [polynomial[0]!.pow(p)];
+    const out = [positivePower(polynomial[0]!, p)];
     for (let n = 1; n < 4; n++) {
       let sum = new D(0);
       for (let k = 1; k <= Math.min(n, 2); k++) {
