@@ -3,14 +3,13 @@ import type { Certificate, ErrorSummary, RefusedPoints } from "./certify.js";
 import type { StateCertificate } from "./certify-state.js";
 import type { CertifiedQuantity } from "./reference-quantities.js";
 
-const meaning = [
-  "An error is the difference to an independent evaluation of the same formulas: it measures arithmetic, implementation",
-  "and, for a table, interpolation. It says nothing about the error of the formulas themselves. Errors of 1.1e-16 and less",
-  "are the rounding of a correct number.",
-];
+const meaning =
+  "An error is the difference to an independent evaluation of the same formulas: it measures arithmetic, implementation and, " +
+  "for a table, interpolation. It says nothing about how true the formulas are. 1.1e-16 and less is the rounding of a " +
+  "correct number.";
 
-/** The certificate as text for a terminal, at most some 120 characters wide. */
-export function certificateText(certificate: Certificate): string {
+/** The certificate as text of at most 80 columns. */
+export function certificateText(certificate: Omit<Certificate, "columns">): string {
   const { equationOfState, region, asked, compared, quantities } = certificate;
   const where =
     region === undefined
@@ -19,52 +18,52 @@ export function certificateText(certificate: Certificate): string {
           `density ${span(region.density)} g/cm^3, temperature ${span(region.temperature)} K`,
           `${asked} points even in the logarithms, seed ${region.seed ?? 1}`,
         ];
-  const head = ["", "of the value", "", "", "", "", "of the sum of absolute terms", "", ""];
-  const names = ["", "largest", "99 %", "median", "g/cm^3", "K", "largest", "99 %", "median"];
-  const rows = quantities.map(({ name, relative, scaled }) => [
+  const refused = certificate.refused.map(refusedText);
+  const rows = quantities.map(({ name, relative: { at, ...one } }) => [
     name,
-    ...errorCells(relative),
-    short(relative.at.density),
-    short(relative.at.temperature),
-    ...(scaled === undefined ? ["-", "-", "-"] : errorCells(scaled)),
+    ...errorCells(one),
+    short(at.density),
+    short(at.temperature),
   ]);
+  const sums = quantities.flatMap(({ name, scaled }) => (scaled === undefined ? [] : [[name, ...errorCells(scaled)]]));
+  const head = ["", "largest", "99 %", "median"];
   return [
-    `Certificate of ${equationOfState}`,
-    ...[...aboutText(certificate), ...where, `${compared} of ${asked} points compared`].map(indented),
-    ...certificate.refused.map((one) => indented(refusedText(one))),
+    ...wrapped(`Certificate of ${equationOfState}`, ""),
+    ...[...aboutText(certificate), ...where, `${compared} of ${asked} points compared`, ...refused].flatMap((one) =>
+      wrapped(one),
+    ),
     "",
-    "Errors",
-    ...aligned([head, names, ...rows]),
+    "Errors over the value, and where the largest is (g/cm^3, K)",
+    ...aligned([[...head, "density", "temperature"], ...rows]),
     "",
+    ...(sums.length === 0
+      ? []
+      : ["Errors over the sum of the absolute values of all terms", ...aligned([head, ...sums]), ""]),
     ...limitsText(certificate),
-    ...meaning,
+    ...wrapped(meaning, ""),
     "",
   ].join("\n");
 }
 
-/** The audit of one state as text. */
+/** The audit of one state as text of at most 80 columns, with up to 30 digits. */
 export function stateCertificateText(certificate: StateCertificate): string {
   const { equationOfState, density, temperature, values } = certificate;
-  const rows = values.map(({ name, unit, value, reference, relative, scaled }) => [
-    name,
-    String(value),
-    reference,
-    unit === "1" ? "" : unit,
-    error(relative),
-    scaled === undefined ? "-" : error(scaled),
+  const rows = values.flatMap(({ name, unit, value, reference, relative, scaled }) => [
+    [name, valueText(value), unit === "1" ? "" : unit, ""],
+    ["", reference, error(relative), scaled === undefined ? "-" : error(scaled)],
   ]);
   return [
-    `Audit of ${equationOfState}`,
-    ...[...aboutText(certificate), `${short(density)} g/cm^3 and ${short(temperature)} K`].map(indented),
+    ...wrapped(`Audit of ${equationOfState}`, ""),
+    ...[...aboutText(certificate), `${short(density)} g/cm^3 and ${short(temperature)} K`].flatMap((one) =>
+      wrapped(one),
+    ),
     "",
-    ...aligned([
-      ["", "value", "reference", "", "error of", "of the sum of"],
-      ["", "", "", "", "the value", "terms"],
-      ...rows,
-    ]),
+    "Value, below it the reference, the error over the value and over the sum of",
+    "the absolute values of all terms",
+    ...aligned(rows, "llll"),
     "",
     ...limitsText(certificate),
-    ...meaning,
+    ...wrapped(meaning, ""),
     "",
   ].join("\n");
 }
@@ -129,41 +128,51 @@ function limitsText({ uncertified, unknown, quantities, values }: Limits): strin
     const shares = (quantities ?? values ?? []).flatMap(({ name, uncertifiedShare }) =>
       uncertifiedShare === undefined ? [] : `${name} ${(100 * uncertifiedShare).toPrecision(2)} %`,
     );
-    lines.push("Not certified, no independent reference");
-    for (const name of uncertified) lines.push(indented(name));
-    lines.push(indented("own values stand on both sides; largest share of the sum of absolute terms:"));
-    lines.push(indented(shares.join(", ")), "");
+    const list = shares.length === 0 ? "not known for these quantities, which are no sums" : shares.join(", ");
+    lines.push("Not certified, no independent reference", ...uncertified.flatMap((name) => wrapped(name)));
+    lines.push(...wrapped(`Own values stand on both sides; largest share of the sum of absolute terms: ${list}`), "");
   }
-  if (unknown.length > 0) lines.push(`Not compared, unknown to one side: ${unknown.join(", ")}`, "");
+  if (unknown.length > 0) lines.push(...wrapped(`Not compared, unknown to one side: ${unknown.join(", ")}`, ""), "");
   return lines;
 }
 
 function refusedText({ by, code, count, first }: RefusedPoints): string {
   const points = count === 1 ? "1 point" : `${count} points`;
-  return (
-    `${points} refused by the ${by} (${code}), the first at ${short(first.density)} g/cm^3 and ` +
-    `${short(first.temperature)} K: ${first.message}`
-  );
+  const place = `${short(first.density)} g/cm^3 and ${short(first.temperature)} K`;
+  return `${points} refused by the ${by} (${code}), the first at ${place}: ${first.message}`;
 }
 
-const indented = (line: string): string => `  ${line}`;
 const error = (value: number): string => (value === 0 ? "0" : value.toExponential(1));
-const errorCells = ({ largest, percentile99, median }: ErrorSummary): string[] =>
+const errorCells = ({ largest, percentile99, median }: Omit<ErrorSummary, "at">): string[] =>
   [largest, percentile99, median].map(error);
 const span = ([low, high]: readonly [number, number]): string => `${short(low)} to ${short(high)}`;
+const short = (value: number): string => valueText(Number(value.toPrecision(4)));
 
-function short(value: number): string {
+/** As short as it can be: "2e6", "12.5". */
+function valueText(value: number): string {
   const size = Math.abs(value);
-  const digits = Number(value.toPrecision(4));
-  return value !== 0 && (size >= 1e5 || size < 1e-3) ? digits.toExponential().replace("+", "") : String(digits);
+  const isPlain = value === 0 || !Number.isFinite(value) || (size < 1e5 && size >= 1e-3);
+  return isPlain ? String(value) : value.toExponential().replace("+", "");
 }
 
-/** Columns two blanks apart, the first to the left, the others to the right where they are numbers. */
-function aligned(rows: readonly (readonly string[])[]): string[] {
-  const widths = rows[0]!.map((_, k) => Math.max(...rows.slice(1).map((row) => row[k]!.length)));
-  return rows.map((row) =>
-    indented(
-      row.map((cell, k) => (k === 0 ? cell.padEnd(widths[k]!) : cell.padStart(widths[k]!))).join("  "),
-    ).trimEnd(),
-  );
+/** Columns two blanks apart; a letter each, "l" to the left and "r" to the right, the first to the left by default. */
+function aligned(rows: readonly (readonly string[])[], sides = "lrrrrr"): string[] {
+  const widths = rows[0]!.map((_, k) => Math.max(...rows.map((row) => row[k]!.length)));
+  return rows.map((row) => {
+    const cells = row.map((cell, k) => (sides[k] === "l" ? cell.padEnd(widths[k]!) : cell.padStart(widths[k]!)));
+    return `  ${cells.join("  ")}`.trimEnd();
+  });
+}
+
+/** Words in lines of at most 78 characters. */
+function wrapped(words: string, indent = "  "): string[] {
+  const lines: string[] = [];
+  let line = indent;
+  for (const word of words.split(/\s+/)) {
+    if (line.trim() !== "" && line.length + 1 + word.length > 78) {
+      lines.push(line);
+      line = `${indent}  ${word}`;
+    } else line = line.trim() === "" ? `${indent}${word}` : `${line} ${word}`;
+  }
+  return [...lines, line];
 }

@@ -59,6 +59,10 @@ export interface StateCertificate
   readonly values: readonly CertifiedValue[];
 }
 
+const guardDigits = 5;
+/** Most digits of the electron gas. */
+const mostDigits = 60;
+
 /**
  * Audits one state: each quantity beside an independent reference with `digits` digits.
  *
@@ -86,8 +90,9 @@ export function certifyState(
   const digits = certificateDigits(options.digits ?? 25);
   const names = requireQuantities(options.quantities ?? (quantityNames as readonly QuantityName[]));
   const own = ownValues(subject, composition, density, temperature, names);
-  // guard digits: a ratio may lose some that the terms have
-  const result = compareAt(subject, composition, density, temperature, names, digits, own);
+  // A quantity that is a difference of terms has fewer digits than they have.
+  const inner = Math.min(mostDigits, digits + guardDigits);
+  const result = compareAt(subject, composition, density, temperature, names, inner, own);
   return {
     libraryVersion,
     equationOfState: equationOfState.name,

@@ -3,13 +3,13 @@
  * state-*.json, whose heads say how (the cited formulas in 50-digit arithmetic, by another program).
  */
 import { readFileSync } from "node:fs";
-import { Decimal } from "decimal.js";
+import type { Decimal } from "decimal.js";
 import { describe, expect, test } from "vitest";
 import {
   anharmonic,
   crystalPolarisation,
-  lattices,
   latticeEnergy,
+  lattices,
   phonons,
   zeroPointEnergy,
 } from "../../src/certify/crystal-terms.js";
@@ -84,8 +84,7 @@ function madeBy(term: string): Made | undefined {
     return ([gammaE, rs]) => liquidPolarisation(plasmaWith({ gammaE: gammaE!, rs: rs! }), z);
   }
   if (phase === "bcc") {
-    return ([gamma, theta, rs]) =>
-      crystalPolarisation(plasmaWith({ gamma: gamma!, theta: theta!, rs: rs! }), z, bcc);
+    return ([gamma, theta, rs]) => crystalPolarisation(plasmaWith({ gamma: gamma!, theta: theta!, rs: rs! }), z, bcc);
   }
   return terms[term];
 }
@@ -190,7 +189,10 @@ test("sums with electrons to third order: 20 digits of all derivatives", () => {
   const measured = new Measured();
   const rows = rowsOf("../fixtures/state-third.json").filter((row) => isExact(row) && row["set"] !== "ideal");
   for (const row of rows.filter((_, i) => i % 2 === 0)) {
-    const contrib = row["set"] === "liquid" ? { fq: {}, fie: {}, xc: {}, mix: {} } : { madelung: {}, fie: {}, xc: {}, ah: {}, dmix: {} };
+    const contrib =
+      row["set"] === "liquid"
+        ? { fq: {}, fie: {}, xc: {}, mix: {} }
+        : { madelung: {}, fie: {}, xc: {}, ah: {}, dmix: {} };
     const physics = [
       { model: "electrons and positrons", options: {} },
       ...physicsOf({ ...row, contrib } as unknown as Row),
