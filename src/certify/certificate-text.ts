@@ -87,10 +87,11 @@ export function certificateCsv({ quantities, columns }: Certificate): string {
 
 /** Columns of a map of the errors of one quantity. */
 export interface ErrorMap {
+  /** Name of the quantity. */
   readonly quantity: CertifiedQuantity;
-  /** g/cm^3 */
+  /** Baryon mass density, g/cm^3. */
   readonly density: readonly number[];
-  /** K */
+  /** Temperature, K. */
   readonly temperature: readonly number[];
   /** log10 of the relative error; -20 stands for everything below, a value that is exact among them. */
   readonly logError: readonly number[];

@@ -25,7 +25,9 @@ export interface CertifyStateOptions {
 
 /** A number of the state beside its reference. */
 export interface CertifiedValue {
+  /** Name of the quantity. */
   readonly name: CertifiedQuantity;
+  /** Its unit in cgs, "1" for a pure number. */
   readonly unit: string;
   /** As the equation of state gives it. */
   readonly value: number;
@@ -52,10 +54,11 @@ export interface StateCertificate
     | "referenceError"
     | "unknown"
   > {
-  /** g/cm^3 */
+  /** Baryon mass density, g/cm^3. */
   readonly density: number;
-  /** K */
+  /** Temperature, K. */
   readonly temperature: number;
+  /** The numbers one by one. */
   readonly values: readonly CertifiedValue[];
 }
 

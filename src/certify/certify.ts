@@ -38,9 +38,11 @@ export interface CertifyOptions {
 
 /** Errors over the points that were compared. */
 export interface ErrorSummary {
+  /** The worst of all points. */
   readonly largest: number;
   /** 99 % of the points are not worse (nearest rank). */
   readonly percentile99: number;
+  /** Half of the points are not worse (nearest rank). */
   readonly median: number;
   /** Where the largest is: g/cm^3 and K. */
   readonly at: { readonly density: number; readonly temperature: number };
@@ -48,7 +50,9 @@ export interface ErrorSummary {
 
 /** The errors of one quantity. */
 export interface CertifiedErrors {
+  /** Name of the quantity. */
   readonly name: CertifiedQuantity;
+  /** Its unit in cgs, "1" for a pure number. */
   readonly unit: string;
   /** |value - reference| over the larger of the two. */
   readonly relative: ErrorSummary;
@@ -62,17 +66,21 @@ export interface CertifiedErrors {
 export interface RefusedPoints {
   /** Who refused. */
   readonly by: "equation of state" | "reference";
-  /** Code of the error, and the first point of it with its message. */
+  /** Code of the error. */
   readonly code: string;
+  /** How many points. */
   readonly count: number;
+  /** The first of them and the message there. */
   readonly first: { readonly density: number; readonly temperature: number; readonly message: string };
 }
 
 /** What {@link certify} returns: plain data, ready for JSON. */
 export interface Certificate {
+  /** Version of the library that made it. */
   readonly libraryVersion: string;
   /** Name of the equation of state. */
   readonly equationOfState: string;
+  /** What the matter is made of. */
   readonly composition: {
     readonly name: string;
     readonly species: readonly { readonly label: string; readonly nucleonFraction: number }[];
@@ -81,17 +89,21 @@ export interface Certificate {
   readonly physics: readonly Physics[];
   /** Contributions without a reference: their own values stand on both sides, so their errors are not seen. */
   readonly uncertified: readonly string[];
+  /** Digits of the reference. */
   readonly digits: number;
   /** Largest error estimate of the reference, relative to sums of absolute terms. */
   readonly referenceError: number;
   /** The region as asked for; undefined for columns of points. */
   readonly region?: CertifiedRegion;
-  /** Points asked for and points compared. */
+  /** Number of points asked for. */
   readonly asked: number;
+  /** Number of points that both sides answered. */
   readonly compared: number;
+  /** The others. */
   readonly refused: readonly RefusedPoints[];
   /** Quantities asked for that the equation of state or the reference does not know. */
   readonly unknown: readonly CertifiedQuantity[];
+  /** Errors of each quantity. */
   readonly quantities: readonly CertifiedErrors[];
   /** Errors point by point, in the order of `quantities`. */
   readonly columns: CertificateColumns;
@@ -99,9 +111,9 @@ export interface Certificate {
 
 /** Every point that was compared with its errors. */
 export interface CertificateColumns {
-  /** g/cm^3 */
+  /** Baryon mass density, g/cm^3. */
   readonly density: readonly number[];
-  /** K */
+  /** Temperature, K. */
   readonly temperature: readonly number[];
   /** One column per quantity of relative errors. */
   readonly relative: readonly (readonly number[])[];

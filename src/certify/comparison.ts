@@ -13,7 +13,7 @@ import { referenceState } from "./reference-state.js";
 import { lengthFor, type Subject, uncertifiedTerms } from "./subject.js";
 
 /** A quantity at a point. */
-export interface Comparison {
+interface Comparison {
   readonly name: CertifiedQuantity;
   readonly value: number;
   readonly reference: Decimal;

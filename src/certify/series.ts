@@ -10,7 +10,7 @@ import type { Decimal } from "decimal.js";
 import { type Arithmetic, positivePower } from "./exact.js";
 
 /** Powers of u and v of the coefficients, in their order. */
-export const powers: readonly (readonly [u: number, v: number])[] = [
+const powers: readonly (readonly [u: number, v: number])[] = [
   ...([[0, 0], [1, 0], [0, 1], [2, 0], [1, 1], [0, 2]] as const), // biome-ignore format: one order a line
   ...([[3, 0], [2, 1], [1, 2], [0, 3], [2, 2]] as const), // biome-ignore format: one order a line
 ];

@@ -64,7 +64,7 @@ export function uncertifiedTerms(
 }
 
 /** Quantities certified unless others are asked for. */
-export const defaultQuantities: readonly CertifiedQuantity[] = [
+const defaultQuantities: readonly CertifiedQuantity[] = [
   ...(["pressure", "specificEnergy", "specificEntropy", "specificFreeEnergy", "heatCapacityV"] as const),
   ...(["chiRho", "chiT", "gamma1", "gamma3", "adiabaticGradient", "soundSpeed"] as const),
 ];
