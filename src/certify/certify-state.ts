@@ -78,7 +78,7 @@ const mostDigits = 60;
  * import { certifyState } from "fermistate/certify";
  * const core = composition({ C12: 0.5, O16: 0.5 });
  * const audit = certifyState(whiteDwarfMatter(), core, 2e6, 1e7, { quantities: ["pressure"] });
- * audit.values[0].reference.slice(0, 12); // => 7.5001330217
+ * audit.values[0]?.reference; // => "7.500134365980305166350887e22"
  * ```
  */
 export function certifyState(

@@ -19,15 +19,15 @@ const defaultPoints = 50;
 
 export const certifyCommand: Command = command({
   name: "certify",
-  summary: "errors against an independent evaluation with many digits, over a region or of one state",
-  usage: "certify --density LOW..HIGH --temperature LOW..HIGH --composition LABEL=X,... [--points NUMBER]",
+  summary: "errors against an independent evaluation",
+  usage: "certify --density AXIS --temperature AXIS --composition LABEL=X,... [--points NUMBER]",
   options: {
     density: {
-      value: "LOW..HIGH",
-      help: "densities, g/cm^3: LOW..HIGH to sample, one value, or an AXIS as for fermistate grid",
+      value: "AXIS",
+      help: "densities, g/cm^3: LOW..HIGH to sample, one value, or an axis, whose every value is taken",
       read: spanOrAxis,
     },
-    temperature: { value: "LOW..HIGH", help: "temperatures, K, written like the densities", read: spanOrAxis },
+    temperature: { value: "AXIS", help: "temperatures, K, written like the densities", read: spanOrAxis },
     ...matterOptions,
     points: {
       value: "NUMBER",
@@ -59,8 +59,8 @@ export const certifyCommand: Command = command({
   },
   examples: [
     [
-      "certify --density 1e4..1e9 --temperature 1e6..1e9 --composition C12=0.5,O16=0.5 --points 20",
-      "a carbon-oxygen core, twenty points",
+      "certify --density 1e4..1e9 --temperature 1e6..1e9 --composition C12=0.5,O16=0.5 --points 4",
+      "a carbon-oxygen core, four points",
     ],
     [
       "certify --density 2e6 --temperature 1e7 --composition C12=0.5,O16=0.5 --digits 30",

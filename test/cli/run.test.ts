@@ -568,7 +568,7 @@ describe("errors are one line, with a code for programs", () => {
 
   test.each([
     ["stat", 2, /^fermistate: command: given "stat"; allowed: perhaps state\?/],
-    ["x", 2, /one of state, grid, regime, limiting-mass, demo, help/],
+    ["x", 2, /one of state, grid, regime, limiting-mass, certify, demo, help/],
     ["help grdi", 2, /perhaps grid\?/],
     ["help grid state", 2, /one word/],
     [`state ${at} --densty 1`, 2, /given "--densty"; allowed: perhaps --density\?/],
