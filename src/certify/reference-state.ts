@@ -5,6 +5,7 @@
  * everything thermal is below 1e-27 of its ground state, and the limits of c_v/T and (dP/dT)/(rho T) are read there.
  */
 import { Decimal } from "decimal.js";
+import { FermistateError } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
 import type { Physics } from "../thermodynamics/contribution.js";
 import * as constants from "./constants.js";
@@ -85,7 +86,12 @@ function coldTerms(request: ReferenceRequest): ReferenceTerms {
     .times(new D(constants.speedOfLight).pow(2))
     .div(constants.boltzmannConstant);
   const temperature = electronsPerGram.isZero() ? new D("1e-20") : restTemperature.times(x.pow(2)).times("5e-29");
-  return referenceTerms({ ...request, temperature, guard: 75 });
+  const made = referenceTerms({ ...request, temperature, guard: 75 });
+  if (made.terms.some(({ name }) => name === "ideal ions")) {
+    const allowed = "> 0 K where a classical gas is in the sum: its entropy has no limit";
+    throw new FermistateError("outside-domain", { argument: "temperature", given: 0, allowed });
+  }
+  return made;
 }
 
 /** Slots of derivatives by temperature. */

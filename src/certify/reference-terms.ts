@@ -57,6 +57,14 @@ export function referenceTerms(request: TermRequest): ReferenceTerms {
     precision += step;
     const fine = termsAt(request, precision);
     const error = difference(coarse.terms, fine.terms);
+    if (Number.isNaN(error)) {
+      const allowed = "charges and densities for which every formula is a number";
+      throw new FermistateError("outside-domain", {
+        argument: "composition",
+        given: request.composition.name,
+        allowed,
+      });
+    }
     if (error <= 10 ** -digits) return { ...fine, relativeError: error };
     if (precision > highestPrecision) break;
     precision = Math.ceil(precision * 1.3);

@@ -114,7 +114,12 @@ export function addCoulombSum(
   const crystal = isCrystal(sum, point);
   sum.crystal = crystal;
   point[CRYSTAL_FRACTION] = crystal ? 1 : 0;
-  if (!crystal && point[TEMPERATURE] === 0 && composition.ionsPerGram > 0) refuseColdLiquid(options, point);
+  if (point[TEMPERATURE] === 0 && composition.ionsPerGram > 0) {
+    if (!crystal) refuseColdLiquid(options, point);
+    if (terms.idealIons && options.freeNeutrons && composition.ionsPerGram > composition.chargedIonsPerGram) {
+      refuseColdNeutrons();
+    }
+  }
   if (terms.idealIons) {
     if (!crystal) sum.gas.add(point, composition, order, members);
     else if (options.freeNeutrons) sum.neutrons.add(point, composition, order, members);
@@ -249,6 +254,16 @@ function addCrystal({ terms, fit, lattice }: CoulombSum, species: CoulombSpecies
     ofTheta[0]! += constant;
     ofTheta[5]! -= constant;
   }
+}
+
+function refuseColdNeutrons(): never {
+  throw new FermistateError("outside-domain", {
+    argument: "temperature",
+    given: 0,
+    allowed:
+      "> 0 K with free neutrons: a classical gas has no entropy at T = 0 to speak of; coulombPlasma({ freeNeutrons: false }) " +
+      'leaves them to fermionGas({ species: "n" })',
+  });
 }
 
 function refuseColdLiquid(options: Required<CoulombPlasmaOptions>, point: Float64Array): never {

@@ -24,6 +24,7 @@ import {
   stateCertificateText,
 } from "fermistate/certify";
 import { describe, expect, test } from "vitest";
+import { referenceState } from "../../src/certify/reference-state.js";
 
 const core = composition({ C12: 0.5, O16: 0.5 });
 const region = { density: [1e4, 1e10], temperature: [1e6, 1e9], points: 6, seed: 3 } as const;
@@ -182,6 +183,16 @@ describe("what has no reference", () => {
     expect(values[0]!.relative).toBeCloseTo(0.001 / 1.001, 9);
     expect(values[1]!.relative).toBeLessThan(1e-15);
   });
+});
+
+test("where the reference has no answer it says so: a classical gas at T = 0, matter without electrons", () => {
+  const neutronRich = composition({ n: 0.1, C12: 0.9 });
+  const physics = whiteDwarfMatter().contributions.flatMap((one) => one.physics ?? []);
+  const request = { physics, composition: neutronRich, density: 1e6, temperature: 0, digits: 20, length: 6 } as const;
+  const at = { ...request, phaseAtBoundary: true, positrons: false };
+  expect(codeOf(() => referenceState(at))).toBe("outside-domain");
+  const neutral = composition({ n: 1 });
+  expect(codeOf(() => certifyState(whiteDwarfMatter(), neutral, 1e6, 1e9))).toBe("invalid-composition");
 });
 
 describe("the result", () => {

@@ -22,6 +22,7 @@ import {
   twoOscillators,
   wignerKirkwood,
 } from "../../src/certify/liquid-terms.js";
+import { alloy, liquidMixture, mixingAndSpin } from "../../src/certify/mixture-terms.js";
 import type { ExactSpecies, Plasma } from "../../src/certify/plasma.js";
 import { referenceState, total } from "../../src/certify/reference-state.js";
 import { referenceTerms } from "../../src/certify/reference-terms.js";
@@ -117,6 +118,34 @@ test("terms as functions of Gamma, theta, r_s: 20 digits of all six numbers", ()
   }
   expect(measured.count("f")).toBe(58);
   for (const name of measured.names()) measured.expectBelow(name, 5.1e-20); // half a unit of the 20th digit
+});
+
+test("mixtures over number fractions, charges and Gamma_e: 18 digits", () => {
+  const { rows } = JSON.parse(readFileSync(new URL("../fixtures/coulomb-terms.json", import.meta.url), "utf8")) as {
+    rows: Readonly<Record<string, unknown>>[];
+  };
+  const measured = new Measured();
+  for (const row of rows.filter(({ term }) => term === "mix")) {
+    const [fractions, charges, gammaE] = row["args"] as [readonly string[], readonly number[], string];
+    const charged = charges.map((z, i) => ({
+      ...{ z: decimal(z), perGram: decimal(fractions[i]!), g: 1 },
+      coupling: decimal(z).pow(decimal(5).div(3)),
+    }));
+    const plasma = { ...plasmaWith({ gammaE }), matter: { charged, chargedPerGram: decimal(1) } } as unknown as Plasma;
+    const values: Readonly<Record<string, Decimal>> = {
+      liq: liquidMixture(plasma, false)!.c[0]!,
+      liqpol: liquidMixture(plasma, true)!.c[0]!,
+      sol: alloy(plasma)!.c[0]!,
+      smix: mixingAndSpin(plasma),
+    };
+    for (const [name, value] of Object.entries(values)) {
+      const printed = row[name] as string | undefined;
+      if (printed === undefined) continue;
+      measured.add(name, value.minus(printed).div(printed).abs().toNumber(), `${charges} ${fractions} ${gammaE}`);
+    }
+  }
+  expect(measured.count("liq")).toBe(8);
+  for (const name of measured.names()) measured.expectBelow(name, 5e-18);
 });
 
 const shares: Readonly<Record<string, string>> = {
