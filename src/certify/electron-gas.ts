@@ -48,7 +48,7 @@ export interface ReferenceElectronGas extends ElectronGasValues {
 /** Guard digits beyond the losses that {@link expectedLoss} counts. */
 const guardDigits = 8;
 /** Precisions are rounded up to a multiple of this, so that few sets of nodes and kernels are kept. */
-const precisionStep = 4;
+const precisionStep = 6;
 const mostAttempts = 3;
 /** Beyond this many lost digits a request is refused: it would be a pair plasma with next to no net charge. */
 const mostLoss = 60;
