@@ -47,7 +47,7 @@ export {
   type RestMass,
   type SpeciesDerivatives,
 } from "./thermodynamics/composition-derivatives.js";
-export type { CompositionDependence, Contribution, Domain, PhasePair } from "./thermodynamics/contribution.js";
+export type { CompositionDependence, Contribution, Domain, PhasePair, Physics } from "./thermodynamics/contribution.js";
 export {
   type ByVariable,
   type DerivativeColumns,

@@ -29,6 +29,7 @@ import {
 export function radiation(): Contribution {
   return Object.freeze({
     name: "radiation",
+    physics: Object.freeze([{ model: "radiation", options: {} }]),
     validity: "Photons in vacuum: no plasma cut-off, which matters where hbar omega_p of the electrons approaches kT.",
     ideal: true,
     dependsOn: "none",

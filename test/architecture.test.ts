@@ -34,7 +34,7 @@ const floors: readonly (readonly string[])[] = [
 /** What a room may not import although it lies below. */
 const forbidden: Readonly<Record<string, readonly string[]>> = {
   // The reference shares no code with what it judges.
-  certify: ["numerics", "fermi-gas"],
+  certify: ["numerics", "fermi-gas", "coulomb", "ions", "radiation"],
   // The core: sub-paths are entered by their own name.
   index: [
     "barotropes",

@@ -8,6 +8,7 @@
  * the limits are the leading term of A. Sommerfeld, Z. Phys. 47, 1 (1928), at fixed density.
  */
 import type { Decimal } from "decimal.js";
+import * as constants from "./constants.js";
 import type { Arithmetic } from "./exact.js";
 import type { ElectronGasValues, Units } from "./state-functions.js";
 
@@ -46,6 +47,18 @@ export function coldElectronGas(D: Arithmetic, n: Decimal, units: Units): Electr
     d2sdT2: zero,
     d3PdndT2: pntt.times(boltzmann).times(perKelvin),
   };
+}
+
+/**
+ * Limit of s/T per volume at T = 0 [erg/(K^2 cm^3)] at density `n` [cm^-3]: (pi^2/3) k^2 dn/dE at the Fermi energy, with
+ * dn/dE = x E/(pi^2 lambda^3 m c^2) (Sommerfeld 1928). `restEnergy` is m c^2 [erg].
+ */
+export function coldEntropySlope(D: Arithmetic, n: Decimal, restEnergy: Decimal): Decimal {
+  const momentum = new D(constants.planckConstant).times(constants.speedOfLight).div(restEnergy); // h/(m c)
+  const unit = D.acos(-1).times(8).div(momentum.pow(3)); // 1/(pi^2 lambda^3)
+  const x = n.div(unit).times(3).cbrt();
+  const states = x.times(x.times(x).plus(1).sqrt()).times(unit).div(restEnergy);
+  return states.times(D.acos(-1).times(constants.boltzmannConstant).pow(2)).div(3);
 }
 
 function coldPressure(x: Decimal, x2: Decimal, E: Decimal): Decimal {

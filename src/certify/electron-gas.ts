@@ -46,9 +46,9 @@ export interface ReferenceElectronGas extends ElectronGasValues {
 }
 
 /** Guard digits beyond the losses that {@link expectedLoss} counts. */
-const guardDigits = 14;
+const guardDigits = 8;
 /** Precisions are rounded up to a multiple of this, so that few sets of nodes and kernels are kept. */
-const precisionStep = 8;
+const precisionStep = 6;
 const mostAttempts = 3;
 /** Beyond this many lost digits a request is refused: it would be a pair plasma with next to no net charge. */
 const mostLoss = 60;
@@ -69,7 +69,19 @@ export function referenceElectronGas(
   input: ReferenceElectronGasInput,
   options: ReferenceOptions = {},
 ): ReferenceElectronGas {
-  const digits = requireDigits(options.digits ?? 25);
+  return electronGas(input, requireDigits(options.digits ?? 25), { thirdOrder: true, rarePositrons: true });
+}
+
+/** What of the gas is wanted: the rest costs time. */
+export interface Extent {
+  /** Without it d2P/dn2, d2P/dndT, d2P/dT2, d2s/dT2 and d3P/dndT2 are NaN. */
+  readonly thirdOrder: boolean;
+  /** Without it the positron density is 0 where it is too small to count in any other value. */
+  readonly rarePositrons: boolean;
+}
+
+/** {@link referenceElectronGas} to the extent wanted. */
+export function electronGas(input: ReferenceElectronGasInput, digits: number, extent: Extent): ReferenceElectronGas {
   const first = conditions(arithmetic(digits + guardDigits), input);
   requireDomain(input, first);
   if (first.theta.isZero()) return cold(digits, input, first);
@@ -87,7 +99,7 @@ export function referenceElectronGas(
   let worst = Number.POSITIVE_INFINITY;
   for (let attempt = 0; attempt < mostAttempts; attempt++, precision += precisionStep) {
     const resolution: Resolution = { D: arithmetic(precision), depth: precision, refinement: attempt === 0 ? 0 : 1 };
-    const result = attemptAt(resolution, digits, input, start);
+    const result = attemptAt(resolution, digits, input, start, extent);
     worst = result.relativeError;
     if (worst <= 10 ** -digits && result.residual <= 10 ** -(digits + 4)) return result;
   }
@@ -114,22 +126,24 @@ function attemptAt(
   digits: number,
   input: ReferenceElectronGasInput,
   start: DegeneracyStart,
+  { thirdOrder, rarePositrons }: Extent,
 ): ReferenceElectronGas {
   const { D } = resolution;
   const at = conditions(D, input);
   const { n, theta, units } = at;
   const pairsMatter = 2 * start.nu < D.precision * Math.LN10 + 3 * Math.log(3 + 1 / theta.toNumber()) + 10;
   let eta = solveNeutrality(resolution, digits, new D(start.eta), at, pairsMatter);
-  let electrons = species(resolution, eta, theta);
-  let positrons = pairsMatter ? species(resolution, positronEta(eta, theta), theta) : undefined;
+  let electrons = species(resolution, eta, theta, thirdOrder);
+  let positrons = pairsMatter ? species(resolution, positronEta(eta, theta), theta, thirdOrder) : undefined;
   let residual = relativeResidual(at, electrons, positrons);
-  if (residual.abs().gt(new D(10).pow(-(digits + 8)))) {
+  if (residual.abs().gt(new D(10).pow(-(digits + 5)))) {
     eta = newtonStep(resolution, eta, at, pairsMatter, false).eta;
-    electrons = species(resolution, eta, theta);
-    positrons = pairsMatter ? species(resolution, positronEta(eta, theta), theta) : undefined;
+    electrons = species(resolution, eta, theta, thirdOrder);
+    positrons = pairsMatter ? species(resolution, positronEta(eta, theta), theta, thirdOrder) : undefined;
     residual = relativeResidual(at, electrons, positrons);
   }
-  const fewPositrons = positrons === undefined ? rarePositrons(digits, input, start, eta) : undefined;
+  const none = { fine: new D(0), coarse: new D(0) };
+  const fewPositrons = positrons === undefined && rarePositrons ? rareDensity(digits, input, start, eta) : none;
   const evaluate = (which: "fine" | "coarse"): ElectronGasValues => {
     const pair = positrons?.[which];
     // the coarse sums stand for a slightly different density, so its eta belongs to the density asked for
@@ -137,7 +151,7 @@ function attemptAt(
     const net = pair === undefined ? values.n : values.n.minus(pair.n);
     const slope = (pair === undefined ? values.nm : values.nm.plus(pair.nm)).times(theta);
     const correctedEta = eta.plus(n.minus(net).div(slope));
-    return stateFunctions(correctedEta, theta, values, pair, pair?.n ?? fewPositrons![which], units);
+    return stateFunctions(correctedEta, theta, values, pair, pair?.n ?? fewPositrons[which], units);
   };
   return {
     ...withErrors(digits, evaluate("fine"), evaluate("coarse"), at),
@@ -156,7 +170,7 @@ function relativeResidual(
 }
 
 /** n_+ where it is too small to count in any sum: it needs no more than the digits wanted. */
-function rarePositrons(
+function rareDensity(
   digits: number,
   input: ReferenceElectronGasInput,
   start: DegeneracyStart,

@@ -12,7 +12,7 @@
  */
 import type { Decimal } from "decimal.js";
 import { sweepKernels, sweepOccupation } from "./energy-axis.js";
-import type { Arithmetic } from "./exact.js";
+import { type Arithmetic, squareRoot } from "./exact.js";
 import type { Resolution, TwoResolutions } from "./quadrature.js";
 
 /** Density and pressure of one species with their derivatives; suffix m: d/dmu at fixed T, suffix t: d/dT at fixed mu. */
@@ -45,15 +45,25 @@ const densityKernels = [0, 1, 2, 3, 4, 5, 6, 7, 8] as const;
 const pressureKernels = [0, 2, 5, 9] as const;
 const kineticSum = densityKernels.length + pressureKernels.length;
 
-/** All moments of one species at two quadrature resolutions. */
-export function species(resolution: Resolution, eta: Decimal, theta: Decimal): TwoResolutions<Species> {
+/** Kernels of second order that meet p E: f, g, z g. */
+const secondOrderKernels = [0, 1, 2] as const;
+
+/** All moments of one species at two quadrature resolutions; those of third order only on request, else NaN. */
+export function species(
+  resolution: Resolution,
+  eta: Decimal,
+  theta: Decimal,
+  thirdOrder = true,
+): TwoResolutions<Species> {
   const { D } = resolution;
+  const ofDensity = thirdOrder ? densityKernels : secondOrderKernels;
+  const ofPressure = thirdOrder ? pressureKernels : pressureKernels.slice(0, 3);
   const sums = new TwoSums(D, kineticSum + 1);
   const third = new D(1).div(3);
   sweepKernels(resolution, eta, (weight, x, coarse, at) => {
     const kineticEnergy = theta.times(x);
     const p2 = kineticEnergy.times(kineticEnergy.plus(2));
-    const weightedP = p2.sqrt().times(weight);
+    const weightedP = squareRoot(p2).times(weight);
     const w = weightedP.times(kineticEnergy.plus(1));
     const pressureWeight = weightedP.times(p2).times(third);
     const part = coarse ? sums.even : sums.odd;
@@ -63,15 +73,21 @@ export function species(resolution: Resolution, eta: Decimal, theta: Decimal): T
       part[kineticSum] = part[kineticSum]!.plus(w.times(kineticEnergy));
       return;
     }
-    for (const k of densityKernels) part[k] = part[k]!.plus(w.times(at[k]));
+    for (const k of ofDensity) part[k] = part[k]!.plus(w.times(at[k]));
     let target: number = densityKernels.length;
-    for (const k of pressureKernels) {
+    for (const k of ofPressure) {
       part[target] = part[target]!.plus(pressureWeight.times(at[k]));
       target += 1;
     }
     part[kineticSum] = part[kineticSum]!.plus(w.times(kineticEnergy).times(at[0]));
   });
-  return sums.map((values) => derivatives(theta, values));
+  const unknown = new D(Number.NaN);
+  return sums.map((values) => {
+    const all = derivatives(theta, values);
+    if (thirdOrder) return all;
+    const third = { nmm: unknown, nmt: unknown, ntt: unknown, nmmm: unknown, nmmt: unknown, nmtt: unknown };
+    return { ...all, ...third, pttt: unknown };
+  });
 }
 
 /** Density of one species and dn/deta: what the charge-neutrality iteration needs. From the coarse rule on request. */
@@ -85,7 +101,9 @@ export function densityAndSlope(
   let slope = n;
   sweepOccupation(resolution, eta, coarseOnly, (weight, x, _coarse, at) => {
     const kineticEnergy = theta.times(x);
-    const w = kineticEnergy.times(kineticEnergy.plus(2)).sqrt().times(kineticEnergy.plus(1)).times(weight);
+    const w = squareRoot(kineticEnergy.times(kineticEnergy.plus(2)))
+      .times(kineticEnergy.plus(1))
+      .times(weight);
     n = n.plus(at === undefined ? w : w.times(at[0]));
     if (at !== undefined) slope = slope.plus(w.times(at[1]));
   });

@@ -58,7 +58,7 @@ export interface TwoResolutions<T> {
  * Step of the coarse rule times the digits of the arithmetic. At 2.0 and 48 digits the coarse sums of one species agree
  * with the fine ones to 1e-31 or better (eta <= 178, kT/mc^2 = 1e-8 to 1700); below 1.2 they reach full precision.
  */
-const coarseStepTimesDigits = 2;
+const coarseStepTimesDigits = 1.8;
 
 /**
  * Nodes on [from, to]. Near `from` positions keep their relative precision when `from` is zero, so an integrand may

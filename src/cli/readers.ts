@@ -34,7 +34,23 @@ export const number: z.ZodMiniType<number, string> = reader((text) => toNumber(t
  * An axis: "2e6"; "1e5,1e6,3e7"; "1e2..1e10,10-per-decade"; "1e2..1e10,81-points" (equal ratios);
  * "0..1e9,5-linear-points".
  */
-export const axis: z.ZodMiniType<Axis, string> = reader((text) => {
+export const axis: z.ZodMiniType<Axis, string> = reader(toAxis);
+
+/** Ends of a region to sample. */
+export interface Span {
+  readonly from: number;
+  readonly to: number;
+}
+
+const bareSpan = new RegExp(`^(${decimal})\\.\\.(${decimal})$`);
+
+/** A span "1e4..1e9" or an axis. */
+export const spanOrAxis: z.ZodMiniType<Span | Axis, string> = reader((text) => {
+  const [, from, to] = bareSpan.exec(text) ?? [];
+  return from === undefined ? toAxis(text) : { from: Number(from), to: Number(to) };
+});
+
+function toAxis(text: string): Axis {
   const [, from, to, count, kind] = range.exec(text) ?? [];
   if (kind === "per-decade") {
     return logarithmicAxis({ from: Number(from), to: Number(to), pointsPerDecade: Number(count) });
@@ -43,7 +59,7 @@ export const axis: z.ZodMiniType<Axis, string> = reader((text) => {
   if (kind === "linear-points") return linearAxis({ from: Number(from), to: Number(to), points: Number(count) });
   const forms = "2e6 or 1e5,1e6,3e7 or 1e2..1e10,10-per-decade or 1e2..1e10,81-points or 0..1e9,5-linear-points";
   return listedAxis(text.split(",").map((one) => toNumber(one, forms)));
-});
+}
 
 /** Two ends of a range: "1e4..1e9". */
 export const interval: z.ZodMiniType<readonly [number, number], string> = reader((text) => {

@@ -2,6 +2,7 @@
 import { type ErrorCode, FermistateError, isFermistateError } from "../errors.js";
 import { nearestWord } from "../grids/nearest.js";
 import { libraryVersion } from "../version.js";
+import { certifyCommand } from "./certify-command.js";
 import type { Command, CommandIo } from "./command.js";
 import { compareCommand } from "./compare-command.js";
 import { demoCommand } from "./demo-command.js";
@@ -18,6 +19,7 @@ export const commands: readonly Command[] = [
   gridCommand,
   regimeCommand,
   compareCommand,
+  certifyCommand,
   tableCommand,
   limitingMassCommand,
   demoCommand,

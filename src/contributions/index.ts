@@ -19,7 +19,13 @@ export {
   RELATIVITY,
   TEMPERATURE,
 } from "../matter/plasma.js";
-export type { CompositionDependence, Contribution, Domain, PhasePair } from "../thermodynamics/contribution.js";
+export type {
+  CompositionDependence,
+  Contribution,
+  Domain,
+  PhasePair,
+  Physics,
+} from "../thermodynamics/contribution.js";
 export {
   addNaturalDerivatives,
   ENERGY,

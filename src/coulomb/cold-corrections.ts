@@ -110,6 +110,7 @@ export function coldCorrections(options: ColdCorrectionsOptions = {}): Contribut
 
   return Object.freeze({
     name: "cold corrections",
+    physics: Object.freeze([{ model: "cold corrections", options: { lattice, thomasFermi, exchange, correlation } }]),
     domain: Object.freeze({ density: [1e-20, 1e18], temperature: [1, 1e13], zeroTemperature: true } as const),
     validity:
       "Zero-temperature corrections of first order to degenerate, fully ionised matter: meaningless where kT is not far " +

@@ -12,7 +12,7 @@
  */
 import type { Composition } from "../matter/composition.js";
 import { CRYSTAL_FRACTION } from "../matter/point.js";
-import type { Contribution, PhasePair } from "../thermodynamics/contribution.js";
+import type { Contribution, PhasePair, Physics } from "../thermodynamics/contribution.js";
 import type { Order } from "../thermodynamics/free-energy.js";
 import { type CoulombPlasmaOptions, checkedOptions } from "./options.js";
 import { fillBoundary, type Phase } from "./phase.js";
@@ -86,8 +86,13 @@ export function coulombPlasma(options: CoulombPlasmaOptions = {}): CoulombPlasma
 /** One contribution from a choice of terms. */
 function contributionOf(name: string, terms: Terms, options: Required<CoulombPlasmaOptions>): Contribution {
   const sum = coulombSum(terms, options);
+  const physics: Physics = {
+    model: "Coulomb plasma",
+    options: { ...options, ...(name === "Coulomb plasma" ? {} : { part: name }) },
+  };
   return {
     name,
+    physics: Object.freeze([Object.freeze(physics)]),
     domain: Object.freeze({ density: [1e-20, 1e18], temperature: [1, 1e13], zeroTemperature: true } as const),
     validity:
       "Coulomb terms assume full ionisation and electrons that are nearly uniform: outside the range of their fits ask " +

@@ -114,7 +114,12 @@ export function addCoulombSum(
   const crystal = isCrystal(sum, point);
   sum.crystal = crystal;
   point[CRYSTAL_FRACTION] = crystal ? 1 : 0;
-  if (!crystal && point[TEMPERATURE] === 0 && composition.ionsPerGram > 0) refuseColdLiquid(options, point);
+  if (point[TEMPERATURE] === 0 && composition.ionsPerGram > 0) {
+    if (!crystal) refuseColdLiquid(options, point);
+    if (terms.idealIons && options.freeNeutrons && composition.ionsPerGram > composition.chargedIonsPerGram) {
+      refuseColdNeutrons();
+    }
+  }
   if (terms.idealIons) {
     if (!crystal) sum.gas.add(point, composition, order, members);
     else if (options.freeNeutrons) sum.neutrons.add(point, composition, order, members);
@@ -145,11 +150,11 @@ export function addColdCoulombSlopes(
   composition: Composition,
   slopes: Float64Array,
 ): void {
-  // Phonons and polarisation vanish faster than T; exchange and correlation go like t^2, t = T/T_F, so that their
-  // members at t = 1e-7 give the limits to 1e-14.
+  // Phonons and polarisation vanish faster than T; exchange and correlation go like t^2 with a correction of order t^3,
+  // t = T/T_F, and their members do not cancel: at t = 1e-20 they give the limits.
   if (!sum.terms.exchange || point[ELECTRON_DENSITY] === 0) return;
   const species = enter(sum, point, composition);
-  const tiny = 1e-7;
+  const tiny = 1e-20;
   const temperature = (tiny * species.gammaE * plasma[POINT_CUBE_ROOT]!) / (NON_RELATIVISTIC * plasma[POINT_RS]!);
   plasma[POINT_TEMPERATURE] = temperature;
   plasma[POINT_T] = tiny;
@@ -249,6 +254,16 @@ function addCrystal({ terms, fit, lattice }: CoulombSum, species: CoulombSpecies
     ofTheta[0]! += constant;
     ofTheta[5]! -= constant;
   }
+}
+
+function refuseColdNeutrons(): never {
+  throw new FermistateError("outside-domain", {
+    argument: "temperature",
+    given: 0,
+    allowed:
+      "> 0 K with free neutrons: a classical gas has no entropy at T = 0 to speak of; coulombPlasma({ freeNeutrons: false }) " +
+      'leaves them to fermionGas({ species: "n" })',
+  });
 }
 
 function refuseColdLiquid(options: Required<CoulombPlasmaOptions>, point: Float64Array): never {

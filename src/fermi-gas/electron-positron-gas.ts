@@ -82,6 +82,7 @@ export function electronPositronGas(): Contribution {
 
   return Object.freeze({
     name: "electrons and positrons",
+    physics: Object.freeze([{ model: "electrons and positrons", options: {} }]),
     validity: "Electrons and positrons are an ideal gas, exact to rounding as such; atoms are fully ionised.",
     ideal: true,
     dependsOn: "electron density",

@@ -88,6 +88,7 @@ export function fermionGas(options: FermionGasOptions): Contribution {
 
   return Object.freeze({
     name: `fermions ${label}`,
+    physics: Object.freeze([{ model: "fermions", options: { species: label, mass, degeneracy } }]),
     validity: `An ideal gas of ${label} without antiparticles: at nuclear density a limit to compare with, no model.`,
     ideal: true,
     // The classical gas of nuclei counts free neutrons too, unless told not to.

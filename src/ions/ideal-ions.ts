@@ -67,6 +67,9 @@ export function idealIons(options: IdealIonsOptions = {}): Contribution {
   let constants: Float64Array;
   return Object.freeze({
     name: only ?? (freeNeutrons ? "ideal ions" : "ideal ions without free neutrons"),
+    physics: Object.freeze([
+      { model: "ideal ions", options: { freeNeutrons, ...(only === undefined ? {} : { only }) } },
+    ]),
     validity:
       "Nuclei and free neutrons are a classical gas in their ground states: in cold dense matter, where nuclei freeze and " +
       "neutrons are degenerate, its entropy turns negative.",

@@ -2,13 +2,14 @@
 import * as z from "zod/mini";
 import { type ErrorCode, FermistateError, isFermistateError } from "../errors.js";
 import { requireComposition } from "../matter/composition.js";
+import { powerOffset } from "../tables/members.js";
 import { COLD_LENGTH, type FreeEnergyTable, highestLevel, NODE_LENGTH, type TableSheet } from "../tables/table.js";
 import { certified, LAYOUT } from "./items.js";
 
 /** Most blocks of one axis; with the finest level, more cells than a table of any use has. */
 const mostBlocks = 4096;
-/** 2^k of a block is an ordinary double. */
-const exponentRange = [-1022, 1023] as const;
+/** 2^k of a block, as the look-up knows it. */
+const exponentRange = [-powerOffset, powerOffset] as const;
 
 const positive = z.number().check(z.gt(0)); // zod's numbers are finite
 /** Zero has no sign: JSON would lose it. */
@@ -21,6 +22,10 @@ const axis = z.object({ lowest: positive, highest: positive, blocks: z.int().che
 /** A line of text; the trailing NUL of a padded string and line ends of a CSV file are no part of one. */
 const line = z.string().check(z.maxLength(2000), z.regex(/^[^\p{Cc}\p{Cs}\u2028\u2029]*$/u));
 const lines = z.array(line).check(z.maxLength(200));
+const physics = z.object({
+  model: line.check(z.minLength(1)),
+  options: z.record(line, z.union([line, z.number(), z.boolean()])),
+});
 const errorOfQuantity = z.object({
   bound: notNegative,
   largest: notNegative,
@@ -47,7 +52,7 @@ const structure = z.object({
     )
     .check(z.minLength(1), z.maxLength(2)),
   freezing: z.optional(z.object({ factor: positive, highestDensity: positive })),
-  source: z.object({ tabulated: lines, beside: lines, validity: lines, version: line }),
+  source: z.object({ tabulated: lines, beside: lines, physics: z.array(physics), validity: lines, version: line }),
   certificate: z.object({
     places: count,
     target: notNegative,

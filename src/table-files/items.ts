@@ -14,6 +14,7 @@ import {
   type TableAxis,
   type TableSheet,
 } from "../tables/table.js";
+import type { Physics } from "../thermodynamics/contribution.js";
 
 /** Arrays of an item: their kind says what a number is. */
 export interface Arrays {
@@ -103,6 +104,10 @@ export function itemsOf(table: FreeEnergyTable): Item[] {
         ]),
     texts("source/tabulated", source.tabulated),
     texts("source/beside", source.beside),
+    texts(
+      "source/physics",
+      source.physics.map(({ model, options }) => JSON.stringify({ model, options })),
+    ),
     texts("source/validity", source.validity),
     text("source/version", source.version),
     integer("certificate/places", certificate.places),
@@ -155,6 +160,7 @@ export function tableOfItems(read: ReadItem): FreeEnergyTable {
   const source = {
     tabulated: read("source/tabulated", "text", [undefined]),
     beside: read("source/beside", "text", [undefined]),
+    physics: read("source/physics", "text", [undefined]).map(physicsOf),
     validity: read("source/validity", "text", [undefined]),
     version: read("source/version", "text", [])[0]!,
   };
@@ -188,6 +194,15 @@ export function tableOfItems(read: ReadItem): FreeEnergyTable {
     source,
     certificate,
   };
+}
+
+/** A line of `source/physics`; what is no JSON is left to the check of the table. */
+function physicsOf(line: string): Physics {
+  try {
+    return JSON.parse(line) as Physics;
+  } catch {
+    return { model: "", options: {} };
+  }
 }
 
 function readComposition(read: ReadItem): Composition {

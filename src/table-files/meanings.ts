@@ -68,6 +68,7 @@ const meanings: Readonly<Record<string, Meaning>> = {
   "sheets/freezing/highest_density": { units: "g/cm^3", description: "highest density of a crystal" },
   "source/tabulated": { description: "contributions to the free energy that are in the table" },
   "source/beside": { description: "contributions that are not: to be added" },
+  "source/physics": { description: "model and options of each tabulated contribution, as JSON" },
   "source/validity": { description: "where the physics holds" },
   "source/version": { description: "version of fermistate that made the table" },
   "certificate/places": { units: "1", description: "number of places where the finished table was measured" },

@@ -52,6 +52,9 @@ export function assembleTable(plan: TablePlan, strips: readonly Strip[]): FreeEn
     source: {
       tabulated: plan.tabulated.map((part) => part.name),
       beside: plan.beside.map((part) => part.name),
+      physics: plan.tabulated.every((part) => part.physics !== undefined)
+        ? plan.tabulated.flatMap((part) => part.physics!)
+        : [],
       validity: named.flatMap((part) => (part.validity === undefined ? [] : [`${part.name}: ${part.validity}`])),
       version: libraryVersion,
     },

@@ -132,7 +132,7 @@ function axis([lowest, highest]: readonly [number, number], decades: number): Ta
 }
 
 /** ln of the ends of all blocks. */
-export function ladder({ lowest, highest, blocks }: TableAxis): readonly number[] {
+function ladder({ lowest, highest, blocks }: TableAxis): readonly number[] {
   const [low, high] = [Math.log(lowest), Math.log(highest)];
   return Array.from({ length: blocks + 1 }, (_, i) => (i === blocks ? high : low + ((high - low) * i) / blocks));
 }

@@ -16,7 +16,7 @@ import { highestLevel, NODE_LENGTH, type SheetPhase, type TableAxis } from "./ta
 import { fillTrace } from "./trace.js";
 
 /** The blocks of one sheet in a strip, in the form of `TableSheet`. */
-export interface SheetStrip {
+interface SheetStrip {
   readonly phase: SheetPhase;
   readonly densityLevels: Int8Array;
   readonly temperatureLevels: Int8Array;
@@ -275,7 +275,7 @@ function measure(
 }
 
 /** Members of the table at a point of one surface. */
-export function fillTableMembers(plan: TablePlan, surface: Surface, u: number, v: number, members: Float64Array): void {
+function fillTableMembers(plan: TablePlan, surface: Surface, u: number, v: number, members: Float64Array): void {
   surface.at[0] = u;
   surface.at[1] = v;
   plan.lookUp.at[0] = u;

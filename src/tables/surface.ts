@@ -7,7 +7,7 @@ import { BASIS_LENGTH, fillBasis } from "../numerics/quintic.js";
 import type { TableAxis, TableSheet } from "./table.js";
 
 /** Slots of the derivatives L_ij by ln rho and ln T: the natural order 00 10 01 20 11 02 30 21 12 03 22. */
-export const SURFACE_LENGTH = 11;
+const SURFACE_LENGTH = 11;
 
 /** A sheet made ready for look-up. */
 export interface Surface {
@@ -33,14 +33,14 @@ export interface Surface {
 }
 
 /** ln of the lower end, and blocks per unit of the logarithm. */
-export interface AxisScale {
+interface AxisScale {
   readonly start: number;
   readonly perUnit: number;
   readonly blocks: number;
 }
 
 /** The scale of an axis. */
-export function axisScale({ lowest, highest, blocks }: TableAxis): AxisScale {
+function axisScale({ lowest, highest, blocks }: TableAxis): AxisScale {
   return { start: Math.log(lowest), perUnit: blocks / Math.log(highest / lowest), blocks };
 }
 

@@ -9,6 +9,7 @@
  * boundary: no patch mixes phases. Contributions that are cheap and exact (photons) stay beside the table.
  */
 import type { Composition } from "../matter/composition.js";
+import type { Physics } from "../thermodynamics/contribution.js";
 
 /** One axis: equal steps of the natural logarithm. */
 export interface TableAxis {
@@ -62,6 +63,8 @@ export interface TableSource {
   readonly tabulated: readonly string[];
   /** Name of each contribution that stands beside the table, to be added. */
   readonly beside: readonly string[];
+  /** What the tabulated contributions say of themselves: models and options; empty where one of them says nothing. */
+  readonly physics: readonly Physics[];
   /** Where the physics holds, of each contribution that says so. */
   readonly validity: readonly string[];
   /** Version of this library that made it. */

@@ -73,6 +73,7 @@ function contributionOf(table: FreeEnergyTable, phase: SheetPhase | "equilibrium
     name: `table of ${table.source.tabulated.join(" + ")}`,
     domain,
     standsFor: table.source.tabulated,
+    ...(table.source.physics.length > 0 ? { physics: table.source.physics } : {}),
     excludes: table.source.tabulated,
     ...(perElectron ? { dependsOn: "electron density" as const } : {}),
     validity:

@@ -37,6 +37,14 @@ export interface PhasePair {
 /** What of the composition a free energy depends on where it is not the species one by one; see {@link Contribution.dependsOn}. */
 export type CompositionDependence = "none" | "electron density" | "ion density";
 
+/** A model of this library with its options, as plain data: what a certificate or the head of a file says about matter. */
+export interface Physics {
+  /** Name of the model, such as "Coulomb plasma". */
+  readonly model: string;
+  /** Its options, defaults filled in. */
+  readonly options: Readonly<Record<string, string | number | boolean>>;
+}
+
 /** One term of the free energy. */
 export interface Contribution {
   /** What it is, in words; unique within one equation of state. */
@@ -45,6 +53,11 @@ export interface Contribution {
   readonly domain: Domain;
   /** Where its physics holds and what is not in it, in a sentence or two: goes into every file and `state` output. */
   readonly validity?: string;
+  /**
+   * The formulas it stands for, as plain data: itself, or for an interpolation those it was made from. An independent
+   * reference is chosen by it (`certify`); leave out where there is none.
+   */
+  readonly physics?: readonly Physics[];
   /** True where it treats particles without interactions; a sum of such terms is called an ideal plasma. */
   readonly ideal?: boolean;
 

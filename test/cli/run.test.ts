@@ -586,7 +586,7 @@ describe("errors are one line, with a code for programs", () => {
 
   test.each([
     ["stat", 2, /^fermistate: command: given "stat"; allowed: perhaps state\?/],
-    ["x", 2, /one of state, grid, regime, compare, limiting-mass, demo, help/],
+    ["x", 2, /one of state, grid, regime, compare, certify, table, limiting-mass, demo, help/],
     ["help grdi", 2, /perhaps grid\?/],
     ["help grid state", 2, /one word/],
     [`state ${at} --densty 1`, 2, /given "--densty"; allowed: perhaps --density\?/],

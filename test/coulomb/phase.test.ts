@@ -302,6 +302,12 @@ describe("zero temperature", () => {
     expect(() => matter().state(1e9, 0, helium)).toThrow(code("outside-domain"));
     expect(matter({ phase: "crystal" }).state(1e9, 0, helium).crystalFraction).toBe(1);
   });
+
+  test("so is a classical gas of free neutrons beside a crystal", () => {
+    const neutronRich = composition({ n: 0.1, C12: 0.9 });
+    expect(() => matter().state(1e6, 0, neutronRich)).toThrow(code("outside-domain"));
+    expect(matter({ freeNeutrons: false }).state(1e6, 0, neutronRich).specificFreeEnergy).toBeGreaterThan(0);
+  });
 });
 
 describe("what is refused", () => {

@@ -90,6 +90,7 @@ export function inventedTable(
     source: {
       tabulated: ["ideal electrons and positrons", "ideal ions"],
       beside: phases === 1 ? [] : ["radiation"],
+      physics: [{ model: "invented", options: { strength: 0.1, colour: "blue", warm: true } }],
       validity: ["Invented numbers: there is no such matter, not even at 10 µK."],
       version: "0.1.0",
     },
