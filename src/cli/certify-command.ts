@@ -8,9 +8,10 @@ import { derivativeNames } from "../certify/reference-quantities.js";
 import { FermistateError } from "../errors.js";
 import { quantityNames } from "../thermodynamics/quantities.js";
 import { type Command, command } from "./command.js";
-import { matterOf, matterOptions } from "./matter.js";
+import { matterOptions } from "./matter.js";
 import { progressOn } from "./progress.js";
 import { number, oneOf, spanOrAxis, wordList } from "./readers.js";
+import { chosenMatter, tableOption } from "./table-file.js";
 
 /** Densities or temperatures: a span to sample, or an axis. */
 type Places = z.output<typeof spanOrAxis>;
@@ -29,6 +30,7 @@ export const certifyCommand: Command = command({
     },
     temperature: { value: "AXIS", help: "temperatures, K, written like the densities", read: spanOrAxis },
     ...matterOptions,
+    ...tableOption,
     points: {
       value: "NUMBER",
       help: `how many points of a region, ${defaultPoints} by default; one takes about half a second`,
@@ -71,7 +73,7 @@ export const certifyCommand: Command = command({
     "Errors are of arithmetic and implementation: both sides evaluate the same formulas, on independent ways. How true the " +
     "formulas are is a question for fermistate regime.",
   async run(options, io) {
-    const { equationOfState, matter } = matterOf(options);
+    const { equationOfState, matter } = await chosenMatter(options, io);
     const { density, temperature, points, seed, digits, quantities, format } = options;
     const shared = {
       ...(digits === undefined ? {} : { digits }),

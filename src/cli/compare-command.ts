@@ -9,11 +9,12 @@ import { comparisonText } from "../compare/text.js";
 import { FermistateError, isFermistateError } from "../errors.js";
 import { checkTargets } from "../files/target.js";
 import { type QuantityName, quantityNames } from "../thermodynamics/quantities.js";
-import { type Command, command } from "./command.js";
-import { type MatterChoice, matterOf, matterOptions } from "./matter.js";
+import { type Command, type CommandIo, command } from "./command.js";
+import { type MatterChoice, type matterOf, matterOptions } from "./matter.js";
 import { type WritableEntry, writeEntries } from "./output.js";
 import { progressOn } from "./progress.js";
 import { axis, flag, number, oneOf, path, quantityList, wordList } from "./readers.js";
+import { chosenMatter, tableOption } from "./table-file.js";
 
 const { composition, without, phase, "melting-coupling": melting } = matterOptions;
 
@@ -25,6 +26,7 @@ export const compareCommand: Command = command({
     density: { value: "AXIS", help: "baryon mass densities, g/cm^3; how to write an axis stands below", read: axis },
     temperature: { value: "AXIS", help: "temperatures, K", read: axis },
     ...matterOptions,
+    ...tableOption,
     "against-composition": {
       value: composition.value,
       help: "composition of the second; by default that of the first",
@@ -41,6 +43,7 @@ export const compareCommand: Command = command({
       help: "coupling at which the crystal of the second melts",
       read: melting.read,
     },
+    "against-table": { value: "FILE", help: "the second is this table", read: z.optional(path) },
     quantities: {
       value: "NAME,...",
       help: "what to compare; by default pressure, energy, entropy and the first derivatives",
@@ -98,8 +101,8 @@ export const compareCommand: Command = command({
         allowed: "only together with --out PATH",
       });
     }
-    const first = matterOf(options);
-    const second = secondOf(options);
+    const first = await chosenMatter(options, io);
+    const second = await secondOf(options, io);
     const base = (out ?? "").replace(/\.(txt|json|csv|svg)$/i, "");
     const entries = entriesOf(base, format, map);
     const files = { overwrite: options.overwrite, createFolders: options["create-folders"] };
@@ -162,22 +165,26 @@ function entriesOf(
 }
 
 /** The second choice; its errors bear the names it has on the command line. */
-function secondOf(
+async function secondOf(
   options: MatterChoice & {
+    readonly "against-table": string | undefined;
     readonly "against-composition": MatterChoice["composition"] | undefined;
     readonly "against-without": MatterChoice["without"];
     readonly "against-phase": MatterChoice["phase"];
     readonly "against-melting-coupling": MatterChoice["melting-coupling"];
   },
-): ReturnType<typeof matterOf> {
+  io: CommandIo,
+): Promise<ReturnType<typeof matterOf>> {
+  const choice = {
+    table: options["against-table"],
+    composition: options["against-composition"] ?? options.composition,
+    normalise: options.normalise,
+    without: options["against-without"],
+    phase: options["against-phase"],
+    "melting-coupling": options["against-melting-coupling"],
+  };
   try {
-    return matterOf({
-      composition: options["against-composition"] ?? options.composition,
-      normalise: options.normalise,
-      without: options["against-without"],
-      phase: options["against-phase"],
-      "melting-coupling": options["against-melting-coupling"],
-    });
+    return await chosenMatter(choice, io, "--against-table");
   } catch (error) {
     if (!isFermistateError(error)) throw error;
     const { code, argument, given, allowed } = error;

@@ -9,11 +9,12 @@ import { regime } from "../regime/regime.js";
 import { parquetWriter } from "../table-files/parquet.js";
 import { quantityNames } from "../thermodynamics/quantities.js";
 import { type Command, command } from "./command.js";
-import { matterOf, matterOptions } from "./matter.js";
+import { matterOptions } from "./matter.js";
 import { checkOutput, type Output, writeOutput } from "./output.js";
 import { table, timeText } from "./print.js";
 import { progressOn } from "./progress.js";
 import { axis, flag, number, oneOf, path, quantityList, wordList, words } from "./readers.js";
+import { chosenMatter, tableOption } from "./table-file.js";
 
 export const gridCommand: Command = command({
   name: "grid",
@@ -23,6 +24,7 @@ export const gridCommand: Command = command({
     density: { value: "AXIS", help: "baryon mass densities, g/cm^3; how to write an axis stands below", read: axis },
     temperature: { value: "AXIS", help: "temperatures, K", read: axis },
     ...matterOptions,
+    ...tableOption,
     quantities: {
       value: "NAME,...",
       help:
@@ -85,7 +87,7 @@ export const gridCommand: Command = command({
     const { out, chart = [], format } = options;
     if (out === undefined && chart.length > 0) throw needsOut("--chart");
     if (out === undefined && ["both", "npz", "parquet"].includes(format)) throw needsOut(`--format ${format}`);
-    const { equationOfState, matter } = matterOf(options);
+    const { equationOfState, matter } = await chosenMatter(options, io);
     const outputOptions = { overwrite: options.overwrite, createFolders: options["create-folders"] };
     const output: Output = {
       base: (out ?? "").replace(/\.(csv|json|npz|parquet|svg)$/i, ""),

@@ -7,10 +7,11 @@ import type { EquationOfState, State } from "../thermodynamics/equation-of-state
 import { type QuantityName, quantities, quantityNames } from "../thermodynamics/quantities.js";
 import { libraryVersion } from "../version.js";
 import { type Command, command } from "./command.js";
-import { matterOf, matterOptions } from "./matter.js";
+import { matterOptions } from "./matter.js";
 import { numberText, percentText, shortText, table, wrapped } from "./print.js";
 import { flag, number } from "./readers.js";
 import { findingsText, kindText, regimeData } from "./regime-text.js";
+import { chosenMatter, tableOption } from "./table-file.js";
 
 export const stateCommand: Command = command({
   name: "state",
@@ -20,6 +21,7 @@ export const stateCommand: Command = command({
     density: { value: "G/CM3", help: "baryon mass density, g/cm^3", read: number },
     temperature: { value: "KELVIN", help: "temperature, K; 0 is legal in crystals and without ions", read: number },
     ...matterOptions,
+    ...tableOption,
     json: { help: "print JSON with all digits instead of tables", read: flag },
   },
   examples: [
@@ -31,7 +33,7 @@ export const stateCommand: Command = command({
   remarks: "Tables show ten digits. Meanings of the quantities: fermistate help quantities.",
   async run(options, io) {
     const { density, temperature } = options;
-    const { equationOfState, matter } = matterOf(options);
+    const { equationOfState, matter } = await chosenMatter(options, io);
     const parts = breakdown(equationOfState, density, temperature, matter);
     const kind = regimeOfState(regime, equationOfState, parts.state);
     io.out(options.json ? stateJson(equationOfState, parts, kind) : stateText(equationOfState, parts, kind));

@@ -1,14 +1,13 @@
 /** `fermistate table`: a table of the free energy, built in a folder that survives a kill, written with its certificate. */
-import { readFile, rm } from "node:fs/promises";
-import { resolve } from "node:path";
+import { rm } from "node:fs/promises";
+import { basename, dirname, join, resolve } from "node:path";
 import * as z from "zod/mini";
 import { FermistateError } from "../errors.js";
-import { reasonOf } from "../files/refusal.js";
 import { checkTargets } from "../files/target.js";
 import { assembleFolders, buildInFolder, type FolderResult } from "../table-build/folder.js";
 import type { TableRequest } from "../table-build/request.js";
-import { tableCsvNames, tableFromCsv, tableToCsv } from "../table-files/csv.js";
-import { tableFromHdf5, tableToHdf5 } from "../table-files/hdf5.js";
+import { tableCsvNames, tableToCsv } from "../table-files/csv.js";
+import { tableToHdf5 } from "../table-files/hdf5.js";
 import type { FreeEnergyTable } from "../tables/table.js";
 import { type Command, type CommandIo, command } from "./command.js";
 import { interruptible } from "./interrupt.js";
@@ -17,13 +16,14 @@ import { type WritableEntry, writeEntries } from "./output.js";
 import { timeText } from "./print.js";
 import { stripsOn } from "./progress.js";
 import { flag, interval, number, oneOf, path, share, textList } from "./readers.js";
+import { readTable } from "./table-file.js";
 import { tableText } from "./table-text.js";
 
 const { composition } = matterOptions;
 
 export const tableCommand: Command = command({
   name: "table",
-  summary: "a table of the free energy with its measured error: built, merged, shown",
+  summary: "tables of the free energy, with their measured error",
   usage: "table --density LOW..HIGH --temperature LOW..HIGH --composition LABEL=X,... --out PATH",
   options: {
     density: { value: "LOW..HIGH", help: "baryon mass densities, g/cm^3", read: z.optional(interval) },
@@ -95,7 +95,7 @@ export const tableCommand: Command = command({
     "--overwrite.",
   async run(options, io) {
     if (options.show !== undefined) {
-      io.out(tableText(await readTable(resolve(io.cwd, options.show))));
+      io.out(tableText(await readTable(resolve(io.cwd, options.show), "--show")));
       return;
     }
     const base = options.out?.replace(/\.(h5|csv)$/i, "");
@@ -178,12 +178,13 @@ interface TableFile {
 /** The files of a table. */
 function filesOf(base: string, format: "hdf5" | "csv"): TableFile[] {
   if (format === "hdf5") return [{ path: `${base}.h5`, about: "the table, with its certificate (HDF5)" }];
-  const names = tableCsvNames(base);
+  const names = tableCsvNames(basename(base));
+  const beside = (name: string): string => join(dirname(base), name);
   return [
-    { path: names.metadata, about: "what the columns mean (CSV on the Web), certificate" },
-    { path: names.nodes, about: "nodes of the patches" },
-    { path: names.blocks, about: "blocks of the mesh" },
-    { path: names.cold, about: "the cold curve" },
+    { path: beside(names.metadata), about: "what the columns mean (CSV on the Web), certificate" },
+    { path: beside(names.nodes), about: "nodes of the patches" },
+    { path: beside(names.blocks), about: "blocks of the mesh" },
+    { path: beside(names.cold), about: "the cold curve" },
   ];
 }
 
@@ -198,39 +199,13 @@ async function writeTable(
   const paths = filesOf(base, format);
   if (format === "hdf5") entries.push({ ...paths[0]!, text: await tableToHdf5(table) });
   else {
-    const texts = await tableToCsv(table, base.split(/[/\\]/).at(-1)!);
+    const texts = await tableToCsv(table, basename(base));
     for (const [i, name] of (["metadata", "nodes", "blocks", "cold"] as const).entries()) {
       entries.push({ ...paths[i]!, text: texts[name] });
     }
   }
   const list = await writeEntries(entries, io.cwd, files);
   io.out(`${list}\n\n${tableText(table)}`);
-}
-
-/** Reads a table file by its ending. */
-async function readTable(file: string): Promise<FreeEnergyTable> {
-  const bytes = async (name: string): Promise<Uint8Array> => {
-    try {
-      return new Uint8Array(await readFile(name));
-    } catch (error) {
-      const allowed = "a file that can be read";
-      throw new FermistateError("invalid-file", { argument: "--show", given: `${name}: ${reasonOf(error)}`, allowed });
-    }
-  };
-  if (/\.h5$/i.test(file)) return tableFromHdf5(await bytes(file));
-  const ending = tableCsvNames("").metadata;
-  if (!file.endsWith(ending)) {
-    const allowed = `a file whose name ends in .h5 or ${ending}`;
-    throw new FermistateError("invalid-option", { argument: "--show", given: file, allowed });
-  }
-  const names = tableCsvNames(file.slice(0, -ending.length));
-  const text = async (name: string): Promise<string> => new TextDecoder().decode(await bytes(name));
-  return tableFromCsv({
-    metadata: await text(names.metadata),
-    nodes: await text(names.nodes),
-    blocks: await text(names.blocks),
-    cold: await text(names.cold),
-  });
 }
 
 function missing(option: string): FermistateError {

@@ -28,6 +28,9 @@ export interface TableCsv {
   readonly cold: string;
 }
 
+/** What the name of the description of a table in CSV ends in. */
+export const metadataEnding = "-metadata.json";
+
 /** The names of the files of {@link tableToCsv}: the description names the others. */
 export function tableCsvNames(name: string): { readonly [File in keyof TableCsv]: string } {
   if (typeof name !== "string" || !/^[^/\\\p{Cc}]+$/u.test(name)) {
@@ -35,7 +38,7 @@ export function tableCsvNames(name: string): { readonly [File in keyof TableCsv]
     throw new FermistateError("invalid-option", { argument: "name", given: name, allowed });
   }
   return {
-    metadata: `${name}-metadata.json`,
+    metadata: `${name}${metadataEnding}`,
     nodes: `${name}-nodes.csv`,
     blocks: `${name}-blocks.csv`,
     cold: `${name}-cold.csv`,

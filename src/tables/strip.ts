@@ -42,8 +42,8 @@ interface Block {
   readonly errors: readonly [density: number, temperature: number, middle: number];
 }
 
-/** Coarsest cells of a block. */
-const firstLevels: readonly [number, number] = [2, 2];
+/** Level to begin with, by accuracy: enough cells for a fair sample of what is wrong. */
+const firstLevel = (accuracy: number): number => (accuracy < 1e-4 ? 2 : 1);
 /** The finished table is measured elsewhere than the cells were: strive for this part of the accuracy. */
 const margin = 0.5;
 
@@ -125,7 +125,8 @@ function refine(
   q: number,
   column: (i: number) => Column,
 ): Block | undefined {
-  let [m, n] = [Math.min(firstLevels[0], plan.finestLevel), Math.min(firstLevels[1], plan.finestLevel)];
+  let m = Math.min(firstLevel(plan.accuracy), plan.finestLevel);
+  let n = m;
   try {
     let best = fill(plan, sheet, index, q, column, m, n);
     while (Math.max(...best.errors) > 1) {
