@@ -46,7 +46,7 @@ const limits: Record<string, number> = {
   tables: 90_000,
   "table-build": 90_000,
   "table-files": 53_500, // most of it AME2020 for compositions, and zod; h5wasm and hyparquet-writer are loaded when needed
-  structure: 70_000, // limitingMassLadder brings the equation of state and AME2020; a program without it does not pay
+  structure: 78_000, // limitingMassLadder brings the equation of state and AME2020; a program without it does not pay
 };
 
 /** What is not bundled: modules of Node, and packages that users may have or not. */
