@@ -5,6 +5,18 @@
  */
 export { FermistateError, isFermistateError } from "../errors.js";
 export { assembleTable, buildTable } from "./build.js";
+export type { StateColumns } from "./foreign/columns.js";
+export { type ColumnsOptions, type ColumnsResult, equationOfStateFromColumns } from "./foreign/from-columns.js";
+export type {
+  ColumnsDeviations,
+  ColumnsReport,
+  ColumnsResiduals,
+  ColumnsStability,
+  ErrorSpread,
+  Places,
+  ResidualMap,
+} from "./foreign/report.js";
+export { columnsReportText } from "./foreign/report-text.js";
 export { type TableOptions, type TablePlan, tablePlan } from "./plan.js";
 export { buildStrip, type SheetStrip, type Strip } from "./strip.js";
 export {

@@ -70,7 +70,8 @@ export function sortedRows(columns: StateColumns): SortedRows {
     let last = -1;
     for (const row of rows) {
       if (last >= 0 && kelvin[row]! - kelvin[last]! <= sameValue * kelvin[last]!) {
-        if (p[row] !== p[last] || e[row] !== e[last] || s?.[row] !== s?.[last]) refuseTwin(row, last, one, kelvin[row]!);
+        if (p[row] !== p[last] || e[row] !== e[last] || s?.[row] !== s?.[last])
+          refuseTwin(row, last, one, kelvin[row]!);
         duplicates += 1;
         continue;
       }

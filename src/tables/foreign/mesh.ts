@@ -35,7 +35,8 @@ export function meshOf(rows: SortedRows): StateMesh {
   const { starts } = rows;
   const count = starts.length - 1;
   const longest = Math.max(...lengths(starts));
-  if (count < fewestNodes) refuse(`${count} densities`, `at least ${fewestNodes} densities and ${fewestNodes} temperatures`);
+  if (count < fewestNodes)
+    refuse(`${count} densities`, `at least ${fewestNodes} densities and ${fewestNodes} temperatures`);
   const short = lengths(starts).findIndex((length) => length < fewestNodes);
   if (short >= 0) {
     const given = `${starts[short + 1]! - starts[short]!} temperatures at ${rows.density[starts[short]!]} g/cm^3`;
