@@ -37,7 +37,10 @@ export function entropyShift(entropy: Float64Array): number {
   return least > 0 ? 0 : shiftShare * (most - least) - least || 1;
 }
 
-/** The fit. `entropy` is that of the mesh or was found from its other columns; `shift` makes it positive. */
+/**
+ * The fit. `entropy` is that of the mesh or was found from its other columns; `shift` makes it positive. A found one is no better than
+ * pressure and energy are, so T s counts with the error of P/rho too.
+ */
 export function fitColumns(mesh: StateMesh, entropy: Float64Array, shift: number): ColumnFit {
   const { u, v, temperature, specificPressure, energy } = mesh;
   const [m, n] = [u.length, v.length];
@@ -60,7 +63,8 @@ export function fitColumns(mesh: StateMesh, entropy: Float64Array, shift: number
   for (let i = 0; i + 1 < m; i++) {
     for (let j = 0; j < n; j++) rises[i * n + j] = cellIntegral(alongU, i, logPressure, j, n, Math.exp);
   }
-  const correction = closing(mismatchOf(mesh, heat, path, rises));
+  const scale = mesh.entropy ? heat : heat.map((x, k) => x + specificPressure[k]!);
+  const correction = closing(mismatchOf(mesh, scale, path, rises));
 
   const logThermal = new Float64Array(m * n);
   const exponents = new Int32Array(m * n);
@@ -119,7 +123,7 @@ export function fitColumns(mesh: StateMesh, entropy: Float64Array, shift: number
 
 function mismatchOf(
   { u, v }: StateMesh,
-  heat: Float64Array,
+  scale: Float64Array,
   path: Float64Array,
   rises: Float64Array,
 ): Parameters<typeof closing>[0] {
@@ -135,7 +139,7 @@ function mismatchOf(
   const isochoreScale = new Float64Array(m * (n - 1));
   for (let i = 0; i < m; i++) {
     for (let j = 0; j + 1 < n; j++) {
-      isochoreScale[i * (n - 1) + j] = 0.5 * (v[j + 1]! - v[j]!) * (heat[i * n + j]! + heat[i * n + j + 1]!);
+      isochoreScale[i * (n - 1) + j] = 0.5 * (v[j + 1]! - v[j]!) * (scale[i * n + j]! + scale[i * n + j + 1]!);
     }
   }
   return { densities: m, temperatures: n, open, isothermScale: rises, isochoreScale };

@@ -62,7 +62,7 @@ const known: readonly (keyof ColumnsOptions)[] = ["composition", "name", "beside
  *
  * Each density has the same temperatures, or at least five of its own: then all are resampled along ln T to common ones.
  *
- * @param columns - one row a state, in any order; at least 5 densities of 5 temperatures, at most 4 million rows
+ * @param columns - one row a state, in any order; at least 5 densities of 5 temperatures, at most 1 million rows
  * @throws `not-a-number`, `out-of-range` (with the row), `length-mismatch`, `too-large`, `invalid-composition`; `invalid-option` for too
  * few nodes, rows that form no mesh, two rows of one state with different values; `unstable` where the fit is not that of stable
  * matter, or energies have too few digits to hold the heat

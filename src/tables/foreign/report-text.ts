@@ -56,8 +56,8 @@ function residualLine(map: ResidualMap): string {
   const { resolution } = map;
   const verdict =
     map.median > 3 * resolution.median
-      ? "more than the distance of the nodes explains: the columns themselves disagree"
-      : "no more than the distance of the nodes, or the digits of the columns, explain";
+      ? "more than the distance of the nodes explains: the columns, or their digits, disagree"
+      : "no more than the distance of the nodes explains";
   return (
     `  ${map.relation}: ${spread(map)}. With coarser derivatives it changes by ${short(resolution.percentile99)} ` +
     `for 99 %, ${short(resolution.median)} for half: ${verdict}.`
