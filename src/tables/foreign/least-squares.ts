@@ -4,7 +4,7 @@
  *
  * Unknown are corrections y of the differences along isochores and z of those along the lowest isotherm, each in units of its own
  * error; what they leave of the other isotherms, r, counts too: |y|^2 + |z|^2 + |r|^2 least, by conjugate gradients on the normal
- * equations (Hestenes & Stiefel 1952, J. Res. Natl. Bur. Stand. 49, 409). In these unknowns degenerate matter, whose T s is
+ * equations scaled by their diagonal (Hestenes & Stiefel 1952, J. Res. Natl. Bur. Stand. 49, 409). In these unknowns degenerate matter, whose T s is
  * a millionth of P/rho, is as easy as any. Columns that close to rounding stay as they are.
  */
 
@@ -21,9 +21,11 @@ export interface Mismatch {
   readonly isochoreScale: Float64Array;
 }
 
-/** Iterations at most, and the fall of the gradient at which they end: each one fits better, none is needed for consistency. */
-const mostIterations = 300;
+/** Iterations at most: each one fits better, none is needed for consistency. */
+const mostIterations = 1000;
+/** Fall of the gradient at which they end, and its size (squared, in units of relative errors) below which none are worth it. */
 const tolerance = 1e-8;
+const negligible = 1e-24;
 
 /** Corrections of F, erg/g, by density and temperature, relative to the node of lowest density and temperature. */
 export function closing(mismatch: Mismatch): Float64Array {
@@ -79,10 +81,12 @@ export function closing(mismatch: Mismatch): Float64Array {
   fillResidual(1);
   fillNormal(x, gradient);
   for (let k = 0; k < size; k++) gradient[k] = -gradient[k]!;
-  const direction = gradient.slice();
+  const diagonal = diagonalOf(mismatch);
+  const scaled = gradient.map((g, k) => g / diagonal[k]!);
+  const direction = scaled.slice();
   const image = new Float64Array(size);
-  let norm = dot(gradient, gradient);
-  const goal = norm * tolerance * tolerance;
+  let norm = dot(gradient, scaled);
+  const goal = Math.max(norm * tolerance * tolerance, negligible);
   for (let round = 0; round < mostIterations && norm > goal; round++) {
     fillPotential(direction);
     fillResidual(0);
@@ -91,14 +95,34 @@ export function closing(mismatch: Mismatch): Float64Array {
     for (let k = 0; k < size; k++) {
       x[k]! += step * direction[k]!;
       gradient[k]! -= step * image[k]!;
+      scaled[k] = gradient[k]! / diagonal[k]!;
     }
-    const next = dot(gradient, gradient);
+    const next = dot(gradient, scaled);
     const share = next / norm;
-    for (let k = 0; k < size; k++) direction[k] = gradient[k]! + share * direction[k]!;
+    for (let k = 0; k < size; k++) direction[k] = scaled[k]! + share * direction[k]!;
     norm = next;
   }
   fillPotential(x);
   return potential;
+}
+
+/** The diagonal of the normal equations: how much of the upper isotherms each unknown moves. */
+function diagonalOf({ densities: m, temperatures: n, isothermScale, isochoreScale }: Mismatch): Float64Array {
+  const out = new Float64Array(m * (n - 1) + m - 1).fill(1);
+  const stiffness = (i: number, j: number): number =>
+    i >= 0 && i + 1 < m ? 1 / (isothermScale[i * n + j]! * isothermScale[i * n + j]!) : 0;
+  for (let i = 0; i < m; i++) {
+    let above = 0;
+    let across = 0;
+    for (let j = n - 1; j >= 1; j--) {
+      above += stiffness(i - 1, j) + stiffness(i, j);
+      across += stiffness(i, j);
+      const scale = isochoreScale[i * (n - 1) + j - 1]!;
+      out[i * (n - 1) + j - 1]! += scale * scale * above;
+    }
+    if (i + 1 < m) out[m * (n - 1) + i]! += isothermScale[i * n]! * isothermScale[i * n]! * across;
+  }
+  return out;
 }
 
 function dot(a: Float64Array, b: Float64Array): number {
