@@ -30,8 +30,9 @@ export function cellAxis(nodes: Float64Array): CellAxis {
   return { nodes, scale, buckets };
 }
 
-/** The cell of `axis` that holds `x`; the first or last one outside. */
-export function cellOf({ nodes, scale, buckets }: CellAxis, x: number): number {
+/** The cell of `axis` that holds `at[slot]`; the first or last one outside. Numbers stay in records, so that none is boxed. */
+export function cellOf({ nodes, scale, buckets }: CellAxis, at: Float64Array, slot: number): number {
+  const x = at[slot]!;
   const k = ((x - scale[0]!) * scale[1]!) | 0;
   let cell = buckets[k < 0 ? 0 : k < buckets.length ? k : buckets.length - 1]!;
   const last = nodes.length - 2;
@@ -80,16 +81,10 @@ export function columnSurface(fit: ColumnFit, u: Float64Array, v: Float64Array):
 export function fillColumnSurface(surface: ColumnSurface, order: number): void {
   const { u, v, at, out, basisU: bu, basisV: bv, rows } = surface;
   const { nodes, exponents } = surface.fit;
-  const i = cellOf(u, at[0]!);
-  const j = cellOf(v, at[1]!);
-  const hu = u.nodes[i + 1]! - u.nodes[i]!;
-  const hv = v.nodes[j + 1]! - v.nodes[j]!;
-  bu[0] = (at[0]! - u.nodes[i]!) / hu;
-  bv[0] = (at[1]! - v.nodes[j]!) / hv;
-  fillBasis(bu);
-  fillBasis(bv);
-  scaleBasis(bu, hu);
-  scaleBasis(bv, hv);
+  const i = cellOf(u, at, 0);
+  const j = cellOf(v, at, 1);
+  fillCellBasis(u, i, at, 0, bu);
+  fillCellBasis(v, j, at, 1, bv);
   const n = v.nodes.length;
   const node = i * n + j;
   const base = exponents[node]!;
@@ -113,18 +108,18 @@ export function fillColumnSurface(surface: ColumnSurface, order: number): void {
         bv[b + 5]! * nodes[k + 11]!;
     }
   }
-  out[0] = rows[0]! + across(bu, 0, rows, 0);
-  out[1] = across(bu, 6, rows, 0);
-  out[2] = rows[6]! + across(bu, 0, rows, 6);
-  out[3] = across(bu, 12, rows, 0);
-  out[4] = across(bu, 6, rows, 6);
-  out[5] = rows[12]! + across(bu, 0, rows, 12);
+  fillAcross(bu, 0, rows, 0, out, 0);
+  fillAcross(bu, 6, rows, 0, out, 1);
+  fillAcross(bu, 0, rows, 6, out, 2);
+  fillAcross(bu, 12, rows, 0, out, 3);
+  fillAcross(bu, 6, rows, 6, out, 4);
+  fillAcross(bu, 0, rows, 12, out, 5);
   if (order === 3) {
-    out[6] = across(bu, 18, rows, 0);
-    out[7] = across(bu, 12, rows, 6);
-    out[8] = across(bu, 6, rows, 12);
-    out[9] = rows[18]! + across(bu, 0, rows, 18);
-    out[10] = across(bu, 12, rows, 12);
+    fillAcross(bu, 18, rows, 0, out, 6);
+    fillAcross(bu, 12, rows, 6, out, 7);
+    fillAcross(bu, 6, rows, 12, out, 8);
+    fillAcross(bu, 0, rows, 18, out, 9);
+    fillAcross(bu, 12, rows, 12, out, 10);
   }
   const f = surface.fit.cold;
   const c = 3 * i;
@@ -141,27 +136,40 @@ export function fillColumnSurface(surface: ColumnSurface, order: number): void {
   }
 }
 
-/** The basis of a cell of length `h`: slopes and curvatures at its ends are per unit of the axis, and so are derivatives. */
-function scaleBasis(basis: Float64Array, h: number): void {
+/** The basis in a cell, with slopes and curvatures at its ends and derivatives per unit of the axis. */
+function fillCellBasis({ nodes }: CellAxis, cell: number, at: Float64Array, slot: number, basis: Float64Array): void {
+  const h = nodes[cell + 1]! - nodes[cell]!;
   const per = 1 / h;
+  basis[0] = (at[slot]! - nodes[cell]!) * per;
+  fillBasis(basis);
   let derivative = 1;
   for (let b = 0; b < 24; b += 6) {
+    const first = derivative * h;
+    const second = first * h;
     basis[b + 3]! *= derivative;
-    basis[b + 1]! *= derivative * h;
-    basis[b + 4]! *= derivative * h;
-    basis[b + 2]! *= derivative * h * h;
-    basis[b + 5]! *= derivative * h * h;
+    basis[b + 1]! *= first;
+    basis[b + 4]! *= first;
+    basis[b + 2]! *= second;
+    basis[b + 5]! *= second;
     derivative *= per;
   }
 }
 
-/** Sum over the six rows of one derivative of the basis, but for the value at the lower end. */
-function across(basis: Float64Array, b: number, rows: Float64Array, r: number): number {
-  return (
-    basis[b + 3]! * (rows[r + 3]! - rows[r]!) +
+/** `out[slot]`: the sum over the six rows of one derivative of the basis. */
+function fillAcross(
+  basis: Float64Array,
+  b: number,
+  rows: Float64Array,
+  r: number,
+  out: Float64Array,
+  slot: number,
+): void {
+  const low = rows[r]!;
+  out[slot] =
+    (b === 0 ? low : 0) +
+    basis[b + 3]! * (rows[r + 3]! - low) +
     basis[b + 1]! * rows[r + 1]! +
     basis[b + 2]! * rows[r + 2]! +
     basis[b + 4]! * rows[r + 4]! +
-    basis[b + 5]! * rows[r + 5]!
-  );
+    basis[b + 5]! * rows[r + 5]!;
 }
