@@ -72,18 +72,20 @@ const known: readonly (keyof ColumnsOptions)[] = ["composition", "name", "beside
  * import { equationOfStateFromColumns } from "fermistate/tables";
  * const helium = composition({ He4: 1 });
  * const matter = whiteDwarfMatter();
- * const rows = [1, 2, 3, 4, 5, 6, 7].flatMap((i) => [1, 2, 3, 4, 5, 6].map((j) => matter.state(10 ** (4 + i / 4), 10 ** (7 + j / 6), helium)));
+ * const states = [0, 1, 2, 3, 4, 5, 6, 7].flatMap((i) =>
+ *   [0, 1, 2, 3, 4, 5].map((j) => matter.state(10 ** (4 + i / 4), 10 ** (7 + j / 5), helium)),
+ * );
  * const { equationOfState } = equationOfStateFromColumns(
  *   {
- *     density: rows.map((row) => row.density),
- *     temperature: rows.map((row) => row.temperature),
- *     pressure: rows.map((row) => row.pressure),
- *     specificEnergy: rows.map((row) => row.specificEnergy),
- *     specificEntropy: rows.map((row) => row.specificEntropy),
+ *     density: states.map((state) => state.density),
+ *     temperature: states.map((state) => state.temperature),
+ *     pressure: states.map((state) => state.pressure),
+ *     specificEnergy: states.map((state) => state.specificEnergy),
+ *     specificEntropy: states.map((state) => state.specificEntropy),
  *   },
  *   { composition: helium },
  * );
- * equationOfState.state(1e5, 3e7, helium).pressure; // => 4.8e20
+ * equationOfState.state(1e5, 3e7, helium).pressure; // => 7.129e20
  * ```
  */
 export function equationOfStateFromColumns(columns: StateColumns, options: ColumnsOptions): ColumnsResult {
