@@ -18,7 +18,7 @@ export interface Row {
 const particles = 3e23;
 const perParticle = 1.380649e-16 * particles;
 /** a, from h = 6.62607015e-27 erg s and c = 2.99792458e10 cm/s. */
-export const photons = (8 * Math.PI ** 5 * 1.380649e-16 ** 4) / (15 * 6.62607015e-27 ** 3 * 2.99792458e10 ** 3);
+const photons = (8 * Math.PI ** 5 * 1.380649e-16 ** 4) / (15 * 6.62607015e-27 ** 3 * 2.99792458e10 ** 3);
 
 /** The closed form, with all that a test compares. `light` 0 leaves the photons out. */
 export function idealGas(rho: number, t: number, light: number = 1, entropy: number = 1e9) {

@@ -29,7 +29,7 @@ export interface SortedRows {
 }
 
 /** Rows taken at most: fitting so many takes a minute. */
-export const mostRows = 1_000_000;
+const mostRows = 1_000_000;
 /** Densities and temperatures needed at least. */
 export const fewestNodes = 5;
 /** Values of an axis closer than this, relative, are one: what is lost when logarithms are stored. */

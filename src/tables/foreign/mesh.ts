@@ -34,7 +34,7 @@ const resamplingWidth = 6;
 export function meshOf(rows: SortedRows): StateMesh {
   const { starts } = rows;
   const count = starts.length - 1;
-  const longest = Math.max(...lengths(starts));
+  const longest = lengths(starts).reduce((most, length) => Math.max(most, length), 0);
   if (count < fewestNodes)
     refuse(`${count} densities`, `at least ${fewestNodes} densities and ${fewestNodes} temperatures`);
   const short = lengths(starts).findIndex((length) => length < fewestNodes);

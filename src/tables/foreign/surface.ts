@@ -4,7 +4,7 @@ import { SURFACE_LENGTH } from "../surface.js";
 import type { ColumnFit } from "./fit.js";
 
 /** An axis made ready for look-up. */
-export interface CellAxis {
+interface CellAxis {
   readonly nodes: Float64Array;
   /** Lowest node and buckets per unit of the logarithm. */
   readonly scale: Float64Array;
@@ -16,7 +16,7 @@ export interface CellAxis {
 const fineness = 2;
 
 /** Makes an axis ready. */
-export function cellAxis(nodes: Float64Array): CellAxis {
+function cellAxis(nodes: Float64Array): CellAxis {
   const cells = nodes.length - 1;
   const count = fineness * cells;
   const scale = Float64Array.of(nodes[0]!, count / (nodes[cells]! - nodes[0]!));
@@ -31,7 +31,7 @@ export function cellAxis(nodes: Float64Array): CellAxis {
 }
 
 /** The cell of `axis` that holds `at[slot]`; the first or last one outside. Numbers stay in records, so that none is boxed. */
-export function cellOf({ nodes, scale, buckets }: CellAxis, at: Float64Array, slot: number): number {
+function cellOf({ nodes, scale, buckets }: CellAxis, at: Float64Array, slot: number): number {
   const x = at[slot]!;
   const k = ((x - scale[0]!) * scale[1]!) | 0;
   let cell = buckets[k < 0 ? 0 : k < buckets.length ? k : buckets.length - 1]!;
