@@ -54,10 +54,11 @@ const known: readonly (keyof ColumnsOptions)[] = ["composition", "name", "beside
  * how inconsistent they are and how far the equation of state is from them.
  *
  * The columns fix one free energy by pressure and entropy, in the sense of least squares with one relative error for P and T s. So
- * P = rho^2 dF/drho, s = -dF/dT and all Maxwell relations hold to rounding, between nodes too. Columns that agree with each other are
- * honoured: entropy exactly at the nodes, pressure exactly along the lowest isotherm and elsewhere up to the error of interpolation.
- * Columns that disagree are met halfway. Energy fixes F at the node of lowest density and temperature alone and follows elsewhere; in
- * place of a missing entropy it counts everywhere. Interpolated are the logarithms of heat and of what it takes from F, on quintic
+ * P = rho^2 dF/drho, s = -dF/dT and all Maxwell relations hold to rounding, between nodes too. No column is honoured to the last digit
+ * at all nodes: columns that agree with each other are, up to the sixth-order error of integrating T s and P over a cell (the report
+ * has the measured figures; along the lowest isotherm P keeps its digits best); columns that disagree are met halfway. Energy fixes F at
+ * the node of lowest density and temperature alone and follows elsewhere; in place of a missing entropy it counts everywhere.
+ * Interpolated are the energy on the lowest isotherm and the logarithm of what heat takes from F since, on quintic
  * Hermite cells of the given mesh, which may be unequal.
  *
  * Each density has the same temperatures, or at least five of its own: then all are resampled along ln T to common ones.
