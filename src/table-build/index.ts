@@ -4,10 +4,22 @@
  * @packageDocumentation
  */
 export { FermistateError, isFermistateError } from "../errors.js";
-export type { MeanNucleus, NucleonFractions } from "../matter/composition.js";
+export type { Composition, MeanNucleus, NucleonFractions } from "../matter/composition.js";
 export type { MatterModule, MatterSource, WhiteDwarfMatterSource } from "../parallel/matter-source.js";
 export type { TableOptions } from "../tables/plan.js";
-export type { FreeEnergyTable } from "../tables/table.js";
+export type {
+  CertifiedError,
+  CertifiedQuantity,
+  ColdCurve,
+  FreeEnergyTable,
+  FreezingLine,
+  SheetPhase,
+  TableAxis,
+  TableCertificate,
+  TableSheet,
+  TableSource,
+} from "../tables/table.js";
+export type { Physics } from "../thermodynamics/contribution.js";
 export {
   assembleFolders,
   buildInFolder,

@@ -124,7 +124,8 @@ function accept(look: TableLookUp, composition: Composition): void {
   look.last = composition;
 }
 
-function isSame(a: Composition, b: Composition): boolean {
+/** True where two compositions are made of the same species in the same amounts. */
+export function isSame(a: Composition, b: Composition): boolean {
   return (
     a.species.length === b.species.length &&
     a.species.every((one, i) => {

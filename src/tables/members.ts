@@ -21,7 +21,12 @@ import type { ColdLookUp } from "./cold.js";
 import type { Surface } from "./surface.js";
 
 /** Adds the members of F_0 - G to `members`. */
-export function addTableMembers(cold: ColdLookUp, surface: Surface, order: number, members: Float64Array): void {
+export function addTableMembers(
+  cold: Pick<ColdLookUp, "out">,
+  surface: Pick<Surface, "out" | "share" | "exponent">,
+  order: number,
+  members: Float64Array,
+): void {
   const { out } = surface;
   const share = surface.share[0]!;
   const g = share * Math.exp(out[0]!) * powersOfTwo[surface.exponent[0]! + powerOffset]!;

@@ -1,0 +1,108 @@
+/** What is said about columns: how they hang together, and how far the consistent free energy is from each of them. */
+
+/** Places of a mesh, as plain columns. */
+export interface Places {
+  /** g/cm^3. */
+  readonly density: Float64Array;
+  /** K. */
+  readonly temperature: Float64Array;
+}
+
+/** How large relative errors are. */
+export interface ErrorSpread {
+  /** Largest one. */
+  readonly max: number;
+  /** 99 % are not above. */
+  readonly percentile99: number;
+  /** Half of them are not above. */
+  readonly median: number;
+  /** Density [g/cm^3] and temperature [K] of the largest one. */
+  readonly worst: readonly [density: number, temperature: number];
+}
+
+/** By how much a relation between columns fails, node by node. */
+export interface ResidualMap extends ErrorSpread, Places {
+  /** The relation: left side less right side is the residual. */
+  readonly relation: string;
+  /** Residual over the largest term of the relation, at each node. */
+  readonly residual: Float64Array;
+  /**
+   * What the distance of the nodes alone may have caused, as spread of the change when derivatives are taken with two nodes less:
+   * residuals below it say nothing about the columns.
+   */
+  readonly resolution: Pick<ErrorSpread, "max" | "percentile99" | "median">;
+}
+
+/** Where the columns are not those of stable matter. */
+export interface ColumnsStability {
+  /** Nodes where (d ln P/d ln rho) at constant T is not positive. */
+  readonly chiRho: Places;
+  /** Nodes where c_v, from de/dT, is not positive. */
+  readonly heatCapacityV: Places;
+  /** Nodes from which P falls or stays to the next density. */
+  readonly pressureAlongDensity: Places;
+  /** Nodes from which P falls or stays to the next temperature. */
+  readonly pressureAlongTemperature: Places;
+  /** Nodes from which e falls or stays to the next temperature. */
+  readonly energyAlongTemperature: Places;
+  /** Nodes from which s falls or stays to the next temperature; none where it is not given. */
+  readonly entropyAlongTemperature: Places;
+}
+
+/** The relations. */
+export interface ColumnsResiduals {
+  /** T ds/d ln rho = -dP/dT T/rho; undefined without a column of s. */
+  readonly maxwell: ResidualMap | undefined;
+  /** P/rho = de/d ln rho + dP/dT T/rho. */
+  readonly energy: ResidualMap;
+  /** de = T ds at constant density; undefined without a column of s. */
+  readonly heat: ResidualMap | undefined;
+}
+
+/** How far the fit is from the columns, at every row within its domain. */
+export interface ColumnsDeviations {
+  /** Over P. */
+  readonly pressure: ErrorSpread;
+  /** Over |e| + P/rho. */
+  readonly specificEnergy: ErrorSpread;
+  /** Over s, from the zero that makes all entropies positive where they are not; undefined without a column of s. */
+  readonly specificEntropy: ErrorSpread | undefined;
+}
+
+/** The report on columns and on the free energy made of them. */
+export interface ColumnsReport {
+  /** How the rows lay: on a mesh, or every density with temperatures of its own, resampled along ln T to common ones. */
+  readonly arrangement: "rectangular" | "scattered in temperature";
+  /** Rows given. */
+  readonly rows: number;
+  /** Rows dropped because another one said the same. */
+  readonly duplicates: number;
+  /** Rows outside the temperatures that every density has: not used by the fit. */
+  readonly rowsOutside: number;
+  /** Densities of the mesh, g/cm^3. */
+  readonly densities: Float64Array;
+  /** Temperatures of the mesh, K. */
+  readonly temperatures: Float64Array;
+  /** Whether there was a column of entropy. */
+  readonly entropy: "given" | "from pressure and energy";
+  /** How the columns hang together. */
+  readonly residuals: ColumnsResiduals;
+  /** Where they are not those of stable matter. */
+  readonly stability: ColumnsStability;
+  /** How far the fit is from them. */
+  readonly deviations: ColumnsDeviations;
+  /** Places, of the nodes and the middles of cells and their sides, where the fit is not stable: it refuses to answer there. */
+  readonly unstable: Places;
+}
+
+/** Spread of |values|; places by number. */
+export function spreadOf(values: Float64Array, place: (index: number) => readonly [number, number]): ErrorSpread {
+  const sizes = values.map(Math.abs);
+  let worst = 0;
+  for (let k = 1; k < sizes.length; k++) if (sizes[k]! > sizes[worst]!) worst = k;
+  const [density, temperature] = place(worst);
+  const max = sizes[worst]!;
+  sizes.sort();
+  const at = (share: number): number => sizes[Math.ceil(share * sizes.length) - 1]!;
+  return { max, percentile99: at(0.99), median: at(0.5), worst: Object.freeze([density, temperature] as const) };
+}
