@@ -5,17 +5,10 @@
  */
 export { FermistateError, isFermistateError } from "../errors.js";
 
-<<<<<<< HEAD
-
 export type { Composition, Species } from "../matter/composition.js";
 export type { Contribution, Domain } from "../thermodynamics/contribution.js";
 export type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 export { buildTable } from "./build.js";
-export type { TableOptions } from "./plan.js";
-
-=======
-
-export { assembleTable, buildTable } from "./build.js";
 export type { StateColumns } from "./foreign/columns.js";
 export { type ColumnsOptions, type ColumnsResult, equationOfStateFromColumns } from "./foreign/from-columns.js";
 export type {
@@ -28,10 +21,7 @@ export type {
   ResidualMap,
 } from "./foreign/report.js";
 export { columnsReportText } from "./foreign/report-text.js";
-export { type TableOptions, type TablePlan, tablePlan } from "./plan.js";
-export { buildStrip, type SheetStrip, type Strip } from "./strip.js";
-
->>>>>>> 23faff3cc67c34a4b13a944b3134649965a41292
+export type { TableOptions } from "./plan.js";
 
 export {
   type CertifiedError,

@@ -7,7 +7,7 @@ import { BASIS_LENGTH, fillBasis } from "../numerics/quintic.js";
 import type { TableAxis, TableSheet } from "./table.js";
 
 /** Slots of the derivatives L_ij by ln rho and ln T: the natural order 00 10 01 20 11 02 30 21 12 03 22. */
-const SURFACE_LENGTH = 11;
+export const SURFACE_LENGTH = 11;
 
 /** A sheet made ready for look-up. */
 export interface Surface {
