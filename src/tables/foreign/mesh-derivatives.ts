@@ -9,7 +9,7 @@ export interface MeshStencils {
 }
 
 /** Nodes of a stencil: sixth order in the middle. */
-const widestStencil = 7;
+export const widestStencil = 7;
 
 /** Weights of a mesh. */
 export function meshStencils({ u, v }: Pick<StateMesh, "u" | "v">, widest: number = widestStencil): MeshStencils {
