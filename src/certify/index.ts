@@ -3,6 +3,7 @@
  *
  * @packageDocumentation
  */
+export type { MapMark, MapOptions } from "../charts/map-request.js";
 export { FermistateError, isFermistateError } from "../errors.js";
 export {
   certificateCsv,
@@ -27,6 +28,7 @@ export {
   type ReferenceOptions,
   referenceElectronGas,
 } from "./electron-gas.js";
+export { certificateMap } from "./error-map.js";
 export type { ExactNumber } from "./exact.js";
 export { type ReferenceFermiDirac, referenceFermiDirac } from "./fermi-dirac.js";
 export type { CertifiedQuantity } from "./reference-quantities.js";

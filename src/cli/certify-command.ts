@@ -1,16 +1,20 @@
 /** `fermistate certify`: errors of states against an independent evaluation, over a region or of one state. */
+import { resolve } from "node:path";
 import * as z from "zod/mini";
 import { certificateCsv, certificateText, stateCertificateText } from "../certify/certificate-text.js";
 import { type CertifyOptions, certify } from "../certify/certify.js";
 import { certifyState } from "../certify/certify-state.js";
+import { certificateMap } from "../certify/error-map.js";
 import type { CertifiedQuantity } from "../certify/reference-quantities.js";
 import { derivativeNames } from "../certify/reference-quantities.js";
 import { FermistateError } from "../errors.js";
+import { checkTargets } from "../files/target.js";
 import { quantityNames } from "../thermodynamics/quantities.js";
 import { type Command, command } from "./command.js";
 import { matterOptions } from "./matter.js";
+import { writeEntries } from "./output.js";
 import { progressOn } from "./progress.js";
-import { number, oneOf, spanOrAxis, wordList } from "./readers.js";
+import { flag, number, oneOf, path, spanOrAxis, wordList } from "./readers.js";
 import { chosenMatter, tableOption } from "./table-file.js";
 
 /** Densities or temperatures: a span to sample, or an axis. */
@@ -58,8 +62,20 @@ export const certifyCommand: Command = command({
       help: "text by default; csv lists the errors point by point",
       read: z._default(oneOf(["text", "json", "csv"]), "text"),
     },
+    map: {
+      value: "NAME,...",
+      help: "quantities whose errors are drawn over density and temperature, each in PATH-NAME.svg",
+      read: z.optional(wordList<CertifiedQuantity>([...quantityNames, ...derivativeNames])),
+    },
+    out: { value: "PATH", help: "where maps go", read: z.optional(path) },
+    overwrite: { help: "replace files that exist", read: flag },
   },
   examples: [
+    [
+      "certify --density 1e4..1e9,4-points --temperature 1e7..1e9,3-points --composition C12=1 --quantities pressure " +
+        "--map pressure --out errors",
+      "twelve states, with a map of the errors",
+    ],
     [
       "certify --density 1e4..1e9 --temperature 1e6..1e9 --composition C12=0.5,O16=0.5 --points 4",
       "a carbon-oxygen core, four points",
@@ -73,11 +89,20 @@ export const certifyCommand: Command = command({
     "Errors are of arithmetic and implementation: both sides evaluate the same formulas, on independent ways. How true the " +
     "formulas are is a question for fermistate regime.",
   async run(options, io) {
+    const { map = [], out } = options;
+    if (map.length > 0 !== (out !== undefined))
+      throw refused(out === undefined ? "--map" : "--out", out ?? map.join(","), "--map and --out together");
+    const maps = map.map((name) => ({ name, path: `${out}-${name}.svg`, about: `map of the error of ${name}` }));
+    const files = { overwrite: options.overwrite, createFolders: false };
+    await checkTargets(
+      maps.map((one) => ({ path: resolve(io.cwd, one.path) })),
+      files,
+    );
     const { equationOfState, matter } = await chosenMatter(options, io);
     const { density, temperature, points, seed, digits, quantities, format } = options;
     const shared = {
       ...(digits === undefined ? {} : { digits }),
-      ...(quantities === undefined ? {} : { quantities }),
+      ...(quantities === undefined ? {} : { quantities: [...new Set([...quantities, ...map])] }),
     };
     const rho = onlyValue(density);
     const kelvin = onlyValue(temperature);
@@ -85,6 +110,7 @@ export const certifyCommand: Command = command({
       if (points !== undefined) throw refused("--points", points, "only with a region LOW..HIGH");
       if (seed !== undefined) throw refused("--seed", seed, "only with a region LOW..HIGH");
       if (format === "csv") throw refused("--format", format, "text or json for one state");
+      if (map.length > 0) throw refused("--map", map.join(","), "only with more than one point");
       const audit = certifyState(equationOfState, matter, rho, kelvin, shared);
       io.out(format === "json" ? `${JSON.stringify(finite(audit), null, 2)}\n` : stateCertificateText(audit));
       return;
@@ -96,6 +122,10 @@ export const certifyCommand: Command = command({
       progress.done();
       if (format === "csv") io.out(certificateCsv(made));
       else io.out(format === "json" ? `${JSON.stringify(made, null, 2)}\n` : certificateText(made));
+      if (maps.length === 0) return;
+      const entries = maps.map(({ name, ...file }) => ({ ...file, text: certificateMap(made, name) }));
+      const list = await writeEntries(entries, io.cwd, files);
+      if (format === "text") io.out(`\n${list}\n`);
     } finally {
       progress.done();
     }
