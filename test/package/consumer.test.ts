@@ -104,7 +104,7 @@ test.each([
       const table = await assembleFolders("table-${kind}");
       console.log(tableEquationOfState(table).state(3e6, 3e8, table.composition).pressure.toPrecision(4));
     })();`;
-  expect(run(`table.${kind}`, code)).toBe('{"made":2,"kept":0,"left":0,"strips":2}\n1.363e+23');
+  expect(run(`table.${kind}`, code)).toBe('{"made":2,"kept":0,"left":0,"strips":2}\n1.515e+23');
 });
 
 describe("fermistate/parallel", () => {
