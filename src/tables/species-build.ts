@@ -21,20 +21,21 @@ export interface SpeciesTableOptions {
   readonly coarseness?: number;
 }
 
-/** Between these the table; below gas is classical, above Sommerfeld's series is good to 1e-9 in every second derivative. */
+/** Between these the table; below gas is classical, above Sommerfeld's series is good to 1e-8 in every second derivative. */
 const lowestDegeneracy = -20;
-const highestDegeneracy = 26;
+const highestDegeneracy = 27;
 
 /** Length of the cells that start at eta: e^eta is all that is left to interpolate where it is small. */
 function degeneracyStep(eta: number): number {
   if (eta < -16) return 1;
   if (eta < -11) return 0.5;
-  return eta < -7 ? 0.25 : 0.16;
+  return eta < -7 ? 0.25 : eta < 13 ? 0.15 : eta < 22 ? 0.2 : 0.25;
 }
 
 /** Length of the cells that start at ln theta: long where either limit, cold or ultrarelativistic, is near. */
 function temperatureStep(logTheta: number): number {
-  return logTheta < -9 || logTheta >= 3 ? 0.15 : 0.075;
+  if (logTheta < -9 || logTheta >= 2.5) return 0.16;
+  return logTheta < -5 || logTheta >= 0.5 ? 0.085 : 0.058;
 }
 
 /**

@@ -136,7 +136,7 @@ function fillCellBasis(basis: Float64Array, nodes: Float64Array, cell: number, a
  * is continued: a caller does not look there. Below the lowest, e^(-eta) P = A(theta) + B(theta) e^eta, exact to e^(2 eta).
  */
 export function fillSpeciesSurface(surface: SpeciesSurface, order: number): void {
-  const { eta, y, at } = surface;
+  const { eta, at } = surface;
   const value = at[0]!;
   if (value >= eta.lowest) {
     fillCell(surface, order);
