@@ -6,6 +6,15 @@
 export { FermistateError, isFermistateError } from "../errors.js";
 export { assembleTable, buildTable } from "./build.js";
 export { type TableOptions, type TablePlan, tablePlan } from "./plan.js";
+export { buildSpeciesTable, type SpeciesTableOptions } from "./species-build.js";
+export { speciesTableContribution } from "./species-contribution.js";
+export {
+  type SpeciesCertificate,
+  type SpeciesError,
+  type SpeciesQuantity,
+  type SpeciesTable,
+  speciesTableBytes,
+} from "./species-table.js";
 export { buildStrip, type SheetStrip, type Strip } from "./strip.js";
 export {
   type CertifiedError,

@@ -132,7 +132,7 @@ function fillCellBasis(basis: Float64Array, nodes: Float64Array, cell: number, a
 }
 
 /**
- * Fills `out` at `at` to second order (order 2), to third and (4,0), (3,1), (2,2) (order 3). Above the highest eta the last cell
+ * Fills `out` at `at` to second order with (3,0), (2,1), (1,2) (order 2), or all of it (order 3). Above the highest eta the last cell
  * is continued: a caller does not look there. Below the lowest, e^(-eta) P = A(theta) + B(theta) e^eta, exact to e^(2 eta).
  */
 export function fillSpeciesSurface(surface: SpeciesSurface, order: number): void {
@@ -195,7 +195,7 @@ function fillCell(surface: SpeciesSurface, order: number): void {
         basisY[b + 5]! * nodes[k + 11]!;
     }
   }
-  const count = order === 3 ? SPECIES_SURFACE_LENGTH : 6;
+  const count = order === 3 ? SPECIES_SURFACE_LENGTH : 9;
   for (let slot = 0; slot < count; slot++) {
     const b = 6 * orderI[slot]!;
     const r = 6 * orderJ[slot]!;
