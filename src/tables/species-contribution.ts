@@ -41,7 +41,7 @@ import {
   SPECIES_LENGTH,
   SPECIES_PRESSURE,
 } from "../thermodynamics/species-members.js";
-import { solveSpeciesGas } from "./species-gas.js";
+import { fillPositrons, solveSpeciesGas } from "./species-gas.js";
 import { speciesSurface } from "./species-surface.js";
 import type { SpeciesTable } from "./species-table.js";
 
@@ -61,7 +61,7 @@ export function speciesTableContribution(table: SpeciesTable): Contribution {
   // Rounded inward, so that the ends of the domain have a logarithm within the nodes.
   const lowest = restTemperature * Math.exp(logTheta[0]!) * (1 + 1e-14);
   const highest = restTemperature * Math.exp(logTheta[logTheta.length - 1]!) * (1 - 1e-14);
-  const percent = (name: "pressure" | "entropy"): string => certificate.errors[name].bound.toExponential(1);
+  const within = (name: "pressure" | "entropy"): string => certificate.errors[name].bound.toExponential(1);
 
   function enter(point: Float64Array): void {
     gas[NET_DENSITY] = point[ELECTRON_DENSITY]! / electronDensityUnit;
@@ -81,8 +81,8 @@ export function speciesTableContribution(table: SpeciesTable): Contribution {
   return Object.freeze({
     name: "table of one species: electrons and positrons",
     validity:
-      `Electrons and positrons are an ideal gas, interpolated: pressure within ${percent("pressure")}, entropy within ` +
-      `${percent("entropy")}; atoms are fully ionised.`,
+      `Electrons and positrons are an ideal gas, interpolated: pressure within ${within("pressure")}, entropy within ` +
+      `${within("entropy")}; atoms are fully ionised.`,
     ideal: true,
     standsFor: ["electrons and positrons"],
     excludes: ["electrons and positrons"],
@@ -98,7 +98,6 @@ export function speciesTableContribution(table: SpeciesTable): Contribution {
       if (gas[NET_DENSITY] === 0 && gas[THETA]! < 1 / 650) {
         gas[CENTRE] = -1; // mu = 0, and not even pairs: their e^(-1/theta) underflows
         gas[PSI] = 0;
-        gas[ANTIPARTICLES] = 0;
       } else {
         solveSpeciesGas(surface, gas, order);
         addGasMembers(gas, scale, order, members);
@@ -119,7 +118,9 @@ export function speciesTableContribution(table: SpeciesTable): Contribution {
     },
 
     addDetail(point: Float64Array): void {
-      point[POSITRON_DENSITY] = Math.max(gas[ANTIPARTICLES]!, 0) * electronDensityUnit;
+      if (gas[NET_DENSITY] === 0 && gas[THETA]! < 1 / 650) gas[ANTIPARTICLES] = 0;
+      else fillPositrons(surface, gas);
+      point[POSITRON_DENSITY] = gas[ANTIPARTICLES]! * electronDensityUnit;
     },
 
     addSpecies(_point: Float64Array, composition: Composition, rows: Float64Array): void {

@@ -102,6 +102,20 @@ export function solveSpeciesGas(surface: SpeciesSurface, gas: Float64Array, orde
   });
 }
 
+/** Sets ANTIPARTICLES of a solved gas, from its PSI and CENTRE. */
+export function fillPositrons(surface: SpeciesSurface, gas: Float64Array): void {
+  const { at, out } = surface;
+  const theta = gas[THETA]!;
+  const nu = gas[CENTRE] === -1 ? gas[PSI]! : gas[PSI]! + (1 + gas[CENTRE]!) / theta;
+  gas[ANTIPARTICLES] = 0;
+  const opposite = -nu - 1 / theta;
+  if (opposite < noPositrons) return;
+  at[0] = opposite;
+  at[1] = Math.log(theta);
+  fillSpeciesSurface(surface, 2);
+  gas[ANTIPARTICLES] = (Math.exp(out[L00]!) * out[L10]!) / theta;
+}
+
 /** Classical gas: n_-/n_+ in closed form from the density at the lower edge of the table. */
 function classicalStart(surface: SpeciesSurface, gas: Float64Array): void {
   const { at, out } = surface;
@@ -143,12 +157,10 @@ function fillGas(surface: SpeciesSurface, gas: Float64Array, degenerate: boolean
   gas[LAMBDA] = 1;
   for (let slot = N00; slot <= N12; slot++) gas[slot] = 0;
   const opposite = -gas[NU]! - inverse;
-  gas[ANTIPARTICLES] = 0;
   if (opposite > noPositrons) {
     at[0] = opposite;
     fillSpeciesSurface(surface, order);
     addSpeciesSums(surface, gas, -1, pairFrame ? inverse : 2 * inverse, order);
-    gas[ANTIPARTICLES] = -gas[N00]!;
   }
   at[0] = gas[ETA]!;
   fillSpeciesSurface(surface, order);
