@@ -46,7 +46,8 @@ import { sommerfeld } from "./sommerfeld.js";
 import { startValue } from "./start-value.js";
 import { trapezoid } from "./trapezoid.js";
 
-const offset = new Float64Array(2);
+/** Step in alpha and its unit, slots STEP_ of record.ts: the last {@link measureOffset}. */
+export const offset: Float64Array = new Float64Array(2);
 
 /**
  * Fills the record at its NET_DENSITY >= 0 (> 0 without `antiparticles`), KINETIC_MU = e_F and THETA > 0. At n = 0
@@ -108,7 +109,7 @@ function sweep(gas: Float64Array, degenerate: boolean, antiparticles: boolean, o
 }
 
 /** Distance in alpha to the density asked for, to second order, and the unit in which it is small. */
-function measureOffset(gas: Float64Array, degenerate: boolean, antiparticles: boolean): void {
+export function measureOffset(gas: Float64Array, degenerate: boolean, antiparticles: boolean): void {
   const inverse = 1 / gas[N10]!;
   const first = (gas[NET_DENSITY]! - gas[N00]!) * inverse;
   offset[STEP_LENGTH] = first / (1 + 0.5 * first * gas[N20]! * inverse);
@@ -118,7 +119,7 @@ function measureOffset(gas: Float64Array, degenerate: boolean, antiparticles: bo
 }
 
 /** Replaces the step by one in ln n, capped: for a start value far off. */
-function safeStep(gas: Float64Array, antiparticles: boolean): void {
+export function safeStep(gas: Float64Array, antiparticles: boolean): void {
   const n = gas[N00]!;
   const eta = gas[ETA]!;
   const nu = gas[NU]!;
@@ -130,7 +131,7 @@ function safeStep(gas: Float64Array, antiparticles: boolean): void {
 }
 
 /** Moves the unknown by the step in alpha: eta and nu keep their difference, whichever is small is the one moved. */
-function advance(gas: Float64Array, degenerate: boolean, antiparticles: boolean): void {
+export function advance(gas: Float64Array, degenerate: boolean, antiparticles: boolean): void {
   const step = offset[STEP_LENGTH]!;
   const theta = gas[THETA]!;
   if (degenerate) {
@@ -145,7 +146,7 @@ function advance(gas: Float64Array, degenerate: boolean, antiparticles: boolean)
 }
 
 /** Taylor step of all members in alpha by the measured offset, at fixed theta; order 3 has one more term to give. */
-function correct(gas: Float64Array, order: Order): void {
+export function correct(gas: Float64Array, order: Order): void {
   const d = offset[STEP_LENGTH]!;
   const theta = gas[THETA]!;
   const lambda = gas[LAMBDA]!;

@@ -4,7 +4,6 @@
  * @packageDocumentation
  */
 export { FermistateError, isFermistateError } from "../errors.js";
-
 export type { Composition, Species } from "../matter/composition.js";
 export type { Contribution, Domain } from "../thermodynamics/contribution.js";
 export type { EquationOfState } from "../thermodynamics/equation-of-state.js";
@@ -22,7 +21,15 @@ export type {
 } from "./foreign/report.js";
 export { columnsReportText } from "./foreign/report-text.js";
 export type { TableOptions } from "./plan.js";
-
+export { buildSpeciesTable, type SpeciesTableOptions } from "./species-build.js";
+export { speciesTableContribution } from "./species-contribution.js";
+export {
+  type SpeciesCertificate,
+  type SpeciesError,
+  type SpeciesQuantity,
+  type SpeciesTable,
+  speciesTableBytes,
+} from "./species-table.js";
 export {
   type CertifiedError,
   type CertifiedQuantity,
