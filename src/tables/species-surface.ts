@@ -180,19 +180,24 @@ function fillCell(surface: SpeciesSurface, order: number): void {
   const stride = 9 * y.nodes.length;
   const first = i * stride + 9 * j;
   const deepest = order === 3 ? 4 : 3;
+  // Values count from one corner and slopes from the near end, so that the factors 1/h^2 of the curvature meet no rounding of
+  // the large linear part.
+  const corner = nodes[first]!;
+  const hy = y.nodes[j + 1]! - y.nodes[j]!;
+  const he = eta.nodes[i + 1]! - eta.nodes[i]!;
+  const dy = at[1]! - y.nodes[j]!;
+  const de = at[0]! - eta.nodes[i]!;
   for (let row = 0; row < 6; row++) {
     const k = row < 3 ? first + 3 * row : first + stride + 3 * (row - 3);
-    const near = nodes[k]!;
-    const rise = nodes[k + 9]! - near;
+    const near = row === 0 || row === 3 ? nodes[k]! - corner : nodes[k]!;
+    const slope = nodes[k + 1]!;
+    const rise = nodes[k + 9]! - nodes[k]! - slope * hy;
+    const turn = nodes[k + 10]! - slope;
     for (let d = 0; d < deepest; d++) {
       const b = 6 * d;
       rows[b + row] =
-        (d === 0 ? near : 0) +
-        basisY[b + 3]! * rise +
-        basisY[b + 1]! * nodes[k + 1]! +
-        basisY[b + 2]! * nodes[k + 2]! +
-        basisY[b + 4]! * nodes[k + 10]! +
-        basisY[b + 5]! * nodes[k + 11]!;
+        (d === 0 ? near + slope * dy : d === 1 ? slope : 0) +
+        (basisY[b + 3]! * rise + basisY[b + 2]! * nodes[k + 2]! + basisY[b + 4]! * turn + basisY[b + 5]! * nodes[k + 11]!);
     }
   }
   const count = order === 3 ? SPECIES_SURFACE_LENGTH : 9;
@@ -200,12 +205,12 @@ function fillCell(surface: SpeciesSurface, order: number): void {
     const b = 6 * orderI[slot]!;
     const r = 6 * orderJ[slot]!;
     const near = rows[r]!;
+    const slope = rows[r + 1]!;
+    const rise = rows[r + 3]! - near - slope * he;
+    const turn = rows[r + 4]! - slope;
     out[slot] =
-      (b === 0 ? near : 0) +
-      basisE[b + 3]! * (rows[r + 3]! - near) +
-      basisE[b + 1]! * rows[r + 1]! +
-      basisE[b + 2]! * rows[r + 2]! +
-      basisE[b + 4]! * rows[r + 4]! +
-      basisE[b + 5]! * rows[r + 5]!;
+      (b === 0 ? near + slope * de : b === 6 ? slope : 0) +
+      (basisE[b + 3]! * rise + basisE[b + 2]! * rows[r + 2]! + basisE[b + 4]! * turn + basisE[b + 5]! * rows[r + 5]!);
   }
+  out[L00]! += corner;
 }
