@@ -21,7 +21,7 @@ export const L40 = 10;
 export const L31 = 11;
 export const L22 = 12;
 /** Length of a record of them. */
-export const SPECIES_SURFACE_LENGTH = 13;
+const SPECIES_SURFACE_LENGTH = 13;
 
 /** Orders (i, j) of the slots. */
 const orders = [
@@ -197,7 +197,10 @@ function fillCell(surface: SpeciesSurface, order: number): void {
       const b = 6 * d;
       rows[b + row] =
         (d === 0 ? near + slope * dy : d === 1 ? slope : 0) +
-        (basisY[b + 3]! * rise + basisY[b + 2]! * nodes[k + 2]! + basisY[b + 4]! * turn + basisY[b + 5]! * nodes[k + 11]!);
+        (basisY[b + 3]! * rise +
+          basisY[b + 2]! * nodes[k + 2]! +
+          basisY[b + 4]! * turn +
+          basisY[b + 5]! * nodes[k + 11]!);
     }
   }
   const count = order === 3 ? SPECIES_SURFACE_LENGTH : 9;
