@@ -16,7 +16,7 @@ export interface SpeciesTableOptions {
   /**
    * Length of a cell over that of the default mesh, 0.7 to 8: errors of second derivatives go with its fourth power, size with
    * its inverse square.
-   * @defaultValue 1: 3.4 MB
+   * @defaultValue 1: 3.5 MB
    */
   readonly coarseness?: number;
 }
@@ -40,7 +40,7 @@ function temperatureStep(logTheta: number): number {
 
 /**
  * A table of ln P of electrons alone over (eta, ln theta): composition-free, both signs of the charge from one surface, for
- * codes in any language. A second of arithmetic.
+ * codes in any language. Some five seconds of arithmetic.
  *
  * In TypeScript `electronPositronGas()` is as fast and exact; `speciesTableContribution` reads the table.
  *

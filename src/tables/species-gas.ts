@@ -160,16 +160,19 @@ function fillGas(surface: SpeciesSurface, gas: Float64Array, degenerate: boolean
   if (opposite > noPositrons) {
     at[0] = opposite;
     fillSpeciesSurface(surface, order);
-    addSpeciesSums(surface, gas, -1, pairFrame ? inverse : 2 * inverse, order);
+    at[2] = pairFrame ? inverse : 2 * inverse;
+    addSpeciesSums(surface, gas, -1, order);
   }
   at[0] = gas[ETA]!;
   fillSpeciesSurface(surface, order);
-  addSpeciesSums(surface, gas, 1, pairFrame ? inverse : 0, order);
+  at[2] = pairFrame ? inverse : 0;
+  addSpeciesSums(surface, gas, 1, order);
   if (gas[NU]! < smallNu) gas[N00] = gas[NU]! * gas[N10]!;
 }
 
-/** Adds one species from the surface's record: electrons (sign 1) or positrons (-1), whose eta moves at the rate `sigma`. */
-function addSpeciesSums({ out }: SpeciesSurface, gas: Float64Array, sign: number, sigma: number, order: Order): void {
+/** Adds one species from the surface's record: electrons (sign 1) or positrons (-1), whose eta moves at the rate in slot 2. */
+function addSpeciesSums({ at, out }: SpeciesSurface, gas: Float64Array, sign: number, order: Order): void {
+  const sigma = at[2]!;
   const inverse = 1 / gas[THETA]!;
   const p = Math.exp(out[L00]!);
   const a = out[L10]!;

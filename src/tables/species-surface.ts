@@ -55,7 +55,7 @@ export interface SpeciesSurface {
   readonly eta: AxisIndex;
   readonly y: AxisIndex;
   readonly nodes: Float64Array;
-  /** Where: eta, ln theta. */
+  /** Where: eta, ln theta; slot 2 is scratch of the callers and of the continuation: no double crosses a call. */
   readonly at: Float64Array;
   /** The derivatives L_ij there. */
   readonly out: Float64Array;
@@ -70,7 +70,7 @@ export function speciesSurface(table: Omit<SpeciesTable, "certificate">): Specie
     eta: axisIndex(table.degeneracy),
     y: axisIndex(table.logTheta),
     nodes: table.nodes,
-    at: new Float64Array(2),
+    at: new Float64Array(3),
     out: new Float64Array(SPECIES_SURFACE_LENGTH),
     basisE: new Float64Array(BASIS_LENGTH + 6),
     basisY: new Float64Array(BASIS_LENGTH + 6),
@@ -142,16 +142,16 @@ export function fillSpeciesSurface(surface: SpeciesSurface, order: number): void
     fillCell(surface, order);
     return;
   }
-  const below = value - eta.lowest;
+  at[2] = value - eta.lowest;
   at[0] = eta.lowest;
   fillCell(surface, order);
   at[0] = value;
-  continueClassical(surface, below);
+  continueClassical(surface);
 }
 
 /** From L at the lowest eta, L + d + C (e^d - 1) with C = L_eta - 1, which is of the order of e^eta. */
-function continueClassical(surface: SpeciesSurface, below: number): void {
-  const { out } = surface;
+function continueClassical({ at, out }: SpeciesSurface): void {
+  const below = at[2]!;
   const growth = Math.expm1(below);
   const c = out[L10]! - 1;
   const cy = out[L11]!;
