@@ -2,9 +2,10 @@
 import * as z from "zod/mini";
 import { type ErrorCode, FermistateError, isFermistateError } from "../errors.js";
 import { requireComposition } from "../matter/composition.js";
+import { certifiedQuantities } from "../tables/errors-at.js";
 import { powerOffset } from "../tables/members.js";
 import { COLD_LENGTH, type FreeEnergyTable, highestLevel, NODE_LENGTH, type TableSheet } from "../tables/table.js";
-import { certified, LAYOUT } from "./items.js";
+import { LAYOUT } from "./items.js";
 
 /** Most blocks of one axis; with the finest level, more cells than a table of any use has. */
 const mostBlocks = 4096;
@@ -57,7 +58,7 @@ const structure = z.object({
     places: count,
     target: notNegative,
     blocksAboveTarget: count,
-    errors: z.object(Object.fromEntries(certified.map((name) => [name, errorOfQuantity]))),
+    errors: z.object(Object.fromEntries(certifiedQuantities.map((name) => [name, errorOfQuantity]))),
   }),
 });
 

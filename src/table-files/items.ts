@@ -5,8 +5,8 @@
  * little more than it needs (names, mass and charge numbers), for readers that do not have this library.
  */
 import { type Composition, composition } from "../matter/composition.js";
+import { certifiedQuantities } from "../tables/errors-at.js";
 import {
-  type CertifiedQuantity,
   COLD_LENGTH,
   type FreeEnergyTable,
   NODE_LENGTH,
@@ -39,16 +39,6 @@ export interface Item<K extends Kind = Kind> {
 /** Version of {@link FreeEnergyTable.layout} that this library writes and reads. */
 export const LAYOUT = 1;
 
-/** Quantities of a certificate in the order of its columns. */
-export const certified: readonly CertifiedQuantity[] = [
-  "pressure",
-  "specificEnergy",
-  "specificEntropy",
-  "heatCapacityV",
-  "pressureByDensity",
-  "pressureByTemperature",
-];
-
 /** What a file holds besides the items of a table: the names of those, in order, and their checksum. */
 export function formatItems(items: readonly Item[], checksum: string): Item[] {
   return [
@@ -66,7 +56,7 @@ const errorColumns = ["bound", "largest", "percentile99", "median"] as const;
 /** All items of a table, in the order of the checksum. */
 export function itemsOf(table: FreeEnergyTable): Item[] {
   const { composition: matter, source, certificate, freezing, cold } = table;
-  const errors = certified.map((name) => certificate.errors[name]);
+  const errors = certifiedQuantities.map((name) => certificate.errors[name]);
   return [
     integer("format/layout", table.layout),
     text("composition/holds_for", table.holdsFor),
@@ -113,7 +103,7 @@ export function itemsOf(table: FreeEnergyTable): Item[] {
     integer("certificate/places", certificate.places),
     number("certificate/target", certificate.target),
     integer("certificate/blocks_above_target", certificate.blocksAboveTarget),
-    texts("certificate/quantity", certified),
+    texts("certificate/quantity", certifiedQuantities),
     ...errorColumns.map((column) =>
       numbers(
         `certificate/errors/${column}`,
@@ -167,10 +157,12 @@ export function tableOfItems(read: ReadItem): FreeEnergyTable {
   const places = read("certificate/places", "int32", [])[0]!;
   const target = read("certificate/target", "float64", [])[0]!;
   const blocksAboveTarget = read("certificate/blocks_above_target", "int32", [])[0]!;
-  const columns = errorColumns.map((column) => read(`certificate/errors/${column}`, "float64", [certified.length]));
-  const worst = read("certificate/errors/worst", "float64", [certified.length, 2]);
+  const columns = errorColumns.map((column) =>
+    read(`certificate/errors/${column}`, "float64", [certifiedQuantities.length]),
+  );
+  const worst = read("certificate/errors/worst", "float64", [certifiedQuantities.length, 2]);
   const errors = Object.fromEntries(
-    certified.map((quantity, i) => [
+    certifiedQuantities.map((quantity, i) => [
       quantity,
       {
         ...(Object.fromEntries(errorColumns.map((column, k) => [column, columns[k]![i]!])) as Record<

@@ -5,12 +5,10 @@
  * escapes and fresh random points find the same errors. The bound is twice the largest error measured.
  */
 import { MEMBER_COUNT } from "../thermodynamics/free-energy.js";
-import { fillCold } from "./cold.js";
 import { certifiedQuantities, fillErrors } from "./errors-at.js";
-import { addTableMembers } from "./members.js";
 import type { SheetPlan, TablePlan } from "./plan.js";
-import { fillWhole } from "./strip.js";
-import { fillSurface, type Surface, surfaceOf } from "./surface.js";
+import { fillTableMembers, fillWhole } from "./strip.js";
+import { type Surface, surfaceOf } from "./surface.js";
 import type { CertifiedError, CertifiedQuantity, TableCertificate, TableSheet } from "./table.js";
 
 /** Errors found in a table, by quantity. */
@@ -101,13 +99,7 @@ function measureSheet(plan: TablePlan, source: SheetPlan, sheet: TableSheet, sur
       if (!isStable(plan, sheet, density, temperature)) continue;
       source.sampler.sampleAt(density, temperature, 2);
       fillWhole(plan, source, u, v, whole);
-      surface.at[0] = Math.log(density);
-      surface.at[1] = Math.log(temperature);
-      plan.lookUp.at[0] = surface.at[0]!;
-      fillSurface(surface, 2);
-      fillCold(plan.lookUp, 2);
-      members.fill(0);
-      addTableMembers(plan.lookUp, surface, 2, members);
+      fillTableMembers(plan, surface, Math.log(density), Math.log(temperature), members);
       fillErrors(members, source.sampler.members, whole, errors);
       into.weights.push(1 / (rows * cells * perCell));
       for (let k = 0; k < errors.length; k++) {

@@ -276,7 +276,7 @@ function measure(
 }
 
 /** Members of the table at a point of one surface. */
-function fillTableMembers(plan: TablePlan, surface: Surface, u: number, v: number, members: Float64Array): void {
+export function fillTableMembers(plan: TablePlan, surface: Surface, u: number, v: number, members: Float64Array): void {
   surface.at[0] = u;
   surface.at[1] = v;
   plan.lookUp.at[0] = u;
