@@ -6,7 +6,7 @@ import { holds, refusePoint } from "../thermodynamics/domain.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { type QuantityName, quantities, quantityNames } from "../thermodynamics/quantities.js";
 import { finish } from "./finish.js";
-import { type GivenName, type Question, questionOf, requireGiven } from "./questions.js";
+import { type GivenPair, type Question, questionOf, requireGiven } from "./questions.js";
 import { refuseQuestion } from "./refusal.js";
 import {
   BOTH,
@@ -25,7 +25,7 @@ import {
 import { solverFor } from "./solver.js";
 
 /** Input of {@link solveColumns}: two columns of given quantities, composition, and guesses. */
-export type SolveInput = { readonly [Name in GivenName]?: Float64Array } & {
+export type SolveInput = GivenPair<Float64Array> & {
   /** One composition for all rows, or one per row. */
   readonly composition: Composition | readonly Composition[];
   /** Columns of starts (density, temperature); without them each row starts from the answer of the one before. */

@@ -19,6 +19,20 @@ export type GivenName =
   | "specificEntropy"
   | "specificEnthalpy";
 
+/** Values of `First` and one of `Second`, and of no other quantity. */
+type Pair<Value, First extends GivenName, Second extends GivenName> = Second extends GivenName
+  ? { readonly [Name in First | Second]: Value } & {
+      readonly [Name in Exclude<GivenName, First | Second>]?: undefined;
+    }
+  : never;
+
+/** Values of one of the pairs that determine a state: what is not here is refused when it compiles, and when it runs. */
+export type GivenPair<Value> =
+  | Pair<Value, "density", "temperature" | "pressure" | "specificEnergy" | "specificEntropy" | "specificEnthalpy">
+  | Pair<Value, "temperature", "pressure" | "specificEntropy">
+  | Pair<Value, "pressure", "specificEntropy" | "specificEnergy" | "specificEnthalpy">
+  | Pair<Value, "specificEntropy", "specificEnergy" | "specificEnthalpy">;
+
 /** A pair of given quantities as a search sees it. */
 export interface Question {
   /** The names, in the order of the search: what is solved for first comes first. */

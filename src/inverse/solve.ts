@@ -7,7 +7,7 @@ import { quantityNames } from "../thermodynamics/quantities.js";
 import { stateFrom } from "../thermodynamics/state.js";
 import { finish } from "./finish.js";
 import { fillFromState } from "./neighbour.js";
-import { type GivenName, type Question, questionOf, requireGiven } from "./questions.js";
+import { type GivenName, type GivenPair, type Question, questionOf, requireGiven } from "./questions.js";
 import { refuseQuestion } from "./refusal.js";
 import {
   BOTH,
@@ -26,8 +26,12 @@ import {
 } from "./slots.js";
 import { type Solver, solverFor } from "./solver.js";
 
-/** Two given quantities, in the units of a state: one of the pairs that {@link solve} lists. */
-export type Given = { readonly [Name in GivenName]?: number };
+/**
+ * Two given quantities, in the units of a state: one of the pairs that {@link solve} lists. TypeScript
+ * refuses others; an object whose names are known at run time alone needs `as object as Given`;
+ * `solve` checks it all the same.
+ */
+export type Given = GivenPair<number>;
 
 /** Where to begin: numbers, or the state of a neighbour, whose derivatives then lead to the answer. */
 export interface Guess {

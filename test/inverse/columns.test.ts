@@ -65,7 +65,7 @@ describe.each([
       heatCapacityV: new Float64Array(rows),
       chiT: new Float64Array(rows),
     };
-    const input = { composition: carbonOxygen, [first]: along[first], [second]: along[second] } as SolveInput;
+    const input = { composition: carbonOxygen, [first]: along[first], [second]: along[second] } as object as SolveInput;
     solveColumns(matter, input, output);
     const mean = output.evaluations.reduce((a, b) => a + b) / rows;
     if (process.env["FERMISTATE_PRINT"]) console.log(first, second, mean);

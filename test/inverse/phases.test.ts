@@ -5,6 +5,7 @@
 import { describe, expect, test } from "vitest";
 import {
   composition,
+  type Given,
   type GivenName,
   meltingDensity,
   meltingTemperature,
@@ -26,7 +27,7 @@ const lever = (name: Exclude<GivenName, "density" | "temperature">, frozen: numb
 describe("the gap of latent heat at given density", () => {
   test.each(["specificEntropy", "specificEnergy", "specificEnthalpy", "pressure"] as const)("%s", (name) => {
     for (const frozen of [0.001, 0.25, 0.7, 0.999]) {
-      const { state } = solve(matter, carbonOxygen, { density, [name]: lever(name, frozen) });
+      const { state } = solve(matter, carbonOxygen, { density, [name]: lever(name, frozen) } as object as Given);
       expect(state.temperature).toBe(both.temperature);
       // The pressure jumps by 1e-4 only, so that its fraction has four digits less.
       expect(state.crystalFraction).toBeCloseTo(frozen, name === "pressure" ? 9 : 10);
@@ -119,7 +120,7 @@ describe("coexistence with two quantities given", () => {
   test.each(["specificEntropy", "specificEnthalpy", "specificEnergy"] as const)("pressure and %s", (name) => {
     const frozen = 0.4;
     const value = (1 - frozen) * both.liquid[name] + frozen * crystal[name];
-    const { state } = solve(matter, carbonOxygen, { pressure, [name]: value });
+    const { state } = solve(matter, carbonOxygen, { pressure, [name]: value } as object as Given);
     expect(state.temperature / temperature).toBeCloseTo(1, 13);
     expect(state.crystalFraction).toBeCloseTo(frozen, 8);
     expect(state.density).toBeGreaterThan(both.liquid.density);
@@ -129,7 +130,7 @@ describe("coexistence with two quantities given", () => {
 
   test.each(["specificEnergy", "specificEnthalpy"] as const)("entropy and %s: at one density", (name) => {
     const given = { specificEntropy: lever("specificEntropy", 0.4), [name]: lever(name, 0.4) };
-    const { state } = solve(matter, carbonOxygen, given);
+    const { state } = solve(matter, carbonOxygen, given as object as Given);
     expect(state.temperature / temperature).toBeCloseTo(1, 12);
     expect(state.density / density).toBeCloseTo(1, 12);
     expect(state.crystalFraction).toBeCloseTo(0.4, 9);

@@ -45,7 +45,7 @@ function tally(names: readonly [GivenName, GivenName], guessed: boolean): Tally 
   for (const [i, state] of states.entries()) {
     const guess = guessed ? neighbours[i] : undefined;
     if (guessed && guess === undefined) continue;
-    const given: Given = { [names[0]]: state[names[0]], [names[1]]: state[names[1]] };
+    const given = { [names[0]]: state[names[0]], [names[1]]: state[names[1]] } as object as Given;
     const found = solve(matter, state.composition, given, guess === undefined ? {} : { guess });
     asked++;
     total += found.evaluations;
