@@ -102,21 +102,27 @@ export function requireFinite(argument: string, value: unknown, allowed: string,
   throw new FermistateError("not-a-number", withIndex({ argument, given: value, allowed }, index));
 }
 
-/** Throws `invalid-option` unless `options` is an object whose keys are all in `flags` and hold true or false. */
-export function requireFlags(argument: string, options: unknown, flags: readonly string[]): void {
-  const allowed = `an object with ${flags.map((flag) => `${flag}: true | false`).join(", ")}`;
-  if (typeof options !== "object" || options === null || Array.isArray(options)) {
-    throw new FermistateError("invalid-option", { argument, given: options, allowed });
-  }
-  for (const [name, value] of Object.entries(options)) {
-    if (!flags.includes(name)) throw new FermistateError("invalid-option", { argument, given: name, allowed });
-    if (value !== undefined && typeof value !== "boolean") {
-      throw new FermistateError("invalid-option", {
-        argument: `${argument}.${name}`,
-        given: value,
-        allowed: "true or false",
-      });
-    }
+/** Throws `invalid-option` unless `options` is an object whose keys are all known: a slip of the pen must not pass. */
+export function requireKnown(argument: string, options: unknown, known: readonly string[]): void {
+  const isObject = typeof options === "object" && options !== null && !Array.isArray(options);
+  const stranger = isObject ? Object.keys(options).find((name) => !known.includes(name)) : options;
+  if (isObject && stranger === undefined) return;
+  throw new FermistateError("invalid-option", { argument, given: stranger, allowed: `{ ${known.join(", ")} }` });
+}
+
+/** As {@link requireKnown} of `flags` and `others`, where every flag is true, false or left out. */
+export function requireFlags(
+  argument: string,
+  options: unknown,
+  flags: readonly string[],
+  others: readonly string[] = [],
+): void {
+  requireKnown(argument, options, [...others, ...flags]);
+  for (const name of flags) {
+    const given = (options as Readonly<Record<string, unknown>>)[name];
+    if (given === undefined || typeof given === "boolean") continue;
+    const details = { argument: `${argument}.${name}`, given, allowed: "true or false" };
+    throw new FermistateError("invalid-option", details);
   }
 }
 

@@ -3,7 +3,7 @@
  */
 import { coulombPlasma } from "./coulomb/coulomb-plasma.js";
 import type { CoulombPlasmaOptions } from "./coulomb/options.js";
-import { requireFlags } from "./errors.js";
+import { FermistateError, requireFlags } from "./errors.js";
 import { electronPositronGas } from "./fermi-gas/electron-positron-gas.js";
 import { idealIons } from "./ions/ideal-ions.js";
 import { radiation } from "./radiation.js";
@@ -49,8 +49,12 @@ export interface WhiteDwarfMatterOptions {
  * ```
  */
 export function whiteDwarfMatter(options: WhiteDwarfMatterOptions = {}): EquationOfState {
-  const { coulomb = true, ...flags } = typeof options === "object" && options !== null ? options : { flags: options };
-  requireFlags("options", flags, ["ions", "radiation"]);
+  requireFlags("options", options, ["ions", "radiation"], ["coulomb"]);
+  const { coulomb = true } = options;
+  if (typeof coulomb !== "boolean" && (typeof coulomb !== "object" || coulomb === null || Array.isArray(coulomb))) {
+    const allowed = "true, false or an object of options of coulombPlasma";
+    throw new FermistateError("invalid-option", { argument: "options.coulomb", given: coulomb, allowed });
+  }
   const parts = [electronPositronGas()];
   if (options.ions ?? true)
     parts.push(coulomb === false ? idealIons() : coulombPlasma(coulomb === true ? {} : coulomb));

@@ -4,7 +4,7 @@
  * In ln rho and ln P a piecewise polytrope is a broken line, so broken-line.ts finds it; e follows from P by the first
  * law. What the fit is worth is measured at densities that it has not seen.
  */
-import { FermistateError, requireFinite } from "../errors.js";
+import { FermistateError, requireFinite, requireKnown } from "../errors.js";
 import {
   BAROTROPE_DENSITY,
   BAROTROPE_ENERGY,
@@ -16,7 +16,7 @@ import {
 import { fitBrokenLine } from "./broken-line.js";
 import { type Figures, type FitReport, measureAgainst, measureAtRows, withFigures } from "./fit-report.js";
 import { requireDensity } from "./from-record.js";
-import { requireDensityRange, requireKnown, requirePositive } from "./options.js";
+import { requireDensityRange, requirePositive } from "./options.js";
 import { type PiecewisePolytrope, piecewisePolytrope } from "./piecewise-polytrope.js";
 
 /** Rows of a table of cold matter, by rising density. */

@@ -11,14 +11,14 @@
  */
 import { highestCrystalDensity, meltingDensity } from "../coulomb/phase.js";
 import { isCoulombPlasma, withPhase } from "../coulomb/transition.js";
-import { FermistateError, requireFinite } from "../errors.js";
+import { FermistateError, requireFinite, requireKnown } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { BAROTROPE_DENSITY, BAROTROPE_LENGTH, BAROTROPE_PRESSURE, type Barotrope } from "./barotrope.js";
 import { type Branch, branchOf, type Path } from "./branch.js";
 import { compositionLimits } from "./capture-limit.js";
 import { freezingBranches } from "./freezing-adiabat.js";
-import { requireDensityRange, requireKnown } from "./options.js";
+import { requireDensityRange } from "./options.js";
 import { stacked } from "./stacked.js";
 
 /** Which path a barotrope follows. */

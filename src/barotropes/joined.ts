@@ -8,7 +8,7 @@
  *     rho' = s rho,   c^2 + w' = (c^2 + w)/s,   c^2 + e' = (c^2 + e)/s
  */
 import { speedOfLight } from "../constants.js";
-import { FermistateError } from "../errors.js";
+import { FermistateError, requireKnown } from "../errors.js";
 import { findRoot } from "../numerics/roots.js";
 import {
   BAROTROPE_DENSITY,
@@ -19,7 +19,7 @@ import {
   type Barotrope,
   type BarotropeLimit,
 } from "./barotrope.js";
-import { requireBarotrope, requireKnown, requirePositive } from "./options.js";
+import { requireBarotrope, requirePositive } from "./options.js";
 import { type Layer, stacked } from "./stacked.js";
 
 /** Options of {@link joinBarotropes}. */

@@ -2,14 +2,6 @@
 import { FermistateError, requireFinite } from "../errors.js";
 import type { Barotrope } from "./barotrope.js";
 
-/** Throws `invalid-option` unless `options` is an object whose keys are all known. */
-export function requireKnown(argument: string, options: unknown, known: readonly string[]): void {
-  const isObject = typeof options === "object" && options !== null && !Array.isArray(options);
-  const stranger = isObject ? Object.keys(options).find((name) => !known.includes(name)) : options;
-  if (isObject && stranger === undefined) return;
-  throw new FermistateError("invalid-option", { argument, given: stranger, allowed: `{ ${known.join(", ")} }` });
-}
-
 /** Throws `invalid-option` unless `value` has the members of a barotrope; returns it. */
 export function requireBarotrope(argument: string, value: unknown): Barotrope {
   const given = (typeof value === "object" && value !== null ? value : {}) as Partial<Barotrope>;

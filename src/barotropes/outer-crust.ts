@@ -101,9 +101,8 @@ const deep = 3e30;
  * ```
  */
 export function outerCrust(options: OuterCrustOptions = {}): OuterCrust {
-  const { equationOfState = idealElectronsAndLattice(), ...flags } = options;
-  requireFlags("options", flags, ["electronBinding", "extrapolatedMasses"]);
-  const { electronBinding = true, extrapolatedMasses = false } = flags;
+  requireFlags("options", options, ["electronBinding", "extrapolatedMasses"], ["equationOfState"]);
+  const { equationOfState = idealElectronsAndLattice(), electronBinding = true, extrapolatedMasses = false } = options;
   const all = crustNuclides(extrapolatedMasses, electronBinding);
   const pure = pureMatterOf(equationOfState);
 

@@ -1,7 +1,7 @@
 /** Piecewise polytropes: exponents and dividing densities, with P and e continuous, the sound speed too if wanted. */
-import { FermistateError, requireFinite } from "../errors.js";
+import { FermistateError, requireFinite, requireKnown } from "../errors.js";
 import { BAROTROPE_DENSITY, BAROTROPE_LENGTH } from "./barotrope.js";
-import { requireKnown, requirePositive } from "./options.js";
+import { requirePositive } from "./options.js";
 import { type BarotropicContribution, contributing } from "./polytrope.js";
 import { evaluatePieces, nextPiece, type PolytropicPiece } from "./polytropic-pieces.js";
 

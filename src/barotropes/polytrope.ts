@@ -8,7 +8,7 @@
  *     P = P_0 x^5/15    x << 1    gamma = 5/3, n = 3/2          P = P_0 x^4/12    x >> 1    gamma = 4/3, n = 3
  */
 import { electronDensityUnit, electronPressureUnit } from "../constants.js";
-import { FermistateError, requireFinite } from "../errors.js";
+import { FermistateError, requireFinite, requireKnown } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import { DENSITY } from "../matter/plasma.js";
 import type { Contribution } from "../thermodynamics/contribution.js";
@@ -22,7 +22,7 @@ import {
   type Barotrope,
 } from "./barotrope.js";
 import { completeBarotrope } from "./from-record.js";
-import { requireKnown, requirePositive } from "./options.js";
+import { requirePositive } from "./options.js";
 import { evaluatePieces, type PieceEvaluator } from "./polytropic-pieces.js";
 
 /** A barotrope that is a contribution too: `combine(polytrope(...))` is an equation of state. */

@@ -10,7 +10,7 @@
  * and Approximation Practice, chapter 16): the error falls geometrically with the number of terms. e_s makes G positive
  * down to the surface.
  */
-import { FermistateError } from "../errors.js";
+import { FermistateError, requireKnown } from "../errors.js";
 import {
   BAROTROPE_DENSITY,
   BAROTROPE_ENERGY,
@@ -23,7 +23,7 @@ import {
 import { type Figures, type FitReport, measureAgainst, withFigures } from "./fit-report.js";
 import { requireDensity } from "./from-record.js";
 import { ENERGY_SLOPE, INVERSION_SLOTS, inversionOf, SLOPE } from "./inversion.js";
-import { requireBarotrope, requireDensityRange, requireKnown, requirePositive } from "./options.js";
+import { requireBarotrope, requireDensityRange, requirePositive } from "./options.js";
 import { type BarotropicContribution, contributing } from "./polytrope.js";
 
 /** Options of {@link fitSmoothBarotrope}: either the number of terms or the error allowed. */

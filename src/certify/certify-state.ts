@@ -1,5 +1,7 @@
 /** One state audited: every number beside its reference with as many digits as wanted. */
+
 import type { Decimal } from "decimal.js";
+import { requireKnown } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { type QuantityName, quantityNames } from "../thermodynamics/quantities.js";
@@ -90,6 +92,7 @@ export function certifyState(
 ): StateCertificate {
   const subject = subjectOf(equationOfState);
   requireComposition(composition);
+  requireKnown("options", options, ["digits", "quantities"]);
   const digits = certificateDigits(options.digits ?? 25);
   const names = requireQuantities(options.quantities ?? (quantityNames as readonly QuantityName[]));
   const own = ownValues(subject, composition, density, temperature, names);

@@ -7,7 +7,7 @@
  * precision that absorbs the cancellations of those plain formulas. Two quadrature resolutions give the error.
  */
 import type { Decimal } from "decimal.js";
-import { FermistateError } from "../errors.js";
+import { FermistateError, requireKnown } from "../errors.js";
 import { coldElectronGas } from "./cold.js";
 import { type Conditions, conditions, type ReferenceElectronGasInput, requireDomain } from "./conditions.js";
 import { requireDigits } from "./digits.js";
@@ -69,6 +69,7 @@ export function referenceElectronGas(
   input: ReferenceElectronGasInput,
   options: ReferenceOptions = {},
 ): ReferenceElectronGas {
+  requireKnown("options", options, ["digits"]);
   return electronGas(input, requireDigits(options.digits ?? 25), { thirdOrder: true, rarePositrons: true });
 }
 

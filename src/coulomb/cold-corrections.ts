@@ -14,7 +14,7 @@
  * (Gell-Mann & Brueckner 1957, Phys. Rev. 106, 364) and negligible here.
  */
 import { electronRestEnergy, fineStructureConstant } from "../constants.js";
-import { FermistateError } from "../errors.js";
+import { FermistateError, requireFlags } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
 import { RELATIVITY, radiusFactor } from "../matter/plasma.js";
 import { NATURAL_LENGTH, SINGLE_LENGTH } from "../numerics/natural.js";
@@ -53,6 +53,7 @@ const lambda = Math.cbrt(4 / (9 * Math.PI));
 
 /** The classic cold set as a contribution; not for use beside `coulombPlasma()`. @throws `invalid-option` */
 export function coldCorrections(options: ColdCorrectionsOptions = {}): Contribution {
+  requireFlags("options", options, ["thomasFermi", "exchange", "correlation"], ["lattice"]);
   const { lattice = "bcc", thomasFermi = true, exchange = true, correlation = true } = options;
   if (lattice !== "bcc" && lattice !== "ion-sphere" && lattice !== false) {
     throw new FermistateError("invalid-option", {

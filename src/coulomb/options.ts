@@ -1,5 +1,5 @@
 /** What a Coulomb plasma may leave out or choose, and the check of it. */
-import { FermistateError } from "../errors.js";
+import { FermistateError, requireKnown } from "../errors.js";
 import type { LatticeName } from "./lattice.js";
 import { defaultMeltingCoupling, type Phase } from "./phase.js";
 
@@ -70,6 +70,7 @@ const defaults: Required<CoulombPlasmaOptions> = {
 
 /** The options with defaults; refuses strangers. */
 export function checkedOptions(options: CoulombPlasmaOptions): Required<CoulombPlasmaOptions> {
+  requireKnown("options", options, Object.keys(defaults));
   const chosen = { ...defaults, ...options };
   const closed: Readonly<Record<string, readonly unknown[]>> = {
     phase: ["equilibrium", "liquid", "crystal"],
@@ -83,12 +84,12 @@ export function checkedOptions(options: CoulombPlasmaOptions): Required<CoulombP
   };
   for (const [name, value] of Object.entries(chosen)) {
     if (name === "meltingCoupling") continue;
-    const allowed = Object.hasOwn(closed, name) ? closed[name] : undefined;
-    if (allowed?.includes(value)) continue;
+    const allowed = closed[name]!;
+    if (allowed.includes(value)) continue;
     throw new FermistateError("invalid-option", {
       argument: name,
       given: value,
-      allowed: allowed === undefined ? `one of ${Object.keys(defaults).join(", ")}` : allowed.map(String).join(", "),
+      allowed: allowed.map(String).join(", "),
     });
   }
   const coupling: unknown = chosen.meltingCoupling;

@@ -6,7 +6,7 @@
  * engines whose powers differ in the last bit agree. That moves a point by at most 5e-15 of itself, and no result:
  * every quantity is evaluated at the rounded value.
  */
-import { FermistateError, requireFinite } from "../errors.js";
+import { FermistateError, requireFinite, requireKnown } from "../errors.js";
 
 /** Values of one axis, strictly increasing; frozen. */
 export interface Axis {
@@ -54,6 +54,7 @@ export const maximumAxisPoints: number = 1e7;
  * ```
  */
 export function logarithmicAxis(options: LogarithmicAxisOptions): Axis {
+  requireKnown("options", options, ["from", "to", "points", "pointsPerDecade"]);
   const { from, to, points, pointsPerDecade } = options;
   requireEnds(from, to, "> 0", Number.MIN_VALUE);
   const low = Math.log10(from);
@@ -78,6 +79,7 @@ export function logarithmicAxis(options: LogarithmicAxisOptions): Axis {
  * ```
  */
 export function linearAxis(options: LinearAxisOptions): Axis {
+  requireKnown("options", options, ["from", "to", "points"]);
   const { from, to, points } = options;
   requireEnds(from, to, ">= 0", 0);
   const count = requireCount("points", points);

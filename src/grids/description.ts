@@ -1,4 +1,5 @@
 /** What a grid's numbers mean, in words that go with them into every file. */
+import { requireKnown } from "../errors.js";
 import type { Grid } from "./grid.js";
 
 /** What a caller may add to the files and charts of a grid. */
@@ -11,6 +12,7 @@ export interface GridTexts {
 
 /** The title of a grid: the caller's, or what it is made of. */
 export function titleOf(grid: Grid, texts: GridTexts = {}): string {
+  requireKnown("texts", texts, ["title", "note"]);
   return texts.title ?? `Equation of state of ${grid.composition.name}`;
 }
 

@@ -1,5 +1,5 @@
 /** Inverse questions by the column: each row starts from its neighbour's answer, nothing is allocated per row. */
-import { FermistateError, isFermistateError } from "../errors.js";
+import { FermistateError, isFermistateError, requireKnown } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import { isList, refuseQuantity, requireColumn, requireObject, requireRows } from "../thermodynamics/columns.js";
 import { holds, refusePoint } from "../thermodynamics/domain.js";
@@ -206,6 +206,7 @@ function guesses(input: SolveInput, count: number): SolveInput["guess"] {
     const allowed = "an object with columns density, temperature or both";
     throw new FermistateError("invalid-option", { argument: "guess", given: guess, allowed });
   }
+  requireKnown("guess", guess, ["density", "temperature"]);
   for (const name of ["density", "temperature"] as const) {
     const starts = guess[name];
     if (starts === undefined) continue;

@@ -1,5 +1,5 @@
 /** Inverse questions, one at a time: the state that has two given quantities. */
-import { FermistateError } from "../errors.js";
+import { FermistateError, requireKnown } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import { holds, refusePoint } from "../thermodynamics/domain.js";
 import type { EquationOfState, State } from "../thermodynamics/equation-of-state.js";
@@ -101,6 +101,7 @@ export function solve(
   options: SolveOptions = {},
 ): Solution {
   requireComposition(composition);
+  requireKnown("options", options, ["guess"]);
   const question = questionOf("given", given);
   for (const name of question.names) requireGiven(name, given[name]);
   const [first, second] = question.names.map((name) => given[name] as number) as [number, number];
@@ -146,6 +147,8 @@ function guess(solver: Solver, { names, type, first, second }: Question, options
       allowed: "an object with density, temperature or both, such as the state of a neighbour",
     });
   }
+  const isState = "pressureByDensity" in start;
+  if (!isState) requireKnown("options.guess", start, ["density", "temperature"]);
   const { w, f } = solver.searcher;
   const density = names[0] === "density" ? w[DENSITY_NOW]! : start.density;
   const temperature = names[0] === "temperature" ? w[TEMPERATURE_NOW]! : start.temperature;
@@ -156,7 +159,7 @@ function guess(solver: Solver, { names, type, first, second }: Question, options
     if (value === undefined) return false;
     requireGiven(name, value, undefined, `guess.${name}`);
   }
-  if ("pressureByDensity" in start && start.temperature > 0) {
+  if (isState && start.temperature > 0) {
     solver.at[0] = Math.log(density! / start.density);
     solver.at[1] = Math.log(temperature! / start.temperature);
     fillFromState(f, 0, first, start);

@@ -59,9 +59,8 @@ const counted = new Float64Array(2);
  * @throws `invalid-option`
  */
 export function idealIons(options: IdealIonsOptions = {}): Contribution {
-  const { only, ...flags } = options;
-  requireFlags("options", flags, ["freeNeutrons"]);
-  const { freeNeutrons = true } = flags;
+  requireFlags("options", options, ["freeNeutrons"], ["only"]);
+  const { only, freeNeutrons = true } = options;
   const ofNeutrons = only === undefined ? 0 : neutronConstant();
   let lastComposition: Composition | undefined;
   let constants: Float64Array;

@@ -19,7 +19,7 @@ import { degenerateElectrons, polytrope } from "../barotropes/polytrope.js";
 import { coldCorrections } from "../coulomb/cold-corrections.js";
 import { coulombPlasma } from "../coulomb/coulomb-plasma.js";
 import { highestCrystalDensity } from "../coulomb/phase.js";
-import { FermistateError, requireFinite } from "../errors.js";
+import { FermistateError, requireFinite, requireKnown } from "../errors.js";
 import { electronPositronGas } from "../fermi-gas/electron-positron-gas.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import type { CaptureThreshold } from "../regime/capture.js";
@@ -211,13 +211,7 @@ function warmMatter(melts: boolean): EquationOfState {
 
 function temperatureOf(options: unknown): number | false {
   const allowed = `${shortest(temperatures[0])} to ${shortest(temperatures[1])} K, or false`;
-  if (typeof options !== "object" || options === null || Array.isArray(options)) {
-    throw new FermistateError("invalid-option", { argument: "options", given: options, allowed: "{ temperature }" });
-  }
-  const stranger = Object.keys(options).find((name) => name !== "temperature");
-  if (stranger !== undefined) {
-    throw new FermistateError("invalid-option", { argument: "options", given: stranger, allowed: "{ temperature }" });
-  }
+  requireKnown("options", options, ["temperature"]);
   const given = (options as LadderOptions).temperature ?? 1e8;
   if (given === false) return false;
   const temperature = requireFinite("temperature", given, allowed);

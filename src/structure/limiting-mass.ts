@@ -6,7 +6,6 @@
  *
  *     M = ((3 pi)^(1/2)/2) omega_3 (hbar c/G)^(3/2)/(mu_e m)^2,    omega_3 = -xi_1^2 theta'(xi_1) at n = 3.
  */
-import { requireKnown } from "../barotropes/options.js";
 import {
   atomicMassConstant,
   gravitationalConstant,
@@ -14,7 +13,7 @@ import {
   reducedPlanckConstant,
   speedOfLight,
 } from "../constants.js";
-import { FermistateError, requireFinite } from "../errors.js";
+import { FermistateError, requireFinite, requireKnown } from "../errors.js";
 
 /**
  * The mass m that a molecular weight counts: the atomic mass constant, the mass of the hydrogen atom or of the proton. The

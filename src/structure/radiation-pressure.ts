@@ -15,8 +15,9 @@
  *
  * Newton's theory, ideal gas. Sources from memory; every constant is derived in the tests.
  */
-import { requireKnown } from "../barotropes/options.js";
+
 import { boltzmannConstant, gravitationalConstant, radiationConstant } from "../constants.js";
+import { requireKnown } from "../errors.js";
 import { chandrasekharMass, type MassUnitOptions, massOfUnit, OMEGA_3, requirePositive } from "./limiting-mass.js";
 
 /** How a pressure is shared between gas and radiation; the two sum to one. */

@@ -3,8 +3,9 @@
  *
  * A fit is judged by the stars it makes, and barotropes do not know stars: the fit takes these numbers as an option.
  */
+
 import type { Barotrope } from "../barotropes/barotrope.js";
-import { requireKnown } from "../barotropes/options.js";
+import { requireKnown } from "../errors.js";
 import type { Relativity } from "./hydrostatic-equations.js";
 import { maximumMass } from "./maximum-mass.js";
 import { hydrostaticStar } from "./star.js";

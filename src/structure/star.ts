@@ -13,9 +13,8 @@ import {
   type Barotrope,
   type BarotropeLimit,
 } from "../barotropes/barotrope.js";
-import { requireKnown } from "../barotropes/options.js";
 import { gravitationalConstant, speedOfLight } from "../constants.js";
-import { FermistateError, requireFinite } from "../errors.js";
+import { FermistateError, requireFinite, requireKnown } from "../errors.js";
 import { denseSolution } from "../numerics/dense-solution.js";
 import type { OdeStep } from "../numerics/ode.js";
 import { type StarFinding, starFindings } from "./findings.js";

@@ -7,7 +7,7 @@
  */
 import { mkdir, readdir, readFile, unlink } from "node:fs/promises";
 import { join } from "node:path";
-import { FermistateError } from "../errors.js";
+import { FermistateError, requireKnown } from "../errors.js";
 import { writeText } from "../files/write.js";
 import { assembleTable } from "../tables/build.js";
 import type { TablePlan } from "../tables/plan.js";
@@ -184,9 +184,8 @@ interface CheckedOptions extends FolderOptions {
 }
 
 function checkedOptions(options: FolderOptions): CheckedOptions {
-  const { threads = 1, shard, onProgress, signal, ...others } = options;
-  const [stranger] = Object.keys(others);
-  if (stranger !== undefined) refuse("options", stranger, "{ threads, shard, onProgress, signal }");
+  requireKnown("options", options, ["threads", "shard", "onProgress", "signal"]);
+  const { threads = 1, shard } = options;
   if (!Number.isInteger(threads) || threads < 1 || threads > 64) {
     refuse("options.threads", threads, "a whole number from 1 to 64");
   }

@@ -63,7 +63,9 @@ describe("quantities beyond what matter of a density can have", () => {
     "%s below that of cold matter: the error carries the cold value",
     (name) => {
       const cold = matter.state(1e6, 0, carbonOxygen)[name];
-      const error = refusal(() => solve(matter, carbonOxygen, { density: 1e6, [name]: cold * 0.999 } as object as Given));
+      const error = refusal(() =>
+        solve(matter, carbonOxygen, { density: 1e6, [name]: cold * 0.999 } as object as Given),
+      );
       expect(error.code).toBe("below-cold");
       expect(error.limit).toBe(cold);
       expect(error.message).toContain("T = 0");
