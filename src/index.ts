@@ -63,6 +63,7 @@ export type {
   EquationOfState,
   FreeEnergyDerivatives,
   OptionalQuantity,
+  RefusedRows,
   State,
 } from "./thermodynamics/equation-of-state.js";
 export type { Evaluator } from "./thermodynamics/evaluator.js";
@@ -74,4 +75,5 @@ export {
   type PressureAndEnergy,
 } from "./thermodynamics/mean-derivatives.js";
 export { type Quantity, type QuantityName, quantities, quantityNames } from "./thermodynamics/quantities.js";
+export { type RefusalReason, refusalReasons } from "./thermodynamics/refusal-reasons.js";
 export { type WhiteDwarfMatterOptions, whiteDwarfMatter } from "./white-dwarf-matter.js";

@@ -1,13 +1,24 @@
 /** Inverse questions by the column: each row starts from its neighbour's answer, nothing is allocated per row. */
-import { FermistateError, isFermistateError, requireKnown } from "../errors.js";
+import { FermistateError, requireKnown } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
-import { isList, refuseQuantity, requireColumn, requireObject, requireRows } from "../thermodynamics/columns.js";
+import { DENSITY, POINT_LENGTH, TEMPERATURE } from "../matter/point.js";
+import {
+  checkRefused,
+  isList,
+  refuseQuantity,
+  requireColumn,
+  requireObject,
+  requireRows,
+} from "../thermodynamics/columns.js";
+import type { Domain } from "../thermodynamics/contribution.js";
 import { holds, refusePoint } from "../thermodynamics/domain.js";
-import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
+import type { EquationOfState, RefusedRows } from "../thermodynamics/equation-of-state.js";
 import { type QuantityName, quantities, quantityNames } from "../thermodynamics/quantities.js";
+import { ANSWERED, DENSITY_TOO_LOW, GIVEN_NO_NUMBER, GIVEN_NOT_POSITIVE } from "../thermodynamics/reason.js";
+import { reasonOf, reasonOutside } from "../thermodynamics/refusal-reasons.js";
 import { finish } from "./finish.js";
 import { type GivenPair, type Question, questionOf, requireGiven } from "./questions.js";
-import { refuseQuestion } from "./refusal.js";
+import { reasonOfEnd, refuseQuestion } from "./refusal.js";
 import {
   BOTH,
   COEXISTENCE,
@@ -41,13 +52,7 @@ export type SearchColumn =
   | "temperatureConditionNumber";
 
 /** Output of {@link solveColumns}: columns of the caller; only those given are written. */
-export type SolveOutput = { readonly [Name in QuantityName | SearchColumn]?: Float64Array } & {
-  /**
-   * Where given, a row without an answer gets 1 here (others 0), its other outputs stay as they were, and nothing is thrown for
-   * it: for schemes that repair such zones themselves.
-   */
-  readonly refused?: Uint8Array;
-};
+export type SolveOutput = { readonly [Name in QuantityName | SearchColumn]?: Float64Array } & RefusedRows;
 
 const searchColumns: readonly SearchColumn[] = [
   "density",
@@ -78,7 +83,7 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
   const each = isList(composition) ? composition : undefined;
   checkCompositions(composition, each, count);
   const guessed = guesses(input, count);
-  const { slots, columns, plasma } = outputs(output, count);
+  const { slots, columns, detail } = outputs(output, count);
   const { refused } = output;
   if (refused === undefined) {
     for (let i = 0; i < count; i++) checkGiven(equationOfState, question, first, second, i);
@@ -97,7 +102,8 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
   const knowsTemperature = question.type === DENSITY_AT_TEMPERATURE;
   let neighbour: Composition | undefined;
 
-  function answer(i: number): void {
+  /** Answers a row; the number of the reason where there is no answer and a column for it. */
+  function answer(i: number): number {
     const matter = each === undefined ? (composition as Composition) : each[i]!;
     const follows = isNear(neighbour, matter) && guessed === undefined && w[TEMPERATURE_NOW]! > 0;
     if (follows) {
@@ -119,10 +125,18 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
     const end = solver.find(matter, question);
     if (end !== FOUND) {
       if (knowsDensity) w[DENSITY_NOW] = first[i]!;
+      if (refused !== undefined) return reasonOfEnd(matter, solver, question, end);
       refuseQuestion(equationOfState, matter, solver, question, end, i);
     }
     if (wantsConditions) solver.fillConditions(question);
-    const { quantities: record, point } = finish(searcher, matter, plasma, i);
+    const ev = finish(searcher, matter, detail);
+    if (refused === undefined) ev.fillThermodynamics(matter, i);
+    else {
+      const reason = ev.fillWhereStable(matter);
+      if (reason !== ANSWERED) return reason;
+    }
+    ev.fillPlasma();
+    const { quantities: record, point } = ev;
     neighbour = place[0] === COEXISTENCE ? undefined : matter;
     if (output.density !== undefined) output.density[i] = knowsDensity ? first[i]! : point[0]!;
     if (output.temperature !== undefined) output.temperature[i] = knowsTemperature ? first[i]! : point[1]!;
@@ -136,22 +150,44 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
       if (Number.isNaN(value)) refuseQuantity(quantityNames[slots[j]!]!, i);
       columns[j]![i] = value;
     }
+    return ANSWERED;
   }
 
-  if (refused === undefined) for (let i = 0; i < count; i++) answer(i);
-  else {
-    for (let i = 0; i < count; i++) {
-      refused[i] = 0;
-      try {
-        checkGiven(equationOfState, question, first, second, i);
-        answer(i);
-      } catch (error) {
-        if (!isFermistateError(error) || error.code === "unavailable-quantity") throw error;
-        refused[i] = 1;
-        neighbour = undefined;
-      }
+  /** As `answer`, with what contributions throw. */
+  function attempt(i: number): number {
+    try {
+      return answer(i);
+    } catch (error) {
+      return reasonOf(error);
     }
   }
+
+  for (let i = 0; i < count; i++) {
+    if (refused === undefined) answer(i);
+    else {
+      refused[i] = reasonOfGiven(equationOfState.domain, question, first, second, i) || attempt(i);
+      if (refused[i] !== ANSWERED) neighbour = undefined;
+    }
+  }
+}
+
+const probe = new Float64Array(POINT_LENGTH);
+
+/** As {@link checkGiven}, but returns the number of the reason. */
+function reasonOfGiven(
+  domain: Domain,
+  { names: [one, other], type }: Question,
+  first: Float64Array,
+  second: Float64Array,
+  i: number,
+): number {
+  probe[DENSITY] = one === "density" ? first[i]! : domain.density[0];
+  probe[TEMPERATURE] = one === "temperature" ? first[i]! : domain.temperature[0];
+  const outside = reasonOutside(domain, probe);
+  if (outside !== ANSWERED && outside < DENSITY_TOO_LOW) return outside;
+  if (!Number.isFinite(second[i]) || (type === BOTH && !Number.isFinite(first[i]))) return GIVEN_NO_NUMBER;
+  const pressure = one === "pressure" ? first[i]! : other === "pressure" ? second[i]! : 1;
+  return pressure > 0 ? outside : GIVEN_NOT_POSITIVE; // as in `solve`: what no matter has before what this one has not
 }
 
 /** Compositions near enough for the answer of one to lead to that of the other: matter that burns differs from zone to zone. */
@@ -218,7 +254,7 @@ function guesses(input: SolveInput, count: number): SolveInput["guess"] {
 }
 
 /** Slots and columns of the quantities wanted, and whether the costly ones are among them. */
-function outputs(output: SolveOutput, count: number): { slots: number[]; columns: Float64Array[]; plasma: boolean } {
+function outputs(output: SolveOutput, count: number): { slots: number[]; columns: Float64Array[]; detail: boolean } {
   requireObject("output", output);
   const slots: number[] = [];
   const columns: Float64Array[] = [];
@@ -235,18 +271,7 @@ function outputs(output: SolveOutput, count: number): { slots: number[]; columns
     slots.push(quantityNames.indexOf(name as QuantityName));
     columns.push(values as Float64Array);
   }
-  return { slots, columns, plasma: output.positronDensity !== undefined };
-}
-
-function checkRefused(refused: unknown, count: number): void {
-  if (refused === undefined) return;
-  if (!(refused instanceof Uint8Array)) {
-    throw new FermistateError("invalid-option", { argument: "refused", given: refused, allowed: "a Uint8Array" });
-  }
-  if (refused.length < count) {
-    const allowed = `>= ${count} rows`;
-    throw new FermistateError("length-mismatch", { argument: "refused", given: refused.length, allowed });
-  }
+  return { slots, columns, detail: output.positronDensity !== undefined };
 }
 
 /** Density and temperature given: an ordinary batch, and no search to tell of. */
@@ -257,11 +282,13 @@ function direct(
 ): void {
   const { density, temperature, evaluations, densityConditionNumber, temperatureConditionNumber, refused, ...state } =
     output;
-  eos.evaluate(input, state);
-  refused?.fill(0, 0, input.density.length);
-  density?.set(input.density);
-  temperature?.set(input.temperature);
-  evaluations?.fill(1, 0, input.density.length);
-  densityConditionNumber?.fill(0, 0, input.density.length);
-  temperatureConditionNumber?.fill(0, 0, input.density.length);
+  eos.evaluate(input, refused === undefined ? state : { ...state, refused });
+  for (let i = 0; i < input.density.length; i++) {
+    if (refused !== undefined && refused[i] !== ANSWERED) continue;
+    if (density !== undefined) density[i] = input.density[i]!;
+    if (temperature !== undefined) temperature[i] = input.temperature[i]!;
+    if (evaluations !== undefined) evaluations[i] = 1;
+    if (densityConditionNumber !== undefined) densityConditionNumber[i] = 0;
+    if (temperatureConditionNumber !== undefined) temperatureConditionNumber[i] = 0;
+  }
 }

@@ -7,10 +7,11 @@ import type { Searcher } from "./sides.js";
 import { COEXISTENCE, DENSITY_NOW, EVALUATIONS, STEP_U, STEP_V, TEMPERATURE_NOW } from "./slots.js";
 
 /**
- * Fills members, point and quantities of the side where the result lies, with the last step of the search made through
- * the third-order members; `detail` says whether to compute what only some callers want. Returns that side's evaluator.
+ * Fills members and point of the side where the result lies, with the last step of the search made through the
+ * third-order members; `detail` says whether to compute what only some callers want. Returns that side's evaluator, ready
+ * for its quantities.
  */
-export function finish(searcher: Searcher, composition: Composition, detail: boolean, row: number): Evaluator {
+export function finish(searcher: Searcher, composition: Composition, detail: boolean): Evaluator {
   const { w, place } = searcher;
   const ev = searcher.evaluator();
   if (place[0] === COEXISTENCE) mix(searcher, composition);
@@ -26,8 +27,6 @@ export function finish(searcher: Searcher, composition: Composition, detail: boo
     ev.move(composition);
   }
   if (detail) ev.fillDetail(composition);
-  ev.fillThermodynamics(composition, row);
-  ev.fillPlasma();
   return ev;
 }
 

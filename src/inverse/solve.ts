@@ -189,7 +189,9 @@ function solutionOf(
   const sizes = [Math.abs(f[SIZE]!), Math.abs(f[FUNCTION_LENGTH + SIZE]!)];
   solver.fillConditions(question);
   const [byDensity, byTemperature] = [conditions[0]!, conditions[1]!];
-  const ev = finish(searcher, composition, true, -1);
+  const ev = finish(searcher, composition, true);
+  ev.fillThermodynamics(composition, -1);
+  ev.fillPlasma();
   const { quantities, point } = ev;
   let residual = 0;
   const targets = question.type === BOTH ? [first, second] : [second];

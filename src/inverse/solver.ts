@@ -2,6 +2,9 @@
 import type { Composition } from "../matter/composition.js";
 import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
+import { quantityNames } from "../thermodynamics/quantities.js";
+import { ANSWERED } from "../thermodynamics/reason.js";
+import { reasonOf } from "../thermodynamics/refusal-reasons.js";
 import { fillFunction } from "./functions.js";
 import { predict } from "./predict.js";
 import type { Question } from "./questions.js";
@@ -39,7 +42,16 @@ export interface Solver {
   follow(question: Question): void;
   /** Writes the condition numbers of the last result. */
   fillConditions(question: Question): void;
+  /** Value of a quantity at T = 0 and the density of the record, after {@link Solver.fillCold}; NaN where there is none. */
+  readonly cold: Float64Array;
+  /** Writes the value of a kind of quantity at T = 0. */
+  fillCold(composition: Composition, kind: number): void;
 }
+
+/** Slots of quantities by kind. */
+const coldSlots: readonly number[] = (
+  ["pressure", "specificEnergy", "specificEntropy", "specificEnthalpy"] as const
+).map((name) => quantityNames.indexOf(name));
 
 function solverOf(eos: EquationOfState): Solver {
   const searcher = searcherOf(eos);
@@ -48,6 +60,21 @@ function solverOf(eos: EquationOfState): Solver {
   const { w, f, place } = searcher;
   const conditions = new Float64Array(2);
   const at = new Float64Array(2);
+  const cold = new Float64Array(FUNCTION_LENGTH);
+
+  function fillCold(composition: Composition, kind: number): void {
+    cold[0] = Number.NaN;
+    if (!eos.domain.zeroTemperature) return;
+    first.point[DENSITY] = w[DENSITY_NOW]!;
+    first.point[TEMPERATURE] = 0;
+    try {
+      first.fillMembers(composition, 2);
+      if (first.fillWhereStable(composition) !== ANSWERED) return;
+      cold[0] = first.quantities[coldSlots[kind]!]!;
+    } catch (error) {
+      reasonOf(error); // a liquid has no state at T = 0
+    }
+  }
 
   function begin(composition: Composition, { type, first: kind, second }: Question): void {
     if (type === TEMPERATURE_AT_DENSITY) {
@@ -111,7 +138,7 @@ function solverOf(eos: EquationOfState): Solver {
   }
 
   const follow = ({ type }: Question): void => predict(type, w, f, at);
-  return { searcher, conditions, at, find, follow, fillConditions };
+  return { searcher, conditions, at, cold, find, follow, fillConditions, fillCold };
 }
 
 const known = new WeakMap<EquationOfState, Solver>();

@@ -23,16 +23,28 @@ export function checkBatch(
   requireObject("input", input);
   requireObject("output", output);
   const count = checkInput(input);
+  checkRefused(output.refused, count);
   for (const [name, column] of Object.entries(output)) {
-    if (column === undefined) continue;
+    if (column === undefined || name === "refused") continue;
     if (!Object.hasOwn(quantities, name)) {
-      const allowed = `one of ${quantityNames.join(", ")}`;
+      const allowed = `one of ${quantityNames.join(", ")}, refused`;
       throw new FermistateError("unavailable-quantity", { argument: "output", given: name, allowed });
     }
     requireRows(name, column, count);
   }
-  checkPoints(equationOfState, input);
+  if (output.refused === undefined) checkPoints(equationOfState, input);
   return count;
+}
+
+/** Throws unless a column of refusals is a Uint8Array with room for `count` rows, or left out. */
+export function checkRefused(refused: unknown, count: number): void {
+  if (refused === undefined) return;
+  if (!(refused instanceof Uint8Array)) {
+    throw new FermistateError("invalid-option", { argument: "refused", given: refused, allowed: "a Uint8Array" });
+  }
+  if (refused.length >= count) return;
+  const allowed = `>= ${count} rows`;
+  throw new FermistateError("length-mismatch", { argument: "refused", given: refused.length, allowed });
 }
 
 /** Checks the columns of the input and every composition; returns the number of rows. */

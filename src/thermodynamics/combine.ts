@@ -9,6 +9,8 @@ import type { BatchInput, BatchOutput, EquationOfState, FreeEnergyDerivatives, S
 import { type Evaluator, evaluatorOf } from "./evaluator.js";
 import { MEMBER_COUNT, naturalDerivatives, type Order, SECOND_ORDER_COUNT } from "./free-energy.js";
 import { FIRST_PLASMA_QUANTITY, QUANTITY_COUNT, quantityNames } from "./quantities.js";
+import { ANSWERED } from "./reason.js";
+import { reasonOf, reasonOutside } from "./refusal-reasons.js";
 import { freeEnergyFrom, stateFrom } from "./state.js";
 
 /**
@@ -49,6 +51,17 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
     return stateFrom(density, temperature, composition, record);
   }
 
+  /** Fills the record of quantities of one row; the number of the reason where that fails. */
+  function attempt(matter: Composition, detail: boolean): number {
+    try {
+      own.fillMembers(matter, 2);
+      if (detail) own.fillDetail(matter);
+      return own.fillWhereStable(matter);
+    } catch (error) {
+      return reasonOf(error);
+    }
+  }
+
   function evaluate(input: BatchInput, output: BatchOutput): void {
     const count = checkBatch({ contributions: parts, domain }, input, output);
     const { density, temperature, composition } = input;
@@ -63,13 +76,20 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
     }
     const plasma = slots.some((slot) => slot >= FIRST_PLASMA_QUANTITY);
     const detail = output.positronDensity !== undefined;
+    const { refused } = output;
     for (let i = 0; i < count; i++) {
       const matter = each === undefined ? (composition as Composition) : each[i]!;
       point[DENSITY] = density[i]!;
       point[TEMPERATURE] = temperature[i]!;
-      own.fillMembers(matter, 2);
-      if (detail) own.fillDetail(matter);
-      own.fillThermodynamics(matter, i);
+      if (refused === undefined) {
+        own.fillMembers(matter, 2);
+        if (detail) own.fillDetail(matter);
+        own.fillThermodynamics(matter, i);
+      } else {
+        const reason = reasonOutside(domain, point) || attempt(matter, detail);
+        refused[i] = reason;
+        if (reason !== ANSWERED) continue;
+      }
       if (plasma) own.fillPlasma();
       for (let j = 0; j < columns.length; j++) {
         const value = record[slots[j]!]!;

@@ -73,7 +73,7 @@ export function refusePoint(
 }
 
 /** The shorter of 0.001 and 1e-3: for messages. */
-function compact(value: number): string {
+export function compact(value: number): string {
   const plain = String(value);
   const scientific = value.toExponential().replace("e+", "e");
   return scientific.length < plain.length ? scientific : plain;

@@ -43,8 +43,17 @@ export interface BatchInput {
   readonly composition: Composition | readonly Composition[];
 }
 
+/** A column of the reasons for which rows are refused. */
+export interface RefusedRows {
+  /**
+   * Where given, a row without an answer gets the number of its reason here (`refusalReasons`; 0 for an answer), its other
+   * outputs stay as they were, and nothing is thrown for it: for schemes that repair such rows themselves.
+   */
+  readonly refused?: Uint8Array;
+}
+
 /** Output columns of a batch, owned by the caller, at least as long as the input; only those given are computed. */
-export type BatchOutput = { readonly [Name in QuantityName]?: Float64Array };
+export type BatchOutput = { readonly [Name in QuantityName]?: Float64Array } & RefusedRows;
 
 /** An equation of state: a sum of contributions behind one interface. */
 export interface EquationOfState {
@@ -68,7 +77,8 @@ export interface EquationOfState {
   /**
    * Many states at once: writes the columns of `output` that are given and allocates nothing per point.
    *
-   * All inputs are checked before the first row is written.
+   * All inputs are checked before the first row is written, and the first row without an answer is refused; with a column
+   * `refused` in the output every other row is answered.
    * @throws as {@link EquationOfState.state}, with the row; `length-mismatch`; `unavailable-quantity`
    */
   evaluate(input: BatchInput, output: BatchOutput): void;

@@ -8,9 +8,12 @@ import { FermistateError } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
 import { DENSITY, fillPlasma, POINT_LENGTH, TEMPERATURE } from "../matter/plasma.js";
 import type { Contribution } from "./contribution.js";
+import { commonDomain } from "./domain.js";
 import { MEMBER_COUNT, moveMembers, type Order, SECOND_ORDER_COUNT } from "./free-energy.js";
 import { fillPlasmaQuantities, fillQuantities, QUANTITY_COUNT } from "./quantities.js";
+import { ANSWERED } from "./reason.js";
 import { addFromElectronDensity, SPECIES_LENGTH } from "./species-members.js";
+import { refuseUnstable } from "./stability.js";
 
 /** Records of one point and the steps that fill them; the point is not checked, and nothing is allocated. */
 export interface Evaluator {
@@ -35,9 +38,11 @@ export interface Evaluator {
   move(composition: Composition): void;
   /**
    * Quantities that follow from the members; `row` is for the error message, -1 for none.
-   * @throws `unstable`
+   * @throws `unstable`, with the place, and with the temperature and the density from which on the sum is stable
    */
   fillThermodynamics(composition: Composition, row: number): void;
+  /** As {@link Evaluator.fillThermodynamics}, but returns a number of `refusalReasons`, 0 where the sum is stable, and throws nothing. */
+  fillWhereStable(composition: Composition): number;
   /** Quantities that the record of the point holds; after the others. */
   fillPlasma(): void;
   /**
@@ -105,12 +110,17 @@ export function evaluatorOf(parts: readonly Contribution[]): Evaluator {
     }
   }
 
-  function fillThermodynamics(composition: Composition, row: number): void {
+  function fillWhereStable(composition: Composition): number {
     if (point[TEMPERATURE] === 0) fillCold(composition);
-    fillQuantities(point, members, cold, quantities, row);
+    return fillQuantities(point, members, cold, quantities);
   }
 
-  return Object.freeze({
+  function fillThermodynamics(composition: Composition, row: number): void {
+    const reason = fillWhereStable(composition);
+    if (reason !== ANSWERED) refuseUnstable(reason, evaluator, composition, commonDomain(parts), row);
+  }
+
+  const evaluator: Evaluator = Object.freeze({
     point,
     members,
     cold,
@@ -121,8 +131,10 @@ export function evaluatorOf(parts: readonly Contribution[]): Evaluator {
     fillDetail,
     fillThermodynamics,
     fillPlasma: () => fillPlasmaQuantities(point, quantities),
+    fillWhereStable,
     fillSpecies,
   });
+  return evaluator;
 }
 
 function followsFromMembers({ dependsOn }: Contribution): boolean {

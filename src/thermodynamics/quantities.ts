@@ -6,7 +6,6 @@
  * Definitions as in Cox & Giuli 1968, Principles of Stellar Structure, chapter 9.
  */
 import { electronRestTemperature, speedOfLight } from "../constants.js";
-import { FermistateError, withIndex } from "../errors.js";
 import {
   CRYSTAL_FRACTION,
   DENSITY,
@@ -24,6 +23,14 @@ import {
   TEMPERATURE,
 } from "../matter/plasma.js";
 import { ENERGY, ENTROPY, HEAT, PRESSURE, PRESSURE_R, PRESSURE_T } from "./free-energy.js";
+import {
+  ANSWERED,
+  NEGATIVE_HEAT_CAPACITY,
+  NO_ADIABATIC_RESISTANCE,
+  NO_NUMBER_ADDED,
+  NO_PRESSURE,
+  NO_RESISTANCE,
+} from "./reason.js";
 
 /** What a quantity is called, measured in, and means. */
 export interface Quantity {
@@ -127,15 +134,15 @@ const PER_LIGHT_SPEED_SQUARED = 1 / (speedOfLight * speedOfLight);
 /**
  * Fills the first part of `out` (order of {@link quantities}) from the summed members.
  * `cold[0]`, `cold[1]`: limits of c_v/T and (dP/dT)/(rho T) at T = 0; `cold[2]`: residual entropy. Read only at T = 0.
- * Throws `unstable` where the sum exerts no pressure or resists neither compression nor heating.
+ * Returns 0, or the number of the reason (refusal-reasons.ts) where the sum exerts no pressure or resists neither
+ * compression nor heating: `out[0]` then holds what broke the limit.
  */
 export function fillQuantities(
   point: Float64Array,
   members: Float64Array,
   cold: Float64Array,
   out: Float64Array,
-  index: number,
-): void {
+): number {
   const density = point[DENSITY]!;
   const temperature = point[TEMPERATURE]!;
   const specificPressure = members[PRESSURE]!;
@@ -149,7 +156,7 @@ export function fillQuantities(
   const grueneisen = atZero ? (cold[0]! > 0 ? cold[1]! / cold[0]! : 0) : heat > 0 ? thermal / heat : 0;
   const adiabatic = compressibility + thermal * grueneisen; // (dP/drho) at constant entropy
   if (!(specificPressure > 0 && compressibility >= 0 && adiabatic > 0 && heat >= 0 && Number.isFinite(energy))) {
-    refuseSum(members, adiabatic, index);
+    return instability(members, adiabatic, out);
   }
   const pressure = specificPressure * density;
   const perPressure = 1 / specificPressure;
@@ -180,6 +187,7 @@ export function fillQuantities(
   out[18] = heatCapacity;
   out[19] = -thermal * perDensity * perTemperature;
   out[20] = atZero ? cold[0]! : heatCapacity * perTemperature;
+  return ANSWERED;
 }
 
 /** First slot of the quantities that do not come from the free energy but from the record of the point. */
@@ -202,20 +210,15 @@ export function fillPlasmaQuantities(point: Float64Array, out: Float64Array): vo
   out[32] = point[CRYSTAL_FRACTION]!;
 }
 
-/** Says which of the conditions of stability fails. */
-function refuseSum(members: Float64Array, adiabatic: number, index: number): never {
-  const checks: readonly (readonly [string, number, boolean, string])[] = [
-    ["pressure over density", members[PRESSURE]!, members[PRESSURE]! > 0, "> 0: contributions that act on this matter"],
-    ["pressureByDensity", members[PRESSURE_R]!, members[PRESSURE_R]! >= 0, ">= 0 at constant temperature"],
-    ["pressureByDensity", adiabatic, adiabatic > 0, "> 0 at constant entropy"],
-    ["heatCapacityV times temperature", members[HEAT]!, members[HEAT]! >= 0, ">= 0"],
-  ];
-  const [argument, given, , allowed] = checks.find(([, , good]) => !good) ?? [
-    "specificEnergy",
-    members[ENERGY]!,
-    false,
-    "a finite number",
-  ];
-  const reason = Number.isNaN(given) ? "a number: a contribution has added NaN" : `${allowed}, for stable matter`;
-  throw new FermistateError("unstable", withIndex({ argument, given, allowed: reason }, index < 0 ? undefined : index));
+/** The number of the reason (refusal-reasons.ts); writes what broke the limit to `out[0]`. */
+function instability(members: Float64Array, adiabatic: number, out: Float64Array): number {
+  const worst = (value: number, reason: number): number => {
+    out[0] = value;
+    return reason;
+  };
+  if (!(members[PRESSURE]! > 0)) return worst(members[PRESSURE]!, NO_PRESSURE);
+  if (!(members[PRESSURE_R]! >= 0)) return worst(members[PRESSURE_R]!, NO_RESISTANCE);
+  if (!(adiabatic > 0)) return worst(adiabatic, NO_ADIABATIC_RESISTANCE);
+  if (!(members[HEAT]! >= 0)) return worst(members[HEAT]!, NEGATIVE_HEAT_CAPACITY);
+  return worst(members[ENERGY]!, NO_NUMBER_ADDED);
 }
