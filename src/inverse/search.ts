@@ -45,7 +45,7 @@ import {
 } from "./slots.js";
 
 /** A residual of this many units of the terms' size is rounding. */
-const ROUNDING = 3 * 2 ** -52;
+export const ROUNDING: number = 3 * 2 ** -52;
 /** A step whose square is below rounding: the members' own derivatives make it (free-energy.ts). */
 const LAST_STEP = 6e-9;
 /** The same where the residual is rounding: such a step is as uncertain as it is long. */

@@ -8,8 +8,10 @@ import { reasonOf } from "../thermodynamics/refusal-reasons.js";
 import { fillFunction } from "./functions.js";
 import { predict } from "./predict.js";
 import type { Question } from "./questions.js";
+import { ROUNDING } from "./search.js";
 import { type Searcher, searcherOf } from "./sides.js";
 import {
+  BEYOND_LOWER,
   BY_U,
   BY_V,
   COEXISTENCE,
@@ -17,14 +19,18 @@ import {
   DENSITY_NOW,
   ENTROPY_KIND,
   EVALUATIONS,
+  FIRST_TARGET,
   FOLLOWS,
   FOUND,
   FUNCTION_LENGTH,
   GUESSED,
   PRESSURE_KIND,
   SIZE,
+  STEP_U,
+  STEP_V,
   TEMPERATURE_AT_DENSITY,
   TEMPERATURE_NOW,
+  WHOLE,
 } from "./slots.js";
 import { type Starter, starterOf } from "./start.js";
 
@@ -67,6 +73,7 @@ function solverOf(eos: EquationOfState): Solver {
     if (!eos.domain.zeroTemperature) return;
     first.point[DENSITY] = w[DENSITY_NOW]!;
     first.point[TEMPERATURE] = 0;
+    w[EVALUATIONS]! += 1;
     try {
       first.fillMembers(composition, 2);
       if (first.fillWhereStable(composition) !== ANSWERED) return;
@@ -110,18 +117,44 @@ function solverOf(eos: EquationOfState): Solver {
     const guessed = w[GUESSED] === 1;
     if (!guessed) begin(composition, question);
     const end = searcher.search(composition, question.type, question.first, question.second);
-    if (end === FOUND || !guessed) return end;
+    if (end === FOUND || !guessed) return orCold(composition, question, end);
     // A bad guess must not cost the answer.
     w[GUESSED] = 0;
     w[FOLLOWS] = 0;
     w[DENSITY_NOW] = density;
     w[TEMPERATURE_NOW] = temperature;
     begin(composition, question);
-    return searcher.search(composition, question.type, question.first, question.second);
+    const last = searcher.search(composition, question.type, question.first, question.second);
+    return orCold(composition, question, last);
+  }
+
+  /**
+   * T = 0 where the target is the cold value of the density: there the temperature that a search finds is noise (what rounding
+   * leaves of it is all of it), or the target lies below that of the lowest temperature, by rounding.
+   */
+  function orCold(composition: Composition, { type, first: kind }: Question, end: number): number {
+    if (type !== TEMPERATURE_AT_DENSITY || kind === ENTROPY_KIND || !eos.domain.zeroTemperature) return end;
+    const isNoise = end === FOUND && place[0] !== COEXISTENCE && 8 * 2 ** -52 * f[SIZE]! >= Math.abs(f[BY_V]!);
+    if (!isNoise && end !== BEYOND_LOWER) return end;
+    fillCold(composition, kind);
+    const excess = w[FIRST_TARGET]! - cold[0]!;
+    const rounding = ROUNDING * Math.abs(f[SIZE]!);
+    if (!(Math.abs(excess) <= rounding && (end === BEYOND_LOWER || excess <= 0))) {
+      return isNoise && excess < -rounding ? BEYOND_LOWER : end;
+    }
+    place[0] = WHOLE;
+    w[TEMPERATURE_NOW] = 0;
+    w[STEP_U] = 0;
+    w[STEP_V] = 0;
+    return FOUND;
   }
 
   function fillConditions({ type }: Question): void {
     conditions.fill(0);
+    if (type === TEMPERATURE_AT_DENSITY && w[TEMPERATURE_NOW] === 0) {
+      conditions[1] = Number.POSITIVE_INFINITY; // no quantity but entropy has a slope there
+      return;
+    }
     // 1 for the rounding of the answer itself, and the amplified errors of both given quantities.
     if (place[0] === COEXISTENCE) conditions.fill(1);
     else if (type === TEMPERATURE_AT_DENSITY) conditions[1] = 1 + (f[SIZE]! + Math.abs(f[BY_U]!)) / Math.abs(f[BY_V]!);

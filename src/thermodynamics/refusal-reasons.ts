@@ -38,7 +38,7 @@ const reason = (code: ErrorCode | undefined, meaning: string): RefusalReason => 
  * const pressure = new Float64Array(2);
  * const input = { density: Float64Array.of(1e6, 1e30), temperature: Float64Array.of(1e7, 1e7) };
  * whiteDwarfMatter().evaluate({ ...input, composition: composition({ C12: 1 }) }, { pressure, refused });
- * refusalReasons[refused[1]]?.meaning; // => "density above the domain"
+ * refusalReasons[refused[1] ?? 0]?.meaning; // => "density above the domain"
  * ```
  */
 export const refusalReasons: readonly RefusalReason[] = /* @__PURE__ */ Object.freeze([

@@ -73,11 +73,49 @@ describe("quantities beyond what matter of a density can have", () => {
     },
   );
 
-  test("energy equal to the cold one: the coldest state, its temperature told to be unknown", () => {
-    const cold = matter.state(1e6, 0, carbonOxygen).specificEnergy;
-    const found = solve(matter, carbonOxygen, { density: 1e6, specificEnergy: cold });
-    expect(found.residual).toBeLessThan(1e-15);
-    expect(found.uncertainty.temperature).toBeGreaterThan(1);
+  test.each(["specificEnergy", "pressure", "specificEnthalpy"] as const)(
+    "%s equal to that of cold matter: T = 0, its temperature told to be unknown, with and without a guess",
+    (name) => {
+      for (const density of [1e4, 1e6, 1e9]) {
+        const cold = matter.state(density, 0, carbonOxygen);
+        const given = { density, [name]: cold[name] } as object as Given;
+        for (const guess of [undefined, { temperature: 3 }, { temperature: 1e3 }, { temperature: 1e8 }]) {
+          const found = solve(matter, carbonOxygen, given, guess === undefined ? {} : { guess });
+          expect(found.state).toEqual(cold);
+          expect(found.residual).toBe(0);
+          expect(found.conditionNumber).toEqual({ density: 0, temperature: Number.POSITIVE_INFINITY });
+          expect(found.uncertainty.temperature).toBe(Number.POSITIVE_INFINITY);
+        }
+        // One unit in the last place is rounding; a few more are not, on either side.
+        const unit = 2 ** -52 * Math.abs(cold[name]);
+        expect(solve(matter, carbonOxygen, { ...given, [name]: cold[name] - unit } as Given).state.temperature).toBe(0);
+        const below = { ...given, [name]: cold[name] - 1e-14 * Math.abs(cold[name]) } as Given;
+        expect(refusal(() => solve(matter, carbonOxygen, below)).code).toBe("below-cold");
+        const above = { ...given, [name]: cold[name] * (1 + 1e-9) } as Given;
+        expect(solve(matter, carbonOxygen, above).state.temperature).toBeGreaterThan(1);
+      }
+    },
+  );
+
+  test("columns: cold rows have T = 0 and do not spoil the row after them", () => {
+    const density = Float64Array.of(1e6, 1e6, 1.01e6, 1.01e6);
+    const warm = matter.state(1e6, 1e7, carbonOxygen);
+    const cold = matter.state(1.01e6, 0, carbonOxygen);
+    const specificEnergy = Float64Array.of(
+      warm.specificEnergy,
+      matter.state(1e6, 0, carbonOxygen).specificEnergy,
+      cold.specificEnergy,
+      matter.state(1.01e6, 1e7, carbonOxygen).specificEnergy,
+    );
+    const temperature = new Float64Array(4);
+    const temperatureConditionNumber = new Float64Array(4);
+    const pressure = new Float64Array(4);
+    const given = { composition: carbonOxygen, density, specificEnergy };
+    solveColumns(matter, given, { temperature, temperatureConditionNumber, pressure });
+    expect([...temperature].map((t) => Math.round(t / 1e4))).toEqual([1000, 0, 0, 1000]);
+    expect([...temperatureConditionNumber].map(Number.isFinite)).toEqual([true, false, false, true]);
+    expect(temperature[1]).toBe(0);
+    expect(pressure[2]).toBe(cold.pressure);
   });
 
   test("an ideal plasma knows no T = 0: the limit is that of its lowest temperature", () => {
