@@ -35,17 +35,26 @@ interface ChargeShare {
  * construction; own hypernetted-chain calculations agree to 3 % up to Gamma = 0.1 for H/He and C/O, to 13 % for dilute
  * oxygen in hydrogen and iron in carbon; at Gamma = 3 the fit, tuned to simulations, is 7 % to a factor 2 above them).
  *
- * @param charged - charged species of a composition
+ * @param charged - charged species of a composition, by rising charge
  * @param polarisable - true where the ion-electron term is part of the free energy, false for a rigid background
  */
 export function liquidMixture(charged: readonly Species[], polarisable: boolean): LiquidMixture {
   const { shares, total } = chargeShares(charged);
-  const mean = (of: (z: number) => number): number =>
-    shares.reduce((sum, { charge, fraction }) => sum + fraction * of(charge), 0);
-  const first = mean((z) => z);
-  const second = mean((z) => z * z);
-  const unit = mean((z) => z * z * Math.sqrt(z));
-  const pure = polarisable ? mean((z) => z * (z + 1) ** 1.5) : unit;
+  let first = 0;
+  let second = 0;
+  let unit = 0;
+  let pure = 0;
+  let coupling = 0;
+  for (let i = 0; i < shares.length; i++) {
+    const { charge: z, fraction } = shares[i]!;
+    const powers = powersOf(z);
+    first += fraction * z;
+    second += fraction * (z * z);
+    unit += fraction * powers[0]!;
+    pure += fraction * powers[1]!;
+    coupling += fraction * powers[2]!;
+  }
+  if (!polarisable) pure = unit;
   const mixed = (polarisable ? second + first : second) ** 1.5 / Math.sqrt(first);
   // Zero to the last digit where nothing is mixed.
   const delta = shares.length > 1 ? (pure - mixed) / unit : 0;
@@ -58,8 +67,19 @@ export function liquidMixture(charged: readonly Species[], polarisable: boolean)
     b: 0.0117 * breadth * breadth * a,
     alpha,
     beta: 1.5 / alpha - 1,
-    logCoupling: Math.log(mean((z) => z * Math.cbrt(z) ** 2)),
+    logCoupling: Math.log(coupling),
   });
+}
+
+const known: Float64Array[] = [];
+
+/** Z^(5/2), Z (Z + 1)^(3/2), Z^(5/3); kept for integers. */
+function powersOf(z: number): Float64Array {
+  const old = known[z]; // undefined where Z is no integer
+  if (old !== undefined) return old;
+  const made = Float64Array.of(z * z * Math.sqrt(z), z * (z + 1) ** 1.5, z * Math.cbrt(z) ** 2);
+  if (Number.isInteger(z)) known[z] = made;
+  return made;
 }
 
 /**
@@ -145,14 +165,15 @@ export function chargeShares(charged: readonly Species[]): {
   readonly shares: readonly ChargeShare[];
   readonly total: number;
 } {
-  const byCharge = new Map<number, number>();
+  const shares: { charge: number; fraction: number }[] = [];
   let total = 0;
   for (const { chargeNumber, numberFraction } of charged) {
     total += numberFraction;
-    byCharge.set(chargeNumber, (byCharge.get(chargeNumber) ?? 0) + numberFraction);
+    const last = shares[shares.length - 1];
+    // Species come by rising charge: isotopes are neighbours.
+    if (last !== undefined && last.charge === chargeNumber) last.fraction += numberFraction;
+    else shares.push({ charge: chargeNumber, fraction: numberFraction });
   }
-  const shares = [...byCharge]
-    .map(([charge, fraction]) => ({ charge, fraction: fraction / total }))
-    .sort((a, b) => a.charge - b.charge);
+  for (const share of shares) share.fraction /= total;
   return { shares, total };
 }

@@ -10,7 +10,6 @@
  */
 import { type Composition, requireComposition } from "../matter/composition.js";
 import { bcc } from "./lattice.js";
-import { ION_GAMMA, ION_THETA, ION_X } from "./slots.js";
 import { coulombSpecies } from "./species.js";
 
 /** A phase of the ions. */
@@ -21,30 +20,9 @@ export const defaultMeltingCoupling = 175;
 /** R_S below which no crystal exists. */
 export const quantumMeltingLimit = 160;
 
-/** Mean of R_S = 3 (Gamma/theta)^2 over the charged nuclei at rho = 1 g/cm^3; it falls like rho^(-1/3). */
-function quantumRadius(composition: Composition): number {
-  const { ions } = coulombSpecies(composition, bcc);
-  let sum = 0;
-  let share = 0;
-  for (const ion of ions) {
-    const ratio = ion[ION_GAMMA]! / ion[ION_THETA]!;
-    sum += ion[ION_X]! * 3 * ratio * ratio;
-    share += ion[ION_X]!;
-  }
-  return share === 0 ? 0 : sum / share;
-}
-
-/** Highest densities of the compositions seen. */
-const known = /* @__PURE__ */ new WeakMap<Composition, number>();
-
 /** Highest density of a crystal of this composition, g/cm^3, by the rule of quantum melting; 0 without charged nuclei. */
 export function highestCrystalDensity(composition: Composition): number {
-  let found = known.get(composition);
-  if (found === undefined) {
-    found = (quantumRadius(composition) / quantumMeltingLimit) ** 3;
-    known.set(composition, found);
-  }
-  return found;
+  return (coulombSpecies(composition, bcc).quantumRadius / quantumMeltingLimit) ** 3;
 }
 
 /**
@@ -85,10 +63,10 @@ const record = new Float64Array(5);
 /** The boundary as a record: see PhasePair in thermodynamics/contribution.ts. Allocates nothing per call. */
 export function fillBoundary(composition: Composition, meltingCoupling: number, boundary: Float64Array): void {
   const coupling = coulombSpecies(composition, bcc).gammaE * composition.couplingMoment;
-  const highest = highestCrystalDensity(composition);
+  const limit = highestCrystalDensity(composition);
   const ratio = (meltingCoupling * boundary[1]!) / coupling;
   const density = ratio * ratio * ratio;
-  boundary[2] = boundary[0]! > highest ? 0 : (coupling * Math.cbrt(boundary[0]!)) / meltingCoupling;
-  boundary[3] = density <= highest ? density : Number.POSITIVE_INFINITY;
-  boundary[4] = highest;
+  boundary[2] = boundary[0]! > limit ? 0 : (coupling * Math.cbrt(boundary[0]!)) / meltingCoupling;
+  boundary[3] = density <= limit ? density : Number.POSITIVE_INFINITY;
+  boundary[4] = limit;
 }

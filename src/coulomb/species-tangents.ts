@@ -7,6 +7,7 @@
  */
 import { atomicMassConstant, boltzmannConstant } from "../constants.js";
 import type { Composition } from "../matter/composition.js";
+import { notesOf } from "../matter/species-list.js";
 import { SPECIES_LENGTH } from "../thermodynamics/species-members.js";
 import type { LatticeConstants } from "./lattice.js";
 import { alloyTangents, type LiquidMixtureTangent, liquidMixtureTangents } from "./mixing-tangents.js";
@@ -40,22 +41,19 @@ export interface SpeciesTangent {
 /** k/m_u, erg/(g K). */
 export const boltzmannPerGram: number = boltzmannConstant / atomicMassConstant;
 
-/** Tangents of the compositions seen, for each lattice. */
-const known = /* @__PURE__ */ new WeakMap<LatticeConstants, WeakMap<Composition, readonly SpeciesTangent[]>>();
+/** Under which symbol a composition keeps its tangents for a lattice. */
+const keys = /* @__PURE__ */ new WeakMap<LatticeConstants, symbol>();
 
 /** The tangents of a composition on a lattice, charged species in their order; computed at the first call. */
 export function speciesTangents(composition: Composition, lattice: LatticeConstants): readonly SpeciesTangent[] {
-  let ofLattice = known.get(lattice);
-  if (ofLattice === undefined) {
-    ofLattice = new WeakMap();
-    known.set(lattice, ofLattice);
+  let key = keys.get(lattice);
+  if (key === undefined) {
+    key = Symbol("tangents");
+    keys.set(lattice, key);
   }
-  let found = ofLattice.get(composition);
-  if (found === undefined) {
-    found = compute(composition, lattice);
-    ofLattice.set(composition, found);
-  }
-  return found;
+  const notes = notesOf(composition);
+  notes[key] ??= compute(composition, lattice);
+  return notes[key] as readonly SpeciesTangent[];
 }
 
 function compute(composition: Composition, lattice: LatticeConstants): readonly SpeciesTangent[] {

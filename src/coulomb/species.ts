@@ -13,14 +13,22 @@ import {
   reducedPlanckConstant,
 } from "../constants.js";
 import type { Composition, Species } from "../matter/composition.js";
+import { notesOf } from "../matter/species-list.js";
 import type { LatticeConstants } from "./lattice.js";
 import { alloyDeviation, type LiquidMixture, liquidMixture } from "./mixing.js";
 import * as slot from "./slots.js";
 
 /** Constants of a composition for the Coulomb rooms. */
 export interface CoulombSpecies {
-  /** One record per charged species, slots of slots.ts. */
+  /** One record per charged species, slots of slots.ts; for many compositions in turn {@link fillIons} allocates nothing. */
   readonly ions: readonly Float64Array[];
+  /** The charged species, and the lattice: what {@link fillIons} makes records of. */
+  readonly charged: readonly Species[];
+  readonly lattice: LatticeConstants;
+  /** Net electrons, 1/g. */
+  readonly electronsPerGram: number;
+  /** Mean of R_S = 3 (Gamma/theta)^2 over the charged nuclei, times rho^(1/3); 0 without charge. */
+  readonly quantumRadius: number;
   /** N_i k, erg/(g K): nuclei of all species, free neutrons included. */
   readonly ionsBoltzmann: number;
   /** N_e k, erg/(g K). */
@@ -47,73 +55,188 @@ export interface CoulombSpecies {
   readonly mixture: { readonly polarisable: LiquidMixture; readonly rigid: LiquidMixture } | undefined;
 }
 
-/** Constants of the compositions seen, for each lattice. */
-const known = new WeakMap<LatticeConstants, WeakMap<Composition, CoulombSpecies>>();
+/** Under which symbol a composition keeps its constants for a lattice. */
+const keys = /* @__PURE__ */ new WeakMap<LatticeConstants, symbol>();
 
 /** The constants of a composition for a lattice; computed at the first call. */
 export function coulombSpecies(composition: Composition, lattice: LatticeConstants): CoulombSpecies {
-  let ofLattice = known.get(lattice);
-  if (ofLattice === undefined) {
-    ofLattice = new WeakMap();
-    known.set(lattice, ofLattice);
+  let key = keys.get(lattice);
+  if (key === undefined) {
+    key = Symbol("Coulomb species");
+    keys.set(lattice, key);
   }
-  let found = ofLattice.get(composition);
+  const notes = notesOf(composition);
+  let found = notes[key] as CoulombSpecies | undefined;
   if (found === undefined) {
-    found = compute(composition, lattice);
-    ofLattice.set(composition, found);
+    found = new SummedSpecies(composition, lattice);
+    notes[key] = found;
   }
   return found;
 }
 
-function compute(composition: Composition, lattice: LatticeConstants): CoulombSpecies {
-  const { electronsPerGram, ionsPerGram } = composition;
-  const radius = Math.cbrt(3 / (4 * Math.PI * electronsPerGram)); // a_e at rho = 1
-  const gammaE = elementaryChargeSquared / (radius * boltzmannConstant);
-  const charged = composition.species.filter(({ chargeNumber }) => chargeNumber > 0);
-  const ions = charged.map((one) => ionRecord(one, electronsPerGram, gammaE, lattice));
-  const ionsBoltzmann = ionsPerGram * boltzmannConstant;
-  const sum = (term: (ion: Float64Array) => number): number =>
-    ions.reduce((total, ion) => total + ion[slot.ION_X]! * term(ion), 0);
-  const theta = (ion: Float64Array): number => ion[slot.ION_THETA]!;
-  const gamma = (ion: Float64Array): number => ion[slot.ION_GAMMA]!;
-  const several = charged.length > 1;
-  const share = sum(() => 1); // number fraction of charged nuclei
-  const meanCharge = sum((ion) => ion[slot.ION_Z]!) / share;
-  const logarithm = (ion: Float64Array): number =>
-    Math.log(((ion[slot.ION_X]! / share) * ion[slot.ION_Z]!) / meanCharge);
-  return Object.freeze({
-    ions, // not frozen: V8 does not inline the access to an element of a frozen array
-    ionsBoltzmann,
-    electronsBoltzmann: electronsPerGram * boltzmannConstant,
-    gammaE,
-    rs: radius / bohrRadius,
-    x: (Math.cbrt((9 * Math.PI) / 4) * fineStructureConstant * bohrRadius) / radius,
-    madelung: ionsBoltzmann * lattice.madelung * sum(gamma),
-    zeroPoint: ionsBoltzmann * 1.5 * lattice.u1 * sum(theta),
-    anharmonicGround: -ionsBoltzmann * lattice.anharmonicQuantum * sum((ion) => (theta(ion) * theta(ion)) / gamma(ion)),
-    alloy: several ? ionsBoltzmann * gammaE * alloyDeviation(charged) : 0,
-    mixing: several ? sum(logarithm) : 0,
-    spin: -charged.reduce((total, one) => total + one.numberFraction * Math.log(one.spinDegeneracy), 0),
-    mixture: several ? { polarisable: liquidMixture(charged, true), rigid: liquidMixture(charged, false) } : undefined,
-  });
+/** What only a crystal or only a liquid needs is computed when it is asked for. */
+class SummedSpecies implements CoulombSpecies {
+  readonly charged: readonly Species[];
+  readonly lattice: LatticeConstants;
+  readonly electronsPerGram: number;
+  readonly quantumRadius: number;
+  readonly ionsBoltzmann: number;
+  readonly electronsBoltzmann: number;
+  readonly gammaE: number;
+  readonly rs: number;
+  readonly x: number;
+  readonly madelung: number;
+  readonly zeroPoint: number;
+  readonly anharmonicGround: number;
+  readonly mixture: CoulombSpecies["mixture"];
+  #ions: Float64Array[] | undefined;
+  #alloy: number | undefined;
+  #mixing: number | undefined;
+  #spin: number | undefined;
+
+  constructor({ electronsPerGram, ionsPerGram, species }: Composition, lattice: LatticeConstants) {
+    const radius = Math.cbrt(3 / (4 * Math.PI * electronsPerGram)); // a_e at rho = 1
+    const gammaE = elementaryChargeSquared / (radius * boltzmannConstant);
+    const charged = species.filter(({ chargeNumber }) => chargeNumber > 0);
+    const ionsBoltzmann = ionsPerGram * boltzmannConstant;
+    let share = 0;
+    let gammas = 0;
+    let thetas = 0;
+    let ground = 0;
+    let radii = 0;
+    for (const one of charged) {
+      const fraction = one.numberFraction;
+      const theta = thetaOf(one, electronsPerGram);
+      const gamma = fiveThirds(one.chargeNumber) * gammaE;
+      const ratio = gamma / theta;
+      share += fraction;
+      gammas += fraction * gamma;
+      thetas += fraction * theta;
+      ground += fraction * ((theta * theta) / gamma);
+      radii += fraction * 3 * ratio * ratio;
+    }
+    this.charged = charged;
+    this.lattice = lattice;
+    this.electronsPerGram = electronsPerGram;
+    this.quantumRadius = share === 0 ? 0 : radii / share;
+    this.ionsBoltzmann = ionsBoltzmann;
+    this.electronsBoltzmann = electronsPerGram * boltzmannConstant;
+    this.gammaE = gammaE;
+    this.rs = radius / bohrRadius;
+    this.x = (Math.cbrt((9 * Math.PI) / 4) * fineStructureConstant * bohrRadius) / radius;
+    this.madelung = ionsBoltzmann * lattice.madelung * gammas;
+    this.zeroPoint = ionsBoltzmann * 1.5 * lattice.u1 * thetas;
+    this.anharmonicGround = -ionsBoltzmann * lattice.anharmonicQuantum * ground;
+    this.mixture = charged.length > 1 ? new Mixture(charged) : undefined;
+  }
+
+  get ions(): readonly Float64Array[] {
+    if (this.#ions === undefined) {
+      this.#ions = [];
+      fillIons(this.#ions, this);
+    }
+    return this.#ions;
+  }
+
+  get alloy(): number {
+    this.#alloy ??= this.mixture === undefined ? 0 : this.ionsBoltzmann * this.gammaE * alloyDeviation(this.charged);
+    return this.#alloy;
+  }
+
+  get mixing(): number {
+    this.#mixing ??= this.mixture === undefined ? 0 : mixingEntropy(this.ions);
+    return this.#mixing;
+  }
+
+  get spin(): number {
+    this.#spin ??= -this.charged.reduce((sum, one) => sum + one.numberFraction * Math.log(one.spinDegeneracy), 0);
+    return this.#spin;
+  }
 }
 
-/** The record of one species. */
-function ionRecord(one: Species, electronsPerGram: number, gammaE: number, lattice: LatticeConstants): Float64Array {
+/** The liquid's mixture correction, each form when it is asked for. */
+class Mixture {
+  readonly #charged: readonly Species[];
+  #polarisable: LiquidMixture | undefined;
+  #rigid: LiquidMixture | undefined;
+
+  constructor(charged: readonly Species[]) {
+    this.#charged = charged;
+  }
+
+  get polarisable(): LiquidMixture {
+    this.#polarisable ??= liquidMixture(this.#charged, true);
+    return this.#polarisable;
+  }
+
+  get rigid(): LiquidMixture {
+    this.#rigid ??= liquidMixture(this.#charged, false);
+    return this.#rigid;
+  }
+}
+
+/** sum x_j ln(x_j Z_j/<Z>) over charged nuclei, x_j among them in the logarithm. */
+function mixingEntropy(ions: readonly Float64Array[]): number {
+  const sum = (term: (ion: Float64Array) => number): number =>
+    ions.reduce((total, ion) => total + ion[slot.ION_X]! * term(ion), 0);
+  const share = sum(() => 1); // number fraction of charged nuclei
+  const meanCharge = sum((ion) => ion[slot.ION_Z]!) / share;
+  return sum((ion) => Math.log(((ion[slot.ION_X]! / share) * ion[slot.ION_Z]!) / meanCharge));
+}
+
+/** Functions of the charge number, by lattice, of nuclei with integer Z. */
+const records = /* @__PURE__ */ new WeakMap<LatticeConstants, Float64Array[]>();
+
+/** Fills records, one per charged species, making and dropping some where their number is another. */
+export function fillIons(ions: Float64Array[], species: CoulombSpecies): void {
+  const { charged, electronsPerGram, gammaE, lattice } = species;
+  if (ions.length > charged.length) ions.length = charged.length;
+  for (let i = 0; i < charged.length; i++) {
+    const one = charged[i]!;
+    const ion = ions[i];
+    if (ion === undefined) ions.push(ofCharge(one.chargeNumber, lattice).slice());
+    else if (ion[slot.ION_Z] !== one.chargeNumber) ion.set(ofCharge(one.chargeNumber, lattice));
+    const record = ions[i]!;
+    const theta = thetaOf(one, electronsPerGram);
+    const gamma = record[slot.ION_Z53]! * gammaE;
+    record[slot.ION_X] = one.numberFraction;
+    record[slot.ION_THETA] = theta;
+    record[slot.ION_GAMMA] = gamma;
+    record[slot.ION_LOG_Q] = Math.log((0.205 * theta) / gamma);
+  }
+}
+
+/** theta_j T/rho^(1/2). */
+function thetaOf({ chargeNumber, ionMass }: Species, electronsPerGram: number): number {
+  const frequency = Math.sqrt((4 * Math.PI * elementaryChargeSquared * electronsPerGram * chargeNumber) / ionMass);
+  return (reducedPlanckConstant * frequency) / boltzmannConstant;
+}
+
+/** Z^(5/3). */
+function fiveThirds(z: number): number {
+  const third = Math.cbrt(z);
+  return z * third * third;
+}
+
+/** The part of the record that depends on the charge alone; not to be written to. */
+function ofCharge(z: number, lattice: LatticeConstants): Float64Array {
+  if (!Number.isInteger(z)) return chargeRecord(z, lattice);
+  let all = records.get(lattice);
+  if (all === undefined) {
+    all = [];
+    records.set(lattice, all);
+  }
+  all[z] ??= chargeRecord(z, lattice);
+  return all[z];
+}
+
+function chargeRecord(z: number, lattice: LatticeConstants): Float64Array {
   const ion = new Float64Array(slot.ION_LENGTH);
-  const z = one.chargeNumber;
   const log = Math.log(z);
   const third = Math.cbrt(z);
   const root = Math.sqrt(z);
-  const z53 = z * third * third;
-  const frequency = Math.sqrt((4 * Math.PI * elementaryChargeSquared * electronsPerGram * z) / one.ionMass);
-  const theta = (reducedPlanckConstant * frequency) / boltzmannConstant;
-  ion[slot.ION_X] = one.numberFraction;
   ion[slot.ION_Z] = z;
-  ion[slot.ION_Z53] = z53;
-  ion[slot.ION_THETA] = theta;
-  ion[slot.ION_GAMMA] = z53 * gammaE;
-  ion[slot.ION_LOG_Q] = Math.log((0.205 * theta) / (z53 * gammaE));
+  ion[slot.ION_Z53] = fiveThirds(z);
 
   const a = 1.11 * z ** 0.475;
   const c = (18 / 175) * (12 / Math.PI) ** (2 / 3) * z * z * third * (1 - 1 / third + 0.2 / root);

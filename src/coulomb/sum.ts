@@ -53,7 +53,7 @@ import {
   POINT_TEMPERATURE,
   POINT_X,
 } from "./slots.js";
-import { type CoulombSpecies, coulombSpecies } from "./species.js";
+import { type CoulombSpecies, coulombSpecies, fillIons } from "./species.js";
 import { addSpeciesDerivatives, type Choice } from "./species-derivatives.js";
 import { type SpeciesTangent, speciesTangents } from "./species-tangents.js";
 import type { Terms } from "./terms.js";
@@ -66,6 +66,8 @@ export interface CoulombSum extends Choice {
   readonly neutrons: Contribution;
   composition: Composition | undefined;
   species: CoulombSpecies | undefined;
+  /** Records of its charged species, filled anew for each composition. */
+  readonly ions: Float64Array[];
   crystalLimit: number;
   /** Whether the ions were a crystal at the last point. */
   crystal: boolean;
@@ -86,6 +88,7 @@ export function coulombSum(terms: Terms, options: Required<CoulombPlasmaOptions>
     neutrons: idealIons({ only: "free neutrons" }),
     composition: undefined,
     species: undefined,
+    ions: [], // not frozen: V8 does not inline the access to an element of a frozen array
     crystalLimit: Number.NaN,
     crystal: false,
     tangents: undefined,
@@ -186,6 +189,7 @@ export function addCoulombSpecies(
 function enter(sum: CoulombSum, point: Float64Array, composition: Composition): CoulombSpecies {
   if (composition !== sum.composition) {
     sum.species = coulombSpecies(composition, sum.lattice);
+    fillIons(sum.ions, sum.species);
     sum.crystalLimit = highestCrystalDensity(composition);
     sum.composition = composition;
     sum.tangents = undefined;
@@ -218,7 +222,7 @@ function isCrystal({ options, crystalLimit }: CoulombSum, point: Float64Array): 
   return point[ION_COUPLING]! >= options.meltingCoupling && point[DENSITY]! <= crystalLimit;
 }
 
-function addLiquid({ terms, options }: CoulombSum, { ions, mixture }: CoulombSpecies, order: Order): void {
+function addLiquid({ terms, options, ions }: CoulombSum, { mixture }: CoulombSpecies, order: Order): void {
   plasma[POINT_LOG_GAMMA_E] = Math.log(plasma[POINT_GAMMA_E]!);
   plasma[POINT_ROOT_GAMMA_E] = Math.sqrt(plasma[POINT_GAMMA_E]!);
   if (terms.polarisation) preparePolarisation(order, plasma);
@@ -236,8 +240,7 @@ function addLiquid({ terms, options }: CoulombSum, { ions, mixture }: CoulombSpe
   }
 }
 
-function addCrystal({ terms, fit, lattice }: CoulombSum, species: CoulombSpecies, order: Order): void {
-  const ions = species.ions;
+function addCrystal({ terms, fit, lattice, ions }: CoulombSum, species: CoulombSpecies, order: Order): void {
   const cold = plasma[POINT_TEMPERATURE] === 0;
   if (terms.lattice || terms.zeroPoint || terms.anharmonic || terms.alloy) {
     addGroundState(natural, order, plasma, species, terms);

@@ -13,6 +13,7 @@ import { requireFlags } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
 import { nuclide } from "../matter/nuclides.js";
 import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
+import { notesOf } from "../matter/species-list.js";
 import type { Contribution } from "../thermodynamics/contribution.js";
 import {
   ENERGY,
@@ -128,18 +129,15 @@ export function idealIons(options: IdealIonsOptions = {}): Contribution {
   });
 }
 
-/** What {@link entropyConstants} has computed. */
-const known = /* @__PURE__ */ new WeakMap<Composition, Float64Array>();
+/** Under which a composition keeps what {@link entropyConstants} has computed. */
+const constantsKey = /* @__PURE__ */ Symbol("entropy constants");
 
 /** ln[(x_a/g_a)(m_u/M_a)^(3/2)] of each species; computed at the first call. */
 function entropyConstants(composition: Composition): Float64Array {
-  let found = known.get(composition);
-  if (found === undefined) {
-    found = Float64Array.from(
-      composition.species,
-      (one) => Math.log(one.numberFraction / one.spinDegeneracy) + 1.5 * Math.log(atomicMassConstant / one.ionMass),
-    );
-    known.set(composition, found);
-  }
-  return found;
+  const notes = notesOf(composition);
+  notes[constantsKey] ??= Float64Array.from(
+    composition.species,
+    (one) => Math.log(one.numberFraction / one.spinDegeneracy) + 1.5 * Math.log(atomicMassConstant / one.ionMass),
+  );
+  return notes[constantsKey] as Float64Array;
 }

@@ -1,0 +1,321 @@
+/**
+ * From species and their nucleon fractions to a composition: the sums over species, in one order of summation whatever way the
+ * fractions came. What depends on the species alone is computed once per list of species: a reaction network makes a new
+ * composition of the same species in every zone and step.
+ */
+import { atomicMassConstant } from "../constants.js";
+import { FermistateError } from "../errors.js";
+import { nuclide } from "./nuclides.js";
+
+/** One kind of nucleus in a composition. */
+export interface Species {
+  /** Label of the nuclide, "C12"; "mean" for the fictitious mean nucleus. */
+  readonly label: string;
+  /** Mass number A; need not be an integer for the mean nucleus. */
+  readonly massNumber: number;
+  /** Charge number Z; need not be an integer for the mean nucleus, 0 for the free neutron. */
+  readonly chargeNumber: number;
+  /** Fraction X of the nucleons that sit in this species. */
+  readonly nucleonFraction: number;
+  /** Fraction x of the nuclei (free neutrons included) that are this species. */
+  readonly numberFraction: number;
+  /** Mass of the bare nucleus M, g. */
+  readonly ionMass: number;
+  /** Degeneracy g = 2J + 1 of the ground state; 1 where the spin is not known, and for the mean nucleus. */
+  readonly spinDegeneracy: number;
+  /** False where `spinDegeneracy` is 1 for want of knowledge. */
+  readonly spinKnown: boolean;
+}
+
+/** Averages of powers of the charge number over all nuclei, by number fraction: sum_j x_j Z_j^p. */
+export interface ChargeMoments {
+  /** p = 2/3. */
+  readonly twoThirds: number;
+  /** p = 4/3. */
+  readonly fourThirds: number;
+  /** p = 5/3: the ion coupling parameter of a mixture over that of the electrons. */
+  readonly fiveThirds: number;
+  /** p = 2. */
+  readonly squared: number;
+  /** p = 7/3. */
+  readonly sevenThirds: number;
+  /** p = 5/2. */
+  readonly fiveHalves: number;
+}
+
+/** Species and their sums; made by {@link composition} only, frozen throughout. */
+export interface Composition {
+  /** Readable label, "C12 0.5, O16 0.5". */
+  readonly name: string;
+  /** Species of non-zero fraction, by charge number, then mass number. */
+  readonly species: readonly Species[];
+  /** Nuclei per nucleon, sum X_i/A_i. */
+  readonly ionsPerNucleon: number;
+  /** Electrons per nucleon Y_e = sum X_i Z_i/A_i. */
+  readonly electronsPerNucleon: number;
+  /** Mean mass number of the nuclei, 1/sum(X_i/A_i). */
+  readonly meanMassNumber: number;
+  /** Mean charge number of the nuclei, sum x_j Z_j. */
+  readonly meanCharge: number;
+  /** Other averages over the charge. */
+  readonly chargeMoments: ChargeMoments;
+  /** <Z^(5/3)> over the charged nuclei alone: the ion coupling over that of the electrons; 0 without charge. */
+  readonly couplingMoment: number;
+  /** Nuclei per gram, sum X_i/(A_i m_u), 1/g. */
+  readonly ionsPerGram: number;
+  /** Electrons per gram, Y_e/m_u, 1/g. */
+  readonly electronsPerGram: number;
+  /**
+   * C = sum_j x_j ln[(x_j/g_j) (m_u/M_j)^(3/2)]. With N = `ionsPerGram` the free energy of the ideal gas is
+   * F = N k T {ln[N rho (2 pi hbar^2/(m_u k T))^(3/2)] + C - 1}, erg/g.
+   */
+  readonly ionEntropyConstant: number;
+  /** As `ionsPerGram`, free neutrons left out. */
+  readonly chargedIonsPerGram: number;
+  /** As `ionEntropyConstant`, with fractions x_j among charged nuclei only; 0 where there are none. */
+  readonly chargedIonEntropyConstant: number;
+  /** sum_j x_j Z_j^2/M_j, 1/g: the ion plasma frequency squared over 4 pi e^2 n_i. */
+  readonly plasmaFrequencySum: number;
+}
+
+/** A species without its fractions. */
+export type Nucleus = Omit<Species, "nucleonFraction" | "numberFraction">;
+
+/** Species in their final order, and what depends on them alone. */
+export interface SpeciesList {
+  /** By charge number, then mass number. */
+  readonly nuclei: readonly Nucleus[];
+  /** Place of each in the list that the caller gave. */
+  readonly order: readonly number[];
+  /** First of the charged ones. */
+  readonly firstCharged: number;
+  /** Functions of Z, by species: Z^p for the moments, roots and not powers, which have the exponent's error times ln Z. */
+  readonly powers: Readonly<Record<keyof ChargeMoments, Float64Array>>;
+  /** 1.5 ln(m_u/M). */
+  readonly logMass: Float64Array;
+  /** Lists without some of the species, by the places that are left. */
+  readonly parts: Map<string, SpeciesList>;
+}
+
+/** Marks a composition, of this or another copy of the library; gives what {@link notesOf} does, nothing for a copy of one. */
+export const brand: unique symbol = /* @__PURE__ */ Symbol.for("fermistate.composition.1");
+
+/**
+ * An object in which a room keeps what it has computed of a composition, under a symbol of its own: several times cheaper than a
+ * WeakMap where compositions are many and short-lived.
+ */
+export function notesOf(composition: Composition): Record<symbol, unknown> {
+  return (composition as Composition & { readonly [brand]: Record<symbol, unknown> })[brand];
+}
+
+const known = /* @__PURE__ */ new Map<string, SpeciesList>();
+const mostKnown = 256;
+
+/** The list of the nuclides of these labels. @throws `unknown-nuclide`; `invalid-composition` for a label that comes twice */
+export function speciesOf(labels: readonly string[]): SpeciesList {
+  const key = labels.join(" ");
+  const old = known.get(key);
+  if (old !== undefined) return old;
+  const twice = labels.find((label, i) => labels.indexOf(label) !== i);
+  if (twice !== undefined) {
+    const details = { argument: "labels", given: `${twice} twice`, allowed: "each nuclide once" };
+    throw new FermistateError("invalid-composition", details);
+  }
+  const made = speciesList(
+    labels.map((label): Nucleus => {
+      const { massNumber, chargeNumber, nuclearMass, groundStateSpin } = nuclide(label);
+      const spinKnown = groundStateSpin !== undefined;
+      const spinDegeneracy = groundStateSpin === undefined ? 1 : 2 * groundStateSpin + 1;
+      return { label, massNumber, chargeNumber, ionMass: nuclearMass, spinDegeneracy, spinKnown };
+    }),
+  );
+  if (known.size >= mostKnown) known.clear();
+  known.set(key, made);
+  return made;
+}
+
+/** The list of given nuclei. */
+export function speciesList(given: readonly Nucleus[]): SpeciesList {
+  const order = given
+    .map((_, i) => i)
+    .sort((i, j) => {
+      const [a, b] = [given[i]!, given[j]!];
+      return a.chargeNumber - b.chargeNumber || a.massNumber - b.massNumber;
+    });
+  const nuclei = order.map((i) => given[i]!);
+  const of = (power: (z: number) => number): Float64Array =>
+    Float64Array.from(nuclei, ({ chargeNumber }) => power(chargeNumber));
+  const firstCharged = nuclei.findIndex(({ chargeNumber }) => chargeNumber > 0);
+  return {
+    nuclei,
+    order,
+    firstCharged: firstCharged < 0 ? nuclei.length : firstCharged,
+    powers: {
+      twoThirds: of((z) => Math.cbrt(z) ** 2),
+      fourThirds: of((z) => z * Math.cbrt(z)),
+      fiveThirds: of((z) => z * Math.cbrt(z) ** 2),
+      squared: of((z) => z * z),
+      sevenThirds: of((z) => z * z * Math.cbrt(z)),
+      fiveHalves: of((z) => z * z * Math.sqrt(z)),
+    },
+    logMass: Float64Array.from(nuclei, ({ ionMass }) => 1.5 * Math.log(atomicMassConstant / ionMass)),
+    parts: new Map(),
+  };
+}
+
+/** The list without species whose X/A is no positive double. */
+function present(list: SpeciesList, fractions: Float64Array): readonly [SpeciesList, Float64Array] {
+  const places = list.nuclei.map((_, i) => i).filter((i) => fractions[i]! / list.nuclei[i]!.massNumber > 0);
+  if (places.length === list.nuclei.length) return [list, fractions];
+  const key = places.join();
+  let part = list.parts.get(key);
+  if (part === undefined) {
+    part = speciesList(places.map((i) => list.nuclei[i]!));
+    if (list.parts.size >= mostKnown) list.parts.clear();
+    list.parts.set(key, part);
+  }
+  return [part, Float64Array.from(places, (i) => fractions[i]!)];
+}
+
+/** The composition of checked nucleon fractions in the order of the list, which are not kept; those of zero, or too small for X/A, are dropped. */
+export function compositionOf(list: SpeciesList, fractions: Float64Array): Composition {
+  for (let i = 0; i < list.nuclei.length; i++) {
+    if (!(fractions[i]! / list.nuclei[i]!.massNumber > 0)) return new SummedComposition(...present(list, fractions));
+  }
+  return new SummedComposition(list, fractions);
+}
+
+let numberFractions = new Float64Array(32);
+
+/** Room for numbers of one composition: a typed array of its own for each would cost more than its sums. */
+function scratch(count: number): Float64Array {
+  if (numberFractions.length < count) numberFractions = new Float64Array(2 * count);
+  return numberFractions;
+}
+
+/** A composition: the sums over its species, always in the same order. */
+class SummedComposition implements Composition {
+  readonly species: readonly Species[];
+  readonly ionsPerNucleon: number;
+  readonly electronsPerNucleon: number;
+  readonly meanMassNumber: number;
+  readonly meanCharge: number;
+  readonly chargeMoments: ChargeMoments;
+  readonly couplingMoment: number;
+  readonly ionsPerGram: number;
+  readonly electronsPerGram: number;
+  readonly ionEntropyConstant: number;
+  readonly chargedIonsPerGram: number;
+  readonly chargedIonEntropyConstant: number;
+  readonly plasmaFrequencySum: number;
+  readonly #notes: Record<symbol, unknown> = {};
+  #name: string | undefined;
+
+  constructor(list: SpeciesList, fractions: Float64Array) {
+    const { nuclei, firstCharged, powers } = list;
+    const count = nuclei.length;
+    let ions = 0;
+    let electrons = 0;
+    for (let i = 0; i < count; i++) {
+      const { massNumber, chargeNumber } = nuclei[i]!;
+      ions += fractions[i]! / massNumber;
+      electrons += fractions[i]! * (chargeNumber / massNumber); // Z/A first: 0.5 exactly for the usual nuclei
+    }
+    const species = new Array<Species>(count);
+    const numbers = scratch(count);
+    let charge = 0;
+    let frequency = 0;
+    let charged = 0;
+    for (let i = 0; i < count; i++) {
+      const { label, massNumber, chargeNumber, ionMass, spinDegeneracy, spinKnown } = nuclei[i]!;
+      const nucleonFraction = fractions[i]!;
+      const numberFraction = nucleonFraction / massNumber / ions;
+      numbers[i] = numberFraction;
+      charge += numberFraction * chargeNumber;
+      frequency += (numberFraction * chargeNumber ** 2) / ionMass;
+      if (i >= firstCharged) charged += nucleonFraction / massNumber;
+      species[i] = Object.freeze({
+        label,
+        massNumber,
+        chargeNumber,
+        nucleonFraction,
+        numberFraction,
+        ionMass,
+        spinDegeneracy,
+        spinKnown,
+      });
+    }
+    const constant = entropyConstant(list, numbers, 0);
+    this.species = Object.freeze(species);
+    this.ionsPerNucleon = ions;
+    this.electronsPerNucleon = electrons;
+    this.meanMassNumber = 1 / ions;
+    this.meanCharge = charge;
+    this.chargeMoments = Object.freeze({
+      twoThirds: mean(numbers, powers.twoThirds),
+      fourThirds: mean(numbers, powers.fourThirds),
+      fiveThirds: mean(numbers, powers.fiveThirds),
+      squared: mean(numbers, powers.squared),
+      sevenThirds: mean(numbers, powers.sevenThirds),
+      fiveHalves: mean(numbers, powers.fiveHalves),
+    });
+    this.couplingMoment =
+      firstCharged === count ? 0 : this.chargeMoments.fiveThirds / sumFrom(numbers, firstCharged, count);
+    this.ionsPerGram = ions / atomicMassConstant;
+    this.electronsPerGram = electrons / atomicMassConstant;
+    this.ionEntropyConstant = constant;
+    this.chargedIonsPerGram = charged / atomicMassConstant;
+    this.chargedIonEntropyConstant = firstCharged === 0 ? constant : entropyConstant(list, numbers, firstCharged);
+    this.plasmaFrequencySum = frequency;
+    Object.freeze(this);
+  }
+
+  /** Written when it is asked for: that takes as long as all the sums. */
+  get name(): string {
+    this.#name ??= nameOf(this.species);
+    return this.#name;
+  }
+
+  /** Undefined for copies and heirs, whose members may have been changed. */
+  get [brand](): Record<symbol, unknown> | undefined {
+    return #notes in this ? this.#notes : undefined;
+  }
+}
+
+/** sum_j y_j ln[(y_j/g_j)(m_u/M_j)^(3/2)], y_j the number fractions among the species from a place on. */
+function entropyConstant({ nuclei, logMass }: SpeciesList, numbers: Float64Array, from: number): number {
+  const count = nuclei.length;
+  const all = sumFrom(numbers, from, count);
+  let sum = 0;
+  for (let i = from; i < count; i++) {
+    const fraction = numbers[i]! / all;
+    sum += fraction * (Math.log(fraction / nuclei[i]!.spinDegeneracy) + logMass[i]!);
+  }
+  return sum;
+}
+
+function sumFrom(numbers: Float64Array, from: number, count: number): number {
+  let sum = 0;
+  for (let i = from; i < count; i++) sum += numbers[i]!;
+  return sum;
+}
+
+function mean(numbers: Float64Array, values: Float64Array): number {
+  let sum = 0;
+  for (let i = 0; i < values.length; i++) sum += numbers[i]! * values[i]!;
+  return sum;
+}
+
+/** Up to six species with six digits; of more, the six of the largest nucleon fraction. */
+function nameOf(species: readonly Species[]): string {
+  const [only] = species;
+  if (only?.label === "mean") return `mean A ${short(only.massNumber)}, Z ${short(only.chargeNumber)}`;
+  if (only !== undefined && species.length === 1) return only.label;
+  const largest = [...species].sort((a, b) => b.nucleonFraction - a.nucleonFraction).slice(0, 6);
+  const named = species.filter((one) => largest.includes(one));
+  const rest = species.length - named.length;
+  const text = named.map((one) => `${one.label} ${short(one.nucleonFraction)}`).join(", ");
+  return rest === 0 ? text : `${text}, and ${rest} more`;
+}
+
+const short = (value: number): string => String(Number(value.toPrecision(6)));
