@@ -10,7 +10,7 @@ const networks = [
   ["He4", "C12", "O16", "Ne20", "Ne22", "Mg24", "Si28"],
   "H1 He3 He4 C12 C13 N13 N14 N15 O15 O16 O17 F18 F19 Ne20 Ne21 Ne22 Na23 Mg24 Al27 Si28 S32".split(" "),
 ];
-const rows = 4096;
+const rows = 1024; // zones of a model
 let seed = 12345;
 const random = () => {
   seed = (seed * 48271) % 2147483647;
@@ -35,13 +35,13 @@ const found = networks.map((labels) => {
     const sum = shares.reduce((a, b) => a + b);
     for (const [i, share] of shares.entries()) fractions[row * labels.length + i] = share / sum;
   }
-  const objects = Array.from({ length: rows }, (_, row) =>
-    Object.fromEntries(labels.map((label, i) => [label, fractions[row * labels.length + i]])),
-  );
+  const fractionsOf = (row) =>
+    Object.fromEntries(labels.map((label, i) => [label, fractions[row * labels.length + i]]));
+  const objects = Array.from({ length: rows }, (_, row) => fractionsOf(row));
   const one = composition(objects[0]);
   const ratios = { single: [], matrix: [], first: [], again: [] };
   const directs = [];
-  for (let i = 0; i < 15; i++) {
+  for (let i = 0; i < 41; i++) {
     const direct = time(() => matter.evaluate({ density, temperature, composition: one }, output));
     ratios.single.push(time(() => objects.map((object) => composition(object))) / direct);
     let made = [];

@@ -169,10 +169,12 @@ export function chargeShares(charged: readonly Species[]): {
   let total = 0;
   for (const { chargeNumber, numberFraction } of charged) {
     total += numberFraction;
-    const last = shares[shares.length - 1];
-    // Species come by rising charge: isotopes are neighbours.
-    if (last !== undefined && last.charge === chargeNumber) last.fraction += numberFraction;
-    else shares.push({ charge: chargeNumber, fraction: numberFraction });
+    // A composition's species come by rising charge: isotopes are neighbours, and nothing is moved.
+    let place = shares.length;
+    while (place > 0 && shares[place - 1]!.charge > chargeNumber) place--;
+    const before = shares[place - 1];
+    if (before?.charge === chargeNumber) before.fraction += numberFraction;
+    else shares.splice(place, 0, { charge: chargeNumber, fraction: numberFraction });
   }
   for (const share of shares) share.fraction /= total;
   return { shares, total };

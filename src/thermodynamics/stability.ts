@@ -4,7 +4,6 @@ import type { Composition } from "../matter/composition.js";
 import { DENSITY, TEMPERATURE } from "../matter/point.js";
 import type { Domain } from "./contribution.js";
 import { compact } from "./domain.js";
-import type { Evaluator } from "./evaluator.js";
 import {
   ANSWERED,
   NEGATIVE_HEAT_CAPACITY,
@@ -13,6 +12,14 @@ import {
   NO_PRESSURE,
   NO_RESISTANCE,
 } from "./reason.js";
+
+/** The records and steps of an evaluator that are needed here. */
+interface Steps {
+  readonly point: Float64Array;
+  readonly quantities: Float64Array;
+  fillMembers(composition: Composition, order: 2): void;
+  fillWhereStable(composition: Composition): number;
+}
 
 const limits: Readonly<Record<number, readonly [argument: string, allowed: string]>> = {
   [NO_PRESSURE]: ["pressure over density", "> 0: contributions that act on this matter"],
@@ -25,7 +32,7 @@ const limits: Readonly<Record<number, readonly [argument: string, allowed: strin
 /** Throws `unstable` for the point of the evaluator: what is broken, where, and where it is not. */
 export function refuseUnstable(
   reason: number,
-  evaluator: Evaluator,
+  evaluator: Steps,
   composition: Composition,
   domain: Domain,
   row: number,
@@ -42,7 +49,7 @@ export function refuseUnstable(
 }
 
 /** From which temperature at this density, and which density at this temperature, the sum is stable. */
-function cureOf(evaluator: Evaluator, composition: Composition, { density, temperature }: Domain): string {
+function cureOf(evaluator: Steps, composition: Composition, { density, temperature }: Domain): string {
   const hotter = stableFrom(evaluator, composition, TEMPERATURE, temperature, 4);
   const denser = stableFrom(evaluator, composition, DENSITY, density, 10);
   const cures = [
@@ -55,7 +62,7 @@ function cureOf(evaluator: Evaluator, composition: Composition, { density, tempe
 
 /** The first stable value above that in a slot of the point, by steps of a factor, then halved; the point is as before. */
 function stableFrom(
-  evaluator: Evaluator,
+  evaluator: Steps,
   composition: Composition,
   slot: number,
   [lowest, highest]: readonly [number, number],

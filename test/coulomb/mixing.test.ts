@@ -160,7 +160,7 @@ describe("liquid", () => {
         expect([...members(liquidMixture(species, polarisable), 3)].every((value) => value === 0)).toBe(true);
       }
       const merged = liquidMixture(nuclei([0.5, 0.5], [6, 8]), polarisable);
-      expect(liquidMixture(nuclei([0.25, 0.25, 0.5], [6, 6, 8]), polarisable)).toEqual(merged);
+      expect(liquidMixture(nuclei([0.25, 0.5, 0.25], [6, 8, 6]), polarisable)).toEqual(merged);
     }
   });
 
