@@ -128,6 +128,32 @@ for (const [i, { density, temperature, evaluations }] of inverses[0]!.entries())
   );
 }
 
+interface CompositionTiming {
+  readonly species: number;
+  readonly single: number;
+  readonly matrix: number;
+  readonly first: number;
+  readonly again: number;
+}
+const networks = Array.from(
+  { length: processes },
+  () =>
+    JSON.parse(
+      execFileSync(process.execPath, [`${here}measure-compositions.mjs`], { encoding: "utf8" }),
+    ) as CompositionTiming[],
+);
+console.log(
+  "\na new composition in each of 1024 zones, in units of an evaluation of the full plasma in a batch of one composition:",
+);
+for (const [i, { species }] of networks[0]!.entries()) {
+  const show = (key: "single" | "matrix" | "first" | "again"): string =>
+    median(networks.map((rows) => rows[i]![key])).toFixed(2);
+  console.log(
+    `  ${species} nuclides: making it ${show("matrix")} (${show("single")} one by one), its first evaluation ${show("first")},`,
+    `each further one ${show("again")}`,
+  );
+}
+
 interface StarTiming {
   readonly name: string;
   readonly first: number;

@@ -44,6 +44,7 @@ export {
   type CompositionDerivativesOptions,
   compositionDerivatives,
   type DirectionalDerivatives,
+  type ReactionDerivatives,
   type RestMass,
   type SpeciesDerivatives,
 } from "./thermodynamics/composition-derivatives.js";

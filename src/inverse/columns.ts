@@ -63,6 +63,12 @@ const searchColumns: readonly SearchColumn[] = [
 ];
 
 /**
+ * After so many rows one starts afresh instead of from its neighbour: blocks of a batch can then be answered apart, by several
+ * threads, with the same bits.
+ */
+export const ROWS_IN_A_CHAIN = 1024;
+
+/**
  * The states that have two given quantities, row by row; see {@link solve}.
  *
  * Rows that are neighbours in a model are worth keeping in order: a row starts from the third-order expansion about the
@@ -74,20 +80,14 @@ const searchColumns: readonly SearchColumn[] = [
  * @throws as {@link solve}, with the row; `length-mismatch`, `unavailable-quantity`
  */
 export function solveColumns(equationOfState: EquationOfState, input: SolveInput, output: SolveOutput): void {
-  const question = questionOf("input", input, ["composition", "guess"]);
-  const [a, b] = question.names.map((name) => input[name]) as [unknown, unknown];
-  const first = column(question.names[0], a);
-  const second = column(question.names[1], b, first.length);
-  const count = first.length;
+  const { question, first, second, count, guessed, slots, columns, detail } = checkSolve(
+    equationOfState,
+    input,
+    output,
+  );
   const { composition } = input;
   const each = isList(composition) ? composition : undefined;
-  checkCompositions(composition, each, count);
-  const guessed = guesses(input, count);
-  const { slots, columns, detail } = outputs(output, count);
   const { refused } = output;
-  if (refused === undefined) {
-    for (let i = 0; i < count; i++) checkGiven(equationOfState, question, first, second, i);
-  }
   if (question.type < 0) {
     direct(equationOfState, { density: first, temperature: second, composition }, output);
     return;
@@ -163,6 +163,7 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
   }
 
   for (let i = 0; i < count; i++) {
+    if (i % ROWS_IN_A_CHAIN === 0) neighbour = undefined;
     if (refused === undefined) answer(i);
     else {
       refused[i] = reasonOfGiven(equationOfState.domain, question, first, second, i) || attempt(i);
@@ -188,6 +189,37 @@ function reasonOfGiven(
   if (!Number.isFinite(second[i]) || (type === BOTH && !Number.isFinite(first[i]))) return GIVEN_NO_NUMBER;
   const pressure = one === "pressure" ? first[i]! : other === "pressure" ? second[i]! : 1;
   return pressure > 0 ? outside : GIVEN_NOT_POSITIVE; // as in `solve`: what no matter has before what this one has not
+}
+
+/** All that is checked before the first row is written. */
+interface CheckedSolve {
+  readonly question: Question;
+  readonly first: Float64Array;
+  readonly second: Float64Array;
+  /** Number of rows. */
+  readonly count: number;
+  readonly guessed: SolveInput["guess"];
+  /** Slots and columns of the quantities wanted, and whether the costly one is among them. */
+  readonly slots: readonly number[];
+  readonly columns: readonly Float64Array[];
+  readonly detail: boolean;
+}
+
+/** Checks a batch of questions as `solveColumns` does before the first row. */
+export function checkSolve(equationOfState: EquationOfState, input: SolveInput, output: SolveOutput): CheckedSolve {
+  const question = questionOf("input", input, ["composition", "guess"]);
+  const [a, b] = question.names.map((name) => input[name]) as [unknown, unknown];
+  const first = column(question.names[0], a);
+  const second = column(question.names[1], b, first.length);
+  const count = first.length;
+  const { composition } = input;
+  checkCompositions(composition, isList(composition) ? composition : undefined, count);
+  const guessed = guesses(input, count);
+  const wanted = outputs(output, count);
+  if (output.refused === undefined) {
+    for (let i = 0; i < count; i++) checkGiven(equationOfState, question, first, second, i);
+  }
+  return { question, first, second, count, guessed, ...wanted };
 }
 
 /** Compositions near enough for the answer of one to lead to that of the other: matter that burns differs from zone to zone. */

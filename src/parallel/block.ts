@@ -3,17 +3,24 @@
  * their details. What a task does with the rows is one entry of {@link tasks}.
  */
 import { type ErrorCode, FermistateError } from "../errors.js";
+import { type SolveInput, type SolveOutput, solveColumns } from "../inverse/columns.js";
 import { type Composition, composition, type MeanNucleus, type NucleonFractions } from "../matter/composition.js";
-import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
+import { compositionOf, speciesOf } from "../matter/species-list.js";
+import type { BatchInput, BatchOutput, EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { asFailure, type PlainSource } from "./matter-source.js";
 
-/** Columns by name. */
-export type Columns = Readonly<Record<string, Float64Array>>;
+/** Columns by name; those of a guess are called "guess.density" and "guess.temperature". */
+export type Columns = Readonly<Record<string, Float64Array | Uint8Array>>;
 
 /** What can be done with rows; each writes the output columns it is given and throws errors with the row. */
 const tasks = {
   evaluate(matter: EquationOfState, input: Columns, composition: Composition | Composition[], output: Columns): void {
-    matter.evaluate({ density: input["density"]!, temperature: input["temperature"]!, composition }, output);
+    matter.evaluate({ ...input, composition } as BatchInput, output as BatchOutput);
+  },
+  solve(matter: EquationOfState, input: Columns, composition: Composition | Composition[], output: Columns): void {
+    const { "guess.density": density, "guess.temperature": temperature, ...given } = input;
+    const guess = { ...(density && { density }), ...(temperature && { temperature }) };
+    solveColumns(matter, { ...given, composition, guess } as object as SolveInput, output as SolveOutput);
   },
 } as const;
 
@@ -30,10 +37,15 @@ export interface Block {
   readonly input: Columns;
   readonly output: Columns;
   /** The compositions of the block, each once. */
-  readonly compositions: readonly (NucleonFractions | MeanNucleus)[];
+  readonly compositions: PackedCompositions;
   /** For each row of the block the place of its composition; without it all rows have the first. */
   readonly which?: Uint32Array;
 }
+
+/** Compositions as plain data: nucleon fractions row by row over the labels, or mean nuclei. */
+export type PackedCompositions =
+  | { readonly labels: readonly string[]; readonly fractions: Float64Array }
+  | { readonly single: readonly (NucleonFractions | MeanNucleus)[] };
 
 /** What a thread is asked: to make its equation of state, and to do a block where there is one. */
 export interface Question {
@@ -53,6 +65,7 @@ export interface PlainError {
   readonly given: unknown;
   readonly allowed: string;
   readonly index: number | undefined;
+  readonly limit: number | undefined;
 }
 
 /** Does a block's task in this thread. */
@@ -60,7 +73,7 @@ export function run(matter: EquationOfState, block: Block): void {
   const { task, from, to, input, output, compositions, which } = block;
   const rows = (columns: Columns): Columns =>
     Object.fromEntries(Object.entries(columns).map(([name, column]) => [name, column.subarray(from, to)]));
-  const made = compositions.map((data) => composition(data));
+  const made = unpackCompositions(compositions);
   const each = which === undefined ? made[0]! : Array.from(which, (place) => made[place]!);
   tasks[task](matter, rows(input), each, rows(output));
 }
@@ -71,7 +84,7 @@ export function packCompositions(
   from: number,
   to: number,
 ): Pick<Block, "compositions" | "which"> {
-  if (!Array.isArray(given)) return { compositions: [fractionsOf(given as Composition)] };
+  if (!Array.isArray(given)) return { compositions: packed([given as Composition]) };
   const places = new Map<Composition, number>();
   const which = new Uint32Array(to - from);
   for (let i = from; i < to; i++) {
@@ -83,7 +96,33 @@ export function packCompositions(
     }
     which[i - from] = place;
   }
-  return { compositions: [...places.keys()].map(fractionsOf), which };
+  return { compositions: packed([...places.keys()]), which };
+}
+
+/** A matrix over all labels that occur: sending and reading objects would cost more than the rows. */
+function packed(compositions: readonly Composition[]): PackedCompositions {
+  const places = new Map<string, number>();
+  for (const { species } of compositions) {
+    for (const { label } of species) if (!places.has(label)) places.set(label, places.size);
+  }
+  if (places.has("mean")) return { single: compositions.map(fractionsOf) };
+  const fractions = new Float64Array(compositions.length * places.size);
+  for (const [row, { species }] of compositions.entries()) {
+    for (const one of species) fractions[row * places.size + places.get(one.label)!] = one.nucleonFraction;
+  }
+  return { labels: [...places.keys()], fractions };
+}
+
+/** The same compositions, to the bit: what was checked once is not checked again. */
+function unpackCompositions(given: PackedCompositions): Composition[] {
+  if ("single" in given) return given.single.map((data) => composition(data));
+  const list = speciesOf(given.labels);
+  const count = given.labels.length;
+  const fractions = new Float64Array(count);
+  return Array.from({ length: given.fractions.length / count }, (_, row) => {
+    for (let i = 0; i < count; i++) fractions[i] = given.fractions[row * count + list.order[i]!]!;
+    return compositionOf(list, fractions);
+  });
 }
 
 /** What `composition` makes the same composition of, to the bit. */
@@ -96,7 +135,7 @@ function fractionsOf({ species }: Composition): NucleonFractions | MeanNucleus {
 /** An error as data; rows counted from that of the whole batch. */
 export function packError(error: unknown, from: number): PlainError {
   const typed = asFailure(error, "worker", "contributions that throw no error of their own") as FermistateError;
-  const { code, argument, given, allowed, index } = typed;
+  const { code, argument, given, allowed, index, limit } = typed;
   const isPlain =
     given === null || (typeof given !== "object" && typeof given !== "function" && typeof given !== "symbol");
   return {
@@ -105,10 +144,12 @@ export function packError(error: unknown, from: number): PlainError {
     given: isPlain ? given : String(given),
     allowed,
     index: index === undefined ? undefined : index + from,
+    limit,
   };
 }
 
 /** The error again. */
-export function unpackError({ code, index, ...details }: PlainError): FermistateError {
-  return new FermistateError(code, index === undefined ? details : { ...details, index });
+export function unpackError({ code, index, limit, ...details }: PlainError): FermistateError {
+  const place = { ...(index === undefined ? {} : { index }), ...(limit === undefined ? {} : { limit }) };
+  return new FermistateError(code, { ...details, ...place });
 }

@@ -1,6 +1,7 @@
 /** A batch on several cores: checks in the calling thread as the serial batch does, blocks of rows to the threads. */
 import { availableParallelism } from "node:os";
 import { FermistateError } from "../errors.js";
+import { checkSolve, ROWS_IN_A_CHAIN, type SolveInput, type SolveOutput, solveColumns } from "../inverse/columns.js";
 import type { Composition } from "../matter/composition.js";
 import { checkBatch } from "../thermodynamics/columns.js";
 import type { BatchInput, BatchOutput, EquationOfState } from "../thermodynamics/equation-of-state.js";
@@ -51,13 +52,19 @@ export interface BatchThreads {
    * Plain columns are copied to the threads and back: what the caller does to the input while the batch runs has no effect,
    * and a refused batch leaves the output as it was. Columns over a `SharedArrayBuffer` are used in place: leave them alone
    * until the promise is settled; a refused batch leaves some rows written. Fewer than 4096 rows, or rows that
-   * bring a new composition more often than every 32nd, are done in the calling thread, which is faster there.
+   * bring a new composition more often than every second, are done in the calling thread, which is faster there.
    *
    * @throws (rejects with) the errors of `EquationOfState.evaluate`, the first row that one thread would have refused;
    * `worker-failed` where a thread dies or a contribution throws an error that is not the library's. The threads are
    * started anew by the next call.
    */
   evaluate(input: BatchInput, output: BatchOutput): Promise<void>;
+  /**
+   * The batch of `solveColumns`, with the same numbers to the bit and the same errors; columns as in {@link BatchThreads.evaluate}.
+   *
+   * @throws (rejects with) the errors of `solveColumns`, the first row that one thread would have refused; `worker-failed`
+   */
+  solve(input: SolveInput, output: SolveOutput): Promise<void>;
   /** Ends the threads; a batch under way is refused. A program may also end without it. */
   close(): Promise<void>;
 }
@@ -67,8 +74,8 @@ export interface BatchThreads {
  * to and fro cost 0.1 to 1 ms, by how busy the machine is.
  */
 const smallestBatch = 4096;
-/** A composition costs a thread as much to make as 20 to 40 rows to evaluate. */
-const rowsPerComposition = 32;
+/** Making a composition in a thread and packing it here costs as much as one or two rows: with fewer rows each, two threads gain nothing. */
+const rowsPerComposition = 2;
 /** Rows of a block: long against a message, short enough that threads end together. */
 const blockRows: readonly [fewest: number, most: number] = [1024, 16384];
 
@@ -143,7 +150,8 @@ export async function parallelEvaluator(
     output: Columns,
   ): Promise<void> {
     const [fewest, most] = blockRows;
-    const size = Math.min(most, Math.max(fewest, Math.ceil(rows / (8 * count))));
+    const even = Math.min(most, Math.max(fewest, Math.ceil(rows / (8 * count))));
+    const size = ROWS_IN_A_CHAIN * Math.ceil(even / ROWS_IN_A_CHAIN);
     const workers = await living();
     let next = 0;
     let first: PlainError | undefined;
@@ -162,27 +170,51 @@ export async function parallelEvaluator(
     if (first !== undefined) throw unpackError(first);
   }
 
-  async function evaluate(input: BatchInput, output: BatchOutput): Promise<void> {
-    if (closed) throw closedError();
-    const rows = checkBatch(own, input, output);
-    const { density, temperature, composition } = input;
+  /** Answers in this thread where that is faster, else spreads the rows; the output is written when all have their answer. */
+  async function run(
+    task: TaskName,
+    rows: number,
+    input: Columns,
+    composition: Composition | readonly Composition[],
+    output: Columns,
+    serial: () => void,
+  ): Promise<void> {
     if (rows < smallestBatch || bringsManyCompositions(composition)) {
       try {
-        own.evaluate(input, output);
+        serial();
       } catch (error) {
         throw asFailure(error, "worker", "contributions that throw no error of their own");
       }
       return;
     }
-    const columns = Object.entries(output).filter((entry): entry is [string, Float64Array] => entry[1] !== undefined);
-    const shared = columns.map(([name, column]) => [name, isShared(column) ? column : sharedColumn(rows)] as const);
-    const inputs = { density: toShared(density), temperature: toShared(temperature) };
+    const columns = Object.entries(output);
+    // With the values they have: a refused row keeps them.
+    const shared = columns.map(([name, column]) => [name, toShared(column)] as const);
+    const inputs = Object.fromEntries(Object.entries(input).map(([name, column]) => [name, toShared(column)]));
     const compositions = Array.isArray(composition) ? [...composition] : composition;
-    await spread("evaluate", rows, inputs, compositions, Object.fromEntries(shared));
+    await spread(task, rows, inputs, compositions, Object.fromEntries(shared));
     for (const [i, [, column]] of columns.entries()) {
       const [, done] = shared[i]!;
       if (done !== column) column.set(done);
     }
+  }
+
+  async function evaluate(input: BatchInput, output: BatchOutput): Promise<void> {
+    if (closed) throw closedError();
+    const rows = checkBatch(own, input, output);
+    const { density, temperature, composition } = input;
+    await run("evaluate", rows, { density, temperature }, composition, asColumns(output), () =>
+      own.evaluate(input, output),
+    );
+  }
+
+  async function solve(input: SolveInput, output: SolveOutput): Promise<void> {
+    if (closed) throw closedError();
+    const { question, first, second, count, guessed } = checkSolve(own, input, output);
+    const columns: Record<string, Float64Array> = { [question.names[0]]: first, [question.names[1]]: second };
+    if (guessed?.density !== undefined) columns["guess.density"] = guessed.density;
+    if (guessed?.temperature !== undefined) columns["guess.temperature"] = guessed.temperature;
+    await run("solve", count, columns, input.composition, asColumns(output), () => solveColumns(own, input, output));
   }
 
   async function close(): Promise<void> {
@@ -191,7 +223,7 @@ export async function parallelEvaluator(
     await current?.end("the evaluator was closed");
   }
 
-  const evaluator = { threads: count, equationOfState: own, evaluate, close };
+  const evaluator = { threads: count, equationOfState: own, evaluate, solve, close };
   const dispose: symbol | undefined = Symbol.asyncDispose;
   return Object.freeze(dispose === undefined ? evaluator : { ...evaluator, [dispose]: close }) as ParallelEvaluator;
 }
@@ -205,19 +237,17 @@ function bringsManyCompositions(composition: Composition | readonly Composition[
   return Array.isArray(composition) && new Set(composition).size * rowsPerComposition > composition.length;
 }
 
-function isShared(column: Float64Array): boolean {
-  return column.buffer instanceof SharedArrayBuffer;
+/** The columns of an output that are there. */
+function asColumns(output: BatchOutput | SolveOutput): Columns {
+  return Object.fromEntries(Object.entries(output).filter((entry) => entry[1] !== undefined));
 }
 
-function sharedColumn(rows: number): Float64Array {
-  return new Float64Array(new SharedArrayBuffer(8 * rows));
-}
-
-function toShared(column: Float64Array): Float64Array {
-  if (isShared(column)) return column;
-  const copy = sharedColumn(column.length);
+function toShared<Column extends Float64Array | Uint8Array>(column: Column): Column {
+  if (column.buffer instanceof SharedArrayBuffer) return column;
+  const buffer = new SharedArrayBuffer(column.byteLength);
+  const copy = column instanceof Uint8Array ? new Uint8Array(buffer) : new Float64Array(buffer);
   copy.set(column);
-  return copy;
+  return copy as Column;
 }
 
 function readThreads(options: ParallelOptions): number {

@@ -55,6 +55,20 @@ export interface DirectionalDerivatives {
   readonly electronsPerNucleon: number;
 }
 
+/** Change of matter by one reaction, at fixed density and temperature: derivatives by the number of reactions per gram. */
+export interface ReactionDerivatives {
+  /** Of the free energy, erg per reaction: sum nu_a mu_a, zero in equilibrium. */
+  readonly freeEnergy: number;
+  /** Of the energy, erg per reaction; its negative, with rest mass not "excluded", is the heat set free, neutrinos included. */
+  readonly energy: number;
+  /** Of the entropy, erg/K per reaction. */
+  readonly entropy: number;
+  /** Of the pressure, (dyn/cm^2) per (reaction/g). */
+  readonly pressure: number;
+  /** Electrons made by one reaction, sum nu_a Z_a: negative where they are captured. */
+  readonly electrons: number;
+}
+
 /** Derivatives by the nucleon fraction X of one species, the other fractions held. */
 export interface SpeciesDerivatives extends DirectionalDerivatives {
   /** Label of the species. */
@@ -88,14 +102,13 @@ export interface CompositionDerivatives {
    */
   along(change: NucleonFractions): DirectionalDerivatives;
   /**
-   * Derivative along a reaction, per reaction and gram: energies in erg per reaction. `specificFreeEnergy` is then sum nu_a
-   * mu_a, zero in equilibrium; `-specificEnergy`, with rest mass not "excluded", is the heat to be carried off (neutrinos
-   * included) to hold density and temperature.
+   * Change by one reaction. `-energy`, with rest mass not "excluded", is the heat to be carried off (neutrinos included) to hold
+   * density and temperature.
    *
    * @param nuclei - nuclei made by one reaction, those consumed negative: `{ C12: -2, Mg24: 1 }`; electrons follow
    * @throws as {@link CompositionDerivatives.along}
    */
-  alongReaction(nuclei: Readonly<Record<string, number>>): DirectionalDerivatives;
+  alongReaction(nuclei: Readonly<Record<string, number>>): ReactionDerivatives;
 }
 
 /**
@@ -118,7 +131,7 @@ export interface CompositionDerivatives {
  * import { composition, compositionDerivatives, whiteDwarfMatter } from "fermistate";
  * const matter = composition({ C12: 0.49, O16: 0.5, Mg24: 0.01 });
  * const derivatives = compositionDerivatives(whiteDwarfMatter(), 1e9, 5e8, matter, { restMass: "excess" });
- * derivatives.alongReaction({ C12: -2, Mg24: 1 }).specificFreeEnergy / 1.602177e-6; // => -14.162 MeV
+ * derivatives.alongReaction({ C12: -2, Mg24: 1 }).freeEnergy / 1.602177e-6; // => -14.162 MeV
  * ```
  */
 export function compositionDerivatives(
@@ -160,17 +173,29 @@ export function compositionDerivatives(
     species: Object.freeze(species),
     of: (label: string) => entryOf(species, label, "label"),
     along: (change: NucleonFractions) => sumAlong(species, fractions("change", change)),
-    alongReaction: (nuclei: Readonly<Record<string, number>>) => {
-      const entries = fractions("nuclei", nuclei);
-      return sumAlong(
-        species,
-        entries.map(([label, count]) => {
-          entryOf(species, label, `nuclei.${label}`);
-          return [label, count * composition.species.find((one) => one.label === label)!.massNumber];
-        }),
-        atomicMassConstant,
-      );
-    },
+    alongReaction: (nuclei: Readonly<Record<string, number>>) => alongReaction(composition, species, nuclei),
+  });
+}
+
+function alongReaction(
+  composition: Composition,
+  species: readonly SpeciesDerivatives[],
+  nuclei: Readonly<Record<string, number>>,
+): ReactionDerivatives {
+  let electrons = 0;
+  const nucleons = fractions("nuclei", nuclei).map(([label, count]) => {
+    entryOf(species, label, `nuclei.${label}`);
+    const { massNumber, chargeNumber } = composition.species.find((one) => one.label === label)!;
+    electrons += count * chargeNumber;
+    return [label, count * massNumber] as const;
+  });
+  const change = sumAlong(species, nucleons, atomicMassConstant);
+  return Object.freeze({
+    freeEnergy: change.specificFreeEnergy,
+    energy: change.specificEnergy,
+    entropy: change.specificEntropy,
+    pressure: change.pressure,
+    electrons,
   });
 }
 

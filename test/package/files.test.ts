@@ -8,14 +8,29 @@ const root = fileURLToPath(new URL("../..", import.meta.url));
 const about = JSON.parse(readFileSync(`${root}package.json`, "utf8")) as {
   exports: Record<string, Record<string, Record<string, string>> | string>;
   bin: Record<string, string>;
+  dependencies: Record<string, string>;
 };
 
-test("the tarball holds dist, the licences, the README and package.json only", () => {
+test("the tarball holds dist, the guide, the licences, the README and package.json only", () => {
   const paths = inject("packedFiles").map((file) => file.path);
   const allowed = /^(dist\/[\w.-]+\.(js|cjs|d\.ts|d\.cts)|dist\/THIRD-PARTY-LICENSES\.txt|package\.json)$/;
-  const named = ["LICENSE", "README.md", "CHANGELOG.md"];
-  expect(paths.filter((path) => !allowed.test(path) && !named.includes(path))).toEqual([]);
-  expect(paths).toContain("LICENSE");
+  const guide = /^docs\/guide\/[\w-]+\.(md|svg)$/;
+  const named = ["LICENSE", "README.md", "CHANGELOG.md", "docs/read_table.py"];
+  expect(paths.filter((path) => !allowed.test(path) && !guide.test(path) && !named.includes(path))).toEqual([]);
+  for (const path of named) expect(paths).toContain(path);
+  // Every page that the README leads to comes along.
+  const pages = [...readFileSync(`${root}README.md`, "utf8").matchAll(/\]\((docs\/guide\/[^)#]+)\)/g)].map(
+    ([, page]) => page,
+  );
+  expect(pages.length).toBeGreaterThan(15);
+  expect(pages.filter((page) => !paths.includes(page as string))).toEqual([]);
+});
+
+test("the versions of Node are those that the run-time dependencies take", () => {
+  const enginesOf = (folder: string) =>
+    (JSON.parse(readFileSync(`${root}${folder}package.json`, "utf8")) as { engines?: { node?: string } }).engines?.node;
+  const asked = Object.keys(about.dependencies).map((name) => enginesOf(`node_modules/${name}/`));
+  expect([...new Set(asked.filter((range) => range !== undefined))]).toEqual([enginesOf("")]);
 });
 
 test("every file named in package.json is in the tarball", () => {

@@ -1,7 +1,7 @@
 /** Batches on threads: the numbers and the errors of one thread, and what happens when code or threads fail. */
 import { afterAll, afterEach, beforeAll, describe, expect, test, vi } from "vitest";
 import type { FermistateError } from "../../src/errors.js";
-import { type Composition, composition } from "../../src/matter/composition.js";
+import { type Composition, composition, compositions } from "../../src/matter/composition.js";
 import type { Answer } from "../../src/parallel/block.js";
 import { type MatterSource, type ParallelEvaluator, parallelEvaluator } from "../../src/parallel/index.js";
 import type * as ThreadsRoom from "../../src/parallel/threads.js";
@@ -129,6 +129,40 @@ describe("the numbers are those of one thread, to the bit", () => {
     await evaluator.evaluate(input, parallel);
     expect(bench.asked).toBeGreaterThan(1);
     for (const name of names) expect(sameBits(parallel[name], serial[name]), name).toBe(true);
+  });
+
+  test("a new composition every second row goes to the threads, as a matrix of fractions", async () => {
+    const evaluator = await evaluatorOf({ whiteDwarfMatter: {} });
+    const rows = 6_000;
+    const random = uniform(5);
+    const labels = ["O16", "He4", "n", "C12"];
+    const fractions = Float64Array.from({ length: 2 * rows }, (_, i) => (i % 7 === 0 ? 0 : random()));
+    const made = compositions(labels, fractions, { normalise: true });
+    const list = Array.from({ length: rows }, (_, i) => made[i >> 1] as Composition);
+    const input = { ...pointsOf(rows), composition: list };
+    const names = ["pressure", "specificEntropy", "gamma1"] as const;
+    const [serial, parallel] = [columnsOf(names, rows), columnsOf(names, rows)];
+    whiteDwarfMatter().evaluate(input, serial);
+    await evaluator.evaluate(input, parallel);
+    expect(bench.asked).toBeGreaterThan(1);
+    for (const name of names) expect(sameBits(parallel[name], serial[name]), name).toBe(true);
+  });
+
+  test("refused rows: the same reasons, and their outputs stay", async () => {
+    const evaluator = await evaluatorOf({ whiteDwarfMatter: {} });
+    const rows = 9_000;
+    const { density, temperature } = pointsOf(rows);
+    for (let i = 0; i < rows; i += 13) density[i] = [1e30, -1, Number.NaN, 1][(i / 13) % 4] as number;
+    for (let i = 39; i < rows; i += 52) temperature[i] = 1e4; // cold beside 1 g/cm^3: unstable
+    const results = [0, 1].map(() => ({ pressure: new Float64Array(rows).fill(-7), refused: new Uint8Array(rows) }));
+    const [serial, parallel] = results as [(typeof results)[0], (typeof results)[0]];
+    whiteDwarfMatter().evaluate({ density, temperature, composition: core }, serial);
+    await evaluator.evaluate({ density, temperature, composition: core }, parallel);
+    expect(bench.asked).toBeGreaterThan(1);
+    expect(new Set(serial.refused)).toEqual(new Set([0, 1, 3, 6, 10]));
+    expect(Buffer.from(parallel.refused).equals(Buffer.from(serial.refused))).toBe(true);
+    expect(sameBits(parallel.pressure, serial.pressure)).toBe(true);
+    expect(parallel.pressure[13]).toBe(-7);
   });
 
   test("columns in shared memory are used in place, views of them too; rows beyond the input stay", async () => {
