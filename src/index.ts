@@ -19,7 +19,7 @@ export { type ErrorCode, type ErrorDetails, FermistateError, isFermistateError }
 export { electronPositronGas } from "./fermi-gas/electron-positron-gas.js";
 export { type FermionGasOptions, fermionGas } from "./fermi-gas/fermion-gas.js";
 export { type SearchColumn, type SolveInput, type SolveOutput, solveColumns } from "./inverse/columns.js";
-export type { GivenName, GivenPair } from "./inverse/questions.js";
+export type { GivenName, GivenPair, PairOf } from "./inverse/questions.js";
 export { type Given, type Guess, type Solution, type SolveOptions, solve } from "./inverse/solve.js";
 export { type IdealIonsOptions, idealIons } from "./ions/ideal-ions.js";
 export * from "./matter/composition.js";

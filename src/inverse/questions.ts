@@ -20,7 +20,7 @@ export type GivenName =
   | "specificEnthalpy";
 
 /** Values of `First` and one of `Second`, and of no other quantity. */
-type Pair<Value, First extends GivenName, Second extends GivenName> = Second extends GivenName
+export type PairOf<Value, First extends GivenName, Second extends GivenName> = Second extends GivenName
   ? { readonly [Name in First | Second]: Value } & {
       readonly [Name in Exclude<GivenName, First | Second>]?: undefined;
     }
@@ -28,10 +28,10 @@ type Pair<Value, First extends GivenName, Second extends GivenName> = Second ext
 
 /** Values of one of the pairs that determine a state: what is not here is refused when it compiles, and when it runs. */
 export type GivenPair<Value> =
-  | Pair<Value, "density", "temperature" | "pressure" | "specificEnergy" | "specificEntropy" | "specificEnthalpy">
-  | Pair<Value, "temperature", "pressure" | "specificEntropy">
-  | Pair<Value, "pressure", "specificEntropy" | "specificEnergy" | "specificEnthalpy">
-  | Pair<Value, "specificEntropy", "specificEnergy" | "specificEnthalpy">;
+  | PairOf<Value, "density", "temperature" | "pressure" | "specificEnergy" | "specificEntropy" | "specificEnthalpy">
+  | PairOf<Value, "temperature", "pressure" | "specificEntropy">
+  | PairOf<Value, "pressure", "specificEntropy" | "specificEnergy" | "specificEnthalpy">
+  | PairOf<Value, "specificEntropy", "specificEnergy" | "specificEnthalpy">;
 
 /** A pair of given quantities as a search sees it. */
 export interface Question {

@@ -43,7 +43,7 @@ export interface Block {
 }
 
 /** Compositions as plain data: nucleon fractions row by row over the labels, or mean nuclei. */
-export type PackedCompositions =
+type PackedCompositions =
   | { readonly labels: readonly string[]; readonly fractions: Float64Array }
   | { readonly single: readonly (NucleonFractions | MeanNucleus)[] };
 
