@@ -42,7 +42,7 @@ const limits: Record<string, number> = {
   files: 3_000,
   compare: 82_000, // regime brings the electron gas and AME2020
   certify: 86_000, // decimal.js, the formulas a second time, d3 for maps
-  parallel: 60_000,
+  parallel: 80_000, // with the inverse questions
   tables: 90_000,
   "table-build": 90_000,
   "table-files": 53_500, // most of it AME2020 for compositions, and zod; h5wasm and hyparquet-writer are loaded when needed
