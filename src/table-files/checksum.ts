@@ -1,6 +1,7 @@
 /** The checksum of a table: of what it says, whatever the file that carries it. `checksumRecipe` has it in words. */
 import type { FreeEnergyTable } from "../tables/table.js";
-import { type Item, itemsOf } from "./items.js";
+import type { Item } from "./item.js";
+import { itemsOf } from "./items.js";
 import { sha256, utf8 } from "./platform.js";
 
 /**
