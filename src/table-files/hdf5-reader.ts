@@ -199,7 +199,7 @@ function dataset(header: Header, name: string, kind: Kind): Dataset {
 function dataspace(body: Uint8Array, name: string): number[] {
   const rank = body[1] ?? 255;
   const type = body[3];
-  if (body[0] !== 2 || rank > 3 || body.length < 4 + 8 * rank || type !== (rank === 0 ? 0 : 1)) {
+  if (body[0] !== 2 || rank > 4 || body.length < 4 + 8 * rank || type !== (rank === 0 ? 0 : 1)) {
     throw invalidFile(argument, `${name} of another dataspace`, form);
   }
   const view = viewOf(body);

@@ -21,17 +21,8 @@ import {
   type SpeciesError,
   type SpeciesQuantity,
   type SpeciesTable,
+  speciesQuantities,
 } from "./species-table.js";
-
-const names: readonly SpeciesQuantity[] = [
-  "pressure",
-  "numberDensity",
-  "entropy",
-  "densityByDegeneracy",
-  "heatCapacity",
-  "compressibility",
-  "pressureByTemperature",
-];
 
 const safety = 2;
 /** 1/p and 1/p^2 of the plastic number p, the root of p^3 = p + 1: the golden ratio of two dimensions. */
@@ -46,21 +37,21 @@ export function certifySpecies(table: Omit<SpeciesTable, "certificate">): Specie
   const { degeneracy, logTheta } = table;
   const places = perCell * (degeneracy.length - 1) * (logTheta.length - 1);
   const integrals = new Float64Array(NODE_LENGTH);
-  const errors = names.map(() => new Float64Array(places));
-  const worst = names.map(() => ({ error: 0, eta: 0, y: 0 }));
+  const errors = speciesQuantities.map(() => new Float64Array(places));
+  const worst = speciesQuantities.map(() => ({ error: 0, eta: 0, y: 0 }));
   for (let place = 0; place < places; place++) {
     const eta = between(degeneracy, (place * plastic[0]) % 1);
     const y = between(logTheta, (place * plastic[1]) % 1);
     fillSpeciesIntegrals(eta, Math.exp(y), integrals);
     const exact = quantities(integrals, eta);
     const mine = quantities(pressures(surface, eta, y), eta);
-    for (let k = 0; k < names.length; k++) {
+    for (let k = 0; k < speciesQuantities.length; k++) {
       const error = Math.abs(mine[k]! / exact[k]! - 1);
       errors[k]![place] = error;
       if (error > worst[k]!.error) worst[k] = { error, eta, y };
     }
   }
-  const stated = names.map((name, k): readonly [SpeciesQuantity, SpeciesError] => {
+  const stated = speciesQuantities.map((name, k): readonly [SpeciesQuantity, SpeciesError] => {
     const { error, eta, y } = worst[k]!;
     const median = errors[k]!.sort()[places >> 1]!;
     return [name, { bound: safety * error, largest: error, median, worst: [eta, table.restTemperature * Math.exp(y)] }];

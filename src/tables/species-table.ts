@@ -15,14 +15,17 @@ export const NODE_ORDER = 6;
 export const NODE_LENGTH = 49;
 
 /** Quantities whose error the certificate of a species table states. */
-export type SpeciesQuantity =
-  | "pressure"
-  | "numberDensity"
-  | "entropy"
-  | "densityByDegeneracy"
-  | "heatCapacity"
-  | "compressibility"
-  | "pressureByTemperature";
+export type SpeciesQuantity = (typeof speciesQuantities)[number];
+/** Their names. */
+export const speciesQuantities = [
+  "pressure",
+  "numberDensity",
+  "entropy",
+  "densityByDegeneracy",
+  "heatCapacity",
+  "compressibility",
+  "pressureByTemperature",
+] as const;
 
 /** The error of one quantity over a species table. */
 export interface SpeciesError {
