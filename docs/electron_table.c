@@ -1,10 +1,11 @@
-/* Electrons and positrons, any composition, from a table of fermistate in an .npz file. C99, no library; a little-endian machine.
+/* Electrons and positrons, any composition, from a table of fermistate in an .npz file. C99, no library; for little-endian
+   machines.
 
        cc -O2 electron_table.c -o electron_table -lm
        ./electron_table electrons.npz 3.0110703768336843e25 1e9       net electrons per cm^3, temperature in K
 
-   In a program of your own compile with -D ELECTRON_TABLE_NO_MAIN, call electron_table_read once and electron_gas at each point.
-   docs/guide/electron-table.md of fermistate has the formulas and the errors. */
+   In a program of your own compile with -D ELECTRON_TABLE_NO_MAIN, call electron_table_read once and electron_gas at
+   each point. docs/guide/electron-table.md of fermistate has the formulas and the errors. */
 #include <math.h>
 #include <stdint.h>
 #include <stdio.h>
@@ -24,8 +25,8 @@ struct electron_state {
   double eta, positrons;                               /* (mu_- - m_e c^2)/kT, cm^-3 */
 };
 
-/* Sums over both signs in units of the table, with D = d/d ln theta at fixed eta of the electrons: P, theta n, T s, energy,
-   theta n_+, theta dn/d eta, theta D n, D P, D^2 P - D P. */
+/* Sums over both signs in units of the table, with D = d/d ln theta at fixed eta of the electrons: P, theta n, T s,
+   energy, theta n_+, theta dn/d eta, theta D n, D P, D^2 P - D P. */
 enum { P, TN, TS, ENERGY, TPLUS, A, B, DP, C, SUMS };
 
 /* ---- the file: an archive of stored .npy members ---- */
@@ -93,7 +94,7 @@ static int cell(const double *nodes, int count, double at) {
   return low;
 }
 
-/* Value, first and second derivative of the weights of the 0th..6th derivative at the lower end, then at the upper end. */
+/* Value, first and second derivative of the weights of the 0th..6th derivative at the lower end, then at the upper. */
 static void weights(double t, double h, double w[3][14]) {
   static const double choose[7] = {1, 7, 28, 84, 210, 462, 924};   /* C(6 + k, k) */
   static const double inverse[7] = {1, 1, 1. / 2, 1. / 6, 1. / 24, 1. / 120, 1. / 720};
@@ -110,7 +111,8 @@ static void weights(double t, double h, double w[3][14]) {
       if (k > 1) s2 += choose[k] * k * (k - 1) * power[k - 2];
       double u = inverse[i] * power[i], u1 = i > 0 ? inverse[i - 1] * power[i - 1] : 0;
       double u2 = i > 1 ? inverse[i - 2] * power[i - 2] : 0, uv1 = u1 * v + u * v1;
-      double value[3] = {u * v * s, uv1 * s + u * v * s1, (u2 * v + 2 * u1 * v1 + u * v2) * s + 2 * uv1 * s1 + u * v * s2};
+      double value[3] = {u * v * s, uv1 * s + u * v * s1,
+                         (u2 * v + 2 * u1 * v1 + u * v2) * s + 2 * uv1 * s1 + u * v * s2};
       if (i == 0) { /* the same without cancellation */
         value[1] = -12012 * power[6] * r5 * r;
         value[2] = -72072 * power[5] * r5 * (r - x);
@@ -128,7 +130,8 @@ static void look_up(const struct electron_table *table, double eta, double y, do
   weights(de / he, he, we);
   weights(dy / hy, hy, wy);
   const double *corner = table->nodes + 49 * ((size_t)a * table->columns + b);
-  double plane = corner[0], by_eta = corner[7], by_y = corner[1]; /* taken out first: large values round in the derivatives */
+  /* The plane through a corner is taken out first: large values would round in the derivatives. */
+  double plane = corner[0], by_eta = corner[7], by_y = corner[1];
   for (int k = 0; k < 14; k++) {
     for (int d = 0; d < 3; d++) rows[d][k] = 0;
     for (int m = 0; m < 14; m++) {
@@ -150,7 +153,8 @@ static void look_up(const struct electron_table *table, double eta, double y, do
 }
 
 /* Adds one species to the sums: sign 1, electrons at eta; -1, positrons at eta, which moves with ln theta as `rate`. */
-static void add_species(const struct electron_table *table, double eta, double theta, int sign, double rate, double *sums) {
+static void add_species(const struct electron_table *table, double eta, double theta, int sign, double rate,
+                        double *sums) {
   double l[3][3], lowest = table->eta[0];
   look_up(table, eta < lowest ? lowest : eta, log(theta), l);
   if (eta < lowest) { /* classical */
@@ -176,12 +180,13 @@ static void add_species(const struct electron_table *table, double eta, double t
   sums[C] += p * (ddp - dp);
 }
 
-/* Above the table: Sommerfeld's series, by the recurrence of docs/guide/fermi-gas.md. D at fixed mu here: all formulas below hold. */
+/* Above the table: Sommerfeld's series, by the recurrence of docs/guide/fermi-gas.md. D is at fixed mu here, and all
+   formulas below hold. */
 static void degenerate(double eta, double theta, double *sums) {
   static const double b_k[15] = {/* 2 (1 - 2^(1-2k)) zeta(2k) */
-                                1.6449340668482264, 1.8940656589944918, 1.9711021825948702, 1.9924660037052957, 1.998079015196543,
-                                1.9995153702877164, 1.9998783406919594, 1.9999695284298122, 1.9999923757392202, 1.9999980932231631,
-                                1.9999995232264616, 1.9999998807977848, 1.999999970198464, 1.9999999925495069, 1.9999999981373646};
+      1.6449340668482264, 1.8940656589944918, 1.9711021825948702, 1.9924660037052957, 1.998079015196543,
+      1.9995153702877164, 1.9998783406919594, 1.9999695284298122, 1.9999923757392202, 1.9999980932231631,
+      1.9999995232264616, 1.9999998807977848, 1.999999970198464,  1.9999999925495069, 1.9999999981373646};
   double mu = eta * theta, p2 = mu * (mu + 2), p = sqrt(p2), w = p * p2 / 3;
   double x = 2 * (1 + mu) * theta / p2, s = theta * theta / p2;
   double a = 1.5 * x, b = 0.5 * x * a + 3 * s, c = -0.5 * x * b + 4 * s * a; /* a_1, a_2, a_3 */
@@ -228,14 +233,16 @@ static void gas_sums(const struct electron_table *table, double nu, double eta, 
   if (nu < 1e-5) sums[TN] = nu * sums[A]; /* n_- - n_+ is a small difference here */
 }
 
-/* The gas of `density` net electrons per cm^3, above 0, at `temperature` in K. 0, or -1 outside the table and without convergence. */
+/* The gas of `density` net electrons per cm^3, above 0, at `temperature` in K. 0, or -1 outside the table and without
+   convergence. */
 int electron_gas(const struct electron_table *table, double density, double temperature, struct electron_state *state) {
   double theta = temperature / table->rest, n = density / table->density, inverse = 1 / theta, sums[SUMS];
   double middle = 0.5 * inverse, nu, eta, last = INFINITY, y = log(theta);
   if (!(density > 0 && y >= table->y[0] && y <= table->y[table->columns - 1])) return -1;
   gas_sums(table, middle, -middle, theta, sums);
-  int pairs = n * theta < sums[TN]; /* then the unknown is ln nu, where ln n is convex, else eta, where it is concave: Newton's
-                                      method converges from above there and from below here */
+  /* With pairs the unknown is ln nu, in which ln n is convex, else eta, in which it is concave: Newton's method converges
+     from above in the one and from below in the other. */
+  int pairs = n * theta < sums[TN];
   if (pairs) {
     gas_sums(table, 0, -inverse, theta, sums);
     nu = fmin(middle, n * theta / sums[A]);
@@ -280,7 +287,7 @@ int main(int count, char **words) {
   struct electron_table table;
   struct electron_state state;
   if (count < 4 || electron_table_read(words[1], &table) != 0) {
-    fprintf(stderr, "usage: %s electrons.npz DENSITY TEMPERATURE ...: net electrons per cm^3 and K, in pairs\n", words[0]);
+    fprintf(stderr, "usage: %s electrons.npz DENSITY TEMPERATURE ...: net electrons per cm^3, K\n", words[0]);
     return 2;
   }
   puts("pressure entropy energy heat_capacity pressure_by_density pressure_by_temperature eta positrons");
@@ -289,8 +296,8 @@ int main(int count, char **words) {
       fprintf(stderr, "%s per cm^3 and %s K: outside the table\n", words[k], words[k + 1]);
       return 1;
     }
-    printf("%.17g %.17g %.17g %.17g %.17g %.17g %.17g %.17g\n", state.pressure, state.entropy, state.energy, state.heat_capacity,
-           state.pressure_by_density, state.pressure_by_temperature, state.eta, state.positrons);
+    printf("%.17g %.17g %.17g %.17g ", state.pressure, state.entropy, state.energy, state.heat_capacity);
+    printf("%.17g %.17g %.17g %.17g\n", state.pressure_by_density, state.pressure_by_temperature, state.eta, state.positrons);
   }
   return 0;
 }

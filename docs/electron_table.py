@@ -32,7 +32,7 @@ def checksum(data, items):
 
 
 def weights(t, h):
-    """Value, first and second derivative of the weights of the 0th..6th derivative at the lower, then at the upper end."""
+    """Value, first and second derivative of the weights of the 0th..6th derivative at the lower, then the upper end."""
     found = np.zeros((3, 2, ORDER + 1))
     for end, x in enumerate((t, 1 - t)):
         r = 1 - x
@@ -60,7 +60,9 @@ class ElectronTable:
         if checksum(data, description["items"]) != description["checksum"]:
             raise ValueError("the content does not have the checksum that the file states")
         self.eta, self.y, self.nodes = (data[name] for name in ("axes.degeneracy", "axes.log_theta", "surface.nodes"))
-        self.rest, self.pressure, self.density = (float(data[f"units.{name}"]) for name in ("rest_temperature", "pressure", "density"))
+        self.rest = float(data["units.rest_temperature"])
+        self.pressure = float(data["units.pressure"])
+        self.density = float(data["units.density"])
         self.quantities = str(data["certificate.quantity"]).split("\n")
         self.largest = data["certificate.errors.largest"]
 
@@ -72,7 +74,7 @@ class ElectronTable:
         de, dy = eta - self.eta[a], y - self.y[b]
         cell = self.nodes[a : a + 2, b : b + 2].copy()
         plane = cell[0, 0, :2, :2].copy()  # taken out first: differences of large values would round in the derivatives
-        cell[:, :, 0, 0] -= plane[0, 0] + plane[1, 0] * he * np.array([[0], [1]]) + plane[0, 1] * hy * np.array([[0, 1]])
+        cell[:, :, 0, 0] -= plane[0, 0] + np.add.outer([0, plane[1, 0] * he], [0, plane[0, 1] * hy])
         cell[:, :, 1, 0] -= plane[1, 0]
         cell[:, :, 0, 1] -= plane[0, 1]
         found = np.einsum("dpi,pqij,eqj->de", weights(de / he, he), cell, weights(dy / hy, hy))
@@ -82,7 +84,7 @@ class ElectronTable:
         return found
 
     def species(self, eta, theta, sign, rate):
-        """Sums of one species: electrons (sign 1) at eta, or positrons (-1), whose eta moves with ln theta as `rate`."""
+        """Sums of one species: electrons (sign 1), or positrons (-1), whose eta moves with ln theta at a rate."""
         edge = self.eta[0]
         (l, b, l02), (a, l11, l12), (l20, _, _) = self.look_up(max(eta, edge), math.log(theta))
         if eta < edge:  # classical
@@ -94,12 +96,13 @@ class ElectronTable:
         p20, p11, p02 = l20 + a * a, l11 + a * b, l02 + b * b
         dp, ddp = b + rate * a, p02 + rate * (2 * p11 - a) + rate**2 * p20
         plus = a if sign < 0 else 0
-        # P, theta n, T s, energy (without the rest mass of net electrons), theta n_+, theta dn/d eta, theta D n, D P, D^2 P - D P
-        sums = [1, sign * a, b - eta * a, b - 1 + 2 * plus / theta, plus, p20, sign * (p11 + rate * p20 - a), dp, ddp - dp]
-        return p * np.array(sums)
+        # P, theta n, T s, energy without the rest mass of net electrons, theta n_+,
+        sums = [1, sign * a, b - eta * a, b - 1 + 2 * plus / theta, plus]
+        # theta dn/d eta, theta D n, D P, D^2 P - D P with D = d/d ln theta at fixed eta of the electrons
+        return p * np.array([*sums, p20, sign * (p11 + rate * p20 - a), dp, ddp - dp])
 
     def sums(self, nu, eta, theta):
-        """The same of the gas at nu = mu/kT and eta = nu - 1/theta, both given, since either may be small beside the other."""
+        """The same of the gas at nu = mu/kT and eta = nu - 1/theta: both, since either may be small beside the other."""
         total = degenerate(eta, theta) if eta > self.eta[-1] else self.species(eta, theta, 1, 0)
         opposite = -nu - 1 / theta
         if opposite > -740:
@@ -176,7 +179,8 @@ def degenerate(eta, theta):
 if __name__ == "__main__":
     table = ElectronTable(sys.argv[1])
     if len(sys.argv) == 2:
-        print(f"{len(table.eta)} x {len(table.y)} nodes, {table.rest * math.exp(table.y[0]):.4g} to {table.rest * math.exp(table.y[-1]):.4g} K")
+        lowest, highest = (table.rest * math.exp(y) for y in (table.y[0], table.y[-1]))
+        print(f"{len(table.eta)} x {len(table.y)} nodes, {lowest:.4g} to {highest:.4g} K")
         for quantity, largest in zip(table.quantities, table.largest):
             print(f"{quantity}: {largest:.1e}")
     for density, temperature in zip(sys.argv[2::2], sys.argv[3::2]):

@@ -54,7 +54,9 @@ export function moveElectrons(point: Float64Array, gas: Float64Array, scale: Flo
   tellPotential(point, gas);
 }
 
-/** Adds the derivatives by the amount of one electron, three numbers, to the rows of the nuclides that bring Z of them. */
+/**
+ * Adds the derivatives by the amount of one electron, three numbers, to the rows of the nuclides that bring Z of them.
+ */
 export function addElectronSpecies(perParticle: Float64Array, composition: Composition, rows: Float64Array): void {
   const { species } = composition;
   for (let i = 0, row = 0; i < species.length; i++, row += SPECIES_LENGTH) {

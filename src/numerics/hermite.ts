@@ -1,17 +1,18 @@
 /**
- * Hermite interpolation of order m on [0, 1]: the polynomial of degree 2m + 1 through the derivatives 0..m at both ends.
+ * Hermite interpolation of order m on [0, 1]: the polynomial of degree 2m + 1 through the derivatives 0..m at both
+ * ends.
  *
  * Its basis functions of the lower end,
  *
  *     H_i(t) = t^i/i! (1 - t)^(m+1) sum_(k=0)^(m-i) C(m+k, k) t^k
  *
- * (two-point Taylor expansion; Davis 1975, Interpolation and Approximation, section 2.5), are sums of positive terms; those of the
- * upper end are (-1)^i H_i(1 - t). With p = t (1 - t) and the order as an upper index,
+ * (two-point Taylor expansion; Davis 1975, Interpolation and Approximation, section 2.5), are sums of positive terms;
+ * those of the upper end are (-1)^i H_i(1 - t). With p = t (1 - t) and the order as an upper index,
  *
  *     dH_i^m/dt = H_(i-1)^(m-1) + c_i^m p^m,     c_i^m = C(2m-i, m-1)/(i-1)! - (m+1) C(2m+1-i, m)/i!
  *
- * because both sides agree in all derivatives at the ends that they share and in the coefficient of t^m; without the terms in
- * i - 1 at i = 0. Repeated, it gives every derivative in closed form.
+ * because both sides agree in all derivatives at the ends that they share and in the coefficient of t^m; without the
+ * terms in i - 1 at i = 0. Repeated, it gives every derivative in closed form.
  */
 
 /** Derivatives of the basis functions there are: 0..4. */
@@ -21,7 +22,9 @@ const DEPTH = 5;
 export interface HermiteBasis {
   /** m, 4 at least. */
   readonly order: number;
-  /** Slot d (2m+2) + i: d-th derivative of H_i, from i = m + 1 on of the functions of the upper end. Slot 0: t on entry. */
+  /**
+   * Slot d (2m+2) + i: d-th derivative of H_i, from i = m + 1 on of the functions of the upper end. Slot 0: t on entry.
+   */
   readonly values: Float64Array;
   /** C(M+k, k) of M = m - d in slot d (m+1) + k. */
   readonly binomials: Float64Array;

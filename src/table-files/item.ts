@@ -1,6 +1,6 @@
 /**
- * Named arrays, the form of a table that every container carries and that the checksum is of. Names are paths; all numbers are
- * IEEE doubles or integers, all texts UTF-8.
+ * Named arrays, the form of a table that every container carries and that the checksum is of. Names are paths; all
+ * numbers are IEEE doubles or integers, all texts UTF-8.
  */
 
 /** Arrays of an item: their kind says what a number is. */
@@ -24,8 +24,8 @@ export interface Item<K extends Kind = Kind> {
 }
 
 /**
- * Hands out the values of an item by name; a number in `shape` must be met, undefined leaves it open. Throws where there is no
- * such item.
+ * Hands out the values of an item by name; a number in `shape` must be met, undefined leaves it open. Throws where
+ * there is no such item.
  */
 export type ReadItem = <K extends Kind>(name: string, kind: K, shape: readonly (number | undefined)[]) => Arrays[K];
 

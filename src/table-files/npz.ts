@@ -1,6 +1,6 @@
 /**
- * A table as NumPy's .npz bytes: each item an array or text whose name has a point for each slash, integers as doubles, texts of several
- * lines joined by LF; and `description`, JSON that says what they mean and has the checksum.
+ * A table as NumPy's .npz bytes: each item an array or text whose name has a point for each slash, integers as doubles,
+ * texts of several lines joined by LF; and `description`, JSON that says what they mean and has the checksum.
  */
 import type { NumberArray } from "../grids/npy.js";
 import { arraysFromNpz, arraysToNpz } from "../grids/npz.js";

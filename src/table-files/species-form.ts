@@ -16,12 +16,13 @@ const width = NODE_ORDER + 1;
 const recipe: readonly string[] = [
   "P(eta, theta) = units.pressure exp L(eta, ln theta), dyn/cm^2: the pressure of electrons alone, an ideal gas; " +
     "eta = (mu - m_e c^2)/kT, theta = kT/(m_e c^2) = T/units.rest_temperature.",
-  "n = units.density exp(L) L_eta/theta, cm^-3; T s = P (L_y - eta L_eta), y = ln theta. Positrons have the same functions at " +
-    "-eta - 2/theta; n_- - n_+ = rho Y_e/m_u gives eta. Both signs add in P and s.",
-  "surface.nodes[k, l, i, j] is d^(i+j) L/(d eta^i d y^j) at eta = axes.degeneracy[k], y = axes.log_theta[l], i, j = 0..6. In a cell L is " +
-    "the polynomial of degree 13 in eta and in y that has these derivatives at the four corners (Hermite interpolation).",
+  "n = units.density exp(L) L_eta/theta, cm^-3; T s = P (L_y - eta L_eta), y = ln theta. Positrons have the same " +
+    "functions at -eta - 2/theta; n_- - n_+ = rho Y_e/m_u gives eta. Both signs add in P and s.",
+  "surface.nodes[k, l, i, j] is d^(i+j) L/(d eta^i d y^j) at eta = axes.degeneracy[k], y = axes.log_theta[l], " +
+    "i, j = 0..6. In a cell L is the polynomial of degree 13 in eta and in y that has these derivatives at the four " +
+    "corners (Hermite interpolation).",
   "Below the lowest eta_0, with d = eta - eta_0 and values at eta_0: L + d + (L_eta - 1)(e^d - 1), exact to e^(2 eta).",
-  "Above the highest eta Sommerfeld's series to all orders is good to 2e-12 in every second derivative (docs/guide/fermi-gas.md).",
+  "Above the highest eta Sommerfeld's series to all orders is good to 2e-12 in every second derivative.",
   "Here the names of the items are with a point for each slash. Constants: CODATA 2022.",
 ];
 
@@ -94,8 +95,8 @@ const meanings: Readonly<Record<string, Meaning>> = {
   "certificate/places": { units: "1", description: "number of places where the finished table was measured" },
   "certificate/quantity": {
     description:
-      "quantities of electrons alone whose relative error is stated: P, n, s, dn/d eta at constant T, c_v, n dP/dn at constant T, " +
-      "T dP/dT at constant n",
+      "quantities of electrons alone whose relative error is stated: P, n, s, dn/d eta at constant T, c_v, n dP/dn at " +
+      "constant T, T dP/dT at constant n",
   },
   "certificate/errors/bound": { units: "1", description: "twice the largest error measured, by quantity" },
   "certificate/errors/largest": { units: "1", description: "largest error measured, by quantity" },

@@ -5,8 +5,8 @@ import { npzOfTable, tableOfNpz } from "./npz.js";
 import { speciesForm } from "./species-form.js";
 
 /**
- * The bytes of an .npz file that holds a table of `buildSpeciesTable` and describes itself: `numpy.load` reads it, and so do
- * `docs/electron_table.py` and `docs/electron_table.c` of the repository. The same table gives the same bytes.
+ * The bytes of an .npz file that holds a table of `buildSpeciesTable` and describes itself: `numpy.load` reads it, and
+ * so do `docs/electron_table.py` and `docs/electron_table.c` of the repository. The same table gives the same bytes.
  *
  * @throws FermistateError `invalid-option` where `table` is no table of this layout
  * @example
@@ -24,8 +24,9 @@ export async function speciesTableToNpz(table: SpeciesTable): Promise<Uint8Array
 }
 
 /**
- * The table in an .npz file of {@link speciesTableToNpz}. What comes back equals what was written, or there is an error; memory is
- * bounded by three times the bytes given. Constants other than this library's are kept: `speciesTableContribution` refuses them.
+ * The table in an .npz file of {@link speciesTableToNpz}. What comes back equals what was written, or there is an
+ * error; memory is bounded by three times the bytes given. Constants other than this library's are kept:
+ * `speciesTableContribution` refuses them.
  *
  * @throws FermistateError `invalid-file` for a file that is damaged, truncated, of another version or layout
  */
@@ -34,8 +35,8 @@ export async function speciesTableFromNpz(bytes: Uint8Array): Promise<SpeciesTab
 }
 
 /**
- * The bytes of an HDF5 file that holds a table of `buildSpeciesTable` and describes itself, as `tableToHdf5` does for tables of the
- * free energy. Needs the package h5wasm, which is optional: `npm install h5wasm`.
+ * The bytes of an HDF5 file that holds a table of `buildSpeciesTable` and describes itself, as `tableToHdf5` does for
+ * tables of the free energy. Needs the package h5wasm, which is optional: `npm install h5wasm`.
  *
  * @throws FermistateError `invalid-option` where `table` is no table of this layout, or h5wasm is missing
  */

@@ -1,4 +1,7 @@
-/** Builds a species table: nodes from the defining integrals, mesh graded by where the errors were measured, and its certificate. */
+/**
+ * Builds a species table: nodes from the defining integrals on a mesh graded by the singularities of ln P, and its
+ * certificate.
+ */
 import { electronDensityUnit, electronPressureUnit, electronRestTemperature } from "../constants.js";
 import { FermistateError, requireFinite } from "../errors.js";
 import { libraryVersion } from "../version.js";
@@ -14,28 +17,33 @@ export interface SpeciesTableOptions {
    */
   readonly temperature?: readonly [lowest: number, highest: number];
   /**
-   * Length of a cell over that of the default mesh, 0.7 to 4: errors of second derivatives go with its 12th power until they meet
-   * rounding, size with its inverse square. Measured, heat capacity, largest error and size: 1, 6e-11, 0.29 MB; 2, 1.4e-7,
-   * 0.08 MB; 4, 1.5e-4, 0.02 MB.
+   * Length of a cell over that of the default mesh, 0.7 to 4: errors of second derivatives go with its 12th power until
+   * they meet rounding, size with its inverse square. Measured, heat capacity, largest error and size: 1, 6e-11, 0.29
+   * MB; 2, 1.4e-7, 0.08 MB; 4, 1.5e-4, 0.02 MB.
    * @defaultValue 1
    */
   readonly coarseness?: number;
 }
 
-/** Between these the table; below gas is classical, above Sommerfeld's series is good to 2e-12 in every second derivative. */
+/**
+ * Between these the table; below, the gas is classical, above, Sommerfeld's series is good to 2e-12 in every second
+ * derivative.
+ */
 const lowestDegeneracy = -20;
 const highestDegeneracy = 33;
 
 /**
- * Cells are 0.6 long where ln P is nearest to its singularities, at eta = +-i pi (poles of the Fermi function) and
- * ln theta = y +- i pi, y from here to here (kT of the order of m c^2 or mu is), and longer by hypot(1, distance/pi) elsewhere.
+ * Cells are this long where ln P is nearest to its singularities, and longer by hypot(1, distance/pi) away from there:
+ * at eta = +-i pi (poles of the Fermi function) and at ln theta = y +- i pi, where the largest of kT and mu is of the
+ * order of m c^2.
  */
 const cellLength = 0.6;
+const degeneracyOnset: readonly [number, number] = [0, 0];
 const relativityOnset: readonly [number, number] = [-3, 0];
 
 /**
- * A table of ln P of electrons alone over (eta, ln theta): composition-free, both signs of the charge from one surface, for
- * codes in any language. Some three seconds of arithmetic.
+ * A table of ln P of electrons alone over (eta, ln theta): composition-free, both signs of the charge from one surface,
+ * for codes in any language. Some three seconds of arithmetic.
  *
  * In TypeScript `electronPositronGas()` is faster, and exact; `speciesTableContribution` reads the table.
  *
@@ -44,7 +52,7 @@ const relativityOnset: readonly [number, number] = [-3, 0];
 export function buildSpeciesTable(options: SpeciesTableOptions = {}): SpeciesTable {
   const { lowest, highest, coarseness } = checked(options);
   const length = coarseness * cellLength;
-  const degeneracy = nodesOf(lowestDegeneracy, highestDegeneracy, [0, 0], length);
+  const degeneracy = nodesOf(lowestDegeneracy, highestDegeneracy, degeneracyOnset, length);
   const low = Math.log(lowest / electronRestTemperature);
   const high = Math.log(highest / electronRestTemperature);
   const logTheta = nodesOf(low, high, relativityOnset, length);
@@ -70,8 +78,10 @@ export function buildSpeciesTable(options: SpeciesTableOptions = {}): SpeciesTab
   return { ...table, certificate: certifySpecies(table) };
 }
 
-/** Nodes from `lowest` to `highest`, whole cells but for the last one, which takes what is left. */
-/** Nodes at equal steps of s: x = x_1 + pi sinh(s - s_1) beyond either end x_1 of the interval `near`, x - x_1 = pi (s - s_1) on it. */
+/**
+ * Nodes at equal steps of s: x = x_1 + pi sinh(s - s_1) beyond either end x_1 of the interval `near`, x - x_1 = pi (s -
+ * s_1) on it.
+ */
 function nodesOf(lowest: number, highest: number, near: readonly [number, number], length: number): Float64Array {
   const [from, to] = near;
   const breadth = (to - from) / Math.PI;

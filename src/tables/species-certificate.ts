@@ -1,6 +1,6 @@
 /**
- * The certificate of a species table: its error against the integrals at the places of a low-discrepancy sequence of two dimensions,
- * which leaves no cell out. The bound is twice the largest error.
+ * The certificate of a species table: its error against the integrals at the places of a low-discrepancy sequence of
+ * two dimensions, which leaves no cell out. The bound is twice the largest error.
  */
 import { fillSpeciesIntegrals } from "./species-integrals.js";
 import {

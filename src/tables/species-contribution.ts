@@ -1,4 +1,6 @@
-/** A species table as a contribution: electrons and positrons from one surface, charge neutrality solved at each point. */
+/**
+ * A species table as a contribution: electrons and positrons from one surface, charge neutrality solved at each point.
+ */
 import { electronDensityUnit, electronPressureUnit, electronRestTemperature } from "../constants.js";
 import { FermistateError } from "../errors.js";
 import { addGasMembers, fillParticleMembers } from "../fermi-gas/density-derivatives.js";
@@ -13,11 +15,11 @@ import { speciesSurface } from "./species-surface.js";
 import { NODE_LENGTH, type SpeciesTable } from "./species-table.js";
 
 /**
- * The ideal gas of electrons and positrons as `electronPositronGas` gives it, read from a species table: any composition,
- * density 1e-20 to 1e18 g/cm^3, temperatures of the table.
+ * The ideal gas of electrons and positrons as `electronPositronGas` gives it, read from a species table: any
+ * composition, density 1e-20 to 1e18 g/cm^3, temperatures of the table.
  *
- * Consistent to rounding, since every member is a derivative of one grand potential; its distance from the exact gas is that of
- * `table.certificate`. For checking an exported table and its readers: the direct gas is faster, and exact.
+ * Consistent to rounding, since every member is a derivative of one grand potential; its distance from the exact gas is
+ * that of `table.certificate`. For checking an exported table and its readers: the direct gas is faster, and exact.
  *
  * @throws `invalid-option` for a table of another layout or of other constants than this library's
  */

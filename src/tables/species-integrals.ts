@@ -1,6 +1,6 @@
 /**
- * The pressure of one species of fermions and its derivatives, by plain quadrature of the definition: what the nodes of a
- * species table hold. Shares no method with fermi-gas/.
+ * The pressure of one species of fermions and its derivatives, by plain quadrature of the definition: what the nodes of
+ * a species table hold. Shares no method with fermi-gas/.
  *
  * With x = (E - 1)/theta, f = 1/(e^(x - eta) + 1) and W(E) = p^3/3, in units of m c^2/(pi^2 lambdabar^3),
  *
@@ -8,19 +8,20 @@
  *
  * and P_ij = d^(i+j)P/(d eta^i d ln theta^j) = int K_j d^i f/d eta^i dx, K_j = (theta d/d theta)^j K_0 at fixed x.
  *
- * Kernels: with u = theta x = E - 1 and c = u/(u + 2), u dW/du = 3/2 (1 + c) W and u dc/du = c (1 - c), so that K_j = theta W q_j(c),
+ * Kernels: with u = theta x = E - 1 and c = u/(u + 2), u dW/du = 3/2 (1 + c) W and u dc/du = c (1 - c), so that K_j =
+ * theta W q_j(c),
  *
  *     q_0 = 1,   q_(j+1) = q_j + 3/2 (1 + c) q_j + c (1 - c) q_j',
  *     x dK_j/dx = theta W (q_(j+1) - q_j),   x^2 d2K_j/dx2 = theta W (q_(j+2) - 3 q_(j+1) + 2 q_j).
  *
- * Up to two derivatives by eta are moved to the kernel by parts: the kernels are positive, and up to i = 3 so is every integrand, so
- * that no derivative loses a digit in degenerate matter. The others act on g = df/d eta = f (1 - f) = (1 - r^2)/4,
- * r = tanh((x - eta)/2):
+ * Up to two derivatives by eta are moved to the kernel by parts: the kernels are positive, and up to i = 3 so is every
+ * integrand, so that no derivative loses a digit in degenerate matter. The others act on g = df/d eta = f (1 - f) = (1
+ * - r^2)/4, r = tanh((x - eta)/2):
  *
  *     d^k f/d eta^k = g R_k(r),   R_1 = 1,   R_(k+1) = r R_k - (1 - r^2) R_k'/2.
  *
- * The variable of integration is the rapidity w, E = cosh w, where W is entire; panels of Gauss points are short in w and in
- * x, which keeps the poles of f at x = eta +- i pi away.
+ * The variable of integration is the rapidity w, E = cosh w, where W is entire; panels of Gauss points are short in w
+ * and in x, which keeps the poles of f at x = eta +- i pi away.
  */
 import { gaussRule } from "./gauss.js";
 import { NODE_LENGTH, NODE_ORDER } from "./species-table.js";
@@ -71,12 +72,15 @@ function statisticsCoefficients(): Float64Array {
   return out;
 }
 
-/** Sums that a term is below the rounding of: each P_ij and what its sum has lost (Kahan 1965, Commun. ACM 8, 40). */
+/** What the sum of each P_ij has lost to rounding (Kahan 1965, Commun. ACM 8, 40). */
 const lost = new Float64Array(NODE_LENGTH);
 const kernelValues = new Float64Array(3 * width);
 const statisticsValues = new Float64Array(width);
 
-/** Writes P_ij, i, j = 0..NODE_ORDER, into slots (NODE_ORDER + 1) i + j of `out`, at eta <= 1000 and theta > 0, in units of the species (m c^2/(pi^2 lambdabar^3) for two spin states). */
+/**
+ * Writes P_ij, i, j = 0..NODE_ORDER, into slots (NODE_ORDER + 1) i + j of `out`, at eta <= 1000 and theta > 0, in units
+ * of the species (m c^2/(pi^2 lambdabar^3) for two spin states).
+ */
 export function fillSpeciesIntegrals(eta: number, theta: number, out: Float64Array): void {
   out.fill(0);
   lost.fill(0);
@@ -143,7 +147,7 @@ for (let n = 0; n < width; n++) {
 }
 const pressures = new Float64Array(NODE_LENGTH);
 
-/** Derivatives of L = ln P from those of P, in place; from d(P L')... the derivatives of dP = P dL, by Leibniz's rule. */
+/** Derivatives of L = ln P from those of P, in place: dP = P dL, differentiated by Leibniz's rule. */
 export function takeLogarithm(p: Float64Array): void {
   pressures.set(p);
   for (let k = 1; k < NODE_LENGTH; k++) pressures[k]! /= p[0]!;

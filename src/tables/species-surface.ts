@@ -1,6 +1,6 @@
 /**
- * The surface of a species table at a point: L = ln P(eta, ln theta) and its derivatives, below the table continued by the
- * classical gas. One record of the module's functions, so that nothing is allocated.
+ * The surface of a species table at a point: L = ln P(eta, ln theta) and its derivatives, below the table continued by
+ * the classical gas. One record of the module's functions, so that nothing is allocated.
  */
 import { fillHermiteBasis, type HermiteBasis, hermiteBasis } from "../numerics/hermite.js";
 import { NODE_LENGTH, NODE_ORDER, type SpeciesTable } from "./species-table.js";
@@ -139,8 +139,9 @@ function fillCellBasis(
 }
 
 /**
- * Fills `out` at `at` to second order with (3,0), (2,1), (1,2) (order 2), or all of it (order 3). Above the highest eta the last cell
- * is continued: a caller does not look there. Below the lowest, e^(-eta) P = A(theta) + B(theta) e^eta, exact to e^(2 eta).
+ * Fills `out` at `at` to second order with (3,0), (2,1), (1,2) (order 2), or all of it (order 3). Above the highest eta
+ * the last cell is continued: a caller does not look there. Below the lowest, e^(-eta) P = A(theta) + B(theta) e^eta,
+ * exact to e^(2 eta).
  */
 export function fillSpeciesSurface(surface: SpeciesSurface, order: number): void {
   const { eta, at } = surface;
@@ -191,8 +192,8 @@ function fillCell(surface: SpeciesSurface, order: number): void {
   fillCellBasis(surface.basisY, y.nodes, j, at, 1, depth);
   const stride = NODE_LENGTH * y.nodes.length;
   const first = i * stride + NODE_LENGTH * j;
-  // Values count from one corner and slopes from the near end, so that the factors 1/h^2 of the curvature meet no rounding of
-  // the large linear part.
+  // Values count from one corner and slopes from the near end, so that the factors 1/h^2 of the curvature meet no
+  // rounding of the large linear part.
   const corner = nodes[first]!;
   const hy = y.nodes[j + 1]! - y.nodes[j]!;
   const he = eta.nodes[i + 1]! - eta.nodes[i]!;

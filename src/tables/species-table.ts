@@ -1,12 +1,13 @@
 /**
- * What a species table holds: the pressure of electrons alone over degeneracy and temperature, from which the gas of electrons
- * and positrons follows at any composition. Plain data, for export.
+ * What a species table holds: the pressure of electrons alone over degeneracy and temperature, from which the gas of
+ * electrons and positrons follows at any composition. Plain data, for export.
  *
  *     P(eta, theta) = electronPressureUnit exp L(eta, ln theta)      dyn/cm^2,    theta = kT/(m_e c^2)
  *
- * Positrons are the same function at -eta - 2/theta, so the onset of pairs is nowhere in the table. Below its lowest eta the gas
- * is classical, L + d + (L_eta - 1)(e^d - 1) with d = eta - lowest; above its highest Sommerfeld's series is exact. Between nodes L
- * is the polynomial of degree 13 in either variable that has the derivatives of the four nodes.
+ * Positrons are the same function at -eta - 2/theta, so the onset of pairs is nowhere in the table. Below its lowest
+ * eta the gas is classical, L + d + (L_eta - 1)(e^d - 1) with d = eta - lowest; above its highest Sommerfeld's series
+ * is exact. Between nodes L is the polynomial of degree 13 in either variable that has the derivatives of the four
+ * nodes.
  */
 
 /** Highest derivative by each variable at a node. */
@@ -40,8 +41,8 @@ export interface SpeciesError {
 }
 
 /**
- * How far the gas of electrons alone is from its integrals, relative, measured all over the table. heatCapacity is that at constant
- * volume, compressibility n dP/dn, pressureByTemperature T dP/dT at constant density.
+ * How far the gas of electrons alone is from its integrals, relative, measured all over the table. heatCapacity is that
+ * at constant volume, compressibility n dP/dn, pressureByTemperature T dP/dT at constant density.
  */
 export interface SpeciesCertificate {
   /** Number of places measured. */
@@ -59,7 +60,8 @@ export interface SpeciesTable {
   /** Nodes of ln theta = ln(kT/m_e c^2), increasing. */
   readonly logTheta: Float64Array;
   /**
-   * 49 numbers a node, 7 i + j: d^(i+j) L/(d eta^i d ln theta^j), i, j = 0..6. Node (k, l) starts at 49 (k logTheta.length + l).
+   * 49 numbers a node, 7 i + j: d^(i+j) L/(d eta^i d ln theta^j), i, j = 0..6. Node (k, l) starts at 49 (k
+   * logTheta.length + l).
    */
   readonly nodes: Float64Array;
   /** m_e c^2/k, K: what T is divided by. */

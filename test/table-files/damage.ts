@@ -1,6 +1,6 @@
 /**
- * Damage to files, by accident (bits, cut ends, mixed-up parts) and by intent: sizes and addresses that claim too much, under checksums
- * made anew. The same damage every time.
+ * Damage to files, by accident (bits, cut ends, mixed-up parts) and by intent: sizes and addresses that claim too much,
+ * under checksums made anew. The same damage every time.
  */
 import { isDeepStrictEqual } from "node:util";
 import { isFermistateError } from "../../src/errors.js";

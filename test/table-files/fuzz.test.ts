@@ -1,5 +1,6 @@
 /**
- * Damaged files by the thousand: each is refused with `invalid-file`, or what comes back is what was written (damage.ts).
+ * Damaged files by the thousand: each is refused with `invalid-file`, or what comes back is what was written
+ * (damage.ts).
  */
 import { beforeAll, expect, test } from "vitest";
 import { fromZip, toZip } from "../../src/grids/zip.js";

@@ -1,6 +1,6 @@
 /**
- * docs/electron_table.c and docs/electron_table.py on a file of this library, against the table's own contribution and against
- * electronPositronGas(): other code, other solver, same numbers.
+ * docs/electron_table.c and docs/electron_table.py on a file of this library, against the table's own contribution and
+ * against electronPositronGas(): other code, other solver, same numbers.
  */
 import { execFileSync, spawnSync } from "node:child_process";
 import { mkdtempSync, rmSync, writeFileSync } from "node:fs";
@@ -136,6 +136,12 @@ describe.each(Object.entries(readers))("in %s", (_language, { skip, run }) => {
       measured.expectBelow("heat_capacity", secondDerivatives, 5e-15);
       measured.expectBelow("pressure_by_temperature", secondDerivatives, 5e-15);
     }
+  });
+
+  test.skipIf(skip)("the numbers that docs/guide/electron-table.md prints", () => {
+    const text = run(path, "3.0110703768336843e25", "1e9");
+    expect(text).toContain("1.50040841355338");
+    expect(text).toContain("-5.9021481818664");
   });
 
   test.skipIf(skip)("another file, a damaged one and a temperature outside are refused", () => {

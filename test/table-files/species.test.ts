@@ -32,7 +32,7 @@ async function codeOf(action: () => Promise<unknown>): Promise<string> {
 }
 
 describe.each(Object.entries(forms))("%s", (_, [write, read]) => {
-  test("comes back bit for bit, also out of the middle of other memory, and the same table gives the same bytes", async () => {
+  test("comes back bit for bit, also out of other memory; the same table gives the same bytes", async () => {
     const bytes = await write(table);
     expect(await read(bytes)).toEqual(table);
     const larger = Buffer.concat([Buffer.alloc(3), bytes, Buffer.alloc(5)]);

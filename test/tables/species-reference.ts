@@ -1,11 +1,12 @@
 /**
- * The pressure of one species of fermions and its derivatives by eta and ln theta in decimal arithmetic, from the definition alone:
- * P = theta int W(1 + theta x) f(x - eta) dx, W = p^3/3.
+ * The pressure of one species of fermions and its derivatives by eta and ln theta in decimal arithmetic, from the
+ * definition alone: P = theta int W(1 + theta x) f(x - eta) dx, W = p^3/3.
  *
- * Derivatives by power series: the integrand is expanded in d eta and in d ln theta with truncated series of decimals, so that no formula
- * of src/tables/species-integrals.ts (kernels, integration by parts) is used. Quadrature by the trapezoidal rule over the rapidity
- * w, E = cosh w at the point of expansion, where the integrand is even and analytic: it converges faster than any power (Trefethen
- * & Weideman 2014, SIAM Rev. 56, 385). Steps are halved until the sums agree.
+ * Derivatives by power series: the integrand is expanded in d eta and in d ln theta with truncated series of decimals,
+ * so that no formula of src/tables/species-integrals.ts (kernels, integration by parts) is used. Quadrature by the
+ * trapezoidal rule over the rapidity w, E = cosh w at the point of expansion, where the integrand is even and analytic:
+ * it converges faster than any power (Trefethen & Weideman 2014, SIAM Rev. 56, 385). Steps are halved until the sums
+ * agree.
  */
 import { Decimal } from "decimal.js";
 

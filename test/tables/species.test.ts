@@ -1,6 +1,6 @@
 /**
- * The table of one species: its nodes against the decimal reference, its certificate against the direct gas and the reference at
- * fresh places, its consistency, its size.
+ * The table of one species: its nodes against the decimal reference, its certificate against the direct gas and the
+ * reference at fresh places, its consistency, its size.
  */
 import { Decimal } from "decimal.js";
 import { describe, expect, test } from "vitest";
@@ -49,7 +49,8 @@ describe("node values", () => {
     reference.forEach((row, i) => {
       row.forEach((value, j) => {
         const exactly = value.toNumber();
-        // From i = 4 on integrands change sign: small beside the third derivative in degenerate matter, and so is their weight.
+        // From i = 4 on integrands change sign: small beside the third derivative in degenerate matter, and so is their
+        // weight.
         const scale = Math.abs(exactly) + (i > 3 ? Math.abs(reference[3]![j]!.toNumber()) : 0);
         measured.compare(i > 3 ? "beyond" : "P_ij", out[7 * i + j]!, exactly, `i ${i}, j ${j}`, scale);
       });
@@ -71,9 +72,10 @@ describe("node values", () => {
     expect(reference[1]![0]!.div(byEta).minus(1).abs().toNumber()).toBeLessThan(1e-23);
   });
 
-  test("derivatives of the logarithm: those of a sum of two exponentials, whose logarithm is linear plus ln(1 + e^z)", () => {
-    // P = e^(2 eta + 3 y) + e^(eta/2 + y/4): L = eta/2 + y/4 + ln(1 + e^z), z = 3/2 eta + 11/4 y. At z = ln 3 the derivatives of
-    // ln(1 + e^z) are polynomials in q = e^z/(1 + e^z) = 3/4: q, q (1 - q), and each is the derivative by q times q (1 - q).
+  test("derivatives of the logarithm: of a sum of two exponentials, linear plus ln(1 + e^z)", () => {
+    // P = e^(2 eta + 3 y) + e^(eta/2 + y/4): L = eta/2 + y/4 + ln(1 + e^z), z = 3/2 eta + 11/4 y. At z = ln 3 the
+    // derivatives of ln(1 + e^z) are polynomials in q = e^z/(1 + e^z) = 3/4: q, q (1 - q), and each is the derivative
+    // by q times q (1 - q).
     const eta = Math.log(3) / 1.5;
     const [u, v] = [Math.exp(2 * eta), Math.exp(eta / 2)];
     const p = new Float64Array(NODE_LENGTH);
@@ -152,7 +154,8 @@ test("both signs, 20 000 places from 1e-15 to 1e13 g/cm^3 and 1e5 to 1e13 K: as 
     if (pairs > 1e-200) measured.compare("positronDensity", mine["positronDensity"]![i]!, pairs, where);
   }
   if (print) console.log(speciesTableBytes(table), measured.table(), table.certificate);
-  // Measured: half of each. Heat capacity and dP/dT of degenerate matter are differences of parts eta^2 and more larger.
+  // Measured: half of each. Heat capacity and dP/dT of degenerate matter are differences of parts eta^2 and more
+  // larger.
   measured.expectBelow("pressure", 4e-14, 1e-15);
   measured.expectBelow("specificEnergy", 3e-14, 1e-15);
   measured.expectBelow("specificEntropy", 3e-12, 1e-15);
@@ -201,7 +204,8 @@ test("onset of pairs against 25-digit arithmetic: 100 g/cm^3, 3e8 and 1e9 K", ()
 });
 
 describe("consistency", () => {
-  // The function that the numbers of the table define, in 70-digit arithmetic: P(mu, T) of both signs, then F(n, T) = mu n - P.
+  // The function that the numbers of the table define, in 70-digit arithmetic: P(mu, T) of both signs, then F(n, T) =
+  // mu n - P.
   const exactly = (x: number): Decimal => exactDecimal(D, "x", x);
   const theta = (y: Decimal): Decimal => y.exp();
   /** The polynomial of all derivatives at 0 and h, by Newton's confluent divided differences. */
@@ -326,7 +330,8 @@ describe("consistency", () => {
       measured.compare("(2,2)", f.fRRTT!, natural(2, 2), where, Math.abs(f.fTT) + Math.abs(f.fRRTT!));
     }
     if (print) console.log(measured.table());
-    // Rounding grows with eta^4 in degenerate matter (c_v is a small difference there) and with 1/h from order to order.
+    // Rounding grows with eta^4 in degenerate matter (c_v is a small difference there) and with 1/h from order to
+    // order.
     measured.expectBelow("F", 2e-15, 1e-15);
     measured.expectBelow("P", 2e-15, 1e-15);
     measured.expectBelow("s", 2e-14, 2e-15);
