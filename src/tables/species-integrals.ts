@@ -29,16 +29,16 @@ import { NODE_LENGTH, NODE_ORDER } from "./species-table.js";
 /** Panels: length in x and in w at most, and points in each. */
 const longestX = 3;
 const longestW = 1.2;
-const rule = gaussRule(20);
+const rule = /* @__PURE__ */ gaussRule(20);
 /** The integrand at x = max(eta, 0) + this is below 1e-18 of the integral. */
 const tail = 58;
 
 const width = NODE_ORDER + 1;
 /** Coefficients of x^s d^s K_j/dx^s over theta W in c, s = 0, 1, 2: ascending, `width + 2` each, in row s width + j. */
-const kernels = kernelCoefficients();
+const kernels = /* @__PURE__ */ kernelCoefficients();
 const kernelLength = width + 2;
 /** Coefficients of R_k in r, ascending, `width` each, in row k - 1. */
-const statistics = statisticsCoefficients();
+const statistics = /* @__PURE__ */ statisticsCoefficients();
 
 function kernelCoefficients(): Float64Array {
   const q = [[1]];
@@ -138,13 +138,18 @@ function kineticEnergy(w: number): number {
 const rapidity = (kinetic: number): number => 2 * Math.asinh(Math.sqrt(0.5 * kinetic));
 
 /** Binomial coefficients C(n, k) in slot n width + k. */
-const binomials = new Float64Array(width * width);
-for (let n = 0; n < width; n++) {
-  for (let k = 0; k <= n; k++) {
-    binomials[n * width + k] =
-      k === 0 || k === n ? 1 : binomials[(n - 1) * width + k - 1]! + binomials[(n - 1) * width + k]!;
+const binomials = /* @__PURE__ */ binomialCoefficients();
+
+function binomialCoefficients(): Float64Array {
+  const out = new Float64Array(width * width);
+  for (let n = 0; n < width; n++) {
+    out[n * width] = 1;
+    for (let k = 1; k <= n; k++) out[n * width + k] = out[(n - 1) * width + k - 1]! + out[(n - 1) * width + k]!;
   }
+  return out;
 }
+
+/** What is differentiated, while it is overwritten. */
 const pressures = new Float64Array(NODE_LENGTH);
 
 /** Derivatives of L = ln P from those of P, in place: dP = P dL, differentiated by Leibniz's rule. */

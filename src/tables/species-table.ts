@@ -16,9 +16,17 @@ export const NODE_ORDER = 6;
 export const NODE_LENGTH = 49;
 
 /** Quantities whose error the certificate of a species table states. */
-export type SpeciesQuantity = (typeof speciesQuantities)[number];
+export type SpeciesQuantity =
+  | "pressure"
+  | "numberDensity"
+  | "entropy"
+  | "densityByDegeneracy"
+  | "heatCapacity"
+  | "compressibility"
+  | "pressureByTemperature";
+
 /** Their names. */
-export const speciesQuantities = [
+export const speciesQuantities: readonly SpeciesQuantity[] = [
   "pressure",
   "numberDensity",
   "entropy",
@@ -26,7 +34,7 @@ export const speciesQuantities = [
   "heatCapacity",
   "compressibility",
   "pressureByTemperature",
-] as const;
+];
 
 /** The error of one quantity over a species table. */
 export interface SpeciesError {
