@@ -10,12 +10,12 @@ function bytesPerPoint(
   temperature: [number, number],
   density: [number, number],
   coulomb: boolean,
-  what: "states" | "derivatives" | "table" = "states",
+  what: "states" | "derivatives" | "table" | "species table" = "states",
 ): number {
   const program = `
     import v8 from "node:v8";
-    import { composition, derivativesEvaluator, whiteDwarfMatter } from "./dist/index.js";
-    import { buildTable, tableEquationOfState } from "./dist/tables.js";
+    import { combine, composition, derivativesEvaluator, whiteDwarfMatter } from "./dist/index.js";
+    import { buildSpeciesTable, buildTable, speciesTableContribution, tableEquationOfState } from "./dist/tables.js";
     let seed = 7;
     const random = () => (seed = (seed * 48271) % 2147483647) / 2147483647;
     const count = 100_000;
@@ -29,7 +29,10 @@ function bytesPerPoint(
     };
     const direct = whiteDwarfMatter({ coulomb: ${coulomb} });
     const region = { density: [1e5, 1e9], temperature: [1e6, 1e9], accuracy: 1e-3 };
-    const eos = ${what === "table"} ? tableEquationOfState(buildTable(direct, input.composition, region)) : direct;
+    const eos = {
+      "table": () => tableEquationOfState(buildTable(direct, input.composition, region)),
+      "species table": () => combine(speciesTableContribution(buildSpeciesTable())),
+    }[${JSON.stringify(what)}]?.() ?? direct;
     const jacobian = derivativesEvaluator(eos, {
       of: ["pressure", "temperature", "gamma1", "heatCapacityV", "soundSpeed"],
       by: ["density", "specificEnergy"],
@@ -57,6 +60,12 @@ test.each<[string, [number, number], [number, number], boolean]>([
   const bytes = bytesPerPoint(temperature, density, coulomb);
   expect(bytes).toBeGreaterThanOrEqual(0);
   expect(bytes).toBeLessThan(0.5); // one boxed number per point would be 16; bookkeeping per call is 0.1
+});
+
+test("a table of the electrons alone, whole plane: less than half a byte per point", () => {
+  const bytes = bytesPerPoint([5.1, 12.9], [-15, 13], false, "species table");
+  expect(bytes).toBeGreaterThanOrEqual(0);
+  expect(bytes).toBeLessThan(0.5);
 });
 
 test("a table of the Coulomb plasma: less than half a byte per point", () => {
