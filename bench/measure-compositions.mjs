@@ -1,7 +1,7 @@
 /**
- * One process of the benchmark of compositions: a batch in which every row brings a new composition of the same species, as in a
- * reaction network, against the same batch with one composition; and what making the compositions costs. Prints JSON, times in
- * units of a row of the batch with one composition.
+ * One process of the benchmark of compositions: a batch in which every row brings a new composition of the same
+ * species, as in a reaction network, against the same batch with one composition; and what making them costs.
+ * Prints JSON, times in units of a row of the batch with one composition.
  */
 import { composition, compositions, whiteDwarfMatter } from "../dist/index.js";
 

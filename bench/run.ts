@@ -143,14 +143,14 @@ const networks = Array.from(
     ) as CompositionTiming[],
 );
 console.log(
-  "\na new composition in each of 1024 zones, in units of an evaluation of the full plasma in a batch of one composition:",
+  "\na new composition in each of 1024 zones, in units of an evaluation of the full plasma with one composition:",
 );
 for (const [i, { species }] of networks[0]!.entries()) {
   const show = (key: "single" | "matrix" | "first" | "again"): string =>
     median(networks.map((rows) => rows[i]![key])).toFixed(2);
   console.log(
-    `  ${species} nuclides: making it ${show("matrix")} (${show("single")} one by one), its first evaluation ${show("first")},`,
-    `each further one ${show("again")}`,
+    `  ${species} nuclides: making it ${show("matrix")} (${show("single")} one by one),`,
+    `its first evaluation ${show("first")}, each further one ${show("again")}`,
   );
 }
 

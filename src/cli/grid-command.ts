@@ -10,7 +10,7 @@ import { parquetWriter } from "../table-files/parquet.js";
 import { quantityNames } from "../thermodynamics/quantities.js";
 import { type Command, command } from "./command.js";
 import { matterOptions } from "./matter.js";
-import { checkOutput, type Output, writeOutput } from "./output.js";
+import { checkOutput, gridTextsOf, type Output, writeOutput } from "./output.js";
 import { table, timeText } from "./print.js";
 import { progressOn } from "./progress.js";
 import { axis, flag, number, oneOf, path, quantityList, wordList, words } from "./readers.js";
@@ -115,7 +115,7 @@ export const gridCommand: Command = command({
     };
     const made = evaluated(() => grid(equationOfState, matter, gridOptions), progress.done);
     if (out === undefined) {
-      for (const piece of format === "csv" ? gridToCsvPieces(made) : gridToJsonPieces(made, output)) {
+      for (const piece of format === "csv" ? gridToCsvPieces(made) : gridToJsonPieces(made, gridTextsOf(output))) {
         if (!io.out(piece)) return; // nobody reads on
       }
       return;

@@ -4,6 +4,7 @@ import { chartGrid } from "../charts/chart.js";
 import { checkTargets } from "../files/target.js";
 import { type TextFile, writeTexts } from "../files/write.js";
 import { csvMetadataName, gridToCsvMetadata, gridToCsvPieces } from "../grids/csv.js";
+import type { GridTexts } from "../grids/description.js";
 import type { Grid } from "../grids/grid.js";
 import { gridToJsonPieces } from "../grids/json.js";
 import { gridToNpz } from "../grids/npz.js";
@@ -95,10 +96,14 @@ export async function writeEntries(
   );
 }
 
+/** What the files of a grid say beside its numbers. */
+export function gridTextsOf({ title, note }: Output): GridTexts {
+  return { ...(title === undefined ? {} : { title }), ...(note === undefined ? {} : { note }) };
+}
+
 /** Texts in the order of {@link entriesOf}. */
 async function textsOf(grid: Grid, output: Output): Promise<TextFile["text"][]> {
-  const { title, note } = output;
-  const texts = { ...(title === undefined ? {} : { title }), ...(note === undefined ? {} : { note }) };
+  const texts = gridTextsOf(output);
   const csvName = `${output.base}.csv`.split(/[/\\]/).at(-1)!;
   return [
     ...(output.csv ? [gridToCsvPieces(grid), gridToCsvMetadata(grid, csvName, texts)] : []),

@@ -20,7 +20,10 @@ import * as slot from "./slots.js";
 
 /** Constants of a composition for the Coulomb rooms. */
 export interface CoulombSpecies {
-  /** One record per charged species, slots of slots.ts; for many compositions in turn {@link fillIons} allocates nothing. */
+  /**
+   * One record per charged species, slots of slots.ts; for many compositions in turn {@link fillIons} allocates
+   * nothing.
+   */
   readonly ions: readonly Float64Array[];
   /** The charged species, and the lattice: what {@link fillIons} makes records of. */
   readonly charged: readonly Species[];

@@ -63,7 +63,8 @@ const searchColumns: readonly SearchColumn[] = [
 ];
 
 /**
- * After so many rows one starts afresh instead of from its neighbour: blocks of a batch can then be answered apart, by several
+ * After so many rows one starts afresh instead of from its neighbour: blocks of a batch can then be answered apart,
+ * by several
  * threads, with the same bits.
  */
 export const ROWS_IN_A_CHAIN = 1024;

@@ -8,7 +8,8 @@ import { COEXISTENCE, DENSITY_NOW, EVALUATIONS, STEP_U, STEP_V, TEMPERATURE_NOW 
 
 /**
  * Fills members and point of the side where the result lies, with the last step of the search made through the
- * third-order members; `detail` says whether to compute what only some callers want. Returns that side's evaluator, ready
+ * third-order members; `detail` says whether to compute what only some callers want. Returns that side's evaluator,
+ * ready
  * for its quantities.
  */
 export function finish(searcher: Searcher, composition: Composition, detail: boolean): Evaluator {

@@ -26,7 +26,9 @@ export type PairOf<Value, First extends GivenName, Second extends GivenName> = S
     }
   : never;
 
-/** Values of one of the pairs that determine a state: what is not here is refused when it compiles, and when it runs. */
+/**
+ * Values of one of the pairs that determine a state: what is not here is refused when it compiles, and when it runs.
+ */
 export type GivenPair<Value> =
   | PairOf<Value, "density", "temperature" | "pressure" | "specificEnergy" | "specificEntropy" | "specificEnthalpy">
   | PairOf<Value, "temperature", "pressure" | "specificEntropy">

@@ -18,7 +18,10 @@ import {
 } from "./slots.js";
 import type { Solver } from "./solver.js";
 
-/** The number of the reason (refusal-reasons.ts) that the end of a search means; at given density that is in the record. */
+/**
+ * The number of the reason (refusal-reasons.ts) that the end of a search means; at given density that is in the
+ * record.
+ */
 export function reasonOfEnd(composition: Composition, solver: Solver, { type, first }: Question, end: number): number {
   if (end === LOST || type === BOTH) return NO_STATE;
   const { w, f } = solver.searcher;

@@ -48,7 +48,10 @@ export interface Solver {
   follow(question: Question): void;
   /** Writes the condition numbers of the last result. */
   fillConditions(question: Question): void;
-  /** Value of a quantity at T = 0 and the density of the record, after {@link Solver.fillCold}; NaN where there is none. */
+  /**
+   * Value of a quantity at T = 0 and the density of the record, after {@link Solver.fillCold}; NaN where there is
+   * none.
+   */
   readonly cold: Float64Array;
   /** Writes the value of a kind of quantity at T = 0. */
   fillCold(composition: Composition, kind: number): void;
@@ -129,7 +132,8 @@ function solverOf(eos: EquationOfState): Solver {
   }
 
   /**
-   * T = 0 where the target is the cold value of the density: there the temperature that a search finds is noise (what rounding
+   * T = 0 where the target is the cold value of the density: there the temperature that a search finds is noise (what
+   * rounding
    * leaves of it is all of it), or the target lies below that of the lowest temperature, by rounding.
    */
   function orCold(composition: Composition, { type, first: kind }: Question, end: number): number {

@@ -63,11 +63,13 @@ export function composition(fractions: NucleonFractions | MeanNucleus, options: 
 }
 
 /**
- * Many compositions of the same species, as a reaction network makes them in every zone and step: the same as `composition` of each
+ * Many compositions of the same species, as a reaction network makes them in every zone and step: the same as
+ * `composition` of each
  * row, to the bit, several times faster.
  *
  * @param labels - nuclides, each once
- * @param fractions - nucleon fractions: one column per label, each with one number per row; or one array, row after row, with the
+ * @param fractions - nucleon fractions: one column per label, each with one number per row; or one array, row after
+ * row, with the
  * labels' fractions of a row side by side
  * @returns one composition per row, for `evaluate` and `solveColumns`
  * @throws FermistateError as {@link composition}, with the row; `length-mismatch`

@@ -1,6 +1,8 @@
 /**
- * From species and their nucleon fractions to a composition: the sums over species, in one order of summation whatever way the
- * fractions came. What depends on the species alone is computed once per list of species: a reaction network makes a new
+ * From species and their nucleon fractions to a composition: the sums over species, in one order of summation
+ * whatever way the
+ * fractions came. What depends on the species alone is computed once per list of species: a reaction network makes a
+ * new
  * composition of the same species in every zone and step.
  */
 import { atomicMassConstant } from "../constants.js";
@@ -89,7 +91,10 @@ export interface SpeciesList {
   readonly order: readonly number[];
   /** First of the charged ones. */
   readonly firstCharged: number;
-  /** Functions of Z, by species: Z^p for the moments, roots and not powers, which have the exponent's error times ln Z. */
+  /**
+   * Functions of Z, by species: Z^p for the moments, roots and not powers, which have the exponent's error times ln
+   * Z.
+   */
   readonly powers: Readonly<Record<keyof ChargeMoments, Float64Array>>;
   /** 1.5 ln(m_u/M). */
   readonly logMass: Float64Array;
@@ -97,11 +102,15 @@ export interface SpeciesList {
   readonly parts: Map<string, SpeciesList>;
 }
 
-/** Marks a composition, of this or another copy of the library; gives what {@link notesOf} does, nothing for a copy of one. */
+/**
+ * Marks a composition, of this or another copy of the library; gives what {@link notesOf} does, nothing for a copy of
+ * one.
+ */
 export const brand: unique symbol = /* @__PURE__ */ Symbol.for("fermistate.composition.1");
 
 /**
- * An object in which a room keeps what it has computed of a composition, under a symbol of its own: several times cheaper than a
+ * An object in which a room keeps what it has computed of a composition, under a symbol of its own: several times
+ * cheaper than a
  * WeakMap where compositions are many and short-lived.
  */
 export function notesOf(composition: Composition): Record<symbol, unknown> {
@@ -111,7 +120,10 @@ export function notesOf(composition: Composition): Record<symbol, unknown> {
 const known = /* @__PURE__ */ new Map<string, SpeciesList>();
 const mostKnown = 256;
 
-/** The list of the nuclides of these labels. @throws `unknown-nuclide`; `invalid-composition` for a label that comes twice */
+/**
+ * The list of the nuclides of these labels. @throws `unknown-nuclide`; `invalid-composition` for a label that comes
+ * twice
+ */
 export function speciesOf(labels: readonly string[]): SpeciesList {
   const key = labels.join(" ");
   const old = known.get(key);
@@ -177,7 +189,10 @@ function present(list: SpeciesList, fractions: Float64Array): readonly [SpeciesL
   return [part, Float64Array.from(places, (i) => fractions[i]!)];
 }
 
-/** The composition of checked nucleon fractions in the order of the list, which are not kept; those of zero, or too small for X/A, are dropped. */
+/**
+ * The composition of checked nucleon fractions in the order of the list, which are not kept; those of zero, or too
+ * small for X/A, are dropped.
+ */
 export function compositionOf(list: SpeciesList, fractions: Float64Array): Composition {
   for (let i = 0; i < list.nuclei.length; i++) {
     if (!(fractions[i]! / list.nuclei[i]!.massNumber > 0)) return new SummedComposition(...present(list, fractions));

@@ -60,9 +60,11 @@ export interface BatchThreads {
    */
   evaluate(input: BatchInput, output: BatchOutput): Promise<void>;
   /**
-   * The batch of `solveColumns`, with the same numbers to the bit and the same errors; columns as in {@link BatchThreads.evaluate}.
+   * The batch of `solveColumns`, with the same numbers to the bit and the same errors; columns as in {@link
+   * BatchThreads.evaluate}.
    *
-   * @throws (rejects with) the errors of `solveColumns`, the first row that one thread would have refused; `worker-failed`
+   * @throws (rejects with) the errors of `solveColumns`, the first row that one thread would have refused;
+   * `worker-failed`
    */
   solve(input: SolveInput, output: SolveOutput): Promise<void>;
   /** Ends the threads; a batch under way is refused. A program may also end without it. */
@@ -74,7 +76,10 @@ export interface BatchThreads {
  * to and fro cost 0.1 to 1 ms, by how busy the machine is.
  */
 const smallestBatch = 4096;
-/** Making a composition in a thread and packing it here costs as much as one or two rows: with fewer rows each, two threads gain nothing. */
+/**
+ * Making a composition in a thread and packing it here costs as much as one or two rows: with fewer rows each, two
+ * threads gain nothing.
+ */
 const rowsPerComposition = 2;
 /** Rows of a block: long against a message, short enough that threads end together. */
 const blockRows: readonly [fewest: number, most: number] = [1024, 16384];
@@ -170,7 +175,10 @@ export async function parallelEvaluator(
     if (first !== undefined) throw unpackError(first);
   }
 
-  /** Answers in this thread where that is faster, else spreads the rows; the output is written when all have their answer. */
+  /**
+   * Answers in this thread where that is faster, else spreads the rows; the output is written when all have their
+   * answer.
+   */
   async function run(
     task: TaskName,
     rows: number,

@@ -55,11 +55,17 @@ export interface DirectionalDerivatives {
   readonly electronsPerNucleon: number;
 }
 
-/** Change of matter by one reaction, at fixed density and temperature: derivatives by the number of reactions per gram. */
+/**
+ * Change of matter by one reaction, at fixed density and temperature: derivatives by the number of reactions per
+ * gram.
+ */
 export interface ReactionDerivatives {
   /** Of the free energy, erg per reaction: sum nu_a mu_a, zero in equilibrium. */
   readonly freeEnergy: number;
-  /** Of the energy, erg per reaction; its negative, with rest mass not "excluded", is the heat set free, neutrinos included. */
+  /**
+   * Of the energy, erg per reaction; its negative, with rest mass not "excluded", is the heat set free, neutrinos
+   * included.
+   */
   readonly energy: number;
   /** Of the entropy, erg/K per reaction. */
   readonly entropy: number;
@@ -102,7 +108,8 @@ export interface CompositionDerivatives {
    */
   along(change: NucleonFractions): DirectionalDerivatives;
   /**
-   * Change by one reaction. `-energy`, with rest mass not "excluded", is the heat to be carried off (neutrinos included) to hold
+   * Change by one reaction. `-energy`, with rest mass not "excluded", is the heat to be carried off (neutrinos
+   * included) to hold
    * density and temperature.
    *
    * @param nuclei - nuclei made by one reaction, those consumed negative: `{ C12: -2, Mg24: 1 }`; electrons follow

@@ -46,7 +46,8 @@ export interface BatchInput {
 /** A column of the reasons for which rows are refused. */
 export interface RefusedRows {
   /**
-   * Where given, a row without an answer gets the number of its reason here (`refusalReasons`; 0 for an answer), its other
+   * Where given, a row without an answer gets the number of its reason here (`refusalReasons`; 0 for an answer), its
+   * other
    * outputs stay as they were, and nothing is thrown for it: for schemes that repair such rows themselves.
    */
   readonly refused?: Uint8Array;
@@ -77,7 +78,8 @@ export interface EquationOfState {
   /**
    * Many states at once: writes the columns of `output` that are given and allocates nothing per point.
    *
-   * All inputs are checked before the first row is written, and the first row without an answer is refused; with a column
+   * All inputs are checked before the first row is written, and the first row without an answer is refused; with a
+   * column
    * `refused` in the output every other row is answered.
    * @throws as {@link EquationOfState.state}, with the row; `length-mismatch`; `unavailable-quantity`
    */

@@ -41,7 +41,10 @@ export interface Evaluator {
    * @throws `unstable`, with the place, and with the temperature and the density from which on the sum is stable
    */
   fillThermodynamics(composition: Composition, row: number): void;
-  /** As {@link Evaluator.fillThermodynamics}, but returns a number of `refusalReasons`, 0 where the sum is stable, and throws nothing. */
+  /**
+   * As {@link Evaluator.fillThermodynamics}, but returns a number of `refusalReasons`, 0 where the sum is stable, and
+   * throws nothing.
+   */
   fillWhereStable(composition: Composition): number;
   /** Quantities that the record of the point holds; after the others. */
   fillPlasma(): void;

@@ -29,7 +29,8 @@ export interface RefusalReason {
 const reason = (code: ErrorCode | undefined, meaning: string): RefusalReason => Object.freeze({ code, meaning });
 
 /**
- * What the numbers in a column `refused` mean, by number: 0 is an answer. Single calls (`state`, `solve`) throw the error of
+ * What the numbers in a column `refused` mean, by number: 0 is an answer. Single calls (`state`, `solve`) throw the
+ * error of
  * the same code, with values and limits.
  *
  * ```ts

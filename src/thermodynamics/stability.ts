@@ -60,7 +60,10 @@ function cureOf(evaluator: Steps, composition: Composition, { density, temperatu
   return cures.length === 0 ? `; ${reason}` : `, stable from ${cures.join(" or ")}; ${reason}`;
 }
 
-/** The first stable value above that in a slot of the point, by steps of a factor, then halved; the point is as before. */
+/**
+ * The first stable value above that in a slot of the point, by steps of a factor, then halved; the point is as
+ * before.
+ */
 function stableFrom(
   evaluator: Steps,
   composition: Composition,
