@@ -15,7 +15,8 @@ test("the tarball holds dist, the guide, the licences, the README and package.js
   const paths = inject("packedFiles").map((file) => file.path);
   const allowed = /^(dist\/[\w.-]+\.(js|cjs|d\.ts|d\.cts)|dist\/THIRD-PARTY-LICENSES\.txt|package\.json)$/;
   const guide = /^docs\/guide\/[\w-]+\.(md|svg)$/;
-  const named = ["LICENSE", "README.md", "CHANGELOG.md", "docs/read_table.py"];
+  const programs = ["docs/read_table.py", "docs/electron_table.c", "docs/electron_table.py"];
+  const named = ["LICENSE", "README.md", "CHANGELOG.md", ...programs];
   expect(paths.filter((path) => !allowed.test(path) && !guide.test(path) && !named.includes(path))).toEqual([]);
   for (const path of named) expect(paths).toContain(path);
   // Every page that the README leads to comes along.
