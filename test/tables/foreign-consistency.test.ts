@@ -17,6 +17,7 @@ import { Measured, uniform } from "../measured.js";
 import { columnsOf, idealGas, type Row, rowsOf, statesOf, steps } from "./foreign-rows.js";
 
 const D = Decimal.clone({ precision: 80, defaults: true });
+const ln2 = new D(2).ln();
 const core = composition({ C12: 0.5, O16: 0.5 });
 
 /** The quintic with value, slope and curvature at both ends of a cell of length `h`. */
@@ -46,7 +47,7 @@ function freeEnergy(mesh: StateMesh, fit: ColumnFit, u: Decimal, v: Decimal): De
   const node = (i: number, j: number, k: number): Decimal[] => {
     const at = i * n + j;
     const values = three(fit.nodes, 9 * at + 3 * k);
-    if (k === 0) values[0] = values[0]!.plus(new D(2).ln().times(fit.exponents[at]!));
+    if (k === 0) values[0] = values[0]!.plus(ln2.times(fit.exponents[at]!));
     return values;
   };
   const rows = [0, 1].map((a) =>
