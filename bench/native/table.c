@@ -18,34 +18,40 @@ typedef struct {
 static Axis u, v;
 static double coldStart, coldPerUnit;
 static int intervals, count;
-static const double *cold, *nodes, *density, *temperature;
-static const double *blocks; /* by block: first, cells along density, along temperature, exponent */
+static const double *density, *temperature;
+static double *cold, *cells; /* coefficients: six an interval, 36 a cell */
+static double *blocks;       /* by block: first, cells along density, along temperature, exponent */
 
-typedef struct {
-  double a[6], b[6], c[6];
-} Basis;
-
-static inline void basis(double t, Basis *h) {
-  const double r = 1 - t, t2 = t * t, r2 = r * r, tr = t * r;
-  h->a[1] = r2 * tr * (1 + 3 * t);
-  h->a[2] = 0.5 * r2 * r * t2;
-  h->a[3] = t2 * t * (1 + 3 * r + 6 * r2);
-  h->a[4] = -t2 * tr * (1 + 3 * r);
-  h->a[5] = 0.5 * t2 * t * r2;
-  h->b[1] = r2 * (1 + 2 * t - 15 * t2);
-  h->b[2] = 0.5 * r * tr * (2 - 5 * t);
-  h->b[3] = 30 * tr * tr;
-  h->b[4] = t2 * (1 + 2 * r - 15 * r2);
-  h->b[5] = -0.5 * t * tr * (2 - 5 * r);
-  h->c[1] = -12 * tr * (3 - 5 * t);
-  h->c[2] = r * (1 - 8 * t + 10 * t2);
-  h->c[3] = 60 * tr * (r - t);
-  h->c[4] = 12 * tr * (3 - 5 * r);
-  h->c[5] = t * (1 - 8 * r + 10 * r2);
+/* value, slope and curvature at both ends of a cell to the coefficients of the powers, in place */
+static void toPowers(double *e) {
+  const double bend = 0.5 * e[2], slope = e[4] - e[1] - e[2], rise = e[3] - e[0] - e[1] - bend, turn = 0.5 * (e[5] - e[2]);
+  e[2] = bend;
+  e[3] = 10 * rise - 4 * slope + turn;
+  e[4] = 7 * slope - 15 * rise - 2 * turn;
+  e[5] = 6 * rise - 3 * slope + turn;
 }
 
-static inline double along(const double *h, double first, double rise, double f1, double f2, double f4, double f5) {
-  return first + h[3] * rise + h[1] * f1 + h[2] * f2 + h[4] * f4 + h[5] * f5;
+static void fillPatch(double *patch, const double *corner, int stride) {
+  for (int row = 0; row < 6; row++) {
+    const double *f = row < 3 ? corner + 3 * row : corner + stride + 3 * (row - 3);
+    for (int j = 0; j < 6; j++) patch[6 * row + j] = j < 3 ? f[j] : f[9 + j - 3];
+    toPowers(patch + 6 * row);
+  }
+  for (int j = 0; j < 6; j++) {
+    double line[6];
+    for (int row = 0; row < 6; row++) line[row] = patch[6 * row + j];
+    toPowers(line);
+    for (int row = 0; row < 6; row++) patch[6 * row + j] = line[row];
+  }
+}
+
+/* the polynomial of degree five at t: value, slope, half the curvature */
+static inline void horner(const double *a, double t, double *value, double *slope, double *bend) {
+  const double a4 = a[5] * t + a[4], a3 = a4 * t + a[3], a2 = a3 * t + a[2], a1 = a2 * t + a[1];
+  const double b4 = a[5] * t + a4, b3 = b4 * t + a3, b2 = b3 * t + a2;
+  *value = a1 * t + a[0];
+  *slope = b2 * t + a1;
+  *bend = ((a[5] * t + b4) * t + b3) * t + b2;
 }
 
 static void lookUp(double rho, double kelvin, double *members) {
@@ -60,37 +66,24 @@ static void lookUp(double rho, double kelvin, double *members) {
   int i = (int)xm, j = (int)yn;
   if (i > m - 1) i = m - 1;
   if (j > n - 1) j = n - 1;
-  const int stride = 9 * (n + 1);
-  const double *corner = nodes + (long)block[0] + i * stride + 9 * j;
-  Basis g, h;
-  basis(yn - j, &g);
-  basis(xm - i, &h);
+  const double *cell = cells + (long)block[0] + 36 * (i * n + j);
+  const double t = yn - j, w = xm - i;
   double value[6], slope[6], bend[6];
-  for (int row = 0; row < 6; row++) {
-    const double *f = row < 3 ? corner + 3 * row : corner + stride + 3 * (row - 3);
-    const double rise = f[9] - f[0];
-    value[row] = along(g.a, f[0], rise, f[1], f[2], f[10], f[11]);
-    slope[row] = along(g.b, 0, rise, f[1], f[2], f[10], f[11]);
-    bend[row] = along(g.c, 0, rise, f[1], f[2], f[10], f[11]);
-  }
+  for (int row = 0; row < 6; row++) horner(cell + 6 * row, t, value + row, slope + row, bend + row);
   const double perU = u.perUnit * m, perV = v.perUnit * n;
-  const double l = along(h.a, value[0], value[3] - value[0], value[1], value[2], value[4], value[5]);
-  const double lu = perU * along(h.b, 0, value[3] - value[0], value[1], value[2], value[4], value[5]);
-  const double lv = perV * along(h.a, slope[0], slope[3] - slope[0], slope[1], slope[2], slope[4], slope[5]);
-  const double luu = perU * perU * along(h.c, 0, value[3] - value[0], value[1], value[2], value[4], value[5]);
-  const double luv = perU * perV * along(h.b, 0, slope[3] - slope[0], slope[1], slope[2], slope[4], slope[5]);
-  const double lvv = perV * perV * along(h.a, bend[0], bend[3] - bend[0], bend[1], bend[2], bend[4], bend[5]);
+  double l, lu, lv, luu, luv, unused;
+  horner(value, w, &l, &lu, &luu);
+  horner(slope, w, &lv, &luv, &unused);
+  lu *= perU, lv *= perV, luu *= 2 * perU * perU, luv *= perU * perV;
+  const double lvv =
+      2 * perV * perV * (((((bend[5] * w + bend[4]) * w + bend[3]) * w + bend[2]) * w + bend[1]) * w + bend[0]);
 
   const double xc = (x - coldStart) * coldPerUnit;
   int k = (int)xc;
   if (k > intervals - 1) k = intervals - 1;
-  Basis e;
-  basis(xc - k, &e);
-  const double *f = cold + 3 * k;
-  const double rise = f[3] - f[0];
-  const double f0 = along(e.a, f[0], rise, f[1], f[2], f[4], f[5]);
-  const double f1 = coldPerUnit * along(e.b, 0, rise, f[1], f[2], f[4], f[5]);
-  const double f2 = coldPerUnit * coldPerUnit * along(e.c, 0, rise, f[1], f[2], f[4], f[5]);
+  double f0, f1, f2;
+  horner(cold + 6 * k, xc - k, &f0, &f1, &f2);
+  f1 *= coldPerUnit, f2 *= 2 * coldPerUnit * coldPerUnit;
 
   const double heat = ldexp(exp(l), (int)block[3]);
   const double uu = luu + lu * lu, uv = luv + lu * lv, vv = lvv + lv * lv;
@@ -113,11 +106,29 @@ int main(int arguments, char **names) {
   u = (Axis){data[0], data[1], (int)data[2]};
   v = (Axis){data[3], data[4], (int)data[5]};
   coldStart = data[6], coldPerUnit = data[7], intervals = (int)data[8], count = (int)data[9];
-  cold = data + 11;
-  blocks = cold + 3 * (intervals + 1);
-  nodes = blocks + 4 * u.blocks * v.blocks;
+  const double *coldNodes = data + 11;
+  blocks = data + 11 + 3 * (intervals + 1);
+  const int blockCount = u.blocks * v.blocks;
+  const double *nodes = blocks + 4 * blockCount;
   density = nodes + (long)data[10];
   temperature = density + count;
+  cold = malloc(6 * sizeof(double) * intervals);
+  for (int i = 0; i < intervals; i++) {
+    for (int j = 0; j < 6; j++) cold[6 * i + j] = coldNodes[3 * i + j];
+    toPowers(cold + 6 * i);
+  }
+  long cellCount = 0, next = 0;
+  for (int b = 0; b < blockCount; b++) cellCount += blocks[4 * b] < 0 ? 0 : (long)(blocks[4 * b + 1] * blocks[4 * b + 2]);
+  cells = malloc(36 * sizeof(double) * cellCount);
+  for (int b = 0; b < blockCount; b++) {
+    if (blocks[4 * b] < 0) continue;
+    const double *first = nodes + (long)blocks[4 * b];
+    const int m = (int)blocks[4 * b + 1], n = (int)blocks[4 * b + 2], stride = 9 * (n + 1);
+    blocks[4 * b] = next;
+    for (int i = 0; i < m; i++) {
+      for (int j = 0; j < n; j++, next += 36) fillPatch(cells + next, first + i * stride + 9 * j, stride);
+    }
+  }
   double *members = malloc(6 * sizeof(double) * count);
   for (int letter; (letter = getchar()) != EOF;) {
     if (letter == 't') {

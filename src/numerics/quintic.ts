@@ -47,3 +47,18 @@ export function fillBasis(basis: Float64Array): void {
   basis[22] = -12 * (3 - 16 * r + 15 * r2);
   basis[23] = 9 - 36 * r + 30 * r2;
 }
+
+/**
+ * The same polynomial by powers of t: from value, slope and curvature at 0 (slots 0..2 of `ends`) and at 1 (3..5) to the six
+ * coefficients, in place. What is not linear is a difference of small numbers before it is multiplied.
+ */
+export function toPowers(ends: Float64Array): void {
+  const bend = 0.5 * ends[2]!;
+  const slope = ends[4]! - ends[1]! - ends[2]!;
+  const rise = ends[3]! - ends[0]! - ends[1]! - bend;
+  const turn = 0.5 * (ends[5]! - ends[2]!);
+  ends[2] = bend;
+  ends[3] = 10 * rise - 4 * slope + turn;
+  ends[4] = 7 * slope - 15 * rise - 2 * turn;
+  ends[5] = 6 * rise - 3 * slope + turn;
+}

@@ -1,5 +1,5 @@
 import { expect, test } from "vitest";
-import { BASIS_LENGTH, fillBasis } from "../../src/numerics/quintic.js";
+import { BASIS_LENGTH, fillBasis, toPowers } from "../../src/numerics/quintic.js";
 import { uniform } from "../measured.js";
 
 const basis = new Float64Array(BASIS_LENGTH);
@@ -44,6 +44,21 @@ test("ends: each function carries one of the six numbers", () => {
     const values = at(t);
     for (let order = 0; order < 3; order++) {
       for (let k = 0; k < 6; k++) expect(Math.abs(values[6 * order + k]! - (k === place + order ? 1 : 0))).toBe(0);
+    }
+  }
+});
+
+test("by powers: the coefficients are the paper's polynomials, weighted by value, slope and curvature at the ends", () => {
+  const random = uniform(2);
+  for (let i = 0; i < 200; i++) {
+    const ends = Float64Array.from({ length: 6 }, () => 2 * random() - 1);
+    const coefficients = ends.slice();
+    toPowers(coefficients);
+    for (let power = 0; power < 6; power++) {
+      const terms = powers.map((p, k) => ends[k]! * p[power]!);
+      const expected = terms.reduce((sum, term) => sum + term, 0);
+      const size = terms.reduce((sum, term) => sum + Math.abs(term), 0);
+      expect(Math.abs(coefficients[power]! - expected)).toBeLessThanOrEqual(8e-16 * size);
     }
   }
 });

@@ -1,6 +1,16 @@
 /** The fit at a point: quintic Hermite cells of unequal size, F_0 along density and L over both. */
-import { BASIS_LENGTH, fillBasis } from "../../numerics/quintic.js";
-import { SURFACE_LENGTH } from "../surface.js";
+import {
+  evaluateLine,
+  evaluatePatch,
+  gather,
+  LINE_LENGTH,
+  linesOf,
+  PATCH_LENGTH,
+  type PatchRecord,
+  patchRecord,
+  takePowers,
+} from "../patch.js";
+import { NODE_LENGTH } from "../table.js";
 import type { ColumnFit } from "./fit.js";
 
 /** An axis made ready for look-up. */
@@ -41,135 +51,74 @@ function cellOf({ nodes, scale, buckets }: CellAxis, at: Float64Array, slot: num
 }
 
 /** A fit made ready. Its records are those that addTableMembers reads. */
-export interface ColumnSurface {
-  readonly fit: ColumnFit;
+export interface ColumnSurface extends PatchRecord {
   readonly u: CellAxis;
   readonly v: CellAxis;
+  /** The patches of the cells, temperature fastest, and the powers of two taken out of exp L in each. */
+  readonly cells: Float64Array;
+  readonly exponents: Int32Array;
+  /** F_0 by interval of density. */
+  readonly lines: Float64Array;
   /** Where: ln rho, ln T. */
   readonly at: Float64Array;
-  /** L less its powers of two, and its derivatives. */
-  readonly out: Float64Array;
   /** Slot 0: the powers of two. */
   readonly exponent: Int32Array;
   /** Slot 0: 1, the share of the matter that is tabulated. */
   readonly share: Float64Array;
   /** F_0 and its derivatives. */
   readonly cold: { readonly out: Float64Array };
-  readonly basisU: Float64Array;
-  readonly basisV: Float64Array;
-  readonly rows: Float64Array;
 }
 
 /** Makes a fit ready. */
 export function columnSurface(fit: ColumnFit, u: Float64Array, v: Float64Array): ColumnSurface {
+  const [m, n] = [u.length - 1, v.length - 1];
+  const length = (axis: Float64Array, cell: number): number => axis[cell + 1]! - axis[cell]!;
+  const cells = new Float64Array(PATCH_LENGTH * m * n);
+  const exponents = new Int32Array(m * n);
+  for (let i = 0, cell = 0; i < m; i++) {
+    for (let j = 0; j < n; j++, cell++) {
+      const low = i * (n + 1) + j;
+      const high = low + n + 1;
+      const patch = cells.subarray(PATCH_LENGTH * cell, PATCH_LENGTH * (cell + 1));
+      gather(patch, fit.nodes, NODE_LENGTH * low, NODE_LENGTH * high);
+      const base = fit.exponents[low]!;
+      exponents[cell] = base;
+      // L of each corner counts from its own power of two: from that of the first.
+      for (const [slot, corner] of [
+        [3, low + 1],
+        [18, high],
+        [21, high + 1],
+      ] as const) {
+        patch[slot]! += (fit.exponents[corner]! - base) * Math.LN2;
+      }
+      takePowers(patch, length(u, i), length(v, j));
+    }
+  }
   return {
-    fit,
     u: cellAxis(u),
     v: cellAxis(v),
+    cells,
+    exponents,
+    lines: linesOf(fit.cold, (i) => length(u, i)),
     at: new Float64Array(2),
-    out: new Float64Array(SURFACE_LENGTH),
     exponent: new Int32Array(1),
     share: Float64Array.of(1),
     cold: { out: new Float64Array(4) },
-    basisU: new Float64Array(BASIS_LENGTH),
-    basisV: new Float64Array(BASIS_LENGTH),
-    rows: new Float64Array(24),
+    ...patchRecord(),
   };
 }
 
 /** Fills `out`, `exponent` and `cold.out` at `at`, to second order (order 2) or all. */
 export function fillColumnSurface(surface: ColumnSurface, order: number): void {
-  const { u, v, at, out, basisU: bu, basisV: bv, rows } = surface;
-  const { nodes, exponents } = surface.fit;
+  const { u, v, at, place } = surface;
   const i = cellOf(u, at, 0);
   const j = cellOf(v, at, 1);
-  fillCellBasis(u, i, at, 0, bu);
-  fillCellBasis(v, j, at, 1, bv);
-  const n = v.nodes.length;
-  const node = i * n + j;
-  const base = exponents[node]!;
-  surface.exponent[0] = base;
-  const last = order === 3 ? 4 : 3;
-  for (let row = 0; row < 6; row++) {
-    // Rows 0 to 2: L and its derivatives along density at the lower density, 3 to 5 at the higher one.
-    const corner = row < 3 ? node : node + n;
-    const k = 9 * corner + (row < 3 ? 3 * row : 3 * row - 9);
-    const isValue = row === 0 || row === 3;
-    const low = nodes[k]! + (isValue ? (exponents[corner]! - base) * Math.LN2 : 0);
-    const high = nodes[k + 9]! + (isValue ? (exponents[corner + 1]! - base) * Math.LN2 : 0);
-    for (let d = 0; d < last; d++) {
-      const b = 6 * d;
-      rows[6 * d + row] =
-        (d === 0 ? low : 0) +
-        bv[b + 3]! * (high - low) +
-        bv[b + 1]! * nodes[k + 1]! +
-        bv[b + 2]! * nodes[k + 2]! +
-        bv[b + 4]! * nodes[k + 10]! +
-        bv[b + 5]! * nodes[k + 11]!;
-    }
-  }
-  fillAcross(bu, 0, rows, 0, out, 0);
-  fillAcross(bu, 6, rows, 0, out, 1);
-  fillAcross(bu, 0, rows, 6, out, 2);
-  fillAcross(bu, 12, rows, 0, out, 3);
-  fillAcross(bu, 6, rows, 6, out, 4);
-  fillAcross(bu, 0, rows, 12, out, 5);
-  if (order === 3) {
-    fillAcross(bu, 18, rows, 0, out, 6);
-    fillAcross(bu, 12, rows, 6, out, 7);
-    fillAcross(bu, 6, rows, 12, out, 8);
-    fillAcross(bu, 0, rows, 18, out, 9);
-    fillAcross(bu, 12, rows, 12, out, 10);
-  }
-  const f = surface.fit.cold;
-  const c = 3 * i;
-  const rise = f[c + 3]! - f[c]!;
-  for (let d = 0; d < last; d++) {
-    const b = 6 * d;
-    surface.cold.out[d] =
-      (d === 0 ? f[c]! : 0) +
-      bu[b + 3]! * rise +
-      bu[b + 1]! * f[c + 1]! +
-      bu[b + 2]! * f[c + 2]! +
-      bu[b + 4]! * f[c + 4]! +
-      bu[b + 5]! * f[c + 5]!;
-  }
-}
-
-/** The basis in a cell, with slopes and curvatures at its ends and derivatives per unit of the axis. */
-function fillCellBasis({ nodes }: CellAxis, cell: number, at: Float64Array, slot: number, basis: Float64Array): void {
-  const h = nodes[cell + 1]! - nodes[cell]!;
-  const per = 1 / h;
-  basis[0] = (at[slot]! - nodes[cell]!) * per;
-  fillBasis(basis);
-  let derivative = 1;
-  for (let b = 0; b < 24; b += 6) {
-    const first = derivative * h;
-    const second = first * h;
-    basis[b + 3]! *= derivative;
-    basis[b + 1]! *= first;
-    basis[b + 4]! *= first;
-    basis[b + 2]! *= second;
-    basis[b + 5]! *= second;
-    derivative *= per;
-  }
-}
-
-/** `out[slot]`: the sum over the six rows of one derivative of the basis. */
-function fillAcross(
-  basis: Float64Array,
-  b: number,
-  rows: Float64Array,
-  r: number,
-  out: Float64Array,
-  slot: number,
-): void {
-  const low = rows[r]!;
-  out[slot] =
-    (b === 0 ? low : 0) +
-    basis[b + 3]! * (rows[r + 3]! - low) +
-    basis[b + 1]! * rows[r + 1]! +
-    basis[b + 2]! * rows[r + 2]! +
-    basis[b + 4]! * rows[r + 4]! +
-    basis[b + 5]! * rows[r + 5]!;
+  const cell = i * (v.nodes.length - 1) + j;
+  surface.exponent[0] = surface.exponents[cell]!;
+  place[2] = 1 / (u.nodes[i + 1]! - u.nodes[i]!);
+  place[3] = 1 / (v.nodes[j + 1]! - v.nodes[j]!);
+  place[0] = (at[0]! - u.nodes[i]!) * place[2]!;
+  place[1] = (at[1]! - v.nodes[j]!) * place[3]!;
+  evaluatePatch(surface.cells, PATCH_LENGTH * cell, surface, order);
+  evaluateLine(surface.lines, LINE_LENGTH * i, place, 2, order, surface.cold.out);
 }
