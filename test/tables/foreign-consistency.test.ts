@@ -152,9 +152,9 @@ describe.each(cases)("%s: the derivatives belong to one function", (_name, rows,
   if (process.env["FERMISTATE_PRINT"]) console.log(measured.table());
   test("to rounding", () => {
     for (const name of ["P = rho^2 dF/drho", "s = -dF/dT", "Maxwell: -rho^2 ds/drho"])
-      measured.expectBelow(name, 8e-14); // measured 2.7e-14
-    measured.expectBelow("to second order", 3e-13, 6e-15); // 9.2e-14, median 2.0e-15
-    measured.expectBelow("third order", 4e-12, 6e-14); // 1.5e-12, median 2.3e-14
+      measured.expectBelow(name, 8e-14); // measured 2.9e-14
+    measured.expectBelow("to second order", 1.2e-13, 4e-15); // 3.7e-14, median 1.3e-15
+    measured.expectBelow("third order", 2.5e-12, 3e-14); // 8.2e-13, median 1.0e-14
   });
 });
 
