@@ -5,51 +5,16 @@
  * the ideal gas; measured error at most 1e-14 in P, e, s, first derivatives and c_v over rho Y_e = 1e-15 to 1e15 g/cm^3
  * and T = 0 and 1e2 to 1e13 K (docs/guide/fermi-gas.md). Interactions are other contributions' matter.
  */
-import {
-  atomicMassConstant,
-  electronDensityUnit,
-  electronPressureUnit,
-  electronRestEnergy,
-  electronRestTemperature,
-} from "../constants.js";
+import { electronDensityUnit, electronRestTemperature } from "../constants.js";
 import type { Composition } from "../matter/composition.js";
-import {
-  DENSITY,
-  ELECTRON_CHEMICAL_POTENTIAL,
-  ELECTRON_DEGENERACY,
-  ELECTRON_DENSITY,
-  FERMI_ENERGY,
-  POSITRON_DENSITY,
-  RELATIVITY,
-  ROUGH_THIRD_ORDER,
-  TEMPERATURE,
-} from "../matter/plasma.js";
+import { POSITRON_DENSITY, TEMPERATURE } from "../matter/plasma.js";
 import type { Contribution } from "../thermodynamics/contribution.js";
 import type { Order } from "../thermodynamics/free-energy.js";
-import {
-  SPECIES_ENERGY,
-  SPECIES_ENTROPY,
-  SPECIES_LENGTH,
-  SPECIES_PRESSURE,
-} from "../thermodynamics/species-members.js";
 import { addColdGasSlopes, addColdMembers, fillColdParticleMembers } from "./cold.js";
 import { addGasMembers, fillParticleMembers } from "./density-derivatives.js";
+import { addElectronSpecies, enterElectrons, moveElectrons, tellPotential } from "./electron-point.js";
 import { solveDensity } from "./net-density.js";
-import {
-  ANTIPARTICLES,
-  CENTRE,
-  FERMI_MOMENTUM,
-  KINETIC_MU,
-  N00,
-  N01,
-  N10,
-  NET_DENSITY,
-  NU,
-  PSI,
-  RECORD_LENGTH,
-  ROUGH_THIRD,
-  THETA,
-} from "./record.js";
+import { ANTIPARTICLES, CENTRE, NET_DENSITY, NU, PSI, RECORD_LENGTH, THETA } from "./record.js";
 import { antiparticleDensity } from "./single-species.js";
 
 /**
@@ -65,21 +30,6 @@ export function electronPositronGas(): Contribution {
   const scale = new Float64Array(1);
   const perParticle = new Float64Array(3);
 
-  function enter(point: Float64Array): void {
-    gas[NET_DENSITY] = point[ELECTRON_DENSITY]! / electronDensityUnit;
-    gas[FERMI_MOMENTUM] = point[RELATIVITY]!;
-    gas[KINETIC_MU] = point[FERMI_ENERGY]!;
-    gas[THETA] = point[TEMPERATURE]! / electronRestTemperature;
-    gas[ROUGH_THIRD] = point[ROUGH_THIRD_ORDER]!;
-    scale[0] = electronPressureUnit / point[DENSITY]!;
-  }
-
-  function tellPotential(point: Float64Array): void {
-    const theta = gas[THETA]!;
-    point[ELECTRON_CHEMICAL_POTENTIAL] = electronRestEnergy * (gas[CENTRE]! + theta * gas[PSI]!);
-    point[ELECTRON_DEGENERACY] = gas[CENTRE]! === 0 ? gas[PSI]! : gas[PSI]! + gas[CENTRE]! / theta;
-  }
-
   return Object.freeze({
     name: "electrons and positrons",
     physics: Object.freeze([{ model: "electrons and positrons", options: {} }]),
@@ -89,7 +39,7 @@ export function electronPositronGas(): Contribution {
     domain: Object.freeze({ density: [1e-20, 1e18], temperature: [1, 1e13], zeroTemperature: true } as const),
 
     add(point: Float64Array, _composition: Composition, order: Order, members: Float64Array): void {
-      enter(point);
+      enterElectrons(point, gas, scale);
       const temperature = point[TEMPERATURE]!;
       if (temperature === 0) {
         addColdMembers(gas, scale, order, members);
@@ -102,24 +52,17 @@ export function electronPositronGas(): Contribution {
         solveDensity(gas, true, order);
         addGasMembers(gas, scale, order, members);
       }
-      tellPotential(point);
+      tellPotential(point, gas);
     },
 
     rewrite(point: Float64Array): void {
-      const density = gas[NET_DENSITY]!;
-      const theta = gas[THETA]!;
-      if (density === 0 || theta === 0) return;
-      enter(point);
-      // d psi/d ln n and d psi/d ln T as in density-derivatives.ts.
-      const byDensity = (gas[NET_DENSITY]! - density) / density;
-      const byTemperature = (gas[THETA]! - theta) / theta;
-      gas[PSI]! += (gas[N00]! * byDensity - gas[N01]! * byTemperature) / gas[N10]!;
+      if (gas[NET_DENSITY] === 0 || gas[THETA] === 0) return;
+      moveElectrons(point, gas, scale);
       gas[ANTIPARTICLES] = -1; // to be computed where asked for
-      tellPotential(point);
     },
 
     addColdSlopes(point: Float64Array, _composition: Composition, slopes: Float64Array): void {
-      enter(point);
+      enterElectrons(point, gas, scale);
       scale[0]! /= electronRestTemperature * electronRestTemperature;
       addColdGasSlopes(gas, scale, slopes);
     },
@@ -135,13 +78,7 @@ export function electronPositronGas(): Contribution {
     addSpecies(point: Float64Array, composition: Composition, rows: Float64Array): void {
       if (point[TEMPERATURE] === 0) fillColdParticleMembers(gas, perParticle);
       else fillParticleMembers(gas, perParticle);
-      const { species } = composition;
-      for (let i = 0, row = 0; i < species.length; i++, row += SPECIES_LENGTH) {
-        const unit = (species[i]!.chargeNumber * electronRestEnergy) / atomicMassConstant;
-        rows[row + SPECIES_ENERGY]! += unit * perParticle[0]!;
-        rows[row + SPECIES_ENTROPY]! += unit * perParticle[1]!;
-        rows[row + SPECIES_PRESSURE]! += unit * perParticle[2]!;
-      }
+      addElectronSpecies(perParticle, composition, rows);
     },
   });
 }

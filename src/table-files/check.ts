@@ -12,16 +12,20 @@ const mostBlocks = 4096;
 /** 2^k of a block, as the look-up knows it. */
 const exponentRange = [-powerOffset, powerOffset] as const;
 
-const positive = z.number().check(z.gt(0)); // zod's numbers are finite
+/** A finite number above zero. */
+export const positive: z.ZodMiniType<number> = z.number().check(z.gt(0)); // zod's numbers are finite
 /** Zero has no sign: JSON would lose it. */
-const notNegative = z.number().check(
+export const notNegative: z.ZodMiniType<number> = z.number().check(
   z.gte(0),
   z.refine((value) => !Object.is(value, -0), { error: "0 without a sign" }),
 );
-const count = z.int32().check(z.gte(0));
+/** A number of things. */
+export const count: z.ZodMiniType<number> = z.int32().check(z.gte(0));
 const axis = z.object({ lowest: positive, highest: positive, blocks: z.int().check(z.gte(1), z.lte(mostBlocks)) });
 /** A line of text; the trailing NUL of a padded string and line ends of a CSV file are no part of one. */
-const line = z.string().check(z.maxLength(2000), z.regex(/^[^\p{Cc}\p{Cs}\u2028\u2029]*$/u));
+export const line: z.ZodMiniType<string> = z
+  .string()
+  .check(z.maxLength(2000), z.regex(/^[^\p{Cc}\p{Cs}\u2028\u2029]*$/u));
 const lines = z.array(line).check(z.maxLength(200));
 const physics = z.object({
   model: line.check(z.minLength(1)),
@@ -72,15 +76,8 @@ export function checkTable(table: unknown, code: ErrorCode): FreeEnergyTable {
   const fail = (argument: string, given: unknown, allowed: string): never => {
     throw new FermistateError(code, { argument, given, allowed });
   };
-  if (typeof table !== "object" || table === null) return fail("table", table, "a FreeEnergyTable");
-  const checked = structure.safeParse(table);
-  if (!checked.success) {
-    const issue = checked.error.issues[0]!;
-    const path = ["table", ...issue.path];
-    const given = issue.path.reduce<unknown>((inner, key) => (inner as Record<PropertyKey, unknown>)?.[key], table);
-    return fail(path.join("."), given, `a FreeEnergyTable of layout ${LAYOUT}: ${issue.message}`);
-  }
-  const { density, temperature, cold, sheets, freezing, composition } = table as FreeEnergyTable;
+  const checked = structureOf(table, structure, `a FreeEnergyTable of layout ${LAYOUT}`, fail) as FreeEnergyTable;
+  const { density, temperature, cold, sheets, freezing, composition } = checked;
   try {
     requireComposition(composition);
   } catch (error) {
@@ -103,10 +100,22 @@ export function checkTable(table: unknown, code: ErrorCode): FreeEnergyTable {
   }
   checkFinite("table.cold.nodes", cold.nodes, fail);
   for (const sheet of sheets) checkSheet(sheet, density.blocks * temperature.blocks, fail);
-  return table as FreeEnergyTable;
+  return checked;
 }
 
-type Fail = (argument: string, given: unknown, allowed: string) => never;
+/** Throws the error of a table that is none. */
+export type Fail = (argument: string, given: unknown, allowed: string) => never;
+
+/** `table` itself where it has the structure; else fails with the path of what has not. */
+export function structureOf(table: unknown, schema: z.ZodMiniType, whole: string, fail: Fail): unknown {
+  if (typeof table !== "object" || table === null) return fail("table", table, whole);
+  const checked = schema.safeParse(table);
+  if (checked.success) return table;
+  const issue = checked.error.issues[0]!;
+  const path = ["table", ...issue.path];
+  const given = issue.path.reduce<unknown>((inner, key) => (inner as Record<PropertyKey, unknown>)?.[key], table);
+  return fail(path.join("."), given, `${whole}: ${issue.message}`);
+}
 
 function checkSheet(sheet: TableSheet, blocks: number, fail: Fail): void {
   const { densityLevels, temperatureLevels, exponents, nodes } = sheet;
@@ -129,7 +138,8 @@ function checkSheet(sheet: TableSheet, blocks: number, fail: Fail): void {
   checkFinite(`${name}.nodes`, nodes, fail);
 }
 
-function checkFinite(name: string, values: Float64Array, fail: Fail): void {
+/** Every number is finite. */
+export function checkFinite(name: string, values: Float64Array, fail: Fail): void {
   for (let i = 0; i < values.length; i++) {
     const value = values[i]!;
     if (value - value !== 0) fail(`${name}[${i}]`, value, "a finite number");

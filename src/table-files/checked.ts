@@ -1,22 +1,22 @@
 /** From the items of a file to a table that is what was written. */
 import { FermistateError, isFermistateError } from "../errors.js";
-import type { FreeEnergyTable } from "../tables/table.js";
-import { checkTable } from "./check.js";
 import { checksumOf } from "./checksum.js";
+import type { TableForm } from "./form.js";
 import { invalidFile } from "./invalid.js";
-import { itemsOf, LAYOUT, type ReadItem, tableOfItems } from "./items.js";
+import type { ReadItem } from "./item.js";
 
 /** The table that items describe. @throws FermistateError `invalid-file` unless it is one and has this checksum */
-export async function checkedTable(read: ReadItem, checksum: string): Promise<FreeEnergyTable> {
-  const layout = read("format/layout", "int32", [])[0];
-  if (layout !== LAYOUT) throw invalidFile("layout", layout, `${LAYOUT}: another version of this library wrote it`);
+export async function checkedTable<T>(form: TableForm<T>, read: ReadItem, checksum: string): Promise<T> {
+  const { item, version } = form.layout;
+  const layout = read(item, "int32", [])[0];
+  if (layout !== version) throw invalidFile("layout", layout, `${version}: another version of this library wrote it`);
   const names = new Set<string>();
   const noted: ReadItem = (name, kind, shape) => {
     names.add(name);
     return read(name, kind, shape);
   };
-  const table = checkTable(described(noted), "invalid-file");
-  const items = itemsOf(table);
+  const table = form.check(described(form, noted), "invalid-file");
+  const items = form.itemsOf(table);
   for (const { name, kind, shape, values } of items) {
     if (names.has(name)) continue; // it has become part of the table; the rest follows from that
     const stated = Array.from<unknown>(read(name, kind, shape));
@@ -28,9 +28,9 @@ export async function checkedTable(read: ReadItem, checksum: string): Promise<Fr
   return table;
 }
 
-function described(read: ReadItem): FreeEnergyTable {
+function described<T>(form: TableForm<T>, read: ReadItem): T {
   try {
-    return tableOfItems(read);
+    return form.tableOf(read);
   } catch (error) {
     if (!isFermistateError(error) || error.code === "invalid-file") throw error;
     throw invalidFile(error.argument, error.given, error.allowed); // a composition that is none

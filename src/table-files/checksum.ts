@@ -1,15 +1,18 @@
 /** The checksum of a table: of what it says, whatever the file that carries it. `checksumRecipe` has it in words. */
+import type { SpeciesTable } from "../tables/species-table.js";
 import type { FreeEnergyTable } from "../tables/table.js";
-import { type Item, itemsOf } from "./items.js";
+import type { Item } from "./item.js";
+import { itemsOf } from "./items.js";
 import { sha256, utf8 } from "./platform.js";
+import { speciesForm } from "./species-form.js";
 
 /**
- * SHA-256 of the content of a table, 64 hexadecimal digits: equal for equal tables in HDF5, in CSV and in memory.
+ * SHA-256 of the content of a table of either kind, 64 hexadecimal digits: equal for equal tables in every file and in memory.
  *
  * @throws FermistateError `invalid-option` in a browser's page that was not served by https or localhost
  */
-export async function tableChecksum(table: FreeEnergyTable): Promise<string> {
-  return checksumOf(itemsOf(table));
+export async function tableChecksum(table: FreeEnergyTable | SpeciesTable): Promise<string> {
+  return checksumOf("logTheta" in table ? speciesForm.itemsOf(table) : itemsOf(table));
 }
 
 /** The same of items. */

@@ -9,7 +9,7 @@ import {
   type TableSheet,
 } from "../tables/table.js";
 import { invalidFile } from "./invalid.js";
-import type { Arrays, Kind, ReadItem } from "./items.js";
+import type { Arrays, Kind, ReadItem } from "./item.js";
 import { columnsOf, nodeRows } from "./rows.js";
 
 /** Longest description: true ones have some 20 kB. */

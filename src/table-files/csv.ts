@@ -11,9 +11,12 @@ import { checkTable } from "./check.js";
 import { checkedTable } from "./checked.js";
 import { checksumOf } from "./checksum.js";
 import { readCold, readProperties, readSheets } from "./csv-reader.js";
+import { checksumRecipe } from "./form.js";
+import { freeEnergyForm } from "./free-energy.js";
 import { invalidFile } from "./invalid.js";
-import { formatItems, type Item, itemsOf, type ReadItem } from "./items.js";
-import { checksumRecipe, meaningOf, recipe, title } from "./meanings.js";
+import { formatItems, type Item, type ReadItem } from "./item.js";
+import { itemsOf } from "./items.js";
+import { meaningOf, recipe, title } from "./meanings.js";
 import { blockRows, type Column, columnsOf, nodeRows } from "./rows.js";
 
 /** A table as texts, one for each file. */
@@ -118,7 +121,7 @@ export async function tableFromCsv(texts: TableCsv): Promise<FreeEnergyTable> {
     const columns = { nodes, density_level: densityLevels, temperature_level: temperatureLevels, exponent: exponents };
     return columns[column as keyof typeof columns] as never;
   };
-  return checkedTable(read, property("format/checksum", "text", [])[0]!);
+  return checkedTable(freeEnergyForm, read, property("format/checksum", "text", [])[0]!);
 }
 
 /** Whether an item stands in a CSV file: all others are properties of the description. */

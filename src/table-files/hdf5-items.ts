@@ -2,8 +2,8 @@
  * Items in an HDF5 file, by h5wasm: every item a dataset of its path, contiguous and not compressed, with attributes `units`
  * and `description`; texts of fixed length, UTF-8, padded with NUL.
  */
-import type { Item, Kind } from "./items.js";
-import { meaningOf } from "./meanings.js";
+import type { Meaning } from "./form.js";
+import type { Item, Kind } from "./item.js";
 import { utf8 } from "./platform.js";
 
 /** What is used of h5wasm. */
@@ -24,6 +24,7 @@ export function hdf5OfItems(
   hdf5: Hdf5,
   items: readonly Item[],
   attributes: Readonly<Record<string, string | readonly string[]>>,
+  meaningOf: (name: string) => Meaning,
 ): Uint8Array {
   const fs = hdf5.FS!;
   const path = `/fermistate-${++files}.h5`;
@@ -33,7 +34,7 @@ export function hdf5OfItems(
       for (const [name, value] of Object.entries(attributes)) {
         file.create_attribute(name, typeof value === "string" ? value : [...value]);
       }
-      for (const item of items) createDataset(file, item);
+      for (const item of items) createDataset(file, item, meaningOf(item.name));
       file.close();
       return fs.readFile(path) as Uint8Array;
     } finally {
@@ -42,13 +43,13 @@ export function hdf5OfItems(
   });
 }
 
-function createDataset(file: InstanceType<Hdf5["File"]>, { name, kind, shape, values }: Item): void {
+function createDataset(file: InstanceType<Hdf5["File"]>, { name, kind, shape, values }: Item, meaning: Meaning): void {
   const folders = name.split("/").slice(0, -1);
   const group = folders.reduce<InstanceType<Hdf5["Group"]>>(
     (outer, inner) => (outer.get(inner) as InstanceType<Hdf5["Group"]> | null) ?? outer.create_group(inner),
     file,
   );
-  const { units, description } = meaningOf(name);
+  const { units, description } = meaning;
   const dataset = group.create_dataset({
     name: name.split("/").at(-1)!,
     shape: [...shape],

@@ -7,12 +7,12 @@
  * be no more than the file. It also spares readers the package.
  */
 import { invalidFile } from "./invalid.js";
-import type { Arrays, Kind, ReadItem } from "./items.js";
+import type { Arrays, Kind, ReadItem } from "./item.js";
 import { lookup3 } from "./lookup3.js";
 import { textOfUtf8 } from "./platform.js";
 
 const argument = "bytes";
-const form = "an HDF5 file as tableToHdf5 writes it";
+const form = "an HDF5 file as fermistate writes it";
 
 const signature = [0x89, 0x48, 0x44, 0x46, 0x0d, 0x0a, 0x1a, 0x0a] as const;
 
@@ -199,7 +199,7 @@ function dataset(header: Header, name: string, kind: Kind): Dataset {
 function dataspace(body: Uint8Array, name: string): number[] {
   const rank = body[1] ?? 255;
   const type = body[3];
-  if (body[0] !== 2 || rank > 3 || body.length < 4 + 8 * rank || type !== (rank === 0 ? 0 : 1)) {
+  if (body[0] !== 2 || rank > 4 || body.length < 4 + 8 * rank || type !== (rank === 0 ? 0 : 1)) {
     throw invalidFile(argument, `${name} of another dataspace`, form);
   }
   const view = viewOf(body);

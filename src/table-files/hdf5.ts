@@ -1,13 +1,13 @@
 /** A table as an HDF5 file. */
 import type { FreeEnergyTable } from "../tables/table.js";
 import { libraryVersion } from "../version.js";
-import { checkTable } from "./check.js";
 import { checkedTable, requireBytes } from "./checked.js";
 import { checksumOf } from "./checksum.js";
+import { checksumRecipe, type TableForm } from "./form.js";
+import { freeEnergyForm } from "./free-energy.js";
 import { hdf5OfItems } from "./hdf5-items.js";
 import { hdf5Reader } from "./hdf5-reader.js";
-import { formatItems, itemsOf } from "./items.js";
-import { checksumRecipe, recipe, title } from "./meanings.js";
+import { formatItems } from "./item.js";
 import { optionalPackage } from "./optional.js";
 
 /**
@@ -33,17 +33,23 @@ import { optionalPackage } from "./optional.js";
  * ```
  */
 export async function tableToHdf5(table: FreeEnergyTable): Promise<Uint8Array> {
-  const items = itemsOf(checkTable(table, "invalid-option"));
+  return hdf5OfTable(freeEnergyForm, table);
+}
+
+/** The same of any kind of table. */
+export async function hdf5OfTable<T>(form: TableForm<T>, table: T): Promise<Uint8Array> {
+  const items = form.itemsOf(form.check(table, "invalid-option"));
   const checksum = await checksumOf(items);
   const hdf5 = await optionalPackage("h5wasm", "HDF5", () => import("h5wasm"));
   await hdf5.ready;
-  const bytes = hdf5OfItems(hdf5, [...items, ...formatItems(items, checksum)], {
-    title: `${title}: ${table.composition.name}`,
+  const attributes = {
+    title: form.titleOf(table),
     creator: `fermistate ${libraryVersion}`,
-    reading: recipe,
+    reading: form.recipe,
     checksum_recipe: checksumRecipe,
-  });
-  await tableFromHdf5(bytes); // h5wasm passes over what libhdf5 fails to write
+  };
+  const bytes = hdf5OfItems(hdf5, [...items, ...formatItems(items, checksum)], attributes, form.meaningOf);
+  await tableOfHdf5(form, bytes); // h5wasm passes over what libhdf5 fails to write
   return bytes;
 }
 
@@ -59,7 +65,12 @@ export async function tableToHdf5(table: FreeEnergyTable): Promise<Uint8Array> {
  * another program
  */
 export async function tableFromHdf5(bytes: Uint8Array): Promise<FreeEnergyTable> {
+  return tableOfHdf5(freeEnergyForm, bytes);
+}
+
+/** The same of any kind of table. */
+export async function tableOfHdf5<T>(form: TableForm<T>, bytes: Uint8Array): Promise<T> {
   requireBytes(bytes);
   const read = hdf5Reader(bytes);
-  return checkedTable(read, read("format/checksum", "text", [])[0]!);
+  return checkedTable(form, read, read("format/checksum", "text", [])[0]!);
 }

@@ -1,8 +1,6 @@
 /**
- * A table as a list of named arrays, the form that every container carries and that the checksum is of.
- *
- * Names are paths; all numbers are IEEE doubles or integers, all texts UTF-8. The list says everything of the table and a
- * little more than it needs (names, mass and charge numbers), for readers that do not have this library.
+ * A table of the free energy as items. The list says everything of the table and a little more than it needs (names, mass and
+ * charge numbers), for readers that do not have this library.
  */
 import { type Composition, composition } from "../matter/composition.js";
 import { certifiedQuantities } from "../tables/errors-at.js";
@@ -15,40 +13,10 @@ import {
   type TableSheet,
 } from "../tables/table.js";
 import type { Physics } from "../thermodynamics/contribution.js";
-
-/** Arrays of an item: their kind says what a number is. */
-export interface Arrays {
-  readonly float64: Float64Array;
-  readonly int32: Int32Array;
-  readonly int16: Int16Array;
-  readonly int8: Int8Array;
-  readonly text: readonly string[];
-}
-
-/** Kind of the values of an item. */
-export type Kind = keyof Arrays;
-
-/** One named array; no axes in its shape: a single value. */
-export interface Item<K extends Kind = Kind> {
-  readonly name: string;
-  readonly kind: K;
-  readonly shape: readonly number[];
-  readonly values: Arrays[K];
-}
+import { float64, type Item, integer, number, numbers, type ReadItem, text, texts } from "./item.js";
 
 /** Version of {@link FreeEnergyTable.layout} that this library writes and reads. */
 export const LAYOUT = 1;
-
-/** What a file holds besides the items of a table: the names of those, in order, and their checksum. */
-export function formatItems(items: readonly Item[], checksum: string): Item[] {
-  return [
-    texts(
-      "format/items",
-      items.map(({ name }) => name),
-    ),
-    text("format/checksum", checksum),
-  ];
-}
 
 /** Columns of a certificate with one number by quantity. */
 const errorColumns = ["bound", "largest", "percentile99", "median"] as const;
@@ -113,12 +81,6 @@ export function itemsOf(table: FreeEnergyTable): Item[] {
     float64("certificate/errors/worst", Float64Array.from(errors.flatMap((one) => one.worst)), [errors.length, 2]),
   ];
 }
-
-/**
- * Hands out the values of an item by name; a number in `shape` must be met, undefined leaves it open. Throws where there is no
- * such item.
- */
-export type ReadItem = <K extends Kind>(name: string, kind: K, shape: readonly (number | undefined)[]) => Arrays[K];
 
 /** The object that items describe: of a table's form, nothing checked beyond kinds and shapes. */
 export function tableOfItems(read: ReadItem): FreeEnergyTable {
@@ -233,26 +195,3 @@ function axisItems(name: string, axis: TableAxis): Item[] {
     integer(`${name}/blocks`, axis.blocks),
   ];
 }
-
-const float64 = (name: string, values: Float64Array, shape: readonly number[]): Item => ({
-  name,
-  kind: "float64",
-  shape,
-  values,
-});
-const numbers = (name: string, values: readonly number[]): Item =>
-  float64(name, Float64Array.from(values), [values.length]);
-const number = (name: string, value: number): Item => float64(name, Float64Array.of(value), []);
-const integer = (name: string, value: number): Item => ({
-  name,
-  kind: "int32",
-  shape: [],
-  values: Int32Array.of(value),
-});
-const texts = (name: string, values: readonly string[]): Item => ({
-  name,
-  kind: "text",
-  shape: [values.length],
-  values,
-});
-const text = (name: string, value: string): Item => ({ name, kind: "text", shape: [], values: [value] });

@@ -1,10 +1,5 @@
 /** What each item of a table means and in which unit, for the files: a stranger needs nothing else to use the numbers. */
-
-/** Unit in cgs ("1": a pure number; none for texts) and meaning. */
-export interface Meaning {
-  readonly units?: string;
-  readonly description: string;
-}
+import { formatMeanings, type Meaning } from "./form.js";
 
 /** What the whole is. */
 export const title = "Helmholtz free energy of matter as a table";
@@ -29,12 +24,6 @@ export const recipe: readonly string[] = [
     "y F(y rho, T).",
   "Derived constants follow CODATA 2022. Compositions are nucleon fractions: a species has X rho/(A m_u) nuclei per cm^3.",
 ];
-
-/** How the checksum of the content is made; the same for every kind of file. */
-export const checksumRecipe: string =
-  "SHA-256 (FIPS 180-4) of a text of one line for each item in the order of format/items, ended by LF: the SHA-256 of the item's " +
-  "bytes in hexadecimal, its kind, its shape (sizes joined by x, or scalar), its name, separated by single spaces. Bytes: " +
-  "numbers little-endian, last index fastest; texts in UTF-8, each ended by LF.";
 
 const block = "by block (density, temperature)";
 const relative =
@@ -74,8 +63,6 @@ const meanings: Readonly<Record<string, Meaning>> = {
   "certificate/places": { units: "1", description: "number of places where the finished table was measured" },
   "certificate/target": { units: "1", description: "error asked for" },
   "certificate/blocks_above_target": { units: "1", description: "blocks that did not reach it" },
-  "format/items": { description: "names of what the checksum is of, in order" },
-  "format/checksum": { description: "SHA-256 of the content, made as the description of the whole says" },
   "certificate/quantity": { description: `quantities whose error is stated. ${relative}` },
   "certificate/errors/bound": { units: "1", description: "twice the largest error measured, by quantity" },
   "certificate/errors/largest": { units: "1", description: "largest error measured, by quantity" },
@@ -92,5 +79,5 @@ const meanings: Readonly<Record<string, Meaning>> = {
 
 /** The meaning of an item; sheets share theirs. */
 export function meaningOf(name: string): Meaning {
-  return meanings[name.replace(/^sheets\/(single|liquid|crystal)\//, "sheets/")]!;
+  return formatMeanings[name] ?? meanings[name.replace(/^sheets\/(single|liquid|crystal)\//, "sheets/")]!;
 }

@@ -1,58 +1,30 @@
-/** A species table as a contribution: electrons and positrons from one surface, charge neutrality solved at each point. */
-import {
-  atomicMassConstant,
-  electronDensityUnit,
-  electronPressureUnit,
-  electronRestEnergy,
-  electronRestTemperature,
-} from "../constants.js";
+/**
+ * A species table as a contribution: electrons and positrons from one surface, charge neutrality solved at each point.
+ */
+import { electronDensityUnit, electronPressureUnit, electronRestTemperature } from "../constants.js";
+import { FermistateError } from "../errors.js";
 import { addGasMembers, fillParticleMembers } from "../fermi-gas/density-derivatives.js";
-import {
-  ANTIPARTICLES,
-  CENTRE,
-  FERMI_MOMENTUM,
-  KINETIC_MU,
-  N00,
-  N01,
-  N10,
-  NET_DENSITY,
-  PSI,
-  RECORD_LENGTH,
-  ROUGH_THIRD,
-  THETA,
-} from "../fermi-gas/record.js";
+import { addElectronSpecies, enterElectrons, moveElectrons, tellPotential } from "../fermi-gas/electron-point.js";
+import { ANTIPARTICLES, CENTRE, NET_DENSITY, PSI, RECORD_LENGTH, THETA } from "../fermi-gas/record.js";
 import type { Composition } from "../matter/composition.js";
-import {
-  DENSITY,
-  ELECTRON_CHEMICAL_POTENTIAL,
-  ELECTRON_DEGENERACY,
-  ELECTRON_DENSITY,
-  FERMI_ENERGY,
-  POSITRON_DENSITY,
-  RELATIVITY,
-  ROUGH_THIRD_ORDER,
-  TEMPERATURE,
-} from "../matter/point.js";
+import { POSITRON_DENSITY } from "../matter/point.js";
 import type { Contribution } from "../thermodynamics/contribution.js";
 import type { Order } from "../thermodynamics/free-energy.js";
-import {
-  SPECIES_ENERGY,
-  SPECIES_ENTROPY,
-  SPECIES_LENGTH,
-  SPECIES_PRESSURE,
-} from "../thermodynamics/species-members.js";
 import { fillPositrons, solveSpeciesGas } from "./species-gas.js";
 import { speciesSurface } from "./species-surface.js";
-import type { SpeciesTable } from "./species-table.js";
+import { NODE_LENGTH, type SpeciesTable } from "./species-table.js";
 
 /**
- * The ideal gas of electrons and positrons as `electronPositronGas` gives it, read from a species table: any composition,
- * density 1e-20 to 1e18 g/cm^3, temperatures of the table.
+ * The ideal gas of electrons and positrons as `electronPositronGas` gives it, read from a species table: any
+ * composition, density 1e-20 to 1e18 g/cm^3, temperatures of the table.
  *
- * Consistent to rounding, since every member is a derivative of one grand potential; its distance from the exact gas is that of
- * `table.certificate`. For checking an exported table and its readers: the direct gas is as fast, and exact.
+ * Consistent to rounding, since every member is a derivative of one grand potential; its distance from the exact gas is
+ * that of `table.certificate`. For checking an exported table and its readers: the direct gas is faster, and exact.
+ *
+ * @throws `invalid-option` for a table of another layout or of other constants than this library's
  */
 export function speciesTableContribution(table: SpeciesTable): Contribution {
+  requireUsable(table);
   const surface = speciesSurface(table);
   const gas = new Float64Array(RECORD_LENGTH);
   const scale = new Float64Array(1);
@@ -62,21 +34,6 @@ export function speciesTableContribution(table: SpeciesTable): Contribution {
   const lowest = restTemperature * Math.exp(logTheta[0]!) * (1 + 1e-14);
   const highest = restTemperature * Math.exp(logTheta[logTheta.length - 1]!) * (1 - 1e-14);
   const within = (name: "pressure" | "entropy"): string => certificate.errors[name].bound.toExponential(1);
-
-  function enter(point: Float64Array): void {
-    gas[NET_DENSITY] = point[ELECTRON_DENSITY]! / electronDensityUnit;
-    gas[FERMI_MOMENTUM] = point[RELATIVITY]!;
-    gas[KINETIC_MU] = point[FERMI_ENERGY]!;
-    gas[THETA] = point[TEMPERATURE]! / electronRestTemperature;
-    gas[ROUGH_THIRD] = point[ROUGH_THIRD_ORDER]!;
-    scale[0] = electronPressureUnit / point[DENSITY]!;
-  }
-
-  function tellPotential(point: Float64Array): void {
-    const theta = gas[THETA]!;
-    point[ELECTRON_CHEMICAL_POTENTIAL] = electronRestEnergy * (gas[CENTRE]! + theta * gas[PSI]!);
-    point[ELECTRON_DEGENERACY] = gas[CENTRE]! === 0 ? gas[PSI]! : gas[PSI]! + gas[CENTRE]! / theta;
-  }
 
   return Object.freeze({
     name: "table of one species: electrons and positrons",
@@ -94,7 +51,7 @@ export function speciesTableContribution(table: SpeciesTable): Contribution {
     } as const),
 
     add(point: Float64Array, _composition: Composition, order: Order, members: Float64Array): void {
-      enter(point);
+      enterElectrons(point, gas, scale);
       if (gas[NET_DENSITY] === 0 && gas[THETA]! < 1 / 650) {
         gas[CENTRE] = -1; // mu = 0, and not even pairs: their e^(-1/theta) underflows
         gas[PSI] = 0;
@@ -102,19 +59,11 @@ export function speciesTableContribution(table: SpeciesTable): Contribution {
         solveSpeciesGas(surface, gas, order);
         addGasMembers(gas, scale, order, members);
       }
-      tellPotential(point);
+      tellPotential(point, gas);
     },
 
     rewrite(point: Float64Array): void {
-      const density = gas[NET_DENSITY]!;
-      const theta = gas[THETA]!;
-      if (density === 0) return;
-      enter(point);
-      // d psi/d ln n and d psi/d ln T as in density-derivatives.ts.
-      const byDensity = (gas[NET_DENSITY]! - density) / density;
-      const byTemperature = (gas[THETA]! - theta) / theta;
-      gas[PSI]! += (gas[N00]! * byDensity - gas[N01]! * byTemperature) / gas[N10]!;
-      tellPotential(point);
+      if (gas[NET_DENSITY] !== 0) moveElectrons(point, gas, scale);
     },
 
     addDetail(point: Float64Array): void {
@@ -125,13 +74,27 @@ export function speciesTableContribution(table: SpeciesTable): Contribution {
 
     addSpecies(_point: Float64Array, composition: Composition, rows: Float64Array): void {
       fillParticleMembers(gas, perParticle);
-      const { species } = composition;
-      for (let i = 0, row = 0; i < species.length; i++, row += SPECIES_LENGTH) {
-        const unit = (species[i]!.chargeNumber * electronRestEnergy) / atomicMassConstant;
-        rows[row + SPECIES_ENERGY]! += unit * perParticle[0]!;
-        rows[row + SPECIES_ENTROPY]! += unit * perParticle[1]!;
-        rows[row + SPECIES_PRESSURE]! += unit * perParticle[2]!;
-      }
+      addElectronSpecies(perParticle, composition, rows);
     },
   });
+}
+
+/** The surface is a pure function, but its temperatures and units are those of the constants it was made with. */
+function requireUsable(table: SpeciesTable): void {
+  const { layout, degeneracy, logTheta, nodes } = table;
+  if (layout !== 2 || nodes.length !== NODE_LENGTH * degeneracy.length * logTheta.length) {
+    const allowed = `2, with ${NODE_LENGTH} numbers a node: a table of buildSpeciesTable of this version`;
+    throw new FermistateError("invalid-option", { argument: "table.layout", given: layout, allowed });
+  }
+  const constants = {
+    restTemperature: electronRestTemperature,
+    pressureUnit: electronPressureUnit,
+    densityUnit: electronDensityUnit,
+  };
+  for (const [name, own] of Object.entries(constants)) {
+    const given = table[name as keyof typeof constants];
+    if (given === own) continue;
+    const allowed = `${own}, this library's constants (CODATA 2022): build the table with this version`;
+    throw new FermistateError("invalid-option", { argument: `table.${name}`, given, allowed });
+  }
 }

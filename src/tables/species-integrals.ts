@@ -1,33 +1,89 @@
 /**
- * The pressure of one species of fermions and its derivatives, by plain quadrature of the definition: what the nodes of a
- * species table hold. Shares no method with fermi-gas/.
+ * The pressure of one species of fermions and its derivatives, by plain quadrature of the definition: what the nodes of
+ * a species table hold. Shares no method with fermi-gas/.
  *
- * With x = (E - 1)/theta, f = 1/(e^(x - eta) + 1), g = f (1 - f) and W(E) = p^3/3, in units of m c^2/(pi^2 lambdabar^3),
+ * With x = (E - 1)/theta, f = 1/(e^(x - eta) + 1) and W(E) = p^3/3, in units of m c^2/(pi^2 lambdabar^3),
  *
  *     P = int K_0 f dx,   K_0 = theta W
- *     K_1 = theta W + theta^2 x W'                         theta d/dtheta of K_0 at fixed x
- *     K_2 = theta W + 3 theta^2 x W' + theta^3 x^2 W''     the same once more
  *
- * and P_ij = d^(i+j)P/(d eta^i d ln theta^j) is the integral of K_j f, of K_j g and, by parts, of (dK_j/dx) g for i = 0, 1, 2.
- * Every kernel is positive: no derivative loses a digit in degenerate matter. The variable of integration is the rapidity w,
- * E = cosh w, where W is entire; panels of 20 Gauss points are short in w and in x, which keeps the poles of f at
- * x = eta +- i pi away.
+ * and P_ij = d^(i+j)P/(d eta^i d ln theta^j) = int K_j d^i f/d eta^i dx, K_j = (theta d/d theta)^j K_0 at fixed x.
+ *
+ * Kernels: with u = theta x = E - 1 and c = u/(u + 2), u dW/du = 3/2 (1 + c) W and u dc/du = c (1 - c), so that K_j =
+ * theta W q_j(c),
+ *
+ *     q_0 = 1,   q_(j+1) = q_j + 3/2 (1 + c) q_j + c (1 - c) q_j',
+ *     x dK_j/dx = theta W (q_(j+1) - q_j),   x^2 d2K_j/dx2 = theta W (q_(j+2) - 3 q_(j+1) + 2 q_j).
+ *
+ * Up to two derivatives by eta are moved to the kernel by parts: the kernels are positive, and up to i = 3 so is every
+ * integrand, so that no derivative loses a digit in degenerate matter. The others act on g = df/d eta = f (1 - f) = (1
+ * - r^2)/4, r = tanh((x - eta)/2):
+ *
+ *     d^k f/d eta^k = g R_k(r),   R_1 = 1,   R_(k+1) = r R_k - (1 - r^2) R_k'/2.
+ *
+ * The variable of integration is the rapidity w, E = cosh w, where W is entire; panels of Gauss points are short in w
+ * and in x, which keeps the poles of f at x = eta +- i pi away.
  */
 import { gaussRule } from "./gauss.js";
+import { NODE_LENGTH, NODE_ORDER } from "./species-table.js";
 
-/** Numbers of {@link fillSpeciesIntegrals}: P_ij in slot 3 i + j, i, j = 0..2. */
-export const INTEGRALS_LENGTH = 9;
-
-/** Panels: length in x and in w at most, and points in each. Measured: 7e-15 in every integral. */
-const longestX = 4;
+/** Panels: length in x and in w at most, and points in each. */
+const longestX = 3;
 const longestW = 1.2;
-const rule = gaussRule(20);
+const rule = /* @__PURE__ */ gaussRule(20);
 /** The integrand at x = max(eta, 0) + this is below 1e-18 of the integral. */
 const tail = 58;
 
-/** Writes P_ij at eta <= 1000 and theta > 0 into `out`, in units of the species (m c^2/(pi^2 lambdabar^3) for two spin states). */
+const width = NODE_ORDER + 1;
+/** Coefficients of x^s d^s K_j/dx^s over theta W in c, s = 0, 1, 2: ascending, `width + 2` each, in row s width + j. */
+const kernels = /* @__PURE__ */ kernelCoefficients();
+const kernelLength = width + 2;
+/** Coefficients of R_k in r, ascending, `width` each, in row k - 1. */
+const statistics = /* @__PURE__ */ statisticsCoefficients();
+
+function kernelCoefficients(): Float64Array {
+  const q = [[1]];
+  for (let j = 0; j <= width; j++) {
+    const now = q[j]!;
+    const at = (k: number): number => now[k] ?? 0;
+    // coefficient of c^k: q_j (5/2 + 3/2 c) + c (1 - c) q_j'
+    q.push(Array.from({ length: j + 2 }, (_, k) => (2.5 + k) * at(k) + (1.5 - (k - 1)) * at(k - 1)));
+  }
+  const out = new Float64Array(3 * width * (width + 2));
+  for (let j = 0; j < width; j++) {
+    for (let k = 0; k < width + 2; k++) {
+      const [a, b, c] = [0, 1, 2].map((s) => q[j + s]![k] ?? 0) as [number, number, number];
+      for (const [s, value] of [a, b - a, c - 3 * b + 2 * a].entries()) out[(s * width + j) * (width + 2) + k] = value;
+    }
+  }
+  return out;
+}
+
+function statisticsCoefficients(): Float64Array {
+  const out = new Float64Array(width * width);
+  out[0] = 1;
+  for (let row = 1; row < width; row++) {
+    const before = out.subarray((row - 1) * width, row * width);
+    for (let k = 0; k < width; k++) {
+      const up = k + 1 < width ? (k + 1) * before[k + 1]! : 0;
+      const down = k > 0 ? (1 + 0.5 * (k - 1)) * before[k - 1]! : 0;
+      out[row * width + k] = down - 0.5 * up;
+    }
+  }
+  return out;
+}
+
+/** What the sum of each P_ij has lost to rounding (Kahan 1965, Commun. ACM 8, 40). */
+const lost = new Float64Array(NODE_LENGTH);
+const kernelValues = new Float64Array(3 * width);
+const statisticsValues = new Float64Array(width);
+
+/**
+ * Writes P_ij, i, j = 0..NODE_ORDER, into slots (NODE_ORDER + 1) i + j of `out`, at eta <= 1000 and theta > 0, in units
+ * of the species (m c^2/(pi^2 lambdabar^3) for two spin states).
+ */
 export function fillSpeciesIntegrals(eta: number, theta: number, out: Float64Array): void {
   out.fill(0);
+  lost.fill(0);
   const end = Math.max(eta, 0) + tail;
   for (let w = 0, x = 0; x < end; ) {
     const next = Math.min(w + longestW, rapidity(theta * (x + longestX)));
@@ -38,35 +94,37 @@ export function fillSpeciesIntegrals(eta: number, theta: number, out: Float64Arr
 }
 
 function addPanel(eta: number, theta: number, low: number, high: number, out: Float64Array): void {
-  for (let k = 0; k < rule.nodes.length; k++) {
-    const half = Math.sinh(0.5 * (low + (high - low) * rule.nodes[k]!));
-    const kinetic = 2 * half * half; // cosh w - 1 without cancellation
-    const energy = 1 + kinetic;
-    const p2 = kinetic * (energy + 1);
-    const p = Math.sqrt(p2);
-    const z = kinetic / theta - eta;
-    // theta^k x^(k-1) times the (k-1)-th derivative of W, and of their derivatives by x
-    const w0 = (theta * p * p2) / 3;
-    const w1 = theta * kinetic * p * energy;
-    const w2 = (theta * kinetic * kinetic * (2 * p2 + 1)) / p;
-    const d1 = theta * theta * p * energy;
-    const d2 = (theta * theta * kinetic * (2 * p2 + 1)) / p;
-    const d3 = (theta * theta * kinetic * kinetic * energy * (2 * p2 - 1)) / (p * p2);
-    const weight = ((high - low) * rule.weights[k]! * p) / theta; // dx = p dw/theta
+  for (let n = 0; n < rule.nodes.length; n++) {
+    const half = Math.sinh(0.5 * (low + (high - low) * rule.nodes[n]!));
+    const u = 2 * half * half; // cosh w - 1 without cancellation
+    const p2 = u * (u + 2);
+    const x = u / theta;
+    const z = x - eta;
+    const weight = ((high - low) * rule.weights[n]! * p2 * p2) / 3; // theta W dx = p^4/3 dw
+    fillPolynomials(kernels, kernelLength, u / (u + 2), kernelValues);
     const e = Math.exp(-Math.abs(z));
-    const wg = (weight * e) / ((1 + e) * (1 + e));
-    const wf = (weight * (z > 0 ? e : 1)) / (1 + e);
-    const k1 = w0 + w1;
-    const k2 = w0 + 3 * w1 + w2;
-    out[0]! += wf * w0;
-    out[1]! += wf * k1;
-    out[2]! += wf * k2;
-    out[3]! += wg * w0;
-    out[4]! += wg * k1;
-    out[5]! += wg * k2;
-    out[6]! += wg * d1;
-    out[7]! += wg * (2 * d1 + d2);
-    out[8]! += wg * (4 * d1 + 5 * d2 + d3);
+    const f = (z > 0 ? e : 1) / (1 + e);
+    const g = e / ((1 + e) * (1 + e));
+    fillPolynomials(statistics, width, ((z > 0 ? 1 : -1) * (1 - e)) / (1 + e), statisticsValues);
+    for (let i = 0, at = 0; i < width; i++) {
+      const s = i < 2 ? 0 : i === 2 ? 1 : 2;
+      const factor = (weight * (i === 0 ? f : g * statisticsValues[i - s - 1]!)) / (s === 0 ? 1 : s === 1 ? x : x * x);
+      for (let j = 0; j < width; j++, at++) {
+        const term = factor * kernelValues[s * width + j]! - lost[at]!;
+        const sum = out[at]! + term;
+        lost[at] = sum - out[at]! - term;
+        out[at] = sum;
+      }
+    }
+  }
+}
+
+/** Values at `at` of polynomials of `length` ascending coefficients each. */
+function fillPolynomials(coefficients: Float64Array, length: number, at: number, values: Float64Array): void {
+  for (let row = 0; row < values.length; row++) {
+    let value = 0;
+    for (let k = length - 1; k >= 0; k--) value = value * at + coefficients[row * length + k]!;
+    values[row] = value;
   }
 }
 
@@ -79,33 +137,42 @@ function kineticEnergy(w: number): number {
 /** w of E - 1. */
 const rapidity = (kinetic: number): number => 2 * Math.asinh(Math.sqrt(0.5 * kinetic));
 
-/**
- * Derivatives of L = ln P from those of P, in place: nine numbers L_ij in slot 3 i + j.
- */
+/** Binomial coefficients C(n, k) in slot n width + k. */
+const binomials = /* @__PURE__ */ binomialCoefficients();
+
+function binomialCoefficients(): Float64Array {
+  const out = new Float64Array(width * width);
+  for (let n = 0; n < width; n++) {
+    out[n * width] = 1;
+    for (let k = 1; k <= n; k++) out[n * width + k] = out[(n - 1) * width + k - 1]! + out[(n - 1) * width + k]!;
+  }
+  return out;
+}
+
+/** What is differentiated, while it is overwritten. */
+const pressures = new Float64Array(NODE_LENGTH);
+
+/** Derivatives of L = ln P from those of P, in place: dP = P dL, differentiated by Leibniz's rule. */
 export function takeLogarithm(p: Float64Array): void {
-  const scale = 1 / p[0]!;
-  const value = Math.log(p[0]!);
-  const b = p[1]! * scale;
-  const bb = p[2]! * scale;
-  const a = p[3]! * scale;
-  const ab = p[4]! * scale;
-  const abb = p[5]! * scale;
-  const aa = p[6]! * scale;
-  const aab = p[7]! * scale;
-  const aabb = p[8]! * scale;
-  const l20 = aa - a * a;
-  const l11 = ab - a * b;
-  const l02 = bb - b * b;
-  const l21 = aab - 2 * a * l11 - b * l20 - a * a * b;
-  const l12 = abb - 2 * b * l11 - a * l02 - a * b * b;
-  const mixed = l20 * l02 + 2 * l11 * l11 + a * a * l02 + b * b * l20 + 4 * a * b * l11 + a * a * b * b;
-  p[0] = value;
-  p[1] = b;
-  p[2] = l02;
-  p[3] = a;
-  p[4] = l11;
-  p[5] = l12;
-  p[6] = l20;
-  p[7] = l21;
-  p[8] = aabb - 2 * a * l12 - 2 * b * l21 - mixed;
+  pressures.set(p);
+  for (let k = 1; k < NODE_LENGTH; k++) pressures[k]! /= p[0]!;
+  p[0] = Math.log(p[0]!);
+  for (let i = 0; i < width; i++) {
+    for (let j = 0; j < width; j++) {
+      if (i + j === 0) continue;
+      // one derivative, by eta if there is one, is that of dL; the others are spread over P and dL
+      const [n, m] = i > 0 ? [i - 1, j] : [0, j - 1];
+      let value = pressures[width * i + j]!;
+      for (let a = 0; a <= n; a++) {
+        for (let b = a === 0 ? 1 : 0; b <= m; b++) {
+          value -=
+            binomials[n * width + a]! *
+            binomials[m * width + b]! *
+            pressures[width * a + b]! *
+            p[width * (i - a) + j - b]!;
+        }
+      }
+      p[width * i + j] = value;
+    }
+  }
 }

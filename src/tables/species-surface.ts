@@ -1,9 +1,9 @@
 /**
- * The surface of a species table at a point: L = ln P(eta, ln theta) and its derivatives, below the table continued by the
- * classical gas. One record of the module's functions, so that nothing is allocated.
+ * The surface of a species table at a point: L = ln P(eta, ln theta) and its derivatives, below the table continued by
+ * the classical gas. One record of the module's functions, so that nothing is allocated.
  */
-import { BASIS_LENGTH, fillBasis } from "../numerics/quintic.js";
-import type { SpeciesTable } from "./species-table.js";
+import { fillHermiteBasis, type HermiteBasis, hermiteBasis } from "../numerics/hermite.js";
+import { NODE_LENGTH, NODE_ORDER, type SpeciesTable } from "./species-table.js";
 
 // Slots of the derivatives L_ij by eta (i) and ln theta (j).
 
@@ -20,8 +20,13 @@ export const L03 = 9;
 export const L40 = 10;
 export const L31 = 11;
 export const L22 = 12;
+const L13 = 13;
 /** Length of a record of them. */
-const SPECIES_SURFACE_LENGTH = 13;
+const SPECIES_SURFACE_LENGTH = 14;
+
+/** Derivatives in one variable at a node, and at both ends of a cell. */
+const WIDTH = NODE_ORDER + 1;
+const ROWS = 2 * WIDTH;
 
 /** Orders (i, j) of the slots. */
 const orders = [
@@ -38,6 +43,7 @@ const orders = [
   [4, 0],
   [3, 1],
   [2, 2],
+  [1, 3],
 ] as const;
 const orderI = Int32Array.from(orders, ([i]) => i);
 const orderJ = Int32Array.from(orders, ([, j]) => j);
@@ -59,8 +65,9 @@ export interface SpeciesSurface {
   readonly at: Float64Array;
   /** The derivatives L_ij there. */
   readonly out: Float64Array;
-  readonly basisE: Float64Array;
-  readonly basisY: Float64Array;
+  readonly basisE: HermiteBasis;
+  readonly basisY: HermiteBasis;
+  /** Derivatives by ln theta, up to 3, of the derivatives by eta at both ends of the cell: slot d ROWS + row. */
   readonly rows: Float64Array;
 }
 
@@ -72,9 +79,9 @@ export function speciesSurface(table: Omit<SpeciesTable, "certificate">): Specie
     nodes: table.nodes,
     at: new Float64Array(3),
     out: new Float64Array(SPECIES_SURFACE_LENGTH),
-    basisE: new Float64Array(BASIS_LENGTH + 6),
-    basisY: new Float64Array(BASIS_LENGTH + 6),
-    rows: new Float64Array(30),
+    basisE: hermiteBasis(NODE_ORDER),
+    basisY: hermiteBasis(NODE_ORDER),
+    rows: new Float64Array(4 * ROWS),
   };
 }
 
@@ -106,34 +113,35 @@ function cellOf(axis: AxisIndex, at: Float64Array, k: number): number {
   return cell;
 }
 
-/** Fills the scaled basis of the cell: slopes by eta or ln theta, whatever the length of the cell. */
-function fillCellBasis(basis: Float64Array, nodes: Float64Array, cell: number, at: Float64Array, k: number): void {
+/** Fills the basis of the cell: derivatives by eta or ln theta, whatever the length of the cell. */
+function fillCellBasis(
+  basis: HermiteBasis,
+  nodes: Float64Array,
+  cell: number,
+  at: Float64Array,
+  k: number,
+  depth: number,
+): void {
+  const { values } = basis;
   const h = nodes[cell + 1]! - nodes[cell]!;
-  const t = (at[k]! - nodes[cell]!) / h;
-  const r = 1 - t;
-  basis[0] = t;
-  fillBasis(basis);
-  basis[24] = 360 - 720 * t;
-  basis[25] = 192 - 360 * t;
-  basis[26] = 36 - 60 * t;
-  basis[27] = 720 * t - 360;
-  basis[28] = 360 * r - 192;
-  basis[29] = 36 - 60 * r;
-  let power = 1;
-  for (let d = 0; d < 30; d += 6) {
-    basis[d]! *= power;
-    basis[d + 3]! *= power;
-    basis[d + 1]! *= power * h;
-    basis[d + 4]! *= power * h;
-    basis[d + 2]! *= power * h * h;
-    basis[d + 5]! *= power * h * h;
-    power /= h;
+  values[0] = (at[k]! - nodes[cell]!) / h;
+  fillHermiteBasis(basis, depth);
+  let inverse = 1;
+  for (let from = 0; from < depth * ROWS; from += ROWS) {
+    let power = inverse;
+    for (let i = from; i < from + WIDTH; i++) {
+      values[i]! *= power;
+      values[i + WIDTH]! *= power;
+      power *= h;
+    }
+    inverse /= h;
   }
 }
 
 /**
- * Fills `out` at `at` to second order with (3,0), (2,1), (1,2) (order 2), or all of it (order 3). Above the highest eta the last cell
- * is continued: a caller does not look there. Below the lowest, e^(-eta) P = A(theta) + B(theta) e^eta, exact to e^(2 eta).
+ * Fills `out` at `at` to second order with (3,0), (2,1), (1,2) (order 2), or all of it (order 3). Above the highest eta
+ * the last cell is continued: a caller does not look there. Below the lowest, e^(-eta) P = A(theta) + B(theta) e^eta,
+ * exact to e^(2 eta).
  */
 export function fillSpeciesSurface(surface: SpeciesSurface, order: number): void {
   const { eta, at } = surface;
@@ -156,10 +164,12 @@ function continueClassical({ at, out }: SpeciesSurface): void {
   const c = out[L10]! - 1;
   const cy = out[L11]!;
   const cyy = out[L12]!;
+  const cyyy = out[L13]!;
   const rest = 1 + growth;
   out[L00]! += below + c * growth;
   out[L01]! += cy * growth;
   out[L02]! += cyy * growth;
+  out[L03]! += cyyy * growth;
   out[L10] = 1 + c * rest;
   out[L11] = cy * rest;
   out[L12] = cyy * rest;
@@ -172,48 +182,55 @@ function continueClassical({ at, out }: SpeciesSurface): void {
 }
 
 function fillCell(surface: SpeciesSurface, order: number): void {
-  const { eta, y, nodes, at, out, basisE, basisY, rows } = surface;
+  const { eta, y, nodes, at, out, rows } = surface;
+  const basisE = surface.basisE.values;
+  const basisY = surface.basisY.values;
   const i = cellOf(eta, at, 0);
   const j = cellOf(y, at, 1);
-  fillCellBasis(basisE, eta.nodes, i, at, 0);
-  fillCellBasis(basisY, y.nodes, j, at, 1);
-  const stride = 9 * y.nodes.length;
-  const first = i * stride + 9 * j;
-  const deepest = order === 3 ? 4 : 3;
-  // Values count from one corner and slopes from the near end, so that the factors 1/h^2 of the curvature meet no rounding of
-  // the large linear part.
+  const depth = order === 3 ? 4 : 3;
+  fillCellBasis(surface.basisE, eta.nodes, i, at, 0, depth + 1);
+  fillCellBasis(surface.basisY, y.nodes, j, at, 1, depth);
+  const stride = NODE_LENGTH * y.nodes.length;
+  const first = i * stride + NODE_LENGTH * j;
+  // Values count from one corner and slopes from the near end, so that the factors 1/h^2 of the curvature meet no
+  // rounding of the large linear part.
   const corner = nodes[first]!;
   const hy = y.nodes[j + 1]! - y.nodes[j]!;
   const he = eta.nodes[i + 1]! - eta.nodes[i]!;
   const dy = at[1]! - y.nodes[j]!;
   const de = at[0]! - eta.nodes[i]!;
-  for (let row = 0; row < 6; row++) {
-    const k = row < 3 ? first + 3 * row : first + stride + 3 * (row - 3);
-    const near = row === 0 || row === 3 ? nodes[k]! - corner : nodes[k]!;
-    const slope = nodes[k + 1]!;
-    const rise = nodes[k + 9]! - nodes[k]! - slope * hy;
-    const turn = nodes[k + 10]! - slope;
-    for (let d = 0; d < deepest; d++) {
-      const b = 6 * d;
-      rows[b + row] =
-        (d === 0 ? near + slope * dy : d === 1 ? slope : 0) +
-        (basisY[b + 3]! * rise +
-          basisY[b + 2]! * nodes[k + 2]! +
-          basisY[b + 4]! * turn +
-          basisY[b + 5]! * nodes[k + 11]!);
+  for (let row = 0; row < ROWS; row++) {
+    const near = first + (row < WIDTH ? row : row - WIDTH) * WIDTH + (row < WIDTH ? 0 : stride);
+    const far = near + NODE_LENGTH;
+    const value = row === 0 || row === WIDTH ? nodes[near]! - corner : nodes[near]!;
+    const slope = nodes[near + 1]!;
+    const rise = nodes[far]! - nodes[near]! - slope * hy;
+    const turn = nodes[far + 1]! - slope;
+    for (let d = 0, b = 0; d < depth; d++, b += ROWS) {
+      let sum = 0;
+      for (let k = WIDTH - 1; k > 1; k--) {
+        sum += basisY[b + k]! * nodes[near + k]! + basisY[b + WIDTH + k]! * nodes[far + k]!;
+      }
+      sum += basisY[b + WIDTH + 1]! * turn;
+      sum += basisY[b + WIDTH]! * rise;
+      rows[b + row] = sum + (d === 0 ? value + slope * dy : d === 1 ? slope : 0);
     }
   }
   const count = order === 3 ? SPECIES_SURFACE_LENGTH : 9;
   for (let slot = 0; slot < count; slot++) {
-    const b = 6 * orderI[slot]!;
-    const r = 6 * orderJ[slot]!;
-    const near = rows[r]!;
+    const b = ROWS * orderI[slot]!;
+    const r = ROWS * orderJ[slot]!;
+    const value = rows[r]!;
     const slope = rows[r + 1]!;
-    const rise = rows[r + 3]! - near - slope * he;
-    const turn = rows[r + 4]! - slope;
-    out[slot] =
-      (b === 0 ? near + slope * de : b === 6 ? slope : 0) +
-      (basisE[b + 3]! * rise + basisE[b + 2]! * rows[r + 2]! + basisE[b + 4]! * turn + basisE[b + 5]! * rows[r + 5]!);
+    const rise = rows[r + WIDTH]! - value - slope * he;
+    const turn = rows[r + WIDTH + 1]! - slope;
+    let sum = 0;
+    for (let k = WIDTH - 1; k > 1; k--) {
+      sum += basisE[b + k]! * rows[r + k]! + basisE[b + WIDTH + k]! * rows[r + WIDTH + k]!;
+    }
+    sum += basisE[b + WIDTH + 1]! * turn;
+    sum += basisE[b + WIDTH]! * rise;
+    out[slot] = sum + (b === 0 ? value + slope * de : b === ROWS ? slope : 0);
   }
   out[L00]! += corner;
 }

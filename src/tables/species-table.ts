@@ -1,12 +1,19 @@
 /**
- * What a species table holds: the pressure of electrons alone over degeneracy and temperature, from which the gas of electrons
- * and positrons follows at any composition. Plain data, for export.
+ * What a species table holds: the pressure of electrons alone over degeneracy and temperature, from which the gas of
+ * electrons and positrons follows at any composition. Plain data, for export.
  *
  *     P(eta, theta) = electronPressureUnit exp L(eta, ln theta)      dyn/cm^2,    theta = kT/(m_e c^2)
  *
- * Positrons are the same function at -eta - 2/theta, so the onset of pairs is nowhere in the table. Below its lowest eta the gas
- * is classical, L + d + (L_eta - 1)(e^d - 1) with d = eta - lowest; above its highest Sommerfeld's series is exact.
+ * Positrons are the same function at -eta - 2/theta, so the onset of pairs is nowhere in the table. Below its lowest
+ * eta the gas is classical, L + d + (L_eta - 1)(e^d - 1) with d = eta - lowest; above its highest Sommerfeld's series
+ * is exact. Between nodes L is the polynomial of degree 13 in either variable that has the derivatives of the four
+ * nodes.
  */
+
+/** Highest derivative by each variable at a node. */
+export const NODE_ORDER = 6;
+/** Numbers of a node. */
+export const NODE_LENGTH = 49;
 
 /** Quantities whose error the certificate of a species table states. */
 export type SpeciesQuantity =
@@ -18,21 +25,32 @@ export type SpeciesQuantity =
   | "compressibility"
   | "pressureByTemperature";
 
+/** Their names. */
+export const speciesQuantities: readonly SpeciesQuantity[] = [
+  "pressure",
+  "numberDensity",
+  "entropy",
+  "densityByDegeneracy",
+  "heatCapacity",
+  "compressibility",
+  "pressureByTemperature",
+];
+
 /** The error of one quantity over a species table. */
 export interface SpeciesError {
   /** Twice the largest error measured. */
   readonly bound: number;
   /** Largest error measured. */
   readonly largest: number;
-  /** Half of the places have a smaller error. */
+  /** On half of the area in eta and ln theta the error is below. */
   readonly median: number;
   /** Where the largest one was found: eta, and temperature in K. */
   readonly worst: readonly [degeneracy: number, temperature: number];
 }
 
 /**
- * How far the gas of electrons alone is from its integrals, relative, measured in every cell. heatCapacity is that at constant
- * volume, compressibility n dP/dn, pressureByTemperature T dP/dT at constant density.
+ * How far the gas of electrons alone is from its integrals, relative, measured all over the table. heatCapacity is that
+ * at constant volume, compressibility n dP/dn, pressureByTemperature T dP/dT at constant density.
  */
 export interface SpeciesCertificate {
   /** Number of places measured. */
@@ -44,13 +62,14 @@ export interface SpeciesCertificate {
 /** A table of ln P of electrons alone. */
 export interface SpeciesTable {
   /** Version of this layout. */
-  readonly layout: 1;
+  readonly layout: 2;
   /** Nodes of eta = (mu - m_e c^2)/kT, increasing. */
   readonly degeneracy: Float64Array;
   /** Nodes of ln theta = ln(kT/m_e c^2), increasing. */
   readonly logTheta: Float64Array;
   /**
-   * Nine numbers a node, 3 i + j: d^(i+j) L/(d eta^i d ln theta^j), i, j = 0..2. Node (i, j) starts at 9 (i logTheta.length + j).
+   * 49 numbers a node, 7 i + j: d^(i+j) L/(d eta^i d ln theta^j), i, j = 0..6. Node (k, l) starts at 49 (k
+   * logTheta.length + l).
    */
   readonly nodes: Float64Array;
   /** m_e c^2/k, K: what T is divided by. */

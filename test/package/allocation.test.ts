@@ -10,11 +10,11 @@ function bytesPerPoint(
   temperature: [number, number],
   density: [number, number],
   coulomb: boolean,
-  what: "states" | "derivatives" | "table" = "states",
+  what: "states" | "derivatives" | "table" | "species table" = "states",
 ): number {
   const program = `
-    import { composition, derivativesEvaluator, whiteDwarfMatter } from "./dist/index.js";
-    import { buildTable, tableEquationOfState } from "./dist/tables.js";
+    import { combine, composition, derivativesEvaluator, whiteDwarfMatter } from "./dist/index.js";
+    import { buildSpeciesTable, buildTable, speciesTableContribution, tableEquationOfState } from "./dist/tables.js";
     let seed = 7;
     const random = () => (seed = (seed * 48271) % 2147483647) / 2147483647;
     const count = 100_000;
@@ -28,7 +28,10 @@ function bytesPerPoint(
     };
     const direct = whiteDwarfMatter({ coulomb: ${coulomb} });
     const region = { density: [1e5, 1e9], temperature: [1e6, 1e9], accuracy: 1e-3 };
-    const eos = ${what === "table"} ? tableEquationOfState(buildTable(direct, input.composition, region)) : direct;
+    const eos = {
+      "table": () => tableEquationOfState(buildTable(direct, input.composition, region)),
+      "species table": () => combine(speciesTableContribution(buildSpeciesTable())),
+    }[${JSON.stringify(what)}]?.() ?? direct;
     const jacobian = derivativesEvaluator(eos, {
       of: ["pressure", "temperature", "gamma1", "heatCapacityV", "soundSpeed"],
       by: ["density", "specificEnergy"],
@@ -46,6 +49,12 @@ test.each<[string, [number, number], [number, number], boolean]>([
   ["Coulomb plasma, liquid and crystal", [6, 9], [5, 9], true],
 ])("%s: less than half a byte per point", (_name, temperature, density, coulomb) => {
   const bytes = bytesPerPoint(temperature, density, coulomb);
+  expect(bytes).toBeGreaterThanOrEqual(0);
+  expect(bytes).toBeLessThan(halfAByte);
+});
+
+test("a table of the electrons alone, whole plane: less than half a byte per point", () => {
+  const bytes = bytesPerPoint([5.1, 12.9], [-15, 13], false, "species table");
   expect(bytes).toBeGreaterThanOrEqual(0);
   expect(bytes).toBeLessThan(halfAByte);
 });
