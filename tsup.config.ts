@@ -125,10 +125,10 @@ export default defineConfig([
       compilerOptions: {
         ignoreDeprecations: "6.0", // tsup sets `baseUrl`, which TypeScript 6 calls deprecated
         types: ["node"], // for src/files and src/parallel only
-        // "npm run types" asks for these; a build need not stop at them.
+        // "npm run types" checks: every declaration states its type (isolatedDeclarations), so writing it needs no check,
+        // which would be half the time of a build.
+        noCheck: true,
         isolatedDeclarations: false,
-        noUnusedLocals: false,
-        noUnusedParameters: false,
       },
     },
   },

@@ -4,13 +4,14 @@
  * A look-up is the six members of the free energy up to second order at random places; "state" is twelve columns of
  * `evaluate`, which adds what every equation of state does. Shortest times of many slices, the two sides in turns.
  */
-import { execFileSync, spawn } from "node:child_process";
+import { execFileSync } from "node:child_process";
 import { mkdtempSync, rmSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { fileURLToPath } from "node:url";
 import { composition, whiteDwarfMatter } from "../dist/index.js";
 import { buildTable, tableBytes, tableEquationOfState, tabulated } from "../dist/tables.js";
+import { startProgram } from "./native/program.mjs";
 
 const matter = composition({ C12: 0.5, O16: 0.5 });
 const direct = whiteDwarfMatter();
@@ -132,23 +133,5 @@ function startNative(place) {
     file,
     new Uint8Array(Float64Array.of(...head, ...cold, ...blocks.flat(), ...nodes, ...density, ...temperature).buffer),
   );
-  const child = spawn(program, [file], { stdio: ["pipe", "pipe", "inherit"] });
-  const ask = (letter, expected) =>
-    new Promise((resolve, reject) => {
-      const bytes = new Uint8Array(8 * expected);
-      let filled = 0;
-      const ended = () => reject(new Error("the native program has ended"));
-      const take = (chunk) => {
-        bytes.set(chunk, filled);
-        filled += chunk.length;
-        if (filled < bytes.length) return;
-        child.stdout.off("data", take);
-        child.off("exit", ended);
-        resolve(new Float64Array(bytes.buffer));
-      };
-      child.stdout.on("data", take);
-      child.once("exit", ended);
-      child.stdin.write(letter);
-    });
-  return { ask, stop: () => child.stdin.end() };
+  return startProgram(program, [file]);
 }

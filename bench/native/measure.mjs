@@ -5,11 +5,11 @@
  * slices of the ratio of times and of either time per point in nanoseconds, the ratio of the shortest times (a busy neighbour
  * slows the two by different factors), and the time of one Math.exp.
  */
-import { spawn } from "node:child_process";
 import { writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { combine, composition, electronPositronGas, quantityNames, whiteDwarfMatter } from "../../dist/index.js";
 import { pointsOf, regions, usual } from "../regions.mjs";
+import { startProgram } from "./program.mjs";
 
 const [, , program, folder] = process.argv;
 /** Points per slice, about a millisecond: shorter than a slice of the scheduler. */
@@ -32,27 +32,7 @@ const sums = [
 
 const file = join(folder, `points-${process.pid}`);
 writeFileSync(file, new Uint8Array(Float64Array.of(...density, ...temperature).buffer));
-const child = spawn(program, [file, String(count)], { stdio: ["pipe", "pipe", "inherit"] });
-
-/** Sends a letter, returns the doubles that answer it. */
-function ask(letter, expected) {
-  return new Promise((resolve, reject) => {
-    const bytes = new Uint8Array(8 * expected);
-    let filled = 0;
-    const ended = () => reject(new Error("the native program has ended"));
-    const take = (chunk) => {
-      bytes.set(chunk, filled);
-      filled += chunk.length;
-      if (filled < bytes.length) return;
-      child.stdout.off("data", take);
-      child.off("exit", ended);
-      resolve(new Float64Array(bytes.buffer));
-    };
-    child.stdout.on("data", take);
-    child.once("exit", ended);
-    child.stdin.write(letter);
-  });
-}
+const { ask, stop } = startProgram(program, [file, String(count)]);
 
 /** The size of the terms whose sum a quantity is; what is not listed is no difference, or harmless as one. */
 const scales = {
@@ -130,5 +110,5 @@ for (const sum of sums) {
     difference: worst.difference,
   });
 }
-child.stdin.end();
+stop();
 process.stdout.write(JSON.stringify(results));

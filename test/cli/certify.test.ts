@@ -2,25 +2,9 @@
 import { composition, whiteDwarfMatter } from "fermistate";
 import { certificateCsv, certify } from "fermistate/certify";
 import { expect, test } from "vitest";
-import { run } from "../../src/cli/run.js";
+import { commandLine } from "./command-line.js";
 
-async function command(line: string, isTerminal = false): Promise<{ code: number; out: string; err: string }> {
-  let out = "";
-  let err = "";
-  const io = {
-    out: (text: string) => {
-      out += text;
-      return true;
-    },
-    err: (text: string) => {
-      err += text;
-    },
-    isTerminal,
-    cwd: ".",
-  };
-  const code = await run(line.split(" "), io);
-  return { code, out, err };
-}
+const command = commandLine();
 
 const core = composition({ C12: 0.5, O16: 0.5 });
 const matter = "--composition C12=0.5,O16=0.5";

@@ -6,7 +6,7 @@ import { composition, whiteDwarfMatter } from "fermistate";
 import { compare, comparisonCsv, comparisonMap, comparisonText } from "fermistate/compare";
 import { logarithmicAxis } from "fermistate/grids";
 import { afterEach, beforeEach, describe, expect, test } from "vitest";
-import { run } from "../../src/cli/run.js";
+import { commandLine } from "./command-line.js";
 
 let cwd = "";
 beforeEach(() => {
@@ -14,22 +14,7 @@ beforeEach(() => {
 });
 afterEach(() => rmSync(cwd, { recursive: true, force: true }));
 
-async function command(line: string, isTerminal = false): Promise<{ code: number; out: string; err: string }> {
-  let out = "";
-  let err = "";
-  const io = {
-    out: (text: string) => {
-      out += text;
-      return true;
-    },
-    err: (text: string) => {
-      err += text;
-    },
-    isTerminal,
-    cwd,
-  };
-  return { code: await run(line.split(" "), io), out, err };
-}
+const command = commandLine(() => cwd);
 
 const region = "--density 1e5..1e8,6-points --temperature 1e7..1e9,4-points --composition C12=1";
 const found = compare(whiteDwarfMatter({ radiation: false }), whiteDwarfMatter({ coulomb: { exchange: false } }), {

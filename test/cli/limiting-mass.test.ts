@@ -2,25 +2,9 @@
 import { composition } from "fermistate";
 import { limitingMassLadder } from "fermistate/structure";
 import { expect, test } from "vitest";
-import { run } from "../../src/cli/run.js";
+import { commandLine } from "./command-line.js";
 
-async function command(line: string): Promise<{ code: number; out: string; err: string }> {
-  let out = "";
-  let err = "";
-  const io = {
-    out: (text: string) => {
-      out += text;
-      return true;
-    },
-    err: (text: string) => {
-      err += text;
-    },
-    isTerminal: false,
-    cwd: ".",
-  };
-  const code = await run(line.split(" "), io);
-  return { code, out, err };
-}
+const command = commandLine();
 
 test("a table with a line per rung, and what each assumes", async () => {
   const rungs = limitingMassLadder(composition({ C12: 0.5, O16: 0.5 }), { temperature: 1e7 });

@@ -1,15 +1,25 @@
 /** The program itself, as a process: exit codes, streams, and readers that go away. */
 import { spawnSync } from "node:child_process";
-import { mkdtempSync, readdirSync, rmSync } from "node:fs";
+import { mkdirSync, mkdtempSync, readdirSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { fileURLToPath } from "node:url";
-import { afterAll, expect, test } from "vitest";
+import { build } from "esbuild";
+import { afterAll, beforeAll, expect, test } from "vitest";
 
-const path = (name: string): string => fileURLToPath(new URL(`../../${name}`, import.meta.url));
-const program = `"${process.execPath}" --import "${path("node_modules/tsx/dist/loader.mjs")}" "${path("src/cli/main.ts")}"`;
+const root = fileURLToPath(new URL("../..", import.meta.url));
+mkdirSync(`${root}.cache`, { recursive: true });
+/** The program bundled from the sources, where Node finds its packages. */
+const bundle = mkdtempSync(join(`${root}.cache`, "program-"));
+const program = `"${process.execPath}" "${join(bundle, "main.mjs")}"`;
 const cwd = mkdtempSync(join(tmpdir(), "fermistate-program-"));
-afterAll(() => rmSync(cwd, { recursive: true, force: true }));
+beforeAll(async () => {
+  const options = { bundle: true, format: "esm", platform: "node", packages: "external", logLevel: "silent" } as const;
+  await build({ ...options, entryPoints: [`${root}src/cli/main.ts`], outfile: join(bundle, "main.mjs") });
+});
+afterAll(() => {
+  for (const folder of [bundle, cwd]) rmSync(folder, { recursive: true, force: true });
+});
 
 /** Runs a line of the shell in which $F is the program; `status` is that of the line. */
 function shell(line: string): { status: number | null; stdout: string; stderr: string } {

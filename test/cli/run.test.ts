@@ -21,6 +21,7 @@ import { gridToParquet } from "fermistate/table-files";
 import { afterEach, beforeEach, describe, expect, test } from "vitest";
 import { commands, run } from "../../src/cli/run.js";
 import { libraryVersion } from "../../src/version.js";
+import { commandLine } from "./command-line.js";
 
 let cwd = "";
 beforeEach(() => {
@@ -28,27 +29,7 @@ beforeEach(() => {
 });
 afterEach(() => rmSync(cwd, { recursive: true, force: true }));
 
-/** Runs a line of arguments separated by blanks, or a list of them. */
-async function command(
-  line: string | readonly string[],
-  isTerminal = false,
-): Promise<{ code: number; out: string; err: string }> {
-  let out = "";
-  let err = "";
-  const io = {
-    out: (text: string) => {
-      out += text;
-      return true;
-    },
-    err: (text: string) => {
-      err += text;
-    },
-    isTerminal,
-    cwd,
-  };
-  const code = await run(typeof line === "string" ? line.split(" ").filter((word) => word !== "") : line, io);
-  return { code, out, err };
-}
+const command = commandLine(() => cwd);
 
 const read = (name: string): string => readFileSync(join(cwd, name), "utf8");
 const matter = whiteDwarfMatter();

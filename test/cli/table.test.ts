@@ -6,7 +6,7 @@ import { composition, whiteDwarfMatter } from "fermistate";
 import { tableFromHdf5, tableToHdf5 } from "fermistate/table-files";
 import { buildTable, tableEquationOfState } from "fermistate/tables";
 import { afterAll, beforeAll, expect, test } from "vitest";
-import { run } from "../../src/cli/run.js";
+import { commandLine } from "./command-line.js";
 
 let cwd: string;
 beforeAll(() => {
@@ -14,23 +14,7 @@ beforeAll(() => {
 });
 afterAll(() => rmSync(cwd, { recursive: true, force: true }));
 
-async function command(line: string, isTerminal = false): Promise<{ code: number; out: string; err: string }> {
-  let out = "";
-  let err = "";
-  const io = {
-    out: (text: string) => {
-      out += text;
-      return true;
-    },
-    err: (text: string) => {
-      err += text;
-    },
-    isTerminal,
-    cwd,
-  };
-  const code = await run(line.split(" "), io);
-  return { code, out, err };
-}
+const command = commandLine(() => cwd);
 
 const asked = "table --density 1e5..1e7 --temperature 1e7..1e8 --composition C12=1 --accuracy 1e-3";
 const matter = composition({ C12: 1 });

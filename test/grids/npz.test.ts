@@ -23,7 +23,7 @@ import { crc32 } from "../../src/grids/bytes.js";
 
 const text = (words: string): Uint8Array => Uint8Array.from(words, (one) => one.charCodeAt(0));
 const joined = (...parts: readonly (Uint8Array | readonly number[])[]): Uint8Array =>
-  Uint8Array.from(parts.flatMap((part) => [...part]));
+  new Uint8Array(Buffer.concat(parts.map((part) => Uint8Array.from(part))));
 const little = (value: number, bytes: number): number[] =>
   Array.from({ length: bytes }, (_, i) => Math.floor(value / 256 ** i) % 256);
 

@@ -1,11 +1,11 @@
 /** The batch form and the evaluator allocate nothing per point: heap statistics of the built library in a process of its own. */
-import { execFileSync } from "node:child_process";
-import { fileURLToPath } from "node:url";
 import { expect, test } from "vitest";
+import { numbersOf } from "./heap-growth.js";
 
-const root = fileURLToPath(new URL("../..", import.meta.url));
+/** One boxed number per point would be 16 bytes; bookkeeping per call is 0.1. */
+const halfAByte = 0.5;
 
-/** Bytes of heap per point of a batch after warming up; the young generation is large enough to collect nothing. */
+/** Bytes of heap per point of a batch. */
 function bytesPerPoint(
   temperature: [number, number],
   density: [number, number],
@@ -13,7 +13,6 @@ function bytesPerPoint(
   what: "states" | "derivatives" | "table" | "species table" = "states",
 ): number {
   const program = `
-    import v8 from "node:v8";
     import { combine, composition, derivativesEvaluator, whiteDwarfMatter } from "./dist/index.js";
     import { buildSpeciesTable, buildTable, speciesTableContribution, tableEquationOfState } from "./dist/tables.js";
     let seed = 7;
@@ -39,16 +38,8 @@ function bytesPerPoint(
     });
     const slopes = { pressure: { density: new Float64Array(count) }, gamma1: { specificEnergy: new Float64Array(count) } };
     const evaluate = ${what === "derivatives" ? "() => jacobian.evaluate(input, slopes)" : "() => eos.evaluate(input, output)"};
-    for (let i = 0; i < 8; i++) evaluate();
-    const least = [];
-    for (let i = 0; i < 5; i++) {
-      const before = v8.getHeapStatistics().used_heap_size;
-      evaluate();
-      least.push((v8.getHeapStatistics().used_heap_size - before) / count);
-    }
-    console.log(Math.min(...least.filter((bytes) => bytes >= 0)));`;
-  const options = ["--max-semi-space-size=64", "--min-semi-space-size=64", "--input-type=module", "-e", program];
-  return Number(execFileSync(process.execPath, options, { cwd: root, encoding: "utf8" }));
+    console.log(bytesPerItem(evaluate, count, ${halfAByte}));`;
+  return numbersOf(program);
 }
 
 test.each<[string, [number, number], [number, number], boolean]>([
@@ -59,25 +50,24 @@ test.each<[string, [number, number], [number, number], boolean]>([
 ])("%s: less than half a byte per point", (_name, temperature, density, coulomb) => {
   const bytes = bytesPerPoint(temperature, density, coulomb);
   expect(bytes).toBeGreaterThanOrEqual(0);
-  expect(bytes).toBeLessThan(0.5); // one boxed number per point would be 16; bookkeeping per call is 0.1
+  expect(bytes).toBeLessThan(halfAByte);
 });
 
 test("a table of the electrons alone, whole plane: less than half a byte per point", () => {
   const bytes = bytesPerPoint([5.1, 12.9], [-15, 13], false, "species table");
   expect(bytes).toBeGreaterThanOrEqual(0);
-  expect(bytes).toBeLessThan(0.5);
+  expect(bytes).toBeLessThan(halfAByte);
 });
 
 test("a table of the Coulomb plasma: less than half a byte per point", () => {
   const bytes = bytesPerPoint([6, 9], [5, 9], true, "table");
   expect(bytes).toBeGreaterThanOrEqual(0);
-  expect(bytes).toBeLessThan(0.5);
+  expect(bytes).toBeLessThan(halfAByte);
 });
 
 /** The same of a loop over an evaluator that asks for the derivatives by every species. */
 function bytesPerCall(temperature: [number, number], coulomb: boolean): number {
   const program = `
-    import v8 from "node:v8";
     import { composition, whiteDwarfMatter } from "./dist/index.js";
     let seed = 7;
     const random = () => (seed = (seed * 48271) % 2147483647) / 2147483647;
@@ -99,17 +89,10 @@ function bytesPerCall(temperature: [number, number], coulomb: boolean): number {
         for (let j = 0; j < 12; j++) sums[j] += rows[j];
       }
     }
-    for (let i = 0; i < 8; i++) loop();
-    const least = [];
-    for (let i = 0; i < 5; i++) {
-      const before = v8.getHeapStatistics().used_heap_size;
-      loop();
-      least.push((v8.getHeapStatistics().used_heap_size - before) / count);
-    }
+    const bytes = bytesPerItem(loop, count, ${halfAByte});
     if (!sums.every(Number.isFinite)) throw new Error("nothing computed");
-    console.log(Math.min(...least.filter((bytes) => bytes >= 0)));`;
-  const options = ["--max-semi-space-size=64", "--min-semi-space-size=64", "--input-type=module", "-e", program];
-  return Number(execFileSync(process.execPath, options, { cwd: root, encoding: "utf8" }));
+    console.log(bytes);`;
+  return numbersOf(program);
 }
 
 test.each<[string, [number, number], boolean]>([
@@ -118,7 +101,7 @@ test.each<[string, [number, number], boolean]>([
 ])("%s, by species of two compositions in turn: less than half a byte per point", (_name, temperature, coulomb) => {
   const bytes = bytesPerCall(temperature, coulomb);
   expect(bytes).toBeGreaterThanOrEqual(0);
-  expect(bytes).toBeLessThan(0.5);
+  expect(bytes).toBeLessThan(halfAByte);
 });
 
 test.each<[string, string]>([
@@ -129,7 +112,6 @@ test.each<[string, string]>([
   ["pressure, specificEnergy", "guesses"],
 ])("solveColumns, %s, from %s: not one boxed number per row", (pair, start) => {
   const program = `
-    import v8 from "node:v8";
     import { composition, solveColumns, whiteDwarfMatter } from "./dist/index.js";
     const count = 6000;
     const wave = (i, k) => 1 + 0.3 * Math.sin((i * k) / 40);
@@ -155,8 +137,7 @@ test.each<[string, string]>([
       if (bytes >= 0) least = Math.min(least, bytes);
     }
     console.log(least);`;
-  const options = ["--max-semi-space-size=64", "--min-semi-space-size=64", "--input-type=module", "-e", program];
-  const bytes = Number(execFileSync(process.execPath, options, { cwd: root, encoding: "utf8" }));
+  const bytes = numbersOf<number>(program);
   expect(bytes).toBeGreaterThanOrEqual(0);
   expect(bytes).toBeLessThan(8); // measured 0.3 to 6, on paths few rows take; one number per row would be 16
 });
@@ -164,26 +145,18 @@ test.each<[string, string]>([
 test("derivatives by two variables, ideal plasma: less than half a byte per point", () => {
   const bytes = bytesPerPoint([6, 9], [2, 10], false, "derivatives");
   expect(bytes).toBeGreaterThanOrEqual(0);
-  expect(bytes).toBeLessThan(0.5);
+  expect(bytes).toBeLessThan(halfAByte);
 });
 
 test("a star of 1500 evaluations leaves less than five bytes for each: the star itself and its ranges, no boxed numbers", () => {
+  const limit = 7500; // measured 4600; one number per evaluation would add 24 000
   const program = `
-    import v8 from "node:v8";
     import { polytrope } from "./dist/barotropes.js";
     import { massRadiusSequence } from "./dist/structure.js";
     const matter = polytrope({ constant: 3e12, index: 1.5 });
     const options = { centralDensities: new Float64Array(200).fill(1e5), tolerance: 1e-13, rotation: true, tides: true };
-    for (let i = 0; i < 6; i++) massRadiusSequence(matter, options);
-    const least = [];
-    for (let i = 0; i < 5; i++) {
-      const before = v8.getHeapStatistics().used_heap_size;
-      massRadiusSequence(matter, options);
-      least.push((v8.getHeapStatistics().used_heap_size - before) / 200);
-    }
-    console.log(Math.min(...least.filter((bytes) => bytes >= 0)));`;
-  const options = ["--max-semi-space-size=64", "--min-semi-space-size=64", "--input-type=module", "-e", program];
-  const bytes = Number(execFileSync(process.execPath, options, { cwd: root, encoding: "utf8" }));
+    console.log(bytesPerItem(() => massRadiusSequence(matter, options), 200, ${limit}));`;
+  const bytes = numbersOf<number>(program);
   expect(bytes).toBeGreaterThan(0);
-  expect(bytes).toBeLessThan(7500); // measured 4600; one number per evaluation would add 24 000
+  expect(bytes).toBeLessThan(limit);
 });

@@ -1,13 +1,11 @@
 /** The equation of state of given columns allocates nothing per point, to third order: heap statistics of the built library. */
-import { execFileSync } from "node:child_process";
-import { fileURLToPath } from "node:url";
 import { expect, test } from "vitest";
+import { numbersOf } from "./heap-growth.js";
 
-const root = fileURLToPath(new URL("../..", import.meta.url));
+const limit = 0.5; // bytes; one boxed number per point would be 16
 
 test.each([2, 3])("order %i: less than half a byte per point", (order) => {
   const program = `
-    import v8 from "node:v8";
     import { combine, composition, idealIons } from "./dist/index.js";
     import { equationOfStateFromColumns } from "./dist/tables.js";
     const helium = composition({ He4: 1 });
@@ -32,16 +30,8 @@ test.each([2, 3])("order %i: less than half a byte per point", (order) => {
         fillMembers(helium, ${order});
       }
     };
-    for (let i = 0; i < 8; i++) evaluate();
-    const least = [];
-    for (let i = 0; i < 5; i++) {
-      const before = v8.getHeapStatistics().used_heap_size;
-      evaluate();
-      least.push((v8.getHeapStatistics().used_heap_size - before) / count);
-    }
-    console.log(Math.min(...least.filter((bytes) => bytes >= 0)));`;
-  const options = ["--max-semi-space-size=64", "--min-semi-space-size=64", "--input-type=module", "-e", program];
-  const bytes = Number(execFileSync(process.execPath, options, { cwd: root, encoding: "utf8" }));
+    console.log(bytesPerItem(evaluate, count, ${limit}));`;
+  const bytes = numbersOf<number>(program);
   expect(bytes).toBeGreaterThanOrEqual(0);
-  expect(bytes).toBeLessThan(0.5); // one boxed number per point would be 16
+  expect(bytes).toBeLessThan(limit);
 });

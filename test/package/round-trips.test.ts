@@ -7,7 +7,7 @@ import type { Given, GivenName, State } from "../../src/index.js";
 import { generator, randomStates } from "../inverse/domain.js";
 import { pairs } from "../inverse/pairs.js";
 
-/** The built library: the sources take eight times as long under the test runner, and this is half a million questions. */
+/** The built library: the sources take twice as long under the test runner, and this is half a million questions. */
 const library = (await import(
   new URL("../../dist/index.js", import.meta.url).href
 )) as typeof import("../../src/index.js");
