@@ -31,8 +31,8 @@ export const usual = [
   "specificEnergy",
   "specificEntropy",
   "heatCapacityV",
-  "chiRho",
-  "chiT",
+  "densityExponent",
+  "temperatureExponent",
   "gamma1",
   "soundSpeed",
 ];

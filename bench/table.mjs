@@ -34,7 +34,15 @@ const temperature = density.map((rho) => {
   const low = Math.max(1e6, 1.001 * factor * Math.cbrt(rho));
   return low * (1e9 / low) ** random();
 });
-const names = ["pressure", "specificEnergy", "specificEntropy", "heatCapacityV", "heatCapacityP", "chiRho", "chiT"];
+const names = [
+  "pressure",
+  "specificEnergy",
+  "specificEntropy",
+  "heatCapacityV",
+  "heatCapacityP",
+  "densityExponent",
+  "temperatureExponent",
+];
 names.push("gamma1", "adiabaticGradient", "soundSpeed", "pressureByDensity", "pressureByTemperature");
 const output = Object.fromEntries(names.map((name) => [name, new Float64Array(count)]));
 const point = new Float64Array(16);

@@ -23,7 +23,7 @@ test("P = e/3, s = 4 e/(3 T), gamma_1 = 4/3, nabla_ad = 1/4, F = -P/rho, nothing
   expect(Math.abs((-state.specificFreeEnergy * 1e-3) / state.pressure - 1)).toBeLessThan(1e-15);
   expect(state.gamma1).toBeCloseTo(4 / 3, 15);
   expect(state.adiabaticGradient).toBeCloseTo(0.25, 15);
-  expect(state.chiRho).toBe(0);
+  expect(state.densityExponent).toBe(0);
   expect(state.radiationPressureFraction).toBe(1);
   const f = photons.freeEnergy(1e-3, 3e6, hydrogen, 3);
   // F = -a T^4/(3 rho): scaled derivatives are falling factorials, (-1)(-2)... times 4*3*2....

@@ -38,7 +38,7 @@ const { ask, stop } = startProgram(program, [file, String(count)]);
 const scales = {
   specificFreeEnergy: (of) => Math.abs(of.specificEnergy) + Math.abs(of.specificEnergy - of.specificFreeEnergy),
   energyByDensity: (of) =>
-    (Math.abs(of.pressure) / of.density + Math.abs(of.chiT * of.pressure) / of.density) / of.density,
+    (Math.abs(of.pressure) / of.density + Math.abs(of.temperatureExponent * of.pressure) / of.density) / of.density,
   // An exponential of -(eta + 2 m c^2/kT): the rounding of its argument counts.
   positronDensity: (of) =>
     of.positronDensity * Math.max(1, (of.electronDegeneracy + (2 * 5.93e9) / of.temperature) / 100),

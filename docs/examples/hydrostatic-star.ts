@@ -54,7 +54,8 @@ export function hydrostaticStar({ eos, matter, centralDensity, temperature, surf
     const { pressure, density: rho } = at(lnP);
     const dq = (-2 * pressure) / (gravitationalConstant * rho * v!);
     // At the centre v = 4 pi/3 (rho - 2/5 drho) so that dv/dlnP = (4 pi/5) drho/dlnP.
-    const dv = q === 0 ? (0.8 * Math.PI * rho) / centre.chiRho : 0.5 * dq * ((4 * Math.PI * rho - 3 * v!) / q!);
+    const dv =
+      q === 0 ? (0.8 * Math.PI * rho) / centre.densityExponent : 0.5 * dq * ((4 * Math.PI * rho - 3 * v!) / q!);
     return [dq, dv];
   };
 

@@ -28,7 +28,7 @@ export interface CertifyOptions {
   readonly digits?: number;
   /**
    * Quantities of a state, or natural derivatives of the free energy up to `fRRTT`.
-   * @defaultValue pressure, specificEnergy, specificEntropy, specificFreeEnergy, heatCapacityV, chiRho, chiT, gamma1, gamma3,
+   * @defaultValue pressure, specificEnergy, specificEntropy, specificFreeEnergy, heatCapacityV, densityExponent, temperatureExponent, gamma1, gamma3,
    * adiabaticGradient, soundSpeed
    */
   readonly quantities?: readonly CertifiedQuantity[];

@@ -79,8 +79,8 @@ export function referenceQuantities(
       const value = sumOf(f, at);
       const isLimit = state.cold !== undefined && (name === "specificEntropy" || name === "entropyByTemperature");
       found.set(name, { value, scale: isLimit ? undefined : absolute((part) => sumOf(part, at)) });
-    } else if (name === "chiRho" || name === "chiT") {
-      const numerator = name === "chiRho" ? linear.pressureByDensity! : (g: readonly Decimal[]) => g[4]!;
+    } else if (name === "densityExponent" || name === "temperatureExponent") {
+      const numerator = name === "densityExponent" ? linear.pressureByDensity! : (g: readonly Decimal[]) => g[4]!;
       const scale = absolute((part) => numerator(part, at)).div(f[1]!.abs());
       found.set(name, { value: numerator(f, at).div(f[1]!), scale });
     } else {

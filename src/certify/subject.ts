@@ -66,7 +66,7 @@ export function uncertifiedTerms(
 /** Quantities certified unless others are asked for. */
 const defaultQuantities: readonly CertifiedQuantity[] = [
   ...(["pressure", "specificEnergy", "specificEntropy", "specificFreeEnergy", "heatCapacityV"] as const),
-  ...(["chiRho", "chiT", "gamma1", "gamma3", "adiabaticGradient", "soundSpeed"] as const),
+  ...(["densityExponent", "temperatureExponent", "gamma1", "gamma3", "adiabaticGradient", "soundSpeed"] as const),
 ];
 
 /** Checked names of quantities. */

@@ -58,8 +58,8 @@ const groups: readonly (readonly [title: string, names: readonly QuantityName[]]
     [
       "heatCapacityV",
       "heatCapacityP",
-      "chiRho",
-      "chiT",
+      "densityExponent",
+      "temperatureExponent",
       "gamma1",
       "gamma2",
       "gamma3",

@@ -21,11 +21,11 @@ const relations: Readonly<Record<ConsistencyName, string>> = {
   maxwell: "ds/drho = -(dP/dT)/rho^2",
   "first-law-density": "de/drho = P/rho^2 + T ds/drho",
   "first-law-temperature": "de/dT = T ds/dT",
-  chiRho: "chiRho = d ln P/d ln rho",
-  chiT: "chiT = d ln P/d ln T",
+  densityExponent: "densityExponent = d ln P/d ln rho",
+  temperatureExponent: "temperatureExponent = d ln P/d ln T",
   heatCapacityV: "c_v = de/dT",
-  gamma1: "Gamma_1 = chiRho + chiT^2 P/(rho T c_v)",
-  adiabaticGradient: "gradient = chiT P/(rho T c_v Gamma_1)",
+  gamma1: "Gamma_1 = densityExponent + temperatureExponent^2 P/(rho T c_v)",
+  adiabaticGradient: "gradient = temperatureExponent P/(rho T c_v Gamma_1)",
 };
 
 const names = Object.keys(relations) as ConsistencyName[];
@@ -90,7 +90,7 @@ export function consistencyMeter(
       errors[name][row] = error === 0 ? 0 : error / scale;
     };
     const { density: rho, temperature: t, pressure: p, specificEnergy: e, specificFreeEnergy: f } = state;
-    const { chiRho, chiT, heatCapacityV, gamma1, adiabaticGradient } = state;
+    const { densityExponent, temperatureExponent, heatCapacityV, gamma1, adiabaticGradient } = state;
     const ts = t * state.specificEntropy;
     const specific = p / rho;
     const sizes = Math.max(Math.abs(f), Math.abs(e), Math.abs(ts));
@@ -105,13 +105,18 @@ export function consistencyMeter(
       set("pressure", specific - fu.value, fu.error, Math.abs(specific));
       const work = Math.max(Math.abs(eu.value), Math.abs(specific), Math.abs(t * su.value));
       set("first-law-density", eu.value - specific - t * su.value, eu.error + t * su.error, work);
-      set("chiRho", chiRho - pu.value / p, pu.error / Math.abs(p), Math.abs(chiRho));
+      set("densityExponent", densityExponent - pu.value / p, pu.error / Math.abs(p), Math.abs(densityExponent));
     }
     if (t === 0) return;
     const heat = t * heatCapacityV;
     if (heatCapacityV > 0) {
-      const grueneisen = (chiT * specific) / heat;
-      set("gamma1", gamma1 - chiRho - chiT * grueneisen, rounding * Math.abs(gamma1), Math.abs(gamma1));
+      const grueneisen = (temperatureExponent * specific) / heat;
+      set(
+        "gamma1",
+        gamma1 - densityExponent - temperatureExponent * grueneisen,
+        rounding * Math.abs(gamma1),
+        Math.abs(gamma1),
+      );
       const gradient = grueneisen / gamma1;
       set("adiabaticGradient", adiabaticGradient - gradient, rounding * Math.abs(gradient), Math.abs(gradient));
     }
@@ -121,7 +126,12 @@ export function consistencyMeter(
     response.heat = { value: ev.value / Math.abs(specific), error: ev.error / Math.abs(specific) };
     set("entropy", ts + fv.value, fv.error, Math.abs(ts));
     set("first-law-temperature", ev.value - t * sv.value, ev.error + t * sv.error, Math.abs(t * sv.value));
-    set("chiT", chiT - pv.value / p, pv.error / Math.abs(p), Math.abs(chiT));
+    set(
+      "temperatureExponent",
+      temperatureExponent - pv.value / p,
+      pv.error / Math.abs(p),
+      Math.abs(temperatureExponent),
+    );
     set("heatCapacityV", heat - ev.value, ev.error, Math.abs(heat));
     if (u === undefined) return;
     const { value, error } = u.specificEntropy;

@@ -16,7 +16,7 @@ export interface CompareOptions {
   readonly temperature: Axis | ArrayLike<number> | number;
   /**
    * Quantities to compare.
-   * @defaultValue pressure, specificEnergy, specificEntropy, heatCapacityV, chiRho, chiT, gamma1, adiabaticGradient, soundSpeed
+   * @defaultValue pressure, specificEnergy, specificEntropy, heatCapacityV, densityExponent, temperatureExponent, gamma1, adiabaticGradient, soundSpeed
    */
   readonly quantities?: readonly QuantityName[];
   /** What the two are called in texts and maps. @defaultValue "first" and "second" */
@@ -57,8 +57,8 @@ export const standardQuantities: readonly QuantityName[] = [
   "specificEnergy",
   "specificEntropy",
   "heatCapacityV",
-  "chiRho",
-  "chiT",
+  "densityExponent",
+  "temperatureExponent",
   "gamma1",
   "adiabaticGradient",
   "soundSpeed",

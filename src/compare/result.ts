@@ -138,8 +138,8 @@ export type ConsistencyName =
   | "maxwell"
   | "first-law-density"
   | "first-law-temperature"
-  | "chiRho"
-  | "chiT"
+  | "densityExponent"
+  | "temperatureExponent"
   | "heatCapacityV"
   | "gamma1"
   | "adiabaticGradient";

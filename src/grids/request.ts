@@ -16,7 +16,7 @@ export interface GridOptions {
   readonly temperature: Axis | ArrayLike<number> | number;
   /**
    * Quantities, in the order of the columns.
-   * @defaultValue pressure, specificEnergy, specificEntropy, heatCapacityV, chiRho, chiT, gamma1, adiabaticGradient,
+   * @defaultValue pressure, specificEnergy, specificEntropy, heatCapacityV, densityExponent, temperatureExponent, gamma1, adiabaticGradient,
    * soundSpeed and, where a contribution knows it, electronDegeneracy
    */
   readonly quantities?: readonly QuantityName[];

@@ -15,7 +15,7 @@ export function fillFromState(f: Float64Array, at: number, kind: number, state: 
   const stiffness = state.pressureByDensity;
   // d ln(dP/d ln rho)/d ln rho: of cold electrons, else as if P were a power of density.
   const speed2 = state.relativityParameter ** 2 / (1 + state.relativityParameter ** 2);
-  const exponent = state.chiT < 0.1 ? (5 - speed2) / 3 : state.chiRho;
+  const exponent = state.temperatureExponent < 0.1 ? (5 - speed2) / 3 : state.densityExponent;
   f[at + BY_UU] = 0;
   f[at + BY_UV] = 0;
   f[at + BY_VV] = 0;
@@ -24,8 +24,8 @@ export function fillFromState(f: Float64Array, at: number, kind: number, state: 
     f[at + BY_U] = byU("pressureByDensity");
     f[at + BY_V] = pressureByV;
     f[at + BY_UU] = exponent * f[at + BY_U]!;
-    f[at + BY_UV] = state.chiRho * pressureByV;
-    f[at + BY_VV] = state.chiT * pressureByV;
+    f[at + BY_UV] = state.densityExponent * pressureByV;
+    f[at + BY_VV] = state.temperatureExponent * pressureByV;
   } else if (kind === ENERGY_KIND) {
     f[at] = state.specificEnergy;
     f[at + BY_U] = byU("energyByDensity");

@@ -37,8 +37,8 @@ export type DifferentiableQuantity =
   | "specificFreeEnergy"
   | "heatCapacityV"
   | "heatCapacityP"
-  | "chiRho"
-  | "chiT"
+  | "densityExponent"
+  | "temperatureExponent"
   | "gamma1"
   | "gamma2"
   | "gamma3"
@@ -58,8 +58,8 @@ export const differentiable: readonly DifferentiableQuantity[] = [
   "specificFreeEnergy",
   "heatCapacityV",
   "heatCapacityP",
-  "chiRho",
-  "chiT",
+  "densityExponent",
+  "temperatureExponent",
   "gamma1",
   "gamma2",
   "gamma3",
@@ -153,12 +153,12 @@ export function fillGradients(at: Evaluator, order: Order, out: Float64Array): v
   out[16] = heatCapacityR * ratio + heatCapacity * (adiabaticR - ratio * pressureRR) * perPressureR;
   out[17] = heatCapacityT * ratio + heatCapacity * (adiabaticT - ratio * pressureRT) * perPressureR * perTemperature;
 
-  const chiRho = q[7]!;
-  const chiT = q[8]!;
-  out[18] = (pressureRR + pressureR * (1 - chiRho)) * perPressure;
-  out[19] = (pressureRT - chiRho * pressureT) * perPressure * perTemperature;
-  out[20] = (pressureRT - chiT * pressureR) * perPressure;
-  out[21] = (pressureTT + pressureT * (1 - chiT)) * perPressure * perTemperature;
+  const densityExponent = q[7]!;
+  const temperatureExponent = q[8]!;
+  out[18] = (pressureRR + pressureR * (1 - densityExponent)) * perPressure;
+  out[19] = (pressureRT - densityExponent * pressureT) * perPressure * perTemperature;
+  out[20] = (pressureRT - temperatureExponent * pressureR) * perPressure;
+  out[21] = (pressureTT + pressureT * (1 - temperatureExponent)) * perPressure * perTemperature;
 
   const gamma1R = (adiabaticR - gamma1 * (pressureR - pressure)) * perPressure;
   const gamma1T = (adiabaticT - gamma1 * pressureT) * perPressure * perTemperature;

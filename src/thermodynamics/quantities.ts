@@ -49,8 +49,8 @@ export type QuantityName =
   | "specificEnthalpy"
   | "heatCapacityV"
   | "heatCapacityP"
-  | "chiRho"
-  | "chiT"
+  | "densityExponent"
+  | "temperatureExponent"
   | "gamma1"
   | "gamma2"
   | "gamma3"
@@ -88,8 +88,8 @@ export const quantities: Readonly<Record<QuantityName, Quantity>> = {
   specificEnthalpy: { unit: "erg/g", description: "specific enthalpy e + P/rho" },
   heatCapacityV: { unit: "erg/(g K)", description: "heat capacity at constant volume c_v" },
   heatCapacityP: { unit: "erg/(g K)", description: "heat capacity at constant pressure c_p" },
-  chiRho: { unit: "1", description: "(d ln P/d ln rho) at constant T" },
-  chiT: { unit: "1", description: "(d ln P/d ln T) at constant density" },
+  densityExponent: { unit: "1", description: "density exponent chi_rho = (d ln P/d ln rho) at constant T" },
+  temperatureExponent: { unit: "1", description: "temperature exponent chi_T = (d ln P/d ln T) at constant density" },
   gamma1: { unit: "1", description: "adiabatic exponent (d ln P/d ln rho) at constant entropy" },
   gamma2: { unit: "1", description: "adiabatic exponent: (gamma2 - 1)/gamma2 = (d ln T/d ln P) at constant entropy" },
   gamma3: { unit: "1", description: "adiabatic exponent: gamma3 - 1 = (d ln T/d ln rho) at constant entropy" },

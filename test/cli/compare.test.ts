@@ -21,11 +21,11 @@ const found = compare(whiteDwarfMatter({ radiation: false }), whiteDwarfMatter({
   composition: [composition({ C12: 1 }), composition({ O16: 1 })],
   density: logarithmicAxis({ from: 1e5, to: 1e8, points: 6 }),
   temperature: logarithmicAxis({ from: 1e7, to: 1e9, points: 4 }),
-  quantities: ["pressure", "chiT"],
+  quantities: ["pressure", "temperatureExponent"],
 });
 const line =
   `compare ${region} --without radiation --against-without exchange --against-composition O16=1 ` +
-  "--quantities pressure,chiT";
+  "--quantities pressure,temperatureExponent";
 
 describe("fermistate compare", () => {
   test("prints the report of the two choices", async () => {
@@ -41,11 +41,13 @@ describe("fermistate compare", () => {
   });
 
   test("writes the report and maps, whole or not at all", async () => {
-    const { code, out } = await command(`${line} --out two.txt --map pressure,chiT`);
+    const { code, out } = await command(`${line} --out two.txt --map pressure,temperatureExponent`);
     expect(code).toBe(0);
-    expect(readdirSync(cwd).sort()).toEqual(["two-chiT.svg", "two-pressure.svg", "two.txt"]);
+    expect(readdirSync(cwd).sort()).toEqual(["two-temperatureExponent.svg", "two-pressure.svg", "two.txt"]);
     expect(readFileSync(join(cwd, "two.txt"), "utf8")).toBe(comparisonText(found));
-    expect(readFileSync(join(cwd, "two-chiT.svg"), "utf8")).toBe(comparisonMap(found, "chiT"));
+    expect(readFileSync(join(cwd, "two-temperatureExponent.svg"), "utf8")).toBe(
+      comparisonMap(found, "temperatureExponent"),
+    );
     expect(out).toMatch(/24 points compared\n {2}two\.txt +[\d.]+ kB {2}the report\n/);
     const again = await command(`${line} --out two --map pressure`);
     expect([again.code, again.out]).toEqual([1, ""]);

@@ -347,9 +347,9 @@ describe("grid", () => {
   });
 
   test("--quantities, all of them too; a chart's quantity becomes a column", async () => {
-    await command(`${line} --quantities chiT,gamma2 --chart bulkModulus --out a`);
+    await command(`${line} --quantities temperatureExponent,gamma2 --chart bulkModulus --out a`);
     expect(read("a.csv").split("\r\n")[0]).toBe(
-      "density [g/cm^3],temperature [K],chiT [1],gamma2 [1],bulkModulus [dyn/cm^2]",
+      "density [g/cm^3],temperature [K],temperatureExponent [1],gamma2 [1],bulkModulus [dyn/cm^2]",
     );
     await command(`${line} --quantities all --out b`);
     expect(read("b.csv").split("\r\n")[0]?.split(",")).toHaveLength(2 + quantityNames.length);

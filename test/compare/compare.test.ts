@@ -161,7 +161,7 @@ describe("a change made on purpose is found, and its size", () => {
       const share = 1e-4 * Math.sin(Math.log(densities[row % densities.length]!));
       expect(Math.abs(one - Math.abs(share / (1 + share)))).toBeLessThan(1e-10); // measured 1e-12
     }
-    for (const name of ["maxwell", "first-law-density", "chiRho"] as const)
+    for (const name of ["maxwell", "first-law-density", "densityExponent"] as const)
       expect(check(found, 1, name).missed).toBeGreaterThan(50);
     for (const name of ["entropy", "heatCapacityV", "first-law-temperature", "free-energy"] as const) {
       expect(check(found, 1, name).missed).toBe(0);
@@ -170,16 +170,16 @@ describe("a change made on purpose is found, and its size", () => {
   });
 
   test("claimed derivatives that do not belong to the values", () => {
-    const wrong = changed(ideal, ({ chiRho, heatCapacityV, gamma1 }) => ({
-      chiRho: chiRho * 1.001,
+    const wrong = changed(ideal, ({ densityExponent, heatCapacityV, gamma1 }) => ({
+      densityExponent: densityExponent * 1.001,
       heatCapacityV: heatCapacityV * 0.99,
       gamma1: gamma1 * (1 + 1e-12),
     }));
     const found = compare(ideal, wrong, region({ quantities: ["pressure"] }));
     expect(quantity(found, "pressure").largest).toBe(0);
-    expect(Math.abs(check(found, 1, "chiRho").largest / (0.001 / 1.001) - 1)).toBeLessThan(1e-6);
+    expect(Math.abs(check(found, 1, "densityExponent").largest / (0.001 / 1.001) - 1)).toBeLessThan(1e-6);
     expect(Math.abs(check(found, 1, "heatCapacityV").largest / (0.01 / 0.99) - 1)).toBeLessThan(1e-5);
-    for (const name of ["pressure", "entropy", "maxwell", "chiT"] as const)
+    for (const name of ["pressure", "entropy", "maxwell", "temperatureExponent"] as const)
       expect(check(found, 1, name).missed).toBe(0);
     expect(check(found, 1, "gamma1").missed).toBe(63);
   });
@@ -283,12 +283,12 @@ describe("refusals are part of the result", () => {
   });
 
   test("a quantity that is no number at some points is told, and nothing is claimed of it", () => {
-    const holey = changed(ideal, ({ temperature }) => (temperature > 4e9 ? { chiRho: Number.NaN } : {}));
-    const some = compare(ideal, holey, region({ quantities: ["chiRho"] }));
-    expect(quantity(some, "chiRho")).toMatchObject({ points: 54, largest: 0 });
-    expect(check(some, 1, "chiRho")).toMatchObject({ measured: 54, unresolved: 9, missed: 0 });
+    const holey = changed(ideal, ({ temperature }) => (temperature > 4e9 ? { densityExponent: Number.NaN } : {}));
+    const some = compare(ideal, holey, region({ quantities: ["densityExponent"] }));
+    expect(quantity(some, "densityExponent")).toMatchObject({ points: 54, largest: 0 });
+    expect(check(some, 1, "densityExponent")).toMatchObject({ measured: 54, unresolved: 9, missed: 0 });
     expect(comparisonSummary(some).join("\n")).toContain(
-      "chiRho is no number, or not known to one of the two, at 9 points",
+      "densityExponent is no number, or not known to one of the two, at 9 points",
     );
   });
 
@@ -343,7 +343,7 @@ describe("forms", () => {
     expect(svg.match(/<circle /g)).toHaveLength(2 * quantity(found, "pressure").worst.length);
     const relation = comparisonMap(found, "pressure", { show: { of: "second", relation: "maxwell" }, width: 700 });
     expect(relation).toContain("ideal: by how much it misses ds/drho = -(dP/dT)/rho^2");
-    expect(() => comparisonMap(found, "chiT")).toThrow(/a quantity that was compared: pressure, gamma1/);
+    expect(() => comparisonMap(found, "temperatureExponent")).toThrow(/a quantity that was compared: pressure, gamma1/);
   });
 
   test("T = 0, one density, one temperature", () => {

@@ -256,7 +256,7 @@ describe("zero temperature", () => {
           "pressure",
           "specificEnergy",
           "pressureByDensity",
-          "chiRho",
+          "densityExponent",
           "gamma1",
           "soundSpeed",
         ] as const)
@@ -275,7 +275,7 @@ describe("zero temperature", () => {
       }
     }
     print(measured);
-    for (const name of ["pressure", "specificEnergy", "pressureByDensity", "chiRho", "gamma1", "soundSpeed"])
+    for (const name of ["pressure", "specificEnergy", "pressureByDensity", "densityExponent", "gamma1", "soundSpeed"])
       measured.expectBelow(name, 6e-15);
     // At 1 K phonons still add 1e-7 of the electrons' heat capacity; the electrons' entropy is 1.5e-6 k per nucleus.
     measured.expectBelow("gamma3", 7e-8);

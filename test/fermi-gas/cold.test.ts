@@ -112,7 +112,7 @@ describe("join with finite temperature", () => {
     const state = gas.state(1e6, 0, helium);
     expect(state.specificEntropy).toBe(0);
     expect(state.heatCapacityV).toBe(0);
-    expect(state.chiT).toBe(0);
+    expect(state.temperatureExponent).toBe(0);
     expect(state.electronDegeneracy).toBe(Number.POSITIVE_INFINITY);
     expect(state.positronDensity).toBe(0);
     expect(state.gamma3 - 1).toBeCloseTo((2 - 1 / (1 + 1 / state.relativityParameter ** 2)) / 3, 14);

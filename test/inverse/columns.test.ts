@@ -63,7 +63,7 @@ describe.each([
       densityConditionNumber: new Float64Array(rows),
       temperatureConditionNumber: new Float64Array(rows),
       heatCapacityV: new Float64Array(rows),
-      chiT: new Float64Array(rows),
+      temperatureExponent: new Float64Array(rows),
     };
     const input = { composition: carbonOxygen, [first]: along[first], [second]: along[second] } as object as SolveInput;
     solveColumns(matter, input, output);
@@ -78,9 +78,9 @@ describe.each([
     }
     // The last step moves second-order quantities by members that may be a neighbour's: they must be those of the answer.
     const { density, temperature } = output;
-    const there = { heatCapacityV: new Float64Array(rows), chiT: new Float64Array(rows) };
+    const there = { heatCapacityV: new Float64Array(rows), temperatureExponent: new Float64Array(rows) };
     matter.evaluate({ density, temperature, composition: carbonOxygen }, there);
-    for (const name of ["heatCapacityV", "chiT"] as const) {
+    for (const name of ["heatCapacityV", "temperatureExponent"] as const) {
       for (let i = 0; i < rows; i++) expect(Math.abs(output[name][i]! / there[name][i]! - 1)).toBeLessThan(1e-13);
     }
   });

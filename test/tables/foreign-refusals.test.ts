@@ -106,13 +106,13 @@ describe("columns of unstable matter", () => {
   test("reported on request; a state there is refused by itself", () => {
     const { equationOfState, report } = equationOfStateFromColumns(given, { ...options, unstable: "report" });
     const [density, temperature] = [report.unstable.density[0]!, report.unstable.temperature[0]!];
-    expect(report.stability.chiRho.density.length).toBeGreaterThan(10);
+    expect(report.stability.densityExponent.density.length).toBeGreaterThan(10);
     expect(report.stability.pressureAlongDensity.density.length).toBeGreaterThan(10);
     expect(report.stability.heatCapacityV.density.length).toBe(0);
     // Spinodal of the law: T = 1e6 rho (3 - rho)^2/4 K; all nodes found lie below it, but for a step of the mesh.
-    report.stability.chiRho.density.forEach((rho, i) => {
+    report.stability.densityExponent.density.forEach((rho, i) => {
       const spinodal = (1e6 * rho * (3 - rho) ** 2) / 4;
-      expect(report.stability.chiRho.temperature[i]!).toBeLessThan(1.1 * spinodal);
+      expect(report.stability.densityExponent.temperature[i]!).toBeLessThan(1.1 * spinodal);
     });
     expect(() => equationOfState.state(density, temperature, core)).toThrow(/stable matter/);
     expect(equationOfState.state(0.3, 1.8e6, core).pressure).toBeGreaterThan(0);

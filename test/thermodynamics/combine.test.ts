@@ -291,13 +291,13 @@ describe("properties", () => {
     close(state.bulkModulus, state.gamma1 * state.pressure);
     close(state.specificEnthalpy, state.specificEnergy + state.pressure / state.density);
     close(state.specificFreeEnergy, state.specificEnergy - state.temperature * state.specificEntropy);
-    close(state.heatCapacityP, (state.heatCapacityV * state.gamma1) / state.chiRho);
-    close(state.gamma1, state.chiRho + state.chiT * (state.gamma3 - 1));
+    close(state.heatCapacityP, (state.heatCapacityV * state.gamma1) / state.densityExponent);
+    close(state.gamma1, state.densityExponent + state.temperatureExponent * (state.gamma3 - 1));
     close(state.adiabaticGradient, (state.gamma2 - 1) / state.gamma2);
     close(state.adiabaticGradient, (state.gamma3 - 1) / state.gamma1);
-    close(state.gamma3 - 1, (state.pressure * state.chiT) / (1e6 * 1e7 * state.heatCapacityV));
-    close(state.chiRho, (1e6 / state.pressure) * state.pressureByDensity);
-    close(state.chiT, (1e7 / state.pressure) * state.pressureByTemperature);
+    close(state.gamma3 - 1, (state.pressure * state.temperatureExponent) / (1e6 * 1e7 * state.heatCapacityV));
+    close(state.densityExponent, (1e6 / state.pressure) * state.pressureByDensity);
+    close(state.temperatureExponent, (1e7 / state.pressure) * state.pressureByTemperature);
     close(state.energyByDensity * 1e12, state.pressure - 1e7 * state.pressureByTemperature);
     close(state.entropyByDensity * 1e12, -state.pressureByTemperature);
     close(state.entropyByTemperature * 1e7, state.heatCapacityV);

@@ -64,13 +64,13 @@ function quantitiesOf(f: readonly Decimal[], rho: Decimal, kelvin: Decimal, x: D
   const pressureR = density.times(fR).times(2).plus(density.pow(2).times(fRR));
   const pressureT = density.pow(2).times(fRT);
   const cv = temperature.times(fTT).neg();
-  const chiRho = pressureR.times(density).div(pressure);
-  const chiT = pressureT.times(temperature).div(pressure);
+  const densityExponent = pressureR.times(density).div(pressure);
+  const temperatureExponent = pressureT.times(temperature).div(pressure);
   const gamma3 = pressureT.div(density.times(cv)).plus(1);
-  const gamma1 = chiRho.plus(chiT.times(gamma3.minus(1)));
+  const gamma1 = densityExponent.plus(temperatureExponent.times(gamma3.minus(1)));
   const gradient = gamma3.minus(1).div(gamma1);
   const gamma2 = new Exact(1).div(new Exact(1).minus(gradient));
-  const cp = cv.times(gamma1).div(chiRho);
+  const cp = cv.times(gamma1).div(densityExponent);
   const inertia = density.times(lightSpeedSquared).plus(density.times(energy)).plus(pressure);
   const sound = gamma1.times(pressure).div(inertia).sqrt().times(new Exact("29979245800"));
   const all: Record<DifferentiableQuantity, Decimal> = {
@@ -83,8 +83,8 @@ function quantitiesOf(f: readonly Decimal[], rho: Decimal, kelvin: Decimal, x: D
     specificFreeEnergy: free,
     heatCapacityV: cv,
     heatCapacityP: cp,
-    chiRho,
-    chiT,
+    densityExponent,
+    temperatureExponent,
     gamma1,
     gamma2,
     gamma3,

@@ -167,7 +167,7 @@ test("3 x 60 points: every pair to every other pair and back, triple products, c
           }
         }
         // dQ/dc by way of a and b. A derivative is known to some ulp of Q in each of ln rho and ln T.
-        for (const q of ["gamma1", "heatCapacityV", "soundSpeed", "chiT"] as const) {
+        for (const q of ["gamma1", "heatCapacityV", "soundSpeed", "temperatureExponent"] as const) {
           const way = (by: typeof there | typeof back, x: StateVariable): number =>
             Math.abs((by.density as Record<string, number>)[x]! / s.density) +
             Math.abs((by.temperature as Record<string, number>)[x]! / s.temperature);
@@ -245,7 +245,7 @@ test("3 x 150 points: derivatives integrated along paths of density and of tempe
   for (const name of differentiable) {
     expect(measured.count(name)).toBe(900);
     // 1.8e-13; what is thermal alone has 6e-14 of c_v where a crystal's phonons are nearly extinct.
-    const thermal = /^heatCapacity|^chiT|ByTemperature$|^entropyBy/.test(name);
+    const thermal = /^heatCapacity|^temperatureExponent|ByTemperature$|^entropyBy/.test(name);
     measured.expectBelow(name, thermal ? 1e-11 : 4e-13, 3e-14);
   }
 });
@@ -318,7 +318,7 @@ test("T = 0: what is known is the limit from above, what is not is refused", () 
       by: ["density", "temperature"],
     });
     expect(rigid.pressure.density).toBeCloseTo(((5 / 3) * 1e10) / 1e6, 8);
-    for (const name of ["gamma1", "gamma2", "gamma3", "chiRho"] as const) {
+    for (const name of ["gamma1", "gamma2", "gamma3", "densityExponent"] as const) {
       expect(Math.abs(rigid[name].density) * 1e6, name).toBeLessThan(1e-14);
       expect(rigid[name].temperature, name).toBe(0);
     }
@@ -460,7 +460,7 @@ test("a contribution that adds NaN at third order is found out", () => {
       if (order === 3) members[7] = Number.NaN;
     },
   });
-  const request = { of: ["chiRho"], by: ["density", "temperature"] } as const;
+  const request = { of: ["densityExponent"], by: ["density", "temperature"] } as const;
   expect(() => derivatives(broken, 1, 1e6, matters[0]!, request)).toThrow(code("unstable"));
   const first = { of: ["pressure"], by: ["density", "temperature"] } as const;
   expect(derivatives(broken, 1, 1e6, matters[0]!, first).pressure.density).toBeGreaterThan(0);

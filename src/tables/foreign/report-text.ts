@@ -29,7 +29,7 @@ export function columnsReportText(report: ColumnsReport): string {
     if (map !== undefined) lines.push(residualLine(map));
   }
   const signs: readonly (readonly [Places, string])[] = [
-    [stability.chiRho, "d ln P/d ln rho at constant temperature is not positive"],
+    [stability.densityExponent, "d ln P/d ln rho at constant temperature is not positive"],
     [stability.heatCapacityV, "c_v = de/dT is not positive"],
     [stability.pressureAlongDensity, "pressure does not rise to the next density"],
     [stability.pressureAlongTemperature, "pressure does not rise to the next temperature"],

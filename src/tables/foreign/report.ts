@@ -36,7 +36,7 @@ export interface ResidualMap extends ErrorSpread, Places {
 /** Where the columns are not those of stable matter. */
 export interface ColumnsStability {
   /** Nodes where (d ln P/d ln rho) at constant T is not positive. */
-  readonly chiRho: Places;
+  readonly densityExponent: Places;
   /** Nodes where c_v, from de/dT, is not positive. */
   readonly heatCapacityV: Places;
   /** Nodes from which P falls or stays to the next density. */

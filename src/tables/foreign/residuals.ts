@@ -89,7 +89,7 @@ export function stabilityOf(mesh: StateMesh): ColumnsStability {
   const where = (isSo: (k: number) => boolean): Places => placesOf(mesh, count, isSo);
   const hasNext = (k: number): boolean => k % n < n - 1;
   return {
-    chiRho: where((k) => !(chi[k]! > 0)),
+    densityExponent: where((k) => !(chi[k]! > 0)),
     heatCapacityV: where((k) => !(heat[k]! > 0)),
     pressureAlongDensity: where((k) => k + n < count && !(pressure[k + n]! > pressure[k]!)),
     pressureAlongTemperature: where((k) => hasNext(k) && !(pressure[k + 1]! > pressure[k]!)),
