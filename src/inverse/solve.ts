@@ -79,10 +79,10 @@ export interface Solution {
  * specificEntropy; pressure with specificEntropy, specificEnergy or specificEnthalpy; specificEntropy with specificEnthalpy or
  * specificEnergy. (At given temperature energy and enthalpy are not one-valued in density.)
  *
- * Steps of third order in the logarithms, bracketed; see docs/guide/solving.md for the method, its measured cost and the
- * rules at the freezing boundary. Energy, pressure or enthalpy below the cold value of a density is refused with that
- * value; equal to
- * it to rounding the answer is T = 0, where that is legal, with an infinite condition number of the temperature.
+ * Steps of third order in the logarithms, bracketed; see docs/guide/solving.md for the method, its measured cost and
+ * the rules at the freezing boundary. Energy, pressure or enthalpy below the cold value of a density is refused with
+ * that value; equal to it to rounding the answer is T = 0, where that is legal, with an infinite condition number of
+ * the temperature.
  *
  * @throws `invalid-option` (no such pair), `not-a-number`, `out-of-range`, `outside-domain`, `invalid-composition`;
  * `below-cold` and `no-solution`, which carry the limiting value as `limit`; `unstable`

@@ -133,8 +133,7 @@ function solverOf(eos: EquationOfState): Solver {
 
   /**
    * T = 0 where the target is the cold value of the density: there the temperature that a search finds is noise (what
-   * rounding
-   * leaves of it is all of it), or the target lies below that of the lowest temperature, by rounding.
+   * rounding leaves of it is all of it), or the target lies below that of the lowest temperature, by rounding.
    */
   function orCold(composition: Composition, { type, first: kind }: Question, end: number): number {
     if (type !== TEMPERATURE_AT_DENSITY || kind === ENTROPY_KIND || !eos.domain.zeroTemperature) return end;

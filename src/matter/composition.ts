@@ -8,10 +8,11 @@
  */
 import { atomicMassConstant, electronMass } from "../constants.js";
 import { FermistateError, requireFinite, withIndex } from "../errors.js";
+import type { Composition } from "./composition-members.js";
 import { nuclide } from "./nuclides.js";
-import { brand, type Composition, compositionOf, type SpeciesList, speciesList, speciesOf } from "./species-list.js";
+import { brand, compositionOf, type SpeciesList, speciesList, speciesOf } from "./species-list.js";
 
-export type { ChargeMoments, Composition, Species } from "./species-list.js";
+export type { ChargeMoments, Composition, Species } from "./composition-members.js";
 
 /** Nucleon fractions by label of the nuclide. */
 export type NucleonFractions = Readonly<Record<string, number>>;
@@ -64,13 +65,11 @@ export function composition(fractions: NucleonFractions | MeanNucleus, options: 
 
 /**
  * Many compositions of the same species, as a reaction network makes them in every zone and step: the same as
- * `composition` of each
- * row, to the bit, several times faster.
+ * `composition` of each row, to the bit, several times faster.
  *
  * @param labels - nuclides, each once
  * @param fractions - nucleon fractions: one column per label, each with one number per row; or one array, row after
- * row, with the
- * labels' fractions of a row side by side
+ * row, with the labels' fractions of a row side by side
  * @returns one composition per row, for `evaluate` and `solveColumns`
  * @throws FermistateError as {@link composition}, with the row; `length-mismatch`
  * @example

@@ -109,8 +109,7 @@ export interface CompositionDerivatives {
   along(change: NucleonFractions): DirectionalDerivatives;
   /**
    * Change by one reaction. `-energy`, with rest mass not "excluded", is the heat to be carried off (neutrinos
-   * included) to hold
-   * density and temperature.
+   * included) to hold density and temperature.
    *
    * @param nuclei - nuclei made by one reaction, those consumed negative: `{ C12: -2, Mg24: 1 }`; electrons follow
    * @throws as {@link CompositionDerivatives.along}

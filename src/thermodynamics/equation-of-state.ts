@@ -47,8 +47,7 @@ export interface BatchInput {
 export interface RefusedRows {
   /**
    * Where given, a row without an answer gets the number of its reason here (`refusalReasons`; 0 for an answer), its
-   * other
-   * outputs stay as they were, and nothing is thrown for it: for schemes that repair such rows themselves.
+   * other outputs stay as they were, and nothing is thrown for it: for schemes that repair such rows themselves.
    */
   readonly refused?: Uint8Array;
 }

@@ -30,8 +30,7 @@ const reason = (code: ErrorCode | undefined, meaning: string): RefusalReason => 
 
 /**
  * What the numbers in a column `refused` mean, by number: 0 is an answer. Single calls (`state`, `solve`) throw the
- * error of
- * the same code, with values and limits.
+ * error of the same code, with values and limits.
  *
  * ```ts
  * import { composition, refusalReasons, whiteDwarfMatter } from "fermistate";
