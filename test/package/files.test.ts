@@ -1,6 +1,7 @@
 /** The tarball holds what a user needs and nothing else; its programs load. Times are printed, not judged. */
 import { execFileSync } from "node:child_process";
 import { readdirSync, readFileSync } from "node:fs";
+import { posix } from "node:path";
 import { fileURLToPath } from "node:url";
 import { expect, inject, test } from "vitest";
 
@@ -11,10 +12,10 @@ const about = JSON.parse(readFileSync(`${root}package.json`, "utf8")) as {
   dependencies: Record<string, string>;
 };
 
-test("the tarball holds dist, the guide, the licences, the README and package.json only", () => {
+test("the tarball holds dist, the guide with its programs, the licences, the README and package.json only", () => {
   const paths = inject("packedFiles").map((file) => file.path);
   const allowed = /^(dist\/[\w.-]+\.(js|cjs|d\.ts|d\.cts)|dist\/THIRD-PARTY-LICENSES\.txt|package\.json)$/;
-  const guide = /^docs\/guide\/[\w-]+\.(md|svg)$/;
+  const guide = /^docs\/(guide\/[\w-]+\.(md|svg)|examples\/[\w-]+(\.d)?\.ts)$/;
   const programs = ["docs/read_table.py", "docs/electron_table.c", "docs/electron_table.py"];
   const named = ["LICENSE", "README.md", "CHANGELOG.md", ...programs];
   expect(paths.filter((path) => !allowed.test(path) && !guide.test(path) && !named.includes(path))).toEqual([]);
@@ -25,6 +26,16 @@ test("the tarball holds dist, the guide, the licences, the README and package.js
   );
   expect(pages.length).toBeGreaterThan(15);
   expect(pages.filter((page) => !paths.includes(page as string))).toEqual([]);
+  // And what they lead to.
+  const lost = paths
+    .filter((path) => path.endsWith(".md") && path.startsWith("docs/"))
+    .flatMap((path) =>
+      [...readFileSync(`${root}${path}`, "utf8").matchAll(/\]\((?![a-z]+:|#)([^)#\s]+)[^)]*\)/g)].map(([, link]) =>
+        posix.join(posix.dirname(path), link!),
+      ),
+    )
+    .filter((path) => !paths.includes(path));
+  expect(lost).toEqual([]);
 });
 
 test("the versions of Node are those that the run-time dependencies take", () => {
