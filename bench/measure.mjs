@@ -54,7 +54,7 @@ function methodFor(name) {
     const eos = combine(electronPositronGas());
     return () => {
       let sum = 0;
-      for (let i = 0; i < count; i++) sum += eos.freeEnergy(points.density[i], points.temperature[i], matter, 3).fTTT;
+      for (let i = 0; i < count; i++) sum += eos.freeEnergy(points.density[i], points.temperature[i], matter, 3).f03;
       return sum;
     };
   }

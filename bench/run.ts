@@ -99,7 +99,7 @@ for (const [number, region] of regions.entries()) {
   }
 }
 console.log(
-  "\ngas: electrons and positrons, batch, 8 columns; ideal: with ideal ions and photons; Coulomb: full plasma of C/O, 1e5 to 1e10 g/cm^3; all columns: 32 of them,",
+  "\ngas: electrons and positrons, batch, 8 columns; ideal: with ideal ions and photons; Coulomb: full plasma of C/O, 1e5 to 1e10 g/cm^3; all columns: every quantity,",
 );
 console.log(
   "positron density included; state: one object per call; order 3: all eleven derivatives of the electron gas.",

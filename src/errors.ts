@@ -102,7 +102,7 @@ export function requireFinite(argument: string, value: unknown, allowed: string,
   throw new FermistateError("not-a-number", withIndex({ argument, given: value, allowed }, index));
 }
 
-/** Throws `invalid-option` unless `options` is an object whose keys are all known: a slip of the pen must not pass. */
+/** Throws `invalid-option` unless `options` is an object whose keys are all known: a misspelt option must not pass. */
 export function requireKnown(argument: string, options: unknown, known: readonly string[]): void {
   const isObject = typeof options === "object" && options !== null && !Array.isArray(options);
   const stranger = isObject ? Object.keys(options).find((name) => !known.includes(name)) : options;

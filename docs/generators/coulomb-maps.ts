@@ -281,8 +281,8 @@ function pressureMap(): string {
   const ideal = whiteDwarfMatter({ coulomb: false });
   const colourOf = (density: number, temperature: number): string => {
     // From the free energy, which has an answer also where the sum is unstable.
-    const pressure = full.freeEnergy(density, temperature, matter).fR;
-    const correction = pressure / ideal.freeEnergy(density, temperature, matter).fR - 1;
+    const pressure = full.freeEnergy(density, temperature, matter).f10;
+    const correction = pressure / ideal.freeEnergy(density, temperature, matter).f10 - 1;
     const place = (Math.log10(Math.abs(correction)) - faintest) / (strongest - faintest);
     return steps[Math.min(steps.length - 1, Math.max(0, Math.floor(place * steps.length)))]!;
   };

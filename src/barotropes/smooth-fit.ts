@@ -43,7 +43,7 @@ export interface SmoothBarotrope extends BarotropicContribution {
   /** c_k of ln G. */
   readonly coefficients: readonly number[];
   /** e_s, erg/g. */
-  readonly energyShift: number;
+  readonly addedEnergy: number;
 }
 
 /** A fit and what it is worth. */
@@ -124,7 +124,7 @@ function requireSmooth(source: Barotrope, [low, high]: readonly [number, number]
 
 interface Series {
   readonly coefficients: Float64Array;
-  readonly energyShift: number;
+  readonly addedEnergy: number;
 }
 
 /** Coefficients of ln G from the source at Chebyshev points of the first kind. */
@@ -137,17 +137,17 @@ function series(source: Barotrope, [low, high]: readonly [number, number], count
   at(low);
   // G at the lowest density is dP/drho there: of the size of P/rho, and not zero at a surface.
   const slope = (record[BAROTROPE_PRESSURE]! * record[BAROTROPE_GAMMA]!) / low;
-  const energyShift = slope - record[BAROTROPE_ENERGY]!;
+  const addedEnergy = slope - record[BAROTROPE_ENERGY]!;
   const values = Float64Array.from({ length: count }, (_, i) => {
     const t = Math.cos((Math.PI * (i + 0.5)) / count);
     at(Math.sqrt(low * high) * Math.exp(0.5 * t * Math.log(high / low)));
-    return Math.log(record[BAROTROPE_ENERGY]! + energyShift);
+    return Math.log(record[BAROTROPE_ENERGY]! + addedEnergy);
   });
   const coefficients = Float64Array.from({ length: count }, (_, k) => {
     const sum = values.reduce((total, value, i) => total + value * Math.cos((Math.PI * k * (i + 0.5)) / count), 0);
     return ((k === 0 ? 1 : 2) * sum) / count;
   });
-  return { coefficients, energyShift };
+  return { coefficients, addedEnergy };
 }
 
 /** Coefficients of the derivative in t. */
@@ -199,7 +199,7 @@ function isStable(coefficients: Float64Array, range: readonly [number, number]):
 }
 
 function smoothBarotrope(source: Barotrope, range: readonly [number, number], count: number): SmoothBarotrope {
-  const { coefficients, energyShift } = series(source, range, count);
+  const { coefficients, addedEnergy } = series(source, range, count);
   if (!isStable(coefficients, range)) {
     const allowed = "as many terms as make the pressure rise with density";
     throw new FermistateError("unstable", { argument: "terms", given: count, allowed });
@@ -217,8 +217,8 @@ function smoothBarotrope(source: Barotrope, range: readonly [number, number], co
     const specific = g * first;
     const slope = g * (first * first + r[C2]! + first);
     record[BAROTROPE_PRESSURE] = density * specific;
-    record[BAROTROPE_ENERGY] = g - energyShift;
-    record[BAROTROPE_POTENTIAL] = g * (1 + first) - energyShift;
+    record[BAROTROPE_ENERGY] = g - addedEnergy;
+    record[BAROTROPE_POTENTIAL] = g * (1 + first) - addedEnergy;
     record[BAROTROPE_GAMMA] = slope / specific;
     scratch[SLOPE] = slope;
     scratch[ENERGY_SLOPE] = specific;
@@ -261,6 +261,6 @@ function smoothBarotrope(source: Barotrope, range: readonly [number, number], co
     ...contributing(name, validity, range, pieces),
     limits: Object.freeze((source.limits ?? []).filter(({ side, density }) => side === "above" && density < range[1])),
     coefficients: Object.freeze(Array.from(coefficients)),
-    energyShift,
+    addedEnergy,
   });
 }

@@ -27,7 +27,7 @@ export interface CertifyOptions {
    */
   readonly digits?: number;
   /**
-   * Quantities of a state, or natural derivatives of the free energy up to `fRRTT`.
+   * Quantities of a state, or natural derivatives of the free energy up to `f22`.
    * @defaultValue pressure, specificEnergy, specificEntropy, specificFreeEnergy, heatCapacityV, densityExponent, temperatureExponent, gamma1, gamma3,
    * adiabaticGradient, soundSpeed
    */

@@ -38,14 +38,14 @@ export function coldElectronGas(D: Arithmetic, n: Decimal, units: Units): Electr
     pressure: pressure.times(density).times(energy),
     energyDensity: n.times(fermiEnergy).minus(pressure).times(density).times(energy),
     entropyDensity: zero,
-    dPdn: pn.times(energy),
-    dPdT: zero,
+    pressureByDensity: pn.times(energy),
+    pressureByTemperature: zero,
     heatCapacityDensity: zero,
-    d2Pdn2: pnn.times(energy).div(density),
-    d2PdndT: zero,
-    d2PdT2: ptt.times(density).times(boltzmann).times(perKelvin),
-    d2sdT2: zero,
-    d3PdndT2: pntt.times(boltzmann).times(perKelvin),
+    pressureByDensityTwice: pnn.times(energy).div(density),
+    pressureByDensityAndTemperature: zero,
+    pressureByTemperatureTwice: ptt.times(density).times(boltzmann).times(perKelvin),
+    entropyByTemperatureTwice: zero,
+    pressureByDensityAndTemperatureTwice: pntt.times(boltzmann).times(perKelvin),
   };
 }
 

@@ -5,7 +5,7 @@ import * as constants from "./constants.js";
 import { type Arithmetic, type ExactNumber, exactDecimal } from "./exact.js";
 import type { Units } from "./state-functions.js";
 
-/** Where to evaluate: T and one of three ways to give the net electron density n_e = n_- - n_+. */
+/** Where to evaluate: T and one of two ways to give the net electron density n_e = n_- - n_+. */
 export type ReferenceElectronGasInput = { /** T [K], 0 or 1 to 1e14. */ readonly temperature: ExactNumber } & (
   | {
       /** Baryon mass density rho = n_B m_u [g/cm^3]. */
@@ -14,7 +14,6 @@ export type ReferenceElectronGasInput = { /** T [K], 0 or 1 to 1e14. */ readonly
       readonly electronsPerNucleon: ExactNumber;
     }
   | { /** n_e [cm^-3], 1e-290 to 1e42. */ readonly netElectronDensity: ExactNumber }
-  | { /** n_e/N_A [mol/cm^3]; n_e = value times 6.02214076e23. */ readonly electronMolarDensity: ExactNumber }
 );
 
 /** n_e and T in internal units at one precision. */
@@ -43,7 +42,7 @@ export function conditions(D: Arithmetic, input: ReferenceElectronGasInput): Con
   };
 }
 
-const densityArguments = ["density", "netElectronDensity", "electronMolarDensity"];
+const densityArguments = ["density", "netElectronDensity"];
 
 function netDensity(D: Arithmetic, input: ReferenceElectronGasInput): Decimal {
   const given = densityArguments.filter((name) => name in input);
@@ -51,13 +50,10 @@ function netDensity(D: Arithmetic, input: ReferenceElectronGasInput): Decimal {
     throw new FermistateError("invalid-option", {
       argument: "input",
       given: given.join(" and ") || "no density",
-      allowed: "one of density (with electronsPerNucleon), netElectronDensity, electronMolarDensity",
+      allowed: "one of density (with electronsPerNucleon), netElectronDensity",
     });
   }
   if ("netElectronDensity" in input) return exactDecimal(D, "netElectronDensity", input.netElectronDensity);
-  if ("electronMolarDensity" in input) {
-    return exactDecimal(D, "electronMolarDensity", input.electronMolarDensity).times(constants.avogadroConstant);
-  }
   const density = exactDecimal(D, "density", input.density);
   const electronsPerNucleon = exactDecimal(D, "electronsPerNucleon", input.electronsPerNucleon);
   return density.times(electronsPerNucleon).div(constants.atomicMassConstant);

@@ -10,5 +10,4 @@ export const boltzmannConstant = "1.380649e-16"; // erg/K, exact
 export const speedOfLight = "29979245800"; // cm/s, exact
 export const electronMass = "9.1093837139e-28"; // g
 export const atomicMassConstant = "1.66053906892e-24"; // g
-export const avogadroConstant = "6.02214076e23"; // 1/mol, exact
 export const fineStructureConstant = "7.2973525643e-3";

@@ -59,17 +59,18 @@ export function withErrors(
 function naturalScales(values: ElectronGasValues, at: DensityAndTemperature): Partial<Record<Name, Decimal>> {
   const { netElectronDensity: n, temperature: T } = at;
   if (T.isZero()) return {};
-  const { dPdn, dPdT, heatCapacityDensity, degeneracyParameter, chemicalPotential } = values;
-  const mixed = Decimal.min(dPdn.div(T), dPdT.div(n));
+  const { pressureByDensity, pressureByTemperature, heatCapacityDensity, degeneracyParameter, chemicalPotential } =
+    values;
+  const mixed = Decimal.min(pressureByDensity.div(T), pressureByTemperature.div(n));
   // d2s/dT2 of degenerate matter is the cubic term of s(T), eta^2 times smaller than s/T^2
   const degenerate = Decimal.max(degeneracyParameter, 0).pow(2).plus(1);
   return {
     degeneracyParameter: new Decimal(1),
     chemicalPotential: degeneracyParameter.isZero() ? new Decimal(0) : chemicalPotential.div(degeneracyParameter),
-    d2Pdn2: dPdn.div(n),
-    d2PdndT: mixed,
-    d3PdndT2: mixed.div(T),
-    d2PdT2: dPdT.div(T),
-    d2sdT2: heatCapacityDensity.div(T).div(T).div(degenerate),
+    pressureByDensityTwice: pressureByDensity.div(n),
+    pressureByDensityAndTemperature: mixed,
+    pressureByDensityAndTemperatureTwice: mixed.div(T),
+    pressureByTemperatureTwice: pressureByTemperature.div(T),
+    entropyByTemperatureTwice: heatCapacityDensity.div(T).div(T).div(degenerate),
   };
 }

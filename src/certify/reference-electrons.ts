@@ -43,9 +43,9 @@ export function electronTerm(
     new D(value).times(n.pow(inDensity)).times(T.pow(inTemperature)).div(rho);
   // F_rho = P/rho^2 and F_T = -s give every derivative; n and rho are proportional
   const p = per(gas.pressure, 0, 0);
-  const pn = per(gas.dPdn, 1, 0);
-  const pt = per(gas.dPdT, 0, 1);
-  const ptt = per(gas.d2PdT2, 0, 2);
+  const pn = per(gas.pressureByDensity, 1, 0);
+  const pt = per(gas.pressureByTemperature, 0, 1);
+  const ptt = per(gas.pressureByTemperatureTwice, 0, 2);
   const entropy = per(gas.entropyDensity, 0, 1);
   const derivatives = [
     per(gas.energyDensity, 0, 0).minus(entropy),
@@ -54,15 +54,15 @@ export function electronTerm(
     pn.minus(p.times(2)),
     pt,
     per(gas.heatCapacityDensity, 0, 1).neg(),
-    per(gas.d2Pdn2, 2, 0).minus(pn.times(4)).plus(p.times(6)),
-    per(gas.d2PdndT, 1, 1).minus(pt.times(2)),
+    per(gas.pressureByDensityTwice, 2, 0).minus(pn.times(4)).plus(p.times(6)),
+    per(gas.pressureByDensityAndTemperature, 1, 1).minus(pt.times(2)),
     ptt,
-    per(gas.d2sdT2, 0, 3).neg(),
-    per(gas.d3PdndT2, 1, 2).minus(ptt.times(2)),
+    per(gas.entropyByTemperatureTwice, 0, 3).neg(),
+    per(gas.pressureByDensityAndTemperatureTwice, 1, 2).minus(ptt.times(2)),
   ];
   if (!T.isZero()) return { gas, derivatives, coldSlopes: undefined };
   const restEnergy = new D(constants.electronMass).times(new D(constants.speedOfLight).pow(2));
-  const slopes = [coldEntropySlope(D, n, restEnergy).div(rho), new D(gas.d2PdT2).div(rho)] as const;
+  const slopes = [coldEntropySlope(D, n, restEnergy).div(rho), new D(gas.pressureByTemperatureTwice).div(rho)] as const;
   return { gas, derivatives, coldSlopes: slopes };
 }
 

@@ -23,8 +23,8 @@ export interface ReferenceValue {
 
 /** Natural derivatives by name, in the order of `powers`. */
 export const derivativeNames: readonly (keyof FreeEnergyDerivatives)[] = [
-  ...(["f", "fR", "fT", "fRR", "fRT", "fTT"] as const),
-  ...(["fRRR", "fRRT", "fRTT", "fTTT", "fRRTT"] as const),
+  ...(["f00", "f10", "f01", "f20", "f11", "f02"] as const),
+  ...(["f30", "f21", "f12", "f03", "f22"] as const),
 ];
 
 /** A point at which quantities are formed. */

@@ -30,21 +30,21 @@ export interface ElectronGasValues {
   /** s of both [erg/K/cm^3] */
   readonly entropyDensity: Decimal;
   /** dP/dn at T [erg] */
-  readonly dPdn: Decimal;
+  readonly pressureByDensity: Decimal;
   /** dP/dT at n [erg/K/cm^3] */
-  readonly dPdT: Decimal;
+  readonly pressureByTemperature: Decimal;
   /** T ds/dT at n [erg/K/cm^3], the heat capacity per volume. */
   readonly heatCapacityDensity: Decimal;
   /** d2P/dn2 [erg cm^3] */
-  readonly d2Pdn2: Decimal;
+  readonly pressureByDensityTwice: Decimal;
   /** d2P/dn dT [erg/K] */
-  readonly d2PdndT: Decimal;
+  readonly pressureByDensityAndTemperature: Decimal;
   /** d2P/dT2 at n [erg/K^2/cm^3] */
-  readonly d2PdT2: Decimal;
+  readonly pressureByTemperatureTwice: Decimal;
   /** d2s/dT2 at n [erg/K^3/cm^3] */
-  readonly d2sdT2: Decimal;
+  readonly entropyByTemperatureTwice: Decimal;
   /** d3P/dn dT2 [erg/K^2] */
-  readonly d3PdndT2: Decimal;
+  readonly pressureByDensityAndTemperatureTwice: Decimal;
 }
 
 /** Conversion of the internal units (m = c = hbar = k = 1, no 1/pi^2) to cgs. */
@@ -82,14 +82,14 @@ export function stateFunctions(
     pressure: d.p.times(pressureUnit),
     energyDensity: d.kinetic.plus(positronDensity.times(2)).times(pressureUnit),
     entropyDensity: d.pt.times(entropyUnit),
-    dPdn: dimensionless.pn.times(energy),
-    dPdT: dimensionless.pt.times(entropyUnit),
+    pressureByDensity: dimensionless.pn.times(energy),
+    pressureByTemperature: dimensionless.pt.times(entropyUnit),
     heatCapacityDensity: dimensionless.st.times(theta).times(entropyUnit),
-    d2Pdn2: dimensionless.pnn.times(energy).div(density),
-    d2PdndT: dimensionless.pnt.times(boltzmann),
-    d2PdT2: dimensionless.ptt.times(entropyUnit).times(perKelvin),
-    d2sdT2: dimensionless.stt.times(entropyUnit).times(perKelvin).times(perKelvin),
-    d3PdndT2: dimensionless.pntt.times(boltzmann).times(perKelvin),
+    pressureByDensityTwice: dimensionless.pnn.times(energy).div(density),
+    pressureByDensityAndTemperature: dimensionless.pnt.times(boltzmann),
+    pressureByTemperatureTwice: dimensionless.ptt.times(entropyUnit).times(perKelvin),
+    entropyByTemperatureTwice: dimensionless.stt.times(entropyUnit).times(perKelvin).times(perKelvin),
+    pressureByDensityAndTemperatureTwice: dimensionless.pntt.times(boltzmann).times(perKelvin),
   };
 }
 

@@ -74,7 +74,7 @@ export function requireQuantities(
   names: readonly CertifiedQuantity[] = defaultQuantities,
 ): readonly CertifiedQuantity[] {
   const known: readonly string[] = [...quantityNames, ...derivativeNames];
-  const allowed = "names of quantities of a state, or of the derivatives f, fR, fT ... fRRTT";
+  const allowed = "names of quantities of a state, or of the derivatives of the free energy f00, f10, f01 ... f22";
   if (!Array.isArray(names) || names.length === 0) {
     throw new FermistateError("invalid-option", { argument: "quantities", given: names, allowed });
   }

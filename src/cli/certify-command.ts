@@ -53,8 +53,8 @@ export const certifyCommand: Command = command({
     quantities: {
       value: "NAME,...",
       help:
-        "quantities of a state, or scaled derivatives of the free energy: f, fR, fT, fRR, fRT, fTT, fRRR, fRRT, fRTT, " +
-        "fTTT, fRRTT (R: by density, T: by temperature)",
+        "quantities of a state, or scaled derivatives of the free energy: f00, f10, f01, f20, f11, f02, f30, f21, f12, " +
+        "f03, f22 (orders in density and in temperature)",
       read: z.optional(wordList<CertifiedQuantity>([...quantityNames, ...derivativeNames])),
     },
     format: {

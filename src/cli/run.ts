@@ -70,7 +70,7 @@ function unknown(argument: string, given: string, known: readonly string[]): Fer
   return new FermistateError("invalid-option", { argument, given, allowed });
 }
 
-/** Errors of a request that no state of the world could make right. */
+/** Errors of a request that is wrong whatever the matter, its files and the machine are. */
 const wrongRequests: readonly ErrorCode[] = [
   "not-a-number",
   "out-of-range",

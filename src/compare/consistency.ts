@@ -21,11 +21,11 @@ const relations: Readonly<Record<ConsistencyName, string>> = {
   maxwell: "ds/drho = -(dP/dT)/rho^2",
   "first-law-density": "de/drho = P/rho^2 + T ds/drho",
   "first-law-temperature": "de/dT = T ds/dT",
-  densityExponent: "densityExponent = d ln P/d ln rho",
-  temperatureExponent: "temperatureExponent = d ln P/d ln T",
+  densityExponent: "chi_rho = d ln P/d ln rho",
+  temperatureExponent: "chi_T = d ln P/d ln T",
   heatCapacityV: "c_v = de/dT",
-  gamma1: "Gamma_1 = densityExponent + temperatureExponent^2 P/(rho T c_v)",
-  adiabaticGradient: "gradient = temperatureExponent P/(rho T c_v Gamma_1)",
+  gamma1: "Gamma1 = chi_rho + chi_T^2 P/(rho T c_v)",
+  adiabaticGradient: "gradient = chi_T P/(rho T c_v Gamma1)",
 };
 
 const names = Object.keys(relations) as ConsistencyName[];
@@ -44,7 +44,7 @@ export interface ConsistencyMeter {
   /** What was measured. */
   readonly checks: () => readonly ConsistencyCheck[];
   /** d ln P/d ln rho and T de/dT over P/rho at the row just measured, where they are known. */
-  readonly response: { compressibility: Measured; heat: Measured };
+  readonly response: { stiffness: Measured; heat: Measured };
 }
 
 const unknown: Measured = { value: Number.NaN, error: Number.POSITIVE_INFINITY };
@@ -59,7 +59,7 @@ export function consistencyMeter(
   const blank = (): Float64Array => new Float64Array(rows).fill(Number.NaN);
   const residuals = Object.fromEntries(names.map((name) => [name, blank()])) as Record<ConsistencyName, Float64Array>;
   const errors = Object.fromEntries(names.map((name) => [name, blank()])) as Record<ConsistencyName, Float64Array>;
-  const response = { compressibility: unknown, heat: unknown };
+  const response = { stiffness: unknown, heat: unknown };
 
   const neighbour = (state: State, along: "density" | "temperature", step: number): State | undefined => {
     const factor = Math.exp(step);
@@ -95,13 +95,13 @@ export function consistencyMeter(
     const specific = p / rho;
     const sizes = Math.max(Math.abs(f), Math.abs(e), Math.abs(ts));
     set("free-energy", f - (e - ts), rounding * sizes, sizes);
-    response.compressibility = unknown;
+    response.stiffness = unknown;
     response.heat = unknown;
 
     const u = derivatives(state, "density");
     if (u !== undefined) {
       const { specificFreeEnergy: fu, pressure: pu, specificEntropy: su, specificEnergy: eu } = u;
-      response.compressibility = { value: pu.value / Math.abs(p), error: pu.error / Math.abs(p) };
+      response.stiffness = { value: pu.value / Math.abs(p), error: pu.error / Math.abs(p) };
       set("pressure", specific - fu.value, fu.error, Math.abs(specific));
       const work = Math.max(Math.abs(eu.value), Math.abs(specific), Math.abs(t * su.value));
       set("first-law-density", eu.value - specific - t * su.value, eu.error + t * su.error, work);

@@ -9,7 +9,7 @@ type Sign = SignCount["quantity"];
 export interface SignCounter {
   readonly count: (
     state: State,
-    measured: { readonly compressibility: Measured; readonly heat: Measured } | undefined,
+    measured: { readonly stiffness: Measured; readonly heat: Measured } | undefined,
     place: Place,
   ) => void;
   readonly found: () => SignCount[];
@@ -38,9 +38,8 @@ export function signCounter(of: 0 | 1): SignCounter {
       }
       if (heatCapacityV < 0) add("heatCapacityV", heatCapacityV, place);
       if (measured === undefined) return;
-      const { compressibility, heat } = measured;
-      if (compressibility.value < -3 * compressibility.error)
-        add("measuredPressureByDensity", compressibility.value, place);
+      const { stiffness, heat } = measured;
+      if (stiffness.value < -3 * stiffness.error) add("measuredPressureByDensity", stiffness.value, place);
       if (heat.value < -3 * heat.error) add("measuredHeatCapacity", heat.value, place);
     },
     found: () => [...met].map(([quantity, one]) => ({ of, quantity, ...one })),

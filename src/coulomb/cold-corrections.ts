@@ -51,7 +51,7 @@ export interface ColdCorrectionsOptions {
 
 const lambda = Math.cbrt(4 / (9 * Math.PI));
 
-/** The classic cold set as a contribution; not for use beside `coulombPlasma()`. @throws `invalid-option` */
+/** The corrections of Salpeter (1961) as a contribution; not for use beside `coulombPlasma()`. @throws `invalid-option` */
 export function coldCorrections(options: ColdCorrectionsOptions = {}): Contribution {
   requireFlags("options", options, ["thomasFermi", "exchange", "correlation"], ["lattice"]);
   const { lattice = "bcc", thomasFermi = true, exchange = true, correlation = true } = options;

@@ -14,7 +14,7 @@ import type { Domain } from "../thermodynamics/contribution.js";
 import { holds, refusePoint } from "../thermodynamics/domain.js";
 import type { EquationOfState, RefusedRows } from "../thermodynamics/equation-of-state.js";
 import { type QuantityName, quantities, quantityNames } from "../thermodynamics/quantities.js";
-import { ANSWERED, DENSITY_TOO_LOW, GIVEN_NO_NUMBER, GIVEN_NOT_POSITIVE } from "../thermodynamics/reason.js";
+import { ANSWERED, DENSITY_TOO_LOW, GIVEN_NO_NUMBER, GIVEN_NOT_POSITIVE } from "../thermodynamics/refusal-numbers.js";
 import { reasonOf, reasonOutside } from "../thermodynamics/refusal-reasons.js";
 import { finish } from "./finish.js";
 import { type GivenPair, type Question, questionOf, requireGiven } from "./questions.js";

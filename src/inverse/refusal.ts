@@ -2,7 +2,7 @@
 import { FermistateError, withIndex } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
-import { BELOW_COLD, GIVEN_TOO_HIGH, GIVEN_TOO_LOW, NO_STATE } from "../thermodynamics/reason.js";
+import { BELOW_COLD, GIVEN_TOO_HIGH, GIVEN_TOO_LOW, NO_STATE } from "../thermodynamics/refusal-numbers.js";
 import type { Question } from "./questions.js";
 import {
   BEYOND_LOWER,

@@ -3,7 +3,7 @@ import type { Composition } from "../matter/composition.js";
 import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { quantityNames } from "../thermodynamics/quantities.js";
-import { ANSWERED } from "../thermodynamics/reason.js";
+import { ANSWERED } from "../thermodynamics/refusal-numbers.js";
 import { reasonOf } from "../thermodynamics/refusal-reasons.js";
 import { fillFunction } from "./functions.js";
 import { predict } from "./predict.js";

@@ -40,7 +40,7 @@ const known = /* @__PURE__ */ new Map<string, Nuclide>();
 /**
  * The nuclide of a label: element symbol and mass number as in "C12", "n" for the free neutron.
  *
- * There are no aliases: deuterium is "H2", the alpha particle "He4".
+ * Each nuclide has one label: deuterium is "H2", the alpha particle "He4".
  *
  * @throws FermistateError `unknown-nuclide` where AME2020 has no such nuclide; the message names the nearest ones.
  * @example
@@ -130,7 +130,7 @@ function unknown(label: unknown): FermistateError {
 }
 
 /** Other names in use, for the message only. */
-const aliases: readonly (readonly [RegExp, string])[] = [
+const otherNames: readonly (readonly [RegExp, string])[] = [
   [/^(p|[Pp]roton)$/, "H1"],
   [/^([Dd]|[Dd]euteron|[Dd]euterium)$/, "H2"],
   [/^([Tt]|[Tt]riton|[Tt]ritium)$/, "H3"],
@@ -141,7 +141,7 @@ const aliases: readonly (readonly [RegExp, string])[] = [
 /** Labels a caller may have meant: other spellings, the nearest isotopes, isobars of similar symbols. At most four. */
 function nearest(label: unknown): string[] {
   const text = (typeof label === "string" ? label : "").slice(0, 20).replace(/[^A-Za-z0-9]/g, "");
-  const alias = aliases.find(([pattern]) => pattern.test(text));
+  const alias = otherNames.find(([pattern]) => pattern.test(text));
   if (alias !== undefined) return [alias[1]];
 
   const letters = /[A-Za-z]+/.exec(text)?.[0] ?? "";

@@ -101,7 +101,7 @@ interface Sum {
   /** P, dyn/cm^2. */
   readonly pressure: number;
   /** dP/drho at constant temperature, erg/g. */
-  readonly compressibility: number;
+  readonly stiffness: number;
   /** c_v, erg/(g K). */
   readonly heatCapacity: number;
 }
@@ -125,7 +125,7 @@ export function judgeStability(
     // "<= 0": the smallest positive number is the first good one.
     judge(list, { code, value, outside: Number.MIN_VALUE, below: true, name, unit, message });
   if (zero(sum.pressure, "pressure", "dyn/cm^2")) return;
-  if (zero(sum.compressibility, "dP/drho at constant temperature", "erg/g")) return;
+  if (zero(sum.stiffness, "dP/drho at constant temperature", "erg/g")) return;
   if (temperature > 0 && zero(sum.heatCapacity, "heat capacity at constant volume", "erg/(g K)")) return;
   const interactions = (eos?.contributions ?? []).flatMap(termsOf).filter((part) => part.ideal !== true);
   if (interactions.length === 0 || electronPressure === 0) return;
@@ -163,7 +163,7 @@ function pressureOf(
 
 const fromState = ({ pressure, pressureByDensity, heatCapacityV }: State): Sum => ({
   pressure,
-  compressibility: pressureByDensity,
+  stiffness: pressureByDensity,
   heatCapacity: heatCapacityV,
 });
 
@@ -173,8 +173,8 @@ function sumOf(eos: EquationOfState, density: number, temperature: number, compo
     return fromState(eos.state(density, temperature, composition));
   } catch (error) {
     if (!(error instanceof FermistateError && error.code === "unstable")) throw error;
-    const { fR, fRR, fTT } = eos.freeEnergy(density, temperature, composition);
-    const heatCapacity = temperature === 0 ? 0 : -fTT / temperature;
-    return { pressure: density * fR, compressibility: 2 * fR + fRR, heatCapacity };
+    const { f10, f20, f02 } = eos.freeEnergy(density, temperature, composition);
+    const heatCapacity = temperature === 0 ? 0 : -f02 / temperature;
+    return { pressure: density * f10, stiffness: 2 * f10 + f20, heatCapacity };
   }
 }

@@ -112,7 +112,7 @@ export type StarWith<Options> = Star &
     ? { readonly loveNumber: number; readonly tidalDeformability: number }
     : unknown);
 
-/** Options without unknown names: a slip of the pen does not compile. */
+/** Options without unknown names: a misspelt one does not compile. */
 export type Known<Options, All> = Options & { readonly [Name in Exclude<keyof Options, keyof All>]: never };
 
 const DEFAULT_TOLERANCE = 1e-11;

@@ -25,7 +25,7 @@ export async function checksumOf(items: readonly Item[]): Promise<string> {
   return sha256(utf8(list));
 }
 
-/** The bytes of an item: a view of its memory, which is little-endian wherever WebAssembly is at home. */
+/** The bytes of an item: a view of its memory, which is little-endian on every machine that runs WebAssembly. */
 function bytesOf({ kind, values }: Item): Uint8Array {
   if (kind === "text") return utf8((values as readonly string[]).map((text) => `${text}\n`).join(""));
   const { buffer, byteOffset, byteLength } = values as Exclude<Item["values"], readonly string[]>;

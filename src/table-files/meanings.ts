@@ -1,4 +1,4 @@
-/** What each item of a table means and in which unit, for the files: a stranger needs nothing else to use the numbers. */
+/** What each item of a table means and in which unit, for the files: who reads a file needs nothing else to use the numbers. */
 import { formatMeanings, type Meaning } from "./form.js";
 
 /** What the whole is. */

@@ -22,7 +22,7 @@ export type SpeciesQuantity =
   | "entropy"
   | "densityByDegeneracy"
   | "heatCapacity"
-  | "compressibility"
+  | "pressureByDensity"
   | "pressureByTemperature";
 
 /** Their names. */
@@ -32,7 +32,7 @@ export const speciesQuantities: readonly SpeciesQuantity[] = [
   "entropy",
   "densityByDegeneracy",
   "heatCapacity",
-  "compressibility",
+  "pressureByDensity",
   "pressureByTemperature",
 ];
 
@@ -50,7 +50,7 @@ export interface SpeciesError {
 
 /**
  * How far the gas of electrons alone is from its integrals, relative, measured all over the table. heatCapacity is that
- * at constant volume, compressibility n dP/dn, pressureByTemperature T dP/dT at constant density.
+ * at constant volume, pressureByDensity n dP/dn at constant temperature, pressureByTemperature T dP/dT at constant density.
  */
 export interface SpeciesCertificate {
   /** Number of places measured. */

@@ -9,7 +9,7 @@ import type { BatchInput, BatchOutput, EquationOfState, FreeEnergyDerivatives, S
 import { type Evaluator, evaluatorOf } from "./evaluator.js";
 import { MEMBER_COUNT, naturalDerivatives, type Order, SECOND_ORDER_COUNT } from "./free-energy.js";
 import { FIRST_PLASMA_QUANTITY, QUANTITY_COUNT, quantityNames } from "./quantities.js";
-import { ANSWERED } from "./reason.js";
+import { ANSWERED } from "./refusal-numbers.js";
 import { reasonOf, reasonOutside } from "./refusal-reasons.js";
 import { freeEnergyFrom, stateFrom } from "./state.js";
 

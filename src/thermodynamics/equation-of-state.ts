@@ -78,8 +78,7 @@ export interface EquationOfState {
    * Many states at once: writes the columns of `output` that are given and allocates nothing per point.
    *
    * All inputs are checked before the first row is written, and the first row without an answer is refused; with a
-   * column
-   * `refused` in the output every other row is answered.
+   * column `refused` in the output every other row is answered.
    * @throws as {@link EquationOfState.state}, with the row; `length-mismatch`; `unavailable-quantity`
    */
   evaluate(input: BatchInput, output: BatchOutput): void;
@@ -98,25 +97,25 @@ export interface EquationOfState {
 /** Scaled derivatives rho^i T^j d^(i+j)F/(d rho^i d T^j), erg/g; the third-order ones only at order 3. */
 export interface FreeEnergyDerivatives {
   /** F. */
-  readonly f: number;
+  readonly f00: number;
   /** rho F_rho. */
-  readonly fR: number;
+  readonly f10: number;
   /** T F_T. */
-  readonly fT: number;
+  readonly f01: number;
   /** rho^2 F_rho,rho. */
-  readonly fRR: number;
+  readonly f20: number;
   /** rho T F_rho,T. */
-  readonly fRT: number;
+  readonly f11: number;
   /** T^2 F_TT. */
-  readonly fTT: number;
+  readonly f02: number;
   /** rho^3 F_rho,rho,rho. */
-  readonly fRRR?: number;
+  readonly f30?: number;
   /** rho^2 T F_rho,rho,T. */
-  readonly fRRT?: number;
+  readonly f21?: number;
   /** rho T^2 F_rho,T,T. */
-  readonly fRTT?: number;
+  readonly f12?: number;
   /** T^3 F_TTT. */
-  readonly fTTT?: number;
+  readonly f03?: number;
   /** rho^2 T^2 F_rho,rho,T,T. */
-  readonly fRRTT?: number;
+  readonly f22?: number;
 }

@@ -11,7 +11,7 @@ import type { Contribution } from "./contribution.js";
 import { commonDomain } from "./domain.js";
 import { MEMBER_COUNT, moveMembers, type Order, SECOND_ORDER_COUNT } from "./free-energy.js";
 import { fillPlasmaQuantities, fillQuantities, QUANTITY_COUNT } from "./quantities.js";
-import { ANSWERED } from "./reason.js";
+import { ANSWERED } from "./refusal-numbers.js";
 import { addFromElectronDensity, SPECIES_LENGTH } from "./species-members.js";
 import { refuseUnstable } from "./stability.js";
 

@@ -30,7 +30,7 @@ import {
   NO_NUMBER_ADDED,
   NO_PRESSURE,
   NO_RESISTANCE,
-} from "./reason.js";
+} from "./refusal-numbers.js";
 
 /** What a quantity is called, measured in, and means. */
 export interface Quantity {
@@ -146,7 +146,7 @@ export function fillQuantities(
   const density = point[DENSITY]!;
   const temperature = point[TEMPERATURE]!;
   const specificPressure = members[PRESSURE]!;
-  const compressibility = members[PRESSURE_R]!;
+  const pressureByDensity = members[PRESSURE_R]!;
   const thermal = members[PRESSURE_T]!;
   const heat = members[HEAT]!;
   const energy = members[ENERGY]!;
@@ -154,8 +154,8 @@ export function fillQuantities(
 
   // d ln T/d ln rho at constant entropy. A sum without thermal part does not know its temperature: there it is zero.
   const grueneisen = atZero ? (cold[0]! > 0 ? cold[1]! / cold[0]! : 0) : heat > 0 ? thermal / heat : 0;
-  const adiabatic = compressibility + thermal * grueneisen; // (dP/drho) at constant entropy
-  if (!(specificPressure > 0 && compressibility >= 0 && adiabatic > 0 && heat >= 0 && Number.isFinite(energy))) {
+  const adiabatic = pressureByDensity + thermal * grueneisen; // (dP/drho) at constant entropy
+  if (!(specificPressure > 0 && pressureByDensity >= 0 && adiabatic > 0 && heat >= 0 && Number.isFinite(energy))) {
     return instability(members, adiabatic, out);
   }
   const pressure = specificPressure * density;
@@ -172,8 +172,8 @@ export function fillQuantities(
   out[3] = energy - members[ENTROPY]!;
   out[4] = energy + specificPressure;
   out[5] = heatCapacity;
-  out[6] = (heatCapacity * adiabatic) / compressibility;
-  out[7] = compressibility * perPressure;
+  out[6] = (heatCapacity * adiabatic) / pressureByDensity;
+  out[7] = pressureByDensity * perPressure;
   out[8] = thermal * perPressure;
   out[9] = gamma1;
   out[10] = 1 / (1 - gradient);
@@ -181,7 +181,7 @@ export function fillQuantities(
   out[12] = gradient;
   out[13] = Math.sqrt(adiabatic / (1 + (energy + specificPressure) * PER_LIGHT_SPEED_SQUARED));
   out[14] = adiabatic * density;
-  out[15] = compressibility;
+  out[15] = pressureByDensity;
   out[16] = thermal * density * perTemperature;
   out[17] = (specificPressure - thermal) * perDensity;
   out[18] = heatCapacity;

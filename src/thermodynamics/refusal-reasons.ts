@@ -16,7 +16,7 @@ import {
   TEMPERATURE_NO_NUMBER,
   TEMPERATURE_TOO_HIGH,
   TEMPERATURE_TOO_LOW,
-} from "./reason.js";
+} from "./refusal-numbers.js";
 
 /** Why a row has no answer. */
 export interface RefusalReason {

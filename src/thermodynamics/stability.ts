@@ -11,7 +11,7 @@ import {
   NO_NUMBER_ADDED,
   NO_PRESSURE,
   NO_RESISTANCE,
-} from "./reason.js";
+} from "./refusal-numbers.js";
 
 /** The records and steps of an evaluator that are needed here. */
 interface Steps {

@@ -48,20 +48,20 @@ export function stateFrom(density: number, temperature: number, composition: Com
 /** The natural derivatives as an object; `f` in the order of free-energy.ts. */
 export function freeEnergyFrom(f: Float64Array, order: Order): FreeEnergyDerivatives {
   if (order === 2) {
-    return Object.freeze({ f: f[0]!, fR: f[1]!, fT: f[2]!, fRR: f[3]!, fRT: f[4]!, fTT: f[5]! });
+    return Object.freeze({ f00: f[0]!, f10: f[1]!, f01: f[2]!, f20: f[3]!, f11: f[4]!, f02: f[5]! });
   }
   return Object.freeze({
-    f: f[0]!,
-    fR: f[1]!,
-    fT: f[2]!,
-    fRR: f[3]!,
-    fRT: f[4]!,
-    fTT: f[5]!,
-    fRRR: f[6]!,
-    fRRT: f[7]!,
-    fRTT: f[8]!,
-    fTTT: f[9]!,
-    fRRTT: f[10]!,
+    f00: f[0]!,
+    f10: f[1]!,
+    f01: f[2]!,
+    f20: f[3]!,
+    f11: f[4]!,
+    f02: f[5]!,
+    f30: f[6]!,
+    f21: f[7]!,
+    f12: f[8]!,
+    f03: f[9]!,
+    f22: f[10]!,
   });
 }
 

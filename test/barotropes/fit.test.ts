@@ -255,9 +255,9 @@ describe("smooth fits", () => {
       const at = (sign: number) => eos.freeEnergy(density * Math.exp(sign * h), 0, core, 3);
       const [below, here, above] = [at(-1), at(0), at(1)];
       // d/d ln rho of F_10 and F_20 by central differences, which err by h^2.
-      expect(Math.abs((above.f - below.f) / (2 * h) / here.fR - 1)).toBeLessThan(2e-8);
-      expect(Math.abs((above.fR - below.fR) / (2 * h) / (here.fR + here.fRR) - 1)).toBeLessThan(2e-7);
-      expect(Math.abs((above.fRR - below.fRR) / (2 * h) / (2 * here.fRR + here.fRRR!) - 1)).toBeLessThan(2e-6);
+      expect(Math.abs((above.f00 - below.f00) / (2 * h) / here.f10 - 1)).toBeLessThan(2e-8);
+      expect(Math.abs((above.f10 - below.f10) / (2 * h) / (here.f10 + here.f20) - 1)).toBeLessThan(2e-7);
+      expect(Math.abs((above.f20 - below.f20) / (2 * h) / (2 * here.f20 + here.f30!) - 1)).toBeLessThan(2e-6);
       record[1] = state.pressure;
       fit.fillAtPressure(record);
       expect(Math.abs(record[0]! / density - 1)).toBeLessThan(1e-14);

@@ -134,11 +134,11 @@ describe("a polytrope", () => {
     // F = (3/2) K rho^(2/3): each scaled derivative is a falling factorial of 2/3.
     const f = 1.5e13 * 1e4;
     const found = eos.freeEnergy(1e6, 1e7, core, 3);
-    const expected = { f, fR: (2 / 3) * f, fRR: (-2 / 9) * f, fRRR: (8 / 27) * f };
+    const expected = { f00: f, f10: (2 / 3) * f, f20: (-2 / 9) * f, f30: (8 / 27) * f };
     for (const [name, value] of Object.entries(expected)) {
       expect(Math.abs(found[name as keyof typeof expected]! / value - 1), name).toBeLessThan(1e-14);
     }
-    expect([found.fT, found.fRT, found.fTT, found.fRRT].every((value) => value === 0)).toBe(true);
+    expect([found.f01, found.f11, found.f02, found.f21].every((value) => value === 0)).toBe(true);
   });
 
   test.each([

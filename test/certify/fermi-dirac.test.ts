@@ -1,5 +1,5 @@
 /**
- * Generalised Fermi-Dirac integrals against closed forms and against values computed elsewhere.
+ * Generalised Fermi-Dirac integrals against closed forms and against values computed independently.
  *
  * fermi-dirac-and-pair-gas.json: float128 tanh-sinh quadrature, 30 digits, 30 of its values confirmed by mpmath
  * Gauss-Legendre at 40 digits. All 248 values agree with referenceFermiDirac at 30 digits to 4.2e-30; eight rows

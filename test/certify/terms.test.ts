@@ -1,6 +1,6 @@
 /**
  * The decimal terms of src/certify against figures made outside this library: test/fixtures/coulomb-terms.json and
- * state-*.json, whose heads say how (the cited formulas in 50-digit arithmetic, by another program).
+ * state-*.json, whose heads say how (the cited formulas in 50-digit arithmetic, evaluated before the library was written).
  */
 import { readFileSync } from "node:fs";
 import type { Decimal } from "decimal.js";
@@ -59,7 +59,7 @@ type Made = (args: readonly string[]) => Series | undefined;
 
 /** Terms of the fixture by name: f/kT from the arguments. */
 const terms: Readonly<Record<string, Made>> = {
-  "f_ii setB": ([gamma]) => classicalLiquid(plasmaWith({ gamma: gamma! }), ion(1)),
+  "f_ii second set": ([gamma]) => classicalLiquid(plasmaWith({ gamma: gamma! }), ion(1)),
   fq_wk: ([theta]) => wignerKirkwood(plasmaWith({ theta: theta! }), ion(1)),
   fq_by19: ([theta]) => baikoYakovlev(plasmaWith({ theta: theta! }), ion(1)),
   fq_2osc: ([theta]) => twoOscillators(plasmaWith({ theta: theta! }), ion(1)),
@@ -74,7 +74,8 @@ const terms: Readonly<Record<string, Made>> = {
       .plus(phonons(plasma, ion(1), bcc))
       .plus(anharmonic(plasma, ion(1), bcc)!);
   },
-  "f_xc joined GDSMFB (per electron)": ([gammaE, rs]) => exchangeCorrelation(plasmaWith({ gammaE: gammaE!, rs: rs! })),
+  "f_xc joined Groth 2017 (per electron)": ([gammaE, rs]) =>
+    exchangeCorrelation(plasmaWith({ gammaE: gammaE!, rs: rs! })),
 };
 
 /** The charge is part of the name: "f_ie liquid Z=6 (6,)". */
@@ -102,14 +103,14 @@ test("terms as functions of Gamma, theta, r_s: 20 digits of all six numbers", ()
     if (f === undefined) continue;
     // exchange is per electron and has its kT already
     const isEnergy = row["term"]!.includes("xc");
-    const [F, fR, fT, fRR, fRT, fTT] = naturalDerivatives(isEnergy ? f : f.times(temperature)) as Decimal[];
+    const [F, f10, f01, f20, f11, f02] = naturalDerivatives(isEnergy ? f : f.times(temperature)) as Decimal[];
     const values: Readonly<Record<string, Decimal>> = {
       f: F!,
-      u: F!.minus(fT!),
-      cv: fTT!.neg(),
-      p: fR!,
-      dPdn: fR!.times(2).plus(fRR!),
-      dPdT: fRT!,
+      u: F!.minus(f01!),
+      cv: f02!.neg(),
+      p: f10!,
+      dPdn: f10!.times(2).plus(f20!),
+      dPdT: f11!,
     };
     for (const [name, value] of Object.entries(values)) {
       const error = value.minus(row[name]!).div(row[name]!).abs().toNumber();
@@ -199,8 +200,8 @@ describe.each(["state-liquid.json", "state-crystal.json"])("%s", (name) => {
         if (share === "electrons") continue;
         const term = made.terms.find((one) => one.name === shares[share]);
         expect(term, `${share} in ${row["comp"]}`).toBeDefined();
-        const [F, fR, fT, , , fTT] = term!.derivatives.map((one) => decimal(one));
-        const values = { F: F!, P: fR!.times(rho), e: F!.minus(fT!), s: fT!.neg().div(T), c_v: fTT!.neg().div(T) };
+        const [F, f10, f01, , , f02] = term!.derivatives.map((one) => decimal(one));
+        const values = { F: F!, P: f10!.times(rho), e: F!.minus(f01!), s: f01!.neg().div(T), c_v: f02!.neg().div(T) };
         for (const [column, value] of Object.entries(values)) {
           // what a term has none of is printed as 0; here it is rounding of the reference's digits
           const scale = columns[column] === "0" ? decimal(row[column]!).abs() : decimal(columns[column]!).abs();
@@ -214,7 +215,7 @@ describe.each(["state-liquid.json", "state-crystal.json"])("%s", (name) => {
 });
 
 test("sums with electrons to third order: 20 digits of all derivatives", () => {
-  const names = ["F", "F_r", "F_t", "F_rr", "F_rt", "F_tt", "F_rrr", "F_rrt", "F_rtt", "F_ttt", "F_rrtt"];
+  const names = ["F", "F_10", "F_01", "F_20", "F_11", "F_02", "F_30", "F_21", "F_12", "F_03", "F_22"];
   const measured = new Measured();
   const rows = rowsOf("../fixtures/state-third.json").filter((row) => isExact(row) && row["set"] !== "ideal");
   for (const row of rows.filter((_, i) => i % 2 === 0)) {

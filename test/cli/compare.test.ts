@@ -43,7 +43,7 @@ describe("fermistate compare", () => {
   test("writes the report and maps, whole or not at all", async () => {
     const { code, out } = await command(`${line} --out two.txt --map pressure,temperatureExponent`);
     expect(code).toBe(0);
-    expect(readdirSync(cwd).sort()).toEqual(["two-temperatureExponent.svg", "two-pressure.svg", "two.txt"]);
+    expect(readdirSync(cwd).sort()).toEqual(["two-pressure.svg", "two-temperatureExponent.svg", "two.txt"]);
     expect(readFileSync(join(cwd, "two.txt"), "utf8")).toBe(comparisonText(found));
     expect(readFileSync(join(cwd, "two-temperatureExponent.svg"), "utf8")).toBe(
       comparisonMap(found, "temperatureExponent"),

@@ -78,7 +78,7 @@ test("the table: 16 pressures of each term to the digits printed", () => {
       const [exchange, correlation] = electrons[z === 26 ? "iron" : "half"][i]!;
       const compare = (name: string, options: ColdCorrectionsOptions, expected: string): void => {
         const part = combine(coldCorrections({ ...none, ...options })).freeEnergy(density, 0, matter);
-        const ratio = (density * part.fR) / ideal;
+        const ratio = (density * part.f10) / ideal;
         // What rounding in print does not explain.
         const excess = Math.max(0, Math.abs(ratio - Number(expected)) - halfUnit(expected));
         measured.add(name, excess / Math.abs(ratio), `Z ${z} rho ${density}: ${ratio} for ${expected}`);
@@ -102,7 +102,7 @@ test("the table: 16 pressures of each term to the digits printed", () => {
 
 test("the ion sphere has 0.9 in place of 0.8959", () => {
   const pressure = (lattice: "bcc" | "ion-sphere"): number =>
-    combine(coldCorrections({ ...none, lattice })).freeEnergy(1e6, 0, nucleus(6, 12)).fR;
+    combine(coldCorrections({ ...none, lattice })).freeEnergy(1e6, 0, nucleus(6, 12)).f10;
   expect(Math.abs(pressure("ion-sphere") / pressure("bcc") - 0.9 / 0.8959292556817653)).toBeLessThan(1e-15);
 });
 
@@ -119,8 +119,8 @@ test("energy, pressure and their derivatives belong together: integrals along de
     const part = combine(coldCorrections(options));
     for (const start of [1e2, 1e4, 1e6, 3e6, 1e8, 1e10]) {
       const at = (s: number) => {
-        const { f, fR, fRR, fRRR } = part.freeEnergy(start * Math.exp(s * length), 0, nucleus(6, 12), 3);
-        return [f, fR, fRR, fRRR!] as const;
+        const { f00: f, f10, f20, f30 } = part.freeEnergy(start * Math.exp(s * length), 0, nucleus(6, 12), 3);
+        return [f, f10, f20, f30!] as const;
       };
       const [begin, end] = [at(0), at(1)];
       const scale = Math.max(...begin.map(Math.abs));
@@ -142,7 +142,7 @@ describe("what it is not for", () => {
     const part = combine(coldCorrections());
     const cold = part.freeEnergy(1e6, 0, nucleus(6, 12), 3);
     expect(part.freeEnergy(1e6, 1e7, nucleus(6, 12), 3)).toEqual(cold);
-    expect([cold.fT, cold.fTT, cold.fRT].map(Math.abs)).toEqual([0, 0, 0]);
+    expect([cold.f01, cold.f02, cold.f11].map(Math.abs)).toEqual([0, 0, 0]);
   });
 
   test("not beside a Coulomb plasma, and no other lattice", () => {

@@ -1,6 +1,6 @@
 /**
- * The terms of the crystal: rows of fixtures/coulomb-terms.json (own 50-digit evaluation of the cited formulas by
- * another program), the exact phonons of phonons.ts, and limits.
+ * The terms of the crystal: rows of fixtures/coulomb-terms.json (the cited formulas in 50-digit
+ * arithmetic, evaluated before the library was written), the exact phonons of phonons.ts, and limits.
  */
 import { readFileSync } from "node:fs";
 import { describe, expect, test } from "vitest";

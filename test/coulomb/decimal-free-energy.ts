@@ -315,7 +315,7 @@ export function crystal(composition: Composition, form: Form): FreeEnergy {
   };
 }
 
-/** The classic cold set with the bcc lattice. */
+/** The corrections of Salpeter (1961) with the bcc lattice. */
 export function cold(composition: Composition, form: Form): FreeEnergy {
   const nuclei = nucleiOf(composition, form.lattice);
   return (density, temperature, amounts) => {

@@ -56,7 +56,7 @@ const ground = [0, 1, 3, 6];
 
 test("reference rows: f, u, c_v and pressure with its derivatives", () => {
   const measured = new Measured();
-  for (const term of ["f_xc joined GDSMFB (per electron)", "f_xc GDSMFB (per electron)"]) {
+  for (const term of ["f_xc joined Groth 2017 (per electron)", "f_xc Groth 2017 (per electron)"]) {
     const rows = rowsOf(term);
     expect(rows.length).toBe(5);
     for (const row of rows) {

@@ -1,5 +1,5 @@
 /**
- * Quantum corrections of the liquid: formulas in decimal arithmetic, 50-digit values of another program
+ * Quantum corrections of the liquid: formulas in decimal arithmetic, 50-digit values made before the library
  * (fixtures/coulomb-terms.json), the exact first order, harmonic lattice dynamics (fixtures/phonons.json) and
  * path-integral Monte Carlo.
  */

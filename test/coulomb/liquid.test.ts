@@ -1,5 +1,5 @@
 /**
- * Classical one-component liquid: the formula as printed in decimal arithmetic, 50-digit values of another program
+ * Classical one-component liquid: the formula as printed in decimal arithmetic, 50-digit values made before the library
  * (fixtures/coulomb-terms.json), exact weak coupling, and simulations.
  *
  * Formula and coefficients: Potekhin & Chabrier 2000, PRE 62, 8554, section IV (from memory).
@@ -82,7 +82,7 @@ describe("classical liquid", () => {
   // Measured: 3.4e-16 (cv), entropy 1.8e-16 of f.
   test("agrees with the 50-digit values", () => {
     const measured = new Measured();
-    for (const row of rows.filter(({ term }) => term === "f_ii setB")) {
+    for (const row of rows.filter(({ term }) => term === "f_ii second set")) {
       const gamma = Number(row.args[0]);
       const [f, e, second, , , entropy] = members(gamma) as unknown as [number, number, number, number, number, number];
       const compare = (name: string, value: number): void =>

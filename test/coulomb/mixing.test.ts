@@ -1,5 +1,5 @@
 /**
- * Departures from linear mixing: 50-digit values of another program (fixtures/coulomb-terms.json), the formulas as
+ * Departures from linear mixing: 50-digit values made before the library (fixtures/coulomb-terms.json), the formulas as
  * printed in decimal arithmetic, exact weak coupling (debye-hueckel.ts), and what must hold for isotopes and neutrons.
  */
 import { readFileSync } from "node:fs";

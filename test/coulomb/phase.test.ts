@@ -228,7 +228,7 @@ describe("melting of the rigid classical plasma", () => {
       const temperature = meltingTemperature(density, iron, gamma);
       const kT = iron.ionsPerGram * boltzmannConstant * temperature;
       return (
-        (liquid!.freeEnergy(density, temperature, iron).f - crystal!.freeEnergy(density, temperature, iron).f) / kT
+        (liquid!.freeEnergy(density, temperature, iron).f00 - crystal!.freeEnergy(density, temperature, iron).f00) / kT
       );
     };
     const [a1, a2, a3] = bcc.exponents;

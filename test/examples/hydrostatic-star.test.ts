@@ -24,7 +24,7 @@ const electrons = combine(electronPositronGas());
 /**
  * Chandrasekhar 1935, MNRAS 95, 207 (also 1939, An Introduction to the Study of Stellar Structure, table 25): the first zero eta1 of
  * phi and -eta1^2 phi'(eta1), by 1/y0^2 = 1/(1 + x_c^2). The printed tables give five digits; these are the same equation
- * integrated in high precision elsewhere.
+ * integrated independently in high precision.
  */
 const degenerateDwarfs = [
   [0.001, 6.2603517794, 2.00775511475],
@@ -57,7 +57,7 @@ test("mass and radius of ideal degenerate dwarfs", () => {
 });
 
 test("a Coulomb lattice: the star ends at a finite density", () => {
-  // Electrons and bcc lattice at T = 0, Newtonian gravity; integrated elsewhere by two methods, masses to 1e-12.
+  // Electrons and bcc lattice at T = 0, Newtonian gravity; integrated independently by two methods, masses to 1e-12.
   const eos = combine(
     electronPositronGas(),
     coldCorrections({ thomasFermi: false, exchange: false, correlation: false }),
@@ -84,7 +84,7 @@ test("a Coulomb lattice: the star ends at a finite density", () => {
 
 test("the error follows the tolerance", () => {
   const matter = composition({ C12: 1 });
-  const mass = 0.400811179788254101; // ideal electrons, 1e6 g/cm^3, Newtonian gravity; integrated elsewhere as above
+  const mass = 0.400811179788254101; // ideal electrons, 1e6 g/cm^3, Newtonian gravity; integrated independently as above
   for (const [tolerance, bound, most] of [
     [1e-4, 1e-5, 160],
     [1e-6, 1e-7, 280],

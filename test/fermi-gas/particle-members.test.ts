@@ -42,16 +42,16 @@ test("electrons and positrons: mu, and the derivatives of e, s and P by n", { ti
     // The plain difference below loses the digits of (pairs/net electrons)^2, up to 25.
     const lost = 2 * Math.log10(1 + positronDensity! / netElectronDensity);
     const exact = referenceElectronGas({ temperature, netElectronDensity }, { digits: Math.ceil(20 + lost) });
-    const { chemicalPotential, dPdn, dPdT, entropyDensity } = exact;
+    const { chemicalPotential, pressureByDensity, pressureByTemperature, entropyDensity } = exact;
     // dP/dT at n is s + n dmu/dT.
-    const heat = entropyDensity.minus(dPdT).div(netElectronDensity).times(temperature); // -T dmu/dT
+    const heat = entropyDensity.minus(pressureByTemperature).div(netElectronDensity).times(temperature); // -T dmu/dT
     const energy = chemicalPotential.plus(heat);
     const scale = Math.max(Math.abs(Number(energy)), Math.abs(Number(heat)));
     const per = atomicMassConstant;
     measured.compare("F", found.chemicalPotential, Number(chemicalPotential), where, scale);
     measured.compare("e", found.specificEnergy * per, Number(energy), where);
     measured.compare("s", found.specificEntropy * temperature * per, Number(heat), where);
-    measured.compare("P", (found.pressure / density) * per, Number(dPdn), where);
+    measured.compare("P", (found.pressure / density) * per, Number(pressureByDensity), where);
   }
   if (process.env["FERMISTATE_PRINT"]) console.info(measured.table());
   expect(measured.count("F")).toBe(points.length);
@@ -61,10 +61,14 @@ test("electrons and positrons: mu, and the derivatives of e, s and P by n", { ti
 
 test("T = 0: Fermi energy and n de_F/dn", () => {
   for (const density of [1e3, 1e6, 1e9]) {
-    const { chemicalPotential, dPdn } = referenceElectronGas({ temperature: 0, density, electronsPerNucleon: 1 });
+    const { chemicalPotential, pressureByDensity } = referenceElectronGas({
+      temperature: 0,
+      density,
+      electronsPerNucleon: 1,
+    });
     const found = compositionDerivatives(electrons, density, 0, hydrogen).of("H1");
     expect(found.chemicalPotential / Number(chemicalPotential)).toBeCloseTo(1, 14);
-    expect((found.pressure * atomicMassConstant) / density / Number(dPdn)).toBeCloseTo(1, 14);
+    expect((found.pressure * atomicMassConstant) / density / Number(pressureByDensity)).toBeCloseTo(1, 14);
     expect(found.specificEntropy).toBe(0);
   }
 });

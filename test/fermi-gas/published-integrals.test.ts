@@ -1,5 +1,5 @@
 /**
- * The Fermi gas against integrals computed elsewhere.
+ * The Fermi gas against integrals computed independently.
  *
  * fermi-dirac-and-pair-gas.json: float128 tanh-sinh quadrature, 30 random integrals confirmed by mpmath at 40 digits;
  * generalised integrals as defined by Gong et al. 2001, Comput. Phys. Commun. 136, 294.

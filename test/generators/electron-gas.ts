@@ -24,14 +24,14 @@ const columns: readonly [heading: string, name: keyof ElectronGasValues][] = [
   ["P", "pressure"],
   ["e_pair", "energyDensity"],
   ["s", "entropyDensity"],
-  ["dP_dn", "dPdn"],
-  ["dP_dT", "dPdT"],
+  ["dP_dn", "pressureByDensity"],
+  ["dP_dT", "pressureByTemperature"],
   ["c_v", "heatCapacityDensity"],
-  ["d2P_dn2", "d2Pdn2"],
-  ["d2P_dndT", "d2PdndT"],
-  ["d2P_dT2", "d2PdT2"],
-  ["d2s_dT2", "d2sdT2"],
-  ["d3P_dndT2", "d3PdndT2"],
+  ["d2P_dn2", "pressureByDensityTwice"],
+  ["d2P_dndT", "pressureByDensityAndTemperature"],
+  ["d2P_dT2", "pressureByTemperatureTwice"],
+  ["d2s_dT2", "entropyByTemperatureTwice"],
+  ["d3P_dndT2", "pressureByDensityAndTemperatureTwice"],
 ];
 const digits = 25;
 const printedDigits = 20;

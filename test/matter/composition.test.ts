@@ -1,4 +1,4 @@
-/** Compositions against mpmath (40 digits), exact fractions, and the free energy of ions worked out elsewhere. */
+/** Compositions against mpmath (40 digits), exact fractions, and the free energy of ions worked out independently. */
 import fc from "fast-check";
 import { describe, expect, test } from "vitest";
 import { atomicMassConstant, boltzmannConstant, electronMass, reducedPlanckConstant } from "../../src/constants.js";

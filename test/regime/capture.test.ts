@@ -1,4 +1,4 @@
-/** Thresholds of electron capture against AME2020 and densities worked out elsewhere (fixtures/electron-capture.json). */
+/** Thresholds of electron capture against AME2020 and densities worked out independently (fixtures/electron-capture.json). */
 import { readFileSync } from "node:fs";
 import { expect, test } from "vitest";
 import { electronRestEnergy, electronVolt } from "../../src/constants.js";

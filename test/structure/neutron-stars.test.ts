@@ -51,8 +51,10 @@ describe("published fits have the maxima and radii that an independent integrati
   });
 });
 
-describe("all pieces of Read et al. 2009 against another integration (test/generators/published-stars.mjs)", () => {
-  const { rows } = JSON.parse(readFileSync(new URL("../fixtures/published-stars.json", import.meta.url), "utf8")) as {
+describe("all pieces of Read et al. 2009 against another integration (test/generators/piecewise-polytrope-stars.mjs)", () => {
+  const { rows } = JSON.parse(
+    readFileSync(new URL("../fixtures/piecewise-polytrope-stars.json", import.meta.url), "utf8"),
+  ) as {
     rows: Record<string, Record<"mass" | "radius" | "centralDensity" | "radiusAt1_4", string>>;
   };
 

@@ -1,5 +1,5 @@
 /**
- * Stars against values computed elsewhere with 95-digit arithmetic (fixture state-sequence.json), Chandrasekhar's models, closed
+ * Stars against values computed independently with 95-digit arithmetic (fixture state-sequence.json), Chandrasekhar's models, closed
  * forms, the virial theorem, and the promised dependence on the tolerance.
  */
 import { readFileSync } from "node:fs";

@@ -10,7 +10,7 @@ import { idealIons } from "../../src/ions/ideal-ions.js";
 import { composition } from "../../src/matter/composition.js";
 import { sortedRows } from "../../src/tables/foreign/columns.js";
 import { columnsContribution } from "../../src/tables/foreign/contribution.js";
-import { type ColumnFit, entropyShift, fitColumns } from "../../src/tables/foreign/fit.js";
+import { addedEntropy, type ColumnFit, fitColumns } from "../../src/tables/foreign/fit.js";
 import { meshOf, type StateMesh } from "../../src/tables/foreign/mesh.js";
 import { combine } from "../../src/thermodynamics/combine.js";
 import { MEMBER_COUNT, naturalDerivatives, naturalOrder } from "../../src/thermodynamics/free-energy.js";
@@ -67,7 +67,7 @@ function freeEnergy(mesh: StateMesh, fit: ColumnFit, u: Decimal, v: Decimal): De
   );
   const l = quintic(rows[0]!, rows[1]!, p.h, p.t);
   const cold = quintic(three(fit.cold, 3 * p.i), three(fit.cold, 3 * p.i + 3), p.h, p.t);
-  return cold.minus(l.exp()).plus(v.exp().times(exactly(fit.entropyShift)));
+  return cold.minus(l.exp()).plus(v.exp().times(exactly(fit.addedEntropy)));
 }
 
 const degenerate = combine(electronPositronGas(), idealIons());
@@ -95,7 +95,7 @@ describe.each(cases)("%s: the derivatives belong to one function", (_name, rows,
       specificEntropy: columns.specificEntropy.map(round),
     }),
   );
-  const fit = fitColumns(mesh, mesh.entropy!, entropyShift(mesh.entropy!));
+  const fit = fitColumns(mesh, mesh.entropy!, addedEntropy(mesh.entropy!));
   const eos = combine(columnsContribution(mesh, fit, core, "given columns", ""));
   const { point, members, fillMembers } = eos.evaluator();
   const natural = new Float64Array(MEMBER_COUNT);

@@ -1,5 +1,5 @@
 /**
- * Derivatives by every pair of variables against free energies computed elsewhere with 95-112 digit Taylor arithmetic
+ * Derivatives by every pair of variables against free energies computed independently with 95-112 digit Taylor arithmetic
  * (fixture state-third.json says how): their cubic Taylor polynomial has the exact first derivatives of every
  * quantity that is made of F and its first and second derivatives. Quantities here are the textbook's (Cox & Giuli 1968,
  * chapter 9) in 100-digit decimal numbers, differentiated by central differences of relative step 1e-25 (error 1e-50).
@@ -24,15 +24,15 @@ const lightSpeedSquared = new Exact("29979245800").pow(2);
 /** Columns of the fixture: scaled derivatives of order (i, j). */
 const orders: readonly (readonly [column: string, i: number, j: number])[] = [
   ["F", 0, 0],
-  ["F_r", 1, 0],
-  ["F_t", 0, 1],
-  ["F_rr", 2, 0],
-  ["F_rt", 1, 1],
-  ["F_tt", 0, 2],
-  ["F_rrr", 3, 0],
-  ["F_rrt", 2, 1],
-  ["F_rtt", 1, 2],
-  ["F_ttt", 0, 3],
+  ["F_10", 1, 0],
+  ["F_01", 0, 1],
+  ["F_20", 2, 0],
+  ["F_11", 1, 1],
+  ["F_02", 0, 2],
+  ["F_30", 3, 0],
+  ["F_21", 2, 1],
+  ["F_12", 1, 2],
+  ["F_03", 0, 3],
 ];
 
 /** Every quantity at rho (1 + x), T (1 + y), from the polynomial with coefficients `f`. */
@@ -52,18 +52,18 @@ function quantitiesOf(f: readonly Decimal[], rho: Decimal, kelvin: Decimal, x: D
   const density = x.plus(1).times(rho);
   const temperature = y.plus(1).times(kelvin);
   const free = slope(0, 0);
-  const fR = slope(1, 0).div(rho);
-  const fT = slope(0, 1).div(kelvin);
-  const fRR = slope(2, 0).div(rho.pow(2));
-  const fRT = slope(1, 1).div(rho).div(kelvin);
-  const fTT = slope(0, 2).div(kelvin.pow(2));
-  const pressure = density.pow(2).times(fR);
-  const entropy = fT.neg();
+  const f10 = slope(1, 0).div(rho);
+  const f01 = slope(0, 1).div(kelvin);
+  const f20 = slope(2, 0).div(rho.pow(2));
+  const f11 = slope(1, 1).div(rho).div(kelvin);
+  const f02 = slope(0, 2).div(kelvin.pow(2));
+  const pressure = density.pow(2).times(f10);
+  const entropy = f01.neg();
   const energy = free.plus(temperature.times(entropy));
   const enthalpy = energy.plus(pressure.div(density));
-  const pressureR = density.times(fR).times(2).plus(density.pow(2).times(fRR));
-  const pressureT = density.pow(2).times(fRT);
-  const cv = temperature.times(fTT).neg();
+  const pressureR = density.times(f10).times(2).plus(density.pow(2).times(f20));
+  const pressureT = density.pow(2).times(f11);
+  const cv = temperature.times(f02).neg();
   const densityExponent = pressureR.times(density).div(pressure);
   const temperatureExponent = pressureT.times(temperature).div(pressure);
   const gamma3 = pressureT.div(density.times(cv)).plus(1);
@@ -93,10 +93,10 @@ function quantitiesOf(f: readonly Decimal[], rho: Decimal, kelvin: Decimal, x: D
     bulkModulus: gamma1.times(pressure),
     pressureByDensity: pressureR,
     pressureByTemperature: pressureT,
-    energyByDensity: fR.plus(temperature.times(fRT).neg()),
+    energyByDensity: f10.plus(temperature.times(f11).neg()),
     energyByTemperature: cv,
-    entropyByDensity: fRT.neg(),
-    entropyByTemperature: fTT.neg(),
+    entropyByDensity: f11.neg(),
+    entropyByTemperature: f02.neg(),
   };
   return differentiable.map((name) => all[name]);
 }

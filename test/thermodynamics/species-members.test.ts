@@ -201,9 +201,14 @@ describe("20 000 random points of the whole domain", () => {
         const parts = Math.max(Math.abs(one.specificEnergy), temperature * Math.abs(one.specificEntropy));
         return { sum: fraction * one.specificFreeEnergy, size: fraction * parts };
       });
-      const size = Math.max(...shares.map((one) => one.size), Math.abs(free.f), Math.abs(free.fR), Math.abs(free.fT));
+      const size = Math.max(
+        ...shares.map((one) => one.size),
+        Math.abs(free.f00),
+        Math.abs(free.f10),
+        Math.abs(free.f01),
+      );
       const total = shares.reduce((sum, one) => sum + one.sum, 0);
-      const error = size === 0 ? 0 : Math.abs(total - free.f - free.fR) / size;
+      const error = size === 0 ? 0 : Math.abs(total - free.f00 - free.f10) / size;
       if (!(error <= worst.error)) worst = { error, where };
     }
     if (process.env["FERMISTATE_PRINT"]) console.info(answers, worst);

@@ -13,7 +13,7 @@ export function deviationsOf(
   equationOfState: EquationOfState,
   composition: Composition,
   rows: SortedRows,
-  entropyShift: number,
+  addedEntropy: number,
 ): { readonly deviations: ColumnsDeviations; readonly rowsOutside: number } {
   const { point, members, fillMembers } = equationOfState.evaluator();
   const [coldest, hottest] = equationOfState.domain.temperature;
@@ -34,7 +34,7 @@ export function deviationsOf(
     energy![k] = (members[ENERGY]! - e) / (Math.abs(e) + p / rho);
     if (rows.entropy !== undefined) {
       const s = rows.entropy[row]!;
-      entropy![k] = (members[ENTROPY]! / kelvin - s) / Math.abs(s + entropyShift);
+      entropy![k] = (members[ENTROPY]! / kelvin - s) / Math.abs(s + addedEntropy);
     }
   });
   const place = (k: number): readonly [number, number] => [rows.density[inside[k]!]!, rows.temperature[inside[k]!]!];

@@ -25,7 +25,7 @@ export function columnsContribution(
     temperature: ends(mesh.temperature),
     zeroTemperature: false,
   });
-  const shift = Float64Array.of(fit.entropyShift);
+  const shift = Float64Array.of(fit.addedEntropy);
   let last: Composition | undefined;
 
   function accept(composition: Composition): void {

@@ -21,14 +21,14 @@ export interface ColumnFit {
   /** Powers of two taken out of exp L, by node: L stays small and its differences keep their digits. */
   readonly exponents: Int32Array;
   /** c, erg/(g K). */
-  readonly entropyShift: number;
+  readonly addedEntropy: number;
 }
 
 /** Distance of the lowest entropy from the zero of L, over the range of entropies, where that zero is moved. */
 const shiftShare = 0.25;
 
 /** What is added to every entropy so that all are positive; 0 where they are. */
-export function entropyShift(entropy: Float64Array): number {
+export function addedEntropy(entropy: Float64Array): number {
   let [least, most] = [Number.POSITIVE_INFINITY, Number.NEGATIVE_INFINITY];
   for (const s of entropy) {
     least = Math.min(least, s);
@@ -98,7 +98,7 @@ export function fitColumns(mesh: StateMesh, entropy: Float64Array, shift: number
   columns.forEach((column, i) => {
     for (let k = 0; k < m * n; k++) nodes[9 * k + i] = column[k]!;
   });
-  return { cold: coldNodes(), nodes, exponents, entropyShift: shift };
+  return { cold: coldNodes(), nodes, exponents, addedEntropy: shift };
 
   /** F_0 = F + exp L on the lowest isotherm; F' = P/rho there, but for the correction. */
   function coldNodes(): Float64Array {

@@ -11,7 +11,7 @@ import { type SortedRows, type StateColumns, sortedRows } from "./columns.js";
 import { deviationsOf, unstablePlaces } from "./compare.js";
 import { columnsContribution } from "./contribution.js";
 import { entropyFromEnergy } from "./entropy.js";
-import { entropyShift, fitColumns } from "./fit.js";
+import { addedEntropy, fitColumns } from "./fit.js";
 import { meshOf } from "./mesh.js";
 import type { ColumnsReport } from "./report.js";
 import { residualsOf, stabilityOf } from "./residuals.js";
@@ -99,12 +99,12 @@ export function equationOfStateFromColumns(columns: StateColumns, options: Colum
     throw new FermistateError("invalid-option", { argument: "entropyAtLowestNode", given: corner, allowed });
   }
   const entropy = mesh.entropy ?? entropyFromEnergy(mesh, corner);
-  const shift = entropyShift(entropy);
+  const shift = addedEntropy(entropy);
   const fit = fitColumns(mesh, entropy, shift);
   const make = (validity: string): EquationOfState =>
     combine(columnsContribution(mesh, fit, composition, name, validity), ...beside);
   const bare = make("");
-  const { deviations, rowsOutside } = deviationsOf(bare, composition, rows, entropyShift(rows.entropy ?? entropy));
+  const { deviations, rowsOutside } = deviationsOf(bare, composition, rows, addedEntropy(rows.entropy ?? entropy));
   const report: ColumnsReport = Object.freeze({
     arrangement: mesh.resampled ? "scattered in temperature" : "rectangular",
     rows: columns.density.length,

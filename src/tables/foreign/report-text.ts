@@ -24,7 +24,7 @@ export function columnsReportText(report: ColumnsReport): string {
   if (report.entropy !== "given") {
     lines.push("Entropy was not given: it follows from energy and pressure, and its zero is a choice.");
   }
-  lines.push("How the columns hang together, relative to the largest term of each relation:");
+  lines.push("How far the columns agree with each other, relative to the largest term of each relation:");
   for (const map of [residuals.maxwell, residuals.energy, residuals.heat]) {
     if (map !== undefined) lines.push(residualLine(map));
   }

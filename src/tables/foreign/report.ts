@@ -1,4 +1,4 @@
-/** What is said about columns: how they hang together, and how far the consistent free energy is from each of them. */
+/** What is said about columns: how far they agree with each other, and how far the consistent free energy is from each of them. */
 
 /** Places of a mesh, as plain columns. */
 export interface Places {
@@ -85,7 +85,7 @@ export interface ColumnsReport {
   readonly temperatures: Float64Array;
   /** Whether there was a column of entropy. */
   readonly entropy: "given" | "from pressure and energy";
-  /** How the columns hang together. */
+  /** How far the columns agree with each other. */
   readonly residuals: ColumnsResiduals;
   /** Where they are not those of stable matter. */
   readonly stability: ColumnsStability;

@@ -1,4 +1,4 @@
-/** How columns hang together at the nodes of their mesh: three thermodynamic relations, and signs that stable matter has. */
+/** How far columns agree with each other at the nodes of their mesh: three thermodynamic relations, and signs that stable matter has. */
 import type { StateMesh } from "./mesh.js";
 import { derivative, type MeshStencils, meshStencils, slope, widestStencil } from "./mesh-derivatives.js";
 import { type ColumnsResiduals, type ColumnsStability, type Places, type ResidualMap, spreadOf } from "./report.js";

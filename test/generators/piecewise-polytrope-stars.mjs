@@ -1,8 +1,8 @@
 /**
- * Writes test/fixtures/published-stars.json: heaviest stars and stars of 1.4 solar masses of the piecewise polytropes of Read, Lackey,
+ * Writes test/fixtures/piecewise-polytrope-stars.json: heaviest stars and stars of 1.4 solar masses of the piecewise polytropes of Read, Lackey,
  * Owen & Friedman 2009 (Phys. Rev. D 79, 124032, parameters from memory), by arithmetic of its own.
  *
- *     node test/generators/published-stars.mjs      (a minute; needs nothing)
+ *     node test/generators/piecewise-polytrope-stars.mjs      (a minute; needs nothing)
  *
  * Nothing of src: radius and mass as unknowns, the fourth root of ln((E + P)/(rho c^2)) as variable, Gragg's extrapolated midpoint
  * rule in steps that never cross a joint of the pieces, a maximum from a parabola through masses.
@@ -158,6 +158,6 @@ for (const [name, parameters] of Object.entries(cores)) {
 }
 const about =
   "Piecewise polytropes of Read et al. 2009: mass (solar), radius (km), central baryon density (g/cm^3) of the heaviest star and " +
-  "radius (km) of 1.4 solar masses; made by test/generators/published-stars.mjs";
-const file = new URL("../fixtures/published-stars.json", import.meta.url);
+  "radius (km) of 1.4 solar masses; made by test/generators/piecewise-polytrope-stars.mjs";
+const file = new URL("../fixtures/piecewise-polytrope-stars.json", import.meta.url);
 writeFileSync(file, `${JSON.stringify({ about, rows }, null, 1)}\n`);
