@@ -1,4 +1,5 @@
 /** A certificate in words, as CSV and as plain columns for a map. */
+import { nodeWarning } from "../thermodynamics/interpolation-nodes.js";
 import type { Certificate, ErrorSummary, RefusedPoints } from "./certify.js";
 import type { StateCertificate } from "./certify-state.js";
 import type { CertifiedQuantity } from "./reference-quantities.js";
@@ -19,6 +20,7 @@ export function certificateText(certificate: Omit<Certificate, "columns">): stri
           `${asked} points even in the logarithms, seed ${region.seed ?? 1}`,
         ];
   const refused = certificate.refused.map(refusedText);
+  const warning = nodeWarning(certificate.nodes, compared) ?? [];
   const rows = quantities.map(({ name, relative: { at, ...one } }) => [
     name,
     ...errorCells(one),
@@ -29,9 +31,9 @@ export function certificateText(certificate: Omit<Certificate, "columns">): stri
   const head = ["", "largest", "99 %", "median"];
   return [
     ...wrapped(`Certificate of ${equationOfState}`, ""),
-    ...[...aboutText(certificate), ...where, `${compared} of ${asked} points compared`, ...refused].flatMap((one) =>
-      wrapped(one),
-    ),
+    ...[...aboutText(certificate), ...where, `${compared} of ${asked} points compared`, ...refused]
+      .concat(warning)
+      .flatMap((one) => wrapped(one)),
     "",
     "Errors over the value, and where the largest is (g/cm^3, K)",
     ...aligned([[...head, "density", "temperature"], ...rows]),
@@ -47,16 +49,17 @@ export function certificateText(certificate: Omit<Certificate, "columns">): stri
 
 /** The audit of one state as text of at most 80 columns, with up to 30 digits. */
 export function stateCertificateText(certificate: StateCertificate): string {
-  const { equationOfState, density, temperature, values } = certificate;
+  const { equationOfState, density, temperature, isNode, values } = certificate;
+  const warning = nodeWarning(isNode ? 1 : 0, 1) ?? [];
   const rows = values.flatMap(({ name, unit, value, reference, relative, scaled }) => [
     [name, valueText(value), unit === "1" ? "" : unit, ""],
     ["", reference, error(relative), scaled === undefined ? "-" : error(scaled)],
   ]);
   return [
     ...wrapped(`Audit of ${equationOfState}`, ""),
-    ...[...aboutText(certificate), `${short(density)} g/cm^3 and ${short(temperature)} K`].flatMap((one) =>
-      wrapped(one),
-    ),
+    ...[...aboutText(certificate), `${short(density)} g/cm^3 and ${short(temperature)} K`]
+      .concat(warning)
+      .flatMap((one) => wrapped(one)),
     "",
     "Value, below it the reference, the error over the value and over the sum of",
     "the absolute values of all terms",
@@ -68,9 +71,12 @@ export function stateCertificateText(certificate: StateCertificate): string {
   ].join("\n");
 }
 
-/** Errors point by point as CSV: density, temperature, then per quantity the relative and the scaled error. */
-export function certificateCsv({ quantities, columns }: Certificate): string {
-  const { density, temperature, relative, scaled } = columns;
+/**
+ * Errors point by point as CSV: density, temperature, then per quantity the relative and the scaled error. Where points are nodes of a
+ * table, a last column has 1 there and 0 elsewhere.
+ */
+export function certificateCsv({ quantities, columns, nodes }: Certificate): string {
+  const { density, temperature, isNode, relative, scaled } = columns;
   const heads = quantities.flatMap(({ name }, k) => [
     `${name} relative error`,
     ...(scaled[k] === null ? [] : [`${name} error of sum of terms`]),
@@ -80,9 +86,10 @@ export function certificateCsv({ quantities, columns }: Certificate): string {
       rho,
       temperature[i]!,
       ...quantities.flatMap((_, k) => [relative[k]![i]!, ...(scaled[k] == null ? [] : [scaled[k]![i]!])]),
+      ...(nodes === 0 ? [] : [isNode[i] ? 1 : 0]),
     ].join(","),
   );
-  return `${[["density (g/cm^3)", "temperature (K)", ...heads].join(","), ...rows].join("\n")}\n`;
+  return `${[["density (g/cm^3)", "temperature (K)", ...heads, ...(nodes === 0 ? [] : ["node of a table"])].join(","), ...rows].join("\n")}\n`;
 }
 
 /** Columns of a map of the errors of one quantity. */

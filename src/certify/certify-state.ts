@@ -4,6 +4,7 @@ import type { Decimal } from "decimal.js";
 import { requireKnown } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
+import { isNodeOf } from "../thermodynamics/interpolation-nodes.js";
 import { type QuantityName, quantityNames } from "../thermodynamics/quantities.js";
 import { libraryVersion } from "../version.js";
 import { type Certificate, certificateDigits, unitOf } from "./certify.js";
@@ -60,6 +61,8 @@ export interface StateCertificate
   readonly density: number;
   /** Temperature, K. */
   readonly temperature: number;
+  /** True where it is a node of a table: exact by construction, it shows nothing of the error between nodes. */
+  readonly isNode: boolean;
   /** The numbers one by one. */
   readonly values: readonly CertifiedValue[];
 }
@@ -110,6 +113,7 @@ export function certifyState(
     uncertified: subject.uncertified.map(({ name }) => name),
     density,
     temperature,
+    isNode: isNodeOf(equationOfState, density, temperature, composition),
     digits,
     referenceError: result.referenceError,
     unknown: result.unknown,

@@ -7,6 +7,7 @@ import { FermistateError, isFermistateError } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import type { Physics } from "../thermodynamics/contribution.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
+import { isNodeOf } from "../thermodynamics/interpolation-nodes.js";
 import { quantities as stateQuantities } from "../thermodynamics/quantities.js";
 import { libraryVersion } from "../version.js";
 import { compareAt, ownValues, type PointComparison } from "./comparison.js";
@@ -99,6 +100,8 @@ export interface Certificate {
   readonly asked: number;
   /** Number of points that both sides answered. */
   readonly compared: number;
+  /** Number of them that are nodes of a table: exact by construction, they show nothing of its error between them. */
+  readonly nodes: number;
   /** The others. */
   readonly refused: readonly RefusedPoints[];
   /** Quantities asked for that the equation of state or the reference does not know. */
@@ -115,6 +118,8 @@ export interface CertificateColumns {
   readonly density: readonly number[];
   /** Temperature, K. */
   readonly temperature: readonly number[];
+  /** Whether the point is a node of a table. */
+  readonly isNode: readonly boolean[];
   /** One column per quantity of relative errors. */
   readonly relative: readonly (readonly number[])[];
   /** The same over the sum of absolute terms; null where the quantity is no sum. */
@@ -151,7 +156,7 @@ export function certify(
   requireComposition(composition);
   const { points, digits, names, onProgress } = checked(options);
   const count = points.density.length;
-  const compared: { density: number; temperature: number; result: PointComparison }[] = [];
+  const compared: ComparedPoint[] = [];
   const refused = new Map<string, RefusedPoints>();
   for (let i = 0; i < count; i++) {
     const [density, temperature] = [points.density[i]!, points.temperature[i]!];
@@ -160,7 +165,8 @@ export function certify(
       const own = ownValues(subject, composition, density, temperature, names);
       by = "reference";
       const result = compareAt(subject, composition, density, temperature, names, digits, own);
-      compared.push({ density, temperature, result });
+      const isNode = isNodeOf(equationOfState, density, temperature, composition);
+      compared.push({ density, temperature, isNode, result });
     } catch (error) {
       if (!isFermistateError(error)) throw error;
       const key = `${by} ${error.code}`;
@@ -185,15 +191,23 @@ export function certify(
     ...(options.region === undefined ? {} : { region: options.region }),
     asked: count,
     compared: compared.length,
+    nodes: compared.filter((one) => one.isNode).length,
     refused: [...refused.values()],
     unknown: names.filter((name) => !known.includes(name)),
     ...summaries(known, compared),
   };
 }
 
+interface ComparedPoint {
+  readonly density: number;
+  readonly temperature: number;
+  readonly isNode: boolean;
+  readonly result: PointComparison;
+}
+
 function summaries(
   names: readonly CertifiedQuantity[],
-  compared: readonly { density: number; temperature: number; result: PointComparison }[],
+  compared: readonly ComparedPoint[],
 ): Pick<Certificate, "quantities" | "columns"> {
   const density = compared.map((one) => one.density);
   const temperature = compared.map((one) => one.temperature);
@@ -214,7 +228,8 @@ function summaries(
       ...(shares.length === 0 ? {} : { uncertifiedShare: Math.max(...shares) }),
     };
   });
-  return { quantities, columns: { density, temperature, relative, scaled } };
+  const isNode = compared.map((one) => one.isNode);
+  return { quantities, columns: { density, temperature, isNode, relative, scaled } };
 }
 
 function summary(errors: readonly number[], density: readonly number[], temperature: readonly number[]): ErrorSummary {

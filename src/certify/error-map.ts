@@ -29,12 +29,13 @@ export function certificateMap(made: Certificate, quantity: CertifiedQuantity, o
   const errors = relative[k]!.map((one) => Math.max(one, floor));
   const isDerivative = (derivativeNames as readonly string[]).includes(quantity);
   const words = isDerivative ? quantity : nameOf(quantity as QuantityName);
+  const warning = made.nodes === 0 ? "" : ` ${made.nodes} of them are nodes of a table and show no error of it.`;
   const cells = cellsOf(density, temperature, errors);
   return chartMap(
     { ...cells, label: `relative error of ${words}` },
     {
       title: `${words.charAt(0).toUpperCase()}${words.slice(1)}: error against ${made.digits}-digit arithmetic`,
-      note: `fermistate ${made.libraryVersion}. ${made.composition.name}. ${density.length} points; the largest error of a cell.`,
+      note: `fermistate ${made.libraryVersion}. ${made.composition.name}. ${density.length} points; the largest error of a cell.${warning}`,
       missing: "no point, or refused",
       ...options,
     },

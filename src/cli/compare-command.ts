@@ -5,7 +5,7 @@ import { compare } from "../compare/compare.js";
 import { comparisonCsv, comparisonJson, comparisonMap } from "../compare/forms.js";
 import { standardQuantities } from "../compare/request.js";
 import type { Comparison } from "../compare/result.js";
-import { comparisonText } from "../compare/text.js";
+import { comparisonText, nodeSentences } from "../compare/text.js";
 import { FermistateError, isFermistateError } from "../errors.js";
 import { checkTargets } from "../files/target.js";
 import { type QuantityName, quantityNames } from "../thermodynamics/quantities.js";
@@ -139,7 +139,8 @@ export const compareCommand: Command = command({
       io.cwd,
       files,
     );
-    io.out(`${found.rows} points compared\n${list}\n`);
+    const warnings = nodeSentences(found).map((one) => `${one}\n`);
+    io.out(`${found.rows} points compared\n${warnings.join("")}${list}\n`);
   },
 });
 

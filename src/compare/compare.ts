@@ -4,6 +4,7 @@
  */
 import { FermistateError } from "../errors.js";
 import type { EquationOfState, State } from "../thermodynamics/equation-of-state.js";
+import { isNodeOf } from "../thermodynamics/interpolation-nodes.js";
 import { type QuantityName, quantities } from "../thermodynamics/quantities.js";
 import { libraryVersion } from "../version.js";
 import { type Answer, answerAt, isState } from "./answers.js";
@@ -13,7 +14,16 @@ import { jumpOf } from "./jumps.js";
 import { worstRows } from "./places.js";
 import { meltingFinder, regimeAt, regionOf } from "./regions.js";
 import { type CompareOptions, type Request, readRequest } from "./request.js";
-import type { Comparison, Offset, Place, QuantityDifference, RefusalCount, Region, WorstPlace } from "./result.js";
+import type {
+  Comparison,
+  NodeCounts,
+  Offset,
+  Place,
+  QuantityDifference,
+  RefusalCount,
+  Region,
+  WorstPlace,
+} from "./result.js";
 import { signCounter } from "./signs.js";
 
 /**
@@ -112,6 +122,7 @@ export function compare(a: EquationOfState, b: EquationOfState, options: Compare
     quantities: differences,
     offsets,
     refusals: refusalsOf(answers, placeOf),
+    nodes: nodesOf(both, answers, compositions, placeOf),
     consistency: request.consistency ? ([meters[0]!.checks(), meters[1]!.checks()] as const) : ([[], []] as const),
     signs: signs.flatMap((counter) => counter.found()),
     jumps: differences.flatMap(({ name, difference }) => jumpOf(name, difference, search) ?? []),
@@ -167,6 +178,28 @@ function differenceOf(
     ...statisticsOf(difference),
     worst,
     regions: found.sort((p, q) => q.largest - p.largest),
+  };
+}
+
+/** Which points are nodes of a table, where both answer. */
+function nodesOf(
+  both: readonly [EquationOfState, EquationOfState],
+  answers: readonly [readonly Answer[], readonly Answer[]],
+  compositions: Request["compositions"],
+  placeOf: (row: number) => Place,
+): NodeCounts {
+  const points = Uint8Array.from(answers[0], (first, row) => {
+    if (!isState(first) || !isState(answers[1][row]!)) return 0;
+    const { density, temperature } = placeOf(row);
+    const bit = (k: 0 | 1): number => (isNodeOf(both[k], density, temperature, compositions[k]) ? k + 1 : 0);
+    return bit(0) + bit(1);
+  });
+  const count = (has: (one: number) => boolean): number => points.reduce((sum, one) => sum + (has(one) ? 1 : 0), 0);
+  return {
+    first: count((one) => one === 1 || one === 3),
+    second: count((one) => one >= 2),
+    any: count((one) => one > 0),
+    points,
   };
 }
 

@@ -28,15 +28,17 @@ export function comparisonJson(found: Comparison): string {
 
 /**
  * A comparison as CSV text (RFC 4180): density, temperature, which of the two answers (3 both, 1 the first, 2 the second, 0
- * none), then the relative difference of every quantity; an empty field where nothing could be compared.
+ * none), then the relative difference of every quantity; an empty field where nothing could be compared. Where points are nodes of a
+ * table, a last column says of which of the two, by the same numbers.
  */
 export function comparisonCsv(found: Comparison): string {
-  const { quantities, axes, refusals } = found;
+  const { quantities, axes, refusals, nodes } = found;
   const head = [
     "density [g/cm^3]",
     "temperature [K]",
     "answers [1]",
     ...quantities.map(({ name }) => `${name} difference [1]`),
+    ...(nodes.any === 0 ? [] : ["node of a table [1]"]),
   ];
   const lines = [head.join(",")];
   const densities = axes.density.values;
@@ -46,6 +48,7 @@ export function comparisonCsv(found: Comparison): string {
       axes.temperature.values[Math.floor(row / densities.length)]!,
       refusals.answers[row]!,
       ...quantities.map(({ difference }) => difference[row]!),
+      ...(nodes.any === 0 ? [] : [nodes.points[row]!]),
     ];
     lines.push(numbers.map((one) => (Number.isNaN(one) ? "" : fieldOf(one))).join(","));
   }
@@ -87,7 +90,10 @@ export function comparisonMap(found: Comparison, quantity: QuantityName, options
   const title = `${words.charAt(0).toUpperCase()}${words.slice(1)}: ${found.names[1]} (b) against ${found.names[0]} (a)`;
   const [first, second] = found.compositions;
   const matter = first === second ? first : `${second} against ${first}`;
-  const note = `fermistate ${found.libraryVersion}. ${matter}. Size of b - a, divided by ${one.scale}.`;
+  const { nodes, refusals } = found;
+  const warning =
+    nodes.any === 0 ? "" : ` ${nodes.any} of ${refusals.both} points are nodes of a table: no error of it shows there.`;
+  const note = `fermistate ${found.libraryVersion}. ${matter}. Size of b - a, divided by ${one.scale}.${warning}`;
   return chartMap(
     { density, temperature, values, label },
     { title, note, marks, missing: "one of the two refuses", ...rest },

@@ -15,6 +15,7 @@ export type {
   ConsistencyCheck,
   ConsistencyName,
   Jump,
+  NodeCounts,
   Offset,
   Place,
   QuantityDifference,

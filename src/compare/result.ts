@@ -120,6 +120,21 @@ export interface Refusals {
   readonly codes: readonly [a: readonly RefusalCount[], b: readonly RefusalCount[]];
 }
 
+/**
+ * Points that both answer and that are nodes of a table in one of the two. There the table repeats what it was made from, whatever its
+ * error between them is.
+ */
+export interface NodeCounts {
+  /** Nodes of the first. */
+  readonly first: number;
+  /** Nodes of the second. */
+  readonly second: number;
+  /** Nodes of any of the two. */
+  readonly any: number;
+  /** 1 at a node of the first, 2 of the second, 3 of both, 0 elsewhere: one number per point. */
+  readonly points: Uint8Array;
+}
+
 /** Refusals with one code. */
 export interface RefusalCount {
   /** A code of FermistateError; "not-a-number" for a state that holds none, "other-error" for a foreign error. */
@@ -224,6 +239,8 @@ export interface Comparison {
   readonly offsets: readonly Offset[];
   /** Who answers where. */
   readonly refusals: Refusals;
+  /** Points at nodes of a table, which show nothing of its error: where there are any, choose others. */
+  readonly nodes: NodeCounts;
   /** Thermodynamic consistency of each; empty where it was not asked for. */
   readonly consistency: readonly [a: readonly ConsistencyCheck[], b: readonly ConsistencyCheck[]];
   /** Signs of no stable matter. */

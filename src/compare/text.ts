@@ -1,5 +1,6 @@
 /** A comparison in plain sentences. */
 
+import { nodeWarning } from "../thermodynamics/interpolation-nodes.js";
 import { regionWords } from "./regions.js";
 import type { Comparison, ConsistencyCheck, Jump, Place, QuantityDifference, SignCount } from "./result.js";
 import { findingWords, numberWords, sizeWords } from "./words.js";
@@ -26,12 +27,13 @@ export function comparisonText(found: Comparison): string {
         `${shape[1]} x ${shape[0]} points, ${refusals.both} of them answered by both`,
       "  ",
     ),
+    ...nodeSentences(found).flatMap((one) => wrapped(one, "  ")),
     "",
     "Differences, relative",
     ...table(found),
     "",
     "In words",
-    ...comparisonSummary(found).flatMap((one) => wrapped(one, "  ")),
+    ...findingSentences(found).flatMap((one) => wrapped(one, "  ")),
     "",
     ...found.quantities.flatMap((one) => worstLines(one)),
     ...consistencyLines(found),
@@ -40,9 +42,18 @@ export function comparisonText(found: Comparison): string {
 
 /** What matters, one sentence each: the text of {@link comparisonText} without its tables. */
 export function comparisonSummary(found: Comparison): string[] {
+  return [...nodeSentences(found), ...findingSentences(found)];
+}
+
+/** How many of the points are nodes of a table: before anything that is said of them. */
+export function nodeSentences({ names, nodes, refusals }: Comparison): string[] {
+  return [nodes.first, nodes.second].flatMap((count, k) => nodeWarning(count, refusals.both, names[k]!) ?? []);
+}
+
+function findingSentences(found: Comparison): string[] {
   return [
     ...refusalSentences(found),
-    ...(found.refusals.both === 0 ? [] : found.quantities.map(quantitySentence)),
+    ...(found.refusals.both === 0 ? [] : found.quantities.map((one) => verdict(found, one))),
     ...found.quantities.flatMap(({ name, points }) => {
       const without = found.refusals.both - points;
       return without === 0
@@ -54,6 +65,13 @@ export function comparisonSummary(found: Comparison): string[] {
     ...found.signs.map((one) => signSentence(found, one)),
     ...jumpSentences(found),
   ];
+}
+
+/** The sentence of a quantity, unless all of its points are nodes of a table: these allow no verdict. */
+function verdict({ nodes }: Comparison, one: QuantityDifference): string {
+  const isBetween = one.difference.some((value, row) => !Number.isNaN(value) && nodes.points[row] === 0);
+  if (isBetween || one.points === 0) return quantitySentence(one);
+  return `${one.name}: no verdict, since only nodes of a table were compared (largest difference there ${sizeWords(one.largest)}).`;
 }
 
 /** "pressure differs by less than 1e-4, except at the onset of pairs (up to 0.03)". */

@@ -8,7 +8,7 @@ import { CRYSTAL_FRACTION, DENSITY, TEMPERATURE } from "../matter/point.js";
 import type { Order } from "../thermodynamics/free-energy.js";
 import { type ColdLookUp, coldLookUp, fillCold } from "./cold.js";
 import { fillBeyond, nearestBlocks } from "./extension.js";
-import { fillSurface, type Surface, surfaceOf } from "./surface.js";
+import { fillSurface, isSurfaceNode, type Surface, surfaceOf } from "./surface.js";
 import type { FreeEnergyTable, SheetPhase } from "./table.js";
 
 /** A table made ready, for the phase that is stable or for one alone. */
@@ -98,6 +98,15 @@ export function lookUp(
   if (!fillSurface(surface, order)) lookBeyond(look, surface, point, order);
   fillCold(cold, order);
   return surface;
+}
+
+/** Whether a point that the table answers is a node of the sheet that answers it. */
+export function isNodeOfTable(look: TableLookUp, point: Float64Array, composition: Composition): boolean {
+  if (composition !== look.last) accept(look, composition);
+  const share = look.share[0]!;
+  if (share === 0) return false;
+  const surface = tellPhase(look, point) ? look.crystal : look.liquid;
+  return isSurfaceNode(surface, Math.log(point[DENSITY]! * share), Math.log(point[TEMPERATURE]!));
 }
 
 function lookBeyond(look: TableLookUp, surface: Surface, point: Float64Array, order: Order): void {

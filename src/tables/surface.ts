@@ -1,4 +1,5 @@
 /** One sheet of a table at a point: L(ln rho, ln T) and its derivatives from the patch that holds the point. */
+import { isNodePlace } from "../thermodynamics/interpolation-nodes.js";
 import { evaluatePatch, gather, PATCH_LENGTH, type PatchRecord, patchRecord, takePowers } from "./patch.js";
 import { NODE_LENGTH, type TableAxis, type TableSheet } from "./table.js";
 
@@ -109,4 +110,30 @@ export function fillSurface(surface: Surface, order: number): boolean {
   place[3] = v.perUnit * n;
   evaluatePatch(surface.cells, first + PATCH_LENGTH * (i * n + j), surface, order);
   return true;
+}
+
+/**
+ * Whether a point is a node. On an edge of blocks it must be one of all that meet there: where a fine block meets a coarse one, the
+ * coarse one rules, and the nodes that it lacks are interpolated.
+ */
+export function isSurfaceNode({ u, v, blocks }: Surface, logDensity: number, logTemperature: number): boolean {
+  const x = (logDensity - u.start) * u.perUnit;
+  const y = (logTemperature - v.start) * v.perUnit;
+  let found = false;
+  for (const p of blocksAt(x, u.blocks)) {
+    for (const q of blocksAt(y, v.blocks)) {
+      const block = 4 * (p * v.blocks + q);
+      if (blocks[block]! < 0) continue;
+      if (!isNodePlace((x - p) * blocks[block + 1]!) || !isNodePlace((y - q) * blocks[block + 2]!)) return false;
+      found = true;
+    }
+  }
+  return found;
+}
+
+/** The block that holds a place along an axis, or the two that meet there. */
+function blocksAt(x: number, count: number): number[] {
+  const near = Math.round(x);
+  const found = isNodePlace(x) ? [near - 1, near] : [Math.floor(x)];
+  return found.filter((one) => one >= 0 && one < count);
 }

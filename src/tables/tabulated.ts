@@ -3,13 +3,19 @@ import { boltzmannConstant } from "../constants.js";
 import { FermistateError } from "../errors.js";
 import { idealIons } from "../ions/ideal-ions.js";
 import type { Composition } from "../matter/composition.js";
-import { ELECTRON_CHEMICAL_POTENTIAL, ELECTRON_DEGENERACY, TEMPERATURE } from "../matter/point.js";
+import {
+  DENSITY,
+  ELECTRON_CHEMICAL_POTENTIAL,
+  ELECTRON_DEGENERACY,
+  POINT_LENGTH,
+  TEMPERATURE,
+} from "../matter/point.js";
 import { radiation } from "../radiation.js";
 import { combine } from "../thermodynamics/combine.js";
 import type { Contribution, Domain, PhasePair } from "../thermodynamics/contribution.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { ENERGY, ENTROPY, type Order, PRESSURE, SECOND_ORDER_COUNT } from "../thermodynamics/free-energy.js";
-import { lookUp, type TableLookUp, tableLookUp, tellPhase } from "./look-up.js";
+import { isNodeOfTable, lookUp, type TableLookUp, tableLookUp, tellPhase } from "./look-up.js";
 import { addTableMembers } from "./members.js";
 import type { Surface } from "./surface.js";
 import type { FreeEnergyTable, SheetPhase } from "./table.js";
@@ -63,6 +69,7 @@ export function tableEquationOfState(table: FreeEnergyTable, ...beside: readonly
 function contributionOf(table: FreeEnergyTable, phase: SheetPhase | "equilibrium"): Contribution {
   const look = tableLookUp(table, phase);
   const own = new Float64Array(SECOND_ORDER_COUNT);
+  const asked = new Float64Array(POINT_LENGTH);
   const perElectron = table.holdsFor === "electron density";
   const domain: Domain = Object.freeze({
     density: Object.freeze([table.density.lowest, table.density.highest] as const),
@@ -79,6 +86,11 @@ function contributionOf(table: FreeEnergyTable, phase: SheetPhase | "equilibrium
     validity:
       `Interpolated: pressure within ${bound(table, "pressure")}, entropy within ${bound(table, "specificEntropy")} of the ` +
       `equation of state it was made from. ${table.source.validity.join(" ")}`,
+    isNode(density: number, temperature: number, composition: Composition): boolean {
+      asked[DENSITY] = density;
+      asked[TEMPERATURE] = temperature;
+      return isNodeOfTable(look, asked, composition);
+    },
     add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void {
       const surface = lookUp(look, point, composition, order);
       if (surface === undefined) return;

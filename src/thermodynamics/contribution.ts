@@ -71,6 +71,13 @@ export interface Contribution {
   readonly phases?: PhasePair;
 
   /**
+   * For an interpolation: whether density [g/cm^3] and temperature [K] are one of its nodes within a millionth of a cell.
+   * There it repeats what it was made from, so `compare` and `certify` count such points and warn: agreement there tells
+   * nothing about the points between. Called where it answers. Leave out where nothing is interpolated.
+   */
+  isNode?(density: number, temperature: number, composition: Composition): boolean;
+
+  /**
    * Adds its members to `members`, in erg/g.
    *
    * `point` is the record of matter/plasma.ts with density, temperature and the plasma variables; `order` says whether

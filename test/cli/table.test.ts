@@ -95,6 +95,25 @@ test("other commands take a table in place of the physics", async () => {
   expect(refused.err).toContain("a table holds the physics it was made from");
 });
 
+test("says where the points are nodes of the table, and gives no verdict on them", async () => {
+  const of = async (axes: string, more = "") =>
+    (await command(`compare ${axes} --composition C12=1 --against-table whole.h5 --skip-consistency${more}`)).out;
+  const nodes = "--density 1e5..1e7,5-points --temperature 1e7..1e8,5-points";
+  const warned = await of(nodes);
+  expect(warned).toContain("25 of 25 points are nodes of the table in second");
+  expect(warned).not.toContain("agrees to rounding");
+  expect(JSON.parse(await of(nodes, " --format json"))).toMatchObject({ nodes: { first: 0, second: 25, any: 25 } });
+  expect(await of(nodes, " --format csv --out nodes")).toContain("25 of 25 points are nodes of the table");
+  const between = "--density 1.1e5..9e6,5-points --temperature 1.1e7..9e7,5-points";
+  expect(await of(between)).not.toContain("node");
+  const certified = async (axes: string, more = "") =>
+    (await command(`certify ${axes} --composition C12=1 --table whole.h5 --quantities pressure${more}`)).out;
+  expect(await certified("--density 1e6,1e7 --temperature 1e7,2e7")).toContain("2 of 4 points are nodes of the table");
+  expect(await certified("--density 1e6 --temperature 1e7")).toContain("The point is a node of the table");
+  expect(JSON.parse(await certified("--density 1e6,1e7 --temperature 1e7,2e7", " --format json")).nodes).toBe(2);
+  expect(await certified("--density 2e6,3e6 --temperature 2e7,3e7")).not.toContain("node");
+});
+
 test("refusals before any work", async () => {
   const cases: readonly (readonly [string, RegExp])[] = [
     ["table", /--density/],

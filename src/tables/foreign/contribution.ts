@@ -4,6 +4,7 @@ import { type Composition, requireComposition } from "../../matter/composition.j
 import { DENSITY, TEMPERATURE } from "../../matter/point.js";
 import type { Contribution, Domain } from "../../thermodynamics/contribution.js";
 import { ENTROPY, type Order } from "../../thermodynamics/free-energy.js";
+import { isNodePlace } from "../../thermodynamics/interpolation-nodes.js";
 import { isSame } from "../look-up.js";
 import { addTableMembers } from "../members.js";
 import type { ColumnFit } from "./fit.js";
@@ -41,6 +42,12 @@ export function columnsContribution(
     name,
     domain,
     validity,
+    isNode(density: number, temperature: number): boolean {
+      surface.at[0] = Math.log(density);
+      surface.at[1] = Math.log(temperature);
+      fillColumnSurface(surface, 2);
+      return isNodePlace(surface.place[0]!) && isNodePlace(surface.place[1]!);
+    },
     add(point: Float64Array, composition: Composition, order: Order, members: Float64Array): void {
       if (composition !== last) accept(composition);
       surface.at[0] = Math.log(point[DENSITY]!);
