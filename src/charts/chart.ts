@@ -39,7 +39,7 @@ const edge = 22;
  *
  * Axes are logarithmic where values are positive and span more than a decade. Of more than eight temperatures, eight
  * evenly spread in the logarithm are drawn, and the chart says so; points that the scale cannot show (infinite ones, zeros
- * on a logarithmic axis) are left out, and the chart says so. The same grid and options give the same text.
+ * on a logarithmic axis, rows that are refused) are left out, and the chart says so. The same grid and options give the same text.
  *
  * @returns a stand-alone SVG document without scripts, fonts or links
  * @throws FermistateError `unavailable-quantity` for no column of the grid; `invalid-option`, `not-a-number`,
@@ -81,7 +81,8 @@ export function chartGrid(grid: Grid, options: ChartOptions = {}): string {
   const frame = { left, right, top, bottom };
 
   const hidden = lines.series.reduce((sum, one) => sum + one.x.filter((_, i) => !drawable(x, y, one, i)).length, 0);
-  const asides = [lines.omission, hidden === 0 ? "" : `${hidden} points beyond the scale`].filter((one) => one !== "");
+  const reason = (grid.refusedRows ?? []).length > 0 ? "refused or beyond the scale" : "beyond the scale";
+  const asides = [lines.omission, hidden === 0 ? "" : `${hidden} points ${reason}`].filter((one) => one !== "");
   const parts = [
     element("title", {}, escaped(title)),
     element("desc", {}, escaped(describe(grid, quantity, lines, asides, notes))),

@@ -38,6 +38,12 @@ export const gridCommand: Command = command({
         "which they are; takes some 70 microseconds per point, six times as long as the rest",
       read: flag,
     },
+    "keep-refused": {
+      help:
+        "keep rows without a state (unstable, outside the domain) instead of stopping at the first: their fields are empty, and " +
+        "a column refused has the number of the reason",
+      read: flag,
+    },
     out: {
       value: "PATH",
       help: "where to write: PATH.csv and so on; without it the text goes to standard output",
@@ -76,6 +82,10 @@ export const gridCommand: Command = command({
       "which assumptions are strained, and where",
     ],
     [
+      "grid --density 1e-6..1e3,1-per-decade --temperature 1e3,1e7 --composition C12=1 --keep-refused",
+      "across matter that is not ionised, whose rows stay empty",
+    ],
+    [
       "grid --density 1e4..1e9,51-points --temperature 0 --composition Fe56=1 --without ions,radiation --format json",
       "cold electrons in iron",
     ],
@@ -111,6 +121,7 @@ export const gridCommand: Command = command({
       quantities: [...new Set([...names, ...chart])],
       onProgress: progress.report,
       ...(options.findings ? { findings: regime } : {}),
+      ...(options["keep-refused"] ? { refused: "keep" as const } : {}),
       ...(options["maximum-points"] === undefined ? {} : { maximumPoints: options["maximum-points"] }),
     };
     const made = evaluated(() => grid(equationOfState, matter, gridOptions), progress.done);
@@ -126,10 +137,19 @@ export const gridCommand: Command = command({
     io.out(
       `${counted(densities, "density", "densities")} x ${counted(temperatures, "temperature", "temperatures")} = ` +
         `${counted(made.rows, "state", "states")} of ${matter.name} in ${timeText(took)}; written in ` +
-        `${timeText(performance.now() - start - took)}\n${list}\n${findingsList(made)}`,
+        `${timeText(performance.now() - start - took)}\n${list}\n${refusedList(made)}${findingsList(made)}`,
     );
   },
 });
+
+/** Reasons of refused rows and how many there are; nothing where they were not kept. */
+function refusedList({ refusedRows, rows }: Grid): string {
+  if (refusedRows === undefined) return "";
+  const all = refusedRows.reduce((sum, one) => sum + one.rows, 0);
+  const head = `Refused ${all} of ${counted(rows, "row", "rows")}`;
+  const lines = refusedRows.map((one) => [String(one.reason), one.meaning, String(one.rows)]);
+  return lines.length === 0 ? `${head}\n` : `${head}\n${table([["refused", "", "rows"], ...lines], "rlr")}\n`;
+}
 
 /** Findings and at how many points; nothing where none were asked for. */
 function findingsList({ findings, rows }: Grid): string {

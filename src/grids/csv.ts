@@ -11,9 +11,11 @@ import { joined, pieceLength } from "./chunks.js";
 import { conventions, type GridTexts, orderOfRows, titleOf } from "./description.js";
 import { type ColumnName, columnOf, type Grid } from "./grid.js";
 import { numbersText } from "./number-text.js";
+import { aboutRefused } from "./refused.js";
 
 /**
- * A grid as CSV text. Numbers read back to the same bits; infinities are INF and -INF.
+ * A grid as CSV text. Numbers read back to the same bits; infinities are INF and -INF; rows that are
+ * refused have empty fields.
  *
  * @throws FermistateError `too-large` where the text is longer than a string may be: use {@link gridToCsvPieces}
  */
@@ -57,7 +59,12 @@ export function gridToCsvMetadata(grid: Grid, csvName: string, texts: GridTexts 
     url: encodeURIComponent(csvName),
     "dc:title": titleOf(grid, texts),
     "dc:creator": `fermistate ${grid.libraryVersion}`,
-    "dc:description": [...(texts.note === undefined ? [] : [texts.note]), ...conventions, orderOfRows],
+    "dc:description": [
+      ...(texts.note === undefined ? [] : [texts.note]),
+      ...conventions,
+      orderOfRows,
+      ...aboutRefused(grid),
+    ],
     "rdfs:comment": grid.validity,
     "schema:additionalProperty": [
       property("equation of state", grid.equationOfState),
@@ -72,6 +79,9 @@ export function gridToCsvMetadata(grid: Grid, csvName: string, texts: GridTexts 
         property(`points where ${code} is strained`, strained, "1"),
         property(`points where ${code} is outside its range`, outside, "1"),
       ]),
+      ...(grid.refusedRows ?? []).map(({ reason, code, meaning, rows }) =>
+        property(`rows with refused = ${reason}: ${meaning} (${code})`, rows, "1"),
+      ),
     ],
     dialect: { encoding: "utf-8", delimiter: ",", header: true, headerRowCount: 1, lineTerminators: ["\r\n"] },
     tableSchema: {
@@ -80,7 +90,7 @@ export function gridToCsvMetadata(grid: Grid, csvName: string, texts: GridTexts 
         titles: titleOfColumn(name),
         "dc:description": columnOf(name).description,
         datatype: "double",
-        required: true,
+        required: grid.refusedRows === undefined || ["density", "temperature", "refused"].includes(name),
         "schema:unitText": columnOf(name).unit,
       })),
       primaryKey: [...grid.order],

@@ -43,6 +43,10 @@ export function findingsCounter(
   return {
     count(columns, start, end) {
       for (let row = start; row < end; row++) {
+        if ((columns["refused"]?.[row] ?? 0) !== 0) {
+          for (const name of findingsColumns) columns[name]![row] = Number.NaN;
+          continue;
+        }
         const state = equationOfState.state(columns["density"]![row]!, columns["temperature"]![row]!, composition);
         const { findings } = regimeOfState(judge, equationOfState, state);
         columns["findingsStrained"]![row] = findings.filter(({ severity }) => severity === "strained").length;

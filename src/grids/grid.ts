@@ -12,6 +12,7 @@ import { type QuantityName, quantities } from "../thermodynamics/quantities.js";
 import { libraryVersion } from "../version.js";
 import { type Axis, axisOf } from "./axes.js";
 import { type FindingCount, type FindingsColumn, findingsColumns, findingsCounter } from "./findings.js";
+import { firstAnswered, type RefusedRowCount, refusedRowCounts } from "./refused.js";
 import {
   checkAvailable,
   checkDomain,
@@ -30,10 +31,10 @@ export type GridColumns = {
   readonly density: Float64Array;
   /** Temperature, K. */
   readonly temperature: Float64Array;
-} & { readonly [Name in QuantityName | FindingsColumn]?: Float64Array };
+} & { readonly [Name in QuantityName | FindingsColumn | "refused"]?: Float64Array };
 
-/** Name of a column: one of the two axes, a quantity, or a number of findings. */
-export type ColumnName = "density" | "temperature" | QuantityName | FindingsColumn;
+/** Name of a column: one of the two axes, a quantity, a number of findings, or the reason of a refusal. */
+export type ColumnName = "density" | "temperature" | QuantityName | FindingsColumn | "refused";
 
 /**
  * An evaluated grid. The object is frozen; its Float64Arrays cannot be, so treat them as read-only.
@@ -47,7 +48,7 @@ export interface Grid {
   readonly rows: number;
   /** The axes. */
   readonly axes: { readonly density: Axis; readonly temperature: Axis };
-  /** Names of all columns in order: density, temperature, the quantities, the numbers of findings if asked for. */
+  /** Names of all columns in order: density, temperature, the quantities, then, if asked for, the numbers of findings and `refused`. */
   readonly columnNames: readonly ColumnName[];
   /** The columns by name. */
   readonly columns: GridColumns;
@@ -67,6 +68,8 @@ export interface Grid {
   readonly ideal: boolean;
   /** Findings met and at how many points, in the order they were met; undefined where none were asked for. */
   readonly findings: readonly FindingCount[] | undefined;
+  /** Reasons for which rows have no state, by number; empty where all have one, undefined where such rows are errors. */
+  readonly refusedRows: readonly RefusedRowCount[] | undefined;
   /** Version of this library. */
   readonly libraryVersion: string;
 }
@@ -97,7 +100,8 @@ const judgedChunk = 256;
  *
  * @param equationOfState - any, such as `whiteDwarfMatter()`
  * @param composition - from `composition(...)`, the same at every point
- * @returns the grid; its numbers are finite, or infinite where a quantity is (electron degeneracy at T = 0); never NaN
+ * @returns the grid; its numbers are finite, or infinite where a quantity is (electron degeneracy at T = 0); never NaN,
+ * except in rows that are refused, with `refused: "keep"`
  * @throws FermistateError `invalid-option`, `invalid-composition`, `not-a-number`, `out-of-range`, `outside-domain`,
  * `unavailable-quantity`, `too-large`; where a point inside the domain fails, the message says which
  * @example
@@ -124,14 +128,21 @@ export function grid(equationOfState: EquationOfState, composition: Composition,
   const rows = shape[0] * shape[1];
   const asked = names ?? defaultQuantities;
   const judge = options.findings && findingsCounter(options.findings, equationOfState, composition);
-  const counts = judge === undefined ? [] : findingsColumns;
+  const keeps = options.refused === "keep";
+  const counts: readonly ColumnName[] = [
+    ...(judge === undefined ? [] : findingsColumns),
+    ...(keeps ? (["refused"] as const) : []),
+  ];
   checkSize(rows, 2 + asked.length + counts.length, options);
-  checkDomain(equationOfState, density.values, temperature.values);
-  const found = checkAvailable(equationOfState, composition, density, temperature, asked, names !== undefined);
+  if (!keeps) checkDomain(equationOfState, density.values, temperature.values);
+  const axes = allocate(["density", "temperature"], rows);
+  fillAxes(axes, density.values, temperature.values);
+  const first = keeps ? firstAnswered(equationOfState, composition, axes.density, axes.temperature) : 0;
+  const at = first === undefined ? first : { density: axes.density[first]!, temperature: axes.temperature[first]! };
+  const found = checkAvailable(equationOfState, composition, at, asked, names !== undefined);
   const columnNames: ColumnName[] = ["density", "temperature", ...found, ...counts];
 
-  const columns = allocate(columnNames, rows);
-  fillAxes(columns, density.values, temperature.values);
+  const columns = { ...allocate([...found, ...counts], rows), ...axes };
   const step = judge === undefined ? chunk : judgedChunk;
   for (let start = 0; start < rows; start += step) {
     const end = Math.min(start + step, rows);
@@ -155,6 +166,7 @@ export function grid(equationOfState: EquationOfState, composition: Composition,
     validity: Object.freeze(validityOf(equationOfState)),
     ideal: isIdeal(equationOfState.contributions),
     findings: judge?.met(),
+    refusedRows: keeps ? refusedRowCounts(columns.refused) : undefined,
     libraryVersion,
   });
 }
@@ -165,6 +177,8 @@ export function columnOf(name: ColumnName): { readonly unit: string; readonly de
   if (name === "temperature") return { unit: "K", description: "temperature T" };
   if (name === "findingsStrained") return { unit: "1", description: "number of assumptions that are strained here" };
   if (name === "findingsOutside") return { unit: "1", description: "number of assumptions that do not hold here" };
+  if (name === "refused")
+    return { unit: "1", description: "number of the reason why there is no state, 0 for a state" };
   return quantities[name];
 }
 
@@ -197,14 +211,19 @@ function fillQuantities(
   const part = (name: ColumnName): Float64Array => columns[name].subarray(start, end);
   const output = Object.fromEntries(names.map((name) => [name, part(name)]));
   const input = { density: part("density"), temperature: part("temperature"), composition };
+  const refused = columns.refused === undefined ? undefined : new Uint8Array(end - start);
   try {
-    equationOfState.evaluate(input, output);
+    equationOfState.evaluate(input, refused === undefined ? output : { ...output, refused });
   } catch (error) {
     throw located(error, columns, start);
   }
+  if (refused !== undefined) columns.refused!.set(refused, start);
   for (const [name, column] of Object.entries(output)) {
-    // -1 unless there is a NaN, which no column may hold whoever wrote the equation of state.
-    const bad = column.findIndex(Number.isNaN);
+    // -1 unless there is a NaN, which no row with a state may hold whoever wrote the equation of state.
+    const bad = column.findIndex((value, row) => Number.isNaN(value) && !refused?.[row]);
+    refused?.forEach((reason, row) => {
+      if (reason !== 0) column[row] = Number.NaN;
+    });
     if (bad < 0) continue;
     const details = { argument: name, given: Number.NaN, allowed: "a number from the equation of state", index: bad };
     throw located(new FermistateError("not-a-number", details), columns, start);

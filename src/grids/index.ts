@@ -19,4 +19,5 @@ export { type ColumnName, type Grid, type GridColumns, grid } from "./grid.js";
 export { gridToJson, gridToJsonPieces } from "./json.js";
 export { arrayFromNpy, arrayToNpy, type NumberArray } from "./npy.js";
 export { arraysFromNpz, arraysToNpz, gridToNpz } from "./npz.js";
+export type { RefusedRowCount } from "./refused.js";
 export type { GridOptions } from "./request.js";

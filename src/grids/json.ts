@@ -3,13 +3,14 @@ import { joined, pieceLength } from "./chunks.js";
 import { conventions, type GridTexts, orderOfRows, titleOf } from "./description.js";
 import { columnOf, type Grid } from "./grid.js";
 import { numbersText } from "./number-text.js";
+import { aboutRefused } from "./refused.js";
 
 /** Numbers turned into text at once. */
 const batch = 2048;
 
 /**
  * A grid as JSON text (RFC 8259). Numbers read back to the same bits; infinities, which JSON has no number for, are the
- * strings "INF" and "-INF".
+ * strings "INF" and "-INF"; rows that are refused have null.
  *
  * @throws FermistateError `too-large` where the text is longer than a string may be: use {@link gridToJsonPieces}
  * @example
@@ -66,8 +67,9 @@ export function aboutGrid(grid: Grid, texts: GridTexts): Readonly<Record<string,
     conventions,
     validity: grid.validity,
     ...(grid.findings === undefined ? {} : { findings: grid.findings }),
+    ...(grid.refusedRows === undefined ? {} : { refusedRows: grid.refusedRows }),
     infinities: 'values beyond all numbers are the strings "INF" and "-INF"',
-    rows: orderOfRows,
+    rows: [orderOfRows, ...aboutRefused(grid)].join(" "),
     order: grid.order,
     shape: grid.shape,
   };

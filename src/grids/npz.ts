@@ -60,6 +60,7 @@ export function arraysFromNpz(bytes: Uint8Array): ReadonlyMap<string, NumberArra
 /**
  * A grid as .npz bytes: the axes `density` and `temperature`; every other column as an array of shape
  * (temperatures, densities); and `description`, JSON text of what they mean.
+ * Rows that are refused have NaN; `refused` tells why, and its numbers stand in the description.
  *
  * @throws FermistateError `too-large` from 4 GiB
  */
@@ -74,6 +75,7 @@ export function gridToNpz(grid: Grid, texts: GridTexts = {}): Uint8Array {
     composition: Object.fromEntries(composition.species.map((one) => [one.label, one.nucleonFraction])),
     conventions,
     validity: grid.validity,
+    ...(grid.refusedRows === undefined ? {} : { refusedRows: grid.refusedRows, empty: "NaN, where refused is not 0" }),
     columns: Object.fromEntries(columnNames.map((name) => [name, columnOf(name)])),
   };
   const axis = (values: readonly number[]): NumberArray => ({

@@ -4,7 +4,7 @@
  * the capital E that the W3C Recommendation "Model for Tabular Data and Metadata on the Web" (2015, 6.4.2) asks for.
  */
 
-/** Numbers, none of them NaN, separated by commas; `quote` is put around infinities. */
+/** Numbers separated by commas; `quote` is put around infinities. NaN, a place without a number, is empty or, quoted, null. */
 export function numbersText(values: readonly number[], quote: "" | '"'): string {
   // JSON's writer has the same shortest decimals and is three times as fast as String; two kinds it cannot write.
   return values.every(isPlain)
@@ -17,6 +17,7 @@ function isPlain(value: number): boolean {
 }
 
 function numberText(value: number, quote: string): string {
+  if (Number.isNaN(value)) return quote === "" ? "" : "null";
   if (value - value !== 0) return `${quote}${value > 0 ? "INF" : "-INF"}${quote}`;
   return Object.is(value, -0) ? "-0" : String(value).replace("e", "E");
 }

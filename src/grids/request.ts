@@ -26,6 +26,13 @@ export interface GridOptions {
    * @defaultValue none
    */
   readonly findings?: typeof regime;
+  /**
+   * "keep": a row without a state (unstable, outside the domain) stays in the grid, without numbers, and a last column `refused` has
+   * the number of its reason (`refusalReasons`; 0 for a state). In the columns of the grid its quantities are NaN, the only NaN
+   * a grid ever has; files have an empty field (CSV), null (JSON, Parquet) or NaN (.npz). "throw": such a row is an error.
+   * @defaultValue "throw"
+   */
+  readonly refused?: "throw" | "keep";
   /** Most points. @defaultValue 1e7 */
   readonly maximumPoints?: number;
   /** Most numbers in all columns together, 8 bytes each. @defaultValue 1.5e8 (1.2 GB) */
@@ -34,7 +41,11 @@ export interface GridOptions {
   readonly onProgress?: (done: number, total: number) => void;
 }
 
-const known = ["density", "temperature", "quantities", "findings", "maximumPoints", "maximumCells", "onProgress"];
+const known = ["density", "temperature", "quantities", "findings", "refused"].concat([
+  "maximumPoints",
+  "maximumCells",
+  "onProgress",
+]);
 
 /** Refuses options that are not there or not what they should be; values are checked by those who read them. */
 export function checkOptions(options: GridOptions): void {
@@ -48,6 +59,9 @@ export function checkOptions(options: GridOptions): void {
   }
   if (options.findings !== undefined && typeof options.findings !== "function") {
     throw invalid("findings", options.findings, "the function regime of fermistate");
+  }
+  if (options.refused !== undefined && options.refused !== "throw" && options.refused !== "keep") {
+    throw invalid("refused", options.refused, '"throw" or "keep"');
   }
 }
 
@@ -108,17 +122,18 @@ export function checkDomain(eos: EquationOfState, densities: readonly number[], 
   for (const t of temperatures) if (!holds(eos.domain, density, t)) refusePoint(eos.contributions, density, t);
 }
 
-/** Quantities that exist here; electron quantities are left out of the default, and refused when asked for by name. */
+/** Quantities that exist at the point `at`, the first one with a state; electron quantities are left out of the default, and refused when asked for by name. */
 export function checkAvailable(
   equationOfState: EquationOfState,
   composition: Composition,
-  density: Axis,
-  temperature: Axis,
+  at: { readonly density: number; readonly temperature: number } | undefined,
   names: readonly QuantityName[],
   byName: boolean,
 ): QuantityName[] {
-  const probe = firstState(equationOfState, density.values[0]!, temperature.values[0]!, composition);
-  const missing = names.filter((name) => optionalQuantities.includes(name) && probe[name] === undefined);
+  // Without any state nothing is known: what was asked for stays, its columns are empty.
+  const probe = at && firstState(equationOfState, at.density, at.temperature, composition);
+  const isMissing = (name: QuantityName): boolean => (probe === undefined ? !byName : probe[name] === undefined);
+  const missing = names.filter((name) => optionalQuantities.includes(name) && isMissing(name));
   const [first] = missing;
   if (byName && first !== undefined) {
     const allowed = "quantities that a contribution provides; this one needs the electron gas";

@@ -1,11 +1,12 @@
 /** A grid as an Apache Parquet file. */
 import type { GridTexts } from "../grids/description.js";
-import { columnOf, type Grid } from "../grids/grid.js";
+import { type ColumnName, columnOf, type Grid } from "../grids/grid.js";
 import { aboutGrid } from "../grids/json.js";
 import { optionalPackage } from "./optional.js";
 
 /**
- * The bytes of a Parquet file with the columns of a grid, doubles that read back to the same bits, infinities included.
+ * The bytes of a Parquet file with the columns of a grid, doubles that read back to the same bits, infinities included; null in
+ * rows that are refused.
  *
  * The file's key-value metadata are `title`, `creator`, `units` and `descriptions` (JSON, by column) and `about` (JSON: what
  * the grid is, its composition, conventions and validity, as in `gridToJson`).
@@ -31,11 +32,10 @@ export async function gridToParquet(grid: Grid, texts: GridTexts = {}): Promise<
   const buffer = parquetWriteBuffer({
     columnData: grid.columnNames.map((name) => ({
       name,
-      data: grid.columns[name]!,
-      type: "DOUBLE",
-      nullable: false,
+      ...valuesOf(grid, name),
+      type: "DOUBLE" as const,
       // A dictionary would take -0 for 0; the axes have no zero with a sign, and repeat.
-      ...(name === "density" || name === "temperature" ? {} : { encoding: "PLAIN" }),
+      ...(name === "density" || name === "temperature" ? {} : { encoding: "PLAIN" as const }),
     })),
     createdBy: String(creator),
     kvMetadata: [
@@ -47,6 +47,15 @@ export async function gridToParquet(grid: Grid, texts: GridTexts = {}): Promise<
     ],
   });
   return new Uint8Array(buffer);
+}
+
+/** The numbers of a column; null in rows that are refused. */
+function valuesOf({ columns, refusedRows }: Grid, name: ColumnName) {
+  const data = columns[name]!;
+  if (refusedRows === undefined || ["density", "temperature", "refused"].includes(name)) {
+    return { data, nullable: false };
+  }
+  return { data: Array.from(data, (value) => (Number.isNaN(value) ? null : value)), nullable: true };
 }
 
 /** The package that writes Parquet. @throws FermistateError `invalid-option` where it is missing */
