@@ -8,6 +8,7 @@
 export type { Axis } from "../grids/axes.js";
 export type { FindingCount, FindingsColumn } from "../grids/findings.js";
 export type { ColumnName, Grid, GridColumns } from "../grids/grid.js";
+export type { RefusedRowCount } from "../grids/refused.js";
 export { type ChartOptions, chartGrid } from "./chart.js";
 export { chartMap, mapOfGrid } from "./map.js";
 export type { MapData, MapMark, MapOptions } from "./map-request.js";

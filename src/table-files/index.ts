@@ -10,6 +10,7 @@ export type { Axis } from "../grids/axes.js";
 export type { GridTexts } from "../grids/description.js";
 export type { FindingCount, FindingsColumn } from "../grids/findings.js";
 export type { ColumnName, Grid, GridColumns } from "../grids/grid.js";
+export type { RefusedRowCount } from "../grids/refused.js";
 export type { SpeciesCertificate, SpeciesError, SpeciesQuantity, SpeciesTable } from "../tables/species-table.js";
 export type {
   CertifiedError,
