@@ -63,7 +63,7 @@ export function gridToCsvMetadata(grid: Grid, csvName: string, texts: GridTexts 
       ...(texts.note === undefined ? [] : [texts.note]),
       ...conventions,
       orderOfRows,
-      ...aboutRefused(grid),
+      ...aboutRefused(grid.refusedRows),
     ],
     "rdfs:comment": grid.validity,
     "schema:additionalProperty": [

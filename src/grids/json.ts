@@ -69,7 +69,7 @@ export function aboutGrid(grid: Grid, texts: GridTexts): Readonly<Record<string,
     ...(grid.findings === undefined ? {} : { findings: grid.findings }),
     ...(grid.refusedRows === undefined ? {} : { refusedRows: grid.refusedRows }),
     infinities: 'values beyond all numbers are the strings "INF" and "-INF"',
-    rows: [orderOfRows, ...aboutRefused(grid)].join(" "),
+    rows: [orderOfRows, ...aboutRefused(grid.refusedRows)].join(" "),
     order: grid.order,
     shape: grid.shape,
   };

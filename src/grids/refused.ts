@@ -3,7 +3,6 @@ import type { ErrorCode } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
 import type { EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { refusalReasons } from "../thermodynamics/refusal-reasons.js";
-import type { Grid } from "./grid.js";
 
 /** Rows of a grid that are refused for one reason; frozen. */
 export interface RefusedRowCount {
@@ -18,7 +17,7 @@ export interface RefusedRowCount {
 }
 
 /** What a file says of rows without a state; nothing where they are errors. */
-export function aboutRefused({ refusedRows }: Pick<Grid, "refusedRows">): readonly string[] {
+export function aboutRefused(refusedRows: readonly RefusedRowCount[] | undefined): readonly string[] {
   if (refusedRows === undefined) return [];
   return [
     "A row whose refused is not 0 has no state: its other fields are empty, and refused is the number of the reason.",

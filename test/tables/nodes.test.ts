@@ -108,7 +108,7 @@ describe("which points are nodes", () => {
   });
 
   test("refuses a composition that the table does not hold", () => {
-    expect(() => isNode(1e6, 1e7, composition({ He4: 1 }))).toThrow(/this table holds one composition/);
+    expect(() => isNode(1e6, 1e7, composition({ He4: 1 }))).toThrow(/the one composition of this table/);
   });
 });
 
