@@ -73,7 +73,20 @@ describe("one wrong entry among 775 of six digits is the only one named", () => 
   ];
   const rows = printed(kinds.degenerate(31, 25), 6);
   // Corners, edges, next to edges, inside.
-  const places = [0, 24, 30 * 25, 30 * 25 + 24, 11, 12 * 25, 30 * 25 + 7, 5 * 25 + 24, 26, 29 * 25 + 23, 15 * 25 + 12, 170];
+  const places = [
+    0,
+    24,
+    30 * 25,
+    30 * 25 + 24,
+    11,
+    12 * 25,
+    30 * 25 + 7,
+    5 * 25 + 24,
+    26,
+    29 * 25 + 23,
+    15 * 25 + 12,
+    170,
+  ];
   test.each(errors)("%s times %d", (name, factor) => {
     for (const index of places) {
       const outliers = found(changed(rows, index, name, factor));
@@ -141,11 +154,15 @@ describe("columns that contradict each other by order one", () => {
   test.each(wrong)("%s: refused, or reported on request, verdict first", (name, columns) => {
     const call = (how: Partial<ColumnsOptions>) => equationOfStateFromColumns(columns, { ...options, ...how });
     for (const unstable of ["refuse", "report"] as const) {
-      expect(() => call({ unstable })).toThrow(/columns that contradict each other over most of the mesh.*likely reasons: units/);
+      expect(() => call({ unstable })).toThrow(
+        /columns that contradict each other by order one.*likely reasons: units/,
+      );
     }
     const { report } = call({ unstable: "report", contradictory: "report" });
     expect(report.contradictions.length).toBeGreaterThan(0);
-    expect(columnsReportText(report)).toMatch(/^These columns contradict each other by order one over most of the mesh/);
+    expect(columnsReportText(report)).toMatch(
+      /^These columns contradict each other by order one over most of the mesh/,
+    );
     // Without entropy its column cannot be the reason, nor can a unit of temperature: only logarithms of it show in an energy.
     if (name.startsWith("entropy") || name.startsWith("temperature")) return;
     const { specificEntropy: _, ...rest } = columns;

@@ -6,8 +6,9 @@
  * divided difference D times a known factor. A wrong entry changes the D of its own two lines only, so the lines beside measure
  * what smooth matter, steps of the mesh, phase boundaries and rounding make of D there.
  */
-import { lastDigit } from "./digits.js";
+
 import type { SortedRows } from "./columns.js";
+import { lastDigit } from "./digits.js";
 import type { StateMesh } from "./mesh.js";
 import type { ColumnsOutlier } from "./report.js";
 
@@ -50,12 +51,14 @@ export function outliersOf(mesh: StateMesh, rows: SortedRows): readonly ColumnsO
   const add = (column: ColumnsOutlier["column"], values: Float64Array): void => {
     const isLogarithm = values.every((value) => value > 0);
     const digit = lastDigit(values) / 2;
-    found.push(...outliersOfField(mesh, rows.index, {
-      column,
-      values: isLogarithm ? values.map(Math.log) : values.slice(),
-      isLogarithm,
-      digit,
-    }));
+    found.push(
+      ...outliersOfField(mesh, rows.index, {
+        column,
+        values: isLogarithm ? values.map(Math.log) : values.slice(),
+        isLogarithm,
+        digit,
+      }),
+    );
   };
   add("pressure", rows.pressure);
   add("specificEnergy", rows.energy);
@@ -71,9 +74,9 @@ function outliersOfField(mesh: StateMesh, index: Uint32Array, field: Field): Col
   const stencils = widths.map((width) => [leftOut(u, width), leftOut(v, width)] as const);
   const found = new Map<number, number>();
   for (let pass = 0; pass < passes; pass++) {
-    const { score, shift } = scoresOf(field, stencils, m, n);
+    const { score, shift, rank } = scoresOf(field, stencils, m, n);
     const peaks: number[] = [];
-    for (let k = 0; k < m * n; k++) if (score[k]! > outlierFactor && isPeak(score, k, m, n)) peaks.push(k);
+    for (let k = 0; k < m * n; k++) if (score[k]! > outlierFactor && isPeak(rank, k, m, n)) peaks.push(k);
     if (peaks.length === 0) break;
     for (const k of peaks) {
       values[k]! -= shift[k]!;
@@ -104,6 +107,8 @@ function scoresOf(field: Field, stencils: readonly (readonly [LeftOut, LeftOut])
   const said = stencils.flatMap(([u, v]) => [saidBy(field, u, m, n, n, 1), saidBy(field, v, n, m, 1, n)]);
   const score = new Float64Array(m * n);
   const shift = new Float64Array(m * n);
+  // An error hides what is usual from its neighbours on a line: they may score as high, but one direction alone speaks for them.
+  const rank = new Float64Array(m * n);
   for (let k = 0; k < m * n; k++) {
     for (let pair = 0; pair < said.length; pair += 2) {
       const [a, b] = [said[pair]!, said[pair + 1]!];
@@ -111,12 +116,14 @@ function scoresOf(field: Field, stencils: readonly (readonly [LeftOut, LeftOut])
       const mean = (a.difference[k]! * wa + b.difference[k]! * wb) / (wa + wb);
       const size = Math.abs(mean) * Math.sqrt(wa + wb);
       if (!(size > score[k]!)) continue;
-      if (!said.every((one) => Math.abs(one.difference[k]! - mean) <= agreement * Math.abs(mean) + 2 * one.usual[k]!)) continue;
+      if (!said.every((one) => Math.abs(one.difference[k]! - mean) <= agreement * Math.abs(mean) + 2 * one.usual[k]!))
+        continue;
       score[k] = size;
       shift[k] = mean;
+      rank[k] = size + Math.min(Math.abs(a.difference[k]!) / a.usual[k]!, Math.abs(b.difference[k]!) / b.usual[k]!);
     }
   }
-  return { score, shift };
+  return { score, shift, rank };
 }
 
 function saidBy(
@@ -209,15 +216,15 @@ function leftOut(axis: Float64Array, widest: number): LeftOut {
   return { width, first, weights, factor, noise };
 }
 
-/** True where no node of the same lines within a stencil has a higher score: an error shows at its neighbours too. */
-function isPeak(score: Float64Array, k: number, m: number, n: number): boolean {
+/** True where no node of the same lines within a stencil ranks higher: an error shows at its neighbours too. */
+function isPeak(rank: Float64Array, k: number, m: number, n: number): boolean {
   const [i, j] = [Math.floor(k / n), k % n];
   const wide = widths[1] - 1;
   for (let a = Math.max(i - wide, 0); a <= Math.min(i + wide, m - 1); a++) {
-    if (score[a * n + j]! > score[k]!) return false;
+    if (rank[a * n + j]! > rank[k]!) return false;
   }
   for (let b = Math.max(j - wide, 0); b <= Math.min(j + wide, n - 1); b++) {
-    if (score[i * n + b]! > score[k]!) return false;
+    if (rank[i * n + b]! > rank[k]!) return false;
   }
   return true;
 }

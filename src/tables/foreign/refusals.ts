@@ -22,12 +22,13 @@ export function refuseContradictory(contradictions: readonly string[], residuals
   const maps = [residuals.maxwell, residuals.energy, residuals.heat].filter((map) => map !== undefined);
   const found = maps
     .filter(({ relation }) => contradictions.includes(relation))
-    .map(({ relation, median }) => `${relation} fails by ${median.toPrecision(2)} of its largest term or more`);
+    .map(({ relation, median }) => `${relation} fails by ${Number(median.toPrecision(2))} of its largest term`);
   throw new FermistateError("invalid-option", {
     argument: "columns",
-    given: `columns that contradict each other over most of the mesh: at half of the nodes ${found.join("; ")}`,
+    given: "columns that contradict each other by order one",
     allowed:
-      `columns of one matter; likely reasons: ${likelyReasons}; ` +
+      `columns of one matter (over most of the mesh ${found.join("; ")}); likely reasons: ` +
+      `${likelyReasons}; ` +
       'contradictory: "report" makes the report all the same',
   });
 }
@@ -36,6 +37,8 @@ export function refuseContradictory(contradictions: readonly string[], residuals
 export function refuseUnstable({ unstable, stability, outliers = [] }: ColumnsReport): void {
   const count = unstable.density.length;
   if (count === 0) return;
+  const [rho, kelvin] = [unstable.density[0]!, unstable.temperature[0]!].map((x) => Number(x.toPrecision(6)));
+  const place = `${rho} g/cm^3, ${kelvin} K`;
   const falls = stability.pressureAlongDensity.density.length + stability.energyAlongTemperature.density.length;
   const reason =
     falls > 0
@@ -49,7 +52,7 @@ export function refuseUnstable({ unstable, stability, outliers = [] }: ColumnsRe
         : "";
   throw new FermistateError("unstable", {
     argument: "columns",
-    given: `${count} places where their fit is unstable, first ${unstable.density[0]} g/cm^3, ${unstable.temperature[0]} K`,
+    given: `${count} places where their fit is unstable, first ${place}`,
     allowed:
       `pressure that rises with density and energy that rises with temperature ${reason}${suspects}; ` +
       'photons in the columns are better taken out with beside: [radiation()]; unstable: "report" lists the places',

@@ -1,4 +1,5 @@
 /** The report on columns in words. */
+import { outlierFactor } from "./outliers.js";
 import { likelyReasons, outliersNamed } from "./refusals.js";
 import type { ColumnsOutlier, ColumnsReport, ErrorSpread, Places, ResidualMap } from "./report.js";
 
@@ -13,7 +14,7 @@ const spread = ({ max, percentile99, median, worst }: ErrorSpread): string =>
 
 /** A report in plain language, one finding a line. */
 export function columnsReportText(report: ColumnsReport): string {
-  const { residuals, stability, deviations, unstable, densities, temperatures, outliers = [] } = report;
+  const { residuals, stability, deviations, unstable, densities, temperatures, contradictions, outliers = [] } = report;
   const lines = [
     verdict(report),
     `${report.rows} rows, ${report.arrangement}: ${densities.length} densities from ${range(densities, "g/cm^3")}, ` +
@@ -35,7 +36,10 @@ export function columnsReportText(report: ColumnsReport): string {
     if (map !== undefined) lines.push(residualLine(map, outliers.length));
   }
   if (outliers.length > 0) {
-    lines.push("Entries far from what their neighbours say, more than the mesh and the digits explain (rows from 0):");
+    lines.push(
+      `Entries off from what their neighbours say by ${outlierFactor} times what lines beside them and digits explain, or more ` +
+        "(rows from 0):",
+    );
     for (const outlier of outliers.slice(0, mostListed)) lines.push(outlierLine(outlier));
     if (outliers.length > mostListed) lines.push(`  and ${outliers.length - mostListed} more.`);
   }
@@ -57,7 +61,8 @@ export function columnsReportText(report: ColumnsReport): string {
     lines.push(`  specific entropy: ${spread(deviations.specificEntropy)}.`);
   lines.push(
     unstable.density.length === 0
-      ? "It is stable at all nodes and in the middle of all cells and their sides."
+      ? "It is stable at all nodes and in the middle of all cells and their sides" +
+          (contradictions.length > 0 ? ", which is worth nothing where the columns contradict each other." : ".")
       : `It is not stable, and refuses to answer, at ${countOf(unstable, "place")}; first ${first(unstable)}.`,
   );
   return lines.join("\n");
@@ -122,7 +127,7 @@ function gaps({ missing, strayRows }: ColumnsReport): string {
 function outlierLine({ row, density, temperature, column, deviation, factor }: ColumnsOutlier): string {
   const name = { pressure: "pressure", specificEnergy: "specific energy", specificEntropy: "specific entropy" }[column];
   const percent = `${Number((100 * Math.abs(deviation)).toPrecision(2))} % too ${deviation > 0 ? "high" : "low"}`;
-  return `  row ${row}, ${at([density, temperature])}: ${name} ${percent}, ${factor.toPrecision(2)} times what is usual there.`;
+  return `  row ${row}, ${at([density, temperature])}: ${name} ${percent}, ${Number(factor.toPrecision(2))} times what is usual there.`;
 }
 
 function residualLine(map: ResidualMap, outliers: number): string {
