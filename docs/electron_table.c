@@ -1,7 +1,8 @@
-/* Electrons and positrons, any composition, from a table of fermistate in an .npz file. C99, no library; for little-endian
-   machines.
+/* Electrons and positrons, any composition, from a table of fermistate in an .npz file. C99, no library; for
+   little-endian machines.
 
        cc -O2 electron_table.c -o electron_table -lm
+       ./electron_table electrons.npz                                 checks the file, tells what it holds
        ./electron_table electrons.npz 3.0110703768336843e25 1e9       net electrons per cm^3, temperature in K
 
    In a program of your own compile with -D ELECTRON_TABLE_NO_MAIN, call electron_table_read once and electron_gas at
@@ -11,6 +12,10 @@
 #include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
+
+/* Net electrons per cm^3: about 1e-20 to 1e18 g/cm^3, the domain of the library's own gas. */
+#define LOWEST_DENSITY 1e3
+#define HIGHEST_DENSITY 1e42
 
 struct electron_table {
   int rows, columns;            /* nodes of eta and of y = ln theta */
@@ -31,55 +36,151 @@ enum { P, TN, TS, ENERGY, TPLUS, A, B, DP, C, SUMS };
 
 /* ---- the file: an archive of stored .npy members ---- */
 
+/* Why a function gave no answer; electron_table_reason has the words. */
+enum {
+  ELECTRON_UNREADABLE = -1,
+  ELECTRON_NO_ARCHIVE = -2,
+  ELECTRON_DAMAGED = -3,
+  ELECTRON_NO_TABLE = -4,
+  ELECTRON_DENSITY = -5,
+  ELECTRON_TEMPERATURE = -6,
+  ELECTRON_NO_CONVERGENCE = -7
+};
+
+const char *electron_table_reason(int error) {
+  static const char *const reasons[8] = {"no error",
+                                         "it cannot be read",
+                                         "it is no .npz file",
+                                         "it is cut or damaged",
+                                         "it is no electron table of layout 2",
+                                         "the density is not within 1e3 to 1e42 per cm^3",
+                                         "the temperature is outside the table",
+                                         "no convergence"};
+  return error > 0 || error < -7 ? "unknown error" : reasons[-error];
+}
+
 static uint32_t number(const unsigned char *at, int bytes) {
   uint32_t value = 0;
   while (bytes--) value = value << 8 | at[bytes];
   return value;
 }
 
-/* The doubles of a member; their number into `count`. NULL where there is none. */
-static double *member(const unsigned char *file, size_t length, const char *name, int *count) {
-  size_t at = 0;
-  while (at + 30 <= length && number(file + at, 4) == 0x04034b50) {
-    size_t size = number(file + at + 18, 4), letters = number(file + at + 26, 2);
-    size_t data = at + 30 + letters + number(file + at + 28, 2);
-    if (data + size > length) return NULL;
-    if (letters == strlen(name) && memcmp(file + at + 30, name, letters) == 0 && size > 10) {
-      size_t head = 10 + number(file + data + 8, 2); /* format 1.0 of .npy */
-      if (head > size) return NULL;
-      double *values = malloc(size - head + 1);
-      if (values == NULL) return NULL;
-      memcpy(values, file + data + head, size - head);
-      *count = (int)((size - head) / sizeof(double));
-      return values;
-    }
-    at = data + size;
+/* CRC-32 of ISO 3309 (reflected polynomial), as in the headers of the archive. */
+static uint32_t crc_32(const unsigned char *at, size_t length) {
+  uint32_t table[256], sum = 0xffffffff;
+  for (uint32_t k = 0; k < 256; k++) {
+    table[k] = k;
+    for (int bit = 0; bit < 8; bit++) table[k] = table[k] >> 1 ^ (table[k] & 1 ? 0xedb88320 : 0);
+  }
+  for (; length > 0; length--) sum = sum >> 8 ^ table[(sum ^ *at++) & 0xff];
+  return ~sum;
+}
+
+enum { HEADER = 30, ENTRY = 46, END = 22 }; /* bytes of an archive's records without names */
+
+/* A member: its name, and its .npy bytes with the sum that its header states. */
+struct member {
+  const unsigned char *name, *data;
+  size_t letters, size, end; /* end: place of what follows in the file */
+  uint32_t sum;
+};
+
+/* The member at a place of the file. 0, or -1 where none lies there, or one that is packed. */
+static int member_at(const unsigned char *file, size_t length, size_t at, struct member *found) {
+  const unsigned char *head = file + at;
+  if (length - at < HEADER || number(head, 4) != 0x04034b50) return -1;
+  size_t size = number(head + 18, 4), letters = number(head + 26, 2), before = HEADER + letters + number(head + 28, 2);
+  if (before > length - at || size > length - at - before) return -1;
+  if (number(head + 8, 2) != 0 || number(head + 22, 4) != size) return -1;
+  *found = (struct member){head + HEADER, head + before, letters, size, at + before + size,
+                           number(head + 14, 4)};
+  return 0;
+}
+
+/* Whether the file is whole: members that have their sums, then a directory of as many, then its end. */
+static int is_whole(const unsigned char *file, size_t length) {
+  struct member one;
+  size_t at = 0, directory, count = 0;
+  for (; at < length && number(file + at, 4) == 0x04034b50; at = one.end, count++) {
+    if (member_at(file, length, at, &one) != 0 || length - one.end < END) return 0;
+    if (crc_32(one.data, one.size) != one.sum) return 0;
+  }
+  directory = at;
+  for (size_t k = 0; k < count; k++) {
+    const unsigned char *entry = file + at;
+    if (length - at < ENTRY + END || number(entry, 4) != 0x02014b50) return 0;
+    size_t size = ENTRY + number(entry + 28, 2) + number(entry + 30, 2) + number(entry + 32, 2);
+    if (size > length - at - END) return 0;
+    at += size;
+  }
+  const unsigned char *end = file + at;
+  return length - at == END && number(end, 4) == 0x06054b50 && number(end + 10, 2) == count &&
+         number(end + 12, 4) == at - directory && number(end + 16, 4) == directory;
+}
+
+/* The doubles of a member of a whole file; their number into `count`. NULL where there is none. */
+static double *doubles(const unsigned char *file, size_t length, const char *name, int *count) {
+  static const char start[] = "{'descr': '<f8', 'fortran_order': False,";
+  struct member one;
+  for (size_t at = 0; member_at(file, length, at, &one) == 0; at = one.end) {
+    if (one.letters != strlen(name) || memcmp(one.name, name, one.letters) != 0) continue;
+    if (one.size < 10 + sizeof start || memcmp(one.data, "\x93NUMPY\x01", 8) != 0) return NULL;
+    size_t head = 10 + number(one.data + 8, 2); /* format 1.0 of .npy */
+    if (head > one.size || memcmp(one.data + 10, start, sizeof start - 1) != 0) return NULL;
+    double *values = malloc(one.size - head + 1);
+    if (values == NULL) return NULL;
+    memcpy(values, one.data + head, one.size - head);
+    *count = (int)((one.size - head) / sizeof(double));
+    return values;
   }
   return NULL;
 }
 
-/* 0, or -1 where the file is no electron table of layout 2. */
-int electron_table_read(const char *path, struct electron_table *table) {
+/* All bytes of a file, their number into `length`. NULL where it cannot be read. */
+static unsigned char *bytes_of(const char *path, size_t *length) {
   FILE *file = fopen(path, "rb");
-  if (file == NULL || fseek(file, 0, SEEK_END) != 0) return -1;
-  long length = ftell(file);
-  unsigned char *bytes = length > 0 ? malloc((size_t)length) : NULL;
+  if (file == NULL) return NULL;
+  long size = fseek(file, 0, SEEK_END) == 0 ? ftell(file) : -1;
+  unsigned char *bytes = size >= 0 && size < INT32_MAX ? malloc((size_t)size + END) : NULL;
   rewind(file);
-  int whole = bytes != NULL && fread(bytes, 1, (size_t)length, file) == (size_t)length;
+  if (bytes != NULL && fread(bytes, 1, (size_t)size, file) != (size_t)size) {
+    free(bytes);
+    bytes = NULL;
+  }
   fclose(file);
-  int counts[7] = {0};
-  const char *names[7] = {"axes.degeneracy.npy",  "axes.log_theta.npy",     "surface.nodes.npy",
-                          "units.rest_temperature.npy", "units.pressure.npy", "units.density.npy",
-                          "format.electron_table_layout.npy"};
+  *length = (size_t)size;
+  return bytes;
+}
+
+/* 0, or why the file was refused: ELECTRON_UNREADABLE, _NO_ARCHIVE, _DAMAGED, _NO_TABLE. */
+int electron_table_read(const char *path, struct electron_table *table) {
+  static const char *const names[7] = {"axes.degeneracy.npy",        "axes.log_theta.npy", "surface.nodes.npy",
+                                       "units.rest_temperature.npy", "units.pressure.npy", "units.density.npy",
+                                       "format.electron_table_layout.npy"};
+  size_t length;
+  unsigned char *bytes = bytes_of(path, &length);
+  if (bytes == NULL) return ELECTRON_UNREADABLE;
+  int error = length < 4 || number(bytes, 4) != 0x04034b50 ? ELECTRON_NO_ARCHIVE : 0;
+  if (error == 0 && !is_whole(bytes, length)) error = ELECTRON_DAMAGED;
   double *found[7] = {0};
-  for (int k = 0; whole && k < 7; k++) {
-    found[k] = member(bytes, (size_t)length, names[k], &counts[k]);
-    whole = found[k] != NULL;
+  int counts[7] = {0};
+  for (int k = 0; error == 0 && k < 7; k++) {
+    found[k] = doubles(bytes, length, names[k], &counts[k]);
+    if (found[k] == NULL || counts[k] < (k < 2 ? 2 : 1)) error = ELECTRON_NO_TABLE;
   }
   free(bytes);
-  if (!whole || counts[2] != 49 * counts[0] * counts[1] || *found[6] != 2) return -1;
-  *table = (struct electron_table){counts[0], counts[1], found[0], found[1], found[2], *found[3], *found[4], *found[5]};
-  return 0;
+  if (error == 0 && (counts[2] != 49 * counts[0] * counts[1] || *found[6] != 2)) error = ELECTRON_NO_TABLE;
+  if (error == 0)
+    *table = (struct electron_table){counts[0], counts[1], found[0],  found[1],
+                                     found[2],  *found[3], *found[4], *found[5]};
+  for (int k = error == 0 ? 3 : 0; k < 7; k++) free(found[k]);
+  return error;
+}
+
+void electron_table_free(struct electron_table *table) {
+  free(table->eta);
+  free(table->y);
+  free(table->nodes);
 }
 
 /* ---- the table: Hermite interpolation of degree 13 ---- */
@@ -233,15 +334,23 @@ static void gas_sums(const struct electron_table *table, double nu, double eta, 
   if (nu < 1e-5) sums[TN] = nu * sums[A]; /* n_- - n_+ is a small difference here */
 }
 
-/* The gas of `density` net electrons per cm^3, above 0, at `temperature` in K. 0, or -1 outside the table and without
-   convergence. */
+/* 0, or ELECTRON_DENSITY, ELECTRON_TEMPERATURE. */
+static int refusal(const struct electron_table *table, double density, double temperature) {
+  if (!(density >= LOWEST_DENSITY && density <= HIGHEST_DENSITY)) return ELECTRON_DENSITY;
+  double y = log(temperature / table->rest);
+  return y >= table->y[0] && y <= table->y[table->columns - 1] ? 0 : ELECTRON_TEMPERATURE;
+}
+
+/* The gas of `density` net electrons per cm^3, 1e3 to 1e42, at `temperature` in K. 0, or why not: ELECTRON_DENSITY,
+   ELECTRON_TEMPERATURE, ELECTRON_NO_CONVERGENCE. */
 int electron_gas(const struct electron_table *table, double density, double temperature, struct electron_state *state) {
   double theta = temperature / table->rest, n = density / table->density, inverse = 1 / theta, sums[SUMS];
-  double middle = 0.5 * inverse, nu, eta, last = INFINITY, y = log(theta);
-  if (!(density > 0 && y >= table->y[0] && y <= table->y[table->columns - 1])) return -1;
+  double middle = 0.5 * inverse, nu, eta, last = INFINITY;
+  int error = refusal(table, density, temperature);
+  if (error != 0) return error;
   gas_sums(table, middle, -middle, theta, sums);
-  /* With pairs the unknown is ln nu, in which ln n is convex, else eta, in which it is concave: Newton's method converges
-     from above in the one and from below in the other. */
+  /* With pairs the unknown is ln nu, in which ln n is convex, else eta, in which it is concave: Newton's method
+     converges from above in the one and from below in the other. */
   int pairs = n * theta < sums[TN];
   if (pairs) {
     gas_sums(table, 0, -inverse, theta, sums);
@@ -265,7 +374,7 @@ int electron_gas(const struct electron_table *table, double density, double temp
     }
     double size = fabs(ratio) / fmax(pairs ? nu : 1, fabs(eta));
     if (size < 4e-16 || (size < 1e-10 && size >= last)) break;
-    if (round == 199) return -1;
+    if (round == 199) return ELECTRON_NO_CONVERGENCE;
     last = size;
   }
   gas_sums(table, nu, eta, theta, sums);
@@ -283,21 +392,52 @@ int electron_gas(const struct electron_table *table, double density, double temp
 }
 
 #ifndef ELECTRON_TABLE_NO_MAIN
+static int refuse(const char *argument, const char *given, const char *allowed) {
+  fprintf(stderr, "%s: given %s; allowed: %s\n", argument, given, allowed);
+  return 1;
+}
+
+/* Whether a word is a finite number, and that number. */
+static int read_number(const char *word, double *value) {
+  char *end;
+  *value = strtod(word, &end);
+  return end != word && *end == 0 && isfinite(*value);
+}
+
 int main(int count, char **words) {
-  struct electron_table table;
+  static struct electron_table table;
   struct electron_state state;
-  if (count < 4 || electron_table_read(words[1], &table) != 0) {
-    fprintf(stderr, "usage: %s electrons.npz DENSITY TEMPERATURE ...: net electrons per cm^3, K\n", words[0]);
-    return 2;
+  char text[400], range[80];
+  if (count < 2)
+    return refuse("arguments", "none", "electrons.npz [DENSITY TEMPERATURE]...: net electrons per cm^3, K");
+  int error = electron_table_read(words[1], &table);
+  if (error != 0) {
+    snprintf(text, sizeof text, "%s, and %s", words[1], electron_table_reason(error));
+    return refuse("file", text, "an electron table as speciesTableToNpz of fermistate writes it");
   }
-  puts("pressure entropy energy heat_capacity pressure_by_density pressure_by_temperature eta positrons");
-  for (int k = 2; k + 1 < count; k += 2) {
-    if (electron_gas(&table, atof(words[k]), atof(words[k + 1]), &state) != 0) {
-      fprintf(stderr, "%s per cm^3 and %s K: outside the table\n", words[k], words[k + 1]);
+  double lowest = table.rest * exp(table.y[0]), highest = table.rest * exp(table.y[table.columns - 1]);
+  snprintf(range, sizeof range, "%.4g to %.4g K", lowest, highest);
+  if (count == 2) printf("%d x %d nodes, %s\n", table.rows, table.columns, range);
+  else if (count % 2 != 0) return refuse("temperature", "none", "one after each density");
+  for (int k = 2; k < count; k += 2) { /* all of them before the first line of numbers */
+    double density, temperature;
+    if (!read_number(words[k], &density)) error = ELECTRON_DENSITY;
+    else if (!read_number(words[k + 1], &temperature)) error = ELECTRON_TEMPERATURE;
+    else error = refusal(&table, density, temperature);
+    if (error == ELECTRON_DENSITY) return refuse("density", words[k], "1e3 to 1e42 net electrons per cm^3");
+    if (error == ELECTRON_TEMPERATURE) return refuse("temperature", words[k + 1], range);
+  }
+  if (count > 2)
+    puts("pressure entropy energy heat_capacity pressure_by_density pressure_by_temperature eta positrons");
+  for (int k = 2; k < count; k += 2) {
+    error = electron_gas(&table, strtod(words[k], NULL), strtod(words[k + 1], NULL), &state);
+    if (error != 0) {
+      fprintf(stderr, "%s per cm^3 and %s K: %s\n", words[k], words[k + 1], electron_table_reason(error));
       return 1;
     }
     printf("%.17g %.17g %.17g %.17g ", state.pressure, state.entropy, state.energy, state.heat_capacity);
-    printf("%.17g %.17g %.17g %.17g\n", state.pressure_by_density, state.pressure_by_temperature, state.eta, state.positrons);
+    printf("%.17g %.17g ", state.pressure_by_density, state.pressure_by_temperature);
+    printf("%.17g %.17g\n", state.eta, state.positrons);
   }
   return 0;
 }

@@ -7,6 +7,7 @@
 docs/guide/electron-table.md of fermistate has the formulas and the errors; electron_table.c is the same in C.
 """
 import hashlib
+import io
 import json
 import math
 import sys
@@ -14,7 +15,46 @@ import sys
 import numpy as np
 
 ORDER = 6  # highest derivative in each variable at a node
+LOWEST_DENSITY, HIGHEST_DENSITY = 1e3, 1e42  # per cm^3: about 1e-20 to 1e18 g/cm^3, the domain of the library's own gas
 ZETA = [math.pi**2 / 6, math.pi**4 / 90] + [sum(m ** (-2.0 * k) for m in range(1, 40)) for k in range(3, 16)]
+
+
+class Refused(ValueError):
+    """An argument that has no answer: which one, what was given, what is allowed."""
+
+    def __init__(self, argument, given, allowed):
+        super().__init__(f"{argument}: given {given}; allowed: {allowed}")
+
+
+def arrays_of(path):
+    """The arrays of an .npz file by name, each held against its CRC-32."""
+
+    def refuse(reason):
+        allowed = "an electron table as speciesTableToNpz of fermistate writes it"
+        return Refused("file", f"{path}, and {reason}", allowed)
+
+    try:
+        with open(path, "rb") as file:
+            content = file.read()
+    except OSError:
+        raise refuse("it cannot be read") from None
+    if content[:4] != b"PK\3\4":
+        raise refuse("it is no .npz file")
+    try:
+        with np.load(io.BytesIO(content)) as data:
+            found = {name: data[name] for name in data.files}
+    except Exception:  # of zipfile and numpy, by the kind of damage
+        raise refuse("it is cut or damaged") from None
+    try:
+        layout, description = float(found["format.electron_table_layout"]), json.loads(str(found["description"]))
+        good = layout == 2 and checksum(found, description["items"]) == description["checksum"]
+    except (KeyError, TypeError, ValueError):
+        raise refuse("it is no electron table of layout 2") from None
+    if layout != 2:
+        raise refuse("it is no electron table of layout 2")
+    if not good:
+        raise refuse("its content does not have the checksum that it states")
+    return found
 
 
 def checksum(data, items):
@@ -53,16 +93,12 @@ class ElectronTable:
     """A table of ln P of electrons alone; refuses a file whose content does not have its checksum."""
 
     def __init__(self, path):
-        data = np.load(path)
-        description = json.loads(str(data["description"]))
-        if int(data["format.electron_table_layout"]) != 2:
-            raise ValueError("another layout")
-        if checksum(data, description["items"]) != description["checksum"]:
-            raise ValueError("the content does not have the checksum that the file states")
+        data = arrays_of(path)
         self.eta, self.y, self.nodes = (data[name] for name in ("axes.degeneracy", "axes.log_theta", "surface.nodes"))
         self.rest = float(data["units.rest_temperature"])
         self.pressure = float(data["units.pressure"])
         self.density = float(data["units.density"])
+        self.range = "{:.4g} to {:.4g} K".format(*(self.rest * math.exp(self.y[k]) for k in (0, -1)))
         self.quantities = str(data["certificate.quantity"]).split("\n")
         self.largest = data["certificate.errors.largest"]
 
@@ -102,7 +138,7 @@ class ElectronTable:
         return p * np.array([*sums, p20, sign * (p11 + rate * p20 - a), dp, ddp - dp])
 
     def sums(self, nu, eta, theta):
-        """The same of the gas at nu = mu/kT and eta = nu - 1/theta: both, since either may be small beside the other."""
+        """The same of the gas at nu = mu/kT and eta = nu - 1/theta: both, as either may be small beside the other."""
         total = degenerate(eta, theta) if eta > self.eta[-1] else self.species(eta, theta, 1, 0)
         opposite = -nu - 1 / theta
         if opposite > -740:
@@ -111,11 +147,18 @@ class ElectronTable:
             total[1] = nu * total[5]  # n_- - n_+ is a small difference here
         return total
 
+    def check(self, density, temperature, words=None):
+        """Refuses what has no answer; `words`: how the two were written."""
+        written = words or (f"{density!r}", f"{temperature!r}")
+        if not LOWEST_DENSITY <= density <= HIGHEST_DENSITY:
+            raise Refused("density", written[0], "1e3 to 1e42 net electrons per cm^3")
+        if not (temperature > 0 and self.y[0] <= math.log(temperature / self.rest) <= self.y[-1]):
+            raise Refused("temperature", written[1], self.range)
+
     def gas(self, density, temperature):
-        """Quantities at `density` net electrons per cm^3, above 0, and `temperature`, K, by name, in cgs."""
+        """Quantities at `density` net electrons per cm^3, 1e3 to 1e42, and `temperature`, K, by name, in cgs."""
+        self.check(density, temperature)
         theta, n = temperature / self.rest, density / self.density
-        if not self.y[0] <= math.log(theta) <= self.y[-1]:
-            raise ValueError(f"{temperature} K is outside the table")
         middle = 0.5 / theta
         pairs = n * theta < self.sums(middle, -middle, theta)[1]
         if pairs:  # the unknown is ln nu, in which ln n is convex: Newton's method converges from above
@@ -140,7 +183,7 @@ class ElectronTable:
                 break
             last = size
         else:
-            raise ArithmeticError("no convergence")
+            raise ArithmeticError(f"{density} per cm^3 and {temperature} K: no convergence")
         p, _, ts, energy, plus, a, b, dp, c = self.sums(nu, eta, theta)
         return {
             "pressure": self.pressure * p,  # dyn/cm^2
@@ -176,13 +219,35 @@ def degenerate(eta, theta):
     return np.array([pressure, tn, ts, ts - pressure + eta * tn, 0, *slopes])
 
 
-if __name__ == "__main__":
-    table = ElectronTable(sys.argv[1])
-    if len(sys.argv) == 2:
-        lowest, highest = (table.rest * math.exp(y) for y in (table.y[0], table.y[-1]))
-        print(f"{len(table.eta)} x {len(table.y)} nodes, {lowest:.4g} to {highest:.4g} K")
+def number(word):
+    """The number that a word is; NaN, which every check refuses, where it is none."""
+    try:
+        return float(word)
+    except ValueError:
+        return math.nan
+
+
+def main(words):
+    """The command line."""
+    if not words:
+        raise Refused("arguments", "none", "electrons.npz [DENSITY TEMPERATURE]...: net electrons per cm^3, K")
+    table = ElectronTable(words[0])
+    if len(words) == 1:
+        print(f"{len(table.eta)} x {len(table.y)} nodes, {table.range}")
         for quantity, largest in zip(table.quantities, table.largest):
             print(f"{quantity}: {largest:.1e}")
-    for density, temperature in zip(sys.argv[2::2], sys.argv[3::2]):
-        state = table.gas(float(density), float(temperature))
+    elif len(words) % 2 == 0:
+        raise Refused("temperature", "none", "one after each density")
+    points = list(zip(words[1::2], words[2::2]))
+    for pair in points:  # all of them before the first line of numbers
+        table.check(*map(number, pair), pair)
+    for pair in points:
+        state = table.gas(*map(float, pair))
         print(" ".join(f"{name} {float(value)!r}" for name, value in state.items()))
+
+
+if __name__ == "__main__":
+    try:
+        main(sys.argv[1:])
+    except (Refused, ArithmeticError) as refusal:
+        sys.exit(str(refusal))

@@ -4,8 +4,9 @@
     python3 read_table.py core.h5                 checks the file, tells what it holds
     python3 read_table.py core.h5 1e6 2e7         quantities at 1e6 g/cm^3 and 2e7 K
 
-The file says itself what its parts mean: see the attribute "reading" of its root. What stands beside the table
-(source/beside) is not in these numbers.
+The file says itself what its parts mean: see the attribute "reading" of its root. Of what stands beside the table
+(source/beside) radiation is added to every quantity, and ideal ions to those that need no mass and spin of the nuclei,
+which the file does not hold: not to entropy and free energy. Each number says what it is without.
 """
 import hashlib
 import math
@@ -26,9 +27,23 @@ BASIS = [
 ]
 BASES = [BASIS, [b.deriv(1) for b in BASIS], [b.deriv(2) for b in BASIS]]
 
+# CODATA 2022: exact but for the atomic mass constant.
+BOLTZMANN, PLANCK, LIGHT, ATOMIC_MASS = 1.380649e-16, 6.62607015e-27, 29979245800.0, 1.66053906892e-24
+RADIATION = 8 * math.pi**5 * BOLTZMANN**4 / (15 * PLANCK**3 * LIGHT**3)  # erg/(cm^3 K^4)
+
+UNITS = {
+    "specificFreeEnergy": "erg/g",
+    "pressure": "dyn/cm^2",
+    "specificEnergy": "erg/g",
+    "specificEntropy": "erg/(g K)",
+    "heatCapacityV": "erg/(g K)",
+    "pressureByDensity": "erg/g",
+    "pressureByTemperature": "dyn/(cm^2 K)",
+}
+
 
 def weights(t, step):
-    """The basis at t by order of derivative (rows), for ends whose derivatives are by a variable with cells of `step`."""
+    """The basis at t by order of derivative (rows), for ends with derivatives by a variable with cells of `step`."""
     scale = [1, step, step**2] * 2
     return np.array([[b(t) * s for b, s in zip(bases, scale)] / np.float64(step) ** k for k, bases in enumerate(BASES)])
 
@@ -58,16 +73,20 @@ def checksum(file):
 class Axis:
     """Equal steps of a logarithm."""
 
-    def __init__(self, group):
-        self.lowest = group["lowest"][()]
-        self.highest = group["highest"][()]
+    def __init__(self, name, unit, group):
+        self.name, self.unit = name, unit
+        self.lowest = float(group["lowest"][()])
+        self.highest = float(group["highest"][()])
         self.blocks = int(group["blocks"][()])
         self.step = math.log(self.highest / self.lowest) / self.blocks
+
+    def __str__(self):
+        return f"{self.lowest!r} to {self.highest!r} {self.unit}"
 
     def blocks_above(self, value):
         """How many blocks a value lies above the lower end."""
         if not self.lowest <= value <= self.highest:
-            raise ValueError(f"{value} is outside {self.lowest} to {self.highest}")
+            raise ValueError(f"{self.name}: given {value!r}; allowed: {self}")
         return (math.log(value) - math.log(self.lowest)) / self.step
 
 
@@ -119,8 +138,9 @@ class Table:
                 raise ValueError("the content does not have the checksum that the file states")
             self.composition = file["composition/name"].asstr()[()]
             self.beside = texts(file["source/beside"])
-            self.density = Axis(file["axes/density"])
-            self.temperature = Axis(file["axes/temperature"])
+            self.ions = sum(file["composition/nucleon_fraction"][:] / file["composition/mass_number"][:]) / ATOMIC_MASS
+            self.density = Axis("density", "g/cm^3", file["axes/density"])
+            self.temperature = Axis("temperature", "K", file["axes/temperature"])
             self.cold = file["cold/nodes"][:]
             self.sheets = {phase: Sheet(file["sheets"][phase]) for phase in texts(file["sheets/phase"])}
             self.freezing = None
@@ -147,8 +167,32 @@ class Table:
         found[0] += value
         return found
 
+    def added(self, density, temperature):
+        """What stands beside the table and is known here: by its name, its part in each quantity, in cgs."""
+        photons = RADIATION * temperature**4 / density
+        gas = self.ions * BOLTZMANN * temperature
+        known = {
+            "radiation": {
+                "specificFreeEnergy": -photons / 3,
+                "pressure": density * photons / 3,
+                "specificEnergy": photons,
+                "specificEntropy": 4 * photons / (3 * temperature),
+                "heatCapacityV": 4 * photons / temperature,
+                "pressureByDensity": 0,
+                "pressureByTemperature": 4 * density * photons / (3 * temperature),
+            },
+            "ideal ions": {
+                "pressure": density * gas,
+                "specificEnergy": 1.5 * gas,
+                "heatCapacityV": 1.5 * gas / temperature,
+                "pressureByDensity": gas,
+                "pressureByTemperature": density * gas / temperature,
+            },
+        }
+        return {name: known.get(name, {}) for name in self.beside}
+
     def state(self, density, temperature):
-        """Quantities in cgs at a density and a temperature, of what is in the table."""
+        """The phase, and by name of each quantity its value in cgs, its unit, and a list of what it is without."""
         x = self.density.blocks_above(density)
         y = self.temperature.blocks_above(temperature)
         phase = self.phase(density, temperature)
@@ -161,16 +205,21 @@ class Table:
         f_uu = f0_uu - heat * (l[2, 0] + l[1, 0] ** 2)
         f_uv = -heat * (l[1, 1] + l[1, 0] * l[0, 1])
         f_vv = -heat * (l[0, 2] + l[0, 1] ** 2)
-        return {
-            "phase": phase,
-            "freeEnergy": (free, "erg/g"),
-            "pressure": (density * f_u, "dyn/cm^2"),
-            "specificEnergy": (free - f_v, "erg/g"),
-            "specificEntropy": (-f_v / temperature, "erg/(g K)"),
-            "heatCapacityV": ((f_v - f_vv) / temperature, "erg/(g K)"),
-            "pressureByDensity": (f_u + f_uu, "cm^2/s^2"),
-            "pressureByTemperature": (density * f_uv / temperature, "dyn/(cm^2 K)"),
+        own = {
+            "specificFreeEnergy": free,
+            "pressure": density * f_u,
+            "specificEnergy": free - f_v,
+            "specificEntropy": -f_v / temperature,
+            "heatCapacityV": (f_v - f_vv) / temperature,
+            "pressureByDensity": f_u + f_uu,
+            "pressureByTemperature": density * f_uv / temperature,
         }
+        added = self.added(density, temperature)
+        found = {"phase": phase}
+        for name, value in own.items():
+            whole = value + sum(part.get(name, 0) for part in added.values())
+            found[name] = (float(whole), UNITS[name], [other for other, part in added.items() if name not in part])
+        return found
 
 
 def main(arguments):
@@ -179,15 +228,26 @@ def main(arguments):
         sys.exit(__doc__)
     table = Table(arguments[0])
     if len(arguments) == 1:
-        for name, axis in (("density", table.density), ("temperature", table.temperature)):
-            print(f"{name}: {axis.lowest} to {axis.highest}")
+        print(f"density: {table.density}")
+        print(f"temperature: {table.temperature}")
         print(f"composition: {table.composition}")
         print(f"sheets: {', '.join(table.sheets)}")
         print(f"beside the table: {', '.join(table.beside) or 'nothing'}")
         return
-    for name, value in table.state(float(arguments[1]), float(arguments[2])).items():
-        print(f"{name}: {value}" if isinstance(value, str) else f"{name}: {float(value[0])!r} {value[1]}")
+    try:
+        density, temperature = map(float, arguments[1:])
+    except ValueError:
+        raise ValueError(f"density, temperature: given {' '.join(arguments[1:])}; allowed: two numbers") from None
+    for name, value in table.state(density, temperature).items():
+        if name == "phase":
+            print(f"phase: {value}")
+            continue
+        number, unit, without = value
+        print(f"{name}: {number!r} {unit}" + (f" (without {', '.join(without)})" if without else ""))
 
 
 if __name__ == "__main__":
-    main(sys.argv[1:])
+    try:
+        main(sys.argv[1:])
+    except (OSError, KeyError, ValueError) as error:
+        sys.exit(f"{sys.argv[1]}: {error}")

@@ -138,5 +138,9 @@ function printed(value: unknown): string {
     return `an array of length ${(value as ArrayLike<unknown>).length}`;
   if (typeof value === "object" && value !== null) return "an object";
   if (typeof value === "function") return "a function";
+  // Digits of the shortest form, but an exponent instead of rows of zeros.
+  if (typeof value === "number" && Math.abs(value) >= 1e7 && Number.isFinite(value)) {
+    return value.toExponential().replace("e+", "e");
+  }
   return String(value);
 }

@@ -7,7 +7,7 @@ import { checkTargets } from "../files/target.js";
 import { assembleFolders, buildInFolder, type FolderResult } from "../table-build/folder.js";
 import type { TableRequest } from "../table-build/request.js";
 import { tableCsvNames, tableToCsv } from "../table-files/csv.js";
-import { tableToHdf5 } from "../table-files/hdf5.js";
+import { hdf5Writer, tableToHdf5 } from "../table-files/hdf5.js";
 import type { FreeEnergyTable } from "../tables/table.js";
 import { type Command, type CommandIo, command } from "./command.js";
 import { interruptible } from "./interrupt.js";
@@ -105,6 +105,8 @@ export const tableCommand: Command = command({
       paths.map((one) => ({ path: resolve(io.cwd, one.path) })),
       files,
     );
+    // Before the work, not after it.
+    if (base !== undefined && options.format === "hdf5") await hdf5Writer();
     if (options.merge !== undefined) {
       if (base === undefined) throw missing("--out PATH");
       const folders = options.merge.map((folder) => resolve(io.cwd, folder));

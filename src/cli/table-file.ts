@@ -27,7 +27,8 @@ export async function readTable(file: string, option: string): Promise<FreeEnerg
     try {
       return new Uint8Array(await readFile(name));
     } catch (error) {
-      const given = `${name}: ${reasonOf(error)}`;
+      const missing = (error as { code?: unknown }).code === "ENOENT";
+      const given = `${name}: ${missing ? "there is no such file" : reasonOf(error)}`;
       throw new FermistateError("invalid-file", { argument: option, given, allowed: "a file that can be read" });
     }
   };

@@ -39,7 +39,10 @@ import { solverFor } from "./solver.js";
 export type SolveInput = GivenPair<Float64Array> & {
   /** One composition for all rows, or one per row. */
   readonly composition: Composition | readonly Composition[];
-  /** Columns of starts (density, temperature); without them each row starts from the answer of the one before. */
+  /**
+   * Columns of starts (density, temperature). A row whose start is no positive number has none, and starts as all do without these
+   * columns: from the answer of the row before.
+   */
   readonly guess?: { readonly density?: Float64Array; readonly temperature?: Float64Array };
 };
 
@@ -63,9 +66,8 @@ const searchColumns: readonly SearchColumn[] = [
 ];
 
 /**
- * After so many rows one starts afresh instead of from its neighbour: blocks of a batch can then be answered apart,
- * by several
- * threads, with the same bits.
+ * After so many rows one starts afresh instead of from its neighbour: blocks of a batch can then be answered apart, by
+ * several threads, with the same bits.
  */
 export const ROWS_IN_A_CHAIN = 1024;
 
@@ -74,9 +76,8 @@ export const ROWS_IN_A_CHAIN = 1024;
  *
  * Rows that are neighbours in a model are worth keeping in order: a row starts from the third-order expansion about the
  * one before, and where they differ by a per cent it takes two evaluations, often one. The columns of the output may be those
- * of the input. Values that no matter has (NaN, a negative density) are refused before the first row is written. Where a row has no answer the error
- * names it; rows before it are written, those after it not (unless the output has a column
- * `refused`).
+ * of the input. Without a column `refused` in the output, values that no matter has (NaN, a negative density) are refused
+ * before the first row is written, and where a row has no answer the error names it; rows before it are written, those after it not.
  *
  * @throws as {@link solve}, with the row; `length-mismatch`, `unavailable-quantity`
  */
@@ -106,19 +107,20 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
   /** Answers a row; the number of the reason where there is no answer and a column for it. */
   function answer(i: number): number {
     const matter = each === undefined ? (composition as Composition) : each[i]!;
-    const follows = isNear(neighbour, matter) && guessed === undefined && w[TEMPERATURE_NOW]! > 0;
+    const starts = guessed !== undefined && isStart(guessed.density, i) && isStart(guessed.temperature, i);
+    const follows = !starts && isNear(neighbour, matter) && w[TEMPERATURE_NOW]! > 0;
     if (follows) {
       at[0] = knowsDensity ? Math.log(first[i]! / w[DENSITY_NOW]!) : 0;
       at[1] = knowsTemperature ? Math.log(first[i]! / w[TEMPERATURE_NOW]!) : 0;
     }
     w[FIRST_TARGET] = question.type === BOTH ? first[i]! : second[i]!;
     w[SECOND_TARGET] = second[i]!;
-    w[GUESSED] = follows || guessed !== undefined ? 1 : 0;
+    w[GUESSED] = follows || starts ? 1 : 0;
     if (knowsDensity) w[DENSITY_NOW] = first[i]!;
-    else if (guessed?.density !== undefined) w[DENSITY_NOW] = guessed.density[i]!;
+    else if (starts && guessed?.density !== undefined) w[DENSITY_NOW] = guessed.density[i]!;
     else if (!follows) w[DENSITY_NOW] = 1;
     if (knowsTemperature) w[TEMPERATURE_NOW] = first[i]!;
-    else if (guessed?.temperature !== undefined) w[TEMPERATURE_NOW] = guessed.temperature[i]!;
+    else if (starts && guessed?.temperature !== undefined) w[TEMPERATURE_NOW] = guessed.temperature[i]!;
     else if (!follows) w[TEMPERATURE_NOW] = 1;
     w[FOLLOWS] = 0;
     if (follows) solver.follow(question);
@@ -268,6 +270,10 @@ function checkGiven(
   if (!holds(eos.domain, density, temperature)) refusePoint(eos.contributions, density, temperature, i);
 }
 
+/** Whether a column of starts, where there is one, has one for this row. */
+const isStart = (starts: Float64Array | undefined, i: number): boolean =>
+  starts === undefined || (starts[i]! > 0 && starts[i]! < Number.POSITIVE_INFINITY);
+
 function guesses(input: SolveInput, count: number): SolveInput["guess"] {
   const { guess } = input;
   if (guess === undefined) return undefined;
@@ -279,9 +285,7 @@ function guesses(input: SolveInput, count: number): SolveInput["guess"] {
   for (const name of ["density", "temperature"] as const) {
     const starts = guess[name];
     if (starts === undefined) continue;
-    const argument = `guess.${name}`;
-    column(argument, starts, count);
-    for (let i = 0; i < count; i++) requireGiven(name, starts[i], i, argument);
+    column(`guess.${name}`, starts, count);
   }
   return guess.density === undefined && guess.temperature === undefined ? undefined : guess;
 }

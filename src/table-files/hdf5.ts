@@ -36,11 +36,16 @@ export async function tableToHdf5(table: FreeEnergyTable): Promise<Uint8Array> {
   return hdf5OfTable(freeEnergyForm, table);
 }
 
+/** The writer of HDF5; `invalid-option` where the package is missing. */
+export async function hdf5Writer(): Promise<typeof import("h5wasm")> {
+  return optionalPackage("h5wasm", "HDF5", () => import("h5wasm"));
+}
+
 /** The same of any kind of table. */
 export async function hdf5OfTable<T>(form: TableForm<T>, table: T): Promise<Uint8Array> {
   const items = form.itemsOf(form.check(table, "invalid-option"));
   const checksum = await checksumOf(items);
-  const hdf5 = await optionalPackage("h5wasm", "HDF5", () => import("h5wasm"));
+  const hdf5 = await hdf5Writer();
   await hdf5.ready;
   const attributes = {
     title: form.titleOf(table),

@@ -4,6 +4,7 @@
  */
 import { FermistateError } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
+import { requireSame } from "../matter/composition-difference.js";
 import { CRYSTAL_FRACTION, DENSITY, TEMPERATURE } from "../matter/point.js";
 import type { Order } from "../thermodynamics/free-energy.js";
 import { type ColdLookUp, coldLookUp, fillCold } from "./cold.js";
@@ -111,30 +112,16 @@ function lookBeyond(look: TableLookUp, surface: Surface, point: Float64Array, or
   });
 }
 
-/** Refuses a composition that the table does not hold for; one equal to its own but made anew passes. */
+/** Refuses a composition that the table does not hold for; one equal to its own to ten digits passes. */
 function accept(look: TableLookUp, composition: Composition): void {
   const own = look.table.composition;
   requireComposition(composition);
   if (look.table.holdsFor === "electron density") {
     look.share[0] = composition.electronsPerNucleon / own.electronsPerNucleon;
-  } else if (!isSame(composition, own)) {
-    const allowed = `${own.name}: this table holds one composition`;
-    throw new FermistateError("invalid-composition", { argument: "composition", given: composition.name, allowed });
+  } else {
+    requireSame(composition, own, "this table");
   }
   look.last = composition;
-}
-
-/** True where two compositions are made of the same species in the same amounts. */
-export function isSame(a: Composition, b: Composition): boolean {
-  return (
-    a.species.length === b.species.length &&
-    a.species.every((one, i) => {
-      const other = b.species[i]!;
-      return (
-        one.label === other.label && one.nucleonFraction === other.nucleonFraction && one.ionMass === other.ionMass
-      );
-    })
-  );
 }
 
 function refuseDensity({ table, share }: TableLookUp, point: Float64Array): never {

@@ -23,6 +23,7 @@ import type { FreeEnergyTable, SheetPhase } from "./table.js";
  * P/(n_e kT) where pairs outnumber the net electrons.
  */
 export function tabulated(table: FreeEnergyTable): Contribution {
+  requireTable(table);
   const { freezing } = table;
   const [only] = table.sheets;
   if (freezing === undefined) return contributionOf(table, only!.phase);
@@ -41,6 +42,14 @@ export function tabulated(table: FreeEnergyTable): Contribution {
   return Object.freeze({ ...contributionOf(table, "equilibrium"), phases });
 }
 
+/** Throws `invalid-option` unless `table` is one: what a file holds is checked by fermistate/table-files. */
+function requireTable(table: unknown): void {
+  if (typeof table === "object" && table !== null && "layout" in table && table.layout === 1 && "sheets" in table)
+    return;
+  const allowed = "a table from buildTable, tableFromHdf5 or tableFromCsv";
+  throw new FermistateError("invalid-option", { argument: "table", given: table, allowed });
+}
+
 /** What stands beside a table, by the name that its source tells. */
 const companions: Readonly<Record<string, () => Contribution>> = { radiation, "ideal ions": idealIons };
 
@@ -51,6 +60,7 @@ const companions: Readonly<Record<string, () => Contribution>> = { radiation, "i
  * @throws `invalid-option` where the table asks for a contribution that is neither given nor known
  */
 export function tableEquationOfState(table: FreeEnergyTable, ...beside: readonly Contribution[]): EquationOfState {
+  requireTable(table);
   const known = table.source.beside.map((name): Contribution => {
     const given = beside.find((one) => one.name === name) ?? companions[name]?.();
     if (given !== undefined) return given;

@@ -133,6 +133,23 @@ test("each row may have its composition, columns may be overwritten, guesses may
   for (const one of found) expect(one / 2e7).toBeCloseTo(1, 9);
 });
 
+test("rows of a column of guesses without a number have none: the answer is that without guesses", () => {
+  const density = new Float64Array(7).fill(1e5);
+  const temperature = Float64Array.of(1e7, 2e7, 3e7, 4e7, 5e7, 6e7, 7e7);
+  const specificEnergy = new Float64Array(7);
+  matter.evaluate({ density, temperature, composition: carbonOxygen }, { specificEnergy });
+  const input = { composition: carbonOxygen, density, specificEnergy };
+  const found = new Float64Array(7);
+  const guess = { temperature: Float64Array.of(Number.NaN, 2e7, -1, Number.POSITIVE_INFINITY, 0, 6e7, Number.NaN) };
+  solveColumns(matter, { ...input, guess }, { temperature: found });
+  for (const [i, one] of found.entries()) expect(Math.abs(one / temperature[i]! - 1)).toBeLessThan(1e-13);
+  const none = { temperature: new Float64Array(7).fill(Number.NaN) };
+  const [without, empty] = [new Float64Array(7), new Float64Array(7)];
+  solveColumns(matter, input, { temperature: without });
+  solveColumns(matter, { ...input, guess: none }, { temperature: empty });
+  expect(empty).toEqual(without);
+});
+
 test("density and temperature given: an ordinary batch", () => {
   const density = Float64Array.of(1e6);
   const temperature = Float64Array.of(1e7);

@@ -5,11 +5,16 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import * as h5wasm from "h5wasm";
 import { afterAll, describe, expect, test } from "vitest";
+import { electronPositronGas } from "../../src/fermi-gas/electron-positron-gas.js";
+import { idealIons } from "../../src/ions/ideal-ions.js";
 import { composition } from "../../src/matter/composition.js";
+import { radiation } from "../../src/radiation.js";
 import { tableChecksum, tableFromCsv, tableFromHdf5, tableToCsv, tableToHdf5 } from "../../src/table-files/index.js";
 import { lookup3 } from "../../src/table-files/lookup3.js";
 import { optionalPackage } from "../../src/table-files/optional.js";
 import { buildTable, tableEquationOfState } from "../../src/tables/index.js";
+import { combine } from "../../src/thermodynamics/combine.js";
+import { type QuantityName, quantities } from "../../src/thermodynamics/quantities.js";
 import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
 import { inventedTable } from "./table.js";
 
@@ -131,28 +136,62 @@ describe("other programs", () => {
       execFileSync(python ?? "python3", ["docs/read_table.py", path, ...given], { encoding: "utf8" });
     expect(run()).toContain("composition: C12 0.3, O16 0.7\nsheets: liquid, crystal\nbeside the table: radiation\n");
 
-    const eos = tableEquationOfState({ ...table, source: { ...table.source, beside: [] } });
-    const names = ["pressure", "specificEnergy", "specificEntropy", "heatCapacityV"] as const;
+    const eos = tableEquationOfState(table); // with radiation
     for (const [density, temperature, phase] of [
       [3.3e6, 6.6e7, "liquid"],
       [1e4, 1e6, "crystal"],
+      [1e4, 1e8, "liquid"], // radiation is 1e-3 of the pressure
       [1.7e7, 1.1e7, "crystal"],
       [9e7, 2e6, "liquid"],
       [1e8, 1e8, "liquid"],
     ] as const) {
       const printed = run(String(density), String(temperature));
       expect(printed).toContain(`phase: ${phase}\n`);
+      expect(printed).not.toContain("without");
       const state = eos.state(density, temperature, table.composition);
-      for (const name of names) {
-        const value = Number(new RegExp(`^${name}: (\\S+)`, "m").exec(printed)![1]);
+      const read = [...printed.matchAll(/^(\w+): (\S+) (.+)$/gm)];
+      expect(read).toHaveLength(7);
+      for (const [, name, value, unit] of read) {
+        expect(unit).toBe(quantities[name as QuantityName].unit);
         // Measured: 2e-15 of the larger terms; the rest is rounding of exp and of the monomials in the script.
-        expect(Math.abs(value / state[name] - 1), `${name} at ${density}, ${temperature}`).toBeLessThan(2e-14);
+        const error = Math.abs(Number(value) / state[name as QuantityName]! - 1);
+        expect(error, `${name} at ${density}, ${temperature}`).toBeLessThan(2e-14);
       }
     }
     const damaged = await tableToHdf5(table);
     damaged[damaged.length - 100]! ^= 1;
     writeFileSync(path, damaged);
-    expect(spawnSync(python ?? "python3", ["docs/read_table.py", path]).status).not.toBe(0);
+    expect(spawnSync(python ?? "python3", ["docs/read_table.py", path])).toMatchObject({ status: 1 });
+  });
+
+  test.skipIf(noPython)("docs/read_table.py adds what stands beside a table, and says what it cannot add", async () => {
+    const matter = composition({ He4: 0.3, C12: 0.7 });
+    const physics = combine(electronPositronGas(), idealIons(), radiation());
+    const table = buildTable(physics, matter, { density: [1e4, 1e6], temperature: [1e8, 1e9], accuracy: 1e-4 });
+    const strange = { ...table, source: { ...table.source, beside: [...table.source.beside, "axions"] } };
+    const run = (...given: string[]) =>
+      spawnSync(python ?? "python3", ["docs/read_table.py", path, ...given], { encoding: "utf8" });
+    writeFileSync(path, await tableToHdf5(table));
+    const exact = tableEquationOfState(table).state(1.1e5, 9e8, matter);
+    const { stdout } = run("1.1e5", "9e8");
+    for (const name of ["pressure", "specificEnergy", "heatCapacityV", "pressureByDensity", "pressureByTemperature"]) {
+      const value = Number(new RegExp(`^${name}: (\\S+) [^\\n(]*(\\(g K\\)|\\(cm\\^2 K\\)|)$`, "m").exec(stdout)?.[1]);
+      expect(Math.abs(value / exact[name as "pressure"] - 1), name).toBeLessThan(2e-14);
+    }
+    for (const name of ["specificEntropy", "specificFreeEnergy"]) {
+      expect(stdout).toMatch(new RegExp(`^${name}: .* \\(without ideal ions\\)$`, "m"));
+    }
+    writeFileSync(path, await tableToHdf5(strange));
+    const other = run("1.1e5", "9e8").stdout;
+    expect(other).toMatch(/^pressure: \S+ dyn\/cm\^2 \(without axions\)$/m);
+    expect(other).toMatch(/^specificEntropy: .* \(without ideal ions, axions\)$/m);
+    for (const [given, message] of [
+      [["1", "9e8"], "density: given 1.0; allowed: 10000.0 to 1000000.0 g/cm^3"],
+      [["1e5", "nan"], "temperature: given nan; allowed: 100000000.0 to 1000000000.0 K"],
+      [["abc", "9e8"], "density, temperature: given abc 9e8; allowed: two numbers"],
+    ] as const) {
+      expect(run(...given)).toMatchObject({ status: 1, stdout: "", stderr: `${path}: ${message}\n` });
+    }
   });
 });
 

@@ -79,8 +79,30 @@ describe("refusals", () => {
   });
 
   test("another composition; an equal one made anew passes", () => {
-    expect(() => eos.state(1e6, 1e7, composition({ C12: 0.4, O16: 0.6 }))).toThrow(/holds one composition/);
-    expect(eos.state(1e6, 1e7, composition({ O16: 0.5, C12: 0.5 })).pressure).toBe(eos.state(1e6, 1e7, core).pressure);
+    expect(() => eos.state(1e6, 1e7, composition({ C12: 0.4, O16: 0.6 }))).toThrow(
+      /C12 0.4 instead of 0.5.*the one composition of this table/,
+    );
+    const { pressure } = eos.state(1e6, 1e7, core);
+    expect(eos.state(1e6, 1e7, composition({ O16: 0.5, C12: 0.5 })).pressure).toBe(pressure);
+    // Ten digits are the table's own, traces below them too.
+    const rounded = composition({ C12: 0.5 - 5e-11, O16: 0.5, He4: 5e-11 });
+    expect(eos.state(1e6, 1e7, rounded).pressure).toBe(pressure);
+    expect(() => eos.state(1e6, 1e7, composition({ C12: 0.5, O16: 0.4999, He4: 0.0001 }))).toThrow(
+      /0.4999 instead of 0.5/,
+    );
+    expect(() => eos.state(1e6, 1e7, composition({ meanMassNumber: 14, meanCharge: 7 }))).toThrow(
+      /C12 0 instead of 0.5/,
+    );
+  });
+
+  test.each([{}, null, [], { layout: 2 }, "core.h5"])("what is no table: %j", (given) => {
+    let error: unknown;
+    try {
+      tableEquationOfState(given as never);
+    } catch (one) {
+      error = one;
+    }
+    expect(error).toMatchObject({ code: "invalid-option", argument: "table" });
   });
 
   test("outside the region", () => {

@@ -1,10 +1,9 @@
 /** The fit as a contribution: one composition, the domain of its mesh. */
-import { FermistateError } from "../../errors.js";
 import { type Composition, requireComposition } from "../../matter/composition.js";
+import { requireSame } from "../../matter/composition-difference.js";
 import { DENSITY, TEMPERATURE } from "../../matter/point.js";
 import type { Contribution, Domain } from "../../thermodynamics/contribution.js";
 import { ENTROPY, type Order } from "../../thermodynamics/free-energy.js";
-import { isSame } from "../look-up.js";
 import { addTableMembers } from "../members.js";
 import type { ColumnFit } from "./fit.js";
 import type { StateMesh } from "./mesh.js";
@@ -30,10 +29,7 @@ export function columnsContribution(
 
   function accept(composition: Composition): void {
     requireComposition(composition);
-    if (!isSame(composition, own)) {
-      const allowed = `${own.name}: these columns hold one composition`;
-      throw new FermistateError("invalid-composition", { argument: "composition", given: composition.name, allowed });
-    }
+    requireSame(composition, own, "these columns");
     last = composition;
   }
 
