@@ -22,8 +22,10 @@ export function columnsReportText(report: ColumnsReport): string {
   ];
   if (report.duplicates > 0) lines.push(`${report.duplicates} rows said what another row says and were dropped.`);
   if (report.arrangement !== "rectangular") {
+    const isScattered = report.arrangement === "scattered in temperature";
+    const why = isScattered ? "Each density has temperatures of its own" : gaps(report);
     lines.push(
-      `${report.arrangement === "scattered in temperature" ? "Each density has temperatures of its own" : gaps(report)}: they were resampled along ln T to ` +
+      `${why}: they were resampled along ln T to ` +
         "common ones, between the highest of the lowest and the lowest of the highest; " +
         `${report.rowsOutside} rows lie outside. Entries that stand out were not looked for.`,
     );
@@ -127,7 +129,8 @@ function gaps({ missing, strayRows }: ColumnsReport): string {
 function outlierLine({ row, density, temperature, column, deviation, factor }: ColumnsOutlier): string {
   const name = { pressure: "pressure", specificEnergy: "specific energy", specificEntropy: "specific entropy" }[column];
   const percent = `${Number((100 * Math.abs(deviation)).toPrecision(2))} % too ${deviation > 0 ? "high" : "low"}`;
-  return `  row ${row}, ${at([density, temperature])}: ${name} ${percent}, ${Number(factor.toPrecision(2))} times what is usual there.`;
+  const times = Number(factor.toPrecision(2));
+  return `  row ${row}, ${at([density, temperature])}: ${name} ${percent}, ${times} times what is usual there.`;
 }
 
 function residualLine(map: ResidualMap, outliers: number): string {
