@@ -12,6 +12,7 @@ export type { StateColumns } from "./foreign/columns.js";
 export { type ColumnsOptions, type ColumnsResult, equationOfStateFromColumns } from "./foreign/from-columns.js";
 export type {
   ColumnsDeviations,
+  ColumnsOutlier,
   ColumnsReport,
   ColumnsResiduals,
   ColumnsStability,

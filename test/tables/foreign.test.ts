@@ -221,7 +221,7 @@ describe("columns that disagree", () => {
     expect(heat!.median).toBeLessThan(1e-5);
     expect(report.deviations.pressure.max).toBeLessThan(1.1e-3);
     expect(report.deviations.specificEntropy!.max).toBeLessThan(1.5e-3);
-    expect(columnsReportText(report)).toMatch(/Maxwell|columns, or their digits, disagree/);
+    expect(columnsReportText(report)).toMatch(/the columns disagree/);
     // No waves from cell to cell: derivatives deviate as little.
     errors(equationOfState, (rho, t) => idealGas(rho, t, 0), [1e-5, 1e1, 2e4, 5e6]).expectBelow(
       "pressureByDensity",

@@ -26,6 +26,8 @@ export interface SortedRows {
   readonly starts: readonly number[];
   /** Rows that said the same as another one. */
   readonly duplicates: number;
+  /** Row of the input, by row. */
+  readonly index: Uint32Array;
 }
 
 /** Rows taken at most: fitting so many takes a minute. */
@@ -89,6 +91,7 @@ export function sortedRows(columns: StateColumns): SortedRows {
     entropy: s === undefined ? undefined : pick(s),
     starts: [...starts, keep.length],
     duplicates,
+    index: Uint32Array.from(keep),
   };
 }
 

@@ -71,6 +71,8 @@ function refuseEnergy({ density, temperature }: StateMesh, i: number, j: number,
   throw new FermistateError("unstable", {
     argument: "specificEnergy",
     given: `a change of ${rise} erg/g from ${temperature[0]} to ${temperature[j]} K at ${density[i]} g/cm^3`,
-    allowed: "energies that rise with temperature and have the digits for it; give specificEntropy otherwise",
+    allowed:
+      "energies that rise with temperature and have the digits for it; a wrong entry in one of these two rows, or too few digits: " +
+      "mend it, or give specificEntropy",
   });
 }

@@ -10,11 +10,15 @@ import { ENERGY, ENTROPY, PRESSURE } from "../../thermodynamics/free-energy.js";
 import { type SortedRows, type StateColumns, sortedRows } from "./columns.js";
 import { deviationsOf, unstablePlaces } from "./compare.js";
 import { columnsContribution } from "./contribution.js";
+import { lastDigit } from "./digits.js";
 import { entropyFromEnergy } from "./entropy.js";
 import { addedEntropy, fitColumns } from "./fit.js";
+import { gapsOf } from "./gaps.js";
 import { meshOf } from "./mesh.js";
+import { outliersOf } from "./outliers.js";
+import { refuseContradictory, refuseUnstable } from "./refusals.js";
 import type { ColumnsReport } from "./report.js";
-import { residualsOf, stabilityOf } from "./residuals.js";
+import { contradictionsOf, residualsOf, stabilityOf } from "./residuals.js";
 
 /** How columns are taken. */
 export interface ColumnsOptions {
@@ -37,6 +41,11 @@ export interface ColumnsOptions {
    * refused one by one.
    */
   readonly unstable?: "refuse" | "report" | undefined;
+  /**
+   * "refuse" (default): throw where the columns contradict each other by order one over most of the mesh, as those in other units,
+   * logarithms or in another order do. "report": name the relations in the report; what is made of such columns is no physics.
+   */
+  readonly contradictory?: "refuse" | "report" | undefined;
 }
 
 /** What columns become. */
@@ -47,7 +56,14 @@ export interface ColumnsResult {
   readonly report: ColumnsReport;
 }
 
-const known: readonly (keyof ColumnsOptions)[] = ["composition", "name", "beside", "entropyAtLowestNode", "unstable"];
+const known: readonly (keyof ColumnsOptions)[] = [
+  "composition",
+  "name",
+  "beside",
+  "entropyAtLowestNode",
+  "unstable",
+  "contradictory",
+];
 
 /**
  * An equation of state from columns of density, temperature, pressure, energy and, if there is one, entropy; and a report that says
@@ -65,7 +81,8 @@ const known: readonly (keyof ColumnsOptions)[] = ["composition", "name", "beside
  *
  * @param columns - one row a state, in any order; at least 5 densities of 5 temperatures, at most 1 million rows
  * @throws `not-a-number`, `out-of-range` (with the row), `length-mismatch`, `too-large`, `invalid-composition`; `invalid-option` for too
- * few nodes, rows that form no mesh, two rows of one state with different values; `unstable` where the fit is not that of stable
+ * few nodes, rows that form no mesh, two rows of one state with different values, columns that contradict each other by order one over
+ * most of the mesh; `unstable` where the fit is not that of stable
  * matter, or energies have too few digits to hold the heat
  * @example
  * ```ts
@@ -90,9 +107,14 @@ const known: readonly (keyof ColumnsOptions)[] = ["composition", "name", "beside
  * ```
  */
 export function equationOfStateFromColumns(columns: StateColumns, options: ColumnsOptions): ColumnsResult {
-  const { composition, name, beside, corner, unstable } = checkedOptions(options);
+  const { composition, name, beside, corner, unstable, contradictory } = checkedOptions(options);
   const rows = sortedRows(columns);
   const given = meshOf(rows);
+  const half = (column: Float64Array | undefined): number => lastDigit(column ?? new Float64Array(1)) / 2;
+  const digits = { pressure: half(rows.pressure), energy: half(rows.energy), entropy: half(rows.entropy) };
+  const residuals = residualsOf(given, digits);
+  const contradictions = contradictionsOf(residuals);
+  if (contradictory === "refuse") refuseContradictory(contradictions, residuals);
   const mesh = beside.length === 0 ? given : meshOf(without(rows, beside, composition));
   if (mesh.entropy !== undefined && corner !== undefined) {
     const allowed = "nothing where specificEntropy is given";
@@ -105,15 +127,25 @@ export function equationOfStateFromColumns(columns: StateColumns, options: Colum
     combine(columnsContribution(mesh, fit, composition, name, validity), ...beside);
   const bare = make("");
   const { deviations, rowsOutside } = deviationsOf(bare, composition, rows, addedEntropy(rows.entropy ?? entropy));
+  const gaps = given.resampled ? gapsOf(rows) : undefined;
   const report: ColumnsReport = Object.freeze({
-    arrangement: mesh.resampled ? "scattered in temperature" : "rectangular",
+    arrangement:
+      gaps !== undefined
+        ? "rectangular but for some rows"
+        : given.resampled
+          ? "scattered in temperature"
+          : "rectangular",
+    missing: gaps?.missing ?? { density: new Float64Array(), temperature: new Float64Array() },
+    strayRows: gaps?.strayRows ?? [],
     rows: columns.density.length,
     duplicates: rows.duplicates,
     rowsOutside,
     densities: given.density,
     temperatures: given.temperature,
     entropy: given.entropy === undefined ? "from pressure and energy" : "given",
-    residuals: residualsOf(given),
+    residuals,
+    contradictions,
+    outliers: given.resampled ? undefined : outliersOf(given, rows),
     stability: stabilityOf(given),
     deviations,
     unstable: unstablePlaces(bare, composition, given),
@@ -133,6 +165,7 @@ interface CheckedOptions {
   readonly beside: readonly Contribution[];
   readonly corner: number | undefined;
   readonly unstable: "refuse" | "report";
+  readonly contradictory: "refuse" | "report";
 }
 
 function checkedOptions(options: ColumnsOptions): CheckedOptions {
@@ -150,14 +183,17 @@ function checkedOptions(options: ColumnsOptions): CheckedOptions {
     beside = [],
     entropyAtLowestNode: corner,
     unstable = "refuse",
+    contradictory = "refuse",
   } = options;
   requireComposition(composition);
   if (typeof name !== "string" || name === "") refuse("name", name, "a text");
   if (!Array.isArray(beside)) refuse("beside", beside, "a list of contributions, such as [radiation()]");
   if (beside.length > 0) combine(...beside);
   if (corner !== undefined) requireFinite("entropyAtLowestNode", corner, "a finite number, erg/(g K)");
-  if (unstable !== "refuse" && unstable !== "report") refuse("unstable", unstable, '"refuse" or "report"');
-  return { composition, name, beside, corner, unstable };
+  for (const [option, value] of Object.entries({ unstable, contradictory })) {
+    if (value !== "refuse" && value !== "report") refuse(option, value, '"refuse" or "report"');
+  }
+  return { composition, name, beside, corner, unstable, contradictory };
 }
 
 /** Rows less what is known exactly. */
@@ -185,18 +221,4 @@ function without(rows: SortedRows, beside: readonly Contribution[], composition:
     }
   }
   return { ...rows, pressure, energy, entropy };
-}
-
-function refuseUnstable({ unstable, stability }: ColumnsReport): void {
-  const count = unstable.density.length;
-  if (count === 0) return;
-  const falls = stability.pressureAlongDensity.density.length + stability.energyAlongTemperature.density.length;
-  throw new FermistateError("unstable", {
-    argument: "columns",
-    given: `${count} places where their fit is unstable, first ${unstable.density[0]} g/cm^3, ${unstable.temperature[0]} K`,
-    allowed:
-      "pressure that rises with density and energy that rises with temperature" +
-      (falls > 0 ? ` (they do not at ${falls} nodes)` : " (they do at the nodes: the mesh is too coarse)") +
-      '; photons in the columns are better taken out with beside: [radiation()]; unstable: "report" lists the places',
-  });
 }

@@ -31,6 +31,10 @@ export interface ResidualMap extends ErrorSpread, Places {
    * residuals below it say nothing about the columns.
    */
   readonly resolution: Pick<ErrorSpread, "max" | "percentile99" | "median">;
+  /** What the digits that the columns were printed with may have caused at most, likewise. */
+  readonly digits: Pick<ErrorSpread, "max" | "percentile99" | "median">;
+  /** Half of the residuals exceed what resolution and digits explain at their node by this or more; 0 where those explain them. */
+  readonly unexplained: number;
 }
 
 /** Where the columns are not those of stable matter. */
@@ -69,10 +73,33 @@ export interface ColumnsDeviations {
   readonly specificEntropy: ErrorSpread | undefined;
 }
 
+/** An entry far from what its neighbours say along density and along temperature. */
+export interface ColumnsOutlier {
+  /** Row of the input, from 0. */
+  readonly row: number;
+  /** Density, g/cm^3. */
+  readonly density: number;
+  /** Temperature, K. */
+  readonly temperature: number;
+  /** Its column. */
+  readonly column: "pressure" | "specificEnergy" | "specificEntropy";
+  /** How far it is from them: given over expected value, less 1. */
+  readonly deviation: number;
+  /** Times what the lines beside it and the digits of the column explain. */
+  readonly factor: number;
+}
+
 /** The report on columns and on the free energy made of them. */
 export interface ColumnsReport {
-  /** How the rows lay: on a mesh, or every density with temperatures of its own, resampled along ln T to common ones. */
-  readonly arrangement: "rectangular" | "scattered in temperature";
+  /**
+   * How the rows lay: on a mesh, or every density with temperatures of its own, or on a mesh with a few gaps; all but the first are
+   * resampled along ln T to common temperatures.
+   */
+  readonly arrangement: "rectangular" | "rectangular but for some rows" | "scattered in temperature";
+  /** Nodes of the mesh without a row, where it is "rectangular but for some rows"; none otherwise. */
+  readonly missing: Places;
+  /** Rows of the input, from 0, at temperatures that most densities do not have, in that case. */
+  readonly strayRows: readonly number[];
   /** Rows given. */
   readonly rows: number;
   /** Rows dropped because another one said the same. */
@@ -87,6 +114,10 @@ export interface ColumnsReport {
   readonly entropy: "given" | "from pressure and energy";
   /** How far the columns agree with each other. */
   readonly residuals: ColumnsResiduals;
+  /** Relations that fail by half of their largest term or more over half of the mesh, where neither mesh nor digits explain it. */
+  readonly contradictions: readonly string[];
+  /** Entries that stand out, the worst first; undefined where the rows were resampled: they are not looked for then. */
+  readonly outliers: readonly ColumnsOutlier[] | undefined;
   /** Where they are not those of stable matter. */
   readonly stability: ColumnsStability;
   /** How far the fit is from them. */
