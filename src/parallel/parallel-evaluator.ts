@@ -196,14 +196,15 @@ export async function parallelEvaluator(
       return;
     }
     const columns = Object.entries(output);
-    // With the values they have: a refused row keeps them.
-    const shared = columns.map(([name, column]) => [name, toShared(column)] as const);
-    const inputs = Object.fromEntries(Object.entries(input).map(([name, column]) => [name, toShared(column)]));
+    // Where rows may be refused, with the values they have: such a row keeps them.
+    const keeps = output["refused"] !== undefined;
+    const shared = columns.map(([name, column]) => [name, toShared(column, keeps)] as const);
+    const inputs = Object.fromEntries(Object.entries(input).map(([name, column]) => [name, toShared(column, true)]));
     const compositions = Array.isArray(composition) ? [...composition] : composition;
     await spread(task, rows, inputs, compositions, Object.fromEntries(shared));
     for (const [i, [, column]] of columns.entries()) {
       const [, done] = shared[i]!;
-      if (done !== column) column.set(done);
+      if (done !== column) column.set(done.subarray(0, rows)); // a longer column keeps the rest
     }
   }
 
@@ -250,11 +251,12 @@ function asColumns(output: BatchOutput | SolveOutput): Columns {
   return Object.fromEntries(Object.entries(output).filter((entry) => entry[1] !== undefined));
 }
 
-function toShared<Column extends Float64Array | Uint8Array>(column: Column): Column {
+/** A column that threads share, with its values where they matter; the column itself where it is one. */
+function toShared<Column extends Float64Array | Uint8Array>(column: Column, filled: boolean): Column {
   if (column.buffer instanceof SharedArrayBuffer) return column;
   const buffer = new SharedArrayBuffer(column.byteLength);
   const copy = column instanceof Uint8Array ? new Uint8Array(buffer) : new Float64Array(buffer);
-  copy.set(column);
+  if (filled) copy.set(column);
   return copy as Column;
 }
 
