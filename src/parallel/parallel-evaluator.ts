@@ -15,6 +15,7 @@ import {
   unpackError,
 } from "./block.js";
 import { asFailure, loadMatter, type MatterSource, plainSource, refuseNesting } from "./matter-source.js";
+import { sharedMemory } from "./shared-columns.js";
 import { isThread } from "./thread-mark.js";
 import { startThreads, type Threads } from "./threads.js";
 
@@ -50,7 +51,8 @@ export interface BatchThreads {
    * The batch of `EquationOfState.evaluate`, with the same numbers to the bit and the same errors.
    *
    * Plain columns are copied to the threads and back: what the caller does to the input while the batch runs has no effect,
-   * and a refused batch leaves the output as it was. Columns over a `SharedArrayBuffer` are used in place: leave them alone
+   * and a refused batch leaves the output as it was. The memory of the copies is kept for the next batch, until
+   * {@link BatchThreads.close}. Columns over a `SharedArrayBuffer` are used in place: leave them alone
    * until the promise is settled; a refused batch leaves some rows written. Fewer than 4096 rows, or rows that
    * bring a new composition more often than every second, are done in the calling thread, which is faster there.
    *
@@ -67,7 +69,7 @@ export interface BatchThreads {
    * `worker-failed`
    */
   solve(input: SolveInput, output: SolveOutput): Promise<void>;
-  /** Ends the threads; a batch under way is refused. A program may also end without it. */
+  /** Ends the threads and gives their memory back; a batch under way is refused. A program may also end without it. */
   close(): Promise<void>;
 }
 
@@ -118,6 +120,7 @@ export async function parallelEvaluator(
   if (isThread()) refuseNesting();
   const source = plainSource(matter);
   const count = readThreads(options);
+  const memory = sharedMemory();
   let closed = false;
 
   /** Threads that have all loaded. */
@@ -195,16 +198,19 @@ export async function parallelEvaluator(
       }
       return;
     }
-    const columns = Object.entries(output);
     // Where rows may be refused, with the values they have: such a row keeps them.
     const keeps = output["refused"] !== undefined;
-    const shared = columns.map(([name, column]) => [name, toShared(column, keeps)] as const);
-    const inputs = Object.fromEntries(Object.entries(input).map(([name, column]) => [name, toShared(column, true)]));
-    const compositions = Array.isArray(composition) ? [...composition] : composition;
-    await spread(task, rows, inputs, compositions, Object.fromEntries(shared));
-    for (const [i, [, column]] of columns.entries()) {
-      const [, done] = shared[i]!;
-      if (done !== column) column.set(done.subarray(0, rows)); // a longer column keeps the rest
+    const shared = memory.open();
+    try {
+      const answers = mapped(output, (column) => shared.share(column, rows, keeps));
+      const inputs = mapped(input, (column) => shared.share(column, rows, true));
+      await spread(task, rows, inputs, Array.isArray(composition) ? [...composition] : composition, answers);
+      for (const [name, column] of Object.entries(output)) {
+        const answer = answers[name]!;
+        if (answer !== column) column.set(answer); // a longer column keeps the rest
+      }
+    } finally {
+      shared.release();
     }
   }
 
@@ -229,6 +235,7 @@ export async function parallelEvaluator(
   async function close(): Promise<void> {
     closed = true;
     const current = await threads.catch(() => undefined);
+    memory.close();
     await current?.end("the evaluator was closed");
   }
 
@@ -251,13 +258,8 @@ function asColumns(output: BatchOutput | SolveOutput): Columns {
   return Object.fromEntries(Object.entries(output).filter((entry) => entry[1] !== undefined));
 }
 
-/** A column that threads share, with its values where they matter; the column itself where it is one. */
-function toShared<Column extends Float64Array | Uint8Array>(column: Column, filled: boolean): Column {
-  if (column.buffer instanceof SharedArrayBuffer) return column;
-  const buffer = new SharedArrayBuffer(column.byteLength);
-  const copy = column instanceof Uint8Array ? new Uint8Array(buffer) : new Float64Array(buffer);
-  if (filled) copy.set(column);
-  return copy as Column;
+function mapped(columns: Columns, change: (column: Float64Array | Uint8Array) => Float64Array | Uint8Array): Columns {
+  return Object.fromEntries(Object.entries(columns).map(([name, column]) => [name, change(column)]));
 }
 
 function readThreads(options: ParallelOptions): number {

@@ -208,6 +208,23 @@ describe("the numbers are those of one thread, to the bit", () => {
     expect(sameBits(second.density, serial[1])).toBe(true);
   });
 
+  test("batches of other lengths and columns, one after the other: nothing of one shows in the next", async () => {
+    const eos = whiteDwarfMatter();
+    const evaluator = await evaluatorOf({ whiteDwarfMatter: {} });
+    for (const [rows, names] of [
+      [9000, ["pressure", "gamma1"]],
+      [5000, ["specificEntropy", "pressure", "soundSpeed"]],
+      [9000, ["gamma1"]],
+    ] as const) {
+      const input = { ...pointsOf(rows, rows), composition: core };
+      const [one, several] = [columnsOf(names, rows + 3), columnsOf(names, rows + 3)];
+      for (const column of [...Object.values(one), ...Object.values(several)]) column.fill(7);
+      eos.evaluate(input, one);
+      await evaluator.evaluate(input, several);
+      for (const name of names) expect(sameBits(several[name], one[name]), name).toBe(true);
+    }
+  });
+
   test("a module's equation of state: default or named, a value, a function, a promise, in CommonJS", async () => {
     const make = 'import { whiteDwarfMatter } from "./core.js";';
     const modules: MatterSource[] = [
