@@ -5,7 +5,8 @@
  * Averages <.> run over charged nuclei; free neutrons share in the number of nuclei, not in the plasma. Both results are
  * per nucleus of every kind, so they carry the number share of charged nuclei.
  */
-import type { Species } from "../matter/composition.js";
+import type { Composition, Species } from "../matter/composition.js";
+import { notesOf, numberFractionsOf } from "../matter/species-list.js";
 import { POINT_GAMMA_E, POINT_LOG_GAMMA_E, POINT_ROOT_GAMMA_E } from "./slots.js";
 
 /** Parameters of f = amplitude Gamma_e^(3/2)/[(1 + a G^alpha) (1 + b G^alpha)^beta], G = Gamma_e <Z^(5/3)>. */
@@ -35,51 +36,42 @@ interface ChargeShare {
  * construction; own hypernetted-chain calculations agree to 3 % up to Gamma = 0.1 for H/He and C/O, to 13 % for dilute
  * oxygen in hydrogen and iron in carbon; at Gamma = 3 the fit, tuned to simulations, is 7 % to a factor 2 above them).
  *
- * @param charged - charged species of a composition, by rising charge
  * @param polarisable - true where the ion-electron term is part of the free energy, false for a rigid background
  */
-export function liquidMixture(charged: readonly Species[], polarisable: boolean): LiquidMixture {
-  const { shares, total } = chargeShares(charged);
+export function liquidMixture(composition: Composition, polarisable: boolean): LiquidMixture {
+  const { nuclei, firstCharged, charges, powers } = notesOf(composition).list;
+  const numbers = numberFractionsOf(composition);
+  let total = 0;
+  for (let i = firstCharged; i < nuclei.length; i++) total += numbers[i]!;
   let first = 0;
   let second = 0;
   let unit = 0;
   let pure = 0;
   let coupling = 0;
-  for (let i = 0; i < shares.length; i++) {
-    const { charge: z, fraction } = shares[i]!;
-    const powers = powersOf(z);
-    first += fraction * z;
-    second += fraction * (z * z);
-    unit += fraction * powers[0]!;
-    pure += fraction * powers[1]!;
-    coupling += fraction * powers[2]!;
+  for (let i = firstCharged; i < nuclei.length; i++) {
+    const fraction = numbers[i]! / total;
+    first += fraction * nuclei[i]!.chargeNumber;
+    second += fraction * powers.squared[i]!;
+    unit += fraction * powers.fiveHalves[i]!;
+    pure += fraction * powers.screened[i]!;
+    coupling += fraction * powers.fiveThirds[i]!;
   }
   if (!polarisable) pure = unit;
-  const mixed = (polarisable ? second + first : second) ** 1.5 / Math.sqrt(first);
+  const square = polarisable ? second + first : second;
+  const mixed = square * Math.sqrt(square / first);
   // Zero to the last digit where nothing is mixed.
-  const delta = shares.length > 1 ? (pure - mixed) / unit : 0;
+  const delta = charges > 1 ? (pure - mixed) / unit : 0;
   const breadth = second / (first * first);
   const alpha = breadth ** -0.2;
-  const a = (2.6 + 14 * delta ** 3) / (1 - delta);
-  return Object.freeze({
+  const a = (2.6 + 14 * delta * delta * delta) / (1 - delta);
+  return {
     amplitude: (total * unit * delta) / Math.sqrt(3),
     a,
     b: 0.0117 * breadth * breadth * a,
     alpha,
     beta: 1.5 / alpha - 1,
     logCoupling: Math.log(coupling),
-  });
-}
-
-const known: Float64Array[] = [];
-
-/** Z^(5/2), Z (Z + 1)^(3/2), Z^(5/3); kept for integers. */
-function powersOf(z: number): Float64Array {
-  const old = known[z]; // undefined where Z is no integer
-  if (old !== undefined) return old;
-  const made = Float64Array.of(z * z * Math.sqrt(z), z * (z + 1) ** 1.5, z * Math.cbrt(z) ** 2);
-  if (Number.isInteger(z)) known[z] = made;
-  return made;
+  };
 }
 
 /**
@@ -126,19 +118,26 @@ export function addMixture(u: Float64Array, order: 2 | 3, point: Float64Array, m
  * count as one charge, as they must; the sum over pairs would not see to that by itself. Proportional to Gamma: an
  * alloy demixes as T -> 0.
  */
-export function alloyDeviation(charged: readonly Species[]): number {
-  const { shares, total } = chargeShares(charged);
+export function alloyDeviation(composition: Composition): number {
+  const { nuclei, firstCharged, powers } = notesOf(composition).list;
+  const numbers = numberFractionsOf(composition);
+  const count = nuclei.length;
+  let total = 0;
+  for (let i = firstCharged; i < count; i++) total += numbers[i]!;
   let sum = 0;
-  for (let i = 0; i < shares.length; i++) {
-    const light = shares[i]!;
-    for (let j = i + 1; j < shares.length; j++) {
-      const heavy = shares[j]!;
-      const y = heavy.fraction / (light.fraction + heavy.fraction);
-      const weight = light.fraction * heavy.fraction * light.charge * Math.cbrt(light.charge) ** 2;
-      sum += weight * pairDeviation(heavy.charge / light.charge, y).value;
+  for (let i = firstCharged, next: number; i < count; i = next) {
+    const { chargeNumber } = nuclei[i]!;
+    let light = numbers[i]!;
+    for (next = i + 1; next < count && nuclei[next]!.chargeNumber === chargeNumber; next++) light += numbers[next]!;
+    for (let j = next, after: number; j < count; j = after) {
+      const other = nuclei[j]!.chargeNumber;
+      let heavy = numbers[j]!;
+      for (after = j + 1; after < count && nuclei[after]!.chargeNumber === other; after++) heavy += numbers[after]!;
+      const weight = light * heavy * powers.fiveThirds[i]!;
+      sum += weight * pairDeviation(other / chargeNumber, heavy / (light + heavy)).value;
     }
   }
-  return total * sum;
+  return sum / total;
 }
 
 /**

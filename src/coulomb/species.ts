@@ -12,8 +12,8 @@ import {
   fineStructureConstant,
   reducedPlanckConstant,
 } from "../constants.js";
-import type { Composition, Species } from "../matter/composition.js";
-import { notesOf } from "../matter/species-list.js";
+import type { Composition } from "../matter/composition.js";
+import { notesOf, numberFractionsOf, type SpeciesList } from "../matter/species-list.js";
 import type { LatticeConstants } from "./lattice.js";
 import { alloyDeviation, type LiquidMixture, liquidMixture } from "./mixing.js";
 import * as slot from "./slots.js";
@@ -25,8 +25,7 @@ export interface CoulombSpecies {
    * nothing.
    */
   readonly ions: readonly Float64Array[];
-  /** The charged species, and the lattice: what {@link fillIons} makes records of. */
-  readonly charged: readonly Species[];
+  readonly composition: Composition;
   readonly lattice: LatticeConstants;
   /** Net electrons, 1/g. */
   readonly electronsPerGram: number;
@@ -79,7 +78,7 @@ export function coulombSpecies(composition: Composition, lattice: LatticeConstan
 
 /** What only a crystal or only a liquid needs is computed when it is asked for. */
 class SummedSpecies implements CoulombSpecies {
-  readonly charged: readonly Species[];
+  readonly composition: Composition;
   readonly lattice: LatticeConstants;
   readonly electronsPerGram: number;
   readonly quantumRadius: number;
@@ -97,28 +96,32 @@ class SummedSpecies implements CoulombSpecies {
   #mixing: number | undefined;
   #spin: number | undefined;
 
-  constructor({ electronsPerGram, ionsPerGram, species }: Composition, lattice: LatticeConstants) {
+  constructor(composition: Composition, lattice: LatticeConstants) {
+    const { electronsPerGram, ionsPerGram } = composition;
+    const { list } = notesOf(composition);
+    const { frequency, fiveThirds } = chargesOf(list);
+    const numbers = numberFractionsOf(composition);
     const radius = Math.cbrt(3 / (4 * Math.PI * electronsPerGram)); // a_e at rho = 1
     const gammaE = elementaryChargeSquared / (radius * boltzmannConstant);
-    const charged = species.filter(({ chargeNumber }) => chargeNumber > 0);
+    const root = Math.sqrt(electronsPerGram);
     const ionsBoltzmann = ionsPerGram * boltzmannConstant;
     let share = 0;
     let gammas = 0;
     let thetas = 0;
     let ground = 0;
     let radii = 0;
-    for (const one of charged) {
-      const fraction = one.numberFraction;
-      const theta = thetaOf(one, electronsPerGram);
-      const gamma = fiveThirds(one.chargeNumber) * gammaE;
+    for (let i = list.firstCharged; i < list.nuclei.length; i++) {
+      const fraction = numbers[i]!;
+      const theta = frequency[i]! * root;
+      const gamma = fiveThirds[i]! * gammaE;
       const ratio = gamma / theta;
       share += fraction;
       gammas += fraction * gamma;
       thetas += fraction * theta;
-      ground += fraction * ((theta * theta) / gamma);
+      ground += fraction * (theta / ratio);
       radii += fraction * 3 * ratio * ratio;
     }
-    this.charged = charged;
+    this.composition = composition;
     this.lattice = lattice;
     this.electronsPerGram = electronsPerGram;
     this.quantumRadius = share === 0 ? 0 : radii / share;
@@ -130,7 +133,7 @@ class SummedSpecies implements CoulombSpecies {
     this.madelung = ionsBoltzmann * lattice.madelung * gammas;
     this.zeroPoint = ionsBoltzmann * 1.5 * lattice.u1 * thetas;
     this.anharmonicGround = -ionsBoltzmann * lattice.anharmonicQuantum * ground;
-    this.mixture = charged.length > 1 ? new Mixture(charged) : undefined;
+    this.mixture = list.nuclei.length - list.firstCharged > 1 ? new Mixture(composition) : undefined;
   }
 
   get ions(): readonly Float64Array[] {
@@ -142,49 +145,94 @@ class SummedSpecies implements CoulombSpecies {
   }
 
   get alloy(): number {
-    this.#alloy ??= this.mixture === undefined ? 0 : this.ionsBoltzmann * this.gammaE * alloyDeviation(this.charged);
+    this.#alloy ??= this.mixture === undefined ? 0 : this.ionsBoltzmann * this.gammaE * alloyDeviation(this.composition);
     return this.#alloy;
   }
 
   get mixing(): number {
-    this.#mixing ??= this.mixture === undefined ? 0 : mixingEntropy(this.ions);
+    this.#mixing ??= this.mixture === undefined ? 0 : mixingEntropy(this.composition);
     return this.#mixing;
   }
 
   get spin(): number {
-    this.#spin ??= -this.charged.reduce((sum, one) => sum + one.numberFraction * Math.log(one.spinDegeneracy), 0);
+    this.#spin ??= spinEntropy(this.composition);
     return this.#spin;
   }
 }
 
 /** The liquid's mixture correction, each form when it is asked for. */
 class Mixture {
-  readonly #charged: readonly Species[];
+  readonly #composition: Composition;
   #polarisable: LiquidMixture | undefined;
   #rigid: LiquidMixture | undefined;
 
-  constructor(charged: readonly Species[]) {
-    this.#charged = charged;
+  constructor(composition: Composition) {
+    this.#composition = composition;
   }
 
   get polarisable(): LiquidMixture {
-    this.#polarisable ??= liquidMixture(this.#charged, true);
+    this.#polarisable ??= liquidMixture(this.#composition, true);
     return this.#polarisable;
   }
 
   get rigid(): LiquidMixture {
-    this.#rigid ??= liquidMixture(this.#charged, false);
+    this.#rigid ??= liquidMixture(this.#composition, false);
     return this.#rigid;
   }
 }
 
 /** sum x_j ln(x_j Z_j/<Z>) over charged nuclei, x_j among them in the logarithm. */
-function mixingEntropy(ions: readonly Float64Array[]): number {
-  const sum = (term: (ion: Float64Array) => number): number =>
-    ions.reduce((total, ion) => total + ion[slot.ION_X]! * term(ion), 0);
-  const share = sum(() => 1); // number fraction of charged nuclei
-  const meanCharge = sum((ion) => ion[slot.ION_Z]!) / share;
-  return sum((ion) => Math.log(((ion[slot.ION_X]! / share) * ion[slot.ION_Z]!) / meanCharge));
+function mixingEntropy(composition: Composition): number {
+  const { nuclei, firstCharged } = notesOf(composition).list;
+  const numbers = numberFractionsOf(composition);
+  let share = 0; // number fraction of charged nuclei
+  let charge = 0;
+  for (let i = firstCharged; i < nuclei.length; i++) {
+    share += numbers[i]!;
+    charge += numbers[i]! * nuclei[i]!.chargeNumber;
+  }
+  const meanCharge = charge / share;
+  let sum = 0;
+  for (let i = firstCharged; i < nuclei.length; i++) {
+    sum += numbers[i]! * Math.log(((numbers[i]! / share) * nuclei[i]!.chargeNumber) / meanCharge);
+  }
+  return sum;
+}
+
+/** -sum x_j ln g_j over charged nuclei. */
+function spinEntropy(composition: Composition): number {
+  const { nuclei, firstCharged } = notesOf(composition).list;
+  const numbers = numberFractionsOf(composition);
+  let sum = 0;
+  for (let i = firstCharged; i < nuclei.length; i++) sum += numbers[i]! * Math.log(nuclei[i]!.spinDegeneracy);
+  return -sum;
+}
+
+/** What the species alone decide, by their place in a list. */
+interface Charges {
+  /** theta_j T/(rho n_e)^(1/2), n_e electrons per gram. */
+  readonly frequency: Float64Array;
+  /** Z^(5/3). */
+  readonly fiveThirds: Float64Array;
+  /** ln of 0.205 theta_j/Gamma_j at T = 1, rho = 1 and one electron per gram. */
+  readonly logQ: Float64Array;
+}
+
+const chargesKey = /* @__PURE__ */ Symbol("charges of a list");
+
+function chargesOf(list: SpeciesList): Charges {
+  list.notes[chargesKey] ??= makeCharges(list);
+  return list.notes[chargesKey] as Charges;
+}
+
+function makeCharges({ nuclei, powers: { fiveThirds } }: SpeciesList): Charges {
+  const frequency = Float64Array.from(nuclei, ({ chargeNumber, ionMass }) => {
+    const square = (4 * Math.PI * elementaryChargeSquared * chargeNumber) / ionMass;
+    return (reducedPlanckConstant * Math.sqrt(square)) / boltzmannConstant;
+  });
+  const coupling = (elementaryChargeSquared * Math.cbrt((4 * Math.PI) / 3)) / boltzmannConstant;
+  const logQ = frequency.map((theta, i) => Math.log((0.205 * theta) / (coupling * fiveThirds[i]!)));
+  return { frequency, fiveThirds, logQ };
 }
 
 /** Functions of the charge number, by lattice, of nuclei with integer Z. */
@@ -192,27 +240,27 @@ const records = /* @__PURE__ */ new WeakMap<LatticeConstants, Float64Array[]>();
 
 /** Fills records, one per charged species, making and dropping some where their number is another. */
 export function fillIons(ions: Float64Array[], species: CoulombSpecies): void {
-  const { charged, electronsPerGram, gammaE, lattice } = species;
-  if (ions.length > charged.length) ions.length = charged.length;
-  for (let i = 0; i < charged.length; i++) {
-    const one = charged[i]!;
+  const { composition, electronsPerGram, gammaE, lattice } = species;
+  const { list } = notesOf(composition);
+  const { nuclei, firstCharged } = list;
+  const { frequency, logQ } = chargesOf(list);
+  const numbers = numberFractionsOf(composition);
+  const root = Math.sqrt(electronsPerGram);
+  const logElectrons = Math.log(electronsPerGram) / 6; // theta/Gamma goes like n_e^(1/2 - 1/3)
+  const count = nuclei.length - firstCharged;
+  if (ions.length > count) ions.length = count;
+  for (let i = 0; i < count; i++) {
+    const place = firstCharged + i;
+    const { chargeNumber } = nuclei[place]!;
     const ion = ions[i];
-    if (ion === undefined) ions.push(ofCharge(one.chargeNumber, lattice).slice());
-    else if (ion[slot.ION_Z] !== one.chargeNumber) ion.set(ofCharge(one.chargeNumber, lattice));
+    if (ion === undefined) ions.push(ofCharge(chargeNumber, lattice).slice());
+    else if (ion[slot.ION_Z] !== chargeNumber) ion.set(ofCharge(chargeNumber, lattice));
     const record = ions[i]!;
-    const theta = thetaOf(one, electronsPerGram);
-    const gamma = record[slot.ION_Z53]! * gammaE;
-    record[slot.ION_X] = one.numberFraction;
-    record[slot.ION_THETA] = theta;
-    record[slot.ION_GAMMA] = gamma;
-    record[slot.ION_LOG_Q] = Math.log((0.205 * theta) / gamma);
+    record[slot.ION_X] = numbers[place]!;
+    record[slot.ION_THETA] = frequency[place]! * root;
+    record[slot.ION_GAMMA] = record[slot.ION_Z53]! * gammaE;
+    record[slot.ION_LOG_Q] = logQ[place]! + logElectrons;
   }
-}
-
-/** theta_j T/rho^(1/2). */
-function thetaOf({ chargeNumber, ionMass }: Species, electronsPerGram: number): number {
-  const frequency = Math.sqrt((4 * Math.PI * elementaryChargeSquared * electronsPerGram * chargeNumber) / ionMass);
-  return (reducedPlanckConstant * frequency) / boltzmannConstant;
 }
 
 /** Z^(5/3). */

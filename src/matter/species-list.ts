@@ -19,15 +19,31 @@ export interface SpeciesList {
   readonly order: readonly number[];
   /** First of the charged ones. */
   readonly firstCharged: number;
+  /** How many different charges above 0 there are. */
+  readonly charges: number;
+  /** A, by species. */
+  readonly massNumbers: Float64Array;
   /**
    * Functions of Z, by species: Z^p for the moments, roots and not powers, which have the exponent's error times ln
-   * Z.
+   * Z; and Z (Z + 1)^(3/2).
    */
-  readonly powers: Readonly<Record<keyof ChargeMoments, Float64Array>>;
+  readonly powers: Readonly<Record<keyof ChargeMoments | "screened", Float64Array>>;
   /** 1.5 ln(m_u/M). */
   readonly logMass: Float64Array;
   /** Lists without some of the species, by the places that are left. */
   readonly parts: Map<string, SpeciesList>;
+  /** As many doubles, to be copied: an array that starts as one of doubles stays one. */
+  readonly blank: readonly number[];
+  /** What other rooms have computed of the list, under symbols of their own. */
+  readonly notes: Record<symbol, unknown>;
+}
+
+/** What a composition was made of, and what rooms have computed of it, under symbols of their own. */
+export interface Notes {
+  readonly list: SpeciesList;
+  /** Nucleon fractions, in the order of the list. */
+  readonly fractions: readonly number[];
+  [room: symbol]: unknown;
 }
 
 /**
@@ -36,13 +52,21 @@ export interface SpeciesList {
  */
 export const brand: unique symbol = /* @__PURE__ */ Symbol.for("fermistate.composition.1");
 
-/**
- * An object in which a room keeps what it has computed of a composition, under a symbol of its own: several times
- * cheaper than a
- * WeakMap where compositions are many and short-lived.
- */
-export function notesOf(composition: Composition): Record<symbol, unknown> {
-  return (composition as Composition & { readonly [brand]: Record<symbol, unknown> })[brand];
+/** The notes of a composition: several times cheaper than a WeakMap where compositions are many and short-lived. */
+export function notesOf(composition: Composition): Notes {
+  return (composition as Composition & { readonly [brand]: Notes })[brand];
+}
+
+/** Number fractions of a composition's species, in their order; good until the next call. */
+export function numberFractionsOf(composition: Composition): Float64Array {
+  const { list, fractions } = notesOf(composition);
+  return fillNumberFractions(list, fractions, composition.ionsPerNucleon);
+}
+
+function fillNumberFractions({ massNumbers }: SpeciesList, fractions: readonly number[], ions: number): Float64Array {
+  const numbers = scratch(fractions.length);
+  for (let i = 0; i < fractions.length; i++) numbers[i] = fractions[i]! / massNumbers[i]! / ions;
+  return numbers;
 }
 
 const known = /* @__PURE__ */ new Map<string, SpeciesList>();
@@ -90,6 +114,8 @@ export function speciesList(given: readonly Nucleus[]): SpeciesList {
     nuclei,
     order,
     firstCharged: firstCharged < 0 ? nuclei.length : firstCharged,
+    charges: new Set(nuclei.map(({ chargeNumber }) => chargeNumber).filter((z) => z > 0)).size,
+    massNumbers: Float64Array.from(nuclei, ({ massNumber }) => massNumber),
     powers: {
       twoThirds: of((z) => Math.cbrt(z) ** 2),
       fourThirds: of((z) => z * Math.cbrt(z)),
@@ -97,9 +123,12 @@ export function speciesList(given: readonly Nucleus[]): SpeciesList {
       squared: of((z) => z * z),
       sevenThirds: of((z) => z * z * Math.cbrt(z)),
       fiveHalves: of((z) => z * z * Math.sqrt(z)),
+      screened: of((z) => z * (z + 1) ** 1.5),
     },
     logMass: Float64Array.from(nuclei, ({ ionMass }) => 1.5 * Math.log(atomicMassConstant / ionMass)),
     parts: new Map(),
+    blank: nuclei.map(() => 0.5),
+    notes: {},
   };
 }
 
@@ -136,14 +165,15 @@ function scratch(count: number): Float64Array {
   return numberFractions;
 }
 
-/** A composition: the sums over its species, always in the same order. */
+/**
+ * A composition: the sums over its species, always in the same order. What takes longer than they do, and few ask for, is
+ * made when it is asked for.
+ */
 class SummedComposition implements Composition {
-  readonly species: readonly Species[];
   readonly ionsPerNucleon: number;
   readonly electronsPerNucleon: number;
   readonly meanMassNumber: number;
   readonly meanCharge: number;
-  readonly chargeMoments: ChargeMoments;
   readonly couplingMoment: number;
   readonly ionsPerGram: number;
   readonly electronsPerGram: number;
@@ -151,78 +181,106 @@ class SummedComposition implements Composition {
   readonly chargedIonsPerGram: number;
   readonly chargedIonEntropyConstant: number;
   readonly plasmaFrequencySum: number;
-  readonly #notes: Record<symbol, unknown> = {};
+  readonly #notes: Notes;
   #name: string | undefined;
+  #species: readonly Species[] | undefined;
+  #chargeMoments: ChargeMoments | undefined;
 
-  constructor(list: SpeciesList, fractions: Float64Array) {
-    const { nuclei, firstCharged, powers } = list;
+  constructor(list: SpeciesList, given: Float64Array) {
+    const { nuclei, firstCharged, massNumbers, powers } = list;
     const count = nuclei.length;
+    const fractions = list.blank.slice();
     let ions = 0;
     let electrons = 0;
-    for (let i = 0; i < count; i++) {
-      const { massNumber, chargeNumber } = nuclei[i]!;
-      ions += fractions[i]! / massNumber;
-      electrons += fractions[i]! * (chargeNumber / massNumber); // Z/A first: 0.5 exactly for the usual nuclei
-    }
-    const species = new Array<Species>(count);
-    const numbers = scratch(count);
-    let charge = 0;
-    let frequency = 0;
     let charged = 0;
     for (let i = 0; i < count; i++) {
-      const { label, massNumber, chargeNumber, ionMass, spinDegeneracy, spinKnown } = nuclei[i]!;
-      const nucleonFraction = fractions[i]!;
-      const numberFraction = nucleonFraction / massNumber / ions;
-      numbers[i] = numberFraction;
-      charge += numberFraction * chargeNumber;
-      frequency += (numberFraction * chargeNumber ** 2) / ionMass;
-      if (i >= firstCharged) charged += nucleonFraction / massNumber;
-      species[i] = Object.freeze({
-        label,
-        massNumber,
-        chargeNumber,
-        nucleonFraction,
-        numberFraction,
-        ionMass,
-        spinDegeneracy,
-        spinKnown,
-      });
+      const fraction = given[i]!;
+      const massNumber = massNumbers[i]!;
+      const nuclides = fraction / massNumber;
+      fractions[i] = fraction;
+      ions += nuclides;
+      electrons += fraction * (nuclei[i]!.chargeNumber / massNumber); // Z/A first: 0.5 exactly for the usual nuclei
+      if (i >= firstCharged) charged += nuclides;
+    }
+    const numbers = fillNumberFractions(list, fractions, ions);
+    let charge = 0;
+    let frequency = 0;
+    for (let i = firstCharged; i < count; i++) {
+      const { chargeNumber, ionMass } = nuclei[i]!;
+      charge += numbers[i]! * chargeNumber;
+      frequency += (numbers[i]! * chargeNumber ** 2) / ionMass;
     }
     const constant = entropyConstant(list, numbers, 0);
-    this.species = Object.freeze(species);
     this.ionsPerNucleon = ions;
     this.electronsPerNucleon = electrons;
     this.meanMassNumber = 1 / ions;
     this.meanCharge = charge;
-    this.chargeMoments = Object.freeze({
-      twoThirds: mean(numbers, powers.twoThirds),
-      fourThirds: mean(numbers, powers.fourThirds),
-      fiveThirds: mean(numbers, powers.fiveThirds),
-      squared: mean(numbers, powers.squared),
-      sevenThirds: mean(numbers, powers.sevenThirds),
-      fiveHalves: mean(numbers, powers.fiveHalves),
-    });
     this.couplingMoment =
-      firstCharged === count ? 0 : this.chargeMoments.fiveThirds / sumFrom(numbers, firstCharged, count);
+      firstCharged === count ? 0 : mean(numbers, powers.fiveThirds) / sumFrom(numbers, firstCharged, count);
     this.ionsPerGram = ions / atomicMassConstant;
     this.electronsPerGram = electrons / atomicMassConstant;
     this.ionEntropyConstant = constant;
     this.chargedIonsPerGram = charged / atomicMassConstant;
     this.chargedIonEntropyConstant = firstCharged === 0 ? constant : entropyConstant(list, numbers, firstCharged);
     this.plasmaFrequencySum = frequency;
+    this.#notes = { list, fractions };
     Object.freeze(this);
   }
 
-  /** Written when it is asked for: that takes as long as all the sums. */
   get name(): string {
     this.#name ??= nameOf(this.species);
     return this.#name;
   }
 
+  get species(): readonly Species[] {
+    this.#species ??= speciesWith(this.#notes, this.ionsPerNucleon);
+    return this.#species;
+  }
+
+  get chargeMoments(): ChargeMoments {
+    this.#chargeMoments ??= momentsOf(this);
+    return this.#chargeMoments;
+  }
+
+  /** All members: for `JSON.stringify`. */
+  toJSON(): Composition {
+    const { name, species, chargeMoments } = this;
+    return Object.assign({ name, species, chargeMoments }, this);
+  }
+
+  /** What Node shows of it. */
+  [Symbol.for("nodejs.util.inspect.custom")](): Composition {
+    return this.toJSON();
+  }
+
   /** Undefined for copies and heirs, whose members may have been changed. */
-  get [brand](): Record<symbol, unknown> | undefined {
+  get [brand](): Notes | undefined {
     return #notes in this ? this.#notes : undefined;
   }
+}
+
+function speciesWith({ list: { nuclei, massNumbers }, fractions }: Notes, ions: number): readonly Species[] {
+  const species = nuclei.map((nucleus, i): Species => {
+    const { label, massNumber, chargeNumber, ionMass, spinDegeneracy, spinKnown } = nucleus;
+    const nucleonFraction = fractions[i]!;
+    const numberFraction = nucleonFraction / massNumbers[i]! / ions;
+    const identity = { label, massNumber, chargeNumber };
+    return Object.freeze({ ...identity, nucleonFraction, numberFraction, ionMass, spinDegeneracy, spinKnown });
+  });
+  return Object.freeze(species);
+}
+
+function momentsOf(composition: Composition): ChargeMoments {
+  const { powers } = notesOf(composition).list;
+  const numbers = numberFractionsOf(composition);
+  return Object.freeze({
+    twoThirds: mean(numbers, powers.twoThirds),
+    fourThirds: mean(numbers, powers.fourThirds),
+    fiveThirds: mean(numbers, powers.fiveThirds),
+    squared: mean(numbers, powers.squared),
+    sevenThirds: mean(numbers, powers.sevenThirds),
+    fiveHalves: mean(numbers, powers.fiveHalves),
+  });
 }
 
 /** sum_j y_j ln[(y_j/g_j)(m_u/M_j)^(3/2)], y_j the number fractions among the species from a place on. */

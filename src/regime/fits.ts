@@ -151,7 +151,7 @@ function alloy(composition: Composition): { deviation: number; entropy: number }
     const x = numberFraction / nuclei;
     entropy -= x * Math.log((x * chargeNumber) / mean);
   }
-  return { deviation: alloyDeviation(charged) / nuclei, entropy };
+  return { deviation: alloyDeviation(composition) / nuclei, entropy };
 }
 
 /**

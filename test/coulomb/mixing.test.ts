@@ -7,7 +7,8 @@ import type { Decimal } from "decimal.js";
 import { describe, expect, test } from "vitest";
 import { addMixture, alloyDeviation, type LiquidMixture, liquidMixture } from "../../src/coulomb/mixing.js";
 import * as slot from "../../src/coulomb/slots.js";
-import { composition, type Species } from "../../src/matter/composition.js";
+import { type Composition, composition } from "../../src/matter/composition.js";
+import { compositionOf, speciesList } from "../../src/matter/species-list.js";
 import { Measured } from "../measured.js";
 import { mixingDebyeHueckel } from "./debye-hueckel.js";
 import { decimalMembers, Exact, memberNames } from "./decimal-members.js";
@@ -20,18 +21,14 @@ const print = (measured: Measured): void => {
   if (process.env["FERMISTATE_PRINT"]) console.info(measured.table());
 };
 
-/** Only charge and number fraction matter here. */
-function nuclei(fractions: readonly number[], charges: readonly number[]): Species[] {
-  return charges.map((chargeNumber, i) => ({
-    label: `Z${chargeNumber}`,
-    massNumber: 2 * chargeNumber,
-    chargeNumber,
-    nucleonFraction: 0,
-    numberFraction: fractions[i]!,
-    ionMass: 1,
-    spinDegeneracy: 1,
-    spinKnown: true,
-  }));
+/** A composition of fictitious nuclei, of one nucleon each: only charge and number fraction matter here. */
+function nuclei(fractions: readonly number[], charges: readonly number[]): Composition {
+  const identity = { massNumber: 1, ionMass: 1, spinDegeneracy: 1, spinKnown: true };
+  const list = speciesList(charges.map((chargeNumber) => ({ ...identity, label: `Z${chargeNumber}`, chargeNumber })));
+  return compositionOf(
+    list,
+    Float64Array.from(list.order, (place) => fractions[place]!),
+  );
 }
 
 function members(mixture: LiquidMixture, gammaE: number, order: 2 | 3 = 3): Float64Array {
@@ -168,16 +165,15 @@ describe("liquid", () => {
   test("counts free neutrons in the number of nuclei only", () => {
     const without = composition({ C12: 0.5, O16: 0.5 });
     const with_ = composition({ n: 0.25, C12: 0.375, O16: 0.375 });
-    const charged = with_.species.filter(({ chargeNumber }) => chargeNumber > 0);
     const share = with_.chargedIonsPerGram / with_.ionsPerGram;
     expect(share).toBeLessThan(0.2);
-    const [own, plain] = [liquidMixture(charged, true), liquidMixture(without.species, true)];
+    const [own, plain] = [liquidMixture(with_, true), liquidMixture(without, true)];
     const deviation = (a: number, b: number): number => Math.abs(a / b - 1);
     expect(deviation(own.amplitude, share * plain.amplitude)).toBeLessThan(2e-13);
     for (const name of ["a", "b", "alpha", "beta", "logCoupling"] as const) {
       expect(deviation(own[name], plain[name]), name).toBeLessThan(2e-15);
     }
-    expect(deviation(alloyDeviation(charged), share * alloyDeviation(without.species))).toBeLessThan(2e-15);
+    expect(deviation(alloyDeviation(with_), share * alloyDeviation(without))).toBeLessThan(2e-15);
   });
 
   test("leaves the higher members alone at order 2", () => {
