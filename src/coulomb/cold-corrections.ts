@@ -17,6 +17,7 @@ import { electronRestEnergy, fineStructureConstant } from "../constants.js";
 import { FermistateError, requireFlags } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
 import { RELATIVITY, radiusFactor } from "../matter/plasma.js";
+import { notesOf } from "../matter/species-list.js";
 import { NATURAL_LENGTH, SINGLE_LENGTH } from "../numerics/natural.js";
 import type { Contribution } from "../thermodynamics/contribution.js";
 import { addNaturalDerivatives, type Order } from "../thermodynamics/free-energy.js";
@@ -133,8 +134,9 @@ export function coldCorrections(options: ColdCorrectionsOptions = {}): Contribut
       const { fiveThirds, sevenThirds } = composition.chargeMoments;
       const first = ofFiveThirds[1]! + ofSevenThirds[1]! + perElectron[1]!;
       const second = first + ofFiveThirds[3]! + ofSevenThirds[3]! + perElectron[3]!;
-      for (let i = 0, row = 0; i < composition.species.length; i++, row += SPECIES_LENGTH) {
-        const z = composition.species[i]!.chargeNumber;
+      const { nuclei } = notesOf(composition).list;
+      for (let i = 0, row = 0; i < nuclei.length; i++, row += SPECIES_LENGTH) {
+        const z = nuclei[i]!.chargeNumber;
         const third = Math.cbrt(z);
         const share = z / composition.electronsPerNucleon;
         const five = (z * third * third) / (fiveThirds * composition.ionsPerNucleon);

@@ -3,122 +3,172 @@
  *
  * Both departures are N f(fractions) with N charged nuclei, homogeneous of degree one in the amounts Y_a: the derivative by
  * Y_a at fixed electron density is f plus N df/dY_a, and N d<Z^p>/dY_a = Z_a^p - <Z^p>. Species of one charge share it.
+ *
+ * Results go into a record with {@link TANGENT_LENGTH} slots per charged species (slots.ts), in their order.
  */
-import type { Species } from "../matter/composition.js";
-import { chargeShares, type LiquidMixture, pairDeviation } from "./mixing.js";
-import { POINT_GAMMA_E, POINT_LOG_GAMMA_E, POINT_ROOT_GAMMA_E } from "./slots.js";
+import type { Composition } from "../matter/composition.js";
+import { notesOf, numberFractionsOf } from "../matter/species-list.js";
+import {
+  fillPairDeviation,
+  type LiquidMixture,
+  PAIR_LENGTH,
+  PAIR_RATIO,
+  PAIR_SHARE,
+  PAIR_SLOPE,
+  PAIR_VALUE,
+} from "./mixing.js";
+import {
+  POINT_GAMMA_E,
+  POINT_LOG_GAMMA_E,
+  POINT_ROOT_GAMMA_E,
+  TANGENT_ALLOY,
+  TANGENT_ALPHA,
+  TANGENT_AMPLITUDE,
+  TANGENT_BETA,
+  TANGENT_LENGTH,
+  TANGENT_LOG_A,
+  TANGENT_LOG_B,
+  TANGENT_LOG_COUPLING,
+} from "./slots.js";
 
-/** N d/dY_a of the parameters of {@link LiquidMixture}. */
-export interface LiquidMixtureTangent {
-  /** Amplitude per charged nucleus, not its derivative. */
-  readonly amplitude: number;
-  /** d(N amplitude)/dY_a. */
-  readonly amplitudeSlope: number;
-  /** N d ln a/dY_a. */
-  readonly logA: number;
-  /** N d ln b/dY_a. */
-  readonly logB: number;
-  /** N d alpha/dY_a. */
-  readonly alpha: number;
-  /** N d beta/dY_a. */
-  readonly beta: number;
-  /** N d ln <Z^(5/3)>/dY_a. */
-  readonly logCoupling: number;
-}
-
-/** A tangent for each charged species; undefined where all have one charge. `polarisable` as in `liquidMixture`. */
-export function liquidMixtureTangents(
-  charged: readonly Species[],
-  polarisable: boolean,
-): readonly LiquidMixtureTangent[] | undefined {
-  const { shares } = chargeShares(charged);
-  if (shares.length < 2) return undefined;
-  const mean = (of: (z: number) => number): number =>
-    shares.reduce((sum, { charge, fraction }) => sum + fraction * of(charge), 0);
-  const third = (z: number): number => Math.cbrt(z);
-  const first = mean((z) => z);
-  const second = mean((z) => z * z);
-  const coupling = mean((z) => z * third(z) ** 2);
-  const five = (z: number): number => z * z * Math.sqrt(z);
-  const unit = mean(five);
-  const pureOf = polarisable ? (z: number): number => z * (z + 1) ** 1.5 : five;
-  const squareOf = polarisable ? (z: number): number => z * z + z : (z: number): number => z * z;
-  const square = mean(squareOf);
-  const mixed = square ** 1.5 / Math.sqrt(first);
-  const delta = (mean(pureOf) - mixed) / unit;
+/** Fills the slots of the liquid's departure, for a composition of more than one charge. `polarisable` as in `liquidMixture`. */
+export function fillLiquidTangents(tangents: Float64Array, composition: Composition, polarisable: boolean): void {
+  const { nuclei, firstCharged, powers } = notesOf(composition).list;
+  const numbers = numberFractionsOf(composition);
+  const pures = polarisable ? powers.screened : powers.fiveHalves;
+  const count = nuclei.length;
+  let total = 0;
+  for (let i = firstCharged; i < count; i++) total += numbers[i]!;
+  let first = 0;
+  let second = 0;
+  let coupling = 0;
+  let unit = 0;
+  let pure = 0;
+  for (let i = firstCharged; i < count; i++) {
+    const fraction = numbers[i]! / total;
+    first += fraction * nuclei[i]!.chargeNumber;
+    second += fraction * powers.squared[i]!;
+    coupling += fraction * powers.fiveThirds[i]!;
+    unit += fraction * powers.fiveHalves[i]!;
+    pure += fraction * pures[i]!;
+  }
+  const square = polarisable ? second + first : second;
+  const mixed = square * Math.sqrt(square / first);
+  const delta = (pure - mixed) / unit;
   const alpha = (second / (first * first)) ** -0.2;
-  const top = 2.6 + 14 * delta ** 3;
-  return charged.map(({ chargeNumber: z }): LiquidMixtureTangent => {
+  const ofDelta = (42 * delta * delta) / (2.6 + 14 * delta * delta * delta) + 1 / (1 - delta);
+  for (let i = firstCharged, at = 0; i < count; i++, at += TANGENT_LENGTH) {
+    const z = nuclei[i]!.chargeNumber;
     const relative = z / first;
-    const slope = pureOf(z) - mixed * ((1.5 * squareOf(z)) / square - 0.5 * relative); // of N unit delta
-    const deltaSlope = (slope - delta * five(z)) / unit;
-    const logBreadth = (z * z) / second + 1 - 2 * relative;
-    const logA = ((42 * delta * delta) / top + 1 / (1 - delta)) * deltaSlope;
-    return Object.freeze({
-      amplitude: (unit * delta) / Math.sqrt(3),
-      amplitudeSlope: slope / Math.sqrt(3),
-      logA,
-      logB: 2 * logBreadth + logA,
-      alpha: -0.2 * alpha * logBreadth,
-      beta: (0.3 * logBreadth) / alpha,
-      logCoupling: (z * third(z) ** 2) / coupling - 1,
-    });
-  });
+    const ownSquare = polarisable ? powers.squared[i]! + z : powers.squared[i]!;
+    const slope = pures[i]! - mixed * ((1.5 * ownSquare) / square - 0.5 * relative); // of N unit delta
+    const logBreadth = powers.squared[i]! / second + 1 - 2 * relative;
+    const logA = (ofDelta * (slope - delta * powers.fiveHalves[i]!)) / unit;
+    tangents[at + TANGENT_AMPLITUDE] = slope / Math.sqrt(3);
+    tangents[at + TANGENT_LOG_A] = logA;
+    tangents[at + TANGENT_LOG_B] = 2 * logBreadth + logA;
+    tangents[at + TANGENT_ALPHA] = -0.2 * alpha * logBreadth;
+    tangents[at + TANGENT_BETA] = (0.3 * logBreadth) / alpha;
+    tangents[at + TANGENT_LOG_COUPLING] = powers.fiveThirds[i]! / coupling - 1;
+  }
 }
+
+/** What all species share of the liquid's departure at a point. */
+const shared = new Float64Array(8);
 
 /**
- * Adds d(N f)/dY_a of the liquid's departure at fixed electron density, f as in `addMixture`: u[0] its value, u[1] Gamma_e
- * d/dGamma_e of it, u[5] the second less the first. Per nucleus and kT.
+ * Prepares {@link addLiquidTangent} at a point. `share`: number fraction of charged nuclei.
  */
-export function addMixtureTangent(
-  u: Float64Array,
-  point: Float64Array,
-  mixture: LiquidMixture,
-  tangent: LiquidMixtureTangent,
-): void {
+export function prepareLiquidTangents(point: Float64Array, mixture: LiquidMixture, share: number): void {
   const { alpha, beta } = mixture;
   const logarithm = point[POINT_LOG_GAMMA_E]! + mixture.logCoupling; // ln G
   const power = Math.exp(alpha * logarithm);
   const p = 1 / (1 + mixture.a * power);
   const q = 1 / (1 + mixture.b * power);
   const logQ = Math.log1p(mixture.b * power);
-  const weak = point[POINT_GAMMA_E]! * point[POINT_ROOT_GAMMA_E]! * p * Math.exp(-beta * logQ);
+  shared[0] = point[POINT_GAMMA_E]! * point[POINT_ROOT_GAMMA_E]! * p * Math.exp(-beta * logQ);
+  shared[1] = logarithm;
+  shared[2] = p;
+  shared[3] = q;
+  shared[4] = logQ;
+  shared[5] = alpha;
+  shared[6] = beta;
+  shared[7] = mixture.amplitude / share; // per charged nucleus
+}
+
+/**
+ * Adds d(N f)/dY_a of the liquid's departure at fixed electron density, f as in `addMixture`: u[0] its value, u[1] Gamma_e
+ * d/dGamma_e of it, u[5] the second less the first. Per nucleus and kT. `at`: first slot of the species in `tangents`.
+ */
+export function addLiquidTangent(u: Float64Array, tangents: Float64Array, at: number): void {
+  const weak = shared[0]!;
+  const logarithm = shared[1]!;
+  const p = shared[2]!;
+  const q = shared[3]!;
+  const logQ = shared[4]!;
+  const alpha = shared[5]!;
+  const beta = shared[6]!;
+  const amplitude = shared[7]!;
+  const ofAlpha = tangents[at + TANGENT_ALPHA]!;
+  const ofBeta = tangents[at + TANGENT_BETA]!;
   // Changes of ln(a G^alpha), ln(b G^alpha), and of ln f at fixed amplitude; then D = d/d ln Gamma_e of the last.
-  const logPower = tangent.alpha * logarithm + alpha * tangent.logCoupling;
-  const ofA = tangent.logA + logPower;
-  const ofB = tangent.logB + logPower;
-  const change = -(1 - p) * ofA - tangent.beta * logQ - beta * (1 - q) * ofB;
+  const logPower = ofAlpha * logarithm + alpha * tangents[at + TANGENT_LOG_COUPLING]!;
+  const ofA = tangents[at + TANGENT_LOG_A]! + logPower;
+  const ofB = tangents[at + TANGENT_LOG_B]! + logPower;
+  const change = -(1 - p) * ofA - ofBeta * logQ - beta * (1 - q) * ofB;
   const slope =
     -alpha * p * (1 - p) * ofA -
-    (1 - p) * tangent.alpha -
-    tangent.beta * alpha * (1 - q) -
-    beta * (alpha * q * (1 - q) * ofB + (1 - q) * tangent.alpha);
-  const value = weak * (tangent.amplitudeSlope + tangent.amplitude * change);
-  const first = alpha * (p + beta * q) * value + weak * tangent.amplitude * slope;
+    (1 - p) * ofAlpha -
+    ofBeta * alpha * (1 - q) -
+    beta * (alpha * q * (1 - q) * ofB + (1 - q) * ofAlpha);
+  const value = weak * (tangents[at + TANGENT_AMPLITUDE]! + amplitude * change);
+  const first = alpha * (p + beta * q) * value + weak * amplitude * slope;
   u[0]! += value;
   u[1]! += first;
   u[5]! += first - value;
 }
 
-/** d(N f)/dY_a of the alloy's deviation for each charged species, in e^2/a_e. */
-export function alloyTangents(charged: readonly Species[]): Float64Array {
-  const { shares } = chargeShares(charged);
-  const ofCharge = new Map<number, number>(shares.map(({ charge }) => [charge, 0]));
-  const add = (charge: number, value: number): void => {
-    ofCharge.set(charge, ofCharge.get(charge)! + value);
-  };
+const pair = new Float64Array(PAIR_LENGTH);
+
+/** Fills the slot of the alloy's deviation with d(N f)/dY_a times `energy`, f in e^2/a_e. */
+export function fillAlloyTangents(tangents: Float64Array, composition: Composition, energy: number): void {
+  const { nuclei, firstCharged, powers } = notesOf(composition).list;
+  const numbers = numberFractionsOf(composition);
+  const count = nuclei.length;
+  const slotOf = (place: number): number => (place - firstCharged) * TANGENT_LENGTH + TANGENT_ALLOY;
+  let total = 0;
+  for (let i = firstCharged; i < count; i++) {
+    total += numbers[i]!;
+    tangents[slotOf(i)] = 0;
+  }
+  // Isotopes are neighbours: the first of a charge stands for all.
   let sum = 0;
-  for (let i = 0; i < shares.length; i++) {
-    const light = shares[i]!;
-    for (let j = i + 1; j < shares.length; j++) {
-      const heavy = shares[j]!;
-      const y = heavy.fraction / (light.fraction + heavy.fraction);
-      const unit = light.charge * Math.cbrt(light.charge) ** 2;
-      const { value, slope } = pairDeviation(heavy.charge / light.charge, y);
-      sum += unit * light.fraction * heavy.fraction * value;
-      add(light.charge, unit * (heavy.fraction * value - light.fraction * y * slope));
-      add(heavy.charge, unit * light.fraction * (value + (1 - y) * slope));
+  for (let i = firstCharged, next: number; i < count; i = next) {
+    const { chargeNumber } = nuclei[i]!;
+    let light = numbers[i]! / total;
+    for (next = i + 1; next < count && nuclei[next]!.chargeNumber === chargeNumber; next++)
+      light += numbers[next]! / total;
+    for (let j = next, after: number; j < count; j = after) {
+      const other = nuclei[j]!.chargeNumber;
+      let heavy = numbers[j]! / total;
+      for (after = j + 1; after < count && nuclei[after]!.chargeNumber === other; after++)
+        heavy += numbers[after]! / total;
+      const y = heavy / (light + heavy);
+      pair[PAIR_RATIO] = other / chargeNumber;
+      pair[PAIR_SHARE] = y;
+      fillPairDeviation(pair);
+      const value = pair[PAIR_VALUE]!;
+      const slope = pair[PAIR_SLOPE]!;
+      const unit = powers.fiveThirds[i]!;
+      sum += unit * light * heavy * value;
+      tangents[slotOf(i)]! += unit * (heavy * value - light * y * slope);
+      tangents[slotOf(j)]! += unit * light * (value + (1 - y) * slope);
     }
   }
-  return Float64Array.from(charged, ({ chargeNumber }) => ofCharge.get(chargeNumber)! - sum);
+  for (let i = firstCharged, next: number; i < count; i = next) {
+    const value = energy * (tangents[slotOf(i)]! - sum);
+    for (next = i; next < count && nuclei[next]!.chargeNumber === nuclei[i]!.chargeNumber; next++) {
+      tangents[slotOf(next)] = value;
+    }
+  }
 }

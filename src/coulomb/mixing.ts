@@ -5,7 +5,7 @@
  * Averages <.> run over charged nuclei; free neutrons share in the number of nuclei, not in the plasma. Both results are
  * per nucleus of every kind, so they carry the number share of charged nuclei.
  */
-import type { Composition, Species } from "../matter/composition.js";
+import type { Composition } from "../matter/composition.js";
 import { notesOf, numberFractionsOf } from "../matter/species-list.js";
 import { POINT_GAMMA_E, POINT_LOG_GAMMA_E, POINT_ROOT_GAMMA_E } from "./slots.js";
 
@@ -21,12 +21,6 @@ export interface LiquidMixture {
   readonly beta: number;
   /** ln <Z^(5/3)>. */
   readonly logCoupling: number;
-}
-
-/** Number fraction of one charge among charged nuclei, isotopes together. */
-interface ChargeShare {
-  readonly charge: number;
-  readonly fraction: number;
 }
 
 /**
@@ -134,47 +128,42 @@ export function alloyDeviation(composition: Composition): number {
       let heavy = numbers[j]!;
       for (after = j + 1; after < count && nuclei[after]!.chargeNumber === other; after++) heavy += numbers[after]!;
       const weight = light * heavy * powers.fiveThirds[i]!;
-      sum += weight * pairDeviation(other / chargeNumber, heavy / (light + heavy)).value;
+      pair[PAIR_RATIO] = other / chargeNumber;
+      pair[PAIR_SHARE] = heavy / (light + heavy);
+      fillPairDeviation(pair);
+      sum += weight * pair[PAIR_VALUE]!;
     }
   }
   return sum / total;
 }
+
+/** Slot of R, in. */
+export const PAIR_RATIO = 0;
+/** Slot of y, in. */
+export const PAIR_SHARE = 1;
+/** Slot of dg, out. */
+export const PAIR_VALUE = 2;
+/** Slot of y d(dg)/dy, out; finite at y = 0. */
+export const PAIR_SLOPE = 3;
+export const PAIR_LENGTH = 4;
+
+const pair = new Float64Array(PAIR_LENGTH);
 
 /**
  * dg(R, y) = C(R)/{1 + [27 (R - 1)/(1 + 0.1 (R - 1))] s (s - 0.3) (s - 0.7) (s - 1)}, s = sqrt y.
  *
  * The braces reach zero at R = 6.06 (s = 0.12 and 0.88): the printed fit has poles outside its range. So their ratio
  * stays at 4.5 beyond it, which keeps dg positive and continuous (an own continuation, of unknown error); C(R) goes on.
- * The slope is y d(dg)/dy, finite at y = 0.
  */
-export function pairDeviation(ratio: number, y: number): { readonly value: number; readonly slope: number } {
-  const d = ratio - 1;
+export function fillPairDeviation(pair: Float64Array): void {
+  const d = pair[PAIR_RATIO]! - 1;
   const inRange = Math.min(d, 3.5);
-  const s = Math.sqrt(y);
+  const s = Math.sqrt(pair[PAIR_SHARE]!);
   const size = (0.05 * d * d) / ((1 + 0.64 * d) * (1 + 0.5 * d * d));
   const depth = (27 * inRange) / (1 + 0.1 * inRange);
   const value = size / (1 + depth * s * (s - 0.3) * (s - 0.7) * (s - 1));
   // With w = s^2 - s the quartic is w (w + 0.21).
   const bend = (2 * (s * s - s) + 0.21) * (2 * s - 1);
-  return { value, slope: (-value * value * depth * bend * s) / (2 * size) };
-}
-
-/** Charges in rising order with their fractions among charged nuclei, and the share of these among all nuclei. */
-export function chargeShares(charged: readonly Species[]): {
-  readonly shares: readonly ChargeShare[];
-  readonly total: number;
-} {
-  const shares: { charge: number; fraction: number }[] = [];
-  let total = 0;
-  for (const { chargeNumber, numberFraction } of charged) {
-    total += numberFraction;
-    // A composition's species come by rising charge: isotopes are neighbours, and nothing is moved.
-    let place = shares.length;
-    while (place > 0 && shares[place - 1]!.charge > chargeNumber) place--;
-    const before = shares[place - 1];
-    if (before?.charge === chargeNumber) before.fraction += numberFraction;
-    else shares.splice(place, 0, { charge: chargeNumber, fraction: numberFraction });
-  }
-  for (const share of shares) share.fraction /= total;
-  return { shares, total };
+  pair[PAIR_VALUE] = value;
+  pair[PAIR_SLOPE] = (-value * value * depth * bend * s) / (2 * size);
 }

@@ -1,5 +1,5 @@
 /**
- * Slots of the two records of the Coulomb rooms. No imports, so that the bundler writes them as literals.
+ * Slots of the records of the Coulomb rooms. No imports, so that the bundler writes them as literals.
  *
  * The point (filled by coulomb-plasma.ts) and one record per species of a composition (filled by species.ts). Coupling and
  * quantum parameter of a species: Gamma_j = POINT_GAMMA_E * ION_Z53, theta_j = POINT_ROOT * ION_THETA (POINT_ROOT =
@@ -93,3 +93,32 @@ export const ION_B4 = 21;
 /** s. */
 export const ION_S = 22;
 export const ION_LENGTH = 24;
+
+// How the sum changes with the amount of a species (species-tangents.ts): one stretch of a record per charged species.
+// Energies in erg/g per unit of Y_a at rho = 1 g/cm^3.
+
+/** Z_a/Y_e. */
+export const TANGENT_PER_ELECTRON = 0;
+/** Madelung energy over rho^(1/3). */
+export const TANGENT_MADELUNG = 1;
+/** Zero-point energy over rho^(1/2). */
+export const TANGENT_ZERO_POINT = 2;
+/** Quantum part of the anharmonic ground state over rho^(2/3). */
+export const TANGENT_ANHARMONIC = 3;
+/** Deviation of a random alloy over rho^(1/3). */
+export const TANGENT_ALLOY = 4;
+/** Entropy of mixing and spin of the crystal, negative, over k: ln(Y_a Z_a/Y_e) + 1 - Z_a/<Z> - ln g_a. */
+export const TANGENT_MIXING = 5;
+/** d(N amplitude)/dY_a of the liquid's departure from linear mixing. */
+export const TANGENT_AMPLITUDE = 6;
+/** N d ln a/dY_a. */
+export const TANGENT_LOG_A = 7;
+/** N d ln b/dY_a. */
+export const TANGENT_LOG_B = 8;
+/** N d alpha/dY_a. */
+export const TANGENT_ALPHA = 9;
+/** N d beta/dY_a. */
+export const TANGENT_BETA = 10;
+/** N d ln <Z^(5/3)>/dY_a. */
+export const TANGENT_LOG_COUPLING = 11;
+export const TANGENT_LENGTH = 12;

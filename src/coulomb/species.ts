@@ -145,7 +145,8 @@ class SummedSpecies implements CoulombSpecies {
   }
 
   get alloy(): number {
-    this.#alloy ??= this.mixture === undefined ? 0 : this.ionsBoltzmann * this.gammaE * alloyDeviation(this.composition);
+    this.#alloy ??=
+      this.mixture === undefined ? 0 : this.ionsBoltzmann * this.gammaE * alloyDeviation(this.composition);
     return this.#alloy;
   }
 

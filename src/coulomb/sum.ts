@@ -16,6 +16,7 @@ import {
   radiusFactor,
   TEMPERATURE,
 } from "../matter/plasma.js";
+import { notesOf } from "../matter/species-list.js";
 import {
   addInverseThermal,
   addThermal,
@@ -52,10 +53,11 @@ import {
   POINT_T,
   POINT_TEMPERATURE,
   POINT_X,
+  TANGENT_LENGTH,
 } from "./slots.js";
 import { type CoulombSpecies, coulombSpecies, fillIons } from "./species.js";
 import { addSpeciesDerivatives, type Choice } from "./species-derivatives.js";
-import { type SpeciesTangent, speciesTangents } from "./species-tangents.js";
+import { fillTangentsOfCrystal, fillTangentsOfLiquid } from "./species-tangents.js";
 import type { Terms } from "./terms.js";
 
 /** A choice of terms with what it needs at every point, and what depends on the composition it met last. */
@@ -71,8 +73,10 @@ export interface CoulombSum extends Choice {
   crystalLimit: number;
   /** Whether the ions were a crystal at the last point. */
   crystal: boolean;
-  /** How the constants change with the amount of each species; made where asked for. */
-  tangents: readonly SpeciesTangent[] | undefined;
+  /** How the constants change with the amount of each species (slots.ts), and which of them are those of the composition. */
+  tangents: Float64Array;
+  knowsLiquid: boolean;
+  knowsCrystal: boolean;
 }
 
 /** A sum of the chosen terms. */
@@ -91,7 +95,9 @@ export function coulombSum(terms: Terms, options: Required<CoulombPlasmaOptions>
     ions: [], // not frozen: V8 does not inline the access to an element of a frozen array
     crystalLimit: Number.NaN,
     crystal: false,
-    tangents: undefined,
+    tangents: new Float64Array(0),
+    knowsLiquid: false,
+    knowsCrystal: false,
   };
 }
 
@@ -181,8 +187,21 @@ export function addCoulombSpecies(
     else if (sum.options.freeNeutrons) sum.neutrons.addSpecies?.(point, composition, rows);
   }
   if (point[ELECTRON_DENSITY] === 0) return;
-  sum.tangents ??= speciesTangents(composition, sum.lattice);
-  addSpeciesDerivatives(rows, sum, sum.tangents, species, plasma, natural, crystal);
+  fillTangents(sum, species, crystal);
+  const first = notesOf(composition).list.firstCharged;
+  addSpeciesDerivatives(rows, sum, sum.tangents, species, sum.ions, first, plasma, natural, crystal);
+}
+
+function fillTangents(sum: CoulombSum, species: CoulombSpecies, crystal: boolean): void {
+  const count = sum.ions.length * TANGENT_LENGTH;
+  if (sum.tangents.length < count) sum.tangents = new Float64Array(count);
+  if (crystal && !sum.knowsCrystal) {
+    fillTangentsOfCrystal(sum.tangents, species, sum.ions, sum.lattice);
+    sum.knowsCrystal = true;
+  } else if (!crystal && !sum.knowsLiquid) {
+    fillTangentsOfLiquid(sum.tangents, species, sum.polarisable);
+    sum.knowsLiquid = true;
+  }
 }
 
 /** Fills the record that the terms share; returns the constants of the composition. */
@@ -192,7 +211,8 @@ function enter(sum: CoulombSum, point: Float64Array, composition: Composition): 
     fillIons(sum.ions, sum.species);
     sum.crystalLimit = highestCrystalDensity(composition);
     sum.composition = composition;
-    sum.tangents = undefined;
+    sum.knowsLiquid = false;
+    sum.knowsCrystal = false;
   }
   const species = sum.species!;
   const density = point[DENSITY]!;

@@ -17,6 +17,7 @@ import {
   ROUGH_THIRD_ORDER,
   TEMPERATURE,
 } from "../matter/point.js";
+import { notesOf } from "../matter/species-list.js";
 import {
   SPECIES_ENERGY,
   SPECIES_ENTROPY,
@@ -58,9 +59,9 @@ export function moveElectrons(point: Float64Array, gas: Float64Array, scale: Flo
  * Adds the derivatives by the amount of one electron, three numbers, to the rows of the nuclides that bring Z of them.
  */
 export function addElectronSpecies(perParticle: Float64Array, composition: Composition, rows: Float64Array): void {
-  const { species } = composition;
-  for (let i = 0, row = 0; i < species.length; i++, row += SPECIES_LENGTH) {
-    const unit = (species[i]!.chargeNumber * electronRestEnergy) / atomicMassConstant;
+  const { nuclei } = notesOf(composition).list;
+  for (let i = 0, row = 0; i < nuclei.length; i++, row += SPECIES_LENGTH) {
+    const unit = (nuclei[i]!.chargeNumber * electronRestEnergy) / atomicMassConstant;
     rows[row + SPECIES_ENERGY]! += unit * perParticle[0]!;
     rows[row + SPECIES_ENTROPY]! += unit * perParticle[1]!;
     rows[row + SPECIES_PRESSURE]! += unit * perParticle[2]!;

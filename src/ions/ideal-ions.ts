@@ -13,7 +13,7 @@ import { requireFlags } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
 import { nuclide } from "../matter/nuclides.js";
 import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
-import { notesOf } from "../matter/species-list.js";
+import { notesOf, numberFractionsOf } from "../matter/species-list.js";
 import type { Contribution } from "../thermodynamics/contribution.js";
 import {
   ENERGY,
@@ -64,7 +64,7 @@ export function idealIons(options: IdealIonsOptions = {}): Contribution {
   const { only, freeNeutrons = true } = options;
   const ofNeutrons = only === undefined ? 0 : neutronConstant();
   let lastComposition: Composition | undefined;
-  let constants: Float64Array;
+  let constants: Float64Array = new Float64Array(0);
   return Object.freeze({
     name: only ?? (freeNeutrons ? "ideal ions" : "ideal ions without free neutrons"),
     physics: Object.freeze([
@@ -109,19 +109,19 @@ export function idealIons(options: IdealIonsOptions = {}): Contribution {
     addSpecies(point: Float64Array, composition: Composition, rows: Float64Array): void {
       if (composition !== lastComposition) {
         lastComposition = composition;
-        constants = entropyConstants(composition);
+        constants = entropyConstants(composition, constants);
       }
       const temperature = point[TEMPERATURE]!;
       if (temperature === 0) return; // beside a crystal, neutrons fewer than rounding: nothing added, nothing to say
       const energy = (boltzmannConstant / atomicMassConstant) * temperature;
       const volume = thermalVolume / (temperature * Math.sqrt(temperature));
       const occupation = Math.log(composition.ionsPerGram * point[DENSITY]! * volume);
-      const { species } = composition;
-      for (let i = 0, row = 0; i < species.length; i++, row += SPECIES_LENGTH) {
-        const isNeutral = species[i]!.chargeNumber === 0;
+      const { nuclei } = notesOf(composition).list;
+      for (let i = 0, row = 0; i < nuclei.length; i++, row += SPECIES_LENGTH) {
+        const isNeutral = nuclei[i]!.chargeNumber === 0;
         if (isNeutral ? !freeNeutrons : only !== undefined) continue;
         rows[row + SPECIES_ENERGY]! += 1.5 * energy;
-        const constant = only === undefined ? constants[i]! : Math.log(species[i]!.numberFraction) + ofNeutrons;
+        const constant = only === undefined ? constants[i]! : Math.log(numberFractionsOf(composition)[i]!) + ofNeutrons;
         rows[row + SPECIES_ENTROPY]! += energy * (1.5 - occupation - constant);
         rows[row + SPECIES_PRESSURE]! += energy;
       }
@@ -129,15 +129,13 @@ export function idealIons(options: IdealIonsOptions = {}): Contribution {
   });
 }
 
-/** Under which a composition keeps what {@link entropyConstants} has computed. */
-const constantsKey = /* @__PURE__ */ Symbol("entropy constants");
-
-/** ln[(x_a/g_a)(m_u/M_a)^(3/2)] of each species; computed at the first call. */
-function entropyConstants(composition: Composition): Float64Array {
-  const notes = notesOf(composition);
-  notes[constantsKey] ??= Float64Array.from(
-    composition.species,
-    (one) => Math.log(one.numberFraction / one.spinDegeneracy) + 1.5 * Math.log(atomicMassConstant / one.ionMass),
-  );
-  return notes[constantsKey] as Float64Array;
+/** ln[(x_a/g_a)(m_u/M_a)^(3/2)] of each species, in the given record where they fit. */
+function entropyConstants(composition: Composition, old: Float64Array): Float64Array {
+  const { nuclei, logMass } = notesOf(composition).list;
+  const numbers = numberFractionsOf(composition);
+  const constants = old.length < nuclei.length ? new Float64Array(nuclei.length) : old;
+  for (let i = 0; i < nuclei.length; i++) {
+    constants[i] = Math.log(numbers[i]! / nuclei[i]!.spinDegeneracy) + logMass[i]!;
+  }
+  return constants;
 }

@@ -7,6 +7,7 @@
 import { FermistateError } from "../errors.js";
 import type { Composition } from "../matter/composition.js";
 import { DENSITY, fillPlasma, POINT_LENGTH, TEMPERATURE } from "../matter/plasma.js";
+import { notesOf } from "../matter/species-list.js";
 import type { Contribution } from "./contribution.js";
 import { commonDomain } from "./domain.js";
 import { MEMBER_COUNT, moveMembers, type Order, SECOND_ORDER_COUNT } from "./free-energy.js";
@@ -91,7 +92,7 @@ export function evaluatorOf(parts: readonly Contribution[]): Evaluator {
 
   function fillSpecies(composition: Composition, rows: Float64Array): void {
     if (silent !== undefined) refuseSilent(silent);
-    const count = SPECIES_LENGTH * composition.species.length;
+    const count = SPECIES_LENGTH * notesOf(composition).list.nuclei.length;
     if (rows.length < count) {
       const allowed = `>= ${count} numbers: ${SPECIES_LENGTH} per species of ${composition.name}`;
       throw new FermistateError("length-mismatch", { argument: "rows", given: rows.length, allowed });

@@ -15,6 +15,7 @@
  * Where F depends on n_a = rho Y_a/m_u and T only (everything physical does), sum Y_a dF/dY_a = F + P/rho.
  */
 import type { Composition } from "../matter/composition.js";
+import { notesOf } from "../matter/species-list.js";
 import { ENERGY, ENTROPY, PRESSURE, PRESSURE_R, PRESSURE_T } from "./free-energy.js";
 
 /** Slot of de/dY_a, erg/g. */
@@ -37,8 +38,9 @@ export function addFromElectronDensity(members: Float64Array, composition: Compo
   const electrons = composition.electronsPerNucleon;
   if (electrons === 0) return;
   const thermal = members[PRESSURE_T]!;
-  for (let i = 0, row = 0; i < composition.species.length; i++, row += SPECIES_LENGTH) {
-    const share = composition.species[i]!.chargeNumber / electrons;
+  const { nuclei } = notesOf(composition).list;
+  for (let i = 0, row = 0; i < nuclei.length; i++, row += SPECIES_LENGTH) {
+    const share = nuclei[i]!.chargeNumber / electrons;
     rows[row + SPECIES_ENERGY]! += share * (members[ENERGY]! + members[PRESSURE]! - thermal);
     rows[row + SPECIES_ENTROPY]! += share * (members[ENTROPY]! - thermal);
     rows[row + SPECIES_PRESSURE]! += share * members[PRESSURE_R]!;
