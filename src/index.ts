@@ -22,7 +22,17 @@ export { type SearchColumn, type SolveInput, type SolveOutput, solveColumns } fr
 export type { GivenName, GivenPair, PairOf } from "./inverse/questions.js";
 export { type Given, type Guess, type Solution, type SolveOptions, solve } from "./inverse/solve.js";
 export { type IdealIonsOptions, idealIons } from "./ions/ideal-ions.js";
-export * from "./matter/composition.js";
+export {
+  type ChargeMoments,
+  type Composition,
+  type CompositionOptions,
+  composition,
+  type MeanNucleus,
+  type NucleonFractions,
+  requireComposition,
+  type Species,
+} from "./matter/composition.js";
+export { type CompositionInput, type CompositionRows, compositions } from "./matter/composition-rows.js";
 export { type Nuclide, nuclide, nuclides } from "./matter/nuclides.js";
 export { radiation } from "./radiation.js";
 export type { CaptureThreshold } from "./regime/capture.js";

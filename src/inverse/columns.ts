@@ -1,15 +1,9 @@
 /** Inverse questions by the column: each row starts from its neighbour's answer, nothing is allocated per row. */
 import { FermistateError, requireKnown } from "../errors.js";
-import { type Composition, requireComposition } from "../matter/composition.js";
+import type { Composition } from "../matter/composition.js";
+import { type CompositionInput, type CompositionSource, compositionSource } from "../matter/composition-rows.js";
 import { DENSITY, POINT_LENGTH, TEMPERATURE } from "../matter/point.js";
-import {
-  checkRefused,
-  isList,
-  refuseQuantity,
-  requireColumn,
-  requireObject,
-  requireRows,
-} from "../thermodynamics/columns.js";
+import { checkRefused, refuseQuantity, requireColumn, requireObject, requireRows } from "../thermodynamics/columns.js";
 import type { Domain } from "../thermodynamics/contribution.js";
 import { holds, refusePoint } from "../thermodynamics/domain.js";
 import type { EquationOfState, RefusedRows } from "../thermodynamics/equation-of-state.js";
@@ -37,8 +31,8 @@ import { solverFor } from "./solver.js";
 
 /** Input of {@link solveColumns}: two columns of given quantities, composition, and guesses. */
 export type SolveInput = GivenPair<Float64Array> & {
-  /** One composition for all rows, or one per row. */
-  readonly composition: Composition | readonly Composition[];
+  /** One composition for all rows, one per row, or a matrix of nucleon fractions with a row for each. */
+  readonly composition: CompositionInput;
   /**
    * Columns of starts (density, temperature). A row whose start is no positive number has none, and starts as all do without these
    * columns: from the answer of the row before.
@@ -82,16 +76,11 @@ export const ROWS_IN_A_CHAIN = 1024;
  * @throws as {@link solve}, with the row; `length-mismatch`, `unavailable-quantity`
  */
 export function solveColumns(equationOfState: EquationOfState, input: SolveInput, output: SolveOutput): void {
-  const { question, first, second, count, guessed, slots, columns, detail } = checkSolve(
-    equationOfState,
-    input,
-    output,
-  );
-  const { composition } = input;
-  const each = isList(composition) ? composition : undefined;
+  const checked = checkSolve(equationOfState, input, output);
+  const { question, first, second, count, compositions, guessed, slots, columns, detail } = checked;
   const { refused } = output;
   if (question.type < 0) {
-    direct(equationOfState, { density: first, temperature: second, composition }, output);
+    direct(equationOfState, { density: first, temperature: second, composition: input.composition }, output);
     return;
   }
 
@@ -106,7 +95,7 @@ export function solveColumns(equationOfState: EquationOfState, input: SolveInput
 
   /** Answers a row; the number of the reason where there is no answer and a column for it. */
   function answer(i: number): number {
-    const matter = each === undefined ? (composition as Composition) : each[i]!;
+    const matter = compositions.one ?? compositions.at(i);
     const starts = guessed !== undefined && isStart(guessed.density, i) && isStart(guessed.temperature, i);
     const follows = !starts && isNear(neighbour, matter) && w[TEMPERATURE_NOW]! > 0;
     if (follows) {
@@ -201,6 +190,7 @@ interface CheckedSolve {
   readonly second: Float64Array;
   /** Number of rows. */
   readonly count: number;
+  readonly compositions: CompositionSource;
   readonly guessed: SolveInput["guess"];
   /** Slots and columns of the quantities wanted, and whether the costly one is among them. */
   readonly slots: readonly number[];
@@ -215,14 +205,17 @@ export function checkSolve(equationOfState: EquationOfState, input: SolveInput, 
   const first = column(question.names[0], a);
   const second = column(question.names[1], b, first.length);
   const count = first.length;
-  const { composition } = input;
-  checkCompositions(composition, isList(composition) ? composition : undefined, count);
+  const compositions = compositionSource(input.composition);
+  if (compositions.rows !== undefined && compositions.rows !== count) {
+    const details = { argument: "composition", given: compositions.rows, allowed: `${count} rows` };
+    throw new FermistateError("length-mismatch", details);
+  }
   const guessed = guesses(input, count);
   const wanted = outputs(output, count);
   if (output.refused === undefined) {
     for (let i = 0; i < count; i++) checkGiven(equationOfState, question, first, second, i);
   }
-  return { question, first, second, count, guessed, ...wanted };
+  return { question, first, second, count, compositions, guessed, ...wanted };
 }
 
 /** Compositions near enough for the answer of one to lead to that of the other: matter that burns differs from zone to zone. */
@@ -238,21 +231,6 @@ function column(name: string, value: unknown, rows?: number): Float64Array {
   const found = value as Float64Array;
   if (rows === undefined || found.length === rows) return found;
   throw new FermistateError("length-mismatch", { argument: name, given: found.length, allowed: `${rows} rows` });
-}
-
-function checkCompositions(one: unknown, each: readonly Composition[] | undefined, count: number): void {
-  if (each === undefined) {
-    requireComposition(one);
-    return;
-  }
-  if (each.length !== count) {
-    throw new FermistateError("length-mismatch", {
-      argument: "composition",
-      given: each.length,
-      allowed: `${count} rows`,
-    });
-  }
-  for (const composition of each) requireComposition(composition);
 }
 
 /** A given value must be one that matter can have, and lie inside the domain. */

@@ -64,67 +64,6 @@ export function composition(fractions: NucleonFractions | MeanNucleus, options: 
 }
 
 /**
- * Many compositions of the same species, as a reaction network makes them in every zone and step: the same as
- * `composition` of each row, to the bit, several times faster.
- *
- * @param labels - nuclides, each once
- * @param fractions - nucleon fractions: one column per label, each with one number per row; or one array, row after
- * row, with the labels' fractions of a row side by side
- * @returns one composition per row, for `evaluate` and `solveColumns`
- * @throws FermistateError as {@link composition}, with the row; `length-mismatch`
- * @example
- * ```ts
- * import { compositions } from "fermistate";
- * const zones = compositions(["He4", "C12", "O16"], Float64Array.of(0.1, 0.4, 0.5, 0, 0.5, 0.5));
- * zones.map((zone) => zone.name); // => ["He4 0.1, C12 0.4, O16 0.5", "C12 0.5, O16 0.5"]
- * ```
- */
-export function compositions(
-  labels: readonly string[],
-  fractions: Float64Array | readonly Float64Array[],
-  options: CompositionOptions = {},
-): Composition[] {
-  const normalise = readOptions(options);
-  if (!Array.isArray(labels) || labels.length === 0) throw invalid(labels, "a list of at least one nuclide", "labels");
-  const list = speciesOf(labels);
-  const count = labels.length;
-  const columns = fractions instanceof Float64Array ? undefined : checkedColumns(fractions, count);
-  const rows = columns === undefined ? (fractions as Float64Array).length / count : columns[0]!.length;
-  if (!Number.isInteger(rows)) {
-    const details = { argument: "fractions", given: (fractions as Float64Array).length, allowed: `rows of ${count}` };
-    throw new FermistateError("length-mismatch", details);
-  }
-  const one = new Float64Array(count);
-  const sorted = new Float64Array(count);
-  const made = new Array<Composition>(rows);
-  for (let row = 0; row < rows; row++) {
-    for (let i = 0; i < count; i++) {
-      const fraction = columns === undefined ? (fractions as Float64Array)[row * count + i]! : columns[i]![row]!;
-      if (!(fraction >= 0 && fraction < Number.POSITIVE_INFINITY)) refuseFraction(labels[i]!, fraction, row);
-      one[i] = fraction;
-    }
-    made[row] = mixed(list, one, sorted, normalise, row);
-  }
-  return made;
-}
-
-function checkedColumns(given: unknown, count: number): readonly Float64Array[] {
-  const allowed = `a Float64Array of rows, or ${count} columns, each a Float64Array`;
-  if (!Array.isArray(given) || !given.every((column) => column instanceof Float64Array)) {
-    throw new FermistateError("invalid-option", { argument: "fractions", given, allowed });
-  }
-  const columns = given as readonly Float64Array[];
-  if (columns.length !== count) {
-    throw new FermistateError("length-mismatch", { argument: "fractions", given: columns.length, allowed });
-  }
-  const rows = columns[0]!.length;
-  const other = columns.find((column) => column.length !== rows);
-  if (other === undefined) return columns;
-  const details = { argument: "fractions", given: other.length, allowed: `${rows} rows, as the first column has` };
-  throw new FermistateError("length-mismatch", details);
-}
-
-/**
  * Throws `invalid-composition` unless `value` was made by {@link composition}, of this or another copy of the library
  * (ESM or CommonJS); returns it. Copies of a composition with other members do not pass.
  */
@@ -135,7 +74,8 @@ export function requireComposition(value: unknown): Composition {
   throw invalid(value, "a composition, as composition({ C12: 0.5, O16: 0.5 }) makes it", "composition");
 }
 
-function readOptions(options: CompositionOptions): boolean {
+/** Whether fractions are to be scaled. @throws `invalid-option` */
+export function readOptions(options: CompositionOptions): boolean {
   const given: Readonly<Record<string, unknown>> =
     typeof options === "object" ? { ...options } : { [String(options)]: 0 };
   const { normalise = false, ...others } = given;
@@ -162,32 +102,37 @@ function nuclei(entries: readonly (readonly [string, unknown])[], normalise: boo
   return mixed(list, fractions, new Float64Array(fractions.length), normalise);
 }
 
-function refuseFraction(label: string, given: unknown, row?: number): never {
+/** Throws the error of a fraction that is none. */
+export function refuseFraction(label: string, given: unknown, row?: number): never {
   const [argument, allowed] = [`fractions.${label}`, "a nucleon fraction from 0 to 1"];
   throw invalid(requireFinite(argument, given, allowed, row), allowed, argument, row);
 }
 
 /** The composition of fractions in the order of the labels, with room to sort them; `row` for the error message. */
-function mixed(
+export function mixed(
   list: SpeciesList,
   given: Float64Array,
   fractions: Float64Array,
   normalise: boolean,
   row?: number,
 ): Composition {
-  let sum = 0;
-  for (let i = 0; i < given.length; i++) sum += given[i]!;
-  const good = normalise ? sum > 0 && sum < Number.POSITIVE_INFINITY : Math.abs(sum - 1) <= sumTolerance;
-  if (!good) {
-    const one = `1 within ${sumTolerance}, or { normalise: true } and any positive finite sum`;
-    throw invalid(sum, one, "sum of fractions", row);
-  }
+  const sum = checkedSum(given, normalise, row);
   const { order } = list;
   for (let i = 0; i < order.length; i++) {
     const fraction = given[order[i]!]!;
     fractions[i] = normalise ? fraction / sum : fraction;
   }
   return compositionOf(list, fractions);
+}
+
+/** The sum of fractions. @throws `invalid-composition` where it is not what it must be */
+export function checkedSum(given: Float64Array, normalise: boolean, row?: number): number {
+  let sum = 0;
+  for (let i = 0; i < given.length; i++) sum += given[i]!;
+  const good = normalise ? sum > 0 && sum < Number.POSITIVE_INFINITY : Math.abs(sum - 1) <= sumTolerance;
+  if (good) return sum;
+  const one = `1 within ${sumTolerance}, or { normalise: true } and any positive finite sum`;
+  throw invalid(sum, one, "sum of fractions", row);
 }
 
 function meanNucleus(entries: readonly (readonly [string, unknown])[]): Composition {
@@ -205,7 +150,8 @@ function meanNucleus(entries: readonly (readonly [string, unknown])[]): Composit
   return compositionOf(speciesList([species]), Float64Array.of(1));
 }
 
-function invalid(given: unknown, allowed: string, argument = "fractions", row?: number): FermistateError {
+/** The error of something that is no composition. */
+export function invalid(given: unknown, allowed: string, argument = "fractions", row?: number): FermistateError {
   return new FermistateError("invalid-composition", withIndex({ argument, given, allowed }, row));
 }
 

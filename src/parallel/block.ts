@@ -5,7 +5,8 @@
 import { type ErrorCode, FermistateError } from "../errors.js";
 import { type SolveInput, type SolveOutput, solveColumns } from "../inverse/columns.js";
 import { type Composition, composition, type MeanNucleus, type NucleonFractions } from "../matter/composition.js";
-import { compositionOf, speciesOf } from "../matter/species-list.js";
+import { areRows, type CompositionInput, type CompositionRows } from "../matter/composition-rows.js";
+import { compositionOf, notesOf, speciesOf } from "../matter/species-list.js";
 import type { BatchInput, BatchOutput, EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { asFailure, type PlainSource } from "./matter-source.js";
 
@@ -14,10 +15,10 @@ export type Columns = Readonly<Record<string, Float64Array | Uint8Array>>;
 
 /** What can be done with rows; each writes the output columns it is given and throws errors with the row. */
 const tasks = {
-  evaluate(matter: EquationOfState, input: Columns, composition: Composition | Composition[], output: Columns): void {
+  evaluate(matter: EquationOfState, input: Columns, composition: CompositionInput, output: Columns): void {
     matter.evaluate({ ...input, composition } as BatchInput, output as BatchOutput);
   },
-  solve(matter: EquationOfState, input: Columns, composition: Composition | Composition[], output: Columns): void {
+  solve(matter: EquationOfState, input: Columns, composition: CompositionInput, output: Columns): void {
     const { "guess.density": density, "guess.temperature": temperature, ...given } = input;
     const guess = { ...(density && { density }), ...(temperature && { temperature }) };
     solveColumns(matter, { ...given, composition, guess } as object as SolveInput, output as SolveOutput);
@@ -42,8 +43,9 @@ export interface Block {
   readonly which?: Uint32Array;
 }
 
-/** Compositions as plain data: nucleon fractions row by row over the labels, or mean nuclei. */
+/** Compositions as plain data: nucleon fractions row by row over the labels, or mean nuclei; or those of the whole batch. */
 type PackedCompositions =
+  | { readonly matrix: CompositionRows }
   | { readonly labels: readonly string[]; readonly fractions: Float64Array }
   | { readonly single: readonly (NucleonFractions | MeanNucleus)[] };
 
@@ -70,20 +72,34 @@ export interface PlainError {
 
 /** Does a block's task in this thread. */
 export function run(matter: EquationOfState, block: Block): void {
-  const { task, from, to, input, output, compositions, which } = block;
+  const { task, from, to, input, output } = block;
   const rows = (columns: Columns): Columns =>
     Object.fromEntries(Object.entries(columns).map(([name, column]) => [name, column.subarray(from, to)]));
+  tasks[task](matter, rows(input), compositionsOf(block), rows(output));
+}
+
+function compositionsOf({ compositions, which, from, to }: Block): CompositionInput {
+  if ("matrix" in compositions) return slice(compositions.matrix, from, to);
   const made = unpackCompositions(compositions);
-  const each = which === undefined ? made[0]! : Array.from(which, (place) => made[place]!);
-  tasks[task](matter, rows(input), each, rows(output));
+  return which === undefined ? made[0]! : Array.from(which, (place) => made[place]!);
+}
+
+/** Some rows of a matrix of fractions. */
+function slice({ nuclides, fractions, ...options }: CompositionRows, from: number, to: number): CompositionRows {
+  const rows =
+    fractions instanceof Float64Array
+      ? fractions.subarray(from * nuclides.length, to * nuclides.length)
+      : fractions.map((column) => column.subarray(from, to));
+  return { nuclides, fractions: rows, ...options };
 }
 
 /** Compositions of rows `from` to `to` as plain data. */
 export function packCompositions(
-  given: Composition | readonly Composition[],
+  given: CompositionInput,
   from: number,
   to: number,
 ): Pick<Block, "compositions" | "which"> {
+  if (areRows(given)) return { compositions: { matrix: given } };
   if (!Array.isArray(given)) return { compositions: packed([given as Composition]) };
   const places = new Map<Composition, number>();
   const which = new Uint32Array(to - from);
@@ -102,19 +118,21 @@ export function packCompositions(
 /** A matrix over all labels that occur: sending and reading objects would cost more than the rows. */
 function packed(compositions: readonly Composition[]): PackedCompositions {
   const places = new Map<string, number>();
-  for (const { species } of compositions) {
-    for (const { label } of species) if (!places.has(label)) places.set(label, places.size);
+  const made = compositions.map(notesOf);
+  for (const list of new Set(made.map((one) => one.list))) {
+    for (const { label } of list.nuclei) if (!places.has(label)) places.set(label, places.size);
   }
   if (places.has("mean")) return { single: compositions.map(fractionsOf) };
   const fractions = new Float64Array(compositions.length * places.size);
-  for (const [row, { species }] of compositions.entries()) {
-    for (const one of species) fractions[row * places.size + places.get(one.label)!] = one.nucleonFraction;
+  for (const [row, { list, fractions: given }] of made.entries()) {
+    for (let i = 0; i < given.length; i++)
+      fractions[row * places.size + places.get(list.nuclei[i]!.label)!] = given[i]!;
   }
   return { labels: [...places.keys()], fractions };
 }
 
 /** The same compositions, to the bit: what was checked once is not checked again. */
-function unpackCompositions(given: PackedCompositions): Composition[] {
+function unpackCompositions(given: Exclude<PackedCompositions, { readonly matrix: CompositionRows }>): Composition[] {
   if ("single" in given) return given.single.map((data) => composition(data));
   const list = speciesOf(given.labels);
   const count = given.labels.length;

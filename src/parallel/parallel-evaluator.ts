@@ -2,7 +2,7 @@
 import { availableParallelism } from "node:os";
 import { FermistateError } from "../errors.js";
 import { checkSolve, ROWS_IN_A_CHAIN, type SolveInput, type SolveOutput, solveColumns } from "../inverse/columns.js";
-import type { Composition } from "../matter/composition.js";
+import { areRows, type CompositionInput } from "../matter/composition-rows.js";
 import { checkBatch } from "../thermodynamics/columns.js";
 import type { BatchInput, BatchOutput, EquationOfState } from "../thermodynamics/equation-of-state.js";
 import {
@@ -15,7 +15,7 @@ import {
   unpackError,
 } from "./block.js";
 import { asFailure, loadMatter, type MatterSource, plainSource, refuseNesting } from "./matter-source.js";
-import { sharedMemory } from "./shared-columns.js";
+import { type SharedColumns, sharedMemory } from "./shared-columns.js";
 import { isThread } from "./thread-mark.js";
 import { startThreads, type Threads } from "./threads.js";
 
@@ -53,8 +53,9 @@ export interface BatchThreads {
    * Plain columns are copied to the threads and back: what the caller does to the input while the batch runs has no effect,
    * and a refused batch leaves the output as it was. The memory of the copies is kept for the next batch, until
    * {@link BatchThreads.close}. Columns over a `SharedArrayBuffer` are used in place: leave them alone
-   * until the promise is settled; a refused batch leaves some rows written. Fewer than 4096 rows, or rows that
-   * bring a new composition more often than every second, are done in the calling thread, which is faster there.
+   * until the promise is settled; a refused batch leaves some rows written. Fewer than 4096 rows,
+   * or rows that bring a new composition object more often than every second, are done in the calling thread, which is
+   * faster there: give the compositions of a network as a matrix (`CompositionRows`).
    *
    * @throws (rejects with) the errors of `EquationOfState.evaluate`, the first row that one thread would have refused;
    * `worker-failed` where a thread dies or a contribution throws an error that is not the library's. The threads are
@@ -79,10 +80,10 @@ export interface BatchThreads {
  */
 const smallestBatch = 4096;
 /**
- * Making a composition in a thread and packing it here costs as much as one or two rows: with fewer rows each, two
- * threads gain nothing.
+ * Composition objects must be packed here and made again in a thread: where every second row brings a new one, two threads
+ * gain nothing. A matrix of fractions is shared.
  */
-const rowsPerComposition = 2;
+const rowsPerObject = 2;
 /** Rows of a block: long against a message, short enough that threads end together. */
 const blockRows: readonly [fewest: number, most: number] = [1024, 16384];
 
@@ -154,7 +155,7 @@ export async function parallelEvaluator(
     task: TaskName,
     rows: number,
     input: Columns,
-    composition: Composition | readonly Composition[],
+    composition: CompositionInput,
     output: Columns,
   ): Promise<void> {
     const [fewest, most] = blockRows;
@@ -186,11 +187,11 @@ export async function parallelEvaluator(
     task: TaskName,
     rows: number,
     input: Columns,
-    composition: Composition | readonly Composition[],
+    composition: CompositionInput,
     output: Columns,
     serial: () => void,
   ): Promise<void> {
-    if (rows < smallestBatch || bringsManyCompositions(composition)) {
+    if (rows < smallestBatch || areManyObjects(composition)) {
       try {
         serial();
       } catch (error) {
@@ -204,7 +205,7 @@ export async function parallelEvaluator(
     try {
       const answers = mapped(output, (column) => shared.share(column, rows, keeps));
       const inputs = mapped(input, (column) => shared.share(column, rows, true));
-      await spread(task, rows, inputs, Array.isArray(composition) ? [...composition] : composition, answers);
+      await spread(task, rows, inputs, copied(composition, rows, shared), answers);
       for (const [name, column] of Object.entries(output)) {
         const answer = answers[name]!;
         if (answer !== column) column.set(answer); // a longer column keeps the rest
@@ -216,7 +217,7 @@ export async function parallelEvaluator(
 
   async function evaluate(input: BatchInput, output: BatchOutput): Promise<void> {
     if (closed) throw closedError();
-    const rows = checkBatch(own, input, output);
+    const { count: rows } = checkBatch(own, input, output);
     const { density, temperature, composition } = input;
     await run("evaluate", rows, { density, temperature }, composition, asColumns(output), () =>
       own.evaluate(input, output),
@@ -249,8 +250,20 @@ function before(a: PlainError, b: PlainError): boolean {
   return (a.index ?? Number.POSITIVE_INFINITY) < (b.index ?? Number.POSITIVE_INFINITY);
 }
 
-function bringsManyCompositions(composition: Composition | readonly Composition[]): boolean {
-  return Array.isArray(composition) && new Set(composition).size * rowsPerComposition > composition.length;
+function areManyObjects(composition: CompositionInput): boolean {
+  return Array.isArray(composition) && new Set(composition).size * rowsPerObject > composition.length;
+}
+
+/** Compositions that the caller cannot change any more, a matrix in shared memory. */
+function copied(composition: CompositionInput, rows: number, shared: SharedColumns): CompositionInput {
+  if (Array.isArray(composition)) return [...composition];
+  if (!areRows(composition)) return composition;
+  const { nuclides, fractions, ...options } = composition;
+  const copy =
+    fractions instanceof Float64Array
+      ? shared.share(fractions, rows * nuclides.length, true)
+      : fractions.map((column) => shared.share(column, rows, true));
+  return { nuclides: [...nuclides], fractions: copy, ...options };
 }
 
 /** The columns of an output that are there. */

@@ -1,17 +1,19 @@
 /** Columns of a batch: what is checked before the first row is written. */
 import { FermistateError } from "../errors.js";
-import { type Composition, requireComposition } from "../matter/composition.js";
+import { type CompositionSource, compositionSource } from "../matter/composition-rows.js";
 import { firstOutside, refusePoint } from "./domain.js";
 import type { BatchInput, BatchOutput, EquationOfState } from "./equation-of-state.js";
 import { optionalQuantities, type QuantityName, quantities, quantityNames } from "./quantities.js";
 
-/** True where there is one composition per row. */
-export function isList(value: Composition | readonly Composition[]): value is readonly Composition[] {
-  return Array.isArray(value);
+/** A checked batch. */
+export interface CheckedBatch {
+  /** Number of rows. */
+  readonly count: number;
+  readonly compositions: CompositionSource;
 }
 
 /**
- * Checks every column of a batch, every composition and every point; returns the number of rows.
+ * Checks every column of a batch, every composition and every point.
  *
  * @throws `invalid-option`, `length-mismatch`, `invalid-composition`, `unavailable-quantity`, and as `state`, with the row
  */
@@ -19,10 +21,11 @@ export function checkBatch(
   equationOfState: Pick<EquationOfState, "contributions" | "domain">,
   input: BatchInput,
   output: BatchOutput,
-): number {
+): CheckedBatch {
   requireObject("input", input);
   requireObject("output", output);
-  const count = checkInput(input);
+  const checked = checkInput(input);
+  const { count } = checked;
   checkRefused(output.refused, count);
   for (const [name, column] of Object.entries(output)) {
     if (column === undefined || name === "refused") continue;
@@ -33,7 +36,7 @@ export function checkBatch(
     requireRows(name, column, count);
   }
   if (output.refused === undefined) checkPoints(equationOfState, input);
-  return count;
+  return checked;
 }
 
 /** Throws unless a column of refusals is a Uint8Array with room for `count` rows, or left out. */
@@ -47,21 +50,18 @@ export function checkRefused(refused: unknown, count: number): void {
   throw new FermistateError("length-mismatch", { argument: "refused", given: refused.length, allowed });
 }
 
-/** Checks the columns of the input and every composition; returns the number of rows. */
-export function checkInput({ density, temperature, composition }: BatchInput): number {
+/** Checks the columns of the input and every composition. */
+export function checkInput({ density, temperature, composition }: BatchInput): CheckedBatch {
   for (const [argument, column] of Object.entries({ density, temperature })) requireColumn(argument, column);
   const count = density.length;
-  const lengths: [string, number][] = [["temperature", temperature.length]];
-  if (isList(composition)) {
-    lengths.push(["composition", composition.length]);
-    for (let i = 0; i < composition.length; i++) requireComposition(composition[i]);
-  } else requireComposition(composition);
-  for (const [argument, given] of lengths) {
+  const compositions = compositionSource(composition);
+  const lengths = { temperature: temperature.length, composition: compositions.rows ?? count };
+  for (const [argument, given] of Object.entries(lengths)) {
     if (given !== count) {
       throw new FermistateError("length-mismatch", { argument, given, allowed: `${count} rows, as density has` });
     }
   }
-  return count;
+  return { count, compositions };
 }
 
 /** Throws for the first row outside the domain. */

@@ -2,7 +2,7 @@
 import { FermistateError } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
-import { checkBatch, isList, refuseQuantity } from "./columns.js";
+import { checkBatch, refuseQuantity } from "./columns.js";
 import type { Contribution } from "./contribution.js";
 import { commonDomain, holds, refusePoint } from "./domain.js";
 import type { BatchInput, BatchOutput, EquationOfState, FreeEnergyDerivatives, State } from "./equation-of-state.js";
@@ -63,9 +63,9 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
   }
 
   function evaluate(input: BatchInput, output: BatchOutput): void {
-    const count = checkBatch({ contributions: parts, domain }, input, output);
-    const { density, temperature, composition } = input;
-    const each = isList(composition) ? composition : undefined;
+    const { count, compositions } = checkBatch({ contributions: parts, domain }, input, output);
+    const { density, temperature } = input;
+    const { one } = compositions;
     const slots: number[] = [];
     const columns: Float64Array[] = [];
     for (let slot = 0; slot < QUANTITY_COUNT; slot++) {
@@ -78,7 +78,7 @@ export function combine(...contributions: readonly Contribution[]): EquationOfSt
     const detail = output.positronDensity !== undefined;
     const { refused } = output;
     for (let i = 0; i < count; i++) {
-      const matter = each === undefined ? (composition as Composition) : each[i]!;
+      const matter = one ?? compositions.at(i);
       point[DENSITY] = density[i]!;
       point[TEMPERATURE] = temperature[i]!;
       if (refused === undefined) {

@@ -9,7 +9,7 @@ import { FermistateError, withIndex } from "../errors.js";
 import { type Composition, requireComposition } from "../matter/composition.js";
 import { DENSITY, TEMPERATURE } from "../matter/plasma.js";
 import { BRACKET_COUNT, bracketSlot, fillBrackets, type StateVariable, stateVariables } from "./brackets.js";
-import { checkInput, checkPoints, isList, requireObject, requireRows } from "./columns.js";
+import { checkInput, checkPoints, requireObject, requireRows } from "./columns.js";
 import { holds, refusePoint } from "./domain.js";
 import type { BatchInput, EquationOfState } from "./equation-of-state.js";
 import type { Order } from "./free-energy.js";
@@ -183,15 +183,14 @@ export function derivativesEvaluator<const Of extends DifferentiableQuantity, co
 
   function evaluate(input: BatchInput, output: DerivativeColumns<Of, By>): void {
     requireObject("input", input);
-    const count = checkInput(input);
+    const { count, compositions } = checkInput(input);
     const columns = columnsOf(of, by, output, count);
     checkPoints(equationOfState, input);
-    const { density, temperature, composition } = input;
-    const each = isList(composition) ? composition : undefined;
+    const { density, temperature } = input;
     for (let i = 0; i < count; i++) {
       point[DENSITY] = density[i]!;
       point[TEMPERATURE] = temperature[i]!;
-      fill(each === undefined ? (composition as Composition) : each[i]!, i);
+      fill(compositions.one ?? compositions.at(i), i);
       for (let j = 0; j < columns.length; j++) columns[j]![1][i] = values[columns[j]![0]]!;
     }
   }

@@ -6,6 +6,7 @@
  * 2 m_e c^2 of every electron-positron pair.
  */
 import type { Composition } from "../matter/composition.js";
+import type { CompositionInput } from "../matter/composition-rows.js";
 import type { Contribution, Domain } from "./contribution.js";
 import type { Evaluator } from "./evaluator.js";
 import type { Order } from "./free-energy.js";
@@ -39,8 +40,8 @@ export interface BatchInput {
   readonly density: Float64Array;
   /** Temperature, K. */
   readonly temperature: Float64Array;
-  /** One composition for all rows, or one per row. */
-  readonly composition: Composition | readonly Composition[];
+  /** One composition for all rows, one per row, or a matrix of nucleon fractions with a row for each. */
+  readonly composition: CompositionInput;
 }
 
 /** A column of the reasons for which rows are refused. */

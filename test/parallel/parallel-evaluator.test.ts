@@ -1,7 +1,8 @@
 /** Batches on threads: the numbers and the errors of one thread, and what happens when code or threads fail. */
 import { afterAll, afterEach, beforeAll, describe, expect, test, vi } from "vitest";
 import type { FermistateError } from "../../src/errors.js";
-import { type Composition, composition, compositions } from "../../src/matter/composition.js";
+import { type Composition, composition } from "../../src/matter/composition.js";
+import { compositions } from "../../src/matter/composition-rows.js";
 import type { Answer } from "../../src/parallel/block.js";
 import { type MatterSource, type ParallelEvaluator, parallelEvaluator } from "../../src/parallel/index.js";
 import type * as ThreadsRoom from "../../src/parallel/threads.js";
