@@ -1,6 +1,7 @@
 /**
  * One process of the benchmark of compositions: a batch in which every row brings a new composition of the same
- * species, as in a reaction network, against the same batch with one composition; and what making them costs.
+ * species, as in a reaction network, against the same batch with one composition; what making them costs; and the
+ * derivatives by every species.
  * Prints JSON, times in units of a row of the batch with one composition.
  */
 import { composition, compositions, whiteDwarfMatter } from "../dist/index.js";
@@ -39,7 +40,9 @@ const found = networks.map((labels) => {
     Object.fromEntries(labels.map((label, i) => [label, fractions[row * labels.length + i]]));
   const objects = Array.from({ length: rows }, (_, row) => fractionsOf(row));
   const one = composition(objects[0]);
-  const ratios = { single: [], matrix: [], first: [], again: [] };
+  const ratios = { single: [], objects: [], first: [], again: [], matrix: [], species: [] };
+  const evaluator = matter.evaluator();
+  const derivatives = new Float64Array(4 * labels.length);
   const directs = [];
   for (let i = 0; i < 41; i++) {
     const direct = time(() => matter.evaluate({ density, temperature, composition: one }, output));
@@ -48,13 +51,25 @@ const found = networks.map((labels) => {
     const making = time(() => {
       made = compositions(labels, fractions);
     });
-    ratios.matrix.push(making / direct);
+    ratios.objects.push(making / direct);
     const evaluate = () => matter.evaluate({ density, temperature, composition: made }, output);
     ratios.first.push(time(evaluate) / direct);
     ratios.again.push(time(evaluate) / direct);
+    const zones = { nuclides: labels, fractions };
+    ratios.matrix.push(time(() => matter.evaluate({ density, temperature, composition: zones }, output)) / direct);
+    made = compositions(labels, fractions);
+    const bySpecies = time(() => {
+      for (let row = 0; row < rows; row++) {
+        evaluator.point[0] = density[row];
+        evaluator.point[1] = temperature[row];
+        evaluator.fillMembers(made[row], 2);
+        evaluator.fillSpecies(made[row], derivatives);
+      }
+    });
+    ratios.species.push(bySpecies / direct);
     directs.push(direct);
   }
   const medians = Object.fromEntries(Object.entries(ratios).map(([name, values]) => [name, median(values)]));
-  return { species: labels.length, direct: median(directs), ...medians };
+  return { nuclides: labels.length, direct: median(directs), ...medians };
 });
 process.stdout.write(JSON.stringify(found));

@@ -129,11 +129,13 @@ for (const [i, { density, temperature, evaluations }] of inverses[0]!.entries())
 }
 
 interface CompositionTiming {
-  readonly species: number;
+  readonly nuclides: number;
   readonly single: number;
-  readonly matrix: number;
+  readonly objects: number;
   readonly first: number;
   readonly again: number;
+  readonly matrix: number;
+  readonly species: number;
 }
 const networks = Array.from(
   { length: processes },
@@ -145,12 +147,12 @@ const networks = Array.from(
 console.log(
   "\na new composition in each of 1024 zones, in units of an evaluation of the full plasma with one composition:",
 );
-for (const [i, { species }] of networks[0]!.entries()) {
-  const show = (key: "single" | "matrix" | "first" | "again"): string =>
-    median(networks.map((rows) => rows[i]![key])).toFixed(2);
+for (const [i, { nuclides }] of networks[0]!.entries()) {
+  const show = (key: keyof CompositionTiming): string => median(networks.map((rows) => rows[i]![key])).toFixed(2);
   console.log(
-    `  ${species} nuclides: making it ${show("matrix")} (${show("single")} one by one),`,
-    `its first evaluation ${show("first")}, each further one ${show("again")}`,
+    `  ${nuclides} nuclides: from a matrix of fractions ${show("matrix")}; as objects: making it ${show("objects")}`,
+    `(${show("single")} one by one), its first evaluation ${show("first")}, each further one ${show("again")};`,
+    `evaluation and derivatives by all species ${show("species")}`,
   );
 }
 

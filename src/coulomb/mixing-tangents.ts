@@ -18,6 +18,7 @@ import {
   PAIR_VALUE,
 } from "./mixing.js";
 import {
+  ION_X,
   POINT_GAMMA_E,
   POINT_LOG_GAMMA_E,
   POINT_ROOT_GAMMA_E,
@@ -76,10 +77,14 @@ export function fillLiquidTangents(tangents: Float64Array, composition: Composit
 /** What all species share of the liquid's departure at a point. */
 const shared = new Float64Array(8);
 
-/**
- * Prepares {@link addLiquidTangent} at a point. `share`: number fraction of charged nuclei.
- */
-export function prepareLiquidTangents(point: Float64Array, mixture: LiquidMixture, share: number): void {
+/** Prepares {@link addLiquidTangent} at a point. `ions`: records of the charged species. */
+export function prepareLiquidTangents(
+  point: Float64Array,
+  mixture: LiquidMixture,
+  ions: readonly Float64Array[],
+): void {
+  let share = 0;
+  for (let i = 0; i < ions.length; i++) share += ions[i]![ION_X]!;
   const { alpha, beta } = mixture;
   const logarithm = point[POINT_LOG_GAMMA_E]! + mixture.logCoupling; // ln G
   const power = Math.exp(alpha * logarithm);
@@ -130,16 +135,15 @@ export function addLiquidTangent(u: Float64Array, tangents: Float64Array, at: nu
 
 const pair = new Float64Array(PAIR_LENGTH);
 
-/** Fills the slot of the alloy's deviation with d(N f)/dY_a times `energy`, f in e^2/a_e. */
-export function fillAlloyTangents(tangents: Float64Array, composition: Composition, energy: number): void {
+/** Fills the slot of the alloy's deviation with d(N f)/dY_a, f in e^2/a_e. */
+export function fillAlloyTangents(tangents: Float64Array, composition: Composition): void {
   const { nuclei, firstCharged, powers } = notesOf(composition).list;
   const numbers = numberFractionsOf(composition);
   const count = nuclei.length;
-  const slotOf = (place: number): number => (place - firstCharged) * TANGENT_LENGTH + TANGENT_ALLOY;
   let total = 0;
   for (let i = firstCharged; i < count; i++) {
     total += numbers[i]!;
-    tangents[slotOf(i)] = 0;
+    tangents[slotOf(i, firstCharged)] = 0;
   }
   // Isotopes are neighbours: the first of a charge stands for all.
   let sum = 0;
@@ -161,14 +165,18 @@ export function fillAlloyTangents(tangents: Float64Array, composition: Compositi
       const slope = pair[PAIR_SLOPE]!;
       const unit = powers.fiveThirds[i]!;
       sum += unit * light * heavy * value;
-      tangents[slotOf(i)]! += unit * (heavy * value - light * y * slope);
-      tangents[slotOf(j)]! += unit * light * (value + (1 - y) * slope);
+      tangents[slotOf(i, firstCharged)]! += unit * (heavy * value - light * y * slope);
+      tangents[slotOf(j, firstCharged)]! += unit * light * (value + (1 - y) * slope);
     }
   }
   for (let i = firstCharged, next: number; i < count; i = next) {
-    const value = energy * (tangents[slotOf(i)]! - sum);
+    const value = tangents[slotOf(i, firstCharged)]! - sum;
     for (next = i; next < count && nuclei[next]!.chargeNumber === nuclei[i]!.chargeNumber; next++) {
-      tangents[slotOf(next)] = value;
+      tangents[slotOf(next, firstCharged)] = value;
     }
   }
+}
+
+function slotOf(place: number, firstCharged: number): number {
+  return (place - firstCharged) * TANGENT_LENGTH + TANGENT_ALLOY;
 }

@@ -86,8 +86,9 @@ export function addSpeciesDerivatives(
   unit[0] = boltzmannPerGram * point[POINT_TEMPERATURE]!;
   for (let i = 0; i < 6; i++) electrons[i] = 0;
   if (terms.exchange) addExchangeCorrelation(electrons, 2, point);
-  const departs = terms.liquidMixture && species.mixture !== undefined && !crystal && charges(species) > 1;
-  if (departs) prepareDeparture(choice, species, ions, point);
+  const { mixture } = species;
+  const departs = terms.liquidMixture && mixture !== undefined && !crystal && charges(species) > 1;
+  if (departs) prepareLiquidTangents(point, choice.polarisable ? mixture.polarisable : mixture.rigid, ions);
   if (terms.polarisation && !crystal) preparePolarisation(2, point);
   for (let i = 0; i < ions.length; i++) {
     const ion = ions[i]!;
@@ -130,17 +131,6 @@ export function addSpeciesDerivatives(
 
 function charges({ composition }: CoulombSpecies): number {
   return notesOf(composition).list.charges;
-}
-
-function prepareDeparture(
-  { polarisable }: Choice,
-  { mixture }: CoulombSpecies,
-  ions: readonly Float64Array[],
-  point: Float64Array,
-): void {
-  let share = 0;
-  for (let i = 0; i < ions.length; i++) share += ions[i]![ION_X]!;
-  prepareLiquidTangents(point, polarisable ? mixture!.polarisable : mixture!.rigid, share);
 }
 
 function addLiquidNucleus({ terms }: Choice, ion: Float64Array, point: Float64Array): void {

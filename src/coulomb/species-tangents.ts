@@ -15,6 +15,7 @@ import { fillAlloyTangents, fillLiquidTangents } from "./mixing-tangents.js";
 import {
   ION_GAMMA,
   ION_THETA,
+  TANGENT_ALLOY,
   TANGENT_ANHARMONIC,
   TANGENT_LENGTH,
   TANGENT_MADELUNG,
@@ -46,7 +47,7 @@ export function fillTangentsOfCrystal(
 ): void {
   const { nuclei, firstCharged } = notesOf(composition).list;
   fillPerElectron(tangents, composition);
-  fillAlloyTangents(tangents, composition, boltzmannPerGram * gammaE);
+  fillAlloyTangents(tangents, composition);
   const numbers = numberFractionsOf(composition);
   let share = 0;
   for (let i = firstCharged; i < nuclei.length; i++) share += numbers[i]!;
@@ -57,6 +58,7 @@ export function fillTangentsOfCrystal(
     const gamma = ions[i]![ION_GAMMA]!;
     const relative = chargeNumber / meanCharge;
     const mixing = Math.log((numbers[firstCharged + i]! / share) * relative) + 1 - relative;
+    tangents[at + TANGENT_ALLOY]! *= boltzmannPerGram * gammaE;
     tangents[at + TANGENT_MADELUNG] = boltzmannPerGram * lattice.madelung * gamma;
     tangents[at + TANGENT_ZERO_POINT] = boltzmannPerGram * 1.5 * lattice.u1 * theta;
     tangents[at + TANGENT_ANHARMONIC] = (-boltzmannPerGram * lattice.anharmonicQuantum * theta * theta) / gamma;

@@ -59,11 +59,13 @@ export function notesOf(composition: Composition): Notes {
 
 /** Number fractions of a composition's species, in their order; good until the next call. */
 export function numberFractionsOf(composition: Composition): Float64Array {
-  const { list, fractions } = notesOf(composition);
-  return fillNumberFractions(list, fractions, composition.ionsPerNucleon);
+  return fillNumberFractions(notesOf(composition), composition);
 }
 
-function fillNumberFractions({ massNumbers }: SpeciesList, fractions: readonly number[], ions: number): Float64Array {
+/** Takes the nuclei per nucleon from where they stand: as a number they would be boxed. */
+function fillNumberFractions({ list, fractions }: Notes, sums: Pick<Composition, "ionsPerNucleon">): Float64Array {
+  const { massNumbers } = list;
+  const ions = sums.ionsPerNucleon;
   const numbers = scratch(fractions.length);
   for (let i = 0; i < fractions.length; i++) numbers[i] = fractions[i]! / massNumbers[i]! / ions;
   return numbers;
@@ -202,7 +204,9 @@ class SummedComposition implements Composition {
       electrons += fraction * (nuclei[i]!.chargeNumber / massNumber); // Z/A first: 0.5 exactly for the usual nuclei
       if (i >= firstCharged) charged += nuclides;
     }
-    const numbers = fillNumberFractions(list, fractions, ions);
+    this.ionsPerNucleon = ions;
+    this.#notes = { list, fractions };
+    const numbers = fillNumberFractions(this.#notes, this);
     let charge = 0;
     let frequency = 0;
     for (let i = firstCharged; i < count; i++) {
@@ -211,7 +215,6 @@ class SummedComposition implements Composition {
       frequency += (numbers[i]! * chargeNumber ** 2) / ionMass;
     }
     const constant = entropyConstant(list, numbers, 0);
-    this.ionsPerNucleon = ions;
     this.electronsPerNucleon = electrons;
     this.meanMassNumber = 1 / ions;
     this.meanCharge = charge;
@@ -223,7 +226,6 @@ class SummedComposition implements Composition {
     this.chargedIonsPerGram = charged / atomicMassConstant;
     this.chargedIonEntropyConstant = firstCharged === 0 ? constant : entropyConstant(list, numbers, firstCharged);
     this.plasmaFrequencySum = frequency;
-    this.#notes = { list, fractions };
     Object.freeze(this);
   }
 

@@ -48,7 +48,7 @@ function walk(density0: number, temperature0: number) {
 // scatter.
 describe.each([
   ["degenerate liquid", 1e6, 5e7, 2.02],
-  ["relativistic liquid", 1e9, 1e8, 2.06],
+  ["relativistic liquid", 1e9, 1e8, 2.07],
   ["gas", 10, 1e7, 2.01],
   ["pairs", 1e5, 3e9, 2.01],
   ["crystal", 1e7, 3e6, 2.03],

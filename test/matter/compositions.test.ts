@@ -1,11 +1,15 @@
 /** Many compositions at once are those that composition() makes one by one, to the bit, also in a batch. */
+import { inspect } from "node:util";
 import { describe, expect, test } from "vitest";
 import {
+  type CompositionRows,
   composition,
   compositions,
+  derivativesEvaluator,
   type FermistateError,
   isFermistateError,
   requireComposition,
+  solveColumns,
   whiteDwarfMatter,
 } from "../../src/index.js";
 
@@ -37,7 +41,7 @@ describe("compositions", () => {
   );
   const row = (i: number) => Object.fromEntries(labels.map((label, j) => [label, columns[j]?.[i] as number]));
   /** Every member, name and species included. */
-  const all = (made: ReturnType<typeof composition>) => ({ ...made, name: made.name, moments: made.chargeMoments });
+  const all = (made: ReturnType<typeof composition>) => JSON.parse(JSON.stringify(made)) as object;
 
   test("row by row and column by column: those of composition(), to the bit", () => {
     const byRow = compositions(labels, fractions);
@@ -91,4 +95,101 @@ describe("compositions", () => {
       "invalid-option",
     );
   });
+});
+
+describe("a matrix of fractions in a batch", () => {
+  const nuclides = ["O16", "He4", "C12", "n", "C13"];
+  const rows = 60;
+  let seed = 7;
+  const random = (): number => {
+    seed = (seed * 48271) % 2147483647;
+    return seed / 2147483647;
+  };
+  const shares = Float64Array.from({ length: rows * nuclides.length }, () => (random() < 0.3 ? 0 : random()));
+  for (let row = 0; row < rows; row++) shares[row * nuclides.length] = 0.1 + random(); // no row is empty
+  const columns = nuclides.map((_, i) =>
+    Float64Array.from({ length: rows }, (_, row) => shares[row * nuclides.length + i] as number),
+  );
+  const density = Float64Array.from({ length: rows }, () => 10 ** (4 + 5 * random()));
+  const temperature = Float64Array.from({ length: rows }, () => 10 ** (7 + 2 * random()));
+  const list = compositions(nuclides, shares, { normalise: true });
+  const matrices = [
+    { nuclides, fractions: shares, normalise: true },
+    { nuclides, fractions: columns, normalise: true },
+  ] as const;
+
+  test("states, derivatives and inverse questions of the same compositions as objects, to the bit", () => {
+    const matter = whiteDwarfMatter();
+    const column = () => new Float64Array(rows);
+    const wanted = () => ({ pressure: column(), specificEnergy: column(), gamma1: column(), ionCoupling: column() });
+    const derivatives = derivativesEvaluator(matter, { of: ["pressure"], by: ["specificEnergy", "density"] });
+    const [states, found] = [wanted(), wanted()];
+    matter.evaluate({ density, temperature, composition: list }, states);
+    const slope = { pressure: { specificEnergy: column(), density: column() } };
+    derivatives.evaluate({ density, temperature, composition: list }, slope);
+    const answer = { temperature: column() };
+    const { specificEnergy } = states;
+    solveColumns(matter, { density, specificEnergy, composition: list }, answer);
+    for (const composition of matrices) {
+      matter.evaluate({ density, temperature, composition }, found);
+      expect(found).toEqual(states);
+      const other = { pressure: { specificEnergy: column(), density: column() } };
+      derivatives.evaluate({ density, temperature, composition }, other);
+      expect(other).toEqual(slope);
+      const again = { temperature: column() };
+      solveColumns(matter, { density, specificEnergy, composition }, again);
+      expect(again).toEqual(answer);
+    }
+  });
+
+  test.each([
+    ["a row that does not sum to one", { nuclides: ["C12", "O16"], fractions: Float64Array.of(0.5, 0.5, 0.5, 0.4) }, 1],
+    ["NaN", { nuclides: ["C12"], fractions: [Float64Array.of(1, Number.NaN)] }, 1],
+    ["another number of rows", { nuclides: ["C12"], fractions: Float64Array.of(1) }, undefined],
+    [
+      "an option that does not exist",
+      { nuclides: ["C12"], fractions: Float64Array.of(1, 1), normalize: true },
+      undefined,
+    ],
+    ["no fractions", { nuclides: ["C12"] }, undefined],
+  ])("%s is refused before the first row is written", (_name, composition, index) => {
+    const output = { pressure: Float64Array.of(-7, -7) };
+    const two = Float64Array.of(1e6, 1e6);
+    const codes = ["invalid-composition", "not-a-number", "length-mismatch", "invalid-option"];
+    const input = { density: two, temperature: two, composition: composition as CompositionRows };
+    for (const call of [
+      () => whiteDwarfMatter().evaluate(input, output),
+      () => solveColumns(whiteDwarfMatter(), { density: two, pressure: two, composition: input.composition }, {}),
+    ]) {
+      const error = refusal(call);
+      expect(codes).toContain(error.code);
+      expect(error.index).toBe(index);
+    }
+    expect([...output.pressure]).toEqual([-7, -7]);
+  });
+});
+
+test("JSON and Node's console show all members, those made on demand too", () => {
+  const made = composition({ C12: 0.25, O16: 0.75 });
+  const shown = JSON.parse(JSON.stringify(made)) as Record<string, unknown>;
+  expect(Object.keys(shown).sort()).toEqual(
+    [
+      "chargeMoments",
+      "chargedIonEntropyConstant",
+      "chargedIonsPerGram",
+      "couplingMoment",
+      "electronsPerGram",
+      "electronsPerNucleon",
+      "ionEntropyConstant",
+      "ionsPerGram",
+      "ionsPerNucleon",
+      "meanCharge",
+      "meanMassNumber",
+      "name",
+      "plasmaFrequencySum",
+      "species",
+    ].sort(),
+  );
+  expect(shown).toMatchObject({ name: made.name, meanCharge: made.meanCharge, species: [{ label: "C12" }, {}] });
+  expect(inspect(made)).toContain("nucleonFraction: 0.25");
 });

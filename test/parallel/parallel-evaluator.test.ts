@@ -1,6 +1,7 @@
 /** Batches on threads: the numbers and the errors of one thread, and what happens when code or threads fail. */
 import { afterAll, afterEach, beforeAll, describe, expect, test, vi } from "vitest";
 import type { FermistateError } from "../../src/errors.js";
+import { solveColumns } from "../../src/inverse/columns.js";
 import { type Composition, composition } from "../../src/matter/composition.js";
 import { compositions } from "../../src/matter/composition-rows.js";
 import type { Answer } from "../../src/parallel/block.js";
@@ -147,6 +148,40 @@ describe("the numbers are those of one thread, to the bit", () => {
     await evaluator.evaluate(input, parallel);
     expect(bench.asked).toBeGreaterThan(1);
     for (const name of names) expect(sameBits(parallel[name], serial[name]), name).toBe(true);
+  });
+
+  test("a matrix of fractions is shared, by rows or by columns: every row its own composition", async () => {
+    const evaluator = await evaluatorOf({ whiteDwarfMatter: {} });
+    const rows = 6_000;
+    const random = uniform(6);
+    const nuclides = ["O16", "He4", "n", "C12"];
+    const fractions = Float64Array.from({ length: 4 * rows }, (_, i) => (i % 7 === 0 ? 0 : random()));
+    const columns = nuclides.map((_, j) =>
+      Float64Array.from({ length: rows }, (_, i) => fractions[4 * i + j] as number),
+    );
+    const points = pointsOf(rows);
+    const names = ["pressure", "specificEntropy", "gamma1"] as const;
+    const serial = columnsOf(names, rows);
+    const list = compositions(nuclides, fractions, { normalise: true });
+    whiteDwarfMatter().evaluate({ ...points, composition: list }, serial);
+    for (const given of [fractions, columns]) {
+      const parallel = columnsOf(names, rows);
+      const composition = { nuclides, fractions: given, normalise: true };
+      await evaluator.evaluate({ ...points, composition }, parallel);
+      for (const name of names) expect(sameBits(parallel[name], serial[name]), name).toBe(true);
+      const answer = { temperature: new Float64Array(rows) };
+      const pressure = parallel["pressure"] as Float64Array;
+      await evaluator.solve({ density: points.density, pressure, composition }, answer);
+      const alone = { temperature: new Float64Array(rows) };
+      solveColumns(whiteDwarfMatter(), { density: points.density, pressure, composition: list }, alone);
+      expect(sameBits(answer.temperature, alone.temperature)).toBe(true);
+    }
+    expect(bench.asked).toBeGreaterThan(8);
+    fractions[4 * 4321] = Number.NaN;
+    const refused = await errorOf(() =>
+      evaluator.evaluate({ ...points, composition: { nuclides, fractions, normalise: true } }, {}),
+    );
+    expect(refused).toMatchObject({ code: "not-a-number", index: 4321 });
   });
 
   test("refused rows: the same reasons, and their outputs stay", async () => {
