@@ -1,76 +1,88 @@
 /**
- * One batch of a million points of the full plasma by two threads against one: ratio of the times, and what two idle cores
- * would give: time of the processor used by one thread over that of the calling thread plus the busier of the two.
+ * One batch of a million points of the full plasma by two threads against one: ratio of the times, and the same for threads
+ * that have nothing to do with each other (each its own share of the rows, told to start and nothing else), which is
+ * what the machine's cores can give at that moment.
  *
- * node bench/parallel.mjs [threads [rows]]; needs a build. Where /proc is not there, times of the clock only.
+ * node bench/parallel.mjs [threads [rows]]; needs a build.
  */
-import { existsSync, readdirSync, readFileSync } from "node:fs";
 import { loadavg } from "node:os";
+import { fileURLToPath } from "node:url";
+import { isMainThread, parentPort, Worker, workerData } from "node:worker_threads";
 import { composition, whiteDwarfMatter } from "../dist/index.js";
 import { parallelEvaluator } from "../dist/parallel.js";
 
-const [threads = 2, rows = 1_000_000] = process.argv.slice(2).map(Number);
 const names = ["pressure", "specificEnergy", "specificEntropy", "heatCapacityV", "gamma1", "soundSpeed"];
 
-/** Processor time of each thread of this process, ms (a tick of Linux is 10 ms). */
-function threadTimes() {
-  const folder = "/proc/self/task";
-  if (!existsSync(folder)) return undefined;
-  return new Map(
-    readdirSync(folder).map((id) => {
-      const fields = readFileSync(`${folder}/${id}/stat`, "utf8").split(") ")[1].split(" ");
-      return [id, 10 * (Number(fields[11]) + Number(fields[12]))];
-    }),
+/** A batch of random points, and columns for it. */
+function batchOf(rows) {
+  let seed = 12345;
+  const random = () => {
+    seed = (seed * 48271) % 2147483647;
+    return seed / 2147483647;
+  };
+  const density = Float64Array.from({ length: rows }, () => 10 ** (5 + 5 * random()));
+  const temperature = Float64Array.from({ length: rows }, () => 10 ** (6 + 3 * random()));
+  const columns = () => Object.fromEntries(names.map((name) => [name, new Float64Array(rows)]));
+  return { input: { density, temperature, composition: composition({ C12: 0.5, O16: 0.5 }) }, columns };
+}
+
+/** A thread of its own: a batch whenever it is told. */
+function answerAlone() {
+  const { input, columns } = batchOf(workerData);
+  const output = columns();
+  const eos = whiteDwarfMatter();
+  parentPort.on("message", () => {
+    eos.evaluate(input, output);
+    parentPort.postMessage("done");
+  });
+}
+
+async function measure() {
+  const [threads = 2, rows = 1_000_000] = process.argv.slice(2).map(Number);
+  const { input, columns } = batchOf(rows);
+  const [one, several] = [columns(), columns()];
+  const eos = whiteDwarfMatter();
+  const start = performance.now();
+  const evaluator = await parallelEvaluator({ whiteDwarfMatter: {} }, { threads });
+  const opening = performance.now() - start;
+  const alone = Array.from(
+    { length: threads },
+    () => new Worker(fileURLToPath(import.meta.url), { workerData: Math.ceil(rows / threads) }),
+  );
+  const apart = () =>
+    Promise.all(
+      alone.map((worker) => {
+        worker.postMessage("go");
+        return new Promise((done) => worker.once("message", done));
+      }),
+    );
+  const tasks = [() => eos.evaluate(input, one), () => evaluator.evaluate(input, several), apart];
+  for (const task of tasks) await task();
+  const median = (list) => list.sort((a, b) => a - b)[list.length >> 1];
+  const together = [];
+  const possible = [];
+  for (let i = 0; i < 9; i++) {
+    // In turns, so that a slow moment of a shared machine strikes all.
+    const times = [];
+    for (const task of tasks) {
+      const from = performance.now();
+      await task();
+      times.push(performance.now() - from);
+    }
+    together.push(times[0] / times[1]);
+    possible.push(times[0] / times[2]);
+  }
+  for (const name of names) {
+    if (!Buffer.from(one[name].buffer).equals(Buffer.from(several[name].buffer))) throw new Error(`${name} differs`);
+  }
+  await evaluator.close();
+  for (const worker of alone) await worker.terminate();
+  console.log(
+    `${rows} points, ${threads} threads: ${median(together).toFixed(2)} x one thread; ` +
+      `unrelated threads ${median(possible).toFixed(2)} x (load ${loadavg()[0].toFixed(1)}); ` +
+      `opening ${opening.toFixed(0)} ms; same bits`,
   );
 }
 
-/** Milliseconds by the clock, and of the processor by thread, the calling thread first. */
-async function timesOf(task) {
-  const before = threadTimes();
-  const start = performance.now();
-  await task();
-  const clock = performance.now() - start;
-  const after = threadTimes();
-  if (before === undefined || after === undefined) return { clock, caller: Number.NaN, busiest: Number.NaN };
-  const used = (id) => after.get(id) - (before.get(id) ?? 0);
-  const caller = used(String(process.pid));
-  const others = [...after.keys()].filter((id) => id !== String(process.pid));
-  return { clock, caller, busiest: Math.max(0, ...others.map(used)) };
-}
-
-let seed = 12345;
-const random = () => {
-  seed = (seed * 48271) % 2147483647;
-  return seed / 2147483647;
-};
-const density = Float64Array.from({ length: rows }, () => 10 ** (5 + 5 * random()));
-const temperature = Float64Array.from({ length: rows }, () => 10 ** (6 + 3 * random()));
-const matter = composition({ C12: 0.5, O16: 0.5 });
-const input = { density, temperature, composition: matter };
-const columns = () => Object.fromEntries(names.map((name) => [name, new Float64Array(rows)]));
-const [one, several] = [columns(), columns()];
-
-const eos = whiteDwarfMatter();
-const start = performance.now();
-const evaluator = await parallelEvaluator({ whiteDwarfMatter: {} }, { threads });
-const opening = performance.now() - start;
-eos.evaluate(input, one);
-await evaluator.evaluate(input, several);
-const median = (list) => list.sort((a, b) => a - b)[list.length >> 1];
-const clock = [];
-const processor = [];
-for (let i = 0; i < 5; i++) {
-  // In turns, so that a slow moment of a shared machine strikes both.
-  const serial = await timesOf(() => eos.evaluate(input, one));
-  const parallel = await timesOf(() => evaluator.evaluate(input, several));
-  clock.push(serial.clock / parallel.clock);
-  processor.push(serial.caller / (parallel.caller + parallel.busiest));
-}
-for (const name of names) {
-  if (!Buffer.from(one[name].buffer).equals(Buffer.from(several[name].buffer))) throw new Error(`${name} differs`);
-}
-await evaluator.close();
-console.log(
-  `${rows} points, ${threads} threads: ${median(clock).toFixed(2)} x by the clock (load ${loadavg()[0].toFixed(1)}), ` +
-    `${median(processor).toFixed(2)} x by processor times; opening ${opening.toFixed(0)} ms; same bits`,
-);
+if (isMainThread) await measure();
+else answerAlone();
