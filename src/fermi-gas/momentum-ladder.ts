@@ -28,7 +28,7 @@ const vacuumTerms = new Float64Array(HIGHEST - LOWEST + 1);
  */
 export function chooseRung(gas: Float64Array): number {
   let rung = Math.floor(8 * Math.log2(gas[STEP]!)) - LOWEST;
-  if (rung < 0) rung = 0;
+  if (!(rung >= 0)) rung = 0; // NaN too: the iteration then ends with an error
   if (rung > HIGHEST - LOWEST) rung = HIGHEST - LOWEST;
   gas[STEP] = steps[rung]!;
   return rung;

@@ -6,6 +6,7 @@
  */
 import { FermistateError } from "../errors.js";
 import {
+  asComposition,
   type Composition,
   type CompositionOptions,
   checkedSum,
@@ -13,11 +14,10 @@ import {
   mixed,
   readOptions,
   refuseFraction,
-  requireComposition,
 } from "./composition.js";
 import { speciesOf } from "./species-list.js";
 
-/** Compositions of a batch as numbers, one for each row. */
+/** Compositions of a batch as numbers, one for each row; no column of the batch's output may overlap them. */
 export interface CompositionRows {
   /** Labels of the nuclides, each once. */
   readonly nuclides: readonly string[];
@@ -64,11 +64,14 @@ export function compositions(
   fractions: Float64Array | readonly Float64Array[],
   options: CompositionOptions = {},
 ): Composition[] {
-  const source = matrixSource(labels, fractions, readOptions(options));
+  const source = matrixSource(labels, fractions, readOptions(options), "labels");
   const made = new Array<Composition>(source.rows);
   for (let row = 0; row < made.length; row++) made[row] = source.at(row);
   return made;
 }
+
+const anyInput =
+  "a composition, as composition({ C12: 0.5, O16: 0.5 }) makes it, a list of them, or a matrix { nuclides, fractions }";
 
 /** True for compositions as numbers. */
 export function areRows(given: unknown): given is CompositionRows {
@@ -83,16 +86,21 @@ export function areRows(given: unknown): given is CompositionRows {
 export function compositionSource(given: CompositionInput): CompositionSource {
   if (Array.isArray(given)) {
     const list = given as readonly Composition[];
-    for (let i = 0; i < list.length; i++) requireComposition(list[i]);
+    for (let i = 0; i < list.length; i++) asComposition(list[i], anyInput, i);
     return { one: undefined, rows: list.length, at: (row) => list[row]! };
   }
   if (areRows(given)) {
-    const { nuclides, fractions, ...options } = given;
-    const source = matrixSource(nuclides, fractions, readOptions(options));
+    const { nuclides, fractions, normalise = false, ...others } = given;
+    const [stranger] = Object.keys(others);
+    if (stranger !== undefined || typeof normalise !== "boolean") {
+      const allowed = "{ nuclides, fractions, normalise: true | false }";
+      throw new FermistateError("invalid-option", { argument: "composition", given: stranger ?? normalise, allowed });
+    }
+    const source = matrixSource(nuclides, fractions, normalise, "nuclides");
     source.check();
     return source;
   }
-  const one = requireComposition(given);
+  const one = asComposition(given, anyInput);
   return { one, rows: undefined, at: () => one };
 }
 
@@ -106,14 +114,16 @@ function matrixSource(
   labels: readonly string[],
   fractions: Float64Array | readonly Float64Array[],
   normalise: boolean,
+  argument: "labels" | "nuclides",
 ): MatrixSource {
-  if (!Array.isArray(labels) || labels.length === 0) throw invalid(labels, "a list of at least one nuclide", "labels");
-  const list = speciesOf(labels);
+  if (!Array.isArray(labels) || labels.length === 0) throw invalid(labels, "a list of at least one nuclide", argument);
+  const list = speciesOf(labels, argument);
   const count = labels.length;
   const columns = fractions instanceof Float64Array ? undefined : checkedColumns(fractions, count);
   const rows = columns === undefined ? (fractions as Float64Array).length / count : columns[0]!.length;
   if (!Number.isInteger(rows)) {
-    const details = { argument: "fractions", given: (fractions as Float64Array).length, allowed: `rows of ${count}` };
+    const allowed = `rows of ${count} numbers, one for each nuclide`;
+    const details = { argument: "fractions", given: (fractions as Float64Array).length, allowed };
     throw new FermistateError("length-mismatch", details);
   }
   const one = new Float64Array(count);
@@ -145,7 +155,7 @@ function matrixSource(
 
 function checkedColumns(given: unknown, count: number): readonly Float64Array[] {
   const allowed = `a Float64Array of rows, or ${count} columns, each a Float64Array`;
-  if (!Array.isArray(given) || !given.every((column) => column instanceof Float64Array)) {
+  if (!Array.isArray(given) || ![...given].every((column) => column instanceof Float64Array)) {
     throw new FermistateError("invalid-option", { argument: "fractions", given, allowed });
   }
   const columns = given as readonly Float64Array[];

@@ -64,14 +64,20 @@ export function composition(fractions: NucleonFractions | MeanNucleus, options: 
 }
 
 /**
- * Throws `invalid-composition` unless `value` was made by {@link composition}, of this or another copy of the library
- * (ESM or CommonJS); returns it. Copies of a composition with other members do not pass.
+ * Throws `invalid-composition` unless `value` was made by {@link composition} or `compositions`, of this or another copy
+ * of the library (ESM or CommonJS); returns it. Copies of a composition (a spread, `structuredClone`, a message to a
+ * worker) do not pass: send nuclides and fractions, and make it again.
  */
 export function requireComposition(value: unknown): Composition {
+  return asComposition(value, "a composition, as composition({ C12: 0.5, O16: 0.5 }) makes it, not a copy of one");
+}
+
+/** The same with a message of its own: what is allowed, and the row of a list. */
+export function asComposition(value: unknown, allowed: string, row?: number): Composition {
   if (typeof value === "object" && value !== null && (value as { [brand]?: object })[brand] && Object.isFrozen(value)) {
     return value as Composition;
   }
-  throw invalid(value, "a composition, as composition({ C12: 0.5, O16: 0.5 }) makes it", "composition");
+  throw invalid(value, allowed, "composition", row);
 }
 
 /** Whether fractions are to be scaled. @throws `invalid-option` */

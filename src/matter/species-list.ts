@@ -31,11 +31,20 @@ export interface SpeciesList {
   /** 1.5 ln(m_u/M). */
   readonly logMass: Float64Array;
   /** Lists without some of the species, by the places that are left. */
-  readonly parts: Map<string, SpeciesList>;
+  readonly parts: Map<string, PartOfList>;
+  /** The one of them that was asked for last. */
+  recent: PartOfList | undefined;
   /** As many doubles, to be copied: an array that starts as one of doubles stays one. */
   readonly blank: readonly number[];
   /** What other rooms have computed of the list, under symbols of their own. */
   readonly notes: Record<symbol, unknown>;
+}
+
+/** Some of the species of a list. */
+export interface PartOfList {
+  readonly list: SpeciesList;
+  /** Their places in the whole list. */
+  readonly places: readonly number[];
 }
 
 /** What a composition was made of, and what rooms have computed of it, under symbols of their own. */
@@ -78,13 +87,13 @@ const mostKnown = 256;
  * The list of the nuclides of these labels. @throws `unknown-nuclide`; `invalid-composition` for a label that comes
  * twice
  */
-export function speciesOf(labels: readonly string[]): SpeciesList {
+export function speciesOf(labels: readonly string[], argument = "labels"): SpeciesList {
   const key = labels.join(" ");
   const old = known.get(key);
   if (old !== undefined) return old;
   const twice = labels.find((label, i) => labels.indexOf(label) !== i);
   if (twice !== undefined) {
-    const details = { argument: "labels", given: `${twice} twice`, allowed: "each nuclide once" };
+    const details = { argument, given: `${twice} twice`, allowed: "each nuclide once" };
     throw new FermistateError("invalid-composition", details);
   }
   const made = speciesList(
@@ -129,23 +138,24 @@ export function speciesList(given: readonly Nucleus[]): SpeciesList {
     },
     logMass: Float64Array.from(nuclei, ({ ionMass }) => 1.5 * Math.log(atomicMassConstant / ionMass)),
     parts: new Map(),
+    recent: undefined,
     blank: nuclei.map(() => 0.5),
     notes: {},
   };
 }
 
 /** The list without species whose X/A is no positive double. */
-function present(list: SpeciesList, fractions: Float64Array): readonly [SpeciesList, Float64Array] {
-  const places = list.nuclei.map((_, i) => i).filter((i) => fractions[i]! / list.nuclei[i]!.massNumber > 0);
-  if (places.length === list.nuclei.length) return [list, fractions];
+function present(list: SpeciesList, fractions: Float64Array): SpeciesList {
+  const places = list.nuclei.map((_, i) => i).filter((i) => isPresent(list, fractions, i));
   const key = places.join();
   let part = list.parts.get(key);
   if (part === undefined) {
-    part = speciesList(places.map((i) => list.nuclei[i]!));
+    part = { list: speciesList(places.map((i) => list.nuclei[i]!)), places };
     if (list.parts.size >= mostKnown) list.parts.clear();
     list.parts.set(key, part);
   }
-  return [part, Float64Array.from(places, (i) => fractions[i]!)];
+  list.recent = part;
+  return part.list;
 }
 
 /**
@@ -153,10 +163,34 @@ function present(list: SpeciesList, fractions: Float64Array): readonly [SpeciesL
  * small for X/A, are dropped.
  */
 export function compositionOf(list: SpeciesList, fractions: Float64Array): Composition {
-  for (let i = 0; i < list.nuclei.length; i++) {
-    if (!(fractions[i]! / list.nuclei[i]!.massNumber > 0)) return new SummedComposition(...present(list, fractions));
-  }
-  return new SummedComposition(list, fractions);
+  let count = 0;
+  for (let i = 0; i < list.nuclei.length; i++) if (isPresent(list, fractions, i)) count++;
+  if (count === list.nuclei.length) return new SummedComposition(list, fractions);
+  const { recent } = list; // zones lack the same nuclides as their neighbours
+  const part =
+    recent !== undefined && isRecent(recent, list, fractions, count) ? recent.list : present(list, fractions);
+  const some = remaining(list, fractions);
+  return new SummedComposition(part, some);
+}
+
+function isPresent({ massNumbers }: SpeciesList, fractions: Float64Array, i: number): boolean {
+  return fractions[i]! / massNumbers[i]! > 0;
+}
+
+function isRecent({ places }: PartOfList, list: SpeciesList, fractions: Float64Array, count: number): boolean {
+  if (places.length !== count) return false;
+  for (let i = 0; i < count; i++) if (!isPresent(list, fractions, places[i]!)) return false;
+  return true;
+}
+
+let someFractions = new Float64Array(32);
+
+/** Fractions of the species that are there, side by side. */
+function remaining(list: SpeciesList, fractions: Float64Array): Float64Array {
+  const count = list.nuclei.length;
+  if (someFractions.length < count) someFractions = new Float64Array(2 * count);
+  for (let i = 0, at = 0; i < count; i++) if (isPresent(list, fractions, i)) someFractions[at++] = fractions[i]!;
+  return someFractions;
 }
 
 let numberFractions = new Float64Array(32);

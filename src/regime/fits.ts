@@ -5,6 +5,7 @@
  * well founded. Ranges and reasons stand beside each judgement. Species below 1e-3 of the nuclei are left out.
  */
 
+import { ANHARMONIC_SUPPRESSION, bcc } from "../coulomb/lattice.js";
 import { alloyDeviation } from "../coulomb/mixing.js";
 import { defaultMeltingCoupling, type Phase, quantumMeltingLimit } from "../coulomb/phase.js";
 import type { Composition } from "../matter/composition.js";
@@ -27,6 +28,7 @@ export function judgeFits(
   const species = parameters.species.filter(({ label }) => present.some((one) => one.label === label));
   if (phase === "liquid") judgeLiquid(list, parameters, species);
   else judgeCrystal(list, parameters, charges);
+  if (phase === "crystal") judgeAnharmonic(list, composition, parameters);
   if (phase === "crystal" || parameters.ionCoupling >= defaultMeltingCoupling) judgeQuantumMelting(list, species);
   if (phase === "crystal") judgeAlloy(list, temperature, composition, parameters, charges);
   judgeExchange(list, temperature, parameters);
@@ -101,6 +103,29 @@ function judgeQuantumMelting(list: Finding[], species: readonly SpeciesParameter
         strained: `Zero-point motion of ${label} shifts the melting point by several per cent, which is not in the rule.`,
         outside: `Zero-point motion of ${label} is so strong that no crystal of it exists.`,
       },
+    });
+  }
+}
+
+/**
+ * Each species has anharmonic terms in powers of its own 1/Gamma_j, which is that of a liquid for light nuclei among heavy
+ * ones: judged by the last term of the series, in kT per nucleus of the mixture. At 0.3 melting sets energy free.
+ */
+function judgeAnharmonic(list: Finding[], composition: Composition, { species }: RegimeParameters): void {
+  if (species.length < 2) return; // of one species the coupling says it
+  for (const { label, quantumParameter, coupling } of species) {
+    const suppression = Math.exp(-ANHARMONIC_SUPPRESSION * quantumParameter * quantumParameter);
+    const { numberFraction } = composition.species.find((one) => one.label === label)!;
+    judge(list, {
+      code: "superheated-crystal",
+      value: ((numberFraction * bcc.anharmonic[2]) / (3 * coupling ** 3)) * suppression,
+      strained: 0.03,
+      outside: 0.3,
+      name: "last anharmonic term of the species per nucleus and kT",
+      species: label,
+      message:
+        `${label} alone would be a liquid: its anharmonic terms in this crystal are extrapolated, and energy, heat capacity and ` +
+        "freezing with them (coulombPlasma({ anharmonic: false }) leaves them out).",
     });
   }
 }

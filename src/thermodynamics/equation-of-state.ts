@@ -48,7 +48,8 @@ export interface BatchInput {
 export interface RefusedRows {
   /**
    * Where given, a row without an answer gets the number of its reason here (`refusalReasons`; 0 for an answer), its
-   * other outputs stay as they were, and nothing is thrown for it: for schemes that repair such rows themselves.
+   * other outputs stay as they were, and nothing is thrown for it: for schemes that repair such rows themselves. Compositions
+   * that are none are refused all the same, before the first row.
    */
   readonly refused?: Uint8Array;
 }
@@ -76,7 +77,8 @@ export interface EquationOfState {
   state(density: number, temperature: number, composition: Composition): State;
 
   /**
-   * Many states at once: writes the columns of `output` that are given and allocates nothing per point.
+   * Many states at once: writes the columns of `output` that are given and allocates nothing per point (a composition where
+   * they come as a matrix of fractions).
    *
    * All inputs are checked before the first row is written, and the first row without an answer is refused; with a
    * column `refused` in the output every other row is answered.

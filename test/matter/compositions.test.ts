@@ -152,11 +152,14 @@ describe("a matrix of fractions in a batch", () => {
       undefined,
     ],
     ["no fractions", { nuclides: ["C12"] }, undefined],
+    ["columns with a gap", { nuclides: ["C12", "O16"], fractions: new Array(2) }, undefined],
+    ["a nuclide twice", { nuclides: ["C12", "C12"], fractions: new Float64Array(4).fill(0.5) }, undefined],
+    ["a copy of a composition in a list", [composition({ C12: 1 }), { ...composition({ C12: 1 }) }], 1],
   ])("%s is refused before the first row is written", (_name, composition, index) => {
     const output = { pressure: Float64Array.of(-7, -7) };
     const two = Float64Array.of(1e6, 1e6);
     const codes = ["invalid-composition", "not-a-number", "length-mismatch", "invalid-option"];
-    const input = { density: two, temperature: two, composition: composition as CompositionRows };
+    const input = { density: two, temperature: two, composition: composition as object as CompositionRows };
     for (const call of [
       () => whiteDwarfMatter().evaluate(input, output),
       () => solveColumns(whiteDwarfMatter(), { density: two, pressure: two, composition: input.composition }, {}),

@@ -4,6 +4,7 @@
  */
 import { describe, expect, test } from "vitest";
 import { boltzmannConstant, electronRestEnergy } from "../../src/constants.js";
+import { transition } from "../../src/coulomb/transition.js";
 import { electronPositronGas } from "../../src/fermi-gas/electron-positron-gas.js";
 import { idealIons } from "../../src/ions/ideal-ions.js";
 import { type Composition, composition } from "../../src/matter/composition.js";
@@ -14,6 +15,7 @@ import { regime } from "../../src/regime/regime.js";
 import { combine } from "../../src/thermodynamics/combine.js";
 import type { Contribution } from "../../src/thermodynamics/contribution.js";
 import { addNaturalDerivatives } from "../../src/thermodynamics/free-energy.js";
+import { whiteDwarfMatter } from "../../src/white-dwarf-matter.js";
 
 const pure = (label: string): Composition => composition({ [label]: 1 });
 const mix = composition({ C12: 0.5, O16: 0.5 });
@@ -128,6 +130,37 @@ describe("ranges in the plasma parameters", () => {
     expect(find("alloy-demixing", [1e7, found.threshold * 0.999, matter])).toBeDefined();
     expect(find("alloy-demixing", [1e7, found.threshold * 1.001, matter])).toBeUndefined();
     expect(find("alloy-demixing", [1e7, 1e3, carbon])).toBeUndefined();
+  });
+
+  // A_3 = 1.765e5 of Farouki & Hamaguchi 1993, Phys. Rev. E 47, 4330 (from memory), as in src/coulomb/lattice.ts.
+  test("light nuclei in a crystal of heavy ones: outside where melting sets energy free", () => {
+    for (const [fractions, label, latent] of [
+      [{ C12: 0.01, Fe56: 0.99 }, "C12", -1],
+      [{ He4: 1e-3, Fe56: 0.999 }, "He4", -1],
+      [{ H1: 1e-3, O16: 0.999 }, "H1", -1],
+      [{ C12: 0.5, O16: 0.5 }, "C12", 1],
+      [{ O16: 0.02, Ne22: 0.98 }, "O16", 1],
+    ] as const) {
+      const matter = composition(fractions);
+      const { temperature, latentHeat } = transition(whiteDwarfMatter(), 1e6, matter)!;
+      const cold = 0.99 * temperature;
+      const found = find("superheated-crystal", [1e6, cold, matter]);
+      const own = regime(1e6, cold, matter).parameters.species.find((one) => one.label === label)!;
+      const { numberFraction } = matter.species.find((one) => one.label === label)!;
+      const last = (numberFraction * 1.765e5) / (3 * own.coupling ** 3);
+      const value = last * Math.exp(-0.0112 * own.quantumParameter ** 2);
+      if (latent < 0) {
+        expect(latentHeat).toBeLessThan(0);
+        expect(found).toMatchObject({ severity: "outside", species: label });
+        expect(Math.abs(found!.value / value - 1)).toBeLessThan(1e-12);
+      } else {
+        expect(latentHeat).toBeGreaterThan(0);
+        expect(value).toBeLessThan(0.03);
+        expect(found).toBeUndefined();
+      }
+      // Their quantum suppression ends it.
+      expect(find("superheated-crystal", [1e6, temperature / 100, matter])).toBeUndefined();
+    }
   });
 
   test("strong zero-point motion: no crystal, and the liquid says why", () => {

@@ -308,3 +308,29 @@ describe("properties", () => {
     close(state.electronDegeneracy!, state.electronChemicalPotential! / (1.380649e-16 * 1e7));
   });
 });
+
+test.each([
+  [Number.NaN, 1e8],
+  [1e6, Number.NaN],
+  [1e6, -1],
+  [-1, 1e8],
+  [Number.POSITIVE_INFINITY, 1e8],
+  [1e6, Number.POSITIVE_INFINITY],
+])(
+  "an evaluator checks nothing, but comes to an end at %d g/cm^3, %d K: NaN or a typed error",
+  (density, temperature) => {
+    for (const eos of [combine(electronPositronGas()), whiteDwarfMatter()]) {
+      const { point, members, fillMembers } = eos.evaluator();
+      point[0] = density;
+      point[1] = temperature;
+      let outcome: unknown;
+      try {
+        fillMembers(composition({ C12: 1 }), 2);
+        outcome = members.some(Number.isNaN);
+      } catch (error) {
+        outcome = isFermistateError(error);
+      }
+      expect(outcome).toBe(true);
+    }
+  },
+);
