@@ -41,7 +41,7 @@ export interface SpeciesList {
 }
 
 /** Some of the species of a list. */
-export interface PartOfList {
+interface PartOfList {
   readonly list: SpeciesList;
   /** Their places in the whole list. */
   readonly places: readonly number[];
