@@ -10,7 +10,8 @@ import { atomicMassConstant, electronMass } from "../constants.js";
 import { FermistateError, requireFinite, withIndex } from "../errors.js";
 import type { Composition } from "./composition-members.js";
 import { nuclide } from "./nuclides.js";
-import { brand, compositionOf, type SpeciesList, speciesList, speciesOf } from "./species-list.js";
+import { brand, type SpeciesList, speciesList, speciesOf } from "./species-list.js";
+import { compositionOf } from "./summed-composition.js";
 
 export type { ChargeMoments, Composition, Species } from "./composition-members.js";
 

@@ -6,7 +6,8 @@ import { type ErrorCode, FermistateError } from "../errors.js";
 import { type SolveInput, type SolveOutput, solveColumns } from "../inverse/columns.js";
 import { type Composition, composition, type MeanNucleus, type NucleonFractions } from "../matter/composition.js";
 import { areRows, type CompositionInput, type CompositionRows } from "../matter/composition-rows.js";
-import { compositionOf, notesOf, speciesOf } from "../matter/species-list.js";
+import { notesOf, speciesOf } from "../matter/species-list.js";
+import { compositionOf } from "../matter/summed-composition.js";
 import type { BatchInput, BatchOutput, EquationOfState } from "../thermodynamics/equation-of-state.js";
 import { asFailure, type PlainSource } from "./matter-source.js";
 
