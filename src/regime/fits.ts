@@ -109,7 +109,8 @@ function judgeQuantumMelting(list: Finding[], species: readonly SpeciesParameter
 
 /**
  * Each species has anharmonic terms in powers of its own 1/Gamma_j, which is that of a liquid for light nuclei among heavy
- * ones: judged by the last term of the series, in kT per nucleus of the mixture. At 0.3 melting sets energy free.
+ * ones: judged by the last term of the series, in kT per nucleus of the mixture. From 0.08 to
+ * 0.17 on, by the pair, melting sets energy free.
  */
 function judgeAnharmonic(list: Finding[], composition: Composition, { species }: RegimeParameters): void {
   if (species.length < 2) return; // of one species the coupling says it
@@ -120,7 +121,7 @@ function judgeAnharmonic(list: Finding[], composition: Composition, { species }:
       code: "superheated-crystal",
       value: ((numberFraction * bcc.anharmonic[2]) / (3 * coupling ** 3)) * suppression,
       strained: 0.03,
-      outside: 0.3,
+      outside: 0.08,
       name: "last anharmonic term of the species per nucleus and kT",
       species: label,
       message:
