@@ -9,13 +9,24 @@
 import type { Composition } from "../matter/composition.js";
 import { notesOf, numberFractionsOf } from "../matter/species-list.js";
 import {
+  ALPHA,
+  AVERAGES_LENGTH,
+  COUPLING,
+  DELTA,
+  FIRST,
+  fillAverages,
   fillPairDeviation,
   type LiquidMixture,
+  MIXED,
   PAIR_LENGTH,
   PAIR_RATIO,
   PAIR_SHARE,
   PAIR_SLOPE,
   PAIR_VALUE,
+  SECOND,
+  SQUARE,
+  TOP,
+  UNIT,
 } from "./mixing.js";
 import {
   ION_X,
@@ -32,33 +43,23 @@ import {
   TANGENT_LOG_COUPLING,
 } from "./slots.js";
 
+const averages = new Float64Array(AVERAGES_LENGTH);
+
 /** Fills the slots of the liquid's departure, for a composition of more than one charge. `polarisable` as in `liquidMixture`. */
 export function fillLiquidTangents(tangents: Float64Array, composition: Composition, polarisable: boolean): void {
   const { nuclei, firstCharged, powers } = notesOf(composition).list;
-  const numbers = numberFractionsOf(composition);
   const pures = polarisable ? powers.screened : powers.fiveHalves;
-  const count = nuclei.length;
-  let total = 0;
-  for (let i = firstCharged; i < count; i++) total += numbers[i]!;
-  let first = 0;
-  let second = 0;
-  let coupling = 0;
-  let unit = 0;
-  let pure = 0;
-  for (let i = firstCharged; i < count; i++) {
-    const fraction = numbers[i]! / total;
-    first += fraction * nuclei[i]!.chargeNumber;
-    second += fraction * powers.squared[i]!;
-    coupling += fraction * powers.fiveThirds[i]!;
-    unit += fraction * powers.fiveHalves[i]!;
-    pure += fraction * pures[i]!;
-  }
-  const square = polarisable ? second + first : second;
-  const mixed = square * Math.sqrt(square / first);
-  const delta = (pure - mixed) / unit;
-  const alpha = (second / (first * first)) ** -0.2;
-  const ofDelta = (42 * delta * delta) / (2.6 + 14 * delta * delta * delta) + 1 / (1 - delta);
-  for (let i = firstCharged, at = 0; i < count; i++, at += TANGENT_LENGTH) {
+  fillAverages(averages, composition, polarisable);
+  const first = averages[FIRST]!;
+  const second = averages[SECOND]!;
+  const coupling = averages[COUPLING]!;
+  const unit = averages[UNIT]!;
+  const square = averages[SQUARE]!;
+  const mixed = averages[MIXED]!;
+  const delta = averages[DELTA]!;
+  const alpha = averages[ALPHA]!;
+  const ofDelta = (42 * delta * delta) / averages[TOP]! + 1 / (1 - delta);
+  for (let i = firstCharged, at = 0; i < nuclei.length; i++, at += TANGENT_LENGTH) {
     const z = nuclei[i]!.chargeNumber;
     const relative = z / first;
     const ownSquare = polarisable ? powers.squared[i]! + z : powers.squared[i]!;

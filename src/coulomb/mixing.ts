@@ -33,39 +33,80 @@ export interface LiquidMixture {
  * @param polarisable - true where the ion-electron term is part of the free energy, false for a rigid background
  */
 export function liquidMixture(composition: Composition, polarisable: boolean): LiquidMixture {
-  const { nuclei, firstCharged, charges, powers } = notesOf(composition).list;
-  const numbers = numberFractionsOf(composition);
-  let total = 0;
-  for (let i = firstCharged; i < nuclei.length; i++) total += numbers[i]!;
-  let first = 0;
-  let second = 0;
-  let unit = 0;
-  let pure = 0;
-  let coupling = 0;
-  for (let i = firstCharged; i < nuclei.length; i++) {
-    const fraction = numbers[i]! / total;
-    first += fraction * nuclei[i]!.chargeNumber;
-    second += fraction * powers.squared[i]!;
-    unit += fraction * powers.fiveHalves[i]!;
-    pure += fraction * powers.screened[i]!;
-    coupling += fraction * powers.fiveThirds[i]!;
-  }
-  if (!polarisable) pure = unit;
-  const square = polarisable ? second + first : second;
-  const mixed = square * Math.sqrt(square / first);
-  // Zero to the last digit where nothing is mixed.
-  const delta = charges > 1 ? (pure - mixed) / unit : 0;
-  const breadth = second / (first * first);
-  const alpha = breadth ** -0.2;
-  const a = (2.6 + 14 * delta * delta * delta) / (1 - delta);
+  fillAverages(averages, composition, polarisable);
+  const delta = averages[DELTA]!;
+  const alpha = averages[ALPHA]!;
+  const breadth = averages[SECOND]! / (averages[FIRST]! * averages[FIRST]!);
+  const a = averages[TOP]! / (1 - delta);
   return {
-    amplitude: (total * unit * delta) / Math.sqrt(3),
+    amplitude: (averages[TOTAL]! * averages[UNIT]! * delta) / Math.sqrt(3),
     a,
     b: 0.0117 * breadth * breadth * a,
     alpha,
     beta: 1.5 / alpha - 1,
-    logCoupling: Math.log(coupling),
+    logCoupling: Math.log(averages[COUPLING]!),
   };
+}
+
+// Slots of the averages over charged nuclei that the departure is made of.
+
+/** Number fraction of the charged nuclei. */
+const TOTAL = 0;
+/** <Z>. */
+export const FIRST = 1;
+/** <Z^2>. */
+export const SECOND = 2;
+/** <Z^(5/3)>. */
+export const COUPLING = 3;
+/** <Z^(5/2)>. */
+export const UNIT = 4;
+/** <Z^2> or, with polarisable background, <Z^2 + Z>. */
+export const SQUARE = 5;
+/** Debye & Hueckel's term of the mixture. */
+export const MIXED = 6;
+/** That of linear mixing less it, over UNIT; 0 to the last digit where nothing is mixed. */
+export const DELTA = 7;
+/** (<Z^2>/<Z>^2)^(-1/5). */
+export const ALPHA = 8;
+/** a (1 - DELTA). */
+export const TOP = 9;
+export const AVERAGES_LENGTH = 10;
+
+const averages = new Float64Array(AVERAGES_LENGTH);
+
+/** Fills the averages of a composition with charged nuclei; `polarisable` as in {@link liquidMixture}. */
+export function fillAverages(out: Float64Array, composition: Composition, polarisable: boolean): void {
+  const { nuclei, firstCharged, charges, powers } = notesOf(composition).list;
+  const numbers = numberFractionsOf(composition);
+  const pures = polarisable ? powers.screened : powers.fiveHalves;
+  let total = 0;
+  for (let i = firstCharged; i < nuclei.length; i++) total += numbers[i]!;
+  let first = 0;
+  let second = 0;
+  let coupling = 0;
+  let unit = 0;
+  let pure = 0;
+  for (let i = firstCharged; i < nuclei.length; i++) {
+    const fraction = numbers[i]! / total;
+    first += fraction * nuclei[i]!.chargeNumber;
+    second += fraction * powers.squared[i]!;
+    coupling += fraction * powers.fiveThirds[i]!;
+    unit += fraction * powers.fiveHalves[i]!;
+    pure += fraction * pures[i]!;
+  }
+  const square = polarisable ? second + first : second;
+  const mixed = square * Math.sqrt(square / first);
+  const delta = charges > 1 ? (pure - mixed) / unit : 0;
+  out[TOTAL] = total;
+  out[FIRST] = first;
+  out[SECOND] = second;
+  out[COUPLING] = coupling;
+  out[UNIT] = unit;
+  out[SQUARE] = square;
+  out[MIXED] = mixed;
+  out[DELTA] = delta;
+  out[ALPHA] = (second / (first * first)) ** -0.2;
+  out[TOP] = 2.6 + 14 * delta * delta * delta;
 }
 
 /**
